@@ -1,0 +1,188 @@
+"""What a screening found: every number with its band and its trust, and the verdicts.
+
+These records are what the window shows, what the cache keeps and what the result record
+(`resources/schema/result.schema.json`) is written from.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import Point
+from screenapp.model.solution import Balance, Reaction, Solution, StressField
+
+Trust = Literal["settled", "rising", "unsettled"]
+Verdict = Literal["holds", "does not hold", "undecided"]
+
+READING_QUANTITIES = (
+    "sigma_x",
+    "sigma_y",
+    "tau_xy",
+    "sigma_1",
+    "sigma_2",
+    "von_mises",
+    "u_x",
+    "u_y",
+)
+"""The quantities of every reading: stresses [MPa] and displacements [mm]."""
+
+
+@dataclass(frozen=True)
+class Estimate:
+    """A number with its band.
+
+    `low <= value <= high` holds the true value if `trust` is "settled".  A "rising" number has no
+    finite value: `value` is what the last mesh showed, `high` is infinite.
+    """
+
+    value: float
+    low: float
+    high: float
+    trust: Trust
+
+
+@dataclass(frozen=True)
+class Peak:
+    """A separate maximum of one quantity in one case.
+
+    Attributes:
+        quantity: "von_mises", "sigma_1" (largest tension) or "sigma_2" (largest compression).
+        estimate: value and band [MPa].
+        at: place [mm].
+        feature: id of the edge, fillet corner or hole, or "" inside the part.
+        place: the same in words, e.g. "hole h2, 344°", "fillet c3", "end of edge e5".
+        why: for a rising or unsettled peak, the reason in words; else "".
+        mend: for a rising peak, what would settle it; else "".
+        history: value on each pass.
+    """
+
+    quantity: str
+    estimate: Estimate
+    at: Point
+    feature: str
+    place: str
+    why: str = ""
+    mend: str = ""
+    history: tuple[float, ...] = ()
+
+
+@dataclass(frozen=True)
+class CaseFindings:
+    """One load case: its peaks, largest first, and its statics.
+
+    `applied` is the resultant of the loads: force x, y [N] and moment about the origin [N·mm].
+    """
+
+    case: str
+    name: str
+    peaks: tuple[Peak, ...]
+    displacement_max: Estimate
+    displacement_at: Point
+    applied: tuple[float, float, float]
+    reactions: tuple[Reaction, ...]
+    balance: Balance
+
+
+@dataclass(frozen=True)
+class Reading:
+    """A probe read in one case; `values` follows READING_QUANTITIES.
+
+    `history` holds, for each pass, the value of von Mises stress.  `feature` and `place` are as in
+    `Peak`; `why` says why it is not settled.
+    """
+
+    probe: str
+    name: str
+    case: str
+    at: Point
+    values: dict[str, Estimate]
+    trust: Trust
+    feature: str = ""
+    place: str = ""
+    why: str = ""
+    history: tuple[float, ...] = ()
+
+
+@dataclass(frozen=True)
+class LimitFindings:
+    """One limit in one case: how much of it is used (1.0 is all), with band and verdict."""
+
+    limit: str
+    name: str
+    case: str
+    utilisation: Estimate
+    verdict: Verdict
+    at: Point
+    place: str
+    reason: str
+
+
+@dataclass(frozen=True)
+class PassSummary:
+    """One pass of the mesh: size, unknowns, estimated relative energy error, largest von Mises
+    stress [MPa] over all cases, and smallest element size [mm]."""
+
+    elements: int
+    unknowns: int
+    error: float
+    peak: float
+    smallest: float
+
+
+@dataclass(frozen=True)
+class MeshFindings:
+    """The last mesh and how it came about."""
+
+    element: str
+    elements: int
+    unknowns: int
+    passes: tuple[PassSummary, ...]
+    error_estimate: float
+    worst_jacobian: float
+    across: int
+    residual: float
+    note: str = ""
+
+
+@dataclass(frozen=True, eq=False)
+class Fields:
+    """The arrays behind the findings, for drawing and for reading any point."""
+
+    mesh: Mesh
+    solution: Solution
+    stress: StressField
+
+
+@dataclass(frozen=True, eq=False)
+class Findings:
+    """Everything that one screening found.
+
+    Attributes:
+        part_sha256: hash of the part (stored bytes) it belongs to.
+        verdict: over all limits and cases.
+        headline: the verdict in words for the head of the sheet, e.g. "Holds, 1.42 in hand".
+        reasons: why, one sentence each; never empty unless the verdict is "holds".
+        mass_kg: mass of the part [kg].
+        area: of the part [mm²].
+        cases, readings, limits: as named; readings list every probe for every case.
+        mesh: the last mesh.
+        timing: seconds by stage ("meshing", "solving", "recovery", "total").
+        cautions: sentences that belong beside the verdict (a point load, a fallback mesh ...).
+        fields: the arrays; None when only the record was kept.
+    """
+
+    part_sha256: str
+    verdict: Verdict
+    headline: str
+    reasons: tuple[str, ...]
+    mass_kg: float
+    area: float
+    cases: tuple[CaseFindings, ...]
+    readings: tuple[Reading, ...]
+    limits: tuple[LimitFindings, ...]
+    mesh: MeshFindings
+    timing: dict[str, float]
+    cautions: tuple[str, ...] = ()
+    fields: Fields | None = None

@@ -1,0 +1,341 @@
+"""The part: what the engineer draws, holds, loads and asks, as frozen records.
+
+Lengths are in mm, forces in N, stresses in MPa, angles in degrees (counter-clockwise from +x),
+densities in kg/m³, accelerations in m/s², temperatures in °C - always, whatever units are shown.
+
+A closed loop is a ring of corners; `edges[i]` runs from `corners[i]` to `corners[i + 1]` (the last
+edge closes the ring)::
+
+        c4 ----e3---- c3
+        |              |
+        e4            e2          edges[i] joins corners[i] and corners[i + 1]
+        |              |
+        c1 ----e1---- c2
+
+Everything that supports, loads, limits and readings point at has an `id` that is unique in the
+part and survives edits.  A fillet is a property (`round`) of a corner.
+
+Every number in these records is a float.  Where the file gives an expression in the named
+dimensions ("width/2 - 5"), the record holds its value and `Part.formulas` keeps the text.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+Point = tuple[float, float]
+
+WallState = Literal["plane stress", "plane strain"]
+ElementName = Literal["quad4", "quad4-incompatible", "quad8", "quad9"]
+DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
+
+
+@dataclass(frozen=True)
+class Corner:
+    """A corner of a loop at `at` [mm], rounded by a fillet of radius `round` [mm] (0: sharp)."""
+
+    id: str
+    at: Point
+    round: float = 0.0
+
+
+@dataclass(frozen=True)
+class Edge:
+    """An edge of a loop: straight, or the circular arc that passes `through` a point [mm]."""
+
+    id: str
+    through: Point | None = None
+
+
+@dataclass(frozen=True)
+class Loop:
+    """A closed ring; `edges[i]` joins `corners[i]` to `corners[(i + 1) % n]`; n >= 2 (an arc)."""
+
+    corners: tuple[Corner, ...]
+    edges: tuple[Edge, ...]
+
+
+@dataclass(frozen=True)
+class CircleHole:
+    """A round hole: centre [mm] and diameter [mm]."""
+
+    id: str
+    centre: Point
+    diameter: float
+
+
+@dataclass(frozen=True)
+class SlotHole:
+    """A slot with round ends: overall `length` [mm] >= `width` [mm], axis at `angle` [deg]."""
+
+    id: str
+    centre: Point
+    length: float
+    width: float
+    angle: float = 0.0
+
+
+@dataclass(frozen=True)
+class LoopHole:
+    """A hole of any form, bounded by a loop with corners and edges of its own."""
+
+    id: str
+    loop: Loop
+
+
+Hole = CircleHole | SlotHole | LoopHole
+
+
+@dataclass(frozen=True)
+class Wall:
+    """The wall: `thickness` [mm], the name of its material, and what holds across it."""
+
+    thickness: float
+    material: str
+    state: WallState = "plane stress"
+
+
+@dataclass(frozen=True)
+class Material:
+    """An isotropic material.
+
+    Attributes:
+        name: unique in the part, e.g. "EN AW-6082-T6 sheet".
+        youngs_modulus: E [MPa].
+        poissons_ratio: ν [-], -1 < ν < 0.5.
+        density: [kg/m³].
+        proof_stress: yield or 0.2 % proof stress [MPa], None if not known.
+        strength: tensile strength [MPa], None if not known.
+        expansion: coefficient of linear expansion [1/K], None if not known.
+        source: where the figures come from ("EN 485-2", "typical, from memory").
+    """
+
+    name: str
+    youngs_modulus: float
+    poissons_ratio: float
+    density: float
+    proof_stress: float | None = None
+    strength: float | None = None
+    expansion: float | None = None
+    source: str = ""
+
+
+# --- supports -------------------------------------------------------------------------------
+
+
+@dataclass(frozen=True)
+class FixedSupport:
+    """Holds an edge, a hole's rim or a sharp corner in both directions."""
+
+    id: str
+    on: str
+
+
+@dataclass(frozen=True)
+class RollerSupport:
+    """Holds the displacement along one direction and lets the place slide across it.
+
+    `angle` [deg] is the held direction; None means the boundary's own normal (so on a hole it is
+    the radial direction: a pin on which the part can turn).  A corner needs an angle.
+    """
+
+    id: str
+    on: str
+    angle: float | None = None
+
+
+@dataclass(frozen=True)
+class PrescribedSupport:
+    """Moves a place by a given displacement [mm]; None leaves that direction free."""
+
+    id: str
+    on: str
+    x: float | None = None
+    y: float | None = None
+
+
+Support = FixedSupport | RollerSupport | PrescribedSupport
+
+# --- loads ----------------------------------------------------------------------------------
+
+
+@dataclass(frozen=True)
+class PressureLoad:
+    """A pressure [MPa] on the wall's face along an edge or hole; positive pushes on the material.
+
+    The force per length is pressure x thickness.
+    """
+
+    id: str
+    on: str
+    pressure: float
+
+
+@dataclass(frozen=True)
+class ShearLoad:
+    """A shear force per length [N/mm] along an edge or hole.
+
+    Positive acts with the material on its left (counter-clockwise round the outline, clockwise
+    round a hole).
+    """
+
+    id: str
+    on: str
+    per_length: float
+
+
+@dataclass(frozen=True)
+class LineLoad:
+    """A force per length with components `x`, `y` [N/mm] along an edge or hole."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class ForceLoad:
+    """A total force `x`, `y` [N] spread evenly along an edge or round a hole."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class BearingLoad:
+    """A pin's force `x`, `y` [N] on a circular hole: radial pressure, cosine over the half it
+    bears on (common practice, no source)."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class PointLoad:
+    """A force `x`, `y` [N] at a sharp corner; the stress under it has no finite value."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class GravityLoad:
+    """The part's own weight under the acceleration of free fall `x`, `y` [m/s²], e.g. (0, -9.81)."""
+
+    id: str
+    x: float
+    y: float
+
+
+PlacedLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad
+Load = PlacedLoad | GravityLoad
+
+
+@dataclass(frozen=True)
+class Case:
+    """A load case: loads that act together."""
+
+    id: str
+    name: str
+    loads: tuple[Load, ...] = ()
+
+
+# --- limits, mesh, readings -----------------------------------------------------------------
+
+
+@dataclass(frozen=True)
+class StressLimit:
+    """Everywhere: `measure` times `factor` stays under the material's `against` stress."""
+
+    id: str
+    measure: Literal["von_mises", "sigma_1"] = "von_mises"
+    against: Literal["proof_stress", "strength"] = "proof_stress"
+    factor: float = 1.5
+
+
+@dataclass(frozen=True)
+class DisplacementLimit:
+    """Nowhere does the part move by more than `most` [mm]."""
+
+    id: str
+    most: float
+
+
+Limit = StressLimit | DisplacementLimit
+
+
+@dataclass(frozen=True)
+class MeshWishes:
+    """What the user asks of the mesh.
+
+    Attributes:
+        element: which quad.
+        tolerance: relative accuracy at which a number counts as settled (0.02 = 2 %).
+        size: largest element side [mm]; None lets the program choose.
+        across: least number of elements across the thinnest wall.
+    """
+
+    element: ElementName = "quad9"
+    tolerance: float = 0.02
+    size: float | None = None
+    across: int = 3
+
+
+@dataclass(frozen=True)
+class Probe:
+    """A reading at a point [mm] of the part."""
+
+    id: str
+    name: str
+    at: Point
+
+
+@dataclass(frozen=True)
+class Dimension:
+    """A named value that expressions may use, with the bounds it may vary within [mm or deg]."""
+
+    name: str
+    value: float
+    lower: float | None = None
+    upper: float | None = None
+
+
+@dataclass(frozen=True)
+class Formula:
+    """The text of an expression; `field` is its dotted path, e.g. "outline.corners.c3.at.0"."""
+
+    field: str
+    text: str
+
+
+@dataclass(frozen=True)
+class Part:
+    """Everything a `*.part.json` file holds."""
+
+    title: str = "Untitled part"
+    notes: str = ""
+    display_units: DisplayUnits = "mm-N-MPa"
+    dimensions: tuple[Dimension, ...] = ()
+    formulas: tuple[Formula, ...] = ()
+    outline: Loop | None = None
+    holes: tuple[Hole, ...] = ()
+    wall: Wall = Wall(3.0, "")
+    materials: tuple[Material, ...] = ()
+    supports: tuple[Support, ...] = ()
+    cases: tuple[Case, ...] = ()
+    limits: tuple[Limit, ...] = ()
+    mesh: MeshWishes = MeshWishes()
+    readings: tuple[Probe, ...] = ()
+
+    @property
+    def material(self) -> Material | None:
+        """The wall's material, or None while none is chosen."""
+        return next((m for m in self.materials if m.name == self.wall.material), None)

@@ -1,0 +1,94 @@
+"""What the equations gave: displacements, reactions and the checks on them, for every case.
+
+Cases keep the order of `Part.cases`.  Stress arrays hold σx, σy, τxy [MPa] on their last axis.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.model.part import ElementName
+
+Floats = NDArray[np.float64]
+
+
+@dataclass(frozen=True)
+class Reaction:
+    """What one support gives: force `x`, `y` [N] and moment about the origin [N·mm]."""
+
+    support: str
+    x: float
+    y: float
+    moment: float
+
+
+@dataclass(frozen=True)
+class Balance:
+    """Loads plus reactions, relative to the largest of them: a free body must give zero."""
+
+    force: float
+    moment: float
+
+
+@dataclass(frozen=True, eq=False)
+class Solution:
+    """Displacements on a mesh.
+
+    Attributes:
+        element: the element that was used.
+        displacements: [mm], (n_cases, n_nodes, 2).  Nodes that the element does not carry
+            (middle and centre nodes of the simpler quads) hold its own interpolation there.
+        reactions: for each case, one record for each support.
+        balance: for each case.
+        residual: largest relative residual of the linear equations over the cases.
+        unknowns: number of free displacement components solved for.
+        internal_modes: amplitudes of the incompatible modes,
+            (n_cases, n_elements, 4), only for "quad4-incompatible"; else None.
+    """
+
+    element: ElementName
+    displacements: Floats
+    reactions: tuple[tuple[Reaction, ...], ...]
+    balance: tuple[Balance, ...]
+    residual: float
+    unknowns: int
+    internal_modes: Floats | None = None
+
+
+@dataclass(frozen=True, eq=False)
+class StressField:
+    """Recovered stresses of all cases.
+
+    Attributes:
+        nodal: averaged inside, edge recovery on the boundary, (n_cases, n_nodes, 3) [MPa].
+        side: edge recovery at the start, middle and end of every boundary side,
+            (n_cases, n_sides, 3, 3) [MPa]: axis 2 is the place, axis 3 the component.  Two sides
+            that meet at a sharp corner keep different values.
+        energy_error: estimated energy error of each element relative to the whole strain energy,
+            (n_cases, n_elements); the squares add up to the square of the global estimate.
+    """
+
+    nodal: Floats
+    side: Floats
+    energy_error: Floats
+
+
+def von_mises(stress: Floats, poisson: float = 0.0) -> Floats:
+    """Von Mises stress [MPa] of (..., 3) stresses.
+
+    `poisson` is zero for plane stress; for plane strain give ν, so that σz = ν (σx + σy) counts.
+    """
+    sx, sy, txy = stress[..., 0], stress[..., 1], stress[..., 2]
+    sz = poisson * (sx + sy)
+    squares = (sx - sy) ** 2 + (sy - sz) ** 2 + (sz - sx) ** 2
+    return np.asarray(np.sqrt(0.5 * squares + 3.0 * txy**2))
+
+
+def principal(stress: Floats) -> tuple[Floats, Floats, Floats]:
+    """In-plane principal stresses σ1 >= σ2 [MPa] and the angle of σ1 [rad] from +x."""
+    sx, sy, txy = stress[..., 0], stress[..., 1], stress[..., 2]
+    mean, radius = 0.5 * (sx + sy), np.hypot(0.5 * (sx - sy), txy)
+    return mean + radius, mean - radius, 0.5 * np.arctan2(2.0 * txy, sx - sy)

@@ -1,0 +1,172 @@
+"""The open document: the part, its history, its findings and what the user points at.
+
+Board, sheet and readings each show this one object and change it through it; they never talk to
+one another.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from pathlib import Path
+from typing import Literal
+
+from PySide6.QtCore import QObject, Signal
+
+from screenapp.model.errors import Fault
+from screenapp.model.findings import Findings
+from screenapp.model.history import History
+from screenapp.model.part import Part
+from screenapp.model.part_json import part_sha256
+from screenapp.model.validity import faults_of
+
+Lens = Literal["Shape", "Mesh", "Utilisation", "Stress", "Displacement", "Trust"]
+StressComponent = Literal["von_mises", "sigma_1", "sigma_2", "sigma_x", "sigma_y", "tau_xy"]
+DisplacementComponent = Literal["u", "u_x", "u_y"]
+
+
+@dataclass(frozen=True)
+class View:
+    """What is painted on the part.
+
+    `deformation` is the factor on the drawn displacement; None lets the board choose one that can
+    be seen; 0 draws the part undeformed.  `case` indexes `Part.cases`.
+    """
+
+    lens: Lens = "Shape"
+    stress: StressComponent = "von_mises"
+    displacement: DisplacementComponent = "u"
+    case: int = 0
+    deformation: float | None = None
+
+
+class Document(QObject):
+    """Holds the state and says when it changes.
+
+    Signals:
+        part_changed: the part is another one (also after undo, redo, open).
+        findings_changed: other findings, or they became out of date or current.
+        selection_changed, hovered_changed: ids of corners, edges, holes, supports, loads,
+            readings, limits.
+        view_changed: another lens, component, case or deformation.
+        path_changed: saved, saved as, opened; also when "unsaved" turns.
+        said: a sentence for the status line.
+    """
+
+    part_changed = Signal()
+    findings_changed = Signal()
+    selection_changed = Signal()
+    hovered_changed = Signal()
+    view_changed = Signal()
+    path_changed = Signal()
+    said = Signal(str)
+
+    def __init__(self, part: Part | None = None, parent: QObject | None = None) -> None:
+        super().__init__(parent)
+        self.history = History(part if part is not None else Part())
+        self.path: Path | None = None
+        self.findings: Findings | None = None
+        self.selection: tuple[str, ...] = ()
+        self.hovered: str | None = None
+        self.view = View()
+        self._saved = self.history.part
+        self._hash_of: tuple[Part, str] | None = None
+        self._faults_of: tuple[Part, tuple[Fault, ...]] | None = None
+
+    @property
+    def part(self) -> Part:
+        """The part as it now is."""
+        return self.history.part
+
+    @property
+    def faults(self) -> tuple[Fault, ...]:
+        """Everything that is wrong with the part, worked out once for each part."""
+        if self._faults_of is None or self._faults_of[0] is not self.part:
+            self._faults_of = (self.part, faults_of(self.part))
+        return self._faults_of[1]
+
+    @property
+    def sha256(self) -> str:
+        """Hash of the part, worked out once for each part."""
+        if self._hash_of is None or self._hash_of[0] is not self.part:
+            self._hash_of = (self.part, part_sha256(self.part))
+        return self._hash_of[1]
+
+    @property
+    def current(self) -> bool:
+        """Whether the findings belong to the part as it now is."""
+        return self.findings is not None and self.findings.part_sha256 == self.sha256
+
+    @property
+    def unsaved(self) -> bool:
+        """Whether the part differs from what was last opened or saved."""
+        return self.part != self._saved
+
+    def apply(self, name: str, part: Part) -> None:
+        """Make `part` the present one as a named, undoable step; nothing happens if it is equal."""
+        if part == self.part:
+            return
+        self.history.push(name, part)
+        self._told_part()
+
+    def undo(self) -> None:
+        """Step back once, if there is a step."""
+        if self.history.can_undo:
+            self.said.emit(f"Undone: {self.history.undo()}")
+            self._told_part()
+
+    def redo(self) -> None:
+        """Step forward once, if there is a step."""
+        if self.history.can_redo:
+            self.said.emit(f"Redone: {self.history.redo()}")
+            self._told_part()
+
+    def open(self, part: Part, path: Path | None) -> None:
+        """Show another part, with a fresh history."""
+        self.history = History(part)
+        self._saved = part
+        self.path = path
+        self.findings = None
+        self.selection = ()
+        self.hovered = None
+        self.view = View()
+        self._told_part()
+        self.findings_changed.emit()
+        self.selection_changed.emit()
+        self.view_changed.emit()
+
+    def mark_saved(self, path: Path) -> None:
+        """The part as it now is stands in `path`."""
+        self.path = path
+        self._saved = self.part
+        self.path_changed.emit()
+
+    def set_findings(self, findings: Findings | None) -> None:
+        """Show other findings."""
+        self.findings = findings
+        self.findings_changed.emit()
+
+    def select(self, *ids: str) -> None:
+        """Select these ids and nothing else."""
+        if ids != self.selection:
+            self.selection = ids
+            self.selection_changed.emit()
+
+    def hover(self, id_: str | None) -> None:
+        """Light one id on the board and in the sheet, or none."""
+        if id_ != self.hovered:
+            self.hovered = id_
+            self.hovered_changed.emit()
+
+    def look(self, **changes: object) -> None:
+        """Change the view, e.g. `look(lens="Stress", case=1)`."""
+        view = replace(self.view, **changes)  # type: ignore[arg-type]
+        if view != self.view:
+            self.view = view
+            self.view_changed.emit()
+
+    def _told_part(self) -> None:
+        if self.view.case >= max(1, len(self.part.cases)):
+            self.look(case=0)
+        self.part_changed.emit()
+        self.findings_changed.emit()
+        self.path_changed.emit()
