@@ -160,7 +160,9 @@ class Findings:
     """Everything that one screening found.
 
     Attributes:
-        part_sha256: hash of the part (stored bytes) it belongs to.
+        part_sha256: hash of the part file's bytes.
+        key: `part_json.screening_key` of the part: what title, notes, units and readings do not
+            change, so that a new probe does not put the findings out of date.
         verdict: over all limits and cases.
         headline: the verdict in words for the head of the sheet, e.g. "Holds, 1.42 in hand".
         reasons: why, one sentence each; never empty unless the verdict is "holds".
@@ -170,10 +172,11 @@ class Findings:
         mesh: the last mesh.
         timing: seconds by stage ("meshing", "solving", "recovery", "total").
         cautions: sentences that belong beside the verdict (a point load, a fallback mesh ...).
-        fields: the arrays; None when only the record was kept.
+        fields: the arrays of every pass, last one last; empty when only the record was kept.
     """
 
     part_sha256: str
+    key: str
     verdict: Verdict
     headline: str
     reasons: tuple[str, ...]
@@ -185,4 +188,9 @@ class Findings:
     mesh: MeshFindings
     timing: dict[str, float]
     cautions: tuple[str, ...] = ()
-    fields: Fields | None = None
+    fields: tuple[Fields, ...] = ()
+
+    @property
+    def last(self) -> Fields | None:
+        """The arrays of the last pass, None when only the record was kept."""
+        return self.fields[-1] if self.fields else None

@@ -16,7 +16,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.findings import Findings
 from screenapp.model.history import History
 from screenapp.model.part import Part
-from screenapp.model.part_json import part_sha256
+from screenapp.model.part_json import screening_key
 from screenapp.model.validity import faults_of
 
 Lens = Literal["Shape", "Mesh", "Utilisation", "Stress", "Displacement", "Trust"]
@@ -69,7 +69,7 @@ class Document(QObject):
         self.hovered: str | None = None
         self.view = View()
         self._saved = self.history.part
-        self._hash_of: tuple[Part, str] | None = None
+        self._key_of: tuple[Part, str] | None = None
         self._faults_of: tuple[Part, tuple[Fault, ...]] | None = None
 
     @property
@@ -85,16 +85,16 @@ class Document(QObject):
         return self._faults_of[1]
 
     @property
-    def sha256(self) -> str:
-        """Hash of the part, worked out once for each part."""
-        if self._hash_of is None or self._hash_of[0] is not self.part:
-            self._hash_of = (self.part, part_sha256(self.part))
-        return self._hash_of[1]
+    def key(self) -> str:
+        """Key of everything that findings depend on, worked out once for each part."""
+        if self._key_of is None or self._key_of[0] is not self.part:
+            self._key_of = (self.part, screening_key(self.part))
+        return self._key_of[1]
 
     @property
     def current(self) -> bool:
         """Whether the findings belong to the part as it now is."""
-        return self.findings is not None and self.findings.part_sha256 == self.sha256
+        return self.findings is not None and self.findings.key == self.key
 
     @property
     def unsaved(self) -> bool:
