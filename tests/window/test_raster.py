@@ -106,7 +106,7 @@ def test_quad_with_inward_corner_is_filled_right() -> None:
     mids = 0.5 * (corners + np.roll(corners, -1, axis=0))
     points[mesh.quads[0, 4:8]] = mids
     points[mesh.quads[0, 8]] = corners.mean(axis=0)
-    view = Viewport(-1.3, 21.7, 2.0, 2.0, 12, 12)  # sides of at most 10 px: one plain quad
+    view = Viewport(-1.3, 21.7, 2.1, 2.1, 12, 12)  # sides of at most 10 px: one plain quad
     painted = np.isfinite(rasterise(points, mesh.quads, np.ones(9), view))
     x, y = grid(view)
     assert_array_equal(painted, contains_xy(Polygon(corners), x, y))

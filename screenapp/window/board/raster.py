@@ -68,7 +68,7 @@ class Viewport:
         """x of each column (width,) and y of each row (height,) [mm]."""
         x = self.left + (np.arange(self.width) + 0.5) * self.per_pixel_x
         y = self.top - (np.arange(self.height) + 0.5) * self.per_pixel_y
-        return x, y
+        return np.asarray(x), np.asarray(y)
 
 
 def rasterise(points: Floats, quads: Ints, values: Floats, view: Viewport) -> Image:
@@ -103,7 +103,7 @@ def rasterise(points: Floats, quads: Ints, values: Floats, view: Viewport) -> Im
 
 
 def _in_view(xy: Floats, quads: Ints, view: Viewport) -> Ints:
-    """Indices of the quads whose box meets the image and holds no NaN."""
+    """Indices of the quads whose box meets the image."""
     x, y = xy[quads, 0], xy[quads, 1]
     # A curved side may bulge past its nodes by at most a quarter of its mid-node's offset; a box
     # widened by a third of its size holds it whatever the curve.
