@@ -1,0 +1,269 @@
+"""Boundary pieces that cross, touch, fold back or are too short, and holes in wrong places.
+
+The mesher hangs on such shapes without a word, so they must be found before.  Two pieces touch
+when they come nearer than one millionth of the part's size without being neighbours.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.model.curve_table import CurveTable
+from screenapp.model.errors import Fault
+from screenapp.model.meetings import close_pairs, closest_approaches, intersections
+from screenapp.model.shape import BoundaryCurve, Shape
+
+TOUCH = 1e-6
+"""Pieces nearer than this share of the part's size touch."""
+
+MOST = 20
+"""No more faults of one kind are listed: a badly drawn outline can have thousands."""
+
+NARROWEST_ANGLE = 1.0
+"""Neighbouring pieces that enclose a smaller angle [deg] run back over one another."""
+
+Ints = NDArray[np.int64]
+Floats = NDArray[np.float64]
+
+
+def boundary_faults(shape: Shape) -> list[Fault]:
+    """All that is wrong with the boundary as a whole; every fault blocks."""
+    table = CurveTable.of(shape.curves)
+    touch = TOUCH * shape.size
+    faults = _short_pieces(shape, table, touch)
+    if faults:
+        return faults
+    faults += _folds(shape, table)
+    meeting, crossed = _meetings(shape, table, touch)
+    faults += meeting
+    return faults + _misplaced_holes(shape, table, crossed)
+
+
+def piece_name(piece: BoundaryCurve) -> str:
+    """The words for a piece: "edge e3", "fillet c2", "hole h1"."""
+    return f"{piece.kind} {piece.feature}"
+
+
+def _short_pieces(shape: Shape, table: CurveTable, touch: float) -> list[Fault]:
+    faults = []
+    for k in np.flatnonzero(table.lengths < 2.0 * touch)[:MOST]:
+        piece = shape.curves[k]
+        x, y = piece.curve.point(0.5)
+        faults.append(
+            Fault(
+                f"{piece_name(piece)} is only {table.lengths[k]:.3g} mm long",
+                "make it longer or remove it"
+                if piece.kind != "edge"
+                else "make it longer, make the rounds at its ends smaller, or remove it",
+                _field(shape, piece),
+                (piece.feature,),
+                (float(x), float(y)),
+            )
+        )
+    return faults
+
+
+def _neighbours(shape: Shape) -> Ints:
+    """The piece that follows each piece on its loop, (n,)."""
+    following = np.arange(1, len(shape.curves) + 1)
+    for first, last in shape.loops:
+        following[last - 1] = first
+    return following
+
+
+def _folds(shape: Shape, table: CurveTable) -> list[Fault]:
+    """Neighbours that leave no angle between them."""
+    here = np.arange(len(table))
+    there = _neighbours(shape)
+    t_in = table.tangents(here, np.ones(len(here)))
+    t_out = table.tangents(there, np.zeros(len(here)))
+    cosine = np.sum(t_in * t_out, axis=1)
+    cross = t_in[:, 0] * t_out[:, 1] - t_in[:, 1] * t_out[:, 0]
+    between = 180.0 - np.degrees(np.abs(np.arctan2(cross, cosine)))
+    faults = []
+    for k in np.flatnonzero(between < NARROWEST_ANGLE)[:MOST]:
+        a, b = shape.curves[k], shape.curves[there[k]]
+        x, y = table.end[k]
+        faults.append(
+            Fault(
+                f"{piece_name(a)} and {piece_name(b)} enclose an angle of {between[k]:.2g}° "
+                f"at ({x:.4g}, {y:.4g})",
+                f"move a corner so that they enclose at least {NARROWEST_ANGLE:g}°",
+                _field(shape, b),
+                (a.feature, b.feature),
+                (float(x), float(y)),
+            )
+        )
+    return faults
+
+
+def _meetings(shape: Shape, table: CurveTable, touch: float) -> tuple[list[Fault], set[int]]:
+    """Faults for pieces that cross or touch, and the loops that they spoil."""
+    i, j = close_pairs(table, touch)
+    plain = np.array([shape.curves[first].kind == "hole" for first, _ in shape.loops])
+    same_plain = (table.loop[i] == table.loop[j]) & plain[table.loop[i]]  # sound by making
+    i, j = i[~same_plain], j[~same_plain]
+    pair, points, crosses = _meeting_points(shape, table, i, j, touch)
+    faults: list[Fault] = []
+    spoilt: set[int] = set()
+    said: set[tuple[str, str]] = set()
+    for k, point, cross in zip(pair, points, crosses, strict=True):
+        a, b = shape.curves[i[k]], shape.curves[j[k]]
+        if a.loop != b.loop:
+            spoilt |= {a.loop, b.loop} - {0}
+        names = (_loop_name(shape, a, b), _loop_name(shape, b, a))
+        if names in said or len(faults) >= MOST:
+            continue
+        said.add(names)
+        faults.append(_meeting_fault(shape, a, b, names, point, bool(cross)))
+    return faults, spoilt
+
+
+def _meeting_points(
+    shape: Shape, table: CurveTable, i: Ints, j: Ints, touch: float
+) -> tuple[Ints, Floats, NDArray[np.bool_]]:
+    """Pairs that meet elsewhere than at their common ends: pair, point, and whether they cross."""
+    pair, points = intersections(table, i, j)
+    a, b = i[pair], j[pair]
+    t_a, t_b = table.nearest(a, points), table.nearest(b, points)
+    u, v = table.tangents(a, t_a), table.tangents(b, t_b)
+    skew = np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]) > 1e-6
+    inner = np.ones(len(pair), dtype=bool)
+    for which in (a, b):
+        for end in (table.start[which], table.end[which]):
+            inner &= np.hypot(*(points - end).T) > touch
+    near = closest_approaches(table, i, j)
+    close = near.gap <= touch
+    pair = np.concatenate([pair, near.pair[close]])
+    points = np.concatenate([points, 0.5 * (near.p_i + near.p_j)[close]])
+    crosses = np.concatenate([skew & inner, np.zeros(int(close.sum()), dtype=bool)])
+    foreign = ~_at_common_end(shape, table, i[pair], j[pair], points, touch)
+    pair, points, crosses = pair[foreign], points[foreign], crosses[foreign]
+    order = np.lexsort((~crosses, pair))
+    return pair[order], points[order], crosses[order]
+
+
+def _at_common_end(
+    shape: Shape, table: CurveTable, i: Ints, j: Ints, points: Floats, touch: float
+) -> NDArray[np.bool_]:
+    """Whether each point is where the one curve follows the other.
+
+    Where a curve leaves its neighbour tangentially, they stay close for a while: the reach of the
+    common end is there sqrt(2 R gap) for the smaller radius R.
+    """
+    following = _neighbours(shape)
+    common = np.zeros(len(points), dtype=bool)
+    for first, second in ((i, j), (j, i)):
+        follows = following[first] == second
+        corner = table.end[first]
+        u = table.tangents(first, np.ones(len(first)))
+        v = table.tangents(second, np.zeros(len(first)))
+        turn = np.arctan2(
+            np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]), np.sum(u * v, axis=1)
+        )
+        curved = np.where(
+            table.arc[first] | table.arc[second],
+            np.minimum(
+                np.where(table.arc[first], table.radius[first], np.inf),
+                np.where(table.arc[second], table.radius[second], np.inf),
+            ),
+            0.0,
+        )
+        smooth = np.where(turn < 1e-3, 2.0 * np.sqrt(2.0 * curved * touch) + 3.0 * touch, 0.0)
+        reach = np.maximum(3.0 * touch / np.maximum(np.sin(turn), 1e-2), smooth)
+        common |= follows & (np.hypot(*(points - corner).T) <= reach)
+    return common
+
+
+def _loop_name(shape: Shape, piece: BoundaryCurve, other: BoundaryCurve) -> str:
+    """A piece by name, or its whole hole where two loops meet."""
+    hole = shape.hole_ids[piece.loop]
+    if hole is None or piece.loop == other.loop:
+        return piece_name(piece)
+    return f"hole {hole}"
+
+
+def _meeting_fault(
+    shape: Shape,
+    a: BoundaryCurve,
+    b: BoundaryCurve,
+    names: tuple[str, str],
+    point: Floats,
+    cross: bool,
+) -> Fault:
+    x, y = float(point[0]), float(point[1])
+    word = "cross" if cross else "touch"
+    if a.loop == b.loop:
+        loop = "outline" if a.loop == 0 else "hole"
+        mend = f"move a corner so that the {loop} does not {word} itself"
+        ids: tuple[str, ...] = (a.feature, b.feature)
+        field = _field(shape, a)
+    else:
+        hole = shape.hole_ids[b.loop]
+        other = "the outline" if a.loop == 0 else names[0]
+        mend = f"move hole {hole} or make it smaller, so that it stays clear of {other}"
+        ids = (shape.hole_ids[a.loop] or a.feature, hole or b.feature)
+        field = f"holes.{hole}"
+    return Fault(f"{names[0]} and {names[1]} {word} at ({x:.4g}, {y:.4g})", mend, field, ids, (x, y))
+
+
+def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[Fault]:
+    """Holes outside the outline or inside one another; `spoilt` ones are reported already."""
+    holes = [n for n in range(1, len(shape.loops)) if n not in spoilt]
+    if not holes:
+        return []
+    firsts = table.start[[shape.loops[n][0] for n in holes]]
+    faults = []
+    inside = table.inside(0, firsts)
+    for n, point, ok in zip(holes, firsts, inside, strict=True):
+        if not ok and len(faults) < MOST:
+            hole = shape.hole_ids[n] or ""
+            faults.append(
+                Fault(
+                    f"hole {hole} lies outside the outline",
+                    "move the hole into the outline or remove it",
+                    f"holes.{hole}",
+                    (hole,),
+                    (float(point[0]), float(point[1])),
+                )
+            )
+    return faults + _nested_holes(shape, table, holes)
+
+
+def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fault]:
+    boxes = table.boxes()
+    starts = [first for first, _ in shape.loops]
+    low = np.minimum.reduceat(boxes[:, :2], starts, axis=0)
+    high = np.maximum.reduceat(boxes[:, 2:], starts, axis=0)
+    size = np.prod(high - low, axis=1)
+    faults = []
+    order = sorted(holes, key=lambda n: -size[n])
+    points = table.start[[shape.loops[n][0] for n in order]]
+    for rank, outer in enumerate(order):
+        rest = points[rank + 1 :]
+        near = np.flatnonzero(np.all((rest > low[outer]) & (rest < high[outer]), axis=1))
+        if len(near) == 0:
+            continue
+        for k in near[table.inside(outer, rest[near])]:
+            inner = shape.hole_ids[order[rank + 1 + k]] or ""
+            around = shape.hole_ids[outer] or ""
+            if len(faults) < MOST:
+                faults.append(
+                    Fault(
+                        f"hole {inner} lies inside hole {around}",
+                        "move it out or remove one of the two",
+                        f"holes.{inner}",
+                        (inner, around),
+                        (float(rest[k][0]), float(rest[k][1])),
+                    )
+                )
+    return faults
+
+
+def _field(shape: Shape, piece: BoundaryCurve) -> str:
+    hole = shape.hole_ids[piece.loop]
+    where = "outline" if hole is None else f"holes.{hole}"
+    if piece.kind == "edge":
+        return f"{where}.edges.{piece.feature}"
+    return f"{where}.corners.{piece.feature}.round" if piece.kind == "fillet" else where

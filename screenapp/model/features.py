@@ -1,0 +1,129 @@
+"""What each id of a part stands for, and the words that name it.
+
+Supports, loads, limits and readings point at corners, edges and holes by id; this module is the
+one place that looks ids up.  It takes any part, also one with faults: of two things that bear the
+same id the first one is found.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from typing import Literal
+
+from screenapp.model.part import (
+    Case,
+    CircleHole,
+    Corner,
+    Edge,
+    Hole,
+    Limit,
+    Load,
+    Loop,
+    LoopHole,
+    Part,
+    Probe,
+    SlotHole,
+    Support,
+)
+
+Kind = Literal["corner", "edge", "hole", "support", "case", "load", "limit", "probe"]
+Record = Corner | Edge | Hole | Support | Case | Load | Limit | Probe
+
+PREFIXES: dict[Kind, str] = {
+    "corner": "c",
+    "edge": "e",
+    "hole": "h",
+    "support": "s",
+    "case": "k",
+    "load": "l",
+    "limit": "g",
+    "probe": "p",
+}
+"""The letter that ids made by this program begin with."""
+
+
+@dataclass(frozen=True)
+class Found:
+    """What an id stands for.
+
+    Attributes:
+        kind: what sort of thing it is.
+        record: the record itself.
+        owner: id of the hole for a corner or edge of a loop hole, of the case for a load; else "".
+        field: dotted path of the record in the part file.
+    """
+
+    kind: Kind
+    record: Record
+    owner: str
+    field: str
+
+
+def everything(part: Part) -> Iterator[Found]:
+    """All things of a part that bear an id, outline first, in the order of the part file."""
+    for where, owner, loop in loops_of(part):
+        for corner in loop.corners:
+            yield Found("corner", corner, owner, f"{where}.corners.{corner.id}")
+        for edge in loop.edges:
+            yield Found("edge", edge, owner, f"{where}.edges.{edge.id}")
+    for hole in part.holes:
+        yield Found("hole", hole, "", f"holes.{hole.id}")
+    for support in part.supports:
+        yield Found("support", support, "", f"supports.{support.id}")
+    for case in part.cases:
+        yield Found("case", case, "", f"cases.{case.id}")
+        for load in case.loads:
+            yield Found("load", load, case.id, f"cases.{case.id}.loads.{load.id}")
+    for limit in part.limits:
+        yield Found("limit", limit, "", f"limits.{limit.id}")
+    for probe in part.readings:
+        yield Found("probe", probe, "", f"readings.{probe.id}")
+
+
+def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:
+    """Field, owning hole's id ("" for the outline) and loop of everything drawn as a loop."""
+    if part.outline is not None:
+        yield "outline", "", part.outline
+    for hole in part.holes:
+        if isinstance(hole, LoopHole):
+            yield f"holes.{hole.id}", hole.id, hole.loop
+
+
+def find(part: Part, id_: str) -> Found | None:
+    """What `id_` stands for in the part, None if nothing bears it."""
+    return next((found for found in everything(part) if found.record.id == id_), None)
+
+
+def place_name(part: Part, id_: str) -> str:
+    """The words for an id: "edge e3", "hole h1", "corner c2", "fillet c3", "support s1" ...
+
+    An id that nothing bears is given back as it is, in quotes.
+    """
+    found = find(part, id_)
+    return f"“{id_}”" if found is None else name_of(found)
+
+
+def name_of(found: Found) -> str:
+    """The words for something found: "edge e3", "fillet c3" for a rounded corner ..."""
+    record = found.record
+    if isinstance(record, Corner) and record.round != 0.0:
+        return f"fillet {record.id}"
+    return f"{found.kind} {record.id}"
+
+
+def hole_word(hole: Hole) -> str:
+    """What a hole is in one or two words: "round hole", "slot" or "hole"."""
+    if isinstance(hole, CircleHole):
+        return "round hole"
+    return "slot" if isinstance(hole, SlotHole) else "hole"
+
+
+def edges_at(loop: Loop, corner: str) -> tuple[Edge, Edge] | None:
+    """The edges that end and begin at a corner; None if the loop is broken or has no such one."""
+    if len(loop.corners) != len(loop.edges):
+        return None
+    for i, c in enumerate(loop.corners):
+        if c.id == corner:
+            return loop.edges[i - 1], loop.edges[i]
+    return None

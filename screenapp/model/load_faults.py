@@ -1,0 +1,157 @@
+"""Cases without loads, loads that are no numbers, and loads on places they cannot act on."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from screenapp.model.errors import Fault
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    CircleHole,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Load,
+    Part,
+    PointLoad,
+    PrescribedSupport,
+    PressureLoad,
+    ShearLoad,
+)
+from screenapp.model.shape import Shape
+from screenapp.model.support_faults import Places, place_fault
+
+LARGEST = 1e15
+"""No component of a load may be larger [N, N/mm, MPa or m/s²]."""
+
+FAST = 1000.0
+"""An acceleration above this [m/s²] is pointed out: it was perhaps meant in mm/s²."""
+
+WORDS: dict[type, str] = {
+    PressureLoad: "pressure",
+    ShearLoad: "shear",
+    LineLoad: "line load",
+    ForceLoad: "force",
+    BearingLoad: "bearing force",
+    PointLoad: "point load",
+    GravityLoad: "gravity",
+}
+"""What each load is called."""
+
+
+def load_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fault]:
+    """Faults of all cases, one after another."""
+    if not part.cases:
+        yield Fault("there is no load case", "add a case and put a load into it", "cases")
+    pushed = any(
+        isinstance(s, PrescribedSupport) and (s.x not in (None, 0.0) or s.y not in (None, 0.0))
+        for s in part.supports
+    )
+    names: set[str] = set()
+    for case in part.cases:
+        where = f"cases.{case.id}"
+        if case.name in names:
+            yield Fault(
+                f"two cases are called “{case.name}”",
+                "rename one of them, so that findings can be told apart",
+                f"{where}.name",
+                (case.id,),
+                blocks=False,
+            )
+        names.add(case.name)
+        if not case.loads:
+            if not pushed:
+                yield Fault(
+                    f"case “{case.name}” has no load",
+                    "put a load on an edge, a hole or a corner, or remove the case",
+                    f"{where}.loads",
+                    (case.id,),
+                )
+            continue
+        yield from _case_faults(part, case, places, shape)
+        if not pushed and all(not any(components(load).values()) for load in case.loads):
+            yield Fault(
+                f"all loads of case “{case.name}” are zero",
+                "give a load that is not zero, or remove the case",
+                f"{where}.loads",
+                (case.id, *(load.id for load in case.loads)),
+            )
+
+
+def components(load: Load) -> dict[str, float]:
+    """The numbers of a load by the names of their fields."""
+    if isinstance(load, PressureLoad):
+        return {"pressure": load.pressure}
+    if isinstance(load, ShearLoad):
+        return {"per_length": load.per_length}
+    return {"x": load.x, "y": load.y}
+
+
+def _case_faults(part: Part, case: Case, places: Places, shape: Shape | None) -> Iterator[Fault]:
+    for load in case.loads:
+        where = f"cases.{case.id}.loads.{load.id}"
+        name = f"{WORDS.get(type(load), 'load')} {load.id}"
+        for axis, value in components(load).items():
+            if not math.isfinite(value) or abs(value) > LARGEST:
+                yield Fault(
+                    f"the {axis.replace('_', ' ')} of {name} is {value:g}",
+                    "give a finite number",
+                    f"{where}.{axis}",
+                    (load.id,),
+                )
+        if isinstance(load, GravityLoad):
+            if FAST < math.hypot(load.x, load.y) <= LARGEST:
+                yield Fault(
+                    f"{name} is {math.hypot(load.x, load.y):.4g} m/s², "
+                    f"{math.hypot(load.x, load.y) / 9.80665:.3g} times free fall",
+                    "check its unit: m/s² is wanted",
+                    where,
+                    (load.id,),
+                    blocks=False,
+                )
+        else:
+            yield from _place_faults(part, load, name, where, places, shape)
+
+
+def _place_faults(
+    part: Part,
+    load: PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad,
+    name: str,
+    where: str,
+    places: Places,
+    shape: Shape | None,
+) -> Iterator[Fault]:
+    found = places.get(load.on)
+    ids = (load.id, load.on)
+    if found is not None and not isinstance(load, PointLoad) and found.kind == "corner":
+        wanted = "a round hole" if isinstance(load, BearingLoad) else "an edge or hole"
+        yield Fault(
+            f"{name} cannot act on corner {load.on}",
+            f"put it on {wanted}, or use a point load",
+            f"{where}.on",
+            ids,
+        )
+        return
+    fault = place_fault(part, name, load.on, f"{where}.on", places, shape)
+    if fault is not None:
+        yield Fault(
+            fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at
+        )
+        return
+    assert found is not None
+    if isinstance(load, BearingLoad) and not isinstance(found.record, CircleHole):
+        yield Fault(
+            f"{name} cannot act on {found.kind} {load.on}: a pin needs a round hole",
+            "put it on a round hole, or use a force",
+            f"{where}.on",
+            ids,
+        )
+    elif isinstance(load, PointLoad) and found.kind != "corner":
+        yield Fault(
+            f"{name} cannot act on {found.kind} {load.on}",
+            "put it on a sharp corner, or use a force",
+            f"{where}.on",
+            ids,
+        )

@@ -1,0 +1,189 @@
+"""Numbers and records of the shape that are wrong by themselves, whatever stands beside them."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from screenapp.model.curves import Segment, arc_through
+from screenapp.model.errors import Fault
+from screenapp.model.features import everything, loops_of
+from screenapp.model.part import CircleHole, Loop, Part, Point, SlotHole
+
+FARTHEST = 1e6
+"""No coordinate or length may be larger [mm]: a kilometre is no workpiece."""
+
+SMALLEST = 1e-4
+"""No size may be smaller [mm]: a tenth of a micrometre is below any drawing."""
+
+
+def id_faults(part: Part) -> list[Fault]:
+    """Ids that are empty or borne by more than one thing."""
+    faults: list[Fault] = []
+    seen: dict[str, str] = {}
+    for found in everything(part):
+        id_ = found.record.id
+        if not id_:
+            faults.append(
+                Fault(f"a {found.kind} has no id", "give it an id", found.field.rstrip("."))
+            )
+        elif id_ in seen:
+            faults.append(
+                Fault(
+                    f"the id “{id_}” is borne by a {seen[id_]} and by another {found.kind}"
+                    if seen[id_] == found.kind
+                    else f"the id “{id_}” is borne by a {seen[id_]} and by a {found.kind}",
+                    "give one of them another id",
+                    found.field,
+                    (id_,),
+                )
+            )
+        else:
+            seen[id_] = found.kind
+    return faults
+
+
+def size_faults(part: Part) -> list[Fault]:
+    """Everything in outline and holes that keeps the boundary from being worked out at all."""
+    if part.outline is None:
+        faults = [Fault("the part has no outline", "draw a closed outline", "outline")]
+    else:
+        faults = []
+    for where, hole, loop in loops_of(part):
+        faults += _loop_faults(loop, where, f"hole {hole}" if hole else "the outline")
+    for h in part.holes:
+        if isinstance(h, CircleHole | SlotHole):
+            faults += _point_faults(h.centre, f"the centre of hole {h.id}", h.id, _hole(h.id))
+        if isinstance(h, CircleHole):
+            faults += length_fault(h.diameter, f"the diameter of hole {h.id}", h, "diameter")
+        elif isinstance(h, SlotHole):
+            faults += length_fault(h.length, f"the length of slot {h.id}", h, "length")
+            faults += length_fault(h.width, f"the width of slot {h.id}", h, "width")
+            if not math.isfinite(h.angle):
+                faults.append(_not_a_number("the angle of slot " + h.id, h.id, f"holes.{h.id}.angle"))
+    return faults
+
+
+def _hole(id_: str) -> str:
+    return f"holes.{id_}.centre"
+
+
+def _loop_faults(loop: Loop, where: str, name: str) -> Iterator[Fault]:
+    n, m = len(loop.corners), len(loop.edges)
+    if n != m:
+        yield Fault(
+            f"{name} has {n} corners but {m} edges",
+            "give as many edges as corners; edge number i joins corner i and corner i + 1",
+            f"{where}.edges",
+        )
+        return
+    if n < 2 or (n == 2 and all(e.through is None for e in loop.edges)):
+        yield Fault(
+            f"{name} has {n} corner{'' if n == 1 else 's'}",
+            "draw at least three corners, or two with an arc between them",
+            f"{where}.corners",
+            tuple(c.id for c in loop.corners),
+        )
+        return
+    before = len(faults := list(_corner_faults(loop, where)))
+    yield from faults
+    if before == 0:
+        yield from _arc_faults(loop, where)
+
+
+def _corner_faults(loop: Loop, where: str) -> Iterator[Fault]:
+    for c in loop.corners:
+        yield from _point_faults(c.at, f"corner {c.id}", c.id, f"{where}.corners.{c.id}.at")
+        field = f"{where}.corners.{c.id}.round"
+        if not math.isfinite(c.round):
+            yield _not_a_number(f"the round of corner {c.id}", c.id, field, finite_point(c.at))
+        elif c.round > FARTHEST or 0.0 < c.round < SMALLEST or c.round < 0.0:
+            yield Fault(
+                f"the round of corner {c.id} is {c.round:g} mm",
+                f"give a radius of at least {SMALLEST:g} mm, or 0 for a sharp corner"
+                if c.round < SMALLEST
+                else "give a smaller radius",
+                field,
+                (c.id,),
+                finite_point(c.at),
+            )
+    for e in loop.edges:
+        if e.through is not None:
+            field = f"{where}.edges.{e.id}.through"
+            yield from _point_faults(e.through, f"the arc point of edge {e.id}", e.id, field)
+
+
+def _arc_faults(loop: Loop, where: str) -> Iterator[Fault]:
+    for i, e in enumerate(loop.edges):
+        if e.through is None:
+            continue
+        a, b = loop.corners[i].at, loop.corners[(i + 1) % len(loop.corners)].at
+        field = f"{where}.edges.{e.id}.through"
+        if a == b:
+            continue  # no length: said with the boundary
+        if e.through in (a, b):
+            yield Fault(
+                f"the arc point of edge {e.id} lies on one of the edge's corners",
+                "put it between the corners, or make the edge straight",
+                field,
+                (e.id,),
+                e.through,
+            )
+            continue
+        curve = arc_through(a, e.through, b)
+        if isinstance(curve, Segment):
+            if curve.nearest(e.through) in (0.0, 1.0):
+                yield Fault(
+                    f"the arc point of edge {e.id} lies in line with the edge's corners "
+                    "but not between them",
+                    "move it to the side, or make the edge straight",
+                    field,
+                    (e.id,),
+                    e.through,
+                )
+        elif curve.radius > FARTHEST:
+            yield Fault(
+                f"the arc of edge {e.id} has a radius of {curve.radius:.3g} mm",
+                "make the edge straight, or move its arc point farther to the side",
+                field,
+                (e.id,),
+                e.through,
+            )
+
+
+def _point_faults(p: Point, name: str, id_: str, field: str) -> Iterator[Fault]:
+    if not (math.isfinite(p[0]) and math.isfinite(p[1])):
+        yield _not_a_number(name, id_, field)
+    elif max(abs(p[0]), abs(p[1])) > FARTHEST:
+        yield Fault(
+            f"{name} lies at ({p[0]:.4g}, {p[1]:.4g}) mm",
+            f"keep all coordinates under {FARTHEST:,.0f} mm".replace(",", " "),
+            field,
+            (id_,),
+        )
+
+
+def _not_a_number(name: str, id_: str, field: str, at: Point | None = None) -> Fault:
+    return Fault(f"{name} is not a finite number", "give a finite number in mm", field, (id_,), at)
+
+
+def length_fault(
+    value: float, name: str, hole: CircleHole | SlotHole, attribute: str
+) -> Iterator[Fault]:
+    """The fault of a hole's size, if it has one."""
+    field, at = f"holes.{hole.id}.{attribute}", finite_point(hole.centre)
+    if not math.isfinite(value):
+        yield _not_a_number(name, hole.id, field, at)
+    elif value < SMALLEST or value > FARTHEST:
+        yield Fault(
+            f"{name} is {value:g} mm",
+            f"give a {attribute} between {SMALLEST:g} and {FARTHEST:,.0f} mm".replace(",", " "),
+            field,
+            (hole.id,),
+            at,
+        )
+
+
+def finite_point(p: Point) -> Point | None:
+    """The point, or None if it cannot be drawn."""
+    return p if math.isfinite(p[0]) and math.isfinite(p[1]) else None

@@ -1,0 +1,91 @@
+"""Everything that is wrong with a part, found before anything is meshed.
+
+`faults_of` looks at any part, however broken, and never raises; `check` is the door that every
+screening goes through.
+"""
+
+from __future__ import annotations
+
+from screenapp.model.cautions import cautions_of
+from screenapp.model.crossings import boundary_faults
+from screenapp.model.errors import Fault, InvalidPartError
+from screenapp.model.features import everything
+from screenapp.model.load_faults import load_faults
+from screenapp.model.part import Part
+from screenapp.model.shape import Shape, shape_of
+from screenapp.model.size_faults import id_faults, size_faults
+from screenapp.model.support_faults import Places, support_faults
+from screenapp.model.value_faults import (
+    dimension_faults,
+    limit_faults,
+    material_faults,
+    mesh_faults,
+    probe_faults,
+    wall_faults,
+)
+
+
+def faults_of(part: Part) -> tuple[Fault, ...]:
+    """All faults of a part, those that block first, outline before wall before supports ...
+
+    Example:
+        >>> faults_of(Part())[0].cause
+        'the part has no outline'
+    """
+    return _examine(part)[0]
+
+
+def check(part: Part) -> Shape:
+    """The exact boundary of a part that can be screened.
+
+    Raises:
+        InvalidPartError: with every fault that blocks.
+    """
+    faults, shape = _examine(part)
+    blocking = tuple(f for f in faults if f.blocks)
+    if blocking or shape is None:
+        raise InvalidPartError.of(blocking)
+    return shape
+
+
+def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
+    """All faults, and the shape if nothing is wrong with it."""
+    faults = id_faults(part)
+    shape, shape_faults = _sound_shape(part)
+    faults += shape_faults
+    faults += [
+        *wall_faults(part),
+        *material_faults(part),
+        *dimension_faults(part),
+        *support_faults(part, _places(part), shape),
+        *load_faults(part, _places(part), shape),
+        *limit_faults(part),
+        *mesh_faults(part.mesh),
+        *probe_faults(part),
+    ]
+    if shape is not None:
+        faults += cautions_of(part, shape)
+    ordered = [f for f in faults if f.blocks] + [f for f in faults if not f.blocks]
+    return tuple(ordered), shape
+
+
+def _sound_shape(part: Part) -> tuple[Shape | None, list[Fault]]:
+    """The shape if its boundary is sound, and all that is wrong with it."""
+    faults = size_faults(part)
+    if faults:
+        return None, faults
+    try:
+        shape = shape_of(part)
+    except InvalidPartError as error:
+        return None, list(error.faults)
+    faults = boundary_faults(shape)
+    return (None if faults else shape), faults
+
+
+def _places(part: Part) -> Places:
+    """Corners, edges and holes by id."""
+    places: Places = {}
+    for found in everything(part):
+        if found.kind in ("corner", "edge", "hole"):
+            places.setdefault(found.record.id, found)
+    return places

@@ -1,0 +1,203 @@
+"""Wall, materials, limits, mesh wishes and probes whose numbers cannot be worked with."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from typing import get_args
+
+from screenapp.model.errors import Fault
+from screenapp.model.part import (
+    DisplacementLimit,
+    DisplayUnits,
+    ElementName,
+    Material,
+    MeshWishes,
+    Part,
+    StressLimit,
+    WallState,
+)
+from screenapp.model.size_faults import FARTHEST, SMALLEST
+
+TIGHTEST, LOOSEST = 0.0005, 0.2
+"""Bounds of the mesh tolerance [-]."""
+
+
+def positive(value: float) -> bool:
+    """Whether a number is finite and above zero."""
+    return math.isfinite(value) and value > 0.0
+
+
+def one_of(value: object, allowed: object, name: str, field: str) -> Iterator[Fault]:
+    """The fault of a word that is none of those allowed."""
+    words = get_args(allowed)
+    if value not in words:
+        yield Fault(f"{name} is “{value}”", f"choose one of: {', '.join(words)}", field)
+
+
+def wall_faults(part: Part) -> Iterator[Fault]:
+    """Thickness, state and material of the wall."""
+    wall = part.wall
+    yield from one_of(part.display_units, DisplayUnits, "the display unit", "display_units")
+    if not (math.isfinite(wall.thickness) and SMALLEST <= wall.thickness <= FARTHEST):
+        yield Fault(
+            f"the wall is {wall.thickness:g} mm thick", "give a thickness above zero", "wall.thickness"
+        )
+    yield from one_of(wall.state, WallState, "the state of the wall", "wall.state")
+    if not wall.material:
+        yield Fault("no material is chosen", "choose a material for the wall", "wall.material")
+    elif part.material is None:
+        known = ", ".join(m.name for m in part.materials) or "none"
+        yield Fault(
+            f"the material “{wall.material}” is not among the part's materials ({known})",
+            "choose another material or add this one",
+            "wall.material",
+        )
+
+
+def material_faults(part: Part) -> Iterator[Fault]:
+    """Properties of all materials that the part carries."""
+    seen: set[str] = set()
+    for m in part.materials:
+        if m.name in seen:
+            yield Fault(
+                f"two materials are called “{m.name}”", "rename or remove one", f"materials.{m.name}"
+            )
+        seen.add(m.name)
+        yield from _properties(m)
+
+
+def _properties(m: Material) -> Iterator[Fault]:
+    where = f"materials.{m.name}"
+    for name, words, unit in (
+        ("youngs_modulus", "the Young's modulus", "MPa"),
+        ("density", "the density", "kg/m³"),
+        ("proof_stress", "the proof stress", "MPa"),
+        ("strength", "the strength", "MPa"),
+    ):
+        value = getattr(m, name)
+        if value is not None and not (positive(value) and 1e-9 < value < 1e12):
+            optional = "" if name in ("youngs_modulus", "density") else ", or leave it out"
+            yield Fault(
+                f"{words} of “{m.name}” is {value:g} {unit}",
+                f"give a sensible number of {unit} above zero{optional}",
+                f"{where}.{name}",
+            )
+    if not -1.0 < m.poissons_ratio < 0.5:
+        yield Fault(
+            f"Poisson's ratio of “{m.name}” is {m.poissons_ratio:g}",
+            "give a ratio above -1 and below 0.5",
+            f"{where}.poissons_ratio",
+        )
+    if m.expansion is not None and not math.isfinite(m.expansion):
+        yield Fault(
+            f"the expansion of “{m.name}” is not a finite number",
+            "give a coefficient in 1/K, or leave it out",
+            f"{where}.expansion",
+        )
+
+
+def dimension_faults(part: Part) -> Iterator[Fault]:
+    """Named dimensions without a finite value or with bounds that shut it out."""
+    seen: set[str] = set()
+    for d in part.dimensions:
+        where = f"dimensions.{d.name}"
+        if d.name in seen:
+            yield Fault(f"two dimensions are called “{d.name}”", "rename or remove one", where)
+        seen.add(d.name)
+        if not all(math.isfinite(v) for v in (d.value, d.lower, d.upper) if v is not None):
+            yield Fault(
+                f"dimension “{d.name}” or a bound of it is not a finite number",
+                "give finite numbers",
+                where,
+            )
+        elif (d.lower is not None and d.value < d.lower) or (
+            d.upper is not None and d.value > d.upper
+        ):
+            yield Fault(
+                f"dimension “{d.name}” is {d.value:g}, outside its bounds",
+                "change the value or its bounds",
+                f"{where}.value",
+            )
+
+
+def limit_faults(part: Part) -> Iterator[Fault]:
+    """Limits that cannot be judged."""
+    for limit in part.limits:
+        where = f"limits.{limit.id}"
+        if isinstance(limit, StressLimit):
+            yield from _stress_limit_faults(part, limit, where)
+        elif isinstance(limit, DisplacementLimit) and not positive(limit.most):
+            yield Fault(
+                f"the displacement limit {limit.id} is {limit.most:g} mm",
+                "give a displacement above zero",
+                f"{where}.most",
+                (limit.id,),
+            )
+
+
+def _stress_limit_faults(part: Part, limit: StressLimit, where: str) -> Iterator[Fault]:
+    if not positive(limit.factor):
+        yield Fault(
+            f"the factor of limit {limit.id} is {limit.factor:g}",
+            "give a factor above zero, e.g. 1.5",
+            f"{where}.factor",
+            (limit.id,),
+        )
+    if limit.measure not in ("von_mises", "sigma_1"):
+        yield Fault(
+            f"limit {limit.id} is on “{limit.measure}”",
+            "choose von_mises or sigma_1",
+            f"{where}.measure",
+            (limit.id,),
+        )
+    if limit.against not in ("proof_stress", "strength"):
+        yield Fault(
+            f"limit {limit.id} is against “{limit.against}”",
+            "choose proof_stress or strength",
+            f"{where}.against",
+            (limit.id,),
+        )
+    elif part.material is not None and getattr(part.material, limit.against) is None:
+        words = limit.against.replace("_", " ")
+        yield Fault(
+            f"limit {limit.id} asks for the {words}, which “{part.material.name}” has not",
+            f"give the material a {words}, or change the limit",
+            f"{where}.against",
+            (limit.id,),
+        )
+
+
+def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:
+    """Mesh wishes that cannot be met."""
+    yield from one_of(mesh.element, ElementName, "the element", "mesh.element")
+    if not TIGHTEST <= mesh.tolerance <= LOOSEST:
+        yield Fault(
+            f"the tolerance of the mesh is {mesh.tolerance:g}",
+            f"give a tolerance between {TIGHTEST:g} (0.05 %) and {LOOSEST:g} (20 %)",
+            "mesh.tolerance",
+        )
+    if mesh.size is not None and not (positive(mesh.size) and mesh.size >= SMALLEST):
+        yield Fault(
+            f"the element size is {mesh.size:g} mm",
+            "give a size above zero, or leave it to the program",
+            "mesh.size",
+        )
+    if not 1 <= mesh.across <= 20:
+        yield Fault(
+            f"{mesh.across:g} elements are wanted across the thinnest wall",
+            "give a whole number from 1 to 20",
+            "mesh.across",
+        )
+
+
+def probe_faults(part: Part) -> Iterator[Fault]:
+    """Probes that stand nowhere."""
+    for probe in part.readings:
+        if not all(math.isfinite(x) for x in probe.at):
+            yield Fault(
+                f"the place of probe {probe.id} is not a pair of finite numbers",
+                "give finite coordinates in mm",
+                f"readings.{probe.id}.at",
+                (probe.id,),
+            )
