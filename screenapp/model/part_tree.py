@@ -1,0 +1,225 @@
+"""The part as a tree of plain dicts and lists, as the file holds it, and back.
+
+The tree has a number wherever the part has one; `formulas.py` puts expressions in and out.
+Keys and their order are those of the records in `part.py`; a record that is one of several kinds
+says which by `kind`, after its id.
+"""
+
+from __future__ import annotations
+
+import dataclasses
+import functools
+import types
+import typing
+from typing import Any, TypeVar
+
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    CircleHole,
+    Corner,
+    Dimension,
+    DisplacementLimit,
+    Edge,
+    FixedSupport,
+    ForceLoad,
+    Formula,
+    GravityLoad,
+    LineLoad,
+    Loop,
+    LoopHole,
+    Material,
+    MeshWishes,
+    Part,
+    Point,
+    PointLoad,
+    PrescribedSupport,
+    PressureLoad,
+    Probe,
+    RollerSupport,
+    ShearLoad,
+    SlotHole,
+    StressLimit,
+    Wall,
+)
+
+FORMAT = "screenapp part"
+VERSION = 2
+"""The version that is written; `migrations.py` tells what each version changed."""
+
+Tree = dict[str, Any]
+Record = TypeVar("Record")
+
+HOLES: dict[str, type] = {"circle": CircleHole, "slot": SlotHole, "loop": LoopHole}
+SUPPORTS: dict[str, type] = {
+    "fixed": FixedSupport,
+    "roller": RollerSupport,
+    "prescribed": PrescribedSupport,
+}
+LOADS: dict[str, type] = {
+    "pressure": PressureLoad,
+    "shear": ShearLoad,
+    "line": LineLoad,
+    "force": ForceLoad,
+    "bearing": BearingLoad,
+    "point": PointLoad,
+    "gravity": GravityLoad,
+}
+LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLimit}
+READINGS: dict[str, type] = {"probe": Probe}
+
+KIND_OF: dict[type, str] = {
+    cls: kind
+    for group in (HOLES, SUPPORTS, LOADS, LIMITS, READINGS)
+    for kind, cls in group.items()
+}
+
+
+# --- part to tree ---------------------------------------------------------------------------
+
+
+def tree_of_part(part: Part) -> Tree:
+    """The whole file's tree, without formulas; None marks what the part does not have."""
+    return {
+        "format": FORMAT,
+        "version": VERSION,
+        "title": part.title,
+        "notes": part.notes,
+        "display_units": part.display_units,
+        "dimensions": [_tree(d) for d in part.dimensions],
+        "shape": {
+            "outline": _loop_tree(part.outline) if part.outline is not None else None,
+            "holes": [_hole_tree(h) for h in part.holes],
+        },
+        "wall": _tree(part.wall),
+        "materials": [_tree(m) for m in part.materials],
+        "supports": [_tree(s) for s in part.supports],
+        "cases": [
+            {"id": c.id, "name": c.name, "loads": [_tree(load) for load in c.loads]}
+            for c in part.cases
+        ],
+        "limits": [_tree(limit) for limit in part.limits],
+        "mesh": _tree(part.mesh),
+        "readings": [_tree(r) for r in part.readings],
+    }
+
+
+def without_blanks(tree: Any) -> Any:
+    """The tree without what is None and without rounds of zero, as it is written."""
+    if isinstance(tree, dict):
+        return {
+            key: without_blanks(value)
+            for key, value in tree.items()
+            if value is not None and not (key == "round" and value == 0)
+        }
+    return [without_blanks(item) for item in tree] if isinstance(tree, list) else tree
+
+
+def _tree(record: Any) -> Tree:
+    """A record of plain fields."""
+    tree: Tree = {}
+    for name in forms(type(record)):
+        value = getattr(record, name)
+        tree[name] = list(value) if isinstance(value, tuple) else value
+        if name == "id" and type(record) in KIND_OF:
+            tree["kind"] = KIND_OF[type(record)]
+    return tree
+
+
+def _loop_tree(loop: Loop) -> Tree:
+    return {
+        "corners": [_tree(corner) for corner in loop.corners],
+        "edges": [_tree(edge) for edge in loop.edges],
+    }
+
+
+def _hole_tree(hole: Any) -> Tree:
+    if isinstance(hole, LoopHole):
+        return {"id": hole.id, "kind": "loop", **_loop_tree(hole.loop)}
+    return _tree(hole)
+
+
+# --- tree to part ---------------------------------------------------------------------------
+
+
+def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
+    """The part of a tree that the schema has passed and that holds numbers only."""
+    blank = Part()
+    shape = tree.get("shape", {})
+    return Part(
+        title=tree.get("title", blank.title),
+        notes=tree.get("notes", blank.notes),
+        display_units=tree.get("display_units", blank.display_units),
+        dimensions=tuple(_record(Dimension, d) for d in tree.get("dimensions", ())),
+        formulas=formulas,
+        outline=_loop(shape["outline"]) if "outline" in shape else None,
+        holes=tuple(_hole(h) for h in shape.get("holes", ())),
+        wall=_record(Wall, tree["wall"]) if "wall" in tree else blank.wall,
+        materials=tuple(_record(Material, m) for m in tree.get("materials", ())),
+        supports=tuple(_record(SUPPORTS[s["kind"]], s) for s in tree.get("supports", ())),
+        cases=tuple(
+            Case(c["id"], c["name"], tuple(_record(LOADS[x["kind"]], x) for x in c["loads"]))
+            for c in tree.get("cases", ())
+        ),
+        limits=tuple(_record(LIMITS[x["kind"]], x) for x in tree.get("limits", ())),
+        mesh=_record(MeshWishes, tree.get("mesh", {})),
+        readings=tuple(_record(READINGS[r["kind"]], r) for r in tree.get("readings", ())),
+    )
+
+
+def _loop(tree: Tree) -> Loop:
+    return Loop(
+        tuple(_record(Corner, c) for c in tree["corners"]),
+        tuple(_record(Edge, e) for e in tree["edges"]),
+    )
+
+
+def _hole(tree: Tree) -> Any:
+    if tree["kind"] == "loop":
+        return LoopHole(tree["id"], _loop(tree))
+    return _record(HOLES[tree["kind"]], tree)
+
+
+def _record(cls: type[Record], tree: Tree) -> Record:
+    """A record of plain fields; what the tree leaves out keeps the record's default."""
+    values: dict[str, Any] = {}
+    for name, form in forms(cls).items():
+        if name not in tree:
+            continue
+        value = tree[name]
+        if form == "number":
+            value = float(value)
+        elif form == "point":
+            value = (float(value[0]), float(value[1]))
+        elif form == "whole":
+            value = int(value)
+        values[name] = value
+    return cls(**values)
+
+
+# --- forms of fields ------------------------------------------------------------------------
+
+
+@functools.cache
+def forms(cls: type) -> dict[str, str]:
+    """The form of each field of a plain record: "number", "point", "whole" or "text"."""
+    hints = typing.get_type_hints(cls)
+    return {f.name: _form(hints[f.name]) for f in dataclasses.fields(cls)}
+
+
+def _form(hint: Any) -> str:
+    options = set(typing.get_args(hint)) if isinstance(hint, types.UnionType) else {hint}
+    for kind, form in ((float, "number"), (Point, "point"), (int, "whole")):
+        if kind in options:
+            return form
+    return "text"
+
+
+NUMBER_KEYS: frozenset[str] = frozenset(
+    name
+    for cls in (Corner, Edge, CircleHole, SlotHole, Wall, Material, MeshWishes, *KIND_OF)
+    if cls is not LoopHole
+    for name, form in forms(cls).items()
+    if form in ("number", "point")
+)
+"""Keys whose value is a number or a point, so that an expression may stand there."""
