@@ -1,0 +1,178 @@
+"""From element matrices to one sparse system, and from its answer back to every node."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy import sparse
+
+from screenapp.mechanics import shape_functions
+from screenapp.mechanics.kernels import CARRIED_NODES, ElementMatrices, element_matrices
+from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
+from screenapp.model.part import ElementName
+from screenapp.model.progress import SILENT, Progress
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+CHUNK = 2000
+"""Elements worked on at a time: few enough for the caches, many enough to forget the overhead."""
+
+
+@dataclass(frozen=True, eq=False)
+class System:
+    """The assembled equations before any support.
+
+    Displacements are ordered x, y node by node over the carried nodes.
+
+    Attributes:
+        element: which quad.
+        mesh: the mesh.
+        carried: the mesh nodes that have unknowns, rising, (n_carried,).
+        index: position of each mesh node among `carried`, -1 where it has none, (n_nodes,).
+        stiffness: the whole symmetric matrix [N/mm], (2 n_carried, 2 n_carried).
+        recovery, flexibility: as in `ElementMatrices`, for all elements.
+    """
+
+    element: ElementName
+    mesh: Mesh
+    carried: Ints
+    index: Ints
+    stiffness: sparse.csr_array
+    recovery: Floats | None
+    flexibility: Floats | None
+
+    @property
+    def element_nodes(self) -> Ints:
+        """Positions among `carried` of each element's carried nodes, (n_elements, m)."""
+        return self.index[self.mesh.quads[:, : CARRIED_NODES[self.element]]]
+
+
+def assemble(
+    mesh: Mesh,
+    element: ElementName,
+    elastic: Floats,
+    thickness: float | Floats,
+    progress: Progress = SILENT,
+) -> System:
+    """Assemble the stiffness of a mesh.
+
+    `elastic` is (3, 3) [MPa]; `thickness` [mm] is one number or one for each element.
+
+    Raises:
+        SolvingError: the mesh has a folded element.
+        Cancelled: the user asked to stop.
+    """
+    m = CARRIED_NODES[element]
+    carried, index = carried_nodes(mesh, element)
+    depth = np.broadcast_to(np.asarray(thickness, dtype=float), (mesh.n_elements,))
+    upper = np.triu_indices(2 * m)
+    values = np.empty((mesh.n_elements, len(upper[0])))
+    recovery: list[Floats] = []
+    flexibility: list[Floats] = []
+    for first in range(0, mesh.n_elements, CHUNK):
+        progress.check()
+        rows = slice(first, first + CHUNK)
+        made = element_matrices(element, mesh.nodes[mesh.quads[rows]], depth[rows], elastic)
+        values[rows] = made.stiffness[:, upper[0], upper[1]]
+        _keep(made, recovery, flexibility)
+    progress.check()
+    nodes = index[mesh.quads[:, :m]]
+    return System(
+        element,
+        mesh,
+        carried,
+        index,
+        _symmetric(_places(nodes), upper, values, 2 * len(carried)),
+        np.concatenate(recovery) if recovery else None,
+        np.concatenate(flexibility) if flexibility else None,
+    )
+
+
+def carried_nodes(mesh: Mesh, element: ElementName) -> tuple[Ints, Ints]:
+    """The nodes that have unknowns, and each mesh node's position among them (or -1)."""
+    used = np.zeros(mesh.n_nodes, dtype=bool)
+    used[mesh.quads[:, : CARRIED_NODES[element]]] = True
+    carried = np.flatnonzero(used)
+    index = np.full(mesh.n_nodes, -1, dtype=np.int64)
+    index[carried] = np.arange(len(carried))
+    return carried, index
+
+
+def condense_loads(system: System, forces: Floats) -> Floats:
+    """Nodal forces (n_cases, n_nodes, 2) [N] on the carried displacements, (n_cases, 2 n_carried).
+
+    The share of the 9-node quad's centre node goes to the nodes around it as its stiffness says.
+    """
+    loads = forces[:, system.carried].reshape(len(forces), -1)
+    if system.element == "quad9" and system.recovery is not None:
+        inner = forces[:, system.mesh.quads[:, 8]]
+        if inner.any():
+            m = CARRIED_NODES["quad9"]
+            shares = -np.einsum("eki,cek->cei", system.recovery, inner)
+            nodes = system.element_nodes
+            for case, share in enumerate(shares):
+                for k in (0, 1):
+                    part = share[:, k * m : (k + 1) * m]
+                    loads[case] += np.bincount(
+                        (2 * nodes + k).ravel(), part.ravel(), minlength=loads.shape[1]
+                    )
+    return loads
+
+
+def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Floats | None]:
+    """Displacements on all nodes and the incompatible modes, from the carried ones.
+
+    Args:
+        unknowns: (n_cases, 2 n_carried) [mm].
+        forces: the nodal forces (n_cases, n_nodes, 2) [N] (the centre nodes' share counts).
+
+    Returns:
+        (n_cases, n_nodes, 2) [mm] and, for "quad4-incompatible", (n_cases, n_elements, 4).
+        Nodes that the element does not carry hold its interpolation; incompatible modes are left
+        out there, so that neighbours agree on the middle of their common side.
+    """
+    n_cases = len(unknowns)
+    mesh, element, m = system.mesh, system.element, CARRIED_NODES[system.element]
+    out = np.zeros((n_cases, mesh.n_nodes, 2))
+    out[:, system.carried] = unknowns.reshape(n_cases, -1, 2)
+    local = out[:, mesh.quads[:, :m]]  # (n_cases, n_elements, m, 2)
+    inner: Floats | None = None
+    if system.recovery is not None:
+        stacked = np.moveaxis(local, 3, 2).reshape(n_cases, mesh.n_elements, 2 * m)
+        inner = -np.einsum("eki,cei->cek", system.recovery, stacked)
+    if element == "quad9":
+        assert inner is not None
+        assert system.flexibility is not None
+        own = forces[:, mesh.quads[:, 8]]
+        out[:, mesh.quads[:, 8]] = inner + np.einsum("ekl,cel->cek", system.flexibility, own)
+        return out, None
+    shapes = shape_functions.values(
+        NODES_OF_ELEMENT[element], shape_functions.LOCAL_NODES[m:]
+    )  # (9 - m, m)
+    out[:, mesh.quads[:, m:]] = np.einsum("im,cemk->ceik", shapes, local)
+    return out, inner
+
+
+def _keep(made: ElementMatrices, recovery: list[Floats], flexibility: list[Floats]) -> None:
+    if made.recovery is not None and made.flexibility is not None:
+        recovery.append(made.recovery)
+        flexibility.append(made.flexibility)
+
+
+def _places(nodes: Ints) -> NDArray[np.int32]:
+    """Rows of the system for each element's displacements in element order, (n, 2m)."""
+    return np.concatenate([2 * nodes, 2 * nodes + 1], axis=1).astype(np.int32)
+
+
+def _symmetric(
+    places: NDArray[np.int32], upper: tuple[Ints, Ints], values: Floats, size: int
+) -> sparse.csr_array:
+    """Sum the elements' upper triangles into the whole symmetric matrix."""
+    a, b = places[:, upper[0]], places[:, upper[1]]
+    rows, columns = np.minimum(a, b).ravel(), np.maximum(a, b).ravel()
+    half = sparse.coo_array((values.ravel(), (rows, columns)), shape=(size, size)).tocsr()
+    other = sparse.triu(half, k=1, format="csr").T.tocsr()
+    return sparse.csr_array(half + other)

@@ -1,0 +1,208 @@
+"""Loads as consistent nodal forces, and as the tractions and body forces they stand for.
+
+Edge loads are integrated along the element's own side (straight for the bilinear quads, the
+parabola through three nodes for the others), so that their resultant is exact for the mesh.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics.elasticity import wall_material
+from screenapp.mechanics.kernels import CARRIED_NODES, shape_integrals
+from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
+from screenapp.mechanics.quadrature import gauss_line
+from screenapp.model.curves import Arc
+from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    ElementName,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Load,
+    Part,
+    PointLoad,
+    PressureLoad,
+    ShearLoad,
+)
+from screenapp.model.shape import Shape
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+POINTS = 5
+"""Gauss points along a side: exact for every even load on a parabola but for the root in its
+length; a bearing load's cosine is smooth but for its two ends."""
+
+EdgeLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad
+
+
+@dataclass(frozen=True, eq=False)
+class SidePoints:
+    """Places along some boundary sides: (n_sides, points, ...).
+
+    Attributes:
+        at: coordinates [mm].
+        tangents: unit, material on the left.
+        lengths: length that each point stands for [mm]; zero where the places are no rule.
+        shapes: the sides' shape functions at the points, (points, nodes).
+        nodes: mesh nodes of the sides, (n_sides, nodes).
+    """
+
+    at: Floats
+    tangents: Floats
+    lengths: Floats
+    shapes: Floats
+    nodes: Ints
+
+
+def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
+    """Nodal forces of a case, (n_nodes, 2) [N], consistent with the part's element.
+
+    Raises:
+        InvalidPartError: a load stands on a feature that cannot carry it.
+        SolvingError: the part has weight but no material.
+    """
+    element = part.mesh.element
+    out = np.zeros((mesh.n_nodes, 2))
+    for load in case.loads:
+        if isinstance(load, GravityLoad):
+            continue
+        if isinstance(load, PointLoad):
+            out[_corner_node(mesh, load)] += (load.x, load.y)
+            continue
+        rule = _rule(mesh, sides_of(shape, mesh, load.on, load.id), element)
+        force = _per_length(part, shape, mesh, load, rule) * rule.lengths[..., None]
+        np.add.at(out, rule.nodes, np.einsum("pi,spd->sid", rule.shapes, force))
+    body = body_force(part, case)
+    if body.any():
+        thickness = np.full(mesh.n_elements, part.wall.thickness)
+        volumes = shape_integrals(element, mesh.nodes[mesh.quads], thickness)
+        nodes = mesh.quads[:, : NODES_OF_ELEMENT[element]]
+        share = np.bincount(nodes.ravel(), volumes.ravel(), minlength=mesh.n_nodes)
+        out += share[:, None] * body
+    return out
+
+
+def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
+    """Traction that the case's loads put on the wall's face, (n_sides, 3, 2) [MPa].
+
+    Axis 1 is the start, middle and end of each boundary side, axis 2 is x, y; directions follow
+    the exact curve.  Sides without a load have zero; what supports give is not in it (see
+    `constraints.held_sides`), nor are point loads.
+    """
+    out = np.zeros((len(mesh.sides), 3, 2))
+    tangents = side_tangents(shape, mesh)
+    for load in case.loads:
+        if isinstance(load, GravityLoad | PointLoad):
+            continue
+        sides = sides_of(shape, mesh, load.on, load.id)
+        nodes = mesh.side_nodes[sides]
+        ends = SidePoints(
+            mesh.nodes[nodes], tangents[sides], np.zeros(nodes.shape), np.eye(3), nodes
+        )
+        out[sides] += _per_length(part, shape, mesh, load, ends) / part.wall.thickness
+    return out
+
+
+def body_force(part: Part, case: Case) -> Floats:
+    """Weight per volume of the case, (2,) [N/mm³].
+
+    Density in kg/m³ times acceleration in m/s² is N/m³; one N/m³ is 1e-9 N/mm³.
+    """
+    total = np.zeros(2)
+    for load in case.loads:
+        if isinstance(load, GravityLoad):
+            total += 1e-9 * wall_material(part).density * np.array([load.x, load.y])
+    return total
+
+
+def _corner_node(mesh: Mesh, load: PointLoad) -> int:
+    if load.on not in mesh.corner_nodes:
+        raise misplaced(load.id, load.on, "put the point load on a sharp corner")
+    return mesh.corner_nodes[load.on]
+
+
+def _rule(mesh: Mesh, sides: Ints, element: ElementName) -> SidePoints:
+    """Gauss points along sides, as the element interpolates them."""
+    s, weights = gauss_line(POINTS)
+    if CARRIED_NODES[element] == 4:
+        nodes = mesh.side_nodes[sides][:, ::2]
+        shapes = np.stack([0.5 * (1.0 - s), 0.5 * (1.0 + s)], axis=1)
+        slopes = np.tile([-0.5, 0.5], (len(s), 1))
+    else:
+        nodes = mesh.side_nodes[sides]
+        shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
+        slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    corners = mesh.nodes[nodes]
+    run = np.einsum("pi,sid->spd", slopes, corners)
+    stretch = np.linalg.norm(run, axis=2)
+    return SidePoints(
+        np.einsum("pi,sid->spd", shapes, corners),
+        run / stretch[..., None],
+        stretch * weights,
+        shapes,
+        nodes,
+    )
+
+
+def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePoints) -> Floats:
+    """Force per length [N/mm] of a load at some places, (n_sides, points, 2)."""
+    if isinstance(load, PressureLoad):
+        return -load.pressure * part.wall.thickness * outward(places.tangents)
+    if isinstance(load, ShearLoad):
+        return load.per_length * places.tangents
+    if isinstance(load, LineLoad):
+        return np.broadcast_to([load.x, load.y], places.at.shape).astype(float)
+    if isinstance(load, ForceLoad):
+        sides = sides_of(shape, mesh, load.on, load.id)
+        length = float(_rule(mesh, sides, part.mesh.element).lengths.sum())
+        return np.broadcast_to([load.x / length, load.y / length], places.at.shape).astype(float)
+    if isinstance(load, BearingLoad):
+        return _bearing(part, shape, mesh, load, places)
+    raise TypeError(f"{type(load).__name__} does not act along sides")
+
+
+def _bearing(part: Part, shape: Shape, mesh: Mesh, load: BearingLoad, places: SidePoints) -> Floats:
+    """Radial push of a pin, cosine over the half it bears on, (n_sides, points, 2) [N/mm].
+
+    At the angle θ from the force the push is a·e with the radial unit vector e; the vector `a` is
+    along the force but for the unevenness of the mesh, and is chosen so that the sum over the
+    mesh's own rule is exactly the force (the exact rim would give a = 2 F / (π r)).
+    """
+    centre = _pin_centre(shape, load)
+    force = np.array([load.x, load.y])
+    size = math.hypot(load.x, load.y)
+    if size == 0.0:
+        return np.zeros(places.at.shape)
+    rule = _rule(mesh, sides_of(shape, mesh, load.on, load.id), part.mesh.element)
+    bearing, borne = _radial(rule.at, centre, force)
+    spread = np.einsum("sp,spa,spb->ab", rule.lengths * borne, bearing, bearing)
+    push = np.linalg.solve(spread, force)
+    radial, on = _radial(places.at, centre, force)
+    return radial * (on * (radial @ push))[..., None]
+
+
+def _radial(at: Floats, centre: Floats, force: Floats) -> tuple[Floats, Floats]:
+    """Unit vectors from the centre, and 1.0 on the half that the force bears on, else 0.0."""
+    arm = at - centre
+    radial = arm / np.linalg.norm(arm, axis=-1, keepdims=True)
+    return radial, (radial @ force > 0.0).astype(float)
+
+
+def _pin_centre(shape: Shape, load: BearingLoad) -> Floats:
+    """Centre of the round hole that a pin sits in."""
+    curves = [shape.curves[i].curve for i in shape.pieces_of(load.on)]
+    arcs = [c for c in curves if isinstance(c, Arc)]
+    if load.on in shape.hole_ids and len(arcs) == len(curves) and arcs:
+        spread = max(math.dist(a.centre, arcs[0].centre) for a in arcs)
+        turned = abs(sum(a.sweep for a in arcs))
+        if spread <= 1e-6 * arcs[0].radius and abs(turned - 2.0 * math.pi) < 1e-6:
+            return np.asarray(arcs[0].centre)
+    raise misplaced(load.id, load.on, "put the bearing load on a round hole")

@@ -1,0 +1,89 @@
+"""The plane problem of a part on a mesh: supports and loads in, displacements and reactions out."""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics.assembly import System, assemble, condense_loads, spread
+from screenapp.mechanics.constraints import HeldDirections, held_directions, reduce
+from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.equilibrium import balance, reactions
+from screenapp.mechanics.linear_solve import solve_checked
+from screenapp.mechanics.loads import nodal_forces
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import ElementName, Part
+from screenapp.model.progress import SILENT, Progress
+from screenapp.model.shape import Shape
+from screenapp.model.solution import Solution
+
+Floats = NDArray[np.float64]
+
+
+def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> Solution:
+    """Solve all load cases of a part with one factorisation.
+
+    Prescribed displacements act in every case.
+
+    Raises:
+        InvalidPartError: a support or load stands where it cannot act, or supports disagree.
+        SolvingError: no material, a motion that nothing holds, or equations that cannot be solved.
+        Cancelled: the user asked to stop.
+    """
+    elastic = constitutive_matrix(wall_material(part), part.wall.state)
+    held = held_directions(part, shape, mesh)
+    forces = np.zeros((len(part.cases), mesh.n_nodes, 2))
+    for number, case in enumerate(part.cases):
+        forces[number] = nodal_forces(part, shape, mesh, case)
+    system = assemble(mesh, part.mesh.element, elastic, part.wall.thickness, progress)
+    return solve_system(system, held, forces, progress)
+
+
+def solve_system(
+    system: System, held: HeldDirections, forces: Floats, progress: Progress = SILENT
+) -> Solution:
+    """Solve assembled equations for nodal forces (n_cases, n_nodes, 2) [N].
+
+    Raises:
+        InvalidPartError, SolvingError, Cancelled: as for `solve`.
+    """
+    mesh = system.mesh
+    reduction = reduce(held, mesh, system.index)
+    loads = condense_loads(system, forces)
+    basis = reduction.basis
+    reduced = (basis.T @ system.stiffness @ basis).tocsc()
+    right = basis.T @ (loads - system.stiffness @ reduction.held).T
+    progress.check()
+    answer, residual = solve_checked(reduced, right)
+    progress.check()
+    unknowns = (basis @ answer).T + reduction.held
+    displacements, modes = spread(system, unknowns, forces)
+    support_forces = np.zeros(forces.shape)
+    support_forces[:, system.carried] = ((system.stiffness @ unknowns.T).T - loads).reshape(
+        len(forces), -1, 2
+    )
+    given = tuple(reactions(held, mesh.nodes, case) for case in support_forces)
+    return Solution(
+        element=system.element,
+        displacements=displacements,
+        reactions=given,
+        balance=tuple(
+            balance(mesh.nodes, case, back) for case, back in zip(forces, given, strict=True)
+        ),
+        residual=residual,
+        unknowns=reduced.shape[0],
+        internal_modes=modes,
+    )
+
+
+def estimate_unknowns(n_elements: int, element: ElementName) -> int:
+    """Unknowns of a mesh of many quads: nodes and sides are one and two to a quad."""
+    nodes = 3 if element in ("quad8", "quad9") else 1
+    return 2 * nodes * n_elements
+
+
+def estimate_memory(unknowns: int) -> int:
+    """Bytes of the factor."""
+    return int(unknowns * math.log2(max(unknowns, 2)))
