@@ -1,0 +1,90 @@
+"""How far the solution's own stresses are from the recovered ones: what the mesh still lacks.
+
+The estimate of Zienkiewicz & Zhu 1987 (Int. J. Num. Meth. Engng 24, from memory): the energy of
+the difference between the recovered field and the element's own.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics import shape_functions
+from screenapp.mechanics.quadrature import gauss_square
+from screenapp.mechanics.strain_displacement import CHUNK, element_geometry, element_strains
+from screenapp.model.mesh import Mesh
+from screenapp.model.solution import Solution, von_mises
+
+Floats = NDArray[np.float64]
+
+
+def element_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> Floats:
+    """The recovered field at the nine nodes of every element, (n_cases, n_elements, 9, 3).
+
+    At a sharp corner each element takes the value of its own side; an element with both sides of
+    the corner takes their mean.
+    """
+    own = nodal[:, mesh.quads]
+    element, local = mesh.sides.T
+    places = np.stack([local, 4 + local, (local + 1) % 4], axis=1)
+    count = np.zeros((mesh.n_elements, 9))
+    np.add.at(count, (element[:, None], places), 1.0)
+    rim = count > 0
+    for case in range(len(own)):
+        total = np.zeros((mesh.n_elements, 9, 3))
+        np.add.at(total, (element[:, None], places), side[case])
+        own[case][rim] = total[rim] / count[rim][:, None]
+    return own
+
+
+def energy_error(
+    mesh: Mesh, solution: Solution, hooke: Floats, nodal: Floats, side: Floats
+) -> Floats:
+    """Energy error of each element relative to the whole strain energy, (n_cases, n_elements).
+
+    The squares over the elements add up to the square of the relative error of the whole; a case
+    without any stress gives zeros.
+
+    Args:
+        hooke: (3, 3) [MPa].
+        nodal: recovered stresses, (n_cases, n_nodes, 3) [MPa].
+        side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
+    """
+    points, weights = gauss_square(3)
+    linear = solution.element.startswith("quad4")
+    shapes = shape_functions.values(4 if linear else 9, points)
+    compliance = np.linalg.inv(hooke)
+    recovered = element_nodal(mesh, nodal, side)[:, :, : shapes.shape[1]]
+    volume = element_geometry(mesh, solution, points) * weights  # per unit of wall
+    missed = np.empty((len(nodal), mesh.n_elements))
+    stored = np.empty_like(missed)
+    for begin in range(0, mesh.n_elements, CHUNK):
+        some = np.arange(begin, min(begin + CHUNK, mesh.n_elements))
+        own = element_strains(mesh, solution, points, some) @ hooke
+        gap = shapes @ recovered[:, some] - own
+        missed[:, some] = (((gap @ compliance) * gap).sum(axis=-1) * volume[some]).sum(axis=-1)
+        stored[:, some] = (((own @ compliance) * own).sum(axis=-1) * volume[some]).sum(axis=-1)
+    whole = stored.sum(axis=1, keepdims=True) + missed.sum(axis=1, keepdims=True)
+    return np.sqrt(missed / np.where(whole > 0.0, whole, 1.0))
+
+
+def pointwise_jump(
+    mesh: Mesh, own: Floats, nodal: Floats, side: Floats, poisson: float = 0.0
+) -> Floats:
+    """Largest gap at each node between the recovered von Mises stress and the elements' own.
+
+    Args:
+        own: each element's stress carried to its nine nodes, (n_cases, n_elements, 9, 3) [MPa].
+        nodal: recovered stresses, (n_cases, n_nodes, 3) [MPa].
+        side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
+        poisson: ν in plane strain, else 0.
+
+    Returns:
+        (n_cases, n_nodes) [MPa].
+    """
+    recovered = von_mises(element_nodal(mesh, nodal, side), poisson)
+    gap = np.abs(von_mises(own, poisson) - recovered)
+    jump = np.zeros((len(nodal), mesh.n_nodes))
+    for case in range(len(nodal)):
+        np.maximum.at(jump[case], mesh.quads.ravel(), gap[case].ravel())
+    return jump

@@ -1,0 +1,139 @@
+"""The stress field of a solution: averaged inside the part, recovered along its edges.
+
+Inside, stresses are taken where the element is most accurate (2 × 2 points), carried to the nodes
+and averaged.  On the boundary that would lose an order of accuracy exactly where the peaks are, so
+`edge_recovery` takes over there.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics import constraints, edge_recovery, loads, shape_functions
+from screenapp.mechanics.boundary_chains import BoundaryChains, boundary_chains
+from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.energy_error import energy_error
+from screenapp.mechanics.quadrature import gauss_square
+from screenapp.mechanics.strain_displacement import element_strains
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import Part
+from screenapp.model.shape import Shape
+from screenapp.model.solution import Solution, StressField
+
+Floats = NDArray[np.float64]
+Bools = NDArray[np.bool_]
+
+
+def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressField:
+    """Recover the stresses of every case and estimate the energy error.
+
+    Raises:
+        SolvingError: the wall has no usable material.
+    """
+    hooke = constitutive_matrix(wall_material(part), part.wall.state)
+    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in part.cases])
+    held = constraints.held_sides(part, shape, mesh)
+    inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
+    side = recover_edges(shape, mesh, solution, hooke, traction, held, inside)
+    nodal = with_edges(mesh, inside, side)
+    error = energy_error(mesh, solution, hooke, nodal, side)
+    return StressField(nodal, side, error)
+
+
+def extrapolated_stress(mesh: Mesh, solution: Solution, hooke: Floats) -> Floats:
+    """Each element's own stress at its nine nodes, carried there from its 2 × 2 points.
+
+    Returns:
+        (n_cases, n_elements, 9, 3) [MPa].
+    """
+    points, _ = gauss_square(2)
+    stress = element_strains(mesh, solution, points) @ hooke
+    # the four points are the corners of a square that is smaller by sqrt(3); they come row by row
+    # and the quad's corners run round
+    order = [0, 1, 3, 2]
+    carry = shape_functions.values(4, shape_functions.LOCAL_NODES * np.sqrt(3.0))  # (9, 4)
+    return np.asarray(carry @ stress[:, :, order])
+
+
+def averaged_stress(mesh: Mesh, own: Floats) -> Floats:
+    """Mean over the elements that meet at each node, (n_cases, n_nodes, 3) [MPa].
+
+    Args:
+        own: each element's stress at its nine nodes, (n_cases, n_elements, 9, 3).
+    """
+    flat = mesh.quads.ravel()
+    count = np.bincount(flat, minlength=mesh.n_nodes)
+    total = np.stack(
+        [
+            [np.bincount(flat, case[..., k].ravel(), mesh.n_nodes) for k in range(3)]
+            for case in own
+        ]
+    )
+    return np.asarray(np.swapaxes(total / np.maximum(count, 1), 1, 2))
+
+
+def recover_edges(
+    shape: Shape,
+    mesh: Mesh,
+    solution: Solution,
+    hooke: Floats,
+    traction: Floats,
+    held: Bools,
+    inside: Floats,
+) -> Floats:
+    """Stresses at start, middle and end of every boundary side, (n_cases, n_sides, 3, 3) [MPa].
+
+    Args:
+        hooke: (3, 3) [MPa].
+        traction: known tractions, (n_cases, n_sides, 3, 2) [MPa].
+        held: sides held along their normal and tangent, (n_sides, 2).
+        inside: averaged stresses, (n_cases, n_nodes, 3) [MPa]; they stand in for the traction of
+            a support.
+    """
+    chains = boundary_chains(shape, mesh)
+    linear = solution.element.startswith("quad4")
+    joined = edge_recovery.joined_sides(chains, traction, held)
+    mirrored = np.zeros((len(joined), 2), dtype=bool)
+    strain = edge_recovery.edge_strains(mesh, solution.displacements, linear)
+    strain = edge_recovery.fit_along_edge(mesh, chains, joined, mirrored, strain)
+    normal, shear = edge_tractions(chains, traction, held, inside[:, mesh.side_nodes])
+    return edge_recovery.edge_stress(strain, normal, shear, chains, hooke)
+
+
+def edge_tractions(
+    chains: BoundaryChains, traction: Floats, held: Bools, stress: Floats
+) -> tuple[Floats, Floats]:
+    """σn and τ along the boundary: given where it is free or loaded, from `stress` where held.
+
+    Args:
+        stress: the averaged field at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa].
+
+    Returns:
+        normal and shear stress, (n_cases, n_sides, 3) each [MPa].
+    """
+    t, n = chains.tangents, chains.normals
+    given = np.stack([(traction * n).sum(axis=-1), (traction * t).sum(axis=-1)], axis=-1)
+    met = np.stack(
+        [
+            stress[..., 0] * n[..., 0] + stress[..., 2] * n[..., 1],
+            stress[..., 2] * n[..., 0] + stress[..., 1] * n[..., 1],
+        ],
+        axis=-1,
+    )
+    own = np.stack([(met * n).sum(axis=-1), (met * t).sum(axis=-1)], axis=-1)
+    both = np.where(held[:, None, :], own, given)
+    return both[..., 0], both[..., 1]
+
+
+def with_edges(mesh: Mesh, inside: Floats, side: Floats) -> Floats:
+    """The averaged field with its boundary nodes replaced by the mean of their sides' values."""
+    flat = mesh.side_nodes.ravel()
+    count = np.bincount(flat, minlength=mesh.n_nodes)
+    rim = count > 0
+    nodal = inside.copy()
+    for case in range(len(side)):
+        for k in range(3):
+            total = np.bincount(flat, side[case, :, :, k].ravel(), mesh.n_nodes)
+            nodal[case, rim, k] = total[rim] / count[rim]
+    return nodal
