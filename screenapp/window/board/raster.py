@@ -237,13 +237,13 @@ def _crossings(
     place += np.where(rising.reshape(-1)[edges], 0, rows)
     table = np.stack([start[:, 0], slope[:, 0], start[:, 2], slope[:, 2]], axis=1)
     long = np.repeat(table, count, axis=0)
-    step = _counted(count)
+    step = counted(count)
     target = np.repeat(place, count) + step
     crossing = np.empty((2 * rows, 2))
     crossing[target, 0] = long[:, 0] + step * long[:, 1]
     crossing[target, 1] = long[:, 2] + step * long[:, 3]
     height_of = last - first
-    row = np.repeat(first, height_of) + _counted(height_of)
+    row = np.repeat(first, height_of) + counted(height_of)
     return crossing[:rows], crossing[rows:], row
 
 
@@ -258,12 +258,12 @@ def _paint_rows(image: Image, a: Floats, b: Floats, row: Ints, width: int) -> No
     left, right, begin, count = left[kept], right[kept], begin[kept], count[kept]
     slope = (right[:, 1] - left[:, 1]) / (right[:, 0] - left[:, 0])
     value = left[:, 1] + (begin - left[:, 0]) * slope
-    step = _counted(count)
+    step = counted(count)
     pixel = np.repeat(row[kept] * width + begin.astype(np.int64), count) + step
     image[pixel] = np.repeat(value, count) + step * np.repeat(slope, count)
 
 
-def _counted(count: Ints) -> Ints:
+def counted(count: Ints) -> Ints:
     """0, 1, ... count[0] - 1, 0, 1, ... count[1] - 1, and so on."""
     ends = np.cumsum(count)
     total = int(ends[-1]) if len(ends) else 0

@@ -1,0 +1,327 @@
+"""An item that shows a picture of the view which takes longer to make than a frame.
+
+While the view moves, the last picture is shown moved and scaled with it; once the view has stood
+still for a moment a sharp one is made in a thread and replaces it.  A coarse picture of the whole
+lies beneath, so that what comes into view during a gesture is not blank.
+"""
+
+from __future__ import annotations
+
+import logging
+from collections.abc import Callable
+from dataclasses import dataclass
+
+import numpy as np
+import pyqtgraph as pg
+from numpy.typing import NDArray
+from PySide6.QtCore import QObject, QRectF, QRunnable, Qt, QThreadPool, QTimer, Signal, Slot
+from PySide6.QtGui import QBrush, QColor, QImage, QPainter, QPainterPath, QRegion, QTransform
+from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
+
+from screenapp.window.board.raster import Viewport
+
+log = logging.getLogger(__name__)
+
+Scalars = NDArray[np.float32]
+Words = NDArray[np.uint32]
+Render = Callable[[Viewport], Scalars]
+
+SETTLED_MS = 80
+"""The sharp picture is made when the view has stood still this long [ms]."""
+
+COARSE_PIXELS = 700
+"""Longer side of the coarse picture of the whole [px]."""
+
+
+@dataclass(frozen=True, eq=False)
+class Picture:
+    """An image (height, width) of scalars and what it shows of the plane."""
+
+    view: Viewport
+    scalars: Scalars
+
+
+class _Bridge(QObject):
+    """Carries a picture, or the fault that prevented it, from the thread to the item."""
+
+    done = Signal(object)
+
+
+class _Job(QRunnable):
+    """Makes the pictures wanted; touches numpy arrays only, and tells by the bridge."""
+
+    def __init__(self, number: int, render: Render, views: tuple[Viewport, ...]) -> None:
+        super().__init__()
+        self.bridge = _Bridge()
+        self._number = number
+        self._render = render
+        self._views = views
+
+    def run(self) -> None:
+        """Make the pictures (in a thread of the pool)."""
+        pictures: list[Picture] = []
+        try:
+            pictures = [Picture(view, self._render(view)) for view in self._views]
+        except Exception:
+            log.exception("a picture of the field could not be made")
+        self.bridge.done.emit((self._number, pictures))
+
+
+_pool: QThreadPool | None = None
+
+
+def _threads() -> QThreadPool:
+    global _pool
+    if _pool is None:
+        _pool = QThreadPool()
+        _pool.setMaxThreadCount(2)
+    return _pool
+
+
+def wait_for_pictures(milliseconds: int = 10_000) -> bool:
+    """Wait until no picture is being made; for tests and at the program's end."""
+    return _threads().waitForDone(milliseconds)
+
+
+class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
+    """Shows what `render` makes of the view, coloured by `colour`.
+
+    `colour` turns scalars into premultiplied ARGB words; changing it costs no new picture.
+    """
+
+    ready = Signal()  # a sharp picture of the present view is shown
+
+    def __init__(self, z: int) -> None:
+        super().__init__()
+        self.setZValue(z)
+        self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
+        self.strength = 1.0
+        self._render: Render | None = None
+        self._colour: Callable[[Scalars], Words] | None = None
+        self._clip: QPainterPath | None = None
+        self._bounds = QRectF()
+        self._whole: QRectF | None = None
+        self._shown: list[tuple[Picture, QImage]] = []  # coarse first
+        self._asked = 0
+        self._running: _Job | None = None
+        self._stale = False
+        self._timer = QTimer(self)
+        self._timer.setSingleShot(True)
+        self._timer.setInterval(SETTLED_MS)
+        self._timer.timeout.connect(self._refresh)
+
+    # --- what to show ---------------------------------------------------------------------
+
+    def set_render(
+        self,
+        render: Render | None,
+        bounds: QRectF | None = None,
+        clip: QPainterPath | None = None,
+    ) -> None:
+        """Show what `render` makes (None: nothing) within `bounds` [mm], cut off at `clip` [mm]."""
+        self.prepareGeometryChange()
+        self._render = render
+        self._clip = clip
+        self._bounds = QRectF() if bounds is None else QRectF(bounds)
+        self._whole = None
+        self._asked += 1  # pictures under way belong to the past
+        if render is None:
+            self._shown = []
+            self._timer.stop()
+            self.update()
+        else:
+            self._refresh()
+
+    def set_colour(self, colour: Callable[[Scalars], Words]) -> None:
+        """Colour pictures by `colour`, those at hand at once."""
+        self._colour = colour
+        self._shown = [(picture, self._image(picture)) for picture, _ in self._shown]
+        self.update()
+
+    @property
+    def blank(self) -> bool:
+        """Whether there is nothing to show."""
+        return self._render is None
+
+    @property
+    def picture(self) -> Picture | None:
+        """The sharpest picture at hand."""
+        return self._shown[-1][0] if self._shown else None
+
+    @property
+    def busy(self) -> bool:
+        """Whether a sharper picture is awaited."""
+        return self._running is not None or self._timer.isActive()
+
+    # --- making pictures ------------------------------------------------------------------
+
+    def viewport(self) -> Viewport | None:
+        """What the view shows now, pixel by pixel; None while it has no size."""
+        box, widget = self.getViewBox(), self.getViewWidget()
+        if box is None or widget is None:
+            return None
+        box.updateMatrix()
+        transform = self.sceneTransform()
+        area = box.sceneBoundingRect().toAlignedRect()
+        ratio = widget.devicePixelRatioF()
+        sx, sy = transform.m11(), transform.m22()
+        if area.width() <= 0 or area.height() <= 0 or sx <= 0 or sy >= 0:
+            return None
+        return Viewport(
+            (area.left() - transform.dx()) / sx,
+            (area.top() - transform.dy()) / sy,
+            1.0 / (sx * ratio),
+            -1.0 / (sy * ratio),
+            round(area.width() * ratio),
+            round(area.height() * ratio),
+        )
+
+    def viewRangeChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+        """The view moved: make a sharp picture when it stands still."""
+        if self._render is not None:
+            self._timer.start()
+
+    def viewTransformChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+        """The view was resized: make a sharp picture when it stands still."""
+        if self._render is not None:
+            self._timer.start()
+
+    def refresh_now(self) -> None:
+        """Make the sharp picture here and now, without a thread (to save an image of the board)."""
+        view = self.viewport()
+        if self._render is None or view is None:
+            return
+        self._timer.stop()
+        self._asked += 1
+        self._take([Picture(view, self._render(view))], keep_coarse=True)
+
+    def _refresh(self) -> None:
+        if self._running is not None:
+            self._stale = True  # start again as soon as the running one ends
+            return
+        view = self.viewport()
+        if self._render is None or view is None:
+            return
+        views = (view,)
+        if self._whole is None and not self._bounds.isEmpty():
+            self._whole = self._bounds
+            views = (_coarse(self._bounds), view)
+        job = _Job(self._asked, self._render, views)
+        job.setAutoDelete(False)
+        job.bridge.done.connect(self._arrived, Qt.ConnectionType.QueuedConnection)
+        self._running = job
+        self._stale = False
+        _threads().start(job)
+
+    @Slot(object)
+    def _arrived(self, result: tuple[int, list[Picture]]) -> None:
+        number, pictures = result
+        self._running = None
+        if number == self._asked and pictures:
+            self._take(pictures, keep_coarse=len(pictures) == 1)
+        if self._stale or (number != self._asked and self._render is not None):
+            self._refresh()
+        elif not self._timer.isActive():
+            self.ready.emit()
+
+    def _take(self, pictures: list[Picture], keep_coarse: bool) -> None:
+        coarse = self._shown[:1] if keep_coarse and len(self._shown) == 2 else []
+        self._shown = coarse + [(picture, self._image(picture)) for picture in pictures]
+        self.update()
+
+    def _image(self, picture: Picture) -> QImage:
+        assert self._colour is not None
+        words = np.ascontiguousarray(self._colour(picture.scalars))
+        height, width = words.shape
+        image = QImage(
+            words.data, width, height, 4 * width, QImage.Format.Format_ARGB32_Premultiplied
+        )
+        image.words = words  # type: ignore[attr-defined]  # the image does not own its bytes
+        return image
+
+    # --- painting -------------------------------------------------------------------------
+
+    def boundingRect(self) -> QRectF:  # noqa: N802 - Qt's name
+        """Where something is shown [mm]."""
+        return self._bounds
+
+    def paint(
+        self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None = None
+    ) -> None:
+        """Show the pictures at hand where the view now has them."""
+        to_screen = QTransform(painter.worldTransform())
+        painter.save()
+        painter.setWorldTransform(QTransform())
+        try:
+            self._show(painter, to_screen)
+        except Exception as fault:
+            log.exception("painting %s failed", type(self).__name__)
+            painter.setPen(QColor("#b3360f"))
+            painter.drawText(12, 24, f"This could not be drawn: {fault}")
+        finally:
+            painter.restore()
+
+    def _show(self, painter: QPainter, to_screen: QTransform) -> None:
+        if not self._shown:
+            return
+        painter.setOpacity(self.strength)
+        clip = self._clip if self._clip is not None else _rectangle(self._bounds)
+        outline = to_screen.map(clip)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, self._clip is not None)
+        device = painter.device()
+        ratio = device.devicePixelRatioF() if device is not None else 1.0
+        shown = self._shown
+        if _covers(shown[-1][0].view, to_screen, ratio):
+            shown = shown[-1:]
+        for i, (picture, image) in enumerate(shown):
+            place, sharp = _place(picture.view, to_screen, ratio)
+            # Rectangles only: a brush repeats past its image, and two pictures that lie over one
+            # another would show through where they are painted at reduced strength.
+            covered = QRegion(place.mapRect(QRectF(image.rect())).toAlignedRect())
+            if i + 1 < len(shown):
+                sharper, above = shown[i + 1]
+                above_place = _place(sharper.view, to_screen, ratio)[0]
+                covered -= QRegion(above_place.mapRect(QRectF(above.rect())).toRect())
+            painter.setClipRegion(covered)
+            brush = QBrush(image)
+            brush.setTransform(place)
+            painter.setRenderHint(QPainter.RenderHint.SmoothPixmapTransform, not sharp)
+            painter.fillPath(outline, brush)
+
+
+def _coarse(bounds: QRectF) -> Viewport:
+    step = max(bounds.width(), bounds.height()) / COARSE_PIXELS
+    margin = 2.0 * step
+    return Viewport(
+        bounds.left() - margin,
+        bounds.bottom() + margin,  # QRectF's bottom is its largest y: the top on the board
+        step,
+        step,
+        int(bounds.width() / step) + 5,
+        int(bounds.height() / step) + 5,
+    )
+
+
+def _place(view: Viewport, to_screen: QTransform, ratio: float) -> tuple[QTransform, bool]:
+    """Where the image's pixels fall on the screen, and whether pixel meets pixel."""
+    sx = view.per_pixel_x * to_screen.m11()
+    sy = -view.per_pixel_y * to_screen.m22()
+    x = view.left * to_screen.m11() + to_screen.dx()
+    y = view.top * to_screen.m22() + to_screen.dy()
+    sharp = abs(sx * ratio - 1.0) < 1e-6 and abs(sy * ratio - 1.0) < 1e-6
+    if sharp:
+        sx = sy = 1.0 / ratio
+        x, y = round(x * ratio) / ratio, round(y * ratio) / ratio
+    return QTransform(sx, 0.0, 0.0, sy, x, y), sharp
+
+
+def _covers(view: Viewport, to_screen: QTransform, ratio: float) -> bool:
+    """Whether a picture was made for just this place of the view."""
+    place, sharp = _place(view, to_screen, ratio)
+    return sharp and abs(place.dx()) < 1.0 and abs(place.dy()) < 1.0
+
+
+def _rectangle(rect: QRectF) -> QPainterPath:
+    path = QPainterPath()
+    path.addRect(rect)
+    return path
