@@ -1,0 +1,160 @@
+"""Where the boundary of the mesh has its nodes: an even number of sides on every piece.
+
+The sides follow the wanted sizes: equal shares of the integral of ds / h.  Every second node is
+given to the triangulator, the nodes between them become the middles that its subdivision makes.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+import shapely
+from numpy.typing import NDArray
+
+from screenapp.meshing.size_field import GRADATION, SizeField
+from screenapp.model.curve_table import CurveTable
+from screenapp.model.errors import MeshingError
+from screenapp.model.shape import Shape
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+FEWEST = 9
+"""Points of each piece at which the size is read at first."""
+
+MENDS = 8
+"""How often crossing chords are split before giving up."""
+
+
+@dataclass(frozen=True, eq=False)
+class BoundaryPoints:
+    """Nodes on the boundary, loop by loop.
+
+    Attributes:
+        piece: the piece of the shape on which each side lies, (n,); side i starts at node i and
+            ends at the next node of the same loop.
+        t0, t1: parameters of the side's ends on its piece, (n,).
+        points: the start point of each side [mm], (n, 2).
+        loops: first and past-the-last side of each loop.
+    """
+
+    piece: Ints
+    t0: Floats
+    t1: Floats
+    points: Floats
+    loops: tuple[tuple[int, int], ...]
+
+    @property
+    def following(self) -> Ints:
+        """The node at the end of each side, (n,)."""
+        following = np.arange(1, len(self.piece) + 1)
+        for first, last in self.loops:
+            following[last - 1] = first
+        return following
+
+
+def place_points(shape: Shape, sizes: SizeField) -> BoundaryPoints:
+    """Divide every piece by the wanted sizes, more where the chords would cross.
+
+    Raises:
+        MeshingError: the chords still cross after splitting; the shape crosses itself.
+    """
+    parameters = _divide(shape, sizes)
+    for _ in range(MENDS):
+        crossing = _crossing_pieces(shape, parameters)
+        if not crossing:
+            return _collect(shape, parameters)
+        for piece in crossing:
+            parameters[piece] = _doubled(parameters[piece])
+    where = ", ".join(sorted({shape.curves[i].feature for i in crossing}))
+    raise MeshingError(
+        f"the boundary crosses or touches itself at {where}",
+        "move the outline and holes apart so that material is left between them",
+    )
+
+
+def _divide(shape: Shape, sizes: SizeField) -> list[Floats]:
+    """Parameters (0 ... 1) of the nodes of every piece."""
+    table = CurveTable.of(shape.curves)
+    piece = np.repeat(np.arange(len(table)), FEWEST)
+    t = np.tile(np.linspace(0.0, 1.0, FEWEST), len(table))
+    h = sizes.at(table.points(piece, t))
+    lengths = table.lengths
+    while True:
+        order = np.lexsort((t, piece))
+        piece, t, h = piece[order], t[order], h[order]
+        gap = np.diff(t) * lengths[piece[:-1]]
+        # A size that changes by 0.3 per distance can fall by this much between two samples.
+        lowest = 0.5 * (h[:-1] + h[1:] - GRADATION * gap)
+        split = np.flatnonzero(
+            (piece[:-1] == piece[1:]) & (lowest < 0.8 * np.minimum(h[:-1], h[1:]))
+        )
+        split = split[gap[split] > 1e-9 * shape.size]
+        if not len(split):
+            break
+        middle = 0.5 * (t[split] + t[split + 1])
+        piece, t = np.append(piece, piece[split]), np.append(t, middle)
+        h = np.append(h, sizes.at(table.points(piece[-len(split) :], middle)))
+    bounds = np.searchsorted(piece, np.arange(len(table) + 1))
+    return [
+        _equal_shares(lengths[k], t[bounds[k] : bounds[k + 1]], h[bounds[k] : bounds[k + 1]])
+        for k in range(len(table))
+    ]
+
+
+def _equal_shares(length: float, t: Floats, h: Floats) -> Floats:
+    """Parameters that cut a piece into an even number of sides of equal integral of ds / h."""
+    density = np.diff(t) * length * 0.5 * (1.0 / h[:-1] + 1.0 / h[1:])
+    running = np.concatenate([[0.0], np.cumsum(density)])
+    count = 2 * max(1, round(0.5 * running[-1] + 0.1))
+    inner = np.interp(np.arange(1, count) / count * running[-1], running, t)
+    return np.concatenate([[0.0], inner, [1.0]])
+
+
+def _doubled(parameters: Floats) -> Floats:
+    """Twice as many sides."""
+    middles = 0.5 * (parameters[:-1] + parameters[1:])
+    both = np.empty(2 * len(parameters) - 1)
+    both[::2], both[1::2] = parameters, middles
+    return both
+
+
+def _crossing_pieces(shape: Shape, parameters: list[Floats]) -> set[int]:
+    """Pieces of which a chord over two sides meets a chord that is not its neighbour."""
+    chords: list[Floats] = []
+    owner: list[int] = []
+    loop_of: list[tuple[int, int]] = []
+    for first, last in shape.loops:
+        points = np.concatenate(
+            [shape.curves[k].curve.point(parameters[k][:-1:2]) for k in range(first, last)]
+        )
+        chords.append(np.stack([points, np.roll(points, -1, axis=0)], axis=1))
+        owner += [k for k in range(first, last) for _ in parameters[k][:-1:2]]
+        loop_of += [(len(loop_of), len(points))] * len(points)
+    lines = shapely.linestrings(np.concatenate(chords))
+    a, b = shapely.STRtree(lines).query(lines, predicate="intersects")
+    a, b = a[a < b], b[a < b]
+    start = np.array([s for s, _ in loop_of])
+    count = np.array([n for _, n in loop_of])
+    step = (b - start[a]) - (a - start[a])
+    neighbours = (start[a] == start[b]) & ((step == 1) | (step == count[a] - 1))
+    owners = np.array(owner)
+    met = np.concatenate([a[~neighbours], b[~neighbours]])
+    return {int(k) for k in owners[met]}
+
+
+def _collect(shape: Shape, parameters: list[Floats]) -> BoundaryPoints:
+    """Side by side, loop by loop."""
+    piece = np.concatenate([np.full(len(s) - 1, k) for k, s in enumerate(parameters)])
+    points = np.concatenate(
+        [c.curve.point(s[:-1]) for c, s in zip(shape.curves, parameters, strict=True)]
+    )
+    ends = np.concatenate([[0], np.cumsum([len(s) - 1 for s in parameters])])
+    return BoundaryPoints(
+        piece,
+        np.concatenate([s[:-1] for s in parameters]),
+        np.concatenate([s[1:] for s in parameters]),
+        points,
+        tuple((int(ends[first]), int(ends[last])) for first, last in shape.loops),
+    )
