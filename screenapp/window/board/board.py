@@ -1,0 +1,179 @@
+"""The drawing board: tool strip, canvas, and the row below with lenses and coordinates."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import Qt, Signal
+from PySide6.QtGui import QKeyEvent, QShowEvent
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
+
+from screenapp.window import theme
+from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.grid import unit_length
+from screenapp.window.board.tool_strip import ToolStrip
+from screenapp.window.board.tools.base import Tool
+from screenapp.window.board.tools.select import SelectTool
+from screenapp.window.document import Document
+
+
+class Board(QWidget):
+    """Shows one document and lets it be drawn, held, loaded and probed.
+
+    Attributes:
+        document: what is shown.
+        canvas: results are painted on `canvas.view_box` too.
+
+    Signals:
+        sample_wanted: path of a sample to open, chosen on the empty board.
+    """
+
+    sample_wanted = Signal(object)
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.document = document
+        self.canvas = Canvas(document)
+        self.tools: tuple[Tool, ...] = (SelectTool(self.canvas),)
+        self.strip = ToolStrip(self.tools)
+        self._history = document.history
+        self._fitted = False
+        self._corner = QLabel()
+        self._corner.setAccessibleName("Cursor and snap")
+        self._foot = QWidget()
+        self._foot.setObjectName("boardFoot")
+        self._foot_row = QHBoxLayout(self._foot)
+        self._foot_row.setContentsMargins(12, 4, 12, 4)
+        self._foot_row.setSpacing(12)
+        self._lens_bar: QWidget = QWidget()
+        self._foot_row.addWidget(self._lens_bar, 1)
+        self._foot_row.addWidget(self._corner, 0, Qt.AlignmentFlag.AlignRight)
+        right = QVBoxLayout()
+        right.setSpacing(0)
+        right.addWidget(self.canvas, 1)
+        right.addWidget(self._foot)
+        row = QHBoxLayout(self)
+        row.setContentsMargins(0, 0, 0, 0)
+        row.setSpacing(0)
+        row.addWidget(self.strip)
+        row.addLayout(right, 1)
+        self._connect()
+        self.canvas.show_part()
+        self.canvas.fit()
+        self.take(self.tools[0].name)
+        self.apply_theme()
+
+    # for others
+
+    def set_lens_bar(self, widget: QWidget) -> None:
+        """Put the row of lenses at the left of the row below the canvas."""
+        self._foot_row.replaceWidget(self._lens_bar, widget)
+        self._lens_bar.deleteLater()
+        self._lens_bar = widget
+        self._foot_row.setStretchFactor(widget, 1)
+
+    def set_outline_faint(self, faint: bool) -> None:
+        """Draw the undeformed outline faintly, e.g. while a deformed shape is shown."""
+        self.canvas.outline.faint = faint
+        self.canvas.outline.update()
+
+    def take(self, name: str) -> None:
+        """Put the tool called `name` in hand."""
+        tool = next(t for t in self.tools if t.name == name)
+        self.canvas.take(tool)
+        self.strip.show_tool(name)
+
+    def fit(self) -> None:
+        """Show the whole part."""
+        self.canvas.fit()
+
+    def apply_theme(self) -> None:
+        """Take the colours of the present theme."""
+        p = theme.current()
+        self._foot.setStyleSheet(
+            f"#boardFoot {{ background: {p.chrome}; border-top: 1px solid {p.faint}; }}"
+        )
+        self._corner.setStyleSheet(f"color: {p.quiet}; font-size: {theme.TEXT_BODY}px;")
+        self.strip.apply_theme()
+        self.canvas.apply_theme()
+
+    # events
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+        """Keys that the canvas did not use: tools, zoom, fit, Escape."""
+        plain = not event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier
+        key, text = event.key(), event.text().upper()
+        control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
+        tool = next((t for t in self.tools if t.key == text), None) if plain else None
+        if tool is not None:
+            self.take(tool.name)
+            self.canvas.setFocus(Qt.FocusReason.ShortcutFocusReason)
+        elif key == Qt.Key.Key_Home:
+            self.fit()
+        elif text == "+" or (control and key in (Qt.Key.Key_Plus, Qt.Key.Key_Equal)):
+            self.canvas.zoom(1.25)
+        elif text == "-" or (control and key == Qt.Key.Key_Minus):
+            self.canvas.zoom(0.8)
+        elif key == Qt.Key.Key_Escape:
+            self._step_back()
+        else:
+            super().keyPressEvent(event)
+            return
+        self.canvas.refresh()
+        event.accept()
+
+    def showEvent(self, event: QShowEvent) -> None:  # noqa: N802
+        """Fit once the size is known."""
+        super().showEvent(event)
+        if not self._fitted:
+            self._fitted = True
+            self.canvas.fit()
+
+    def _step_back(self) -> None:
+        tool = self.canvas.tool
+        if tool is not None and tool.step_back():
+            return
+        if tool is not self.tools[0]:
+            self.take(self.tools[0].name)
+        else:
+            self.document.select()
+
+    def _connect(self) -> None:
+        document = self.document
+        document.part_changed.connect(self._part_changed)
+        document.selection_changed.connect(self._show_lit)
+        document.hovered_changed.connect(self._show_lit)
+        self.canvas.pointed.connect(self._show_corner)
+        self.canvas.tool_wanted.connect(self.take)
+        self.strip.wanted.connect(self.take)
+        self.strip.fit_wanted.connect(self.fit)
+        theme.notifier.changed.connect(self.apply_theme)
+
+    def _part_changed(self) -> None:
+        if self.canvas.tool is not None:
+            self.canvas.tool.part_changed()
+        self.canvas.preview(None)
+        self.canvas.show_part()
+        if self.document.history is not self._history:
+            self._history = self.document.history
+            self.canvas.fit()
+        self.canvas.refresh()
+
+    def _show_lit(self) -> None:
+        outline = self.canvas.outline
+        outline.selected = self.document.selection
+        outline.hovered = self.document.hovered
+        outline.update()
+
+    def _show_corner(self) -> None:
+        place, tool = self.canvas.place, self.canvas.tool
+        if place is None:
+            self._corner.setText(tool.hint() if tool is not None else "")
+            return
+        units = self.document.part.display_units
+        unit = unit_length(units)
+        x, y = place.at if tool is not None and tool.snaps else place.raw
+        digits, word = (3, "in") if units == "in-lbf-ksi" else (2, "mm")
+        text = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
+        if tool is not None and tool.snaps:
+            name = "off" if place.snap.kind == "none" else place.snap.kind
+            text += f"  ·  snap: {name}"
+        self._corner.setText(text)

@@ -1,0 +1,340 @@
+"""The drawing board's canvas: pans, zooms, and hands the mouse and keys to the tool in hand."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+import pyqtgraph as pg
+from PySide6.QtCore import QEvent, QPointF, QRectF, Qt, Signal
+from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QPainter, QResizeEvent, QWheelEvent
+from PySide6.QtWidgets import QFrame, QWidget
+
+from screenapp.model.part import Part, Point
+from screenapp.window import theme
+from screenapp.window.board.drawn_part import DrawnPart, drawn_part
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.grid import GridItem, ScaleBarItem
+from screenapp.window.board.hit_test import Clickable, hit_test
+from screenapp.window.board.naming import name_at
+from screenapp.window.board.part_item import FillItem, OutlineItem
+from screenapp.window.board.screen_item import Z_PREVIEW, ScreenItem
+from screenapp.window.board.snapping import Snap, draw_snap, snap
+from screenapp.window.board.tools.base import Place, Tool
+from screenapp.window.board.typed_entry import EntryRow
+from screenapp.window.document import Document
+
+EMPTY_VIEW = QRectF(-20.0, -20.0, 240.0, 160.0)
+"""What an empty board shows [mm]."""
+
+FINEST, COARSEST = 1e-2, 1e4
+"""Bounds of the zoom [px/mm]."""
+
+HOLD_OFF = Qt.KeyboardModifier.ControlModifier
+"""Held down, nothing snaps."""
+
+
+class PreviewItem(ScreenItem):
+    """What the tool in hand is about to do, and the sign of the snap in force."""
+
+    def __init__(self, canvas: Canvas) -> None:
+        super().__init__(Z_PREVIEW)
+        self._canvas = canvas
+
+    def draw(self, painter: QPainter, frame: Frame) -> None:
+        """Let the tool paint."""
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        tool, place = self._canvas.tool, self._canvas.place
+        if tool is None:
+            return
+        tool.paint(painter, frame)
+        if place is not None and (tool.snaps or tool.unsnapped()):
+            draw_snap(painter, frame, place.snap)
+
+
+class Canvas(pg.GraphicsView):  # type: ignore[misc]
+    """One view of the part in mm, y up, for drawing and for results.
+
+    Attributes:
+        view_box: everything painted is added to it.
+        document: what is shown.
+        tool: the tool in hand.
+        place: where the cursor is, None while it is elsewhere.
+
+    Signals:
+        pointed: `place` or the tool's state changed.
+        tool_wanted: a tool asks for another one, by name.
+        view_moved: after a pan, zoom or fit.
+    """
+
+    pointed = Signal()
+    tool_wanted = Signal(str)
+    view_moved = Signal()
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent, background=None)
+        self.document = document
+        self.tool: Tool | None = None
+        self.place: Place | None = None
+        self.symbols: Callable[[], tuple[Clickable, ...]] = tuple
+        self._preview: Part | None = None
+        self._pan_from: QPointF | None = None
+        self._space = False
+        self._last_px: QPointF | None = None
+        self._modifiers = Qt.KeyboardModifier.NoModifier
+        self.setFrameShape(QFrame.Shape.NoFrame)
+        self.setMouseTracking(True)
+        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
+        self.setAntialiasing(True)
+        self.setMinimumSize(240, 180)
+        self.setAccessibleName("Drawing board")
+        self.view_box = pg.ViewBox(lockAspect=True, enableMenu=False, enableMouse=False)
+        self.view_box.setDefaultPadding(0.0)
+        self.view_box.disableAutoRange()
+        self.setCentralItem(self.view_box)
+        self.grid, self.scale_bar = GridItem(), ScaleBarItem()
+        self.fill, self.outline = FillItem(), OutlineItem()
+        self.preview_item = PreviewItem(self)
+        for item in (self.grid, self.fill, self.outline, self.preview_item, self.scale_bar):
+            self.view_box.addItem(item, ignoreBounds=True)
+        self.entry = EntryRow(self)
+        self.view_box.setRange(EMPTY_VIEW, padding=0.0)
+        self.view_box.sigRangeChanged.connect(self.view_moved)
+        self.apply_theme()
+
+    # what is shown
+
+    @property
+    def part(self) -> Part:
+        """The part shown: the tool's preview of a change, else the document's."""
+        return self._preview if self._preview is not None else self.document.part
+
+    @property
+    def drawn(self) -> DrawnPart:
+        """The boundary of the part shown."""
+        return drawn_part(self.part)
+
+    @property
+    def previewing(self) -> bool:
+        """Whether a change that is not yet made is shown."""
+        return self._preview is not None
+
+    def preview(self, part: Part | None) -> None:
+        """Show `part` in place of the document's, or the document's again."""
+        if part is not self._preview:
+            self._preview = part
+            self.show_part()
+
+    def show_part(self) -> None:
+        """Paint the part afresh."""
+        drawn = self.drawn
+        self.grid.units = self.scale_bar.units = self.part.display_units
+        self.fill.show_part(drawn)
+        self.outline.show_part(drawn)
+        self.grid.update()
+
+    def apply_theme(self) -> None:
+        """Take the colours of the present theme."""
+        self.setBackground(theme.current().paper)
+        self.viewport().update()
+
+    @property
+    def frame_now(self) -> Frame:
+        """The present mapping between mm and px."""
+        self.view_box.updateMatrix()
+        scene = self.view_box.childGroup.sceneTransform()
+        return Frame(scene * self.viewportTransform())
+
+    # view
+
+    def fit(self) -> None:
+        """Show the whole part with room for its symbols."""
+        bounds = self.drawn.bounds
+        if bounds is None:
+            self.view_box.setRange(EMPTY_VIEW, padding=0.0)
+            return
+        x0, y0, x1, y1 = bounds
+        room = 0.16 * max(x1 - x0, y1 - y0, 1e-3)
+        self.view_box.setRange(
+            QRectF(x0 - room, y0 - room, x1 - x0 + 2 * room, y1 - y0 + 2 * room), padding=0.0
+        )
+
+    def zoom(self, factor: float, about: QPointF | None = None) -> None:
+        """Magnify by `factor`, keeping the place at `about` [px] where it is."""
+        frame = self.frame_now
+        factor = min(max(factor, FINEST / frame.scale), COARSEST / frame.scale)
+        if about is None:
+            about = QPointF(self.viewport().rect().center())
+        x, y = frame.mm(about)
+        self.view_box.scaleBy((1.0 / factor, 1.0 / factor), center=pg.Point(x, y))
+        self._refresh_place()
+
+    def _pan_to(self, px: QPointF) -> None:
+        assert self._pan_from is not None
+        frame = self.frame_now
+        (x0, y0), (x1, y1) = frame.mm(self._pan_from), frame.mm(px)
+        self.view_box.translateBy(x=x0 - x1, y=y0 - y1)
+        self._pan_from = px
+
+    # tools
+
+    def take(self, tool: Tool) -> None:
+        """Put another tool in hand."""
+        if tool is self.tool:
+            return
+        if self.tool is not None:
+            self.tool.stop()
+        self.entry.close_row()
+        self.tool = tool
+        tool.start()
+        self._refresh_place()
+        self.refresh()
+
+    def refresh(self) -> None:
+        """Repaint the preview and bring the cursor, the entry row and the corner up to date."""
+        self.preview_item.update()
+        if self.tool is not None and self._pan_from is None:
+            self.viewport().setCursor(self.tool.cursor)
+        self.entry.sync()
+        self.pointed.emit()
+
+    def snap_at(self, at: Point, hold_off: bool = False) -> Snap:
+        """Where a click at `at` [mm] lands for the tool in hand."""
+        tool = self.tool
+        if hold_off or tool is None:
+            return Snap("none", at)
+        return snap(
+            self.drawn,
+            self.frame_now,
+            at,
+            self.part.display_units,
+            tool.snap_points(),
+            tool.unsnapped(),
+        )
+
+    def place_at(
+        self, px: QPointF, modifiers: Qt.KeyboardModifier = Qt.KeyboardModifier.NoModifier
+    ) -> Place:
+        """Where a viewport position [px] is, what it snaps to and what lies under it."""
+        frame = self.frame_now
+        raw = frame.mm(px)
+        return Place(
+            px,
+            raw,
+            self.snap_at(raw, bool(modifiers & HOLD_OFF)),
+            hit_test(self.drawn, frame, px, self.symbols()),
+            bool(modifiers & Qt.KeyboardModifier.ShiftModifier),
+        )
+
+    def _refresh_place(self) -> None:
+        if self._last_px is not None:
+            self._set_place(self._last_px, self._modifiers)
+
+    def _set_place(self, px: QPointF, modifiers: Qt.KeyboardModifier) -> Place:
+        self._last_px, self._modifiers = px, modifiers
+        self.place = self.place_at(px, modifiers)
+        hit = self.place.hit
+        self.document.hover(hit.id if hit is not None else None)
+        self.viewport().setToolTip(name_at(self.document, hit))
+        return self.place
+
+    # mouse
+
+    def mousePressEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+        """Begin a pan or hand the press to the tool."""
+        self.setFocus(Qt.FocusReason.MouseFocusReason)
+        button = event.button()
+        pans = button in (Qt.MouseButton.MiddleButton, Qt.MouseButton.RightButton)
+        if pans or (button == Qt.MouseButton.LeftButton and self._space):
+            self._pan_from = event.position()
+            self.viewport().setCursor(Qt.CursorShape.ClosedHandCursor)
+        elif button == Qt.MouseButton.LeftButton and self.tool is not None:
+            self.tool.press(self._set_place(event.position(), event.modifiers()))
+            self.refresh()
+        event.accept()
+
+    def mouseMoveEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+        """Pan, or tell the tool."""
+        if self._pan_from is not None:
+            self._last_px = event.position()
+            self._pan_to(event.position())
+        else:
+            super().mouseMoveEvent(event)
+            place = self._set_place(event.position(), event.modifiers())
+            if self.tool is not None:
+                self.tool.move(place)
+            self.refresh()
+        event.accept()
+
+    def mouseReleaseEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+        """End a pan, or tell the tool."""
+        if self._pan_from is not None:
+            self._pan_from = None
+            self._set_place(event.position(), event.modifiers())
+        elif event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
+            self.tool.release(self._set_place(event.position(), event.modifiers()))
+        self.refresh()
+        event.accept()
+
+    def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+        """Tell the tool."""
+        if event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
+            self.tool.double(self._set_place(event.position(), event.modifiers()))
+            self.refresh()
+        event.accept()
+
+    def wheelEvent(self, event: QWheelEvent) -> None:  # noqa: N802
+        """Zoom about the cursor."""
+        self.zoom(1.0015 ** event.angleDelta().y(), event.position())
+        self.refresh()
+        event.accept()
+
+    def leaveEvent(self, event: QEvent) -> None:  # noqa: N802
+        """Nothing is under the cursor any more."""
+        super().leaveEvent(event)
+        self.place = self._last_px = None
+        self.document.hover(None)
+        self.refresh()
+
+    def resizeEvent(self, event: QResizeEvent | None) -> None:  # noqa: N802
+        """Keep the overlays in place."""
+        super().resizeEvent(event)
+        if event is not None and hasattr(self, "entry"):
+            self.view_moved.emit()
+
+    # keys
+
+    def keyPressEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+        """Space pans; typing opens the entry row; the rest goes to the tool, then to the board."""
+        key = event.key()
+        if key == Qt.Key.Key_Space and not event.isAutoRepeat():
+            self._space = True
+            self.viewport().setCursor(Qt.CursorShape.OpenHandCursor)
+            return
+        if key == Qt.Key.Key_Control:
+            self._modifiers |= HOLD_OFF
+            self._refresh_place()
+        used = self.entry.begin(event) or (self.tool is not None and self.tool.key_press(event))
+        self.refresh()
+        event.setAccepted(used)
+
+    def keyReleaseEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+        """End of space and of holding snaps off."""
+        if event.key() == Qt.Key.Key_Space and not event.isAutoRepeat():
+            self._space = False
+        if event.key() == Qt.Key.Key_Control:
+            self._modifiers &= ~HOLD_OFF
+            self._refresh_place()
+        self.refresh()
+        event.accept()
+
+    def focusNextPrevChild(self, forward: bool) -> bool:  # noqa: N802
+        """Tab opens the entry row while something can be typed."""
+        if forward and self.tool is not None and self.tool.entry_fields():
+            self.entry.open_row(None)
+            return True
+        return bool(super().focusNextPrevChild(forward))
+
+    def focusOutEvent(self, event: QFocusEvent) -> None:  # noqa: N802
+        """A key let go elsewhere is not seen."""
+        self._space = False
+        super().focusOutEvent(event)

@@ -1,0 +1,176 @@
+"""Where a click lands: on a point, on an edge, on the grid, or just where it is."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass
+from typing import Literal
+
+from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QPainter, QPen
+
+from screenapp.model.curves import Arc
+from screenapp.model.part import DisplayUnits, Loop, LoopHole, Point, SlotHole
+from screenapp.window import theme
+from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.grid import grid_step
+
+SnapKind = Literal["none", "grid", "corner", "centre", "middle", "edge", "start"]
+
+POINT_REACH_PX, EDGE_REACH_PX = 10.0, 7.0
+"""How far a point and an edge draw the cursor [px]."""
+
+
+@dataclass(frozen=True)
+class Snap:
+    """Where a click would land.
+
+    Attributes:
+        kind: what drew it there.
+        at: the place [mm].
+        id: id of the corner, edge or hole; "" for grid and nothing.
+        along: direction of the edge there [rad], for the sign.
+    """
+
+    kind: SnapKind
+    at: Point
+    id: str = ""
+    along: float = 0.0
+
+
+def snap(
+    drawn: DrawnPart,
+    frame: Frame,
+    at: Point,
+    units: DisplayUnits,
+    extra: Iterable[Snap] = (),
+    without: frozenset[str] = frozenset(),
+) -> Snap:
+    """Where a click at `at` lands: points first, then edges, then the grid.
+
+    Args:
+        drawn: the part.
+        frame: the present zoom.
+        at: the cursor [mm].
+        units: the grid is round in these.
+        extra: further points to offer, e.g. those of a chain being drawn.
+        without: ids that must not draw the cursor, e.g. of what is being dragged.
+    """
+    reach = POINT_REACH_PX / frame.scale
+    best: tuple[float, Snap] | None = None
+    for one in (*extra, *points_of(drawn, without)):
+        far = math.dist(one.at, at)
+        if far <= reach and (best is None or far < best[0] - 1e-9):
+            best = far, one
+    if best is not None:
+        return best[1]
+    return snap_to_edge(drawn, at, EDGE_REACH_PX / frame.scale, without) or snap_to_grid(
+        frame, at, units
+    )
+
+
+def snap_to_edge(
+    drawn: DrawnPart, at: Point, reach: float, without: frozenset[str] = frozenset()
+) -> Snap | None:
+    """The nearest place on the exact boundary within `reach` [mm]."""
+    best: tuple[float, Snap] | None = None
+    for piece in drawn.pieces:
+        if piece.feature in without:
+            continue
+        t = piece.curve.nearest(at)
+        x, y = piece.curve.point(t)
+        far = math.dist((x, y), at)
+        if far <= reach and (best is None or far < best[0]):
+            dx, dy = piece.curve.tangent(t)
+            best = far, Snap("edge", (float(x), float(y)), piece.feature, math.atan2(dy, dx))
+    return best[1] if best else None
+
+
+def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
+    """The nearest crossing of grid lines, written with as few digits as the step needs."""
+    step = grid_step(frame.scale, units)
+    digits = max(0, 2 - math.floor(math.log10(step)))
+    x, y = (round(round(v / step) * step, digits) + 0.0 for v in at)
+    return Snap("grid", (x, y))
+
+
+def points_of(drawn: DrawnPart, without: frozenset[str]) -> Iterator[Snap]:
+    """Corners, centres and middles of the part, save those of the ids in `without`."""
+    for corner in drawn.corners.values():
+        if corner.id not in without:
+            yield Snap("corner", corner.at, corner.id)
+    for hole in drawn.part.holes:
+        if hole.id in without or isinstance(hole, LoopHole):
+            continue
+        yield Snap("centre", hole.centre, hole.id)
+        if isinstance(hole, SlotHole):
+            half = (hole.length - hole.width) / 2.0
+            c, s = math.cos(math.radians(hole.angle)), math.sin(math.radians(hole.angle))
+            for sign in (-1.0, 1.0):
+                x, y = hole.centre[0] + sign * half * c, hole.centre[1] + sign * half * s
+                yield Snap("centre", (x, y), hole.id)
+    for piece in drawn.pieces:
+        if piece.feature in without:
+            continue
+        if piece.kind == "edge":
+            x, y = piece.curve.point(0.5)
+            dx, dy = piece.curve.tangent(0.5)
+            yield Snap("middle", (float(x), float(y)), piece.feature, math.atan2(dy, dx))
+        if piece.kind != "hole" and isinstance(piece.curve, Arc):
+            yield Snap("centre", piece.curve.centre, piece.feature)
+
+
+def neighbours(loop: Loop, corner: str) -> frozenset[str]:
+    """A corner and the edges that meet in it: what a drag of it must not snap to."""
+    ids = [c.id for c in loop.corners]
+    if corner not in ids:
+        return frozenset()
+    i = ids.index(corner)
+    return frozenset({corner, loop.edges[i - 1].id, loop.edges[i].id})
+
+
+def draw_snap(painter: QPainter, frame: Frame, found: Snap) -> None:
+    """The sign of a snap: each kind has its own form."""
+    if found.kind == "none":
+        return
+    p = frame.px(found.at)
+    colour = QColor(theme.current().accent)
+    pen = QPen(colour, 2.0)
+    pen.setCapStyle(Qt.PenCapStyle.FlatCap)
+    painter.setPen(pen)
+    painter.setBrush(Qt.BrushStyle.NoBrush)
+    if found.kind == "grid":
+        pen.setWidthF(1.0)
+        painter.setPen(pen)
+        painter.drawLines([_line(p, -5, 0, 5, 0), _line(p, 0, -5, 0, 5)])
+    elif found.kind == "corner":  # four brackets round the point
+        for sx in (-1, 1):
+            for sy in (-1, 1):
+                x, y = 7 * sx, 7 * sy
+                painter.drawLines([_line(p, x, y, x - 4 * sx, y), _line(p, x, y, x, y - 4 * sy)])
+    elif found.kind == "centre":
+        painter.drawEllipse(p, 7.0, 7.0)
+        painter.fillRect(QRectF(p.x() - 1.5, p.y() - 1.5, 3, 3), colour)
+    elif found.kind == "middle":  # two bars across, with a gap for the edge
+        c, s = math.cos(found.along), -math.sin(found.along)
+        for sign in (-1, 1):
+            foot = QPointF(p.x() + 3 * sign * c, p.y() + 3 * sign * s)
+            painter.drawLine(_line(foot, -7 * s, 7 * c, 7 * s, -7 * c))
+    elif found.kind == "edge":  # a thick dash on the edge, with a dot
+        c, s = math.cos(found.along), -math.sin(found.along)
+        pen.setWidthF(4.0)
+        painter.setPen(pen)
+        painter.drawLine(_line(p, -8 * c, -8 * s, 8 * c, 8 * s))
+    else:  # "start": closes the chain
+        painter.setBrush(colour)
+        painter.drawEllipse(p, 4.0, 4.0)
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        painter.drawEllipse(p, 9.0, 9.0)
+
+
+def _line(p: QPointF, x0: float, y0: float, x1: float, y1: float) -> QLineF:
+    return QLineF(p.x() + x0, p.y() + y0, p.x() + x1, p.y() + y1)
+
+

@@ -1,0 +1,123 @@
+"""What every tool of the board is: it is told of presses, moves and keys, and paints its preview."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, ClassVar
+
+from PySide6.QtCore import QPointF, Qt
+from PySide6.QtGui import QKeyEvent, QPainter
+
+from screenapp.model.part import Point
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.hit_test import Hit
+from screenapp.window.board.snapping import Snap
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+    from screenapp.window.board.typed_entry import EntryField
+
+
+@dataclass(frozen=True)
+class Place:
+    """Where the cursor is.
+
+    Attributes:
+        px: in the view [px].
+        raw: on the board [mm].
+        snap: where a click lands.
+        hit: what lies under the cursor.
+        shift: whether Shift is held (adds to the selection).
+    """
+
+    px: QPointF
+    raw: Point
+    snap: Snap
+    hit: Hit | None
+    shift: bool = False
+
+    @property
+    def at(self) -> Point:
+        """Where a click lands [mm]."""
+        return self.snap.at
+
+
+class Tool:
+    """A drawing tool; the canvas calls these and repaints after each.
+
+    `name`, `key`, `line` and `icon` are what the tool strip shows.
+    """
+
+    name: ClassVar[str] = ""
+    key: ClassVar[str] = ""
+    line: ClassVar[str] = ""
+    icon: ClassVar[str] = ""
+    snaps: ClassVar[bool] = True
+
+    def __init__(self, canvas: Canvas) -> None:
+        self.canvas = canvas
+
+    @property
+    def cursor(self) -> Qt.CursorShape:
+        """The cursor that says what a click would do now."""
+        return Qt.CursorShape.CrossCursor
+
+    def start(self) -> None:
+        """It is the tool now."""
+
+    def stop(self) -> None:
+        """Another tool is taken: drop whatever is half done."""
+
+    def press(self, place: Place) -> None:
+        """The left button went down."""
+
+    def move(self, place: Place) -> None:
+        """The cursor moved."""
+
+    def release(self, place: Place) -> None:
+        """The left button came up."""
+
+    def double(self, place: Place) -> None:
+        """A double-click; the first press and release came before."""
+
+    def key_press(self, event: QKeyEvent) -> bool:
+        """A key; True if it was used."""
+        return False
+
+    def step_back(self) -> bool:
+        """Escape: drop the last thing half done; False if there was none."""
+        return False
+
+    def part_changed(self) -> None:
+        """The document's part is another one: drop what refers to the old one."""
+
+    def snap_points(self) -> tuple[Snap, ...]:
+        """Further points that the cursor may snap to."""
+        return ()
+
+    def unsnapped(self) -> frozenset[str]:
+        """Ids that must not draw the cursor."""
+        return frozenset()
+
+    def hint(self) -> str:
+        """What to do next, one short sentence for the corner of the board."""
+        return self.line
+
+    # typed entry
+
+    def entry_fields(self) -> tuple[EntryField, ...]:
+        """What may be typed now; none means that typing does nothing."""
+        return ()
+
+    def entry_typed(self, values: dict[str, float]) -> None:
+        """The typed values changed [mm, deg]; show them in the preview."""
+
+    def entry_live(self) -> dict[str, float]:
+        """Present value of every field, shown in those not typed."""
+        return {}
+
+    def entry_accept(self, values: dict[str, float]) -> None:
+        """Enter was pressed in the entry row."""
+
+    def paint(self, painter: QPainter, frame: Frame) -> None:
+        """Paint what is half done, in pixels."""

@@ -1,0 +1,284 @@
+"""Exact entry while drawing: a small row of fields near the cursor, filled as one types."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+from PySide6.QtCore import QEvent, QObject, QPoint, Qt
+from PySide6.QtGui import QKeyEvent
+from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QLineEdit, QWidget
+
+from screenapp.model.errors import ScreenappError
+from screenapp.window import theme
+from screenapp.window.board.quantity import FieldKind, parse, written
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+STARTERS = "0123456789.-"
+"""A key with one of these opens the row."""
+
+
+@dataclass(frozen=True)
+class EntryField:
+    """A value that may be typed.
+
+    Attributes:
+        name: key of the value.
+        label: shown before the field.
+        kind: what is measured.
+        excludes: names of fields that this one takes the place of.
+    """
+
+    name: str
+    label: str
+    kind: FieldKind = "length"
+    excludes: tuple[str, ...] = ()
+
+
+class EntryRow(QFrame):
+    """The row; it asks the canvas's tool what may be typed and tells it what was."""
+
+    def __init__(self, canvas: Canvas) -> None:
+        super().__init__(canvas)
+        self._canvas = canvas
+        self._fields: tuple[EntryField, ...] = ()
+        self._edits: dict[str, QLineEdit] = {}
+        self._typed: dict[str, str] = {}
+        self.setObjectName("entryRow")
+        self.setAccessibleName("Exact entry")
+        self._row = QHBoxLayout(self)
+        self._row.setContentsMargins(8, 4, 8, 4)
+        self._row.setSpacing(6)
+        self.hide()
+
+    @property
+    def typed(self) -> dict[str, float]:
+        """The typed values that can be understood [mm, deg]."""
+        values: dict[str, float] = {}
+        for field in self._fields:
+            if field.name in self._typed:
+                try:
+                    values[field.name] = self._parsed(field)
+                except ScreenappError:
+                    continue
+        return values
+
+    def begin(self, event: QKeyEvent) -> bool:
+        """Open the row if the key begins a number and the tool has fields."""
+        plain = event.modifiers() in (
+            Qt.KeyboardModifier.NoModifier,
+            Qt.KeyboardModifier.KeypadModifier,
+        )
+        tool = self._canvas.tool
+        if not plain or event.text() == "" or event.text() not in STARTERS:
+            return False
+        if tool is None or not tool.entry_fields():
+            return False
+        self.open_row(event.text())
+        return True
+
+    def open_row(self, first: str | None, near: QPoint | None = None) -> None:
+        """Show the row with the tool's fields, `first` typed into the first one."""
+        tool = self._canvas.tool
+        if tool is None or not tool.entry_fields():
+            return
+        self._typed = {}
+        self._build(tool.entry_fields())
+        self._put(near)
+        self.show()
+        self.raise_()
+        name = self._fields[0].name
+        edit = self._edits[name]
+        edit.setFocus(Qt.FocusReason.ShortcutFocusReason)
+        if first is not None:
+            edit.setText(first)
+            self._edited(name)
+        else:
+            edit.selectAll()
+
+    def close_row(self) -> None:
+        """Hide the row and give the keyboard back to the canvas."""
+        had_focus = self.isAncestorOf(self._canvas.focusWidget() or self._canvas)
+        self._typed = {}
+        if self.isVisible():
+            self.hide()
+            if had_focus or self._canvas.focusWidget() is None:
+                self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)
+
+    def sync(self) -> None:
+        """Follow the tool: other fields, or other live values."""
+        if not self.isVisible():
+            return
+        tool = self._canvas.tool
+        fields = tool.entry_fields() if tool is not None else ()
+        if not fields:
+            self.close_row()
+        elif fields != self._fields:
+            self._typed = {}
+            self._build(fields)
+            self._edits[fields[0].name].setFocus(Qt.FocusReason.OtherFocusReason)
+        self._show_live()
+
+    def eventFilter(self, watched: QObject, event: QEvent) -> bool:  # noqa: N802
+        """Enter accepts, Escape steps back, Tab goes round."""
+        if not isinstance(event, QKeyEvent):
+            return False
+        if event.type() == QEvent.Type.ShortcutOverride:
+            event.accept()
+            return True
+        if event.type() != QEvent.Type.KeyPress:
+            return False
+        if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
+            self._accept()
+        elif event.key() == Qt.Key.Key_Escape:
+            self._step_back()
+        elif event.key() == Qt.Key.Key_Tab:
+            self._go(watched, 1)
+        elif event.key() == Qt.Key.Key_Backtab:
+            self._go(watched, -1)
+        else:
+            return False
+        return True
+
+    def _build(self, fields: tuple[EntryField, ...]) -> None:
+        while (item := self._row.takeAt(0)) is not None:
+            if (old := item.widget()) is not None:
+                old.removeEventFilter(self)
+                old.hide()
+                old.deleteLater()
+        self._fields = fields
+        self._edits = {}
+        for field in fields:
+            label = QLabel(field.label)
+            edit = QLineEdit()
+            edit.setFixedWidth(84)
+            edit.setAccessibleName(field.label)
+            edit.setToolTip(f"{field.label}: type a value with or without a unit, Enter accepts")
+            edit.textEdited.connect(lambda _text, name=field.name: self._edited(name))
+            edit.installEventFilter(self)
+            label.setBuddy(edit)
+            self._row.addWidget(label)
+            self._row.addWidget(edit)
+            self._edits[field.name] = edit
+        self._style()
+        self._show_live()
+        self.adjustSize()
+
+    def _put(self, near: QPoint | None) -> None:
+        """Beside the cursor, inside the canvas."""
+        canvas = self._canvas
+        if near is None:
+            place = canvas.place
+            px = place.px.toPoint() if place is not None else canvas.rect().center()
+            near = px + QPoint(18, 18)
+        x = min(max(near.x(), 8), max(8, canvas.width() - self.width() - 8))
+        y = min(max(near.y(), 8), max(8, canvas.height() - self.height() - 8))
+        self.move(x, y)
+
+    def _parsed(self, field: EntryField) -> float:
+        return parse(self._typed[field.name], field.kind, self._canvas.part.display_units)
+
+    def _edited(self, name: str) -> None:
+        """A field was typed into: those it excludes go back to live values."""
+        field = next(f for f in self._fields if f.name == name)
+        text = self._edits[name].text().strip()
+        if text:
+            self._typed[name] = text
+            for other in field.excludes:
+                self._typed.pop(other, None)
+        else:
+            self._typed.pop(name, None)
+        self._tell()
+
+    def _tell(self) -> None:
+        self._mark_bad()
+        if self._canvas.tool is not None:
+            self._canvas.tool.entry_typed(self.typed)
+        self._canvas.refresh()
+
+    def _mark_bad(self) -> list[str]:
+        """Mark what cannot be understood; gives the names."""
+        bad: list[str] = []
+        for field in self._fields:
+            edit = self._edits[field.name]
+            edit.setProperty("bad", False)
+            if field.name in self._typed:
+                try:
+                    self._parsed(field)
+                except ScreenappError as fault:
+                    bad.append(field.name)
+                    edit.setProperty("bad", True)
+                    edit.setToolTip(f"{fault.cause}: {fault.mend}")
+            edit.style().unpolish(edit)
+            edit.style().polish(edit)
+        return bad
+
+    def _accept(self) -> None:
+        if bad := self._mark_bad():
+            self._edits[bad[0]].setFocus()
+            self._edits[bad[0]].selectAll()
+            return
+        tool, values = self._canvas.tool, self.typed
+        if tool is None:
+            return
+        fields = self._fields
+        self._typed = {}
+        tool.entry_accept(values)
+        if tool is self._canvas.tool and tool.entry_fields() == fields:
+            self._show_live()
+            self._edits[fields[0].name].setFocus()
+            self._edits[fields[0].name].selectAll()
+        self._canvas.refresh()
+
+    def _step_back(self) -> None:
+        if self._typed:
+            self._typed = {}
+            self._tell()
+            self._show_live()
+        else:
+            tool = self._canvas.tool
+            self.close_row()
+            if tool is not None:
+                tool.entry_typed({})
+            self._canvas.refresh()
+
+    def _go(self, watched: QObject, step: int) -> None:
+        names = [f.name for f in self._fields]
+        here = next((i for i, n in enumerate(names) if self._edits[n] is watched), 0)
+        edit = self._edits[names[(here + step) % len(names)]]
+        edit.setFocus(Qt.FocusReason.TabFocusReason)
+        edit.selectAll()
+
+    def _show_live(self) -> None:
+        tool = self._canvas.tool
+        live = tool.entry_live() if tool is not None else {}
+        units = self._canvas.part.display_units
+        for field in self._fields:
+            if field.name in self._typed or field.name not in live:
+                continue
+            edit = self._edits[field.name]
+            text = written(live[field.name], field.kind, units)
+            if edit.text() != text:
+                edit.setText(text)
+                if edit.hasFocus():
+                    edit.selectAll()
+
+    def _style(self) -> None:
+        p = theme.current()
+        self.setStyleSheet(
+            f"#entryRow {{ background: {p.sheet}; border: 1px solid {p.accent};"
+            f" border-radius: 4px; }}"
+            f"QLabel {{ color: {p.quiet}; font-size: {theme.TEXT_SMALL}px; }}"
+            f"QLineEdit {{ color: {p.ink}; background: {p.paper}; border: 1px solid {p.faint};"
+            f" border-radius: 2px; padding: 2px 4px; font-size: {theme.TEXT_BODY}px;"
+            f" selection-background-color: {p.accent}; selection-color: {p.on_accent}; }}"
+            f"QLineEdit:focus {{ border: 1px solid {p.accent}; }}"
+            f'QLineEdit[bad="true"] {{ border: 1px solid {p.bad}; color: {p.bad}; }}'
+        )
+
+
+def inside_row(widget: QWidget | None) -> bool:
+    """Whether a widget is a field of an entry row."""
+    return widget is not None and isinstance(widget.parent(), EntryRow)
