@@ -19,7 +19,9 @@ def write_atomically(path: Path, content: bytes | Callable[[BinaryIO], object]) 
         OSError: the folder is missing or not writable, the disk is full ...; `path` is unharmed.
     """
     target = Path(os.path.realpath(path))
-    handle, name = tempfile.mkstemp(prefix=f".{target.name[:80]}.", suffix=".tmp", dir=target.parent)
+    handle, name = tempfile.mkstemp(
+        prefix=f".{target.name[:80]}.", suffix=".tmp", dir=target.parent
+    )
     beside = Path(name)
     try:
         with os.fdopen(handle, "wb") as file:

@@ -187,7 +187,9 @@ def _value(node: ast.expr, names: Mapping[str, float], text: str, depth: int = 0
             "the expression is nested too deeply", "put parts of it into dimensions of their own"
         )
     deeper = depth + 1
-    if isinstance(node, ast.Constant) and type(node.value) in (int, float):
+    if isinstance(node, ast.Constant) and isinstance(node.value, int | float):
+        if isinstance(node.value, bool):  # the words True and False
+            return _named(str(node.value), names, text)
         return float(node.value)
     if isinstance(node, ast.Name):
         return _named(node.id, names, text)

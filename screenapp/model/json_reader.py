@@ -121,7 +121,8 @@ class _Reader:
         if self.at < len(self.text):
             raise self.error("there is more text after the end of the part", "remove what follows")
         faults = tuple(
-            Fault(cause, mend, dotted(root, path), line=line) for path, cause, mend, line in self.odd
+            Fault(cause, mend, dotted(root, path), line=line)
+            for path, cause, mend, line in self.odd
         )
         return JsonText(root, faults)
 

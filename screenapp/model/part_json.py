@@ -10,18 +10,16 @@ from __future__ import annotations
 import hashlib
 import math
 import re
-from collections.abc import Iterator
 from dataclasses import replace
 from pathlib import Path
-from typing import Any
 
 from screenapp.model.atomic_write import write_atomically
 from screenapp.model.errors import Fault, InvalidPartError, PartFileError
-from screenapp.model.expressions import ExpressionError, check_name
 from screenapp.model.formulas import number_slots, put_back, work_out
 from screenapp.model.json_reader import JsonObject, dotted, line_of, read_json
 from screenapp.model.json_writer import json_text
 from screenapp.model.migrations import migrate
+from screenapp.model.naming_faults import naming_faults
 from screenapp.model.part import Part
 from screenapp.model.part_tree import (
     FORMAT,
@@ -139,7 +137,7 @@ def part_from_text(text: str, name: str = "") -> Part:
         raise _error((Fault("the file is not an object", "begin it with {", line=1),), name)
     _check_version(tree, name)
     migrate(tree)
-    faults = [*read.faults, *schema_faults(tree, "part.schema.json"), *_naming_faults(tree)]
+    faults = [*read.faults, *schema_faults(tree, "part.schema.json"), *naming_faults(tree)]
     formulas, formula_faults = work_out(tree)
     faults += formula_faults
     if faults:
@@ -236,80 +234,3 @@ def _error(faults: tuple[Fault, ...], name: str) -> PartFileError:
     )
     more = f" (and {len(faults) - 1} more)" if len(faults) > 1 else ""
     return PartFileError((f"{place}: " if place else "") + first.cause + more, first.mend, faults)
-
-
-def _naming_faults(tree: JsonObject) -> Iterator[Fault]:
-    """Double ids and names, names that no dimension can have, loops with an edge too few."""
-    yield from _double(tree, list(_ids(tree)), "id")
-    for group in ("dimensions", "materials"):
-        named = [
-            ((group, i, "name"), entry["name"])
-            for i, entry in _entries(tree, group)
-            if isinstance(entry.get("name"), str)
-        ]
-        yield from _double(tree, named, "name")
-    for i, entry in _entries(tree, "dimensions"):
-        if isinstance(entry.get("name"), str):
-            try:
-                check_name(entry["name"])
-            except ExpressionError as error:
-                path = ("dimensions", i, "name")
-                field = dotted(tree, path)
-                yield Fault(error.cause, error.mend, field, line=line_of(tree, path))
-    for path, loop in _loops(tree):
-        corners, edges = loop.get("corners"), loop.get("edges")
-        if isinstance(corners, list) and isinstance(edges, list) and len(corners) != len(edges):
-            yield Fault(
-                f"the loop has {len(corners)} corners but {len(edges)} edges",
-                "give as many edges as corners; the last edge closes the loop",
-                dotted(tree, path),
-                line=line_of(tree, path),
-            )
-
-
-def _double(tree: JsonObject, named: list[tuple[Any, str]], word: str) -> Iterator[Fault]:
-    first: dict[str, Any] = {}
-    for path, name in named:
-        if name not in first:
-            first[name] = path
-            continue
-        where = dotted(tree, first[name][:-1])
-        line = line_of(tree, first[name])
-        yield Fault(
-            f'the {word} "{name}" is used twice, first in line {line} ({where})',
-            f"give one of the two another {word}",
-            dotted(tree, path),
-            (name,),
-            line=line_of(tree, path),
-        )
-
-
-def _ids(node: Any, path: tuple[str | int, ...] = ()) -> Iterator[tuple[Any, str]]:
-    """Path and text of every id, in the order of the file."""
-    if isinstance(node, dict):
-        if isinstance(node.get("id"), str):
-            yield (*path, "id"), node["id"]
-        for key, value in node.items():
-            yield from _ids(value, (*path, key))
-    elif isinstance(node, list):
-        for i, value in enumerate(node):
-            yield from _ids(value, (*path, i))
-
-
-def _entries(tree: JsonObject, group: str) -> list[tuple[int, dict[str, Any]]]:
-    listed = tree.get(group)
-    if not isinstance(listed, list):
-        return []
-    return [(i, entry) for i, entry in enumerate(listed) if isinstance(entry, dict)]
-
-
-def _loops(tree: JsonObject) -> Iterator[tuple[Any, dict[str, Any]]]:
-    shape = tree.get("shape")
-    if not isinstance(shape, dict):
-        return
-    if isinstance(shape.get("outline"), dict):
-        yield ("shape", "outline"), shape["outline"]
-    holes = shape.get("holes")
-    for i, hole in enumerate(holes if isinstance(holes, list) else ()):
-        if isinstance(hole, dict) and hole.get("kind") == "loop":
-            yield ("shape", "holes", i), hole

@@ -8,7 +8,6 @@ says which by `kind`, after its id.
 from __future__ import annotations
 
 import dataclasses
-import functools
 import types
 import typing
 from typing import Any, TypeVar
@@ -69,10 +68,41 @@ LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLi
 READINGS: dict[str, type] = {"probe": Probe}
 
 KIND_OF: dict[type, str] = {
-    cls: kind
-    for group in (HOLES, SUPPORTS, LOADS, LIMITS, READINGS)
-    for kind, cls in group.items()
+    cls: kind for group in (HOLES, SUPPORTS, LOADS, LIMITS, READINGS) for kind, cls in group.items()
 }
+
+
+# --- forms of fields ------------------------------------------------------------------------
+
+
+def _form(hint: Any) -> str:
+    options = set(typing.get_args(hint)) if isinstance(hint, types.UnionType) else {hint}
+    for kind, form in ((float, "number"), (Point, "point"), (int, "whole")):
+        if kind in options:
+            return form
+    return "text"
+
+
+def _forms(cls: Any) -> dict[str, str]:
+    hints = typing.get_type_hints(cls)
+    return {f.name: _form(hints[f.name]) for f in dataclasses.fields(cls)}
+
+
+FORMS: dict[type, dict[str, str]] = {
+    cls: _forms(cls)
+    for cls in (Corner, Edge, Wall, Material, MeshWishes, Dimension, *KIND_OF)
+    if cls is not LoopHole
+}
+"""The form of each field of the plain records: "number", "point", "whole" or "text"."""
+
+NUMBER_KEYS: frozenset[str] = frozenset(
+    name
+    for cls, forms in FORMS.items()
+    if cls is not Dimension
+    for name, form in forms.items()
+    if form in ("number", "point")
+)
+"""Keys whose value is a number or a point, so that an expression may stand there."""
 
 
 # --- part to tree ---------------------------------------------------------------------------
@@ -118,7 +148,7 @@ def without_blanks(tree: Any) -> Any:
 def _tree(record: Any) -> Tree:
     """A record of plain fields."""
     tree: Tree = {}
-    for name in forms(type(record)):
+    for name in FORMS[type(record)]:
         value = getattr(record, name)
         tree[name] = list(value) if isinstance(value, tuple) else value
         if name == "id" and type(record) in KIND_OF:
@@ -183,7 +213,7 @@ def _hole(tree: Tree) -> Any:
 def _record(cls: type[Record], tree: Tree) -> Record:
     """A record of plain fields; what the tree leaves out keeps the record's default."""
     values: dict[str, Any] = {}
-    for name, form in forms(cls).items():
+    for name, form in FORMS[cls].items():
         if name not in tree:
             continue
         value = tree[name]
@@ -195,31 +225,3 @@ def _record(cls: type[Record], tree: Tree) -> Record:
             value = int(value)
         values[name] = value
     return cls(**values)
-
-
-# --- forms of fields ------------------------------------------------------------------------
-
-
-@functools.cache
-def forms(cls: type) -> dict[str, str]:
-    """The form of each field of a plain record: "number", "point", "whole" or "text"."""
-    hints = typing.get_type_hints(cls)
-    return {f.name: _form(hints[f.name]) for f in dataclasses.fields(cls)}
-
-
-def _form(hint: Any) -> str:
-    options = set(typing.get_args(hint)) if isinstance(hint, types.UnionType) else {hint}
-    for kind, form in ((float, "number"), (Point, "point"), (int, "whole")):
-        if kind in options:
-            return form
-    return "text"
-
-
-NUMBER_KEYS: frozenset[str] = frozenset(
-    name
-    for cls in (Corner, Edge, CircleHole, SlotHole, Wall, Material, MeshWishes, *KIND_OF)
-    if cls is not LoopHole
-    for name, form in forms(cls).items()
-    if form in ("number", "point")
-)
-"""Keys whose value is a number or a point, so that an expression may stand there."""
