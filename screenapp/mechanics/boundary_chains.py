@@ -66,9 +66,7 @@ def boundary_chains(shape: Shape, mesh: Mesh) -> BoundaryChains:
     loop_of_piece = np.array([c.loop for c in shape.curves])
     loop = loop_of_piece[mesh.side_piece]
     firsts = np.flatnonzero(np.concatenate([[True], loop[1:] != loop[:-1]]))
-    loops = tuple(
-        (int(a), int(b)) for a, b in zip(firsts, np.append(firsts[1:], n), strict=True)
-    )
+    loops = tuple((int(a), int(b)) for a, b in zip(firsts, np.append(firsts[1:], n), strict=True))
     following = np.arange(1, n + 1)
     for first, past in loops:
         following[past - 1] = first
@@ -104,7 +102,8 @@ def side_lengths(mesh: Mesh, places: Floats) -> Floats:
 
 def _angle(a: Floats, b: Floats) -> Floats:
     """Signed angle from vectors a to b, (n, 2) each [rad]."""
-    return np.arctan2(a[:, 0] * b[:, 1] - a[:, 1] * b[:, 0], (a * b).sum(axis=1))
+    cross = a[:, 0] * b[:, 1] - a[:, 1] * b[:, 0]
+    return np.asarray(np.arctan2(cross, (a * b).sum(axis=1)))
 
 
 @dataclass(frozen=True, eq=False)

@@ -147,9 +147,7 @@ def _walk(chains: BoundaryChains, joined: Bools, mirrored: Bools) -> Ints:
     return np.concatenate([ahead, back])
 
 
-def _windows(
-    walk: Ints, at: Floats, lengths: Floats, back: int, ahead: int
-) -> tuple[Ints, Floats]:
+def _windows(walk: Ints, at: Floats, lengths: Floats, back: int, ahead: int) -> tuple[Ints, Floats]:
     """The sides that each side's fit draws on, and where their samples lie.
 
     The side itself comes first.  What the stretch does not offer on one hand is taken on the other.

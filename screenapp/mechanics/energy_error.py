@@ -16,25 +16,40 @@ from screenapp.model.mesh import Mesh
 from screenapp.model.solution import Solution, von_mises
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 
 
 def element_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> Floats:
-    """The recovered field at the nine nodes of every element, (n_cases, n_elements, 9, 3).
+    """The recovered field at the nine nodes of every element, (n_cases, n_elements, 9, 3) [MPa].
 
-    At a sharp corner each element takes the value of its own side; an element with both sides of
-    the corner takes their mean.
+    At a sharp corner each element takes the value of its own side.
     """
     own = nodal[:, mesh.quads]
-    element, local = mesh.sides.T
-    places = np.stack([local, 4 + local, (local + 1) % 4], axis=1)
-    count = np.zeros((mesh.n_elements, 9))
-    np.add.at(count, (element[:, None], places), 1.0)
-    rim = count > 0
-    for case in range(len(own)):
-        total = np.zeros((mesh.n_elements, 9, 3))
-        np.add.at(total, (element[:, None], places), side[case])
-        own[case][rim] = total[rim] / count[rim][:, None]
+    rim, values = rim_nodal(mesh, nodal, side)
+    own[:, rim] = values
     return own
+
+
+def rim_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> tuple[Ints, Floats]:
+    """The elements with a side on the boundary and the recovered field at their nine nodes.
+
+    An element with both sides of a sharp corner takes the mean of the two at the corner.
+
+    Returns:
+        elements (m,) and stresses (n_cases, m, 9, 3) [MPa].
+    """
+    element, local = mesh.sides.T
+    rim, row = np.unique(element, return_inverse=True)
+    places = np.stack([local, 4 + local, (local + 1) % 4], axis=1)
+    count = np.zeros((len(rim), 9))
+    np.add.at(count, (row[:, None], places), 1.0)
+    own = nodal[:, mesh.quads[rim]]
+    given = count > 0
+    for case in range(len(own)):
+        total = np.zeros((len(rim), 9, 3))
+        np.add.at(total, (row[:, None], places), side[case])
+        own[case][given] = total[given] / count[given][:, None]
+    return rim, own
 
 
 def energy_error(

@@ -65,10 +65,7 @@ def averaged_stress(mesh: Mesh, own: Floats) -> Floats:
     flat = mesh.quads.ravel()
     count = np.bincount(flat, minlength=mesh.n_nodes)
     total = np.stack(
-        [
-            [np.bincount(flat, case[..., k].ravel(), mesh.n_nodes) for k in range(3)]
-            for case in own
-        ]
+        [[np.bincount(flat, case[..., k].ravel(), mesh.n_nodes) for k in range(3)] for case in own]
     )
     return np.asarray(np.swapaxes(total / np.maximum(count, 1), 1, 2))
 

@@ -1,0 +1,170 @@
+"""Stress and displacement at any point of the part.
+
+Inside, the recovered nodal field is interpolated with the nine-node shape functions.  A point on
+the boundary reads what the edge recovery gave there.
+"""
+
+from __future__ import annotations
+
+from typing import Protocol
+
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+
+from screenapp.mechanics import shape_functions
+from screenapp.mechanics.boundary_chains import boundary_chains
+from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.energy_error import rim_nodal
+from screenapp.mechanics.locate import PointLocator
+from screenapp.mechanics.strain_displacement import strains_at
+from screenapp.model.curves import Arc, Segment
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import Part, Point
+from screenapp.model.shape import Shape
+from screenapp.model.solution import Solution, StressField, von_mises
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+ON_CURVE = 1e-6  # share of the part's size within which a point counts as on the boundary
+
+
+class AnyCurve(Protocol):
+    """A curve that knows its parameter nearest to a point."""
+
+    def nearest(self, p: Point) -> float: ...
+
+
+class PointReader:
+    """Reads one solution at any number of points.
+
+    Example:
+        reader = PointReader(part, shape, mesh, solution, stress)
+        stress, displacement = reader.read([(10.0, 4.0)])
+    """
+
+    def __init__(
+        self, part: Part, shape: Shape, mesh: Mesh, solution: Solution, stress: StressField
+    ) -> None:
+        material = wall_material(part)
+        self._hooke = constitutive_matrix(material, part.wall.state)
+        self._poisson = material.poissons_ratio if part.wall.state == "plane strain" else 0.0
+        self._shape, self._mesh, self._solution, self._stress = shape, mesh, solution, stress
+        self._locator = PointLocator(mesh)
+        self._chains = boundary_chains(shape, mesh)
+        rim, self._rim_nodal = rim_nodal(mesh, stress.nodal, stress.side)
+        self._rim_row = np.full(mesh.n_elements, -1, dtype=np.int64)
+        self._rim_row[rim] = np.arange(len(rim))
+        self._near = ON_CURVE * shape.size
+
+    def read(self, points: ArrayLike) -> tuple[Floats, Floats]:
+        """Recovered stress σx, σy, τxy [MPa] and displacement [mm] of all cases.
+
+        Exactly at a sharp corner, where the two sides may differ, the side with the larger von
+        Mises stress speaks.
+
+        Args:
+            points: (n, 2) [mm].
+
+        Returns:
+            (n_cases, n, 3) and (n_cases, n, 2), NaN off the part.
+        """
+        points = np.asarray(points, dtype=float).reshape(-1, 2)
+        element, local = self._locator.locate(points)
+        side, place = self._on_boundary(points, element)
+        n_cases = len(self._stress.nodal)
+        stress = np.full((n_cases, len(points), 3), np.nan)
+        displacement = np.full((n_cases, len(points), 2), np.nan)
+        hit = np.flatnonzero(element >= 0)
+        quads = self._mesh.quads[element[hit]]
+        shapes = shape_functions.values(9, local[hit])[:, None, :]
+        row = self._rim_row[element[hit]]
+        at_rim = row >= 0
+        for case in range(n_cases):
+            nodal = self._stress.nodal[case][quads]
+            nodal[at_rim] = self._rim_nodal[case, row[at_rim]]
+            stress[case, hit] = (shapes @ nodal)[:, 0]
+            displacement[case, hit] = (shapes @ self._solution.displacements[case][quads])[:, 0]
+        on = np.flatnonzero((side >= 0) & (element >= 0))
+        stress[:, on] = self._edge_values(side[on], place[on])
+        return stress, displacement
+
+    def raw(self, points: ArrayLike) -> Floats:
+        """Stress [MPa] straight from the element's own strains, (n_cases, n, 3), for comparison."""
+        points = np.asarray(points, dtype=float).reshape(-1, 2)
+        element, local = self._locator.locate(points)
+        stress = np.full((len(self._solution.displacements), len(points), 3), np.nan)
+        hit = np.flatnonzero(element >= 0)
+        strains = strains_at(self._mesh, self._solution, element[hit], local[hit])
+        stress[:, hit] = strains @ self._hooke
+        return stress
+
+    def on_boundary(self, points: ArrayLike) -> tuple[Ints, Floats]:
+        """The boundary side each point lies on, -1 for none, and where along it (0 to 1).
+
+        A point counts as on the boundary within 1e-6 of the part's size of the exact curve, or of
+        the mesh's own side.
+        """
+        points = np.asarray(points, dtype=float).reshape(-1, 2)
+        element, _ = self._locator.locate(points)
+        return self._on_boundary(points, element)
+
+    def _on_boundary(self, points: Floats, element: Ints) -> tuple[Ints, Floats]:
+        """As `on_boundary`, looking only at points in elements at the rim."""
+        side = np.full(len(points), -1, dtype=np.int64)
+        place = np.zeros(len(points))
+        near = np.flatnonzero((element >= 0) & (self._rim_row[element] >= 0))
+        if not len(near):
+            return side, place
+        closest = np.full(len(near), np.inf)
+        mesh = self._mesh
+        for piece in np.unique(mesh.side_piece):
+            curve = self._shape.curves[piece].curve
+            t = nearest_parameters(curve, points[near])
+            own = np.flatnonzero(mesh.side_piece == piece)
+            k = np.searchsorted(mesh.side_t[own, 1], t).clip(0, len(own) - 1)
+            begin, end = mesh.side_t[own[k]].T
+            along = ((t - begin) / (end - begin)).clip(0.0, 1.0)
+            far = np.hypot(*(curve.point(t) - points[near]).T)
+            drawn = _quadratic(along) @ mesh.nodes[mesh.side_nodes[own[k]]]
+            far = np.minimum(far, np.hypot(*(drawn[:, 0] - points[near]).T))
+            better = (far <= self._near) & (far < closest)
+            closest[better] = far[better]
+            side[near[better]], place[near[better]] = own[k[better]], along[better]
+        return side, place
+
+    def _edge_values(self, side: Ints, place: Floats) -> Floats:
+        """Edge stresses (n_cases, n, 3) at places 0 to 1 along sides."""
+        values = self._stress.side
+        found = (_quadratic(place) @ values[:, side])[:, :, 0]
+        # exactly at a sharp corner the other side has a say
+        length = self._chains.lengths[side]
+        at_end = (1.0 - place) * length <= self._near
+        at_start = place * length <= self._near
+        after, before = self._chains.following[side], self._chains.preceding[side]
+        for here, other, k in ((at_end, after, 0), (at_start, before, 2)):
+            rival = values[:, other[here], k]
+            stronger = von_mises(rival, self._poisson) > von_mises(found[:, here], self._poisson)
+            found[:, here] = np.where(stronger[..., None], rival, found[:, here])
+        return np.asarray(found)
+
+
+def nearest_parameters(curve: AnyCurve, points: Floats) -> Floats:
+    """Parameters in [0, 1] of the curve's points nearest to points (n, 2)."""
+    if isinstance(curve, Segment):
+        d = np.subtract(curve.end, curve.start)
+        return np.asarray(((points - curve.start) @ d / (d @ d)).clip(0.0, 1.0))
+    if isinstance(curve, Arc):
+        away = points - curve.centre
+        span = abs(curve.sweep)
+        turned = np.arctan2(away[:, 1], away[:, 0]) - curve.begin
+        turned = (turned * np.sign(curve.sweep)) % (2.0 * np.pi)
+        beyond = np.where(turned - span < 2.0 * np.pi - turned, 1.0, 0.0)
+        return np.where(turned <= span, turned / span, beyond)
+    return np.array([curve.nearest((float(x), float(y))) for x, y in points])
+
+
+def _quadratic(along: Floats) -> Floats:
+    """Shape functions of start, middle and end at places 0 to 1, (n, 1, 3)."""
+    s = 2.0 * along - 1.0
+    return np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=-1)[:, None, :]
