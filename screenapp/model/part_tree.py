@@ -197,6 +197,11 @@ def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
     )
 
 
+def material_of_tree(tree: Tree) -> Material:
+    """One material of a tree that the schema has passed."""
+    return _record(Material, tree)
+
+
 def _loop(tree: Tree) -> Loop:
     return Loop(
         tuple(_record(Corner, c) for c in tree["corners"]),
