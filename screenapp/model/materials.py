@@ -44,9 +44,7 @@ def read_materials(path: Path) -> tuple[Material, ...]:
         )
     # Entries are those of a part file, so the part's schema judges them.
     faults = schema_faults(
-        JsonObject(
-            {"format": PART_FORMAT, "version": VERSION, "materials": tree.get("materials")}
-        ),
+        JsonObject({"format": PART_FORMAT, "version": VERSION, "materials": tree.get("materials")}),
         "part.schema.json",
     )
     if faults:

@@ -1,0 +1,164 @@
+"""The way back from a result record to findings, without the arrays."""
+
+from __future__ import annotations
+
+import math
+from typing import Any
+
+from screenapp.model.errors import ScreenappError
+from screenapp.model.findings import (
+    READING_QUANTITIES,
+    CaseFindings,
+    Estimate,
+    Findings,
+    LimitFindings,
+    MeshFindings,
+    PassSummary,
+    Peak,
+    Reading,
+)
+from screenapp.model.part import Point
+from screenapp.model.solution import Balance, Reaction
+
+FORMAT = "screenapp result"
+VERSION = 1
+
+Tree = dict[str, Any]
+
+
+def findings_from_record(record: Tree) -> Findings:
+    """The findings of a record that the schema has passed, without the arrays.
+
+    Raises:
+        ScreenappError: it is not a result record of a version that this program knows.
+    """
+    if record.get("format") != FORMAT or record.get("version") != VERSION:
+        raise ScreenappError(
+            f"this is not a {FORMAT} of version {VERSION}", "screen the part again"
+        )
+    return Findings(
+        part_sha256=record["part_sha256"],
+        key=record["key"],
+        verdict=record["verdict"],
+        headline=record["headline"],
+        reasons=tuple(record["reasons"]),
+        mass_kg=_number(record["mass_kg"]),
+        area=_number(record["area_mm2"]),
+        cases=tuple(_case_of(case) for case in record["cases"]),
+        readings=tuple(_reading_of(reading) for reading in record["readings"]),
+        limits=tuple(_limit_of(limit) for limit in record["limits"]),
+        mesh=_mesh_of(record["mesh"]),
+        timing={stage: _number(seconds) for stage, seconds in record["timing"].items()},
+        cautions=tuple(record["cautions"]),
+    )
+
+
+def _number(value: float | None, missing: float = math.nan) -> float:
+    return missing if value is None else float(value)
+
+
+def _estimate_of(tree: Tree, value_key: str = "value") -> Estimate:
+    return Estimate(
+        _number(tree[value_key]),
+        _number(tree["low"], -math.inf),
+        _number(tree["high"], math.inf),
+        tree["trust"],
+    )
+
+
+def _point_of(at: list[float]) -> Point:
+    return float(at[0]), float(at[1])
+
+
+def _history_of(values: list[float | None]) -> tuple[float, ...]:
+    return tuple(_number(value) for value in values)
+
+
+def _case_of(tree: Tree) -> CaseFindings:
+    applied, balance = tree["applied"], tree["balance"]
+    return CaseFindings(
+        case=tree["id"],
+        name=tree["name"],
+        peaks=tuple(_peak_of(peak) for peak in tree["peaks"]),
+        displacement_max=_estimate_of(tree["displacement_max"]),
+        displacement_at=_point_of(tree["displacement_max"]["at"]),
+        applied=(float(applied["x"]), float(applied["y"]), float(applied["moment"])),
+        reactions=tuple(
+            Reaction(r["support"], float(r["x"]), float(r["y"]), float(r["moment"]))
+            for r in tree["reactions"]
+        ),
+        balance=Balance(_number(balance["force"]), _number(balance["moment"])),
+    )
+
+
+def _peak_of(tree: Tree) -> Peak:
+    return Peak(
+        tree["quantity"],
+        _estimate_of(tree),
+        _point_of(tree["at"]),
+        tree["feature"],
+        tree["place"],
+        tree["why"],
+        tree["mend"],
+        _history_of(tree["history"]),
+    )
+
+
+def _reading_of(tree: Tree) -> Reading:
+    values = {
+        name: Estimate(
+            _number(tree["values"][name]),
+            _number(tree["band"][name][0], -math.inf),
+            _number(tree["band"][name][1], math.inf),
+            tree["trusts"][name],
+        )
+        for name in READING_QUANTITIES
+    }
+    return Reading(
+        probe=tree["probe"],
+        name=tree["name"],
+        case=tree["case"],
+        at=_point_of(tree["at"]),
+        values=values,
+        trust=tree["trust"],
+        feature=tree["feature"],
+        place=tree["place"],
+        why=tree["why"],
+        history=_history_of(tree["history"]),
+    )
+
+
+def _limit_of(tree: Tree) -> LimitFindings:
+    return LimitFindings(
+        tree["limit"],
+        tree["name"],
+        tree["case"],
+        _estimate_of(tree, "utilisation"),
+        tree["verdict"],
+        _point_of(tree["at"]),
+        tree["place"],
+        tree["reason"],
+    )
+
+
+def _mesh_of(tree: Tree) -> MeshFindings:
+    return MeshFindings(
+        element=tree["element"],
+        elements=tree["elements"],
+        unknowns=tree["unknowns"],
+        passes=tuple(
+            PassSummary(
+                p["elements"],
+                p["unknowns"],
+                _number(p["error"]),
+                _number(p["peak"]),
+                _number(p["smallest"]),
+            )
+            for p in tree["passes"]
+        ),
+        error_estimate=_number(tree["error_estimate"]),
+        worst_jacobian=float(tree["worst_jacobian"]),
+        across=tree["across"],
+        residual=_number(tree["residual"]),
+        note=tree["note"],
+    )
