@@ -36,6 +36,8 @@ class BoundaryPoints:
             ends at the next node of the same loop.
         t0, t1: parameters of the side's ends on its piece, (n,).
         points: the start point of each side [mm], (n, 2).
+        angles: the angle of the material at that point [rad], (n,); π where the boundary is
+            smooth.
         loops: first and past-the-last side of each loop.
     """
 
@@ -43,6 +45,7 @@ class BoundaryPoints:
     t0: Floats
     t1: Floats
     points: Floats
+    angles: Floats
     loops: tuple[tuple[int, int], ...]
 
     @property
@@ -151,10 +154,26 @@ def _collect(shape: Shape, parameters: list[Floats]) -> BoundaryPoints:
         [c.curve.point(s[:-1]) for c, s in zip(shape.curves, parameters, strict=True)]
     )
     ends = np.concatenate([[0], np.cumsum([len(s) - 1 for s in parameters])])
+    angles = np.full(len(points), np.pi)
+    angles[ends[:-1]] = joint_angles(shape)
     return BoundaryPoints(
         piece,
         np.concatenate([s[:-1] for s in parameters]),
         np.concatenate([s[1:] for s in parameters]),
         points,
+        angles,
         tuple((int(ends[first]), int(ends[last])) for first, last in shape.loops),
     )
+
+
+def joint_angles(shape: Shape) -> Floats:
+    """The angle of the material at the start of each piece [rad], in [0, 2π], (n_pieces,)."""
+    table = CurveTable.of(shape.curves)
+    every = np.arange(len(table))
+    before = every - 1
+    for first, last in shape.loops:
+        before[first] = last - 1
+    arriving = table.tangents(before, np.ones(len(table)))
+    leaving = table.tangents(every, np.zeros(len(table)))
+    cross = arriving[:, 0] * leaving[:, 1] - arriving[:, 1] * leaving[:, 0]
+    return np.asarray(np.pi - np.arctan2(cross, (arriving * leaving).sum(axis=1)))

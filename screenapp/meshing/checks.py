@@ -24,6 +24,9 @@ Bools = NDArray[np.bool_]
 GAUSS = np.array([-np.sqrt(0.6), 0.0, np.sqrt(0.6)])
 GAUSS_WEIGHTS = np.array([5.0, 8.0, 5.0]) / 9.0
 
+FLAT = 1e-3
+"""Scaled Jacobian up to which an element counts as flat."""
+
 AREA_ROUNDING = 1e-9
 """Largest difference of areas that rounding may leave, over the exact area."""
 
@@ -70,10 +73,12 @@ def find_faults(mesh: Mesh, shape: Shape, quality: Quality) -> list[str]:
     faults = []
     if not np.isfinite(mesh.nodes).all():
         return ["a node has no place"]
-    turned = np.flatnonzero(quality.determinant <= 0.0)
+    turned = np.flatnonzero(quality.scaled <= FLAT)
     if len(turned):
         x, y = mesh.nodes[mesh.quads[turned[0], 8]]
-        faults.append(f"{len(turned)} elements are turned over, the first at ({x:.4g}, {y:.4g}) mm")
+        faults.append(
+            f"{len(turned)} elements are flat or turned over, the first at ({x:.4g}, {y:.4g}) mm"
+        )
     expected = shape.area + parabola_excess(mesh, shape)
     if abs(quality.area - expected) > AREA_ROUNDING * shape.area:
         faults.append(

@@ -8,17 +8,17 @@ that passes all checks with a good worst Jacobian is taken, else the best one th
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.meshing.boundary_points import place_points
+from screenapp.meshing.boundary_points import joint_angles, place_points
 from screenapp.meshing.checks import find_faults, measure_quality
 from screenapp.meshing.gmsh_quads import Recipe, fill
-from screenapp.meshing.nine_nodes import build_mesh
+from screenapp.meshing.nine_nodes import build_mesh, side_middles
 from screenapp.meshing.size_field import SizeField
+from screenapp.meshing.smoothing import smooth
 from screenapp.model.errors import MeshingError
 from screenapp.model.mesh import Mesh
 from screenapp.model.shape import Shape
@@ -40,8 +40,9 @@ class Way:
 WAYS = (
     Way("the usual way", Recipe()),
     Way("elements a tenth smaller", Recipe(size_factor=0.9)),
-    Way("another triangulation", Recipe(algorithm="delaunay", size_factor=0.95)),
-    Way("triangles cut in three", Recipe(join=False)),
+    Way("another triangulation", Recipe(algorithm="frontal")),
+    Way("a third triangulation", Recipe(algorithm="delaunay", size_factor=0.95)),
+    Way("triangles cut in three", Recipe(join_quality=2.0)),
 )
 
 
@@ -51,7 +52,7 @@ def make_mesh(shape: Shape, sizes: SizeField) -> Mesh:
     Raises:
         MeshingError: no way gave a mesh that passes the checks.
     """
-    good = min(GOOD, 0.8 * math.sin(min(smallest_angle(shape), math.pi / 2.0)))
+    good = min(GOOD, 0.8 * math.sin(min(float(joint_angles(shape).min()), math.pi / 2.0)))
     best: Mesh | None = None
     troubles: list[str] = []
     for way in WAYS:
@@ -74,21 +75,6 @@ def make_mesh(shape: Shape, sizes: SizeField) -> Mesh:
     return best
 
 
-def smallest_angle(shape: Shape) -> float:
-    """The smallest angle inside the material between consecutive pieces [rad]."""
-    return min(_joint_angles(shape))
-
-
-def _joint_angles(shape: Shape) -> Iterator[float]:
-    for first, last in shape.loops:
-        for i in range(first, last):
-            j = i + 1 if i + 1 < last else first
-            before = shape.curves[i].curve.tangent(1.0)
-            after = shape.curves[j].curve.tangent(0.0)
-            cross = before[0] * after[1] - before[1] * after[0]
-            yield math.pi - math.atan2(cross, float(before @ after))
-
-
 def _attempt(shape: Shape, sizes: SizeField, recipe: Recipe) -> Mesh:
     """One mesh, checked.
 
@@ -98,7 +84,9 @@ def _attempt(shape: Shape, sizes: SizeField, recipe: Recipe) -> Mesh:
     """
     boundary = place_points(shape, sizes.scaled(recipe.size_factor))
     linear = fill(boundary, sizes, recipe)
-    mesh = build_mesh(shape, boundary, linear.points, linear.quads)
+    middles = side_middles(shape, boundary)
+    points = smooth(linear.points, linear.quads, boundary.following, middles)
+    mesh = build_mesh(shape, boundary, points, linear.quads)
     quality = measure_quality(mesh)
     faults = find_faults(mesh, shape, quality)
     if faults:
