@@ -16,6 +16,7 @@ import re
 import zipfile
 import zlib
 from pathlib import Path
+from typing import Any
 
 import numpy as np
 import platformdirs
@@ -52,11 +53,12 @@ def store(findings: Findings, part: Part) -> bool:
     """
     arrays: Arrays = {}
     record = {"format": _FORMAT, "title": part.title, "findings": pack(findings, arrays)}
-    arrays[_RECORD] = np.frombuffer(json.dumps(record).encode("utf-8"), dtype=np.uint8)
+    text = np.frombuffer(json.dumps(record).encode("utf-8"), dtype=np.uint8)
+    members: dict[str, Any] = {**arrays, _RECORD: text}
     try:
         path = _path(findings.key)
         path.parent.mkdir(parents=True, exist_ok=True)
-        write_atomically(path, lambda file: np.savez(file, **arrays))
+        write_atomically(path, lambda file: np.savez(file, **members))
         _trim(path.parent, path)
     except OSError as error:
         log.warning("findings could not be kept: %s", error)
