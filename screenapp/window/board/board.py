@@ -10,8 +10,7 @@ from screenapp.window import theme
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.grid import unit_length
 from screenapp.window.board.tool_strip import ToolStrip
-from screenapp.window.board.tools.base import Tool
-from screenapp.window.board.tools.select import SelectTool
+from screenapp.window.board.tools.every import every_tool
 from screenapp.window.document import Document
 
 
@@ -32,7 +31,7 @@ class Board(QWidget):
         super().__init__(parent)
         self.document = document
         self.canvas = Canvas(document)
-        self.tools: tuple[Tool, ...] = (SelectTool(self.canvas),)
+        self.tools = every_tool(self.canvas)
         self.strip = ToolStrip(self.tools)
         self._history = document.history
         self._fitted = False
@@ -97,7 +96,7 @@ class Board(QWidget):
 
     # events
 
-    def keyPressEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+    def keyPressEvent(self, event: QKeyEvent) -> None:
         """Keys that the canvas did not use: tools, zoom, fit, Escape."""
         plain = not event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier
         key, text = event.key(), event.text().upper()
@@ -120,7 +119,7 @@ class Board(QWidget):
         self.canvas.refresh()
         event.accept()
 
-    def showEvent(self, event: QShowEvent) -> None:  # noqa: N802
+    def showEvent(self, event: QShowEvent) -> None:
         """Fit once the size is known."""
         super().showEvent(event)
         if not self._fitted:
@@ -141,6 +140,7 @@ class Board(QWidget):
         document.part_changed.connect(self._part_changed)
         document.selection_changed.connect(self._show_lit)
         document.hovered_changed.connect(self._show_lit)
+        document.view_changed.connect(self.canvas.show_part)
         self.canvas.pointed.connect(self._show_corner)
         self.canvas.tool_wanted.connect(self.take)
         self.strip.wanted.connect(self.take)
@@ -148,6 +148,7 @@ class Board(QWidget):
         theme.notifier.changed.connect(self.apply_theme)
 
     def _part_changed(self) -> None:
+        self.canvas.placing.drop()
         if self.canvas.tool is not None:
             self.canvas.tool.part_changed()
         self.canvas.preview(None)
@@ -158,10 +159,7 @@ class Board(QWidget):
         self.canvas.refresh()
 
     def _show_lit(self) -> None:
-        outline = self.canvas.outline
-        outline.selected = self.document.selection
-        outline.hovered = self.document.hovered
-        outline.update()
+        self.canvas.show_lit()
 
     def _show_corner(self) -> None:
         place, tool = self.canvas.place, self.canvas.tool
@@ -170,10 +168,10 @@ class Board(QWidget):
             return
         units = self.document.part.display_units
         unit = unit_length(units)
-        x, y = place.at if tool is not None and tool.snaps else place.raw
+        x, y = place.at if tool is not None and tool.snapping else place.raw
         digits, word = (3, "in") if units == "in-lbf-ksi" else (2, "mm")
         text = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
-        if tool is not None and tool.snaps:
+        if tool is not None and tool.snapping:
             name = "off" if place.snap.kind == "none" else place.snap.kind
             text += f"  ·  snap: {name}"
         self._corner.setText(text)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from dataclasses import replace
 
 import pyqtgraph as pg
 from PySide6.QtCore import QEvent, QPointF, QRectF, Qt, Signal
@@ -14,11 +14,13 @@ from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
-from screenapp.window.board.hit_test import Clickable, hit_test
+from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem
+from screenapp.window.board.placing import Placing
 from screenapp.window.board.screen_item import Z_PREVIEW, ScreenItem
 from screenapp.window.board.snapping import Snap, draw_snap, snap
+from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryRow
 from screenapp.window.document import Document
@@ -47,7 +49,7 @@ class PreviewItem(ScreenItem):
         if tool is None:
             return
         tool.paint(painter, frame)
-        if place is not None and (tool.snaps or tool.unsnapped()):
+        if place is not None and tool.snapping:
             draw_snap(painter, frame, place.snap)
 
 
@@ -75,7 +77,6 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.document = document
         self.tool: Tool | None = None
         self.place: Place | None = None
-        self.symbols: Callable[[], tuple[Clickable, ...]] = tuple
         self._preview: Part | None = None
         self._pan_from: QPointF | None = None
         self._space = False
@@ -93,10 +94,21 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.setCentralItem(self.view_box)
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
         self.fill, self.outline = FillItem(), OutlineItem()
+        self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
         self.preview_item = PreviewItem(self)
-        for item in (self.grid, self.fill, self.outline, self.preview_item, self.scale_bar):
+        for item in (
+            self.grid,
+            self.fill,
+            self.outline,
+            self.symbols,
+            self.probes,
+            self.marked,
+            self.preview_item,
+            self.scale_bar,
+        ):
             self.view_box.addItem(item, ignoreBounds=True)
         self.entry = EntryRow(self)
+        self.placing = Placing(self)
         self.view_box.setRange(EMPTY_VIEW, padding=0.0)
         self.view_box.sigRangeChanged.connect(self.view_moved)
         self.apply_theme()
@@ -130,7 +142,16 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.grid.units = self.scale_bar.units = self.part.display_units
         self.fill.show_part(drawn)
         self.outline.show_part(drawn)
+        self.symbols.show_part(drawn, self.document.view.case)
+        self.probes.show_part(drawn)
+        self.marked.show_faults(drawn, () if self.previewing else self.document.faults)
         self.grid.update()
+
+    def show_lit(self) -> None:
+        """Light what is selected and hovered."""
+        for item in (self.outline, self.symbols, self.probes):
+            item.selected, item.hovered = self.document.selection, self.document.hovered
+            item.update()
 
     def apply_theme(self) -> None:
         """Take the colours of the present theme."""
@@ -182,7 +203,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         if tool is self.tool:
             return
         if self.tool is not None:
-            self.tool.stop()
+            self.tool.stop(tool)
         self.entry.close_row()
         self.tool = tool
         tool.start()
@@ -209,7 +230,18 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             self.part.display_units,
             tool.snap_points(),
             tool.unsnapped(),
+            tool.passes_over,
         )
+
+    @property
+    def held_off(self) -> bool:
+        """Whether the key that holds snaps off is down."""
+        return bool(self._modifiers & HOLD_OFF)
+
+    def show_snap(self, found: Snap) -> None:
+        """Show another snap than the cursor's own, e.g. that of a corner being dragged."""
+        if self.place is not None:
+            self.place = replace(self.place, snap=found)
 
     def place_at(
         self, px: QPointF, modifiers: Qt.KeyboardModifier = Qt.KeyboardModifier.NoModifier
@@ -221,7 +253,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             px,
             raw,
             self.snap_at(raw, bool(modifiers & HOLD_OFF)),
-            hit_test(self.drawn, frame, px, self.symbols()),
+            hit_test(self.drawn, frame, px, self.symbols.clickables(frame)),
             bool(modifiers & Qt.KeyboardModifier.ShiftModifier),
         )
 
@@ -234,12 +266,13 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.place = self.place_at(px, modifiers)
         hit = self.place.hit
         self.document.hover(hit.id if hit is not None else None)
-        self.viewport().setToolTip(name_at(self.document, hit))
+        faults = self.marked.at(px, self.frame_now)
+        self.viewport().setToolTip(name_at(self.document, hit, faults))
         return self.place
 
     # mouse
 
-    def mousePressEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+    def mousePressEvent(self, event: QMouseEvent) -> None:
         """Begin a pan or hand the press to the tool."""
         self.setFocus(Qt.FocusReason.MouseFocusReason)
         button = event.button()
@@ -252,7 +285,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             self.refresh()
         event.accept()
 
-    def mouseMoveEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+    def mouseMoveEvent(self, event: QMouseEvent) -> None:
         """Pan, or tell the tool."""
         if self._pan_from is not None:
             self._last_px = event.position()
@@ -265,7 +298,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             self.refresh()
         event.accept()
 
-    def mouseReleaseEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+    def mouseReleaseEvent(self, event: QMouseEvent) -> None:
         """End a pan, or tell the tool."""
         if self._pan_from is not None:
             self._pan_from = None
@@ -275,27 +308,27 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.refresh()
         event.accept()
 
-    def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:  # noqa: N802
+    def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
         """Tell the tool."""
         if event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.double(self._set_place(event.position(), event.modifiers()))
             self.refresh()
         event.accept()
 
-    def wheelEvent(self, event: QWheelEvent) -> None:  # noqa: N802
+    def wheelEvent(self, event: QWheelEvent) -> None:
         """Zoom about the cursor."""
         self.zoom(1.0015 ** event.angleDelta().y(), event.position())
         self.refresh()
         event.accept()
 
-    def leaveEvent(self, event: QEvent) -> None:  # noqa: N802
+    def leaveEvent(self, event: QEvent) -> None:
         """Nothing is under the cursor any more."""
         super().leaveEvent(event)
         self.place = self._last_px = None
         self.document.hover(None)
         self.refresh()
 
-    def resizeEvent(self, event: QResizeEvent | None) -> None:  # noqa: N802
+    def resizeEvent(self, event: QResizeEvent | None) -> None:
         """Keep the overlays in place."""
         super().resizeEvent(event)
         if event is not None and hasattr(self, "entry"):
@@ -303,7 +336,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
 
     # keys
 
-    def keyPressEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+    def keyPressEvent(self, event: QKeyEvent) -> None:
         """Space pans; typing opens the entry row; the rest goes to the tool, then to the board."""
         key = event.key()
         if key == Qt.Key.Key_Space and not event.isAutoRepeat():
@@ -317,7 +350,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.refresh()
         event.setAccepted(used)
 
-    def keyReleaseEvent(self, event: QKeyEvent) -> None:  # noqa: N802
+    def keyReleaseEvent(self, event: QKeyEvent) -> None:
         """End of space and of holding snaps off."""
         if event.key() == Qt.Key.Key_Space and not event.isAutoRepeat():
             self._space = False
@@ -327,14 +360,14 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.refresh()
         event.accept()
 
-    def focusNextPrevChild(self, forward: bool) -> bool:  # noqa: N802
+    def focusNextPrevChild(self, forward: bool) -> bool:
         """Tab opens the entry row while something can be typed."""
         if forward and self.tool is not None and self.tool.entry_fields():
             self.entry.open_row(None)
             return True
         return bool(super().focusNextPrevChild(forward))
 
-    def focusOutEvent(self, event: QFocusEvent) -> None:  # noqa: N802
+    def focusOutEvent(self, event: QFocusEvent) -> None:
         """A key let go elsewhere is not seen."""
         self._space = False
         super().focusOutEvent(event)

@@ -65,7 +65,9 @@ class GridItem(ScreenItem):
         strong = QColor(palette.faint)
         strong.setAlphaF(0.75)
         every = 5 if str(round(step / unit_length(self.units) * 1e9)).strip("0") == "2" else 10
-        for lines, colour in zip(self._lines(rect, frame, step, every), (fine, strong), strict=True):
+        for lines, colour in zip(
+            self._lines(rect, frame, step, every), (fine, strong), strict=True
+        ):
             painter.setPen(QPen(colour, 1.0))
             painter.drawLines(lines)
 

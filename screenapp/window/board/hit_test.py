@@ -83,9 +83,7 @@ def _nearest_probe(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
 
 def _nearest_corner(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
     reach = POINT_PX / frame.scale
-    near = [
-        c for c in drawn.corners.values() if c.round == 0.0 and math.dist(c.at, at) <= reach
-    ]
+    near = [c for c in drawn.corners.values() if c.round == 0.0 and math.dist(c.at, at) <= reach]
     if not near:
         return None
     corner = min(near, key=lambda c: math.dist(c.at, at))

@@ -2,18 +2,94 @@
 
 from __future__ import annotations
 
-from screenapp.model.features import find, name_of
+from collections.abc import Sequence
+
+from screenapp.model.errors import Fault
+from screenapp.model.features import Found, find, name_of, place_name
+from screenapp.model.part import (
+    BearingLoad,
+    CircleHole,
+    Corner,
+    DisplayUnits,
+    FixedSupport,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Part,
+    PointLoad,
+    PrescribedSupport,
+    PressureLoad,
+    Probe,
+    RollerSupport,
+    ShearLoad,
+    SlotHole,
+)
+from screenapp.model.units import format_quantity
 from screenapp.window.board.hit_test import Hit
 from screenapp.window.document import Document
 
 
-def name_at(document: Document, hit: Hit | None) -> str:
-    """The tooltip for something under the cursor; "" for nothing."""
-    if hit is None:
-        return ""
-    found = find(document.part, hit.id)
-    if found is None:
-        return ""
-    lines = [name_of(found)]
-    lines += [str(fault) for fault in document.faults if hit.id in fault.ids]
-    return "\n".join(lines)
+def name_at(document: Document, hit: Hit | None, faults: Sequence[Fault] = ()) -> str:
+    """The tooltip for what is under the cursor, with the faults there; "" for nothing."""
+    lines: list[str] = []
+    found = find(document.part, hit.id) if hit is not None else None
+    if found is not None:
+        lines.append(described(document.part, found))
+        faults = (*faults, *(f for f in document.faults if found.record.id in f.ids))
+    told = [str(fault) for fault in faults]
+    return "\n".join([*lines, *dict.fromkeys(told)])
+
+
+def described(part: Part, found: Found) -> str:
+    """The name of something with its size, or what it does: "hole h1, ⌀ 12 mm"."""
+    record, units = found.record, part.display_units
+    words = name_of(found)
+    if isinstance(record, CircleHole):
+        return f"{words}, ⌀ {_length(record.diameter, units)}"
+    if isinstance(record, SlotHole):
+        return f"slot {record.id}, {_length(record.length, units)} × {_length(record.width, units)}"
+    if isinstance(record, Corner) and record.round:
+        return f"{words}, R {_length(record.round, units)}"
+    if isinstance(record, Probe):
+        return f"probe {record.name}"
+    if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
+        return f"{place_name(part, record.on)} {_held(record, units)}"
+    if isinstance(record, GravityLoad):
+        return "the part's own weight"
+    if found.kind == "load":
+        return f"{_loaded(record, units)} on {place_name(part, record.on)}"  # type: ignore
+    return words
+
+
+def _held(record: FixedSupport | RollerSupport | PrescribedSupport, units: DisplayUnits) -> str:
+    if isinstance(record, FixedSupport):
+        return "is held in both directions"
+    if isinstance(record, RollerSupport):
+        if record.angle is None:
+            return "is held across its boundary and slides along it"
+        return f"is held along {format_quantity(record.angle, 'angle', units)}"
+    given = [
+        f"{_length(v, units)} in {axis}"
+        for axis, v in (("x", record.x), ("y", record.y))
+        if v is not None
+    ]
+    return "is moved by " + " and ".join(given)
+
+
+def _loaded(record: object, units: DisplayUnits) -> str:
+    if isinstance(record, PressureLoad):
+        return f"pressure of {format_quantity(record.pressure, 'stress', units)}"
+    if isinstance(record, ShearLoad):
+        return f"shear of {format_quantity(record.per_length, 'line_load', units)}"
+    if isinstance(record, LineLoad):
+        x, y = (format_quantity(v, "line_load", units) for v in (record.x, record.y))
+        return f"line load of {x}, {y}"
+    if isinstance(record, ForceLoad | BearingLoad | PointLoad):
+        kind = {ForceLoad: "force", BearingLoad: "bearing force", PointLoad: "point force"}
+        x, y = (format_quantity(v, "force", units) for v in (record.x, record.y))
+        return f"{kind[type(record)]} of {x}, {y}"
+    return "load"
+
+
+def _length(value: float, units: DisplayUnits) -> str:
+    return format_quantity(value, "length", units)

@@ -150,9 +150,7 @@ class OutlineItem(ScreenItem):
                 half = hole.diameter / 2.0
                 _cross(painter, frame, hole.centre, half, half, 0.0)
             elif isinstance(hole, SlotHole):
-                _cross(
-                    painter, frame, hole.centre, hole.length / 2.0, hole.width / 2.0, hole.angle
-                )
+                _cross(painter, frame, hole.centre, hole.length / 2.0, hole.width / 2.0, hole.angle)
 
 
 def _cross(

@@ -41,18 +41,18 @@ class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
         """Paint in pixels; `frame` maps millimetres to them."""
         raise NotImplementedError
 
-    def boundingRect(self) -> QRectF:  # noqa: N802 - Qt's name
+    def boundingRect(self) -> QRectF:
         """The whole view [mm]."""
         if self._rect.isNull():
             rect = self.viewRect()
             self._rect = QRectF() if rect is None else QRectF(rect)
         return self._rect
 
-    def viewRangeChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+    def viewRangeChanged(self, *_args: object) -> None:
         """Cover the view again after a pan, zoom or resize."""
         self._forget()
 
-    def viewTransformChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+    def viewTransformChanged(self, *_args: object) -> None:
         """Cover the view again after a pan, zoom or resize."""
         self._forget()
 

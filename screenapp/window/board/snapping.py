@@ -47,6 +47,7 @@ def snap(
     units: DisplayUnits,
     extra: Iterable[Snap] = (),
     without: frozenset[str] = frozenset(),
+    passes_over: frozenset[SnapKind] = frozenset(),
 ) -> Snap:
     """Where a click at `at` lands: points first, then edges, then the grid.
 
@@ -57,12 +58,13 @@ def snap(
         units: the grid is round in these.
         extra: further points to offer, e.g. those of a chain being drawn.
         without: ids that must not draw the cursor, e.g. of what is being dragged.
+        passes_over: kinds of point that must not.
     """
     reach = POINT_REACH_PX / frame.scale
     best: tuple[float, Snap] | None = None
     for one in (*extra, *points_of(drawn, without)):
         far = math.dist(one.at, at)
-        if far <= reach and (best is None or far < best[0] - 1e-9):
+        if one.kind not in passes_over and far <= reach and (best is None or far < best[0] - 1e-9):
             best = far, one
     if best is not None:
         return best[1]
@@ -172,5 +174,3 @@ def draw_snap(painter: QPainter, frame: Frame, found: Snap) -> None:
 
 def _line(p: QPointF, x0: float, y0: float, x1: float, y1: float) -> QLineF:
     return QLineF(p.x() + x0, p.y() + y0, p.x() + x1, p.y() + y1)
-
-

@@ -7,11 +7,12 @@ from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QEvent, QObject, QPoint, Qt
 from PySide6.QtGui import QKeyEvent
-from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QLineEdit, QWidget
+from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QLineEdit
 
 from screenapp.model.errors import ScreenappError
+from screenapp.model.kinds import KindName
 from screenapp.window import theme
-from screenapp.window.board.quantity import FieldKind, parse, written
+from screenapp.window.board.quantity import parse, written
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -29,12 +30,14 @@ class EntryField:
         label: shown before the field.
         kind: what is measured.
         excludes: names of fields that this one takes the place of.
+        empty: what an empty field means; "" if it may not stay empty.
     """
 
     name: str
     label: str
-    kind: FieldKind = "length"
+    kind: KindName = "length"
     excludes: tuple[str, ...] = ()
+    empty: str = ""
 
 
 class EntryRow(QFrame):
@@ -107,6 +110,14 @@ class EntryRow(QFrame):
             if had_focus or self._canvas.focusWidget() is None:
                 self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)
 
+    def forget(self) -> None:
+        """What was typed is used up; the fields show live values again."""
+        self._typed = {}
+
+    def edit_of(self, name: str) -> QLineEdit:
+        """The field called `name`."""
+        return self._edits[name]
+
     def sync(self) -> None:
         """Follow the tool: other fields, or other live values."""
         if not self.isVisible():
@@ -121,7 +132,7 @@ class EntryRow(QFrame):
             self._edits[fields[0].name].setFocus(Qt.FocusReason.OtherFocusReason)
         self._show_live()
 
-    def eventFilter(self, watched: QObject, event: QEvent) -> bool:  # noqa: N802
+    def eventFilter(self, watched: QObject, event: QEvent) -> bool:
         """Enter accepts, Escape steps back, Tab goes round."""
         if not isinstance(event, QKeyEvent):
             return False
@@ -242,6 +253,7 @@ class EntryRow(QFrame):
             self.close_row()
             if tool is not None:
                 tool.entry_typed({})
+                tool.entry_closed()
             self._canvas.refresh()
 
     def _go(self, watched: QObject, step: int) -> None:
@@ -277,8 +289,3 @@ class EntryRow(QFrame):
             f"QLineEdit:focus {{ border: 1px solid {p.accent}; }}"
             f'QLineEdit[bad="true"] {{ border: 1px solid {p.bad}; color: {p.bad}; }}'
         )
-
-
-def inside_row(widget: QWidget | None) -> bool:
-    """Whether a widget is a field of an entry row."""
-    return widget is not None and isinstance(widget.parent(), EntryRow)

@@ -1,17 +1,19 @@
-"""What every tool of the board is: it is told of presses, moves and keys, and paints its preview."""
+"""What every tool is: it is told of presses, moves and keys, and paints its preview."""
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, ClassVar
 
 from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QKeyEvent, QPainter
 
-from screenapp.model.part import Point
+from screenapp.model.edits import EditError, Outcome
+from screenapp.model.part import Part, Point
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.hit_test import Hit
-from screenapp.window.board.snapping import Snap
+from screenapp.window.board.snapping import Snap, SnapKind
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -45,7 +47,8 @@ class Place:
 class Tool:
     """A drawing tool; the canvas calls these and repaints after each.
 
-    `name`, `key`, `line` and `icon` are what the tool strip shows.
+    `name`, `key`, `line` and `icon` are what the tool strip shows; `snaps` says whether clicks land
+    on snaps, `passes_over` which kinds of snap it does not want.
     """
 
     name: ClassVar[str] = ""
@@ -53,6 +56,7 @@ class Tool:
     line: ClassVar[str] = ""
     icon: ClassVar[str] = ""
     snaps: ClassVar[bool] = True
+    passes_over: ClassVar[frozenset[SnapKind]] = frozenset()
 
     def __init__(self, canvas: Canvas) -> None:
         self.canvas = canvas
@@ -65,7 +69,7 @@ class Tool:
     def start(self) -> None:
         """It is the tool now."""
 
-    def stop(self) -> None:
+    def stop(self, following: Tool | None) -> None:
         """Another tool is taken: drop whatever is half done."""
 
     def press(self, place: Place) -> None:
@@ -91,6 +95,11 @@ class Tool:
     def part_changed(self) -> None:
         """The document's part is another one: drop what refers to the old one."""
 
+    @property
+    def snapping(self) -> bool:
+        """Whether the snap in force counts now."""
+        return self.snaps
+
     def snap_points(self) -> tuple[Snap, ...]:
         """Further points that the cursor may snap to."""
         return ()
@@ -102,6 +111,27 @@ class Tool:
     def hint(self) -> str:
         """What to do next, one short sentence for the corner of the board."""
         return self.line
+
+    def apply(self, name: str, make: Callable[[], Part | Outcome]) -> bool:
+        """Change the part as one undoable step and say what else went with it.
+
+        A change that is refused is said and not made; False then.
+        """
+        document = self.canvas.document
+        try:
+            made = make()
+        except EditError as fault:
+            document.said.emit(f"{fault.cause}: {fault.mend}.")
+            return False
+        part, lost = (made.part, made.lost) if isinstance(made, Outcome) else (made, ())
+        document.apply(name, part)
+        if lost:
+            document.said.emit(f"Went with it: {', '.join(lost)}.")
+        return True
+
+    def say(self, text: str) -> None:
+        """A sentence for the status line."""
+        self.canvas.document.said.emit(text)
 
     # typed entry
 
@@ -118,6 +148,9 @@ class Tool:
 
     def entry_accept(self, values: dict[str, float]) -> None:
         """Enter was pressed in the entry row."""
+
+    def entry_closed(self) -> None:
+        """The entry row was closed without accepting."""
 
     def paint(self, painter: QPainter, frame: Frame) -> None:
         """Paint what is half done, in pixels."""

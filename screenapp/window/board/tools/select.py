@@ -2,15 +2,40 @@
 
 from __future__ import annotations
 
-from typing import ClassVar
+from typing import TYPE_CHECKING, ClassVar
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QKeyEvent, QPainter
 
+from screenapp.model import edits
+from screenapp.model.features import find, loops_of, place_name
+from screenapp.model.part import Part, Point
+from screenapp.window import theme
+from screenapp.window.board import sketch
+from screenapp.window.board.exact import exact_fields, exact_values, with_exact
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.grid import grid_step
+from screenapp.window.board.quantity import written
+from screenapp.window.board.snapping import neighbours
 from screenapp.window.board.tools.base import Place, Tool
+from screenapp.window.board.typed_entry import EntryField
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+DRAG_FROM = 4.0
+"""How far the cursor must go with the button down before it drags [px]."""
+
+STEPS = {
+    Qt.Key.Key_Left: (-1.0, 0.0),
+    Qt.Key.Key_Right: (1.0, 0.0),
+    Qt.Key.Key_Up: (0.0, 1.0),
+    Qt.Key.Key_Down: (0.0, -1.0),
+}
 
 
 class SelectTool(Tool):
-    """Picks what is under the cursor."""
+    """Picks what is under the cursor and moves it; drags a box from empty board."""
 
     name: ClassVar[str] = "Select"
     key: ClassVar[str] = "S"
@@ -18,15 +43,278 @@ class SelectTool(Tool):
     icon: ClassVar[str] = "select"
     snaps: ClassVar[bool] = False
 
+    def __init__(self, canvas: Canvas) -> None:
+        super().__init__(canvas)
+        self._pressed: Place | None = None
+        self._dragged: str | None = None
+        self._from: Point = (0.0, 0.0)
+        self._at: Point | None = None
+        self._box: QPointF | None = None
+        self.editing: str | None = None
+
     @property
     def cursor(self) -> Qt.CursorShape:
-        """An arrow."""
-        return Qt.CursorShape.ArrowCursor
+        """A hand over what can be dragged."""
+        if self._dragged is not None:
+            return Qt.CursorShape.ClosedHandCursor
+        place = self.canvas.place
+        if place is None or place.hit is None:
+            return Qt.CursorShape.ArrowCursor
+        if self._grip(place.hit.id) is not None:
+            return Qt.CursorShape.OpenHandCursor
+        return Qt.CursorShape.PointingHandCursor
+
+    def stop(self, following: Tool | None) -> None:
+        """Drop the drag and the exact editor."""
+        self._drop()
+        self.canvas.placing.settle()
+
+    def part_changed(self) -> None:
+        """Whatever was dragged or edited may be gone."""
+        self._pressed = self._dragged = self._at = self._box = None
+        self.editing = None
+
+    def step_back(self) -> bool:
+        """Drop the drag, the box or the exact editor."""
+        busy = self.canvas.placing.busy or self._box is not None
+        busy = busy or self._dragged is not None or self.editing is not None
+        self.canvas.placing.drop()
+        self._drop()
+        return busy
+
+    def unsnapped(self) -> frozenset[str]:
+        """What is dragged must not draw the cursor to itself."""
+        if self._dragged is None:
+            return frozenset()
+        for _, owner, loop in loops_of(self.canvas.part):
+            if owner == self._dragged:
+                return frozenset(
+                    {owner, *(c.id for c in loop.corners), *(e.id for e in loop.edges)}
+                )
+            if near := neighbours(loop, self._dragged):
+                return near
+        return frozenset({self._dragged})
+
+    @property
+    def snapping(self) -> bool:
+        """Only a drag snaps."""
+        return self._dragged is not None
+
+    # mouse
 
     def press(self, place: Place) -> None:
-        """Select what is there."""
-        document = self.canvas.document
-        if place.hit is None:
-            document.select()
+        """Select, and get ready to drag."""
+        self.canvas.placing.settle()
+        if self.editing is not None:
+            self._drop()
+        document, hit = self.canvas.document, place.hit
+        if hit is None:
+            self._box = place.px
+            if not place.shift:
+                document.select()
+            return
+        if place.shift:
+            rest = tuple(i for i in document.selection if i != hit.id)
+            document.select(*(rest if hit.id in document.selection else (*rest, hit.id)))
+            return
+        document.select(hit.id)
+        self._pressed = place
+
+    def move(self, place: Place) -> None:
+        """Drag live."""
+        pressed = self._pressed
+        if pressed is not None and pressed.hit is not None and self._dragged is None:
+            gap = place.px - pressed.px
+            grip = self._grip(pressed.hit.id)
+            if grip is not None and gap.manhattanLength() >= DRAG_FROM:
+                self._dragged, self._from = pressed.hit.id, grip
+        if self._dragged is not None and pressed is not None:
+            self._drag_to(place, pressed)
+
+    def release(self, place: Place) -> None:
+        """End of a drag: one undoable step."""
+        if self._dragged is not None and self._at is not None:
+            id_, at = self._dragged, self._at
+            part = self.canvas.document.part
+            self._pressed = self._dragged = self._at = None
+            name = f"move {place_name(part, id_)}"
+            if not self.apply(name, lambda: moved(part, id_, at)):
+                self.canvas.preview(None)
+            self.canvas.preview(None)
+        elif self._box is not None:
+            self._select_box(QRectF(self._box, place.px).normalized(), place.shift)
+        self._pressed = self._dragged = self._at = self._box = None
+
+    def double(self, place: Place) -> None:
+        """Edit exactly what is there."""
+        if place.hit is not None:
+            self.canvas.document.select(place.hit.id)
+            self.edit(place.hit.id, place.px)
+
+    # keys
+
+    def key_press(self, event: QKeyEvent) -> bool:
+        """Delete, nudge, exact editor, everything."""
+        key, selection = event.key(), self.canvas.document.selection
+        control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
+        if key == Qt.Key.Key_A and control:
+            self._select_all()
+        elif not selection:
+            return False
+        elif key in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace):
+            self._remove(selection)
+        elif key in STEPS and not control:
+            far = 10.0 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1.0
+            self._nudge(selection, *(s * far for s in STEPS[Qt.Key(key)]))
+        elif key in (Qt.Key.Key_F2, Qt.Key.Key_Return, Qt.Key.Key_Enter):
+            at = self.canvas.drawn.anchor_of(selection[0])
+            px = None if at is None else self.canvas.frame_now.px(at)
+            self.edit(selection[0], px)
         else:
-            document.select(place.hit.id)
+            return False
+        return True
+
+    # exact editor
+
+    def edit(self, id_: str, px: QPointF | None) -> None:
+        """Open the exact editor on a corner, hole, probe, support or load."""
+        found = find(self.canvas.document.part, id_)
+        if found is None:
+            return
+        spot = px.toPoint() if px is not None else self.canvas.rect().center()
+        if found.kind in ("support", "load"):
+            self.canvas.placing.change(id_, spot)
+        elif exact_fields(found):
+            self.editing = id_
+            self.canvas.entry.open_row(None, spot + sketch.OFFSET)
+        else:
+            self.say(f"The {found.kind} follows its corners: drag or edit those.")
+
+    def entry_fields(self) -> tuple[EntryField, ...]:
+        """The values of what is being edited."""
+        found = find(self.canvas.document.part, self.editing) if self.editing else None
+        return exact_fields(found) if found is not None else ()
+
+    def entry_live(self) -> dict[str, float]:
+        """Its present values."""
+        found = find(self.canvas.part, self.editing) if self.editing else None
+        return exact_values(found) if found is not None else {}
+
+    def entry_typed(self, values: dict[str, float]) -> None:
+        """Show what they would make."""
+        if self.editing is None or not values:
+            self.canvas.preview(None)
+            return
+        try:
+            self.canvas.preview(with_exact(self.canvas.document.part, self.editing, values))
+        except edits.EditError as fault:
+            self.say(f"{fault.cause}: {fault.mend}.")
+
+    def entry_accept(self, values: dict[str, float]) -> None:
+        """Make it."""
+        id_, part = self.editing, self.canvas.document.part
+        if id_ is None:
+            return
+        if values:
+            done = self.apply(
+                f"change {place_name(part, id_)}", lambda: with_exact(part, id_, values)
+            )
+            if not done:
+                return
+        self._drop()
+
+    def entry_closed(self) -> None:
+        """Escape in the row ends the edit."""
+        self._drop()
+
+    # painting
+
+    def paint(self, painter: QPainter, frame: Frame) -> None:
+        """The box, or where the dragged thing stands."""
+        if self._box is not None and self.canvas.place is not None:
+            ground = QColor(theme.current().accent)
+            ground.setAlphaF(0.1)
+            painter.setPen(sketch.line_pen(1.0, dashed=True))
+            painter.setBrush(ground)
+            painter.drawRect(QRectF(self._box, self.canvas.place.px).normalized())
+        if self._dragged is not None and self._at is not None:
+            units = self.canvas.part.display_units
+            x, y = (written(v, "length", units) for v in self._at)
+            p = frame.px(self._at)
+            sketch.label(painter, f"x {x}   y {y}", QPointF(p.x(), p.y() - 24.0))
+
+    # steps
+
+    def _grip(self, id_: str) -> Point | None:
+        """The place by which a corner, hole or probe is dragged; None for what stays."""
+        drawn = self.canvas.drawn
+        if id_ in drawn.corners:
+            return drawn.corners[id_].at
+        if id_ in drawn.holes:
+            return edits.hole_centre(drawn.holes[id_])
+        return drawn.probes[id_].at if id_ in drawn.probes else None
+
+    def _drag_to(self, place: Place, pressed: Place) -> None:
+        assert self._dragged is not None
+        raw = (
+            self._from[0] + place.raw[0] - pressed.raw[0],
+            self._from[1] + place.raw[1] - pressed.raw[1],
+        )
+        found = self.canvas.snap_at(raw, self.canvas.held_off)
+        self.canvas.show_snap(found)
+        self._at = found.at
+        part = self.canvas.document.part
+        try:
+            self.canvas.preview(moved(part, self._dragged, found.at))
+        except edits.EditError as fault:
+            self.say(f"{fault.cause}: {fault.mend}.")
+
+    def _drop(self) -> None:
+        self._pressed = self._dragged = self._at = self._box = None
+        self.editing = None
+        self.canvas.preview(None)
+        self.canvas.entry.close_row()
+
+    def _remove(self, selection: tuple[str, ...]) -> None:
+        part = self.canvas.document.part
+        ids = tuple(i for i in selection if find(part, i) is not None)
+        loose = tuple(i for i in ids if i not in edges_of(part))
+        if self.apply("remove", lambda: edits.remove(part, *(loose or ids))):
+            self.canvas.document.select()
+
+    def _nudge(self, selection: tuple[str, ...], dx: float, dy: float) -> None:
+        part = self.canvas.document.part
+        step = grid_step(self.canvas.frame_now.scale, part.display_units)
+        self.apply("nudge", lambda: edits.move(part, selection, dx * step, dy * step))
+
+    def _select_all(self) -> None:
+        drawn = self.canvas.drawn
+        self.canvas.document.select(*drawn.corners, *drawn.holes, *drawn.probes)
+
+    def _select_box(self, box: QRectF, add: bool) -> None:
+        if box.width() < DRAG_FROM and box.height() < DRAG_FROM:
+            return
+        drawn, frame = self.canvas.drawn, self.canvas.frame_now
+        spots = [(id_, c.at) for id_, c in drawn.corners.items()]
+        spots += [(id_, drawn.centre_of(h)) for id_, h in drawn.holes.items()]
+        spots += [(id_, p.at) for id_, p in drawn.probes.items()]
+        inside = [id_ for id_, at in spots if box.contains(frame.px(at))]
+        had = self.canvas.document.selection if add else ()
+        self.canvas.document.select(*had, *(i for i in inside if i not in had))
+
+
+def moved(part: Part, id_: str, to: Point) -> Part:
+    """The part with a corner, hole or probe at another place [mm]."""
+    found = find(part, id_)
+    if found is None:
+        return part
+    if found.kind == "corner":
+        return edits.move_corner(part, id_, to)
+    if found.kind == "hole":
+        return edits.move_hole(part, id_, to)
+    return edits.move_probe(part, id_, to)
+
+
+def edges_of(part: Part) -> frozenset[str]:
+    """Ids of all edges: they go with their corners, not by themselves."""
+    return frozenset(e.id for _, _, loop in loops_of(part) for e in loop.edges)

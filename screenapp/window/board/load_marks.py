@@ -1,0 +1,202 @@
+"""Symbols of loads: arrows as engineering mechanics textbooks draw them."""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+
+from screenapp.model.part import (
+    BearingLoad,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Load,
+    PointLoad,
+    PressureLoad,
+    ShearLoad,
+)
+from screenapp.model.units import format_quantity
+from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.frame import Floats, Frame
+from screenapp.window.board.marks import Mark, middle, radius_px, stations, to_px
+
+LONG, ROW, ROW_GAP = 46.0, 28.0, 24.0
+"""Length of a single arrow and of one in a row, and the gap between those [px]."""
+
+
+def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
+    """The symbol of one load; empty if what it is on is gone or it is zero."""
+    mark = Mark(load.id, "load")
+    if isinstance(load, GravityLoad):
+        _own_weight(mark, drawn, frame, load)
+        return mark
+    place = middle(drawn, frame, load.on)
+    if place is None:
+        return mark
+    units = drawn.part.display_units
+    if isinstance(load, PressureLoad):
+        _pressed(mark, drawn, frame, load)
+        text = format_quantity(load.pressure, "stress", units)
+    elif isinstance(load, ShearLoad):
+        _sheared(mark, drawn, frame, load)
+        text = format_quantity(load.per_length, "line_load", units)
+    elif isinstance(load, LineLoad):
+        _spread(mark, drawn, frame, load)
+        text = format_quantity(math.hypot(load.x, load.y), "line_load", units)
+    else:
+        _single(mark, drawn, frame, load, *place)
+        text = format_quantity(math.hypot(load.x, load.y), "force", units)
+    if mark.lines:
+        mark.label = text
+    return mark
+
+
+def _push(
+    mark: Mark, place: tuple[Floats, Floats], way: Floats, long: float, gap: float = 3.0
+) -> tuple[Floats, Floats]:
+    """An arrow onto the material, or away from it: never across it. Gives tail and tip."""
+    at, out = place
+    if way @ out > 1e-9:
+        tail, tip = at + gap * way, at + (gap + long) * way
+    else:
+        tail, tip = at - (gap + long) * way, at - gap * way
+    mark.arrow(tail, tip)
+    return tail, tip
+
+
+def _row(mark: Mark, tails: Floats, closed: bool) -> None:
+    """The line that joins the far ends of a row of arrows."""
+    if len(tails) > 1:
+        mark.lines.append(np.vstack([tails, tails[:1]]) if closed else tails)
+
+
+def _pressed(mark: Mark, drawn: DrawnPart, frame: Frame, load: PressureLoad) -> None:
+    if load.pressure == 0.0:
+        return
+    hole = load.on in drawn.holes
+    long = min(ROW, 0.6 * radius_px(drawn, frame, load.on))
+    line = stations(drawn, frame, load.on, ROW_GAP, ends=True)
+    sign = -1.0 if load.pressure > 0.0 else 1.0
+    far = []
+    for p, out in zip(line.at, line.out, strict=True):
+        tail, tip = _push(mark, (p, out), sign * out, long)
+        far.append(tail if sign < 0.0 else tip)
+    if far:
+        _row(mark, np.array(far), hole)
+        i = len(far) // 2
+        mark.say("", far[i] + (0.0 if hole else label_gap(line.out[i])))
+
+
+def _sheared(mark: Mark, drawn: DrawnPart, frame: Frame, load: ShearLoad) -> None:
+    if load.per_length == 0.0:
+        return
+    line = stations(drawn, frame, load.on, 30.0)
+    sign = math.copysign(1.0, load.per_length)
+    off = min(7.0, 0.4 * radius_px(drawn, frame, load.on))
+    for p, out, along in zip(line.at, line.out, line.along, strict=True):
+        foot = p + off * out
+        mark.arrow(foot - 11.0 * sign * along, foot + 11.0 * sign * along, 7.0)
+    if len(line):
+        i = len(line) // 2
+        mark.say("", line.at[i] + off * line.out[i] + label_gap(line.out[i]))
+
+
+def _spread(mark: Mark, drawn: DrawnPart, frame: Frame, load: LineLoad) -> None:
+    way = to_px(load.x, load.y)
+    if way is None:
+        return
+    line = stations(drawn, frame, load.on, ROW_GAP, ends=True)
+    far = []
+    for p, out in zip(line.at, line.out, strict=True):
+        tail, tip = _push(mark, (p, out), way, ROW)
+        far.append(tip if way @ out > 1e-9 else tail)
+    if far:
+        _row(mark, np.array(far), load.on in drawn.holes)
+        i = len(far) // 2
+        mark.say("", far[i] + label_gap((far[i] - line.at[i]) / ROW))
+
+
+def _single(
+    mark: Mark,
+    drawn: DrawnPart,
+    frame: Frame,
+    load: ForceLoad | BearingLoad | PointLoad,
+    at: Floats,
+    out: Floats,
+) -> None:
+    way = to_px(load.x, load.y)
+    if way is None:
+        return
+    hole = load.on in drawn.holes
+    if hole:
+        radius = radius_px(drawn, frame, load.on)
+        tip = at + (radius + LONG - 12.0) * way
+        mark.arrow(at, tip, 10.0)
+        mark.circle(at, 2.5)
+        if isinstance(load, BearingLoad):
+            _fan(mark, at, way, radius)
+        else:
+            mark.circle(at, max(radius - 4.0, 2.0))
+        mark.say("", tip + label_gap(way))
+        return
+    tail, tip = _push(mark, (at, out), way, LONG)
+    away = tip if way @ out > 1e-9 else tail
+    mark.say("", away + label_gap((away - at) / max(float(np.hypot(*(away - at))), 1e-9)))
+    if isinstance(load, ForceLoad):  # the length over which it is spread
+        line = stations(drawn, frame, load.on, 10.0, ends=True)
+        if len(line) > 1:
+            rail = line.at + 5.0 * line.out
+            mark.lines.append(rail)
+            for i in (0, -1):
+                mark.line(rail[i] - 4.0 * line.out[i], rail[i] + 4.0 * line.out[i])
+
+
+def _fan(mark: Mark, centre: Floats, way: Floats, radius: float) -> None:
+    """Arrows onto the rim over the half that bears, as long as the cosine law has them."""
+    if radius < 12.0:
+        return
+    for degrees in (-60.0, -30.0, 30.0, 60.0):
+        c, s = math.cos(math.radians(degrees)), math.sin(math.radians(degrees))
+        ray = np.array([c * way[0] - s * way[1], s * way[0] + c * way[1]])
+        long = min(0.75 * radius, 30.0) * c
+        mark.arrow(centre + (radius - long) * ray, centre + (radius - 1.0) * ray, 6.0)
+
+
+def _own_weight(mark: Mark, drawn: DrawnPart, frame: Frame, load: GravityLoad) -> None:
+    way = to_px(load.x, load.y)
+    centre = centroid(drawn)
+    if way is None or centre is None:
+        return
+    at = frame.pxs(centre)
+    mark.circle(at, 6.0)
+    turn = np.linspace(0.0, math.pi / 2.0, 9)
+    for begin in (0.0, math.pi):
+        arc = at + 6.0 * np.stack([np.cos(begin + turn), np.sin(begin + turn)], axis=-1)
+        mark.fills.append(np.vstack([at, arc]))
+    tip = at + (LONG - 4.0) * way
+    mark.arrow(at + 6.0 * way, tip)
+    units = drawn.part.display_units
+    text = format_quantity(math.hypot(load.x, load.y), "acceleration", units)
+    mark.say(f"own weight, {text}", tip + label_gap(way))
+
+
+def label_gap(way: Floats) -> Floats:
+    """From an arrow's end to the middle of its label: labels are wider than high."""
+    return np.array([30.0 * way[0], 12.0 * way[1]])
+
+
+def centroid(drawn: DrawnPart) -> tuple[float, float] | None:
+    """Centre of the area [mm], holes taken out; None without an area."""
+    area = mx = my = 0.0
+    for loop in range(len(drawn.loops)):  # the outline turns left, holes turn right
+        ring = drawn.polyline(loop, 0.05)
+        if not len(ring):
+            continue
+        x, y = ring[:, 0], ring[:, 1]
+        nx, ny = np.roll(x, -1), np.roll(y, -1)
+        cross = x * ny - nx * y
+        area += float(cross.sum()) / 2.0
+        mx += float(((x + nx) * cross).sum()) / 6.0
+        my += float(((y + ny) * cross).sum()) / 6.0
+    return (mx / area, my / area) if area > 0.0 else None

@@ -1,0 +1,155 @@
+"""Holding and loading a place: the popover, its preview on the board, and the change made."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from PySide6.QtCore import QPoint, Qt
+
+from screenapp.model import edits
+from screenapp.model.edits import EditError
+from screenapp.model.features import find, place_name
+from screenapp.model.part import (
+    FixedSupport,
+    GravityLoad,
+    Part,
+    PrescribedSupport,
+    RollerSupport,
+)
+from screenapp.window.board.placing_kinds import (
+    OWN_WEIGHT,
+    Record,
+    Way,
+    holding_ways,
+    loading_ways,
+    read_back,
+)
+from screenapp.window.board.popover import Popover
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport)
+
+
+class Placing:
+    """One place at a time is being held or loaded, new or changed."""
+
+    def __init__(self, canvas: Canvas) -> None:
+        self._canvas = canvas
+        self._on = ""
+        self._id = ""
+        self.popover = Popover(canvas)
+        self.popover.changed.connect(self._show)
+        self.popover.accepted.connect(self.accept)
+        self.popover.dropped.connect(self.drop)
+
+    @property
+    def busy(self) -> bool:
+        """Whether the popover is open."""
+        return self.popover.isVisibleTo(self._canvas)
+
+    def hold(self, on: str, near: QPoint) -> None:
+        """Begin to hold a place."""
+        part = self._canvas.document.part
+        self._open(f"Hold {place_name(part, on)}", holding_ways(part, on), on, near)
+
+    def load(self, on: str, near: QPoint) -> None:
+        """Begin to load a place."""
+        part = self._canvas.document.part
+        self._open(f"Load {place_name(part, on)}", loading_ways(part, on), on, near)
+
+    def change(self, id_: str, near: QPoint) -> None:
+        """Begin to change a support or load."""
+        part = self._canvas.document.part
+        found = find(part, id_)
+        if found is None or found.kind not in ("support", "load"):
+            return
+        record = found.record
+        if isinstance(record, GravityLoad):
+            ways: tuple[Way, ...] = (OWN_WEIGHT,)
+        elif found.kind == "support":
+            ways = holding_ways(part, record.on)  # type: ignore[union-attr]
+        else:
+            ways = loading_ways(part, record.on)  # type: ignore[union-attr]
+        on = getattr(record, "on", "")
+        verb = "Hold" if found.kind == "support" else "Load"
+        title = f"{verb} {place_name(part, on)}" if on else "Own weight"
+        self._open(title, ways, on, near, record)  # type: ignore[arg-type]
+
+    def accept(self) -> bool:
+        """Make the change; False, with the reason said, if it is not complete."""
+        if not self.busy:
+            return True
+        record = self._record()
+        if not self.popover.sound:
+            return False
+        if record is None:
+            self.popover.complain("Type a value first.")
+            return False
+        name = ("change" if self._id else "add") + (
+            " a support" if isinstance(record, SUPPORTS) else " a load"
+        )
+        try:
+            part = self._made(record)
+        except EditError as fault:
+            self.popover.complain(f"{fault.cause}: {fault.mend}.")
+            return False
+        self._close()
+        self._canvas.document.apply(name, part)
+        return True
+
+    def drop(self) -> None:
+        """Close without a change."""
+        if self.busy:
+            self._close()
+
+    def settle(self) -> None:
+        """Accept what is complete, drop what is not: a click elsewhere."""
+        if self.busy and not (self.popover.sound and self._record() is not None and self.accept()):
+            self.drop()
+
+    def _open(
+        self, title: str, ways: tuple[Way, ...], on: str, near: QPoint, now: Record | None = None
+    ) -> None:
+        if not ways:
+            return
+        self._on, self._id = on, now.id if now is not None else ""
+        units = self._canvas.document.part.display_units
+        self.popover.open(title, ways, units, near, None if now is None else read_back(now))
+        self._show()
+
+    def _record(self) -> Record | None:
+        way = self.popover.way
+        return None if way is None else way.make(self._id, self._on, self.popover.values)
+
+    def _made(self, record: Record) -> Part:
+        document = self._canvas.document
+        part = document.part
+        if isinstance(record, SUPPORTS):
+            if self._id:
+                return edits.replace_support(part, record)
+            return edits.add_support(part, record)
+        if self._id:
+            return edits.replace_load(part, record)
+        if not part.cases:
+            part = edits.add_case(part)
+        case = part.cases[min(document.view.case, len(part.cases) - 1)]
+        return edits.add_load(part, case.id, record)
+
+    def _show(self) -> None:
+        """Preview what Enter would put there."""
+        record = self._record() if self.popover.sound else None
+        if record is None:
+            self._canvas.preview(None)
+            return
+        try:
+            self._canvas.preview(self._made(record))
+        except EditError as fault:
+            self._canvas.preview(None)
+            self.popover.complain(f"{fault.cause}: {fault.mend}.")
+
+    def _close(self) -> None:
+        self.popover.hide()
+        self._canvas.preview(None)
+        self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)

@@ -1,0 +1,241 @@
+"""How a place may be held or loaded, with the values that each way asks for."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass
+
+from screenapp.model.features import find
+from screenapp.model.kinds import KindName
+from screenapp.model.part import (
+    BearingLoad,
+    CircleHole,
+    FixedSupport,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Load,
+    Part,
+    PointLoad,
+    PrescribedSupport,
+    PressureLoad,
+    RollerSupport,
+    ShearLoad,
+    Support,
+)
+from screenapp.window.board.typed_entry import EntryField
+
+Values = Mapping[str, float]
+Record = Support | Load
+
+
+@dataclass(frozen=True)
+class Way:
+    """One way of holding or loading a place.
+
+    Attributes:
+        key: stable name.
+        label: on its button.
+        tip: what it means, one line.
+        fields: the values it has; a field with `empty` words may stay empty.
+        make: the record from id, place and values; None while a needed value is missing.
+        start: values shown at first.
+    """
+
+    key: str
+    label: str
+    tip: str
+    fields: tuple[EntryField, ...]
+    make: Callable[[str, str, Values], Record | None]
+    start: tuple[tuple[str, float], ...] = ()
+
+
+def vector_fields(kind: KindName) -> tuple[EntryField, ...]:
+    """Size and angle, or both components: whichever is typed gives the other."""
+    polar, plain = ("size", "angle"), ("x", "y")
+    return (
+        EntryField("size", "size", kind, plain),
+        EntryField("angle", "towards", "angle", plain),
+        EntryField("x", "or x", kind, polar),
+        EntryField("y", "y", kind, polar),
+    )
+
+
+def components(values: Values) -> tuple[float, float] | None:
+    """The vector given by size and angle [deg] or by x and y; None if its size is missing."""
+    if "size" in values:
+        a = math.radians(values.get("angle", -90.0))
+        x, y = values["size"] * math.cos(a), values["size"] * math.sin(a)
+        slack = 1e-12 * abs(values["size"])
+        return (x if abs(x) > slack else 0.0, y if abs(y) > slack else 0.0)
+    if "x" in values or "y" in values:
+        return values.get("x", 0.0), values.get("y", 0.0)
+    return None
+
+
+def _vector(record: Callable[[str, str, float, float], Load]) -> Callable[..., Load | None]:
+    def make(id_: str, on: str, values: Values) -> Load | None:
+        found = components(values)
+        return None if found is None else record(id_, on, *found)
+
+    return make
+
+
+def _fixed(id_: str, on: str, values: Values) -> Support | None:
+    return FixedSupport(id_, on)
+
+
+def _roller(id_: str, on: str, values: Values) -> Support | None:
+    return RollerSupport(id_, on, values.get("angle"))
+
+
+def _moved(id_: str, on: str, values: Values) -> Support | None:
+    if "x" not in values and "y" not in values:
+        return None
+    return PrescribedSupport(id_, on, values.get("x"), values.get("y"))
+
+
+def _pressure(id_: str, on: str, values: Values) -> Load | None:
+    return PressureLoad(id_, on, values["pressure"]) if "pressure" in values else None
+
+
+def _shear(id_: str, on: str, values: Values) -> Load | None:
+    return ShearLoad(id_, on, values["shear"]) if "shear" in values else None
+
+
+DOWN = (("angle", -90.0),)
+FIXED = Way("fixed", "Fixed", "Held in both directions.", (), _fixed)
+ROLLER = Way(
+    "roller",
+    "Roller",
+    "Held across its boundary, or along an angle that you give; free the other way.",
+    (EntryField("angle", "held along", "angle", (), "its normal"),),
+    _roller,
+)
+PIN = Way(
+    "roller",
+    "Pin",
+    "Sits on a pin that it can turn about; with an angle, held along that direction only.",
+    (EntryField("angle", "held along", "angle", (), "all round"),),
+    _roller,
+)
+CORNER_ROLLER = Way(
+    "roller",
+    "Roller",
+    "Held along the given angle, free across it.",
+    (EntryField("angle", "held along", "angle"),),
+    _roller,
+    (("angle", 90.0),),
+)
+MOVED = Way(
+    "moved",
+    "Moved",
+    "Moved by given amounts; what stays empty is free.",
+    (
+        EntryField("x", "x", "length", (), "free"),
+        EntryField("y", "y", "length", (), "free"),
+    ),
+    _moved,
+)
+FORCE = Way(
+    "force",
+    "Force",
+    "A total force spread evenly.",
+    vector_fields("force"),
+    _vector(ForceLoad),
+    DOWN,
+)
+BEARING = Way(
+    "bearing",
+    "Bearing",
+    "A pin's force: radial pressure over the half it bears on.",
+    vector_fields("force"),
+    _vector(BearingLoad),
+    DOWN,
+)
+POINT = Way(
+    "point",
+    "Point",
+    "A force at a corner; the stress under it has no finite value.",
+    vector_fields("force"),
+    _vector(PointLoad),
+    DOWN,
+)
+PRESSURE = Way(
+    "pressure",
+    "Pressure",
+    "Pushes on the material; negative pulls.",
+    (EntryField("pressure", "pressure", "stress"),),
+    _pressure,
+)
+SHEAR = Way(
+    "shear",
+    "Shear",
+    "Along the edge, with the material on its left.",
+    (EntryField("shear", "per length", "line_load"),),
+    _shear,
+)
+LINE = Way(
+    "line",
+    "Line",
+    "A force per length in one direction.",
+    vector_fields("line_load"),
+    _vector(LineLoad),
+    DOWN,
+)
+OWN_WEIGHT = Way(
+    "gravity",
+    "Own weight",
+    "The part's own weight under this acceleration.",
+    vector_fields("acceleration"),
+    lambda id_, _on, values: (
+        None if (found := components(values)) is None else GravityLoad(id_, *found)
+    ),
+    (("size", 9.81), ("angle", -90.0)),
+)
+
+
+def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
+    """The ways in which a place may be held, the most likely first."""
+    found = find(part, on)
+    if found is None or found.kind not in ("edge", "hole", "corner"):
+        return ()
+    if found.kind == "corner":
+        return FIXED, CORNER_ROLLER, MOVED
+    return FIXED, (PIN if found.kind == "hole" else ROLLER), MOVED
+
+
+def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
+    """The ways in which a place may be loaded, the most likely first."""
+    found = find(part, on)
+    if found is None or found.kind not in ("edge", "hole", "corner"):
+        return ()
+    if found.kind == "corner":
+        return (POINT,)
+    if isinstance(found.record, CircleHole):
+        return BEARING, FORCE, PRESSURE, SHEAR
+    return FORCE, PRESSURE, SHEAR, LINE
+
+
+def read_back(record: Record) -> tuple[str, dict[str, float]]:
+    """The key of the way and the values that would make this record."""
+    if isinstance(record, FixedSupport):
+        return "fixed", {}
+    if isinstance(record, RollerSupport):
+        return "roller", {} if record.angle is None else {"angle": record.angle}
+    if isinstance(record, PrescribedSupport):
+        both = {"x": record.x, "y": record.y}
+        return "moved", {k: v for k, v in both.items() if v is not None}
+    if isinstance(record, PressureLoad):
+        return "pressure", {"pressure": record.pressure}
+    if isinstance(record, ShearLoad):
+        return "shear", {"shear": record.per_length}
+    keys: dict[type, str] = {
+        ForceLoad: "force",
+        BearingLoad: "bearing",
+        PointLoad: "point",
+        LineLoad: "line",
+        GravityLoad: "gravity",
+    }
+    return keys[type(record)], {"x": record.x, "y": record.y}

@@ -1,0 +1,98 @@
+"""Lines, dots and dimension labels of what is being drawn."""
+
+from __future__ import annotations
+
+import math
+
+from PySide6.QtCore import QPoint, QPointF, QRectF, Qt
+from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter, QPainterPath, QPen
+
+from screenapp.model.curves import Arc, Curve
+from screenapp.model.part import DisplayUnits, Point
+from screenapp.window import theme
+from screenapp.window.board.drawn_part import flatten
+from screenapp.window.board.frame import Frame, polygon
+from screenapp.window.board.quantity import written
+
+OFFSET = QPoint(18, 18)
+"""From a place to the row of fields about it [px]."""
+
+
+def line_pen(width: float = 2.0, dashed: bool = False) -> QPen:
+    """The pen for what is not yet part of the part."""
+    pen = QPen(QColor(theme.current().accent), width)
+    pen.setCapStyle(Qt.PenCapStyle.RoundCap)
+    pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
+    if dashed:
+        pen.setDashPattern([5.0, 4.0])
+    return pen
+
+
+def curve(painter: QPainter, frame: Frame, piece: Curve, dashed: bool = False) -> None:
+    """A segment or arc."""
+    painter.setPen(line_pen(dashed=dashed))
+    painter.setBrush(Qt.BrushStyle.NoBrush)
+    painter.drawPolyline(polygon(frame.pxs(flatten(piece, 0.1 / frame.scale))))
+
+
+def segment(painter: QPainter, frame: Frame, a: Point, b: Point, dashed: bool = False) -> None:
+    """A straight line."""
+    painter.setPen(line_pen(dashed=dashed))
+    painter.drawLine(frame.px(a), frame.px(b))
+
+
+def dot(painter: QPainter, frame: Frame, at: Point) -> None:
+    """A point that is set."""
+    painter.setPen(line_pen(1.5))
+    painter.setBrush(QColor(theme.current().paper))
+    painter.drawEllipse(frame.px(at), 3.5, 3.5)
+
+
+def label(painter: QPainter, text: str, at: QPointF, colour: str | None = None) -> None:
+    """A text centred at a pixel position, with a halo so that lines do not cross it."""
+    font = QFont(painter.font())
+    font.setPixelSize(theme.TEXT_SMALL)
+    metrics = QFontMetricsF(font)
+    wide = metrics.horizontalAdvance(text)
+    box = QRectF(at.x() - wide / 2 - 3, at.y() - metrics.height() / 2 - 1, wide + 6, 0)
+    box.setHeight(metrics.height() + 2)
+    ground = QColor(theme.current().paper)
+    ground.setAlphaF(0.85)
+    path = QPainterPath()
+    path.addRoundedRect(box, 3.0, 3.0)
+    painter.fillPath(path, ground)
+    painter.setFont(font)
+    painter.setPen(QColor(colour or theme.current().accent))
+    painter.drawText(box, int(Qt.AlignmentFlag.AlignCenter), text)
+
+
+def measure(
+    painter: QPainter, frame: Frame, a: Point, b: Point, units: DisplayUnits, angle: bool = True
+) -> None:
+    """The length, and the angle, of a line, beside its middle."""
+    if a == b:
+        return
+    one, two = frame.px(a), frame.px(b)
+    text = written(math.dist(a, b), "length", units)
+    if angle:
+        degrees = math.degrees(math.atan2(b[1] - a[1], b[0] - a[0]))
+        text += f"  ∠ {written(degrees, 'angle', units)}"
+    label(painter, text, beside(one, two, 16.0))
+
+
+def beside(one: QPointF, two: QPointF, gap: float) -> QPointF:
+    """A pixel position `gap` beside the middle of a line, above it rather than below."""
+    dx, dy = two.x() - one.x(), two.y() - one.y()
+    length = math.hypot(dx, dy) or 1.0
+    nx, ny = -dy / length, dx / length
+    if ny > 0.0 or (ny == 0.0 and nx < 0.0):
+        nx, ny = -nx, -ny
+    wide = gap + 28.0 * abs(nx)  # text is wider than it is high
+    return (one + two) / 2.0 + QPointF(nx * wide, ny * gap)
+
+
+def arc_text(piece: Curve, units: DisplayUnits) -> str:
+    """What an arc is called while drawn: its radius, or the length if it is straight."""
+    if isinstance(piece, Arc):
+        return f"R {written(piece.radius, 'length', units)}"
+    return written(piece.length, "length", units)

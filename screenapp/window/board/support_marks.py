@@ -1,0 +1,137 @@
+"""Symbols of supports, as engineering mechanics textbooks draw them."""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+
+from screenapp.model.part import (
+    FixedSupport,
+    PrescribedSupport,
+    RollerSupport,
+    Support,
+)
+from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.frame import Floats, Frame
+from screenapp.window.board.marks import Mark, middle, radius_px, stations, to_px
+from screenapp.window.board.quantity import written
+
+DOWN = np.array([0.0, 1.0])
+HATCH_GAP, HATCH = 8.0, 9.0
+HIGH, HALF = 14.0, 9.0
+"""Height and half the base of a support triangle [px]."""
+
+
+def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
+    """The symbol of one support; empty if what it is on is gone."""
+    mark = Mark(support.id, "support")
+    place = middle(drawn, frame, support.on)
+    if place is None:
+        return mark
+    at, out = place
+    if isinstance(support, FixedSupport):
+        if support.on in drawn.corners:
+            _footed(mark, at, squared(out))
+        else:
+            _clamped(mark, drawn, frame, support.on)
+    elif isinstance(support, RollerSupport):
+        _rolling(mark, drawn, frame, support, at, out)
+    else:
+        _moved(mark, drawn, support, at, out)
+    return mark
+
+
+def squared(direction: Floats) -> Floats:
+    """The nearest of down, up, left and right."""
+    if abs(direction[0]) > abs(direction[1]) + 1e-6:
+        return np.array([math.copysign(1.0, direction[0]), 0.0])
+    return np.array([0.0, math.copysign(1.0, direction[1])])
+
+
+def _clamped(mark: Mark, drawn: DrawnPart, frame: Frame, on: str) -> None:
+    """Hatched ground all along."""
+    deep = min(HATCH, 0.6 * radius_px(drawn, frame, on))
+    line = stations(drawn, frame, on, 6.0, ends=True)
+    if len(line) > 1:
+        ground = line.at + 3.0 * line.out
+        if on in drawn.holes:
+            ground = np.vstack([ground, ground[:1]])
+        mark.lines.append(ground)
+    hatch = stations(drawn, frame, on, HATCH_GAP)
+    for p, out, along in zip(hatch.at, hatch.out, hatch.along, strict=True):
+        foot = p + 3.0 * out
+        mark.line(foot, foot + deep * (out - 0.8 * along) / 1.28)
+
+
+def _footed(mark: Mark, at: Floats, out: Floats) -> None:
+    """A triangle on hatched ground: both directions held at a point."""
+    side = np.array([-out[1], out[0]])
+    base = at + HIGH * out
+    mark.line(at, base + HALF * side, base - HALF * side, at)
+    _ground(mark, base, out, side)
+
+
+def _ground(mark: Mark, at: Floats, out: Floats, side: Floats) -> None:
+    wide = HALF + 4.0
+    mark.line(at - wide * side, at + wide * side)
+    for s in np.linspace(-wide + 4.0, wide, 5):
+        mark.line(at + s * side, at + (s - 4.0) * side + 5.0 * out)
+
+
+def _wheeled(mark: Mark, at: Floats, out: Floats) -> None:
+    """A triangle on two circles on a line: held along `out`, free across."""
+    side = np.array([-out[1], out[0]])
+    base = at + 12.0 * out
+    mark.line(at, base + 7.0 * side, base - 7.0 * side, at)
+    for s in (-4.5, 4.5):
+        mark.circle(base + 3.0 * out + s * side, 2.5)
+    ground = base + 6.5 * out
+    mark.line(ground - 11.0 * side, ground + 11.0 * side)
+
+
+def _rolling(
+    mark: Mark, drawn: DrawnPart, frame: Frame, support: RollerSupport, at: Floats, out: Floats
+) -> None:
+    held = None
+    if support.angle is not None:
+        a = math.radians(support.angle)
+        held = to_px(math.cos(a), math.sin(a))
+    if support.on in drawn.holes:
+        if held is None:  # a pin: the part can only turn about it
+            mark.circle(at, 3.0)
+            _footed(mark, at + 3.0 * DOWN, DOWN)
+        else:
+            _wheeled(mark, at, held if held @ DOWN >= 0.0 else -held)
+        return
+    if support.on in drawn.corners:
+        held = out if held is None else held
+        _wheeled(mark, at, held if held @ out >= 0.0 else -held)
+        return
+    long = sum(p.curve.length for p in drawn.pieces_of(support.on)) * frame.scale
+    gap = long if long < 70.0 else long / 2.0 if long < 200.0 else long / 3.0
+    places = stations(drawn, frame, support.on, max(gap, 1.0))
+    for p, normal in zip(places.at, places.out, strict=True):
+        way = normal if held is None else held if held @ normal >= 0.0 else -held
+        _wheeled(mark, p, way)
+
+
+def _moved(
+    mark: Mark, drawn: DrawnPart, support: PrescribedSupport, at: Floats, out: Floats
+) -> None:
+    """An arrow with a bar at its tail for each direction that is given."""
+    units = drawn.part.display_units
+    words: list[str] = []
+    start = at if support.on in drawn.holes else at + 6.0 * out
+    for name, value, axis in (
+        ("x", support.x, np.array([1.0, 0.0])),
+        ("y", support.y, np.array([0.0, -1.0])),
+    ):
+        if value is None:
+            continue
+        way = axis if value >= 0.0 else -axis
+        side = 6.0 * np.array([-way[1], way[0]])
+        mark.line(start - side, start + side)
+        mark.arrow(start, start + 30.0 * way)
+        words.append(f"{name} {written(value, 'length', units)}")
+    mark.say("moved " + ", ".join(words), start + np.array([0.0, 20.0]))

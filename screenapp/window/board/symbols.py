@@ -1,0 +1,175 @@
+"""Supports, loads, probes and faults on the board, at constant screen size."""
+
+from __future__ import annotations
+
+import numpy as np
+from PySide6.QtCore import QPointF, Qt
+from PySide6.QtGui import QColor, QPainter, QPen
+
+from screenapp.model.errors import Fault
+from screenapp.window import theme
+from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.frame import Frame, polygon
+from screenapp.window.board.hit_test import Clickable
+from screenapp.window.board.load_marks import load_mark
+from screenapp.window.board.marks import Mark
+from screenapp.window.board.screen_item import Z_PROBES, Z_SYMBOLS, ScreenItem
+from screenapp.window.board.sketch import label
+from screenapp.window.board.support_marks import support_mark
+
+
+class SymbolsItem(ScreenItem):
+    """The symbols of the supports and of the present case's loads."""
+
+    def __init__(self) -> None:
+        super().__init__(Z_SYMBOLS)
+        self.drawn: DrawnPart | None = None
+        self.case = 0
+        self.selected: tuple[str, ...] = ()
+        self.hovered: str | None = None
+        self._marks: list[Mark] = []
+        self._for: tuple[DrawnPart, int, Frame] | None = None
+
+    def show_part(self, drawn: DrawnPart, case: int) -> None:
+        """Show the supports and the loads of case number `case` from now on."""
+        self.drawn, self.case = drawn, case
+        self.update()
+
+    def marks(self, frame: Frame) -> list[Mark]:
+        """The symbols as they stand at this zoom."""
+        if self.drawn is None:
+            return []
+        had = self._for
+        if had is None or had[0] is not self.drawn or had[1] != self.case or had[2] != frame:
+            self._for = self.drawn, self.case, frame
+            part = self.drawn.part
+            self._marks = [support_mark(self.drawn, frame, s) for s in part.supports]
+            if self.case < len(part.cases):
+                loads = part.cases[self.case].loads
+                self._marks += [load_mark(self.drawn, frame, load) for load in loads]
+        return self._marks
+
+    def clickables(self, frame: Frame) -> tuple[Clickable, ...]:
+        """The symbols for the hit test."""
+        return tuple(
+            Clickable(
+                m.kind,
+                m.id,
+                (*m.lines, *(np.vstack([f, f[:1]]) for f in m.fills), *_rims(m)),
+            )
+            for m in self.marks(frame)
+        )
+
+    def draw(self, painter: QPainter, frame: Frame) -> None:
+        """Paint all symbols, labels last."""
+        palette = theme.current()
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        marks = self.marks(frame)
+        for mark in marks:
+            chosen = mark.id in self.selected
+            name = palette.support if mark.kind == "support" else palette.load
+            colour = QColor(palette.accent if chosen else name)
+            width = 2.6 if mark.id == self.hovered else 1.6
+            _paint(painter, mark, colour, width)
+        for mark in marks:
+            if mark.label:
+                name = palette.support if mark.kind == "support" else palette.load
+                label(painter, mark.label, mark.label_at, name)
+
+
+class ProbesItem(ScreenItem):
+    """The places of the probes."""
+
+    def __init__(self) -> None:
+        super().__init__(Z_PROBES)
+        self.drawn: DrawnPart | None = None
+        self.selected: tuple[str, ...] = ()
+        self.hovered: str | None = None
+
+    def show_part(self, drawn: DrawnPart) -> None:
+        """Show this part's probes from now on."""
+        self.drawn = drawn
+        self.update()
+
+    def draw(self, painter: QPainter, frame: Frame) -> None:
+        """A ring with a dot, and the name beside it."""
+        if self.drawn is None:
+            return
+        palette = theme.current()
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        for probe in self.drawn.part.readings:
+            colour = QColor(palette.accent if probe.id in self.selected else palette.ink)
+            p = frame.px(probe.at)
+            painter.setBrush(QColor(palette.paper))
+            painter.setPen(QPen(colour, 2.6 if probe.id == self.hovered else 1.6))
+            painter.drawEllipse(p, 4.5, 4.5)
+            painter.setBrush(colour)
+            painter.setPen(Qt.PenStyle.NoPen)
+            painter.drawEllipse(p, 1.4, 1.4)
+            label(painter, probe.name, p + QPointF(0.0, 15.0), colour.name())
+
+
+class FaultsItem(ScreenItem):
+    """A ring round every place where something is wrong; the sentence comes on hover."""
+
+    RADIUS = 13.0
+
+    def __init__(self) -> None:
+        super().__init__(Z_PROBES + 2)
+        self.spots: list[tuple[tuple[float, float], Fault]] = []
+
+    def show_faults(self, drawn: DrawnPart, faults: tuple[Fault, ...]) -> None:
+        """Mark these faults from now on."""
+        self.spots = []
+        for fault in faults:
+            if fault.at is not None:
+                self.spots.append((fault.at, fault))
+                continue
+            for id_ in fault.ids:
+                if (at := drawn.anchor_of(id_)) is not None:
+                    self.spots.append((at, fault))
+                    break
+        self.update()
+
+    def at(self, px: QPointF, frame: Frame) -> list[Fault]:
+        """The faults whose ring is under the cursor."""
+        return [
+            fault
+            for at, fault in self.spots
+            if np.hypot(*(frame.pxs(at) - (px.x(), px.y()))) <= self.RADIUS + 2.0
+        ]
+
+    def draw(self, painter: QPainter, frame: Frame) -> None:
+        """Paint the rings: whole for what stops a screening, dashed for a caution."""
+        palette = theme.current()
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        for at, fault in self.spots:
+            pen = QPen(QColor(palette.bad if fault.blocks else palette.doubt), 2.0)
+            if not fault.blocks:
+                pen.setDashPattern([3.0, 2.5])
+            painter.setPen(pen)
+            painter.drawEllipse(frame.px(at), self.RADIUS, self.RADIUS)
+
+
+def _paint(painter: QPainter, mark: Mark, colour: QColor, width: float) -> None:
+    pen = QPen(colour, width)
+    pen.setCapStyle(Qt.PenCapStyle.RoundCap)
+    pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
+    painter.setPen(pen)
+    painter.setBrush(Qt.BrushStyle.NoBrush)
+    for line in mark.lines:
+        painter.drawPolyline(polygon(line))
+    for centre, radius in mark.circles:
+        painter.drawEllipse(QPointF(*centre), radius, radius)
+    painter.setBrush(colour)
+    pen.setWidthF(1.0)
+    painter.setPen(pen)
+    for fill in mark.fills:
+        painter.drawPolygon(polygon(fill))
+
+
+def _rims(mark: Mark) -> list[np.ndarray]:
+    turn = np.linspace(0.0, 2.0 * np.pi, 17)
+    ring = np.stack([np.cos(turn), np.sin(turn)], axis=-1)
+    return [centre + radius * ring for centre, radius in mark.circles]

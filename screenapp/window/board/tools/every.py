@@ -1,0 +1,35 @@
+"""All tools in the order of the strip."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from screenapp.window.board.tools.base import Tool
+from screenapp.window.board.tools.chain import ArcTool, Draft, LinesTool
+from screenapp.window.board.tools.circle import CircleTool
+from screenapp.window.board.tools.fillet import FilletTool
+from screenapp.window.board.tools.place import HoldTool, LoadTool
+from screenapp.window.board.tools.probe import ProbeTool
+from screenapp.window.board.tools.rectangle import RectangleTool
+from screenapp.window.board.tools.select import SelectTool
+from screenapp.window.board.tools.slot import SlotTool
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+
+def every_tool(canvas: Canvas) -> tuple[Tool, ...]:
+    """The tools; lines and arcs share the chain they draw."""
+    draft = Draft()
+    return (
+        SelectTool(canvas),
+        LinesTool(canvas, draft),
+        ArcTool(canvas, draft),
+        RectangleTool(canvas),
+        CircleTool(canvas),
+        SlotTool(canvas),
+        FilletTool(canvas),
+        HoldTool(canvas),
+        LoadTool(canvas),
+        ProbeTool(canvas),
+    )

@@ -1,0 +1,151 @@
+"""A fillet at a corner."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, ClassVar
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QPainter
+
+from screenapp.model import edits
+from screenapp.model.errors import InvalidPartError
+from screenapp.model.part import Part
+from screenapp.model.shape import shape_of
+from screenapp.window.board import sketch
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.quantity import written
+from screenapp.window.board.tools.base import Place, Tool
+from screenapp.window.board.typed_entry import EntryField
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+FIELDS = (EntryField("radius", "radius"),)
+
+
+class FilletTool(Tool):
+    """Click a corner, type the radius."""
+
+    name: ClassVar[str] = "Fillet"
+    key: ClassVar[str] = "F"
+    line: ClassVar[str] = "Click a corner and type its radius; 0 makes it sharp."
+    icon: ClassVar[str] = "fillet"
+    snaps: ClassVar[bool] = False
+
+    def __init__(self, canvas: Canvas) -> None:
+        super().__init__(canvas)
+        self.corner: str | None = None
+        self.radius = 0.0
+        self._last = 5.0
+
+    @property
+    def cursor(self) -> Qt.CursorShape:
+        """A hand over a corner."""
+        place = self.canvas.place
+        over = place is not None and corner_of(place) is not None
+        return Qt.CursorShape.PointingHandCursor if over else Qt.CursorShape.ArrowCursor
+
+    def stop(self, following: Tool | None) -> None:
+        """Drop the radius being typed."""
+        self._drop()
+
+    def part_changed(self) -> None:
+        """The corner may be gone."""
+        self.corner = None
+
+    def step_back(self) -> bool:
+        """Drop the radius being typed."""
+        had = self.corner is not None
+        self._drop()
+        return had
+
+    def hint(self) -> str:
+        """What comes next."""
+        return "Click a corner." if self.corner is None else "Type the radius; Enter accepts."
+
+    def press(self, place: Place) -> None:
+        """Take up a corner; what was typed for the one before is accepted."""
+        if self.corner is not None:
+            self._accept()
+        corner = corner_of(place)
+        if corner is None:
+            return
+        self.corner = corner
+        now = self.canvas.document.part
+        found = edits.find(now, corner)
+        had = getattr(found.record, "round", 0.0) if found is not None else 0.0
+        self.canvas.document.select(corner)
+        self._try(had or self._last)
+        self.canvas.entry.open_row(None)
+
+    def entry_fields(self) -> tuple[EntryField, ...]:
+        """The radius."""
+        return FIELDS if self.corner is not None else ()
+
+    def entry_live(self) -> dict[str, float]:
+        """The radius shown."""
+        return {"radius": self.radius}
+
+    def entry_typed(self, values: dict[str, float]) -> None:
+        """Show it."""
+        if self.corner is not None and "radius" in values:
+            self._try(values["radius"])
+
+    def entry_accept(self, values: dict[str, float]) -> None:
+        """Make it."""
+        if "radius" in values:
+            self.radius = values["radius"]
+        self._accept()
+
+    def paint(self, painter: QPainter, frame: Frame) -> None:
+        """Name the radius at the corner."""
+        if self.corner is None or self.corner not in self.canvas.drawn.corners:
+            return
+        at = frame.px(self.canvas.drawn.corners[self.corner].at)
+        text = f"R {written(self.radius, 'length', self.canvas.part.display_units)}"
+        at.setY(at.y() - 18.0)
+        sketch.label(painter, text, at)
+
+    def _try(self, radius: float) -> None:
+        """Show the part with this radius; if it does not fit, say why."""
+        assert self.corner is not None
+        self.radius = radius
+        try:
+            part = edits.set_round(self.canvas.document.part, self.corner, radius)
+        except edits.EditError as fault:
+            self.say(f"{fault.cause}: {fault.mend}.")
+            return
+        self.canvas.preview(part)
+        if why := misfit(part, self.corner):
+            self.say(why)
+
+    def _accept(self) -> None:
+        corner, radius = self.corner, self.radius
+        assert corner is not None
+        part = self.canvas.document.part
+        if self.apply("round a corner", lambda: edits.set_round(part, corner, radius)):
+            self._last = radius or self._last
+            self._drop()
+
+    def _drop(self) -> None:
+        self.corner = None
+        self.canvas.preview(None)
+        self.canvas.entry.close_row()
+
+
+def corner_of(place: Place) -> str | None:
+    """The corner or fillet under the cursor."""
+    if place.hit is not None and place.hit.kind in ("corner", "fillet"):
+        return place.hit.id
+    return None
+
+
+def misfit(part: Part, corner: str) -> str:
+    """Why the round of a corner does not fit; "" if it does."""
+    try:
+        shape_of(part)
+    except InvalidPartError as error:
+        for fault in error.faults:
+            if corner in fault.ids:
+                return f"{fault.cause}: {fault.mend}."
+    return ""

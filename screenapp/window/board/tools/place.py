@@ -1,0 +1,84 @@
+"""Hold and load a place by clicking it."""
+
+from __future__ import annotations
+
+from typing import ClassVar
+
+from PySide6.QtCore import Qt
+
+from screenapp.window.board.tools.base import Place, Tool
+
+
+class PlaceTool(Tool):
+    """Click an edge, a hole or a sharp corner."""
+
+    snaps: ClassVar[bool] = False
+
+    @property
+    def cursor(self) -> Qt.CursorShape:
+        """A hand over what can be taken."""
+        place = self.canvas.place
+        over = place is not None and target_of(place) is not None
+        return Qt.CursorShape.PointingHandCursor if over else Qt.CursorShape.ArrowCursor
+
+    def open_at(self, on: str, place: Place) -> None:
+        """Open the popover for a place."""
+        raise NotImplementedError
+
+    def stop(self, following: Tool | None) -> None:
+        """Settle what is open."""
+        self.canvas.placing.settle()
+
+    def step_back(self) -> bool:
+        """Close the popover."""
+        busy = self.canvas.placing.busy
+        self.canvas.placing.drop()
+        return busy
+
+    def press(self, place: Place) -> None:
+        """Settle what is open and take up the place clicked."""
+        self.canvas.placing.settle()
+        hit = place.hit
+        if hit is not None and hit.kind in ("support", "load"):
+            self.canvas.document.select(hit.id)
+            self.canvas.placing.change(hit.id, place.px.toPoint())
+            return
+        on = target_of(place)
+        if on is None:
+            self.say("Click an edge, a hole or a sharp corner.")
+            return
+        self.canvas.document.select(on)
+        self.open_at(on, place)
+
+
+class HoldTool(PlaceTool):
+    """Puts supports."""
+
+    name: ClassVar[str] = "Hold"
+    key: ClassVar[str] = "H"
+    line: ClassVar[str] = "Click an edge, hole or corner to hold it."
+    icon: ClassVar[str] = "hold"
+
+    def open_at(self, on: str, place: Place) -> None:
+        """Choose how it is held."""
+        self.canvas.placing.hold(on, place.px.toPoint())
+
+
+class LoadTool(PlaceTool):
+    """Puts loads into the present case."""
+
+    name: ClassVar[str] = "Load"
+    key: ClassVar[str] = "W"
+    line: ClassVar[str] = "Click an edge, hole or corner to load it in the present case."
+    icon: ClassVar[str] = "load"
+
+    def open_at(self, on: str, place: Place) -> None:
+        """Choose how it is loaded."""
+        self.canvas.placing.load(on, place.px.toPoint())
+
+
+def target_of(place: Place) -> str | None:
+    """The edge, hole or sharp corner under the cursor."""
+    if place.hit is not None and place.hit.kind in ("edge", "hole", "corner"):
+        return place.hit.id
+    return None

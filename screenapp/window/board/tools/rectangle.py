@@ -1,0 +1,135 @@
+"""A rectangle by two opposite corners."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING, ClassVar
+
+from PySide6.QtCore import QRectF, Qt
+from PySide6.QtGui import QPainter
+
+from screenapp.model import edits
+from screenapp.model.part import Point
+from screenapp.window.board import sketch
+from screenapp.window.board.frame import Frame
+from screenapp.window.board.quantity import written
+from screenapp.window.board.tools.base import Tool
+from screenapp.window.board.tools.chain import OUTSIDE
+from screenapp.window.board.tools.drawing import PLACE_FIELDS, DrawTool
+from screenapp.window.board.typed_entry import EntryField
+
+if TYPE_CHECKING:
+    from screenapp.window.board.canvas import Canvas
+
+SIZE_FIELDS = (EntryField("width", "width"), EntryField("height", "height"))
+
+
+class RectangleTool(DrawTool):
+    """The outline if there is none, else a hole."""
+
+    name: ClassVar[str] = "Rectangle"
+    key: ClassVar[str] = "R"
+    line: ClassVar[str] = "Click two opposite corners, or type width and height."
+    icon: ClassVar[str] = "rectangle"
+
+    def __init__(self, canvas: Canvas) -> None:
+        super().__init__(canvas)
+        self.first: Point | None = None
+
+    def stop(self, following: Tool | None) -> None:
+        """Drop the first corner."""
+        self.first = None
+        self.typed = {}
+
+    def step_back(self) -> bool:
+        """Drop the first corner."""
+        had, self.first = self.first is not None, None
+        return had
+
+    def hint(self) -> str:
+        """What the next click does."""
+        return "Click the first corner." if self.first is None else "Click the opposite corner."
+
+    def entry_fields(self) -> tuple[EntryField, ...]:
+        """A place, then sizes."""
+        return PLACE_FIELDS if self.first is None else SIZE_FIELDS
+
+    def typed_point(self, cursor: Point | None) -> Point | None:
+        """The opposite corner lies on the cursor's side, at the typed sizes."""
+        if self.first is None:
+            return super().typed_point(cursor)
+        sizes = self.typed.get("width"), self.typed.get("height")
+        if cursor is None and None in sizes:
+            return None
+        away = (
+            (1.0, 1.0)
+            if cursor is None
+            else (
+                cursor[0] - self.first[0],
+                cursor[1] - self.first[1],
+            )
+        )
+        x, y = (
+            start + (gap if size is None else math.copysign(size, gap))
+            for start, gap, size in zip(self.first, away, sizes, strict=True)
+        )
+        return x, y
+
+    def entry_live(self) -> dict[str, float]:
+        """Place or sizes."""
+        at = self.point()
+        if self.first is None or at is None:
+            return super().entry_live()
+        return {"width": abs(at[0] - self.first[0]), "height": abs(at[1] - self.first[1])}
+
+    def accept_point(self, at: Point) -> None:
+        """Set the first corner, then draw."""
+        if self.first is None:
+            self.first = at
+            return
+        part, first = self.canvas.document.part, self.first
+        if part.outline is None:
+            done = self.apply(
+                "draw the outline", lambda: edits.outline_from_rectangle(part, first, at)
+            )
+        elif self.canvas.drawn.inside(first) and self.canvas.drawn.inside(at):
+            done = self.apply(
+                "draw a hole",
+                lambda: edits.add_loop_hole(part, edits.rectangle_corners(first, at)),
+            )
+        else:
+            self.say(OUTSIDE)
+            return
+        if done:
+            self.first = None
+            self.canvas.tool_wanted.emit("Select")
+
+    def enter(self) -> None:
+        """Take the corner under the cursor."""
+        at = self.point()
+        if self.first is not None and at is not None:
+            self.accept_point(at)
+
+    def paint(self, painter: QPainter, frame: Frame) -> None:
+        """The rectangle with its sizes."""
+        at = self.point()
+        if self.first is None or at is None:
+            if self.typed and at is not None:
+                sketch.dot(painter, frame, at)
+            return
+        one, two = frame.px(self.first), frame.px(at)
+        painter.setPen(sketch.line_pen())
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        box = QRectF(one, two).normalized()
+        painter.drawRect(box)
+        units = self.canvas.part.display_units
+        for text, a, b in (
+            (written(abs(at[0] - self.first[0]), "length", units), box.topLeft(), box.topRight()),
+            (
+                written(abs(at[1] - self.first[1]), "length", units),
+                box.topRight(),
+                box.bottomRight(),
+            ),
+        ):
+            sketch.label(painter, text, sketch.beside(a, b, 14.0))
+        sketch.dot(painter, frame, self.first)
