@@ -171,7 +171,7 @@ def _stranger(text: str, plain: str, at: int) -> tuple[str, str]:
     """Cause and mend for the character at `at`, which is not understood."""
     if plain[at] == "^":
         return f'"{text}" has a ^', "write ** for a power"
-    if plain[at].isdigit() or plain[at] == ".":
+    if re.match(r"\.?\d", plain[at:]):
         word = re.match(r"[\w.]+", plain[at:])
         number = word.group() if word else plain[at]
         return (

@@ -180,9 +180,17 @@ def _exact(value: float, factor: Fraction) -> Decimal:
     """The shortest decimal in display units that reads back to exactly `value`."""
     shown = Fraction(value) / factor
     digits = 1
-    while float(Fraction(text := _in_decimal(shown, digits)) * factor) != value:
+    while _to_float(Fraction(text := _in_decimal(shown, digits)) * factor) != value:
         digits += 1
     return text
+
+
+def _to_float(value: Fraction) -> float:
+    """The nearest float, infinity where the rounded decimal lies beyond the largest one."""
+    try:
+        return float(value)
+    except OverflowError:
+        return math.inf
 
 
 def _in_decimal(value: Fraction, digits: int) -> Decimal:
