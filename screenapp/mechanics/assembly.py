@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -33,6 +34,8 @@ class System:
         carried: the mesh nodes that have unknowns, rising, (n_carried,).
         index: position of each mesh node among `carried`, -1 where it has none, (n_nodes,).
         stiffness: the whole symmetric matrix [N/mm], (2 n_carried, 2 n_carried).
+        packed: upper triangle of each element's stiffness, row by row, in element order
+            (n_elements, m (2m + 1)).
         recovery, flexibility: as in `ElementMatrices`, for all elements.
     """
 
@@ -41,6 +44,7 @@ class System:
     carried: Ints
     index: Ints
     stiffness: sparse.csr_array
+    packed: Floats
     recovery: Floats | None
     flexibility: Floats | None
 
@@ -86,6 +90,7 @@ def assemble(
         carried,
         index,
         _symmetric(_places(nodes), upper, values, 2 * len(carried)),
+        values,
         np.concatenate(recovery) if recovery else None,
         np.concatenate(flexibility) if flexibility else None,
     )
@@ -122,6 +127,38 @@ def condense_loads(system: System, forces: Floats) -> Floats:
     return loads
 
 
+def internal_forces(system: System, terms: Sequence[Floats]) -> Floats:
+    """What the elements put up against displacements that are the sum of `terms`, each
+    (n_cases, 2 n_carried) [mm]: (n_cases, 2 n_carried) [N].
+
+    This is the stiffness times the displacements, but each element's own shift and turn are taken
+    out before they meet its stiffness, and a small term is never added to a large one.  In a
+    slender part the rigid motion of an element is a million times its stretch, and its rounding
+    would drown the forces; this way they keep their digits.
+    """
+    n_cases = len(terms[0])
+    m = CARRIED_NODES[system.element]
+    nodes = system.element_nodes
+    out = np.zeros((n_cases, 2 * len(system.carried)))
+    unpack = np.zeros((2 * m, 2 * m), dtype=np.int64)
+    upper = np.triu_indices(2 * m)
+    unpack[upper] = np.arange(len(upper[0]))
+    unpack = np.maximum(unpack, unpack.T)
+    for first in range(0, len(nodes), CHUNK):
+        rows = slice(first, first + CHUNK)
+        at = nodes[rows]
+        positions = system.mesh.nodes[system.mesh.quads[rows, :m]]
+        stretch = np.sum(
+            [_without_motion(t.reshape(n_cases, -1, 2)[:, at], positions) for t in terms], axis=0
+        )
+        stacked = np.moveaxis(stretch, 0, 3).transpose(0, 2, 1, 3).reshape(len(at), 2 * m, -1)
+        forces = system.packed[rows][:, unpack] @ stacked
+        places = _places(at).ravel()
+        for case in range(n_cases):
+            out[case] += np.bincount(places, forces[..., case].ravel(), minlength=out.shape[1])
+    return out
+
+
 def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Floats | None]:
     """Displacements on all nodes and the incompatible modes, from the carried ones.
 
@@ -154,6 +191,18 @@ def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Fl
     )  # (9 - m, m)
     out[:, mesh.quads[:, m:]] = np.einsum("im,cemk->ceik", shapes, local)
     return out, inner
+
+
+def _without_motion(displacements: Floats, positions: Floats) -> Floats:
+    """Displacements (n_cases, n, m, 2) of elements at (n, m, 2), less their mean turn and their
+    first node's shift (differences of neighbours are free of rounding)."""
+    moved = displacements - displacements[:, :, :1]
+    arm = positions - positions.mean(axis=1, keepdims=True)
+    turn = np.einsum("nm,cnm->cn", arm[..., 0], moved[..., 1])
+    turn -= np.einsum("nm,cnm->cn", arm[..., 1], moved[..., 0])
+    turn /= np.einsum("nmd,nmd->n", arm, arm)
+    across = np.stack([-arm[..., 1], arm[..., 0]], axis=-1)
+    return np.asarray(moved - turn[..., None, None] * (across - across[:, :1]))
 
 
 def _keep(made: ElementMatrices, recovery: list[Floats], flexibility: list[Floats]) -> None:

@@ -84,30 +84,6 @@ def element_matrices(
     return ElementMatrices(full)
 
 
-def strain_displacement(
-    element: ElementName, coordinates: Floats, points: Floats
-) -> tuple[Floats, Floats]:
-    """Slopes of the shape functions at local `points` (p, 2) of elements (n, 9 or fewer, 2) [mm].
-
-    Returns ∂N/∂x and ∂N/∂y [1/mm] stacked, (n, 2, p, n_nodes), and the Jacobian determinants
-    [mm²], (n, p).  The strains are εx = ∂N/∂x uₓ, εy = ∂N/∂y u_y, γ = ∂N/∂y uₓ + ∂N/∂x u_y.
-    """
-    n_nodes = NODES_OF_ELEMENT[element]
-    local = shape_functions.derivatives(n_nodes, points)
-    return _slopes(local, coordinates[:, :n_nodes])
-
-
-def mode_slopes(coordinates: Floats, points: Floats) -> Floats:
-    """Slopes of the two incompatible modes at local `points` (p, 2), (n, 2, p, 2) [1/mm].
-
-    Axis 1 is x, y; the last axis is the mode (1 - ξ², 1 - η²).  The strains of amplitudes
-    (a₁ₓ, a₁y, a₂ₓ, a₂y) follow as for nodal displacements.
-    """
-    local = shape_functions.derivatives(4, points)
-    _, det = _slopes(local, coordinates[:, :4])
-    return _mode_slopes(coordinates[:, :4], points, det)
-
-
 def shape_integrals(element: ElementName, coordinates: Floats, thickness: Floats) -> Floats:
     """Integral of each shape function over the volume [mm³], (n, n_nodes): the nodal loads of a
     unit force per volume."""
@@ -185,7 +161,7 @@ def _condense(full: Floats, n_all: int, n_inner: int) -> ElementMatrices:
     outer = n_all - n_inner
     keep = np.r_[0:outer, n_all : n_all + outer]
     drop = np.r_[outer:n_all, n_all + outer : 2 * n_all].reshape(2, n_inner).T.ravel()
-    flexibility: Floats = np.linalg.inv(full[:, drop[:, None], drop])
+    flexibility = np.asarray(np.linalg.inv(full[:, drop[:, None], drop]), dtype=np.float64)
     coupling = full[:, drop[:, None], keep]
     recovery = flexibility @ coupling
     reduced = full[:, keep[:, None], keep] - coupling.transpose(0, 2, 1) @ recovery

@@ -7,7 +7,7 @@ positive definite matrix allows; where pypardiso is installed it is used instead
 from __future__ import annotations
 
 import importlib.util
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 
 import numpy as np
 from numpy.typing import NDArray
@@ -19,8 +19,11 @@ from screenapp.model.errors import SolvingError
 Floats = NDArray[np.float64]
 Solve = Callable[[Floats], Floats]
 
-ENOUGH = 1e-13
-"""Relative residual below which no refinement is needed."""
+ENOUGH = 1e-12
+"""Relative residual at which refinement stops."""
+
+REFINEMENTS = 4
+"""Most steps of refinement: each gains several digits unless the matrix is all but singular."""
 
 TOO_MUCH = 1e-8
 """Relative residual above which the answer is refused: reactions would no longer balance."""
@@ -83,47 +86,58 @@ def _pardiso(matrix: sparse.csc_array) -> Solve:
     return solve
 
 
-def solve_checked(
-    matrix: sparse.csc_array, right: Floats, factor: Callable[[sparse.csc_array], Solve] = factorise
-) -> tuple[Floats, float]:
-    """Solve for right-hand sides (n, k), refine once where rounding calls for it.
+def solve_refined(
+    matrix: sparse.csc_array,
+    right: Floats,
+    gap_of: Callable[[Sequence[Floats]], Floats],
+    factor: Callable[[sparse.csc_array], Solve] = factorise,
+) -> tuple[list[Floats], float]:
+    """Solve for right-hand sides (n, k) and refine until the residual is as small as it gets.
+
+    Args:
+        gap_of: takes the terms whose sum is the answer, (n, k) each, to what is left of the
+            right-hand sides, (n, k); it may be more exact than the matrix is.
 
     Returns:
-        The solutions (n, k) and the largest relative residual |b - A x| / |b| over the k.
+        The terms of the answer, largest first, and the largest relative residual
+        |right - A x| / |right| over the k.
 
     Raises:
         SolvingError: a mechanism, or a residual that refinement does not bring down.
     """
     if matrix.shape[0] == 0 or right.shape[1] == 0:
-        return np.zeros(right.shape), 0.0
+        return [np.zeros(right.shape)], 0.0
     if not np.isfinite(right).all():
         raise SolvingError(
             "a load or prescribed displacement is not finite", "give it an ordinary number"
         )
     solve = factor(matrix)
-    answer = solve(right)
-    if not np.isfinite(answer).all():
+    terms = [solve(right)]
+    if not np.isfinite(terms[0]).all():
         raise _mechanism()
-    gap, residual = _residual(matrix, answer, right)
-    if residual > ENOUGH:
-        refined = answer + solve(gap)
-        _, better = _residual(matrix, refined, right)
-        if better < residual:
-            answer, residual = refined, better
+    gap = gap_of(terms)
+    residual = _relative(gap, right)
+    for _ in range(REFINEMENTS):
+        if residual <= ENOUGH:
+            break
+        tried = [*terms, solve(gap)]
+        left = gap_of(tried)
+        better = _relative(left, right)
+        if not better < residual:
+            break
+        terms, gap, residual = tried, left, better
     if not residual <= TOO_MUCH:
         raise SolvingError(
             f"the equations are solved to a relative residual of {residual:.1e} only",
             "look for supports that barely hold the part, or for a wall or a material that is "
             "very much softer in one place",
         )
-    return answer, residual
+    return terms, residual
 
 
-def _residual(matrix: sparse.csc_array, answer: Floats, right: Floats) -> tuple[Floats, float]:
-    gap = right - matrix @ answer
+def _relative(gap: Floats, right: Floats) -> float:
     size = np.linalg.norm(right, axis=0)
-    relative = np.linalg.norm(gap, axis=0) / np.where(size > 0.0, size, 1.0)
-    return gap, float(relative.max())
+    return float((np.linalg.norm(gap, axis=0) / np.where(size > 0.0, size, 1.0)).max())
 
 
 def _mechanism() -> SolvingError:

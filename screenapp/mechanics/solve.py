@@ -3,15 +3,16 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.assembly import System, assemble, condense_loads, spread
+from screenapp.mechanics.assembly import System, assemble, condense_loads, internal_forces, spread
 from screenapp.mechanics.constraints import HeldDirections, held_directions, reduce
 from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
 from screenapp.mechanics.equilibrium import balance, reactions
-from screenapp.mechanics.linear_solve import solve_checked
+from screenapp.mechanics.linear_solve import solve_refined
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import ElementName, Part
@@ -55,13 +56,23 @@ def solve_system(
     basis = reduction.basis
     reduced = (basis.T @ system.stiffness @ basis).tocsc()
     right = basis.T @ (loads - system.stiffness @ reduction.held).T
+    held_term = np.broadcast_to(reduction.held, loads.shape)
+
+    def in_full(terms: Sequence[Floats]) -> list[Floats]:
+        return [held_term, *((basis @ term).T for term in terms)]
+
+    def gap_of(terms: Sequence[Floats]) -> Floats:
+        progress.check()
+        return np.asarray(basis.T @ (loads - internal_forces(system, in_full(terms))).T)
+
     progress.check()
-    answer, residual = solve_checked(reduced, right)
+    terms, residual = solve_refined(reduced, right, gap_of)
     progress.check()
-    unknowns = (basis @ answer).T + reduction.held
+    parts = in_full(terms)
+    unknowns = np.sum(parts, axis=0)
     displacements, modes = spread(system, unknowns, forces)
     support_forces = np.zeros(forces.shape)
-    support_forces[:, system.carried] = ((system.stiffness @ unknowns.T).T - loads).reshape(
+    support_forces[:, system.carried] = (internal_forces(system, parts) - loads).reshape(
         len(forces), -1, 2
     )
     given = tuple(reactions(held, mesh.nodes, case) for case in support_forces)
