@@ -3,11 +3,12 @@
 from __future__ import annotations
 
 from PySide6.QtCore import Qt, Signal
-from PySide6.QtGui import QKeyEvent, QShowEvent
+from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 
 from screenapp.window import theme
 from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
 from screenapp.window.board.tool_strip import ToolStrip
 from screenapp.window.board.tools.every import every_tool
@@ -54,6 +55,7 @@ class Board(QWidget):
         row.setSpacing(0)
         row.addWidget(self.strip)
         row.addLayout(right, 1)
+        self.empty = EmptyBoard(self.canvas)
         self._connect()
         self.canvas.show_part()
         self.canvas.fit()
@@ -74,11 +76,17 @@ class Board(QWidget):
         self.canvas.outline.faint = faint
         self.canvas.outline.update()
 
+    @property
+    def corner_text(self) -> str:
+        """The words at the right below the canvas: cursor place and snap in force."""
+        return self._corner.text()
+
     def take(self, name: str) -> None:
         """Put the tool called `name` in hand."""
         tool = next(t for t in self.tools if t.name == name)
         self.canvas.take(tool)
         self.strip.show_tool(name)
+        self._show_empty()
 
     def fit(self) -> None:
         """Show the whole part."""
@@ -92,6 +100,7 @@ class Board(QWidget):
         )
         self._corner.setStyleSheet(f"color: {p.quiet}; font-size: {theme.TEXT_BODY}px;")
         self.strip.apply_theme()
+        self.empty.apply_theme()
         self.canvas.apply_theme()
 
     # events
@@ -126,6 +135,19 @@ class Board(QWidget):
             self._fitted = True
             self.canvas.fit()
 
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """Keep the card in the middle."""
+        super().resizeEvent(event)
+        self._show_empty()
+
+    def _show_empty(self) -> None:
+        """The card stands while there is nothing and nothing is being drawn."""
+        part = self.document.part
+        bare = part.outline is None and not part.holes
+        self.empty.setVisible(bare and self.canvas.tool is self.tools[0])
+        if self.empty.isVisibleTo(self):
+            self.empty.centre()
+
     def _step_back(self) -> None:
         tool = self.canvas.tool
         if tool is not None and tool.step_back():
@@ -145,6 +167,7 @@ class Board(QWidget):
         self.canvas.tool_wanted.connect(self.take)
         self.strip.wanted.connect(self.take)
         self.strip.fit_wanted.connect(self.fit)
+        self.empty.sample_wanted.connect(self.sample_wanted)
         theme.notifier.changed.connect(self.apply_theme)
 
     def _part_changed(self) -> None:
@@ -156,6 +179,7 @@ class Board(QWidget):
         if self.document.history is not self._history:
             self._history = self.document.history
             self.canvas.fit()
+        self._show_empty()
         self.canvas.refresh()
 
     def _show_lit(self) -> None:

@@ -360,12 +360,18 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.refresh()
         event.accept()
 
-    def focusNextPrevChild(self, forward: bool) -> bool:
+    def event(self, event: QEvent) -> bool:
         """Tab opens the entry row while something can be typed."""
-        if forward and self.tool is not None and self.tool.entry_fields():
+        if (
+            isinstance(event, QKeyEvent)
+            and event.type() == QEvent.Type.KeyPress
+            and event.key() == Qt.Key.Key_Tab
+            and self.tool is not None
+            and self.tool.entry_fields()
+        ):
             self.entry.open_row(None)
             return True
-        return bool(super().focusNextPrevChild(forward))
+        return bool(super().event(event))
 
     def focusOutEvent(self, event: QFocusEvent) -> None:
         """A key let go elsewhere is not seen."""

@@ -49,16 +49,16 @@ def hit_test(
 ) -> Hit | None:
     """The thing under the cursor at `px`, None if there is none.
 
-    Points come before symbols, symbols before lines, lines before the inside of a hole.
+    Points come before lines and symbols, the nearer of which counts, and these before the inside
+    of a hole.
     """
     at = frame.mm(px)
-    return (
-        _nearest_probe(drawn, frame, at)
-        or _nearest_corner(drawn, frame, at)
-        or _nearest_symbol(symbols, px, at)
-        or nearest_piece(drawn, at, LINE_PX / frame.scale)
-        or _hole_around(drawn, at)
-    )
+    if (point := _nearest_probe(drawn, frame, at) or _nearest_corner(drawn, frame, at)) is not None:
+        return point
+    piece = nearest_piece(drawn, at, LINE_PX / frame.scale)
+    near = math.inf if piece is None else math.dist(piece.at, at) * frame.scale
+    symbol = _nearest_symbol(symbols, px, at, near)
+    return symbol or piece or _hole_around(drawn, at)
 
 
 def nearest_piece(drawn: DrawnPart, at: Point, reach: float) -> Hit | None:
@@ -90,12 +90,15 @@ def _nearest_corner(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
     return Hit("corner", corner.id, corner.at)
 
 
-def _nearest_symbol(symbols: Sequence[Clickable], px: QPointF, at: Point) -> Hit | None:
+def _nearest_symbol(
+    symbols: Sequence[Clickable], px: QPointF, at: Point, within: float
+) -> Hit | None:
+    """The nearest symbol, if it is nearer than `within` [px]."""
     best: tuple[float, Hit] | None = None
     p = np.array([px.x(), px.y()])
     for symbol in symbols:
         far = min((_distance_to(line, p) for line in symbol.lines), default=math.inf)
-        if far <= LINE_PX - 2.0 and (best is None or far < best[0]):
+        if far <= LINE_PX - 2.0 and far < within and (best is None or far < best[0]):
             best = far, Hit(symbol.kind, symbol.id, at)
     return best[1] if best else None
 

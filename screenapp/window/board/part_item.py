@@ -21,8 +21,9 @@ SAGITTA_PX = 0.1
 def mixed(a: str, b: str, share: float) -> QColor:
     """Colour `a` with a `share` of colour `b` in it."""
     one, two = QColor(a), QColor(b)
-    parts = zip(one.getRgb()[:3], two.getRgb()[:3], strict=True)
-    return QColor(*(round(p + (q - p) * share) for p, q in parts))
+    pairs = ((one.red(), two.red()), (one.green(), two.green()), (one.blue(), two.blue()))
+    red, green, blue = (round(p + (q - p) * share) for p, q in pairs)
+    return QColor(red, green, blue)
 
 
 class _Paths:

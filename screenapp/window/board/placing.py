@@ -150,6 +150,6 @@ class Placing:
             self.popover.complain(f"{fault.cause}: {fault.mend}.")
 
     def _close(self) -> None:
+        self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)
         self.popover.hide()
         self._canvas.preview(None)
-        self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)

@@ -37,6 +37,7 @@ class Popover(QFrame):
 
     def __init__(self, parent: QWidget) -> None:
         super().__init__(parent)
+        self._host = parent
         self.setObjectName("popover")
         self.way: Way | None = None
         self.values: dict[str, float] = {}
@@ -173,6 +174,8 @@ class Popover(QFrame):
             self._grid.addWidget(label, i // 2, 2 * (i % 2))
             self._grid.addWidget(edit, i // 2, 2 * (i % 2) + 1)
             self._edits[field.name] = edit
+            label.show()
+            edit.show()  # at once, or it could not take the focus
             if field.name in self.values:
                 edit.setText(written(self.values[field.name], field.kind, self._units))
 
@@ -213,7 +216,7 @@ class Popover(QFrame):
 
     def _move_to(self, near: QPoint) -> None:
         self._resize()
-        host = self.parentWidget()
+        host = self._host
         x = near.x() + 28
         if x + self.width() > host.width() - 8:
             x = near.x() - 28 - self.width()

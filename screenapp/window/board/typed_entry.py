@@ -103,12 +103,11 @@ class EntryRow(QFrame):
 
     def close_row(self) -> None:
         """Hide the row and give the keyboard back to the canvas."""
-        had_focus = self.isAncestorOf(self._canvas.focusWidget() or self._canvas)
         self._typed = {}
         if self.isVisible():
-            self.hide()
-            if had_focus or self._canvas.focusWidget() is None:
+            if self.isAncestorOf(self.window().focusWidget() or self._canvas):
                 self._canvas.setFocus(Qt.FocusReason.OtherFocusReason)
+            self.hide()
 
     def forget(self) -> None:
         """What was typed is used up; the fields show live values again."""
@@ -173,6 +172,8 @@ class EntryRow(QFrame):
             self._row.addWidget(label)
             self._row.addWidget(edit)
             self._edits[field.name] = edit
+            label.show()
+            edit.show()  # at once, or it could not take the focus
         self._style()
         self._show_live()
         self.adjustSize()

@@ -146,13 +146,13 @@ class LinesTool(DrawTool):
         part = self.canvas.document.part
         points, throughs = list(self.draft.points), [*self.draft.throughs, through]
         if part.outline is None:
-            name, draw = "draw the outline", edits.set_outline
+            done = self.apply("draw the outline", lambda: edits.set_outline(part, points, throughs))
         elif all(self.canvas.drawn.inside(p) for p in points):
-            name, draw = "draw a hole", edits.add_loop_hole
+            done = self.apply("draw a hole", lambda: edits.add_loop_hole(part, points, throughs))
         else:
             self.say(OUTSIDE)
             return
-        if self.apply(name, lambda: draw(part, points, throughs)):
+        if done:
             self.draft.clear()
             self.canvas.tool_wanted.emit("Select")
 

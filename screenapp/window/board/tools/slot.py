@@ -6,7 +6,7 @@ import math
 from typing import TYPE_CHECKING, ClassVar
 
 import numpy as np
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
@@ -124,16 +124,17 @@ class SlotTool(DrawTool):
             sketch.segment(painter, frame, self.ends[0], at, dashed=True)
             sketch.measure(painter, frame, self.ends[0], at, units)
         if len(self.ends) == 2:
-            sketch.segment(painter, frame, *self.ends, dashed=True)
+            one, two = self.ends
+            sketch.segment(painter, frame, one, two, dashed=True)
             if (width := self.width) is not None:
-                rim = slot_rim(*self.ends, width)
+                rim = slot_rim(one, two, width)
                 painter.setPen(sketch.line_pen())
                 painter.setBrush(Qt.BrushStyle.NoBrush)
                 pixels = frame.pxs(rim)
                 painter.drawPolygon(polygon(pixels))
                 text = f"{written(width, 'length', units)} wide"
                 top = pixels[int(np.argmin(pixels[:, 1]))]
-                sketch.label(painter, text, polygon([top - (0.0, 14.0)])[0])
+                sketch.label(painter, text, QPointF(float(top[0]), float(top[1]) - 14.0))
         for end in self.ends:
             sketch.dot(painter, frame, end)
         if self.typed and len(self.ends) < 2 and at is not None:
