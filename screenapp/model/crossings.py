@@ -129,10 +129,11 @@ def _meeting_points(
     t_a, t_b = table.nearest(a, points), table.nearest(b, points)
     u, v = table.tangents(a, t_a), table.tangents(b, t_b)
     skew = np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]) > 1e-6
-    inner = np.ones(len(pair), dtype=bool)
+    inner = np.ones(len(pair), dtype=bool)  # away from corners; the joints of holes are smooth
+    plain = np.array([c.kind == "hole" for c in shape.curves])
     for which in (a, b):
         for end in (table.start[which], table.end[which]):
-            inner &= np.hypot(*(points - end).T) > touch
+            inner &= plain[which] | (np.hypot(*(points - end).T) > touch)
     near = closest_approaches(table, i, j)
     close = near.gap <= touch
     pair = np.concatenate([pair, near.pair[close]])
@@ -159,9 +160,7 @@ def _at_common_end(
         corner = table.end[first]
         u = table.tangents(first, np.ones(len(first)))
         v = table.tangents(second, np.zeros(len(first)))
-        turn = np.arctan2(
-            np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]), np.sum(u * v, axis=1)
-        )
+        turn = np.arctan2(np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]), np.sum(u * v, axis=1))
         curved = np.where(
             table.arc[first] | table.arc[second],
             np.minimum(
@@ -205,7 +204,9 @@ def _meeting_fault(
         mend = f"move hole {hole} or make it smaller, so that it stays clear of {other}"
         ids = (shape.hole_ids[a.loop] or a.feature, hole or b.feature)
         field = f"holes.{hole}"
-    return Fault(f"{names[0]} and {names[1]} {word} at ({x:.4g}, {y:.4g})", mend, field, ids, (x, y))
+    return Fault(
+        f"{names[0]} and {names[1]} {word} at ({x:.4g}, {y:.4g})", mend, field, ids, (x, y)
+    )
 
 
 def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[Fault]:
@@ -214,7 +215,7 @@ def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[
     if not holes:
         return []
     firsts = table.start[[shape.loops[n][0] for n in holes]]
-    faults = []
+    faults: list[Fault] = []
     inside = table.inside(0, firsts)
     for n, point, ok in zip(holes, firsts, inside, strict=True):
         if not ok and len(faults) < MOST:
@@ -237,7 +238,7 @@ def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fau
     low = np.minimum.reduceat(boxes[:, :2], starts, axis=0)
     high = np.maximum.reduceat(boxes[:, 2:], starts, axis=0)
     size = np.prod(high - low, axis=1)
-    faults = []
+    faults: list[Fault] = []
     order = sorted(holes, key=lambda n: -size[n])
     points = table.start[[shape.loops[n][0] for n in order]]
     for rank, outer in enumerate(order):

@@ -89,7 +89,7 @@ class CurveTable:
             [np.cos(angle), np.sin(angle)], axis=-1
         )
         straight = self.start[which] * (1.0 - t[:, None]) + self.end[which] * t[:, None]
-        return np.where(self.arc[which, None], round_, straight)
+        return np.asarray(np.where(self.arc[which, None], round_, straight))
 
     def tangents(self, which: Ints, t: Floats) -> Floats:
         """Unit tangents of the picked curves at parameters `t`, (k, 2)."""
@@ -99,7 +99,7 @@ class CurveTable:
         )
         d = self.end[which] - self.start[which]
         straight = d / np.maximum(np.hypot(*d.T), 1e-300)[:, None]
-        return np.where(self.arc[which, None], round_, straight)
+        return np.asarray(np.where(self.arc[which, None], round_, straight))
 
     def nearest(self, which: Ints, points: Floats) -> Floats:
         """Parameters in [0, 1] of the points of the picked curves that lie nearest, (k,)."""
@@ -111,7 +111,7 @@ class CurveTable:
         span = np.abs(self.sweep[which])
         nearer_end = np.where(turned - span < TWO_PI - turned, 1.0, 0.0)
         round_ = np.where(turned <= span, turned / span, nearer_end)
-        return np.where(self.arc[which], round_, straight)
+        return np.asarray(np.where(self.arc[which], round_, straight))
 
     def inside(self, loop: int, points: Floats) -> Bools:
         """Which points lie inside a loop, whichever way it runs, (k,).

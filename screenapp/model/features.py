@@ -90,6 +90,19 @@ def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:
             yield f"holes.{hole.id}", hole.id, hole.loop
 
 
+Places = dict[str, Found]
+"""Corners, edges and holes of a part by id."""
+
+
+def places_of(part: Part) -> Places:
+    """Corners, edges and holes of a part by id; of two with one id the first."""
+    places: Places = {}
+    for found in everything(part):
+        if found.kind in ("corner", "edge", "hole"):
+            places.setdefault(found.record.id, found)
+    return places
+
+
 def find(part: Part, id_: str) -> Found | None:
     """What `id_` stands for in the part, None if nothing bears it."""
     return next((found for found in everything(part) if found.record.id == id_), None)

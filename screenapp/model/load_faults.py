@@ -6,6 +6,7 @@ import math
 from collections.abc import Iterator
 
 from screenapp.model.errors import Fault
+from screenapp.model.features import Places
 from screenapp.model.part import (
     BearingLoad,
     Case,
@@ -21,7 +22,7 @@ from screenapp.model.part import (
     ShearLoad,
 )
 from screenapp.model.shape import Shape
-from screenapp.model.support_faults import Places, place_fault
+from screenapp.model.support_faults import place_fault
 
 LARGEST = 1e15
 """No component of a load may be larger [N, N/mm, MPa or m/s²]."""
@@ -70,7 +71,7 @@ def load_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fau
                     (case.id,),
                 )
             continue
-        yield from _case_faults(part, case, places, shape)
+        yield from one_load_faults(part, case, places, shape)
         if not pushed and all(not any(components(load).values()) for load in case.loads):
             yield Fault(
                 f"all loads of case “{case.name}” are zero",
@@ -89,7 +90,8 @@ def components(load: Load) -> dict[str, float]:
     return {"x": load.x, "y": load.y}
 
 
-def _case_faults(part: Part, case: Case, places: Places, shape: Shape | None) -> Iterator[Fault]:
+def one_load_faults(part: Part, case: Case, places: Places, shape: Shape | None) -> Iterator[Fault]:
+    """What is wrong with the loads of one case, one by one."""
     for load in case.loads:
         where = f"cases.{case.id}.loads.{load.id}"
         name = f"{WORDS.get(type(load), 'load')} {load.id}"
@@ -136,9 +138,7 @@ def _place_faults(
         return
     fault = place_fault(part, name, load.on, f"{where}.on", places, shape)
     if fault is not None:
-        yield Fault(
-            fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at
-        )
+        yield Fault(fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at)
         return
     assert found is not None
     if isinstance(load, BearingLoad) and not isinstance(found.record, CircleHole):

@@ -60,7 +60,9 @@ def size_faults(part: Part) -> list[Fault]:
             faults += length_fault(h.length, f"the length of slot {h.id}", h, "length")
             faults += length_fault(h.width, f"the width of slot {h.id}", h, "width")
             if not math.isfinite(h.angle):
-                faults.append(_not_a_number("the angle of slot " + h.id, h.id, f"holes.{h.id}.angle"))
+                faults.append(
+                    _not_a_number("the angle of slot " + h.id, h.id, f"holes.{h.id}.angle")
+                )
     return faults
 
 

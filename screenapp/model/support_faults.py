@@ -8,7 +8,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from screenapp.model.errors import Fault
-from screenapp.model.features import Found, edges_at, loops_of
+from screenapp.model.features import Places, edges_at, loops_of
 from screenapp.model.part import (
     Corner,
     Part,
@@ -20,15 +20,12 @@ from screenapp.model.part import (
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
 
-Places = dict[str, Found]
-"""Corners, edges and holes of the part by id."""
-
 
 def support_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fault]:
     """Supports that are wrong one by one, then those that contradict one another."""
     sound = True
     for support in part.supports:
-        for fault in _one_support(part, support, places, shape):
+        for fault in one_support_faults(part, support, places, shape):
             sound = sound and not fault.blocks
             yield fault
     if sound and shape is not None:
@@ -61,8 +58,12 @@ def place_fault(
     record = found.record
     if isinstance(record, Corner) and record.round != 0.0:
         around = next(
-            (e for _, hole, loop in loops_of(part) if hole == found.owner
-             if (e := edges_at(loop, on)) is not None),
+            (
+                e
+                for _, hole, loop in loops_of(part)
+                if hole == found.owner
+                if (e := edges_at(loop, on)) is not None
+            ),
             None,
         )
         edges = f"use edge {around[0].id} or {around[1].id}" if around else "use an edge"
@@ -83,9 +84,10 @@ def place_fault(
     return None
 
 
-def _one_support(
+def one_support_faults(
     part: Part, support: Support, places: Places, shape: Shape | None
 ) -> Iterator[Fault]:
+    """What is wrong with one support by itself."""
     where, ids = f"supports.{support.id}", (support.id,)
     name = f"support {support.id}"
     fault = place_fault(part, name, support.on, f"{where}.on", places, shape)
@@ -195,9 +197,7 @@ def _free_faults(part: Part, shape: Shape) -> Iterator[Fault]:
                 blocks=False,
             )
         else:
-            yield Fault(
-                f"nothing stops the part from {motion}", _mend(motion), "supports", ids, at
-            )
+            yield Fault(f"nothing stops the part from {motion}", _mend(motion), "supports", ids, at)
 
 
 def _mend(motion: FreeMotion) -> str:

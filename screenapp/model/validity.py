@@ -9,15 +9,16 @@ from __future__ import annotations
 from screenapp.model.cautions import cautions_of
 from screenapp.model.crossings import boundary_faults
 from screenapp.model.errors import Fault, InvalidPartError
-from screenapp.model.features import everything
+from screenapp.model.features import places_of
 from screenapp.model.load_faults import load_faults
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape, shape_of
 from screenapp.model.size_faults import id_faults, size_faults
-from screenapp.model.support_faults import Places, support_faults
+from screenapp.model.support_faults import support_faults
 from screenapp.model.value_faults import (
     dimension_faults,
     limit_faults,
+    limit_material_faults,
     material_faults,
     mesh_faults,
     probe_faults,
@@ -53,13 +54,15 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
     faults = id_faults(part)
     shape, shape_faults = _sound_shape(part)
     faults += shape_faults
+    places = places_of(part)
     faults += [
         *wall_faults(part),
         *material_faults(part),
         *dimension_faults(part),
-        *support_faults(part, _places(part), shape),
-        *load_faults(part, _places(part), shape),
+        *support_faults(part, places, shape),
+        *load_faults(part, places, shape),
         *limit_faults(part),
+        *limit_material_faults(part),
         *mesh_faults(part.mesh),
         *probe_faults(part),
     ]
@@ -80,12 +83,3 @@ def _sound_shape(part: Part) -> tuple[Shape | None, list[Fault]]:
         return None, list(error.faults)
     faults = boundary_faults(shape)
     return (None if faults else shape), faults
-
-
-def _places(part: Part) -> Places:
-    """Corners, edges and holes by id."""
-    places: Places = {}
-    for found in everything(part):
-        if found.kind in ("corner", "edge", "hole"):
-            places.setdefault(found.record.id, found)
-    return places

@@ -41,7 +41,9 @@ def wall_faults(part: Part) -> Iterator[Fault]:
     yield from one_of(part.display_units, DisplayUnits, "the display unit", "display_units")
     if not (math.isfinite(wall.thickness) and SMALLEST <= wall.thickness <= FARTHEST):
         yield Fault(
-            f"the wall is {wall.thickness:g} mm thick", "give a thickness above zero", "wall.thickness"
+            f"the wall is {wall.thickness:g} mm thick",
+            "give a thickness above zero",
+            "wall.thickness",
         )
     yield from one_of(wall.state, WallState, "the state of the wall", "wall.state")
     if not wall.material:
@@ -61,7 +63,9 @@ def material_faults(part: Part) -> Iterator[Fault]:
     for m in part.materials:
         if m.name in seen:
             yield Fault(
-                f"two materials are called “{m.name}”", "rename or remove one", f"materials.{m.name}"
+                f"two materials are called “{m.name}”",
+                "rename or remove one",
+                f"materials.{m.name}",
             )
         seen.add(m.name)
         yield from _properties(m)
@@ -126,7 +130,7 @@ def limit_faults(part: Part) -> Iterator[Fault]:
     for limit in part.limits:
         where = f"limits.{limit.id}"
         if isinstance(limit, StressLimit):
-            yield from _stress_limit_faults(part, limit, where)
+            yield from _stress_limit_faults(limit, where)
         elif isinstance(limit, DisplacementLimit) and not positive(limit.most):
             yield Fault(
                 f"the displacement limit {limit.id} is {limit.most:g} mm",
@@ -136,7 +140,7 @@ def limit_faults(part: Part) -> Iterator[Fault]:
             )
 
 
-def _stress_limit_faults(part: Part, limit: StressLimit, where: str) -> Iterator[Fault]:
+def _stress_limit_faults(limit: StressLimit, where: str) -> Iterator[Fault]:
     if not positive(limit.factor):
         yield Fault(
             f"the factor of limit {limit.id} is {limit.factor:g}",
@@ -158,14 +162,21 @@ def _stress_limit_faults(part: Part, limit: StressLimit, where: str) -> Iterator
             f"{where}.against",
             (limit.id,),
         )
-    elif part.material is not None and getattr(part.material, limit.against) is None:
-        words = limit.against.replace("_", " ")
-        yield Fault(
-            f"limit {limit.id} asks for the {words}, which “{part.material.name}” has not",
-            f"give the material a {words}, or change the limit",
-            f"{where}.against",
-            (limit.id,),
-        )
+
+
+def limit_material_faults(part: Part) -> Iterator[Fault]:
+    """Limits that need a stress which the wall's material has not."""
+    for limit in part.limits:
+        if not isinstance(limit, StressLimit) or part.material is None:
+            continue
+        if getattr(part.material, limit.against, 0.0) is None:
+            words = limit.against.replace("_", " ")
+            yield Fault(
+                f"limit {limit.id} asks for the {words}, which “{part.material.name}” has not",
+                f"give the material a {words}, or change the limit",
+                f"limits.{limit.id}.against",
+                (limit.id,),
+            )
 
 
 def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:

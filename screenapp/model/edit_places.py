@@ -1,0 +1,50 @@
+"""Taking away an outline or a hole, and with it what stood on it."""
+
+from __future__ import annotations
+
+from collections.abc import Collection
+from dataclasses import replace
+
+from screenapp.model.edit_rules import Outcome, must_find
+from screenapp.model.part import GravityLoad, LoopHole, Part
+
+
+def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
+    """Remove the supports and loads that are on any of the places (not the places themselves)."""
+    lost: list[str] = []
+    supports = []
+    for support in part.supports:
+        if support.on in places:
+            lost.append(f"support {support.id} on {support.on}")
+        else:
+            supports.append(support)
+    cases = []
+    for case in part.cases:
+        gone = [x for x in case.loads if not isinstance(x, GravityLoad) and x.on in places]
+        lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in gone]
+        loads = tuple(x for x in case.loads if x not in gone)
+        cases.append(replace(case, loads=loads) if gone else case)
+    if not lost:
+        return Outcome(part)
+    return Outcome(replace(part, supports=tuple(supports), cases=tuple(cases)), tuple(lost))
+
+
+def remove_outline(part: Part) -> Outcome:
+    """Take the outline away with the supports and loads on it; holes stay."""
+    if part.outline is None:
+        return Outcome(part)
+    outline = part.outline
+    places = {c.id for c in outline.corners} | {e.id for e in outline.edges}
+    bare = drop_from_places(part, places)
+    return Outcome(replace(bare.part, outline=None), bare.lost)
+
+
+def remove_hole(part: Part, hole: str) -> Outcome:
+    """Take a hole away with the supports and loads on it."""
+    record = must_find(part, hole, "hole").record
+    places = {hole}
+    if isinstance(record, LoopHole):
+        places |= {c.id for c in record.loop.corners} | {e.id for e in record.loop.edges}
+    bare = drop_from_places(part, places)
+    holes = tuple(h for h in part.holes if h.id != hole)
+    return Outcome(replace(bare.part, holes=holes), bare.lost)

@@ -1,0 +1,64 @@
+"""Removing anything that bears an id."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from screenapp.model.edit_loops import remove_corner
+from screenapp.model.edit_places import remove_hole, remove_outline
+from screenapp.model.edit_rules import EditError, Outcome, must_find, without_stale_formulas
+from screenapp.model.features import find, loops_of
+from screenapp.model.part import Part
+
+
+def remove(part: Part, *ids: str) -> Outcome:
+    """Remove everything named: corners, holes, supports, loads, cases, limits, probes.
+
+    Of several ids those that go with another one are passed over.  A loop of which so many
+    corners are named that nothing would be left goes as a whole.
+
+    Raises:
+        EditError: an id that nothing bears, or an edge (its corners are what can be removed).
+    """
+    for id_ in ids:
+        if must_find(part, id_).kind == "edge":
+            raise EditError(
+                f"edge {id_} cannot be removed by itself", "remove one of the corners at its ends"
+            )
+    now = part
+    lost: list[str] = []
+    for where, owner, loop in loops_of(part):
+        named = [c.id for c in loop.corners if c.id in ids]
+        if named and len(loop.corners) - len(named) < 2:
+            outcome = remove_hole(now, owner) if where != "outline" else remove_outline(now)
+            now, lost = outcome.part, [*lost, *outcome.lost]
+    for id_ in ids:
+        if find(now, id_) is not None:
+            outcome = _remove_one(now, id_)
+            now, lost = outcome.part, [*lost, *outcome.lost]
+    asked = {word for word in lost if any(word.split()[1] == id_ for id_ in ids)}
+    return Outcome(
+        without_stale_formulas(part, now), tuple(word for word in lost if word not in asked)
+    )
+
+
+def _remove_one(part: Part, id_: str) -> Outcome:
+    kind = must_find(part, id_).kind
+    if kind == "corner":
+        return remove_corner(part, id_)
+    if kind == "hole":
+        return remove_hole(part, id_)
+    if kind == "support":
+        return Outcome(replace(part, supports=tuple(s for s in part.supports if s.id != id_)))
+    if kind == "limit":
+        return Outcome(replace(part, limits=tuple(g for g in part.limits if g.id != id_)))
+    if kind == "probe":
+        return Outcome(replace(part, readings=tuple(p for p in part.readings if p.id != id_)))
+    if kind == "load":
+        cases = tuple(
+            replace(c, loads=tuple(x for x in c.loads if x.id != id_)) for c in part.cases
+        )
+        return Outcome(replace(part, cases=cases))
+    gone = next(c for c in part.cases if c.id == id_)
+    lost = tuple(f"load {x.id} of case “{gone.name}”" for x in gone.loads)
+    return Outcome(replace(part, cases=tuple(c for c in part.cases if c.id != id_)), lost)

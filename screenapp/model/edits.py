@@ -1,0 +1,106 @@
+"""All edits of a part in one place: pure functions from a part to the next part.
+
+Every edit keeps the ids of what stays, gives new things fresh ids, drops the formula of a number
+that it changes, and refuses nonsense with an EditError (cause and mend) instead of returning a
+broken record.  Edits that may take more away than was asked return an `Outcome` that says what
+was lost; all others return the part.
+
+A part that an edit returns may still have faults (a hole half outside, a round too big): these are
+for `validity.faults_of` to tell, since they come and go while something is dragged.
+"""
+
+from screenapp.model.edit_holding import (
+    add_case,
+    add_load,
+    add_support,
+    rename_case,
+    replace_load,
+    replace_support,
+)
+from screenapp.model.edit_holes import (
+    add_circle_hole,
+    add_loop_hole,
+    add_slot_hole,
+    hole_centre,
+    move,
+    move_hole,
+    resize_hole,
+)
+from screenapp.model.edit_loops import (
+    insert_corner,
+    move_corner,
+    outline_from_rectangle,
+    rectangle_corners,
+    remove_corner,
+    set_edge_arc,
+    set_outline,
+    set_round,
+    straighten,
+)
+from screenapp.model.edit_places import remove_hole, remove_outline
+from screenapp.model.edit_removal import remove
+from screenapp.model.edit_rules import EditError, Outcome, new_id, new_ids
+from screenapp.model.edit_settings import (
+    add_limit,
+    add_probe,
+    move_probe,
+    rename_probe,
+    replace_limit,
+    set_material,
+    set_mesh,
+    set_mesh_size,
+    set_notes,
+    set_thickness,
+    set_title,
+    set_units,
+    set_wall_state,
+)
+from screenapp.model.features import Found, find, place_name
+
+__all__ = [
+    "EditError",
+    "Found",
+    "Outcome",
+    "add_case",
+    "add_circle_hole",
+    "add_limit",
+    "add_load",
+    "add_loop_hole",
+    "add_probe",
+    "add_slot_hole",
+    "add_support",
+    "find",
+    "hole_centre",
+    "insert_corner",
+    "move",
+    "move_corner",
+    "move_hole",
+    "move_probe",
+    "new_id",
+    "new_ids",
+    "outline_from_rectangle",
+    "place_name",
+    "rectangle_corners",
+    "remove",
+    "remove_corner",
+    "remove_hole",
+    "remove_outline",
+    "rename_case",
+    "rename_probe",
+    "replace_limit",
+    "replace_load",
+    "replace_support",
+    "resize_hole",
+    "set_edge_arc",
+    "set_material",
+    "set_mesh",
+    "set_mesh_size",
+    "set_notes",
+    "set_outline",
+    "set_round",
+    "set_thickness",
+    "set_title",
+    "set_units",
+    "set_wall_state",
+    "straighten",
+]
