@@ -6,7 +6,7 @@ from dataclasses import replace
 
 import pyqtgraph as pg
 from PySide6.QtCore import QEvent, QPointF, QRectF, Qt, Signal
-from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QPainter, QResizeEvent, QWheelEvent
+from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
 from PySide6.QtWidgets import QFrame, QWidget
 
 from screenapp.model.part import Part, Point
@@ -18,8 +18,8 @@ from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem
 from screenapp.window.board.placing import Placing
-from screenapp.window.board.screen_item import Z_PREVIEW, ScreenItem
-from screenapp.window.board.snapping import Snap, draw_snap, snap
+from screenapp.window.board.preview_item import PreviewItem
+from screenapp.window.board.snapping import Snap, snap
 from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryRow
@@ -33,24 +33,6 @@ FINEST, COARSEST = 1e-2, 1e4
 
 HOLD_OFF = Qt.KeyboardModifier.ControlModifier
 """Held down, nothing snaps."""
-
-
-class PreviewItem(ScreenItem):
-    """What the tool in hand is about to do, and the sign of the snap in force."""
-
-    def __init__(self, canvas: Canvas) -> None:
-        super().__init__(Z_PREVIEW)
-        self._canvas = canvas
-
-    def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Let the tool paint."""
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        tool, place = self._canvas.tool, self._canvas.place
-        if tool is None:
-            return
-        tool.paint(painter, frame)
-        if place is not None and tool.snapping:
-            draw_snap(painter, frame, place.snap)
 
 
 class Canvas(pg.GraphicsView):  # type: ignore[misc]

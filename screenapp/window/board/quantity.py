@@ -17,6 +17,7 @@ def parse(text: str, kind: KindName, units: DisplayUnits) -> float:
 
 
 def written(value: float, kind: KindName, units: DisplayUnits) -> str:
-    """A stored value as text that tells it exactly where that takes few figures."""
-    shown = format_quantity(value, kind, units, digits=7)
-    return shown if len(shown) <= 12 else format_quantity(value, kind, units, digits=5)
+    """A stored value as text: with all its figures where they are few, else with four."""
+    full = format_quantity(value, kind, units, digits=8)
+    short = format_quantity(value, kind, units)
+    return full if len(full) <= len(short) + 3 else short

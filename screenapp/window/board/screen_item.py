@@ -33,7 +33,6 @@ class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
 
     def __init__(self, z: int) -> None:
         super().__init__()
-        self._rect = QRectF()
         self.setZValue(z)
         self.setAcceptedMouseButtons(pg.QtCore.Qt.MouseButton.NoButton)
 
@@ -42,11 +41,9 @@ class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
         raise NotImplementedError
 
     def boundingRect(self) -> QRectF:
-        """The whole view [mm]."""
-        if self._rect.isNull():
-            rect = self.viewRect()
-            self._rect = QRectF() if rect is None else QRectF(rect)
-        return self._rect
+        """The whole view [mm]; read afresh, for the view tells of changes before it is settled."""
+        view = self.getViewBox()
+        return QRectF() if view is None else QRectF(self.mapRectFromItem(view, view.rect()))
 
     def viewRangeChanged(self, *_args: object) -> None:
         """Cover the view again after a pan, zoom or resize."""
@@ -74,5 +71,4 @@ class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
 
     def _forget(self) -> None:
         self.prepareGeometryChange()
-        self._rect = QRectF()
         self.update()

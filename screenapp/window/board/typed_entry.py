@@ -163,7 +163,7 @@ class EntryRow(QFrame):
         for field in fields:
             label = QLabel(field.label)
             edit = QLineEdit()
-            edit.setFixedWidth(84)
+            edit.setFixedWidth(92)
             edit.setAccessibleName(field.label)
             edit.setToolTip(f"{field.label}: type a value with or without a unit, Enter accepts")
             edit.textEdited.connect(lambda _text, name=field.name: self._edited(name))
@@ -275,6 +275,7 @@ class EntryRow(QFrame):
             text = written(live[field.name], field.kind, units)
             if edit.text() != text:
                 edit.setText(text)
+                edit.setCursorPosition(0)
                 if edit.hasFocus():
                     edit.selectAll()
 

@@ -4,8 +4,9 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from screenapp.window.board.tools.arc import ArcTool
 from screenapp.window.board.tools.base import Tool
-from screenapp.window.board.tools.chain import ArcTool, Draft, LinesTool
+from screenapp.window.board.tools.chain import Draft, LinesTool
 from screenapp.window.board.tools.circle import CircleTool
 from screenapp.window.board.tools.fillet import FilletTool
 from screenapp.window.board.tools.place import HoldTool, LoadTool
