@@ -50,7 +50,7 @@ class PointReader:
         self._hooke = constitutive_matrix(material, part.wall.state)
         self._poisson = material.poissons_ratio if part.wall.state == "plane strain" else 0.0
         self._shape, self._mesh, self._solution, self._stress = shape, mesh, solution, stress
-        self._locator = PointLocator(mesh)
+        self.locator = PointLocator(mesh)
         self._chains = boundary_chains(shape, mesh)
         rim, self._rim_nodal = rim_nodal(mesh, stress.nodal, stress.side)
         self._rim_row = np.full(mesh.n_elements, -1, dtype=np.int64)
@@ -70,7 +70,7 @@ class PointReader:
             (n_cases, n, 3) and (n_cases, n, 2), NaN off the part.
         """
         points = np.asarray(points, dtype=float).reshape(-1, 2)
-        element, local = self._locator.locate(points)
+        element, local = self.locator.locate(points)
         side, place = self._on_boundary(points, element)
         n_cases = len(self._stress.nodal)
         stress = np.full((n_cases, len(points), 3), np.nan)
@@ -92,7 +92,7 @@ class PointReader:
     def raw(self, points: ArrayLike) -> Floats:
         """Stress [MPa] straight from the element's own strains, (n_cases, n, 3), for comparison."""
         points = np.asarray(points, dtype=float).reshape(-1, 2)
-        element, local = self._locator.locate(points)
+        element, local = self.locator.locate(points)
         stress = np.full((len(self._solution.displacements), len(points), 3), np.nan)
         hit = np.flatnonzero(element >= 0)
         strains = strains_at(self._mesh, self._solution, element[hit], local[hit])
@@ -106,7 +106,7 @@ class PointReader:
         the mesh's own side.
         """
         points = np.asarray(points, dtype=float).reshape(-1, 2)
-        element, _ = self._locator.locate(points)
+        element, _ = self.locator.locate(points)
         return self._on_boundary(points, element)
 
     def _on_boundary(self, points: Floats, element: Ints) -> tuple[Ints, Floats]:

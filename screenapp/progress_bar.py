@@ -1,0 +1,42 @@
+"""Progress on standard error: a bar when it is a terminal, nothing otherwise."""
+
+from __future__ import annotations
+
+import sys
+from types import TracebackType
+from typing import Self, TextIO
+
+from screenapp.model.progress import Step
+
+_WIDTH = 24
+
+
+class ProgressBar:
+    """Shows the stage and the pass on one line and wipes it at the end."""
+
+    def __init__(self, title: str, stream: TextIO | None = None) -> None:
+        self._title = title
+        self._stream = sys.stderr if stream is None else stream
+        self._shown = self._stream.isatty()
+
+    def show(self, step: Step) -> None:
+        """Draw a step."""
+        if self._shown:
+            full = round(_WIDTH * min(max(step.done, 0.0), 1.0))
+            bar = "█" * full + "·" * (_WIDTH - full)
+            text = f"{self._title} {bar} pass {step.number}, {step.stage}"
+            self._stream.write(f"\r\x1b[K{text}")
+            self._stream.flush()
+
+    def __enter__(self) -> Self:
+        return self
+
+    def __exit__(
+        self,
+        kind: type[BaseException] | None,
+        error: BaseException | None,
+        trace: TracebackType | None,
+    ) -> None:
+        if self._shown:
+            self._stream.write("\r\x1b[K")
+            self._stream.flush()

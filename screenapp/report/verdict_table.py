@@ -1,0 +1,69 @@
+"""The verdict of one part as plain text for a terminal."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from screenapp.model.findings import Findings
+from screenapp.model.part import Part
+from screenapp.report.estimate_words import estimate_words
+
+
+def verdict_table(part: Part, findings: Findings) -> str:
+    """Title, verdict, limits, peaks, readings and the mesh, a line each."""
+    cases = {case.case: case.name for case in findings.cases}
+    lines = [part.title, findings.headline]
+    lines += [f"  {reason}" for reason in findings.reasons if reason not in findings.headline]
+    rows = [("limit", "case", "use", "trust", "verdict", "where")]
+    rows += [
+        (
+            limit.name,
+            cases.get(limit.case, limit.case),
+            estimate_words(limit.utilisation, ""),
+            limit.utilisation.trust,
+            limit.verdict,
+            limit.place,
+        )
+        for limit in findings.limits
+    ]
+    lines += ["", *_columns(rows)]
+    peaks = [("von Mises peak", "case", "value", "trust")]
+    for case in findings.cases:
+        peaks += [
+            (p.place, case.name, estimate_words(p.estimate, "MPa"), p.estimate.trust)
+            for p in case.peaks
+            if p.quantity == "von_mises"
+        ]
+    lines += ["", *_columns(peaks)]
+    if findings.readings:
+        read = [("reading", "case", "von Mises", "trust", "where")]
+        read += [
+            (
+                r.name,
+                cases.get(r.case, r.case),
+                estimate_words(r.values["von_mises"], "MPa"),
+                r.trust,
+                r.place,
+            )
+            for r in findings.readings
+        ]
+        lines += ["", *_columns(read)]
+    mesh = findings.mesh
+    balance = max(max(c.balance.force, c.balance.moment) for c in findings.cases)
+    lines += [
+        "",
+        f"mass {findings.mass_kg:.4g} kg; {len(mesh.passes)} passes, {mesh.elements} elements, "
+        f"{mesh.unknowns} unknowns; energy error {100 * mesh.error_estimate:.2g} %; loads and "
+        f"reactions balance to {balance:.0e}; {findings.timing['total']:.2f} s",
+    ]
+    lines += [f"caution: {caution}" for caution in findings.cautions]
+    return "\n".join(lines)
+
+
+def _columns(rows: Sequence[Sequence[str]]) -> list[str]:
+    """Rows with their columns lined up."""
+    widths = [max(len(row[i]) for row in rows) for i in range(len(rows[0]))]
+    return [
+        "  " + "  ".join(f"{cell:<{w}}" for cell, w in zip(row, widths, strict=True)).rstrip()
+        for row in rows
+    ]

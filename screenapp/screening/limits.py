@@ -1,0 +1,154 @@
+"""Limits judged: how much of each is used, with its band, and the verdict over all of them.
+
+*Holds* is said only when every number that the limit rests on is settled and its whole band is
+under 1; *does not hold* only when a settled number's whole band is over 1.  Everything else is
+*undecided*, with the reason.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
+from screenapp.model.part import DisplacementLimit, Material, Part, StressLimit
+
+
+def allowable(limit: StressLimit, material: Material) -> float | None:
+    """The stress [MPa] that the limit allows; None if the material does not have it."""
+    base = getattr(material, limit.against)
+    return None if base is None else float(base) / limit.factor
+
+
+def limit_name(limit: StressLimit | DisplacementLimit) -> str:
+    """The limit in a few words."""
+    if isinstance(limit, DisplacementLimit):
+        return f"displacement under {limit.most:g} mm"
+    what = "von Mises" if limit.measure == "von_mises" else "largest principal"
+    against = "proof stress" if limit.against == "proof_stress" else "strength"
+    return f"{what} under {against} with {limit.factor:g} in hand"
+
+
+def judge_limits(part: Part, cases: Sequence[CaseFindings]) -> tuple[LimitFindings, ...]:
+    """Every limit in every case."""
+    found: list[LimitFindings] = []
+    for limit in part.limits:
+        for case in cases:
+            if isinstance(limit, StressLimit):
+                found.append(_stress(limit, part, case))
+            else:
+                found.append(_displacement(limit, case))
+    return tuple(found)
+
+
+def _stress(limit: StressLimit, part: Part, case: CaseFindings) -> LimitFindings:
+    name = limit_name(limit)
+    material = part.material
+    allowed = allowable(limit, material) if material else None
+    peaks = [p for p in case.peaks if p.quantity == limit.measure]
+    if allowed is None or not peaks:
+        why = "the material has no such stress" if allowed is None else "the part is not stressed"
+        trust: Estimate = Estimate(0.0, 0.0, 0.0, "settled" if allowed is not None else "unsettled")
+        verdict: Verdict = "holds" if allowed is not None else "undecided"
+        return LimitFindings(limit.id, name, case.case, trust, verdict, (0.0, 0.0), "", why)
+    over = [p for p in peaks if p.estimate.trust == "settled" and p.estimate.low > allowed]
+    open_ = [
+        p
+        for p in peaks
+        if p.estimate.trust == "rising"
+        or (p not in over and p.estimate.high >= allowed)
+        or (p.estimate.trust == "unsettled" and p.estimate.high >= allowed)
+    ]
+    unsettled_top = peaks[0].estimate.trust != "settled"
+    if over:
+        governing = max(over, key=lambda p: p.estimate.value)
+        verdict = "does not hold"
+        reason = (
+            f"{governing.place} uses {governing.estimate.value / allowed:.2f} of its allowable "
+            f"under “{case.name}”"
+        )
+    elif open_ or unsettled_top:
+        governing = _most_doubtful(open_ or peaks[:1])
+        verdict = "undecided"
+        reason = _why_undecided(governing, allowed, case.name)
+    else:
+        governing = peaks[0]
+        verdict = "holds"
+        reason = ""
+    return LimitFindings(
+        limit.id,
+        name,
+        case.case,
+        _scaled(governing.estimate, 1.0 / allowed),
+        verdict,
+        governing.at,
+        governing.place,
+        reason,
+    )
+
+
+def _most_doubtful(peaks: Sequence[Peak]) -> Peak:
+    """A rising peak first (it has no value at all), then the largest."""
+    return max(peaks, key=lambda p: (p.estimate.trust == "rising", p.estimate.value))
+
+
+def _why_undecided(peak: Peak, allowed: float, case: str) -> str:
+    if peak.estimate.trust == "rising":
+        return f"{peak.why}: {peak.mend}" if peak.mend else peak.why
+    if peak.estimate.trust == "unsettled":
+        return (
+            f"the stress at {peak.place} under “{case}” is not settled: {peak.why}"
+            if peak.why
+            else f"the stress at {peak.place} under “{case}” is not settled"
+        )
+    low, high = peak.estimate.low / allowed, peak.estimate.high / allowed
+    return (
+        f"{peak.place} uses between {low:.3f} and {high:.3f} of its allowable under “{case}”: "
+        "ask for a closer tolerance, or change the part"
+    )
+
+
+def _displacement(limit: DisplacementLimit, case: CaseFindings) -> LimitFindings:
+    moved = case.displacement_max
+    used = _scaled(moved, 1.0 / limit.most)
+    x, y = case.displacement_at
+    place = f"({x:.4g}, {y:.4g}) mm"
+    if moved.trust == "settled" and moved.high < limit.most:
+        verdict: Verdict = "holds"
+        reason = ""
+    elif moved.trust == "settled" and moved.low > limit.most:
+        verdict = "does not hold"
+        reason = f"the part moves by {moved.value:.4g} mm at {place} under “{case.name}”"
+    else:
+        verdict = "undecided"
+        reason = f"the largest displacement under “{case.name}” is not settled enough to tell"
+    return LimitFindings(
+        limit.id, limit_name(limit), case.case, used, verdict, case.displacement_at, place, reason
+    )
+
+
+def _scaled(estimate: Estimate, factor: float) -> Estimate:
+    return Estimate(
+        estimate.value * factor, estimate.low * factor, estimate.high * factor, estimate.trust
+    )
+
+
+def overall(limits: Sequence[LimitFindings]) -> tuple[Verdict, str, tuple[str, ...]]:
+    """Verdict, headline and reasons over all limits and cases."""
+    if not limits:
+        return (
+            "undecided",
+            "Undecided: no limit is set",
+            ("no limit is set: add one in the Limits paragraph",),
+        )
+    failed = [f for f in limits if f.verdict == "does not hold"]
+    unsure = [f for f in limits if f.verdict == "undecided"]
+    if failed:
+        first = max(failed, key=lambda f: f.utilisation.value)
+        reasons = tuple(dict.fromkeys(f.reason for f in [first, *failed, *unsure]))
+        return "does not hold", "Does not hold", reasons
+    if unsure:
+        reasons = tuple(dict.fromkeys(f.reason for f in unsure))
+        return "undecided", f"Undecided: {reasons[0]}", reasons
+    used = max(f.utilisation.high for f in limits)
+    hand = f"{1.0 / used:.2f} in hand" if used > 1e-3 else "far from every limit"
+    return "holds", f"Holds, {hand}", ()

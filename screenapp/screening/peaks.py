@@ -1,0 +1,189 @@
+"""Separate maxima of a stress measure along every boundary and inside the part, on one mesh.
+
+A peak is a local maximum that stands out: it is at least `LEAST_SHARE` of the largest value of
+its case and falls by `PROMINENCE` of it before a higher one is reached.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy.signal import find_peaks
+
+from screenapp.model.curves import Arc
+from screenapp.model.findings import Fields
+from screenapp.model.part import Part, Point
+from screenapp.model.shape import BoundaryCurve, Shape
+from screenapp.model.solution import principal, von_mises
+
+Floats = NDArray[np.float64]
+
+LEAST_SHARE = 0.3
+PROMINENCE = 0.05
+MOST = 12
+
+_SAMPLES = np.array([0.0, 0.25, 0.5, 0.75])
+"""Where each side is sampled; the next side brings the end."""
+
+
+@dataclass(frozen=True)
+class RawPeak:
+    """A maximum as one mesh shows it.
+
+    Attributes:
+        value: of the measure [MPa].
+        at: place [mm].
+        piece: index of the boundary piece, -1 inside.
+        s: arc length along the loop [mm] (0 inside).
+        size: size of the element there [mm].
+    """
+
+    value: float
+    at: Point
+    piece: int
+    s: float
+    size: float
+
+
+def measure(name: str, stress: Floats, part: Part) -> Floats:
+    """A stress measure [MPa] of (..., 3) stresses: "von_mises", "sigma_1", or "sigma_2" turned
+    positive for compression."""
+    if name == "von_mises":
+        material = part.material
+        strain = part.wall.state == "plane strain" and material is not None
+        return von_mises(stress, material.poissons_ratio if strain and material else 0.0)
+    first, second, _ = principal(stress)
+    return first if name == "sigma_1" else -second
+
+
+def find(name: str, part: Part, shape: Shape, fields: Fields, case: int) -> list[RawPeak]:
+    """Peaks of one measure in one case, largest first, at most `MOST`."""
+    sizes = fields.mesh.element_sizes
+    found = _on_boundary(name, part, shape, fields, case, sizes)
+    found += _inside(name, part, fields, case, sizes)
+    found.sort(key=lambda peak: -peak.value)
+    if not found:
+        return []
+    least = LEAST_SHARE * found[0].value
+    return [peak for peak in found if peak.value >= least and peak.value > 0.0][:MOST]
+
+
+def side_stress(stress: Floats, t: Floats) -> Floats:
+    """Stress along sides: (n_sides, 3 places, 3) at local t in [0, 1] -> (n_sides, n_t, 3)."""
+    shape = np.stack([(1 - t) * (1 - 2 * t), 4 * t * (1 - t), t * (2 * t - 1)])
+    return np.einsum("pt,npc->ntc", shape, stress)
+
+
+def _on_boundary(
+    name: str, part: Part, shape: Shape, fields: Fields, case: int, sizes: Floats
+) -> list[RawPeak]:
+    mesh, stress = fields.mesh, fields.stress.side[case]
+    found: list[RawPeak] = []
+    loop_of = np.array([piece.loop for piece in shape.curves])[mesh.side_piece]
+    # both ends of a side count: at a sharp corner the two sides differ there
+    places = np.concatenate([_SAMPLES, [1.0]])
+    values = measure(name, side_stress(stress, places), part)
+    lengths = np.array([shape.curves[i].curve.length for i in mesh.side_piece])
+    lengths = lengths * (mesh.side_t[:, 1] - mesh.side_t[:, 0])
+    highest = float(values.max(initial=0.0))
+    if highest <= 0.0:
+        return []
+    for loop in range(len(shape.loops)):
+        sides = np.flatnonzero(loop_of == loop)
+        line = values[sides].ravel()
+        start = np.concatenate([[0.0], np.cumsum(lengths[sides])[:-1]])
+        s = (start[:, None] + places * lengths[sides][:, None]).ravel()
+        for k in _cyclic_peaks(line, PROMINENCE * highest):
+            side, place = sides[k // len(places)], places[k % len(places)]
+            piece = int(mesh.side_piece[side])
+            t0, t1 = mesh.side_t[side]
+            at = shape.curves[piece].curve.point(t0 + place * (t1 - t0))
+            found.append(
+                RawPeak(
+                    float(line[k]),
+                    (float(at[0]), float(at[1])),
+                    piece,
+                    float(s[k]),
+                    float(lengths[side]),
+                )
+            )
+    return found
+
+
+def _cyclic_peaks(line: Floats, prominence: float) -> list[int]:
+    """Indices of the prominent maxima of a closed line; a constant line has one."""
+    n = len(line)
+    if n == 0:
+        return []
+    if float(np.ptp(line)) <= prominence:
+        return [int(np.argmax(line))]
+    turned = np.roll(line, -int(np.argmin(line)))  # starts and ends at the lowest value
+    closed = np.concatenate([turned, turned[:1]])
+    peaks, _ = find_peaks(closed, prominence=prominence)
+    return sorted({int((k + np.argmin(line)) % n) for k in peaks})
+
+
+def _inside(name: str, part: Part, fields: Fields, case: int, sizes: Floats) -> list[RawPeak]:
+    """Nodes inside whose value no neighbour exceeds, away from the boundary's elements."""
+    mesh = fields.mesh
+    value = measure(name, fields.stress.nodal[case], part)
+    around = np.full(mesh.n_nodes, -np.inf)
+    np.maximum.at(around, mesh.quads, value[mesh.quads].max(axis=1, keepdims=True))
+    inner = np.ones(mesh.n_nodes, dtype=bool)
+    inner[mesh.quads[mesh.sides[:, 0]]] = False
+    inner[mesh.side_nodes] = False
+    top = np.flatnonzero(inner & (value >= around) & (value > 0.5 * value.max()))
+    size = np.zeros(mesh.n_nodes)
+    np.maximum.at(size, mesh.quads, np.broadcast_to(sizes[:, None], mesh.quads.shape))
+    return [
+        RawPeak(float(value[i]), (float(x), float(y)), -1, 0.0, float(size[i]))
+        for i in top
+        for x, y in [mesh.nodes[i]]
+    ]
+
+
+def feature_of(shape: Shape, piece: int) -> str:
+    """Id of the edge, fillet corner or hole that a boundary piece belongs to; "" inside."""
+    if piece < 0:
+        return ""
+    curve = shape.curves[piece]
+    hole = shape.hole_ids[curve.loop]
+    return hole if hole is not None and curve.kind == "hole" else curve.feature
+
+
+def place_in_words(shape: Shape, piece: int, at: Point) -> str:
+    """Where a point of the boundary lies, e.g. "hole h2, 344°", "fillet c3", "edge e5"."""
+    if piece < 0:
+        return f"inside, at ({at[0]:.4g}, {at[1]:.4g}) mm"
+    curve: BoundaryCurve = shape.curves[piece]
+    for corner, point in shape.sharp_corners:
+        if math.dist(point, at) < 1e-6 * shape.size:
+            return f"corner {corner}"
+    if curve.kind == "fillet":
+        return f"fillet {curve.feature}"
+    if curve.kind == "hole":
+        centre = _hole_centre(shape, curve.loop)
+        angle = math.degrees(math.atan2(at[1] - centre[1], at[0] - centre[0])) % 360.0
+        return f"hole {curve.feature}, {angle:.0f}°"
+    return f"edge {curve.feature}"
+
+
+def _hole_centre(shape: Shape, loop: int) -> Point:
+    first, last = shape.loops[loop]
+    centres = {c.curve.centre for c in shape.curves[first:last] if isinstance(c.curve, Arc)}
+    x, y = np.mean(list(centres), axis=0)
+    return float(x), float(y)
+
+
+def piece_at(shape: Shape, at: Point) -> int:
+    """Index of the boundary piece that a point lies on (within 1e-6 of the part's size), or -1."""
+    best, piece = 1e-6 * shape.size, -1
+    for i, candidate in enumerate(shape.curves):
+        nearest = candidate.curve.point(candidate.curve.nearest(at))
+        far = math.dist(nearest, at)
+        if far < best:
+            best, piece = far, i
+    return piece

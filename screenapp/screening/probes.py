@@ -1,0 +1,124 @@
+"""Probes read on every pass, so that a probe put later has its band without solving again."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Reading
+from screenapp.model.part import Part, Probe
+from screenapp.model.shape import Shape
+from screenapp.model.solution import principal
+from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.screening.passes import Pass, PointValues, passes_of
+from screenapp.screening.peaks import feature_of, measure, place_in_words, piece_at
+from screenapp.screening.spots import spot_at
+from screenapp.screening.trust import Sample, judge, worst
+
+Floats = NDArray[np.float64]
+
+_COMPONENT_SCALE = 0.2
+"""Stress components are judged against at least this share of the von Mises stress there: a
+component that happens to pass through zero has no relative accuracy of its own."""
+
+
+def read_probes(part: Part, shape: Shape, findings: Findings) -> Findings:
+    """The findings with the readings of the part's probes as they now are; nothing is solved."""
+    if not findings.fields:
+        return findings
+    passes = passes_of(part, shape, findings.fields)
+    return replace(findings, readings=readings(part, shape, passes))
+
+
+def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading, ...]:
+    """Every probe in every case, from all passes so far; probes outside the part are left out."""
+    if not part.readings:
+        return ()
+    points = np.array([probe.at for probe in part.readings])
+    read = [p.read(points) for p in passes]
+    spots = singular_spots(part, shape)
+    found: list[Reading] = []
+    for k, case in enumerate(part.cases):
+        largest = float(passes[-1].measure_max("von_mises", k))
+        for i, probe in enumerate(part.readings):
+            if np.isfinite(read[-1].stress[k, i]).all():
+                spot = spot_at(spots, probe.at, case.id, 1e-6 * shape.size)
+                found.append(_reading(part, shape, read, k, i, probe, case.id, spot, largest))
+    return tuple(found)
+
+
+def _reading(
+    part: Part,
+    shape: Shape,
+    read: Sequence[PointValues],
+    k: int,
+    i: int,
+    probe: Probe,
+    case: str,
+    spot: SingularSpot | None,
+    largest: float,
+) -> Reading:
+    tolerance = part.mesh.tolerance
+    rate = spot.rate if spot else 0.0
+    columns = [_quantities(part, values.stress[k, i], values.displacement[k, i]) for values in read]
+    von_mises = [column["von_mises"] for column in columns]
+    moved = max(float(np.hypot(*values.displacement[k, i])) for values in read)
+    values: dict[str, Estimate] = {}
+    for name in READING_QUANTITIES:
+        stress = not name.startswith("u_")
+        scale = max(
+            abs(columns[-1][name]),
+            _COMPONENT_SCALE * von_mises[-1] if stress else _COMPONENT_SCALE * moved,
+            0.01 * largest if stress else 0.0,
+        )
+        samples = [
+            Sample(abs(c[name]) if spot else c[name], float(v.size[i]), _doubt(v, k, i, stress))
+            for c, v in zip(columns, read, strict=True)
+        ]
+        estimate = judge(samples, tolerance, scale, rate if stress else 0.0)
+        values[name] = _signed(estimate, columns[-1][name]) if spot else estimate
+    trust = worst([estimate.trust for estimate in values.values()])
+    piece = piece_at(shape, probe.at)
+    why = ""
+    if trust == "rising":
+        why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
+    elif trust == "unsettled":
+        why = "screen the part again to settle this reading"
+    return Reading(
+        probe.id,
+        probe.name,
+        case,
+        probe.at,
+        values,
+        trust,
+        feature_of(shape, piece),
+        place_in_words(shape, piece, probe.at),
+        why,
+        tuple(von_mises),
+    )
+
+
+def _doubt(values: PointValues, k: int, i: int, stress: bool) -> float:
+    return float(values.doubt[k, i]) if stress else 0.0
+
+
+def _quantities(part: Part, stress: Floats, displacement: Floats) -> dict[str, float]:
+    first, second, _ = principal(stress)
+    numbers = (
+        *stress,
+        first,
+        second,
+        measure("von_mises", stress, part),
+        *displacement,
+    )
+    return dict(zip(READING_QUANTITIES, (float(n) for n in numbers), strict=True))
+
+
+def _signed(estimate: Estimate, value: float) -> Estimate:
+    """Give an estimate that was judged by its size the sign of the value back."""
+    if value >= 0.0:
+        return estimate
+    return Estimate(-estimate.value, -estimate.high, -estimate.low, estimate.trust)

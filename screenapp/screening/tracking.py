@@ -1,0 +1,126 @@
+"""Peaks followed back through the passes, so that each has a history, a band and a trust."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Sequence
+
+import numpy as np
+
+from screenapp.mechanics.singular_spots import SingularSpot
+from screenapp.model.findings import Estimate, Peak
+from screenapp.model.part import Case, Part, StressLimit
+from screenapp.model.shape import Shape
+from screenapp.screening.passes import Pass
+from screenapp.screening.peaks import RawPeak, feature_of, measure, place_in_words
+from screenapp.screening.spots import spot_at
+from screenapp.screening.trust import Sample, judge
+
+_REACH = 2.5
+"""A peak of an earlier pass is the same one if it lies within this many of its elements."""
+
+
+def measures(part: Part) -> tuple[str, ...]:
+    """The stress measures that the limits of a part ask for; von Mises always."""
+    asked = [limit.measure for limit in part.limits if isinstance(limit, StressLimit)]
+    return tuple(dict.fromkeys(["von_mises", *asked]))
+
+
+def track(
+    part: Part,
+    shape: Shape,
+    passes: Sequence[Pass],
+    spots: Sequence[SingularSpot],
+    k: int,
+) -> tuple[Peak, ...]:
+    """The peaks of case `k` on the last pass with their history, largest first.
+
+    Peaks that rise to the same singular place count as one.
+    """
+    case = part.cases[k]
+    found: list[Peak] = []
+    for name in measures(part):
+        raws = passes[-1].peaks(name, k)
+        taken: set[tuple[float, float]] = set()
+        for raw in raws:
+            spot = spot_at(spots, raw.at, case.id, _REACH * raw.size)
+            if spot is not None:
+                if spot.at in taken:
+                    continue
+                taken.add(spot.at)
+            found.append(_peak(part, shape, passes, name, k, case, raw, spot, raws[0].value))
+    found.sort(key=lambda p: (p.quantity != "von_mises", -p.estimate.value))
+    return tuple(found)
+
+
+def _peak(
+    part: Part,
+    shape: Shape,
+    passes: Sequence[Pass],
+    name: str,
+    k: int,
+    case: Case,
+    raw: RawPeak,
+    spot: SingularSpot | None,
+    largest: float,
+) -> Peak:
+    samples = [_sample(part, earlier, name, k, raw, spot) for earlier in passes]
+    # a peak below the largest one need not be known more closely than it matters
+    scale = max(abs(raw.value), 0.5 * largest)
+    estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
+    at, place = raw.at, place_in_words(shape, raw.piece, raw.at)
+    why = mend = ""
+    if estimate.trust == "rising":
+        if spot is not None:
+            at, why, mend = spot.at, spot.why, spot.mend
+            place = _spot_place(spot)
+        else:
+            why = f"the stress at {place} keeps rising as the mesh is refined"
+            mend = "look for a sharp corner or the end of a load there and ease it"
+    elif estimate.trust == "unsettled":
+        why = _why_unsettled(estimate, spot)
+    history = tuple(s.value for s in samples)
+    feature = spot.ids[0] if spot and estimate.trust == "rising" else feature_of(shape, raw.piece)
+    return Peak(name, estimate, at, feature, place, why, mend, history)
+
+
+def _spot_place(spot: SingularSpot) -> str:
+    first = spot.ids[0]
+    if first.startswith("c"):
+        return f"corner {first}"
+    return "the end of a support between " + " and ".join(spot.ids)
+
+
+def _why_unsettled(estimate: Estimate, spot: SingularSpot | None) -> str:
+    if not math.isfinite(estimate.high):
+        return "one pass alone says nothing about its accuracy"
+    if spot is not None:
+        return f"{spot.why}, but it does not clearly rise yet"
+    share = (estimate.high - estimate.value) / max(abs(estimate.value), 1e-300)
+    return f"its band is still ±{100.0 * share:.1f} %"
+
+
+def _sample(
+    part: Part, earlier: Pass, name: str, k: int, raw: RawPeak, spot: SingularSpot | None
+) -> Sample:
+    """The value of the same peak on another pass."""
+    point = np.array([raw.at])
+    values = earlier.read(point)
+    size, doubt = float(values.size[0]), float(values.doubt[k, 0])
+    if earlier.peaks(name, k) and any(p is raw for p in earlier.peaks(name, k)):
+        return Sample(raw.value, _finest(raw.size, size, spot), doubt)
+    near = [
+        p
+        for p in earlier.peaks(name, k)
+        if math.dist(p.at, raw.at) <= _REACH * max(p.size, raw.size)
+        and (p.piece < 0) == (raw.piece < 0)
+    ]
+    if near:
+        best = min(near, key=lambda p: math.dist(p.at, raw.at))
+        return Sample(best.value, _finest(best.size, size, spot), doubt)
+    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt)
+
+
+def _finest(of_side: float, of_element: float, spot: SingularSpot | None) -> float:
+    """The size that a growing stress feels: the smaller of side and element at a singular place."""
+    return min(of_side, of_element) if spot is not None else of_element
