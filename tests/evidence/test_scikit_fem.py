@@ -1,0 +1,187 @@
+"""The same mesh, element and quadrature in an independent library must move the same way.
+
+scikit-fem assembles stiffness, edge load and weight by its own shape functions, mappings and
+numbering; only the Gauss points are shared.  The 9-node geometry carries all three elements: the
+centre node by the transfinite blend makes it the 8-node geometry too, and for the bilinear quad
+the sides are straight.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+
+import numpy as np
+import pytest
+from numpy.typing import NDArray
+from scipy.sparse.linalg import spsolve
+from scipy.spatial import cKDTree
+from skfem import (
+    Basis,
+    BilinearForm,
+    ElementQuad1,
+    ElementQuad2,
+    ElementQuadS2,
+    ElementVector,
+    FacetBasis,
+    LinearForm,
+    MeshQuad,
+    MeshQuad2,
+)
+from skfem.helpers import ddot, sym_grad, trace
+
+from screenapp.mechanics.quadrature import gauss_line, gauss_square
+from screenapp.mechanics.solve import solve
+from screenapp.model.part import (
+    Case,
+    ElementName,
+    FixedSupport,
+    GravityLoad,
+    LineLoad,
+    Material,
+    MeshWishes,
+    Wall,
+)
+from tests.evidence.table import record
+from tests.mechanics.structured import Structured, four_sided, ring_sector, shaken
+
+Floats = NDArray[np.float64]
+SETS = {"quad4": (ElementQuad1, 2), "quad8": (ElementQuadS2, 3), "quad9": (ElementQuad2, 3)}
+PARTS = 20
+_worst: dict[str, float] = {}
+
+
+@dataclass(frozen=True)
+class Drawn:
+    """A random part, with what its load and material were drawn to be."""
+
+    case: Structured
+    material: Material
+    line: tuple[float, float]
+    gravity: tuple[float, float]
+
+
+@pytest.mark.parametrize("element", SETS)
+@pytest.mark.parametrize("seed", range(PARTS))
+def test_displacements_agree(element: ElementName, seed: int) -> None:
+    drawn = _random_part(seed)
+    case = drawn.case
+    part = replace(
+        case.part,
+        supports=(FixedSupport("s", "e4"),),
+        cases=(
+            Case("k", "only", (LineLoad("q", "e2", *drawn.line), GravityLoad("g", *drawn.gravity))),
+        ),
+        mesh=MeshWishes(element),
+    )
+    ours = solve(part, case.shape, case.mesh).displacements[0]
+    places, theirs = _by_scikit_fem(drawn, element)
+    used = np.unique(case.mesh.quads[:, : {"quad4": 4, "quad8": 8, "quad9": 9}[element]])
+    far, at = cKDTree(places).query(case.mesh.nodes[used])
+    assert far.max() < 1e-9 * np.ptp(case.mesh.nodes)
+    error = float(np.abs(ours[used] - theirs[at]).max() / np.abs(theirs).max())
+    assert error < 1e-9
+    _worst[element] = max(_worst.get(element, 0.0), error)
+    record(
+        f"{element}: displacements on {PARTS} random parts with distorted meshes",
+        f"scikit-fem, {SETS[element][0].__name__} (run here)",
+        "the same",
+        "the same",
+        100.0 * _worst[element],
+        "1e-9",
+    )
+
+
+def _random_part(seed: int) -> Drawn:
+    rng = np.random.default_rng(seed)
+    state = ("plane stress", "plane strain")[seed % 2]
+    wall = Wall(float(rng.uniform(0.5, 12.0)), "", state)  # type: ignore[arg-type]
+    material = Material(
+        "drawn", float(rng.uniform(2e3, 2.1e5)), float(rng.uniform(0.0, 0.45)), 2700.0
+    )
+    along, across = (int(n) for n in rng.integers(2, 9, 2))
+    if seed % 4 < 2:
+        corners = np.array([[0, 0], [60, 0], [60, 40], [0, 40]]) + rng.uniform(-9, 9, (4, 2))
+        case = four_sided(tuple(map(tuple, corners)), along, across, wall, material)
+    else:
+        inner = float(rng.uniform(10, 30))
+        angle = float(rng.uniform(40, 200))
+        outer = inner * float(rng.uniform(1.3, 2.5))
+        case = ring_sector(inner, outer, angle, 3 * along, across, wall, material)
+    case = replace(case, mesh=shaken(case.mesh, case.shape, 0.15, seed))
+    line, gravity = rng.uniform(-50, 50, 2), rng.uniform(-1e4, 1e4, 2)
+    return Drawn(case, material, (line[0], line[1]), (gravity[0], gravity[1]))
+
+
+def _by_scikit_fem(drawn: Drawn, element: ElementName) -> tuple[Floats, Floats]:
+    """Places of the nodes (n, 2) and their displacements (n, 2)."""
+    case, part = drawn.case, drawn.case.part
+    mesh = _their_mesh(case, curved=element != "quad4")
+    kind, points = SETS[element]
+    xi, weights = gauss_square(points)
+    s, line_weights = gauss_line(5)
+    vector = ElementVector(kind())
+    # their reference square and line are [0, 1]
+    basis = Basis(mesh, vector, quadrature=(0.5 * (xi.T + 1.0), weights / 4.0))
+    loaded = mesh.facets_satisfying(_on_piece(case, "e2"), boundaries_only=True)
+    edge = FacetBasis(
+        mesh, vector, facets=loaded, quadrature=(0.5 * (s[None] + 1.0), line_weights / 2.0)
+    )
+    e, nu, t = drawn.material.youngs_modulus, drawn.material.poissons_ratio, part.wall.thickness
+    mu, lam = e / (2 * (1 + nu)), e * nu / ((1 + nu) * (1 - 2 * nu))
+    if part.wall.state == "plane stress":
+        lam = 2 * mu * lam / (lam + 2 * mu)
+    weight = 1e-9 * drawn.material.density * np.array(drawn.gravity)
+
+    @BilinearForm
+    def stiffness(u, v, _):  # type: ignore[no-untyped-def]
+        strain, virtual = sym_grad(u), sym_grad(v)
+        return t * (2 * mu * ddot(strain, virtual) + lam * trace(strain) * trace(virtual))
+
+    @LinearForm
+    def on_edge(v, _):  # type: ignore[no-untyped-def]
+        return drawn.line[0] * v[0] + drawn.line[1] * v[1]
+
+    @LinearForm
+    def on_body(v, _):  # type: ignore[no-untyped-def]
+        return t * (weight[0] * v[0] + weight[1] * v[1])
+
+    matrix, force = stiffness.assemble(basis), on_edge.assemble(edge) + on_body.assemble(basis)
+    held = basis.get_dofs(mesh.facets_satisfying(_on_piece(case, "e4"), boundaries_only=True))
+    free = np.setdiff1d(np.arange(basis.N), held.all())
+    moved = np.zeros(basis.N)
+    moved[free] = spsolve(matrix.tocsc()[free][:, free], force[free])
+    # x and y of a node follow one another in their numbering of vertices, facets and interiors
+    places = basis.doflocs.T
+    order = np.lexsort((np.arange(len(places)) % 2, *np.round(places, 9).T))
+    return places[order[::2]], np.stack([moved[order[::2]], moved[order[1::2]]], axis=1)
+
+
+def _their_mesh(case: Structured, curved: bool) -> MeshQuad:
+    corners, inverse = np.unique(case.mesh.quads[:, :4], return_inverse=True)
+    straight = MeshQuad(case.mesh.nodes[corners].T.copy(), inverse.reshape(-1, 4).T.copy())
+    if not curved:
+        return straight
+    second = MeshQuad2.from_mesh(straight)
+    # their middle and centre nodes start on the straight quads; move them to ours
+    quads = case.mesh.quads
+    ends = case.mesh.nodes[quads[:, :4]]
+    flat = np.concatenate(
+        [ends, 0.5 * (ends + np.roll(ends, -1, axis=1)), ends.mean(axis=1, keepdims=True)], axis=1
+    )
+    far, at = cKDTree(flat.reshape(-1, 2)).query(second.doflocs.T)
+    assert far.max() < 1e-9 * np.ptp(case.mesh.nodes)
+    return replace(second, doflocs=case.mesh.nodes[quads.ravel()[at]].T.copy())
+
+
+def _on_piece(case: Structured, feature: str):  # type: ignore[no-untyped-def]
+    """Their test of facets by midpoint: the middle of one of our sides on the feature."""
+    sides = case.mesh.sides_on(case.shape.pieces_of(feature))
+    ends = case.mesh.nodes[case.mesh.side_nodes[sides]]
+    middles = 0.5 * (ends[:, 0] + ends[:, 2])
+    tree = cKDTree(middles)
+    slack = 1e-9 * np.ptp(case.mesh.nodes)
+
+    def on(x: Floats) -> NDArray[np.bool_]:
+        return np.asarray(tree.query(x.T)[0] < slack)
+
+    return on
