@@ -16,7 +16,7 @@ from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.naming import name_at
-from screenapp.window.board.part_item import FillItem, OutlineItem
+from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
 from screenapp.window.board.preview_item import PreviewItem
 from screenapp.window.board.snapping import Snap, snap
@@ -75,7 +75,8 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.view_box.disableAutoRange()
         self.setCentralItem(self.view_box)
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
-        self.fill, self.outline = FillItem(), OutlineItem()
+        paths = PartPaths()
+        self.fill, self.outline = FillItem(paths), OutlineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
         self.preview_item = PreviewItem(self)
         for item in (
@@ -235,7 +236,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             px,
             raw,
             self.snap_at(raw, bool(modifiers & HOLD_OFF)),
-            hit_test(self.drawn, frame, px, self.symbols.clickables(frame)),
+            hit_test(self.drawn, frame, px, self.symbols),
             bool(modifiers & Qt.KeyboardModifier.ShiftModifier),
         )
 

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
+from pyqtgraph.functions import arrayToQPolygonF
 from PySide6.QtCore import QPointF
 from PySide6.QtGui import QPolygonF, QTransform
 
@@ -45,6 +46,19 @@ class Frame:
         p = inverse.map(px)
         return float(p.x()), float(p.y())
 
+    def pans_to(self, other: Frame, at_most: float) -> bool:
+        """Whether the other is this one panned, by no more than `at_most` px."""
+        a, b = self.transform, other.transform
+        ones, others = (a.m11(), a.m22()), (b.m11(), b.m22())
+        if not all(math.isclose(p, q, rel_tol=1e-9) for p, q in zip(ones, others, strict=True)):
+            return False
+        return self.shift_to(other).manhattanLength() <= at_most
+
+    def shift_to(self, other: Frame) -> QPointF:
+        """How far the other is panned from this one [px]."""
+        a, b = self.transform, other.transform
+        return QPointF(b.dx() - a.dx(), b.dy() - a.dy())
+
     def same_as(self, other: Frame | None) -> bool:
         """Whether both map alike."""
         return other is not None and self.transform == other.transform
@@ -52,4 +66,6 @@ class Frame:
 
 def polygon(points: ArrayLike) -> QPolygonF:
     """Points (n, 2) as a polygon of Qt."""
-    return QPolygonF([QPointF(float(x), float(y)) for x, y in np.asarray(points, dtype=float)])
+    p = np.ascontiguousarray(points, dtype=float)
+    made: QPolygonF = arrayToQPolygonF(p[:, 0], p[:, 1])
+    return made

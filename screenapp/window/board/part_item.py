@@ -4,18 +4,21 @@ from __future__ import annotations
 
 import math
 
-import numpy as np
 from PySide6.QtCore import QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QPainter, QPainterPath, QPen
+from PySide6.QtGui import QColor, QPainter, QPainterPath, QPen, QPolygonF
 
 from screenapp.model.part import CircleHole, Point, SlotHole
 from screenapp.window import theme
-from screenapp.window.board.drawn_part import DrawnPart, flatten
+from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame, polygon
+from screenapp.window.board.ring import flatten
 from screenapp.window.board.screen_item import Z_FILL, Z_OUTLINE, ScreenItem
 
-SAGITTA_PX = 0.1
+SAGITTA_PX = 0.15
 """Arcs are flattened to within this [px]."""
+
+FARTHEST_PAN = 2000.0
+"""Lines are worked out afresh after a pan of this length [px]."""
 
 
 def mixed(a: str, b: str, share: float) -> QColor:
@@ -26,50 +29,52 @@ def mixed(a: str, b: str, share: float) -> QColor:
     return QColor(red, green, blue)
 
 
-class _Paths:
-    """Painter paths in pixels, kept while part and frame stay the same."""
+class PartPaths:
+    """The part's lines in pixels, shared by fill and outline, kept while the view only pans."""
 
     def __init__(self) -> None:
         self._for: tuple[DrawnPart, Frame] | None = None
-        self._features: dict[str, QPainterPath] = {}
-        self._whole = QPainterPath()
+        self._features: dict[str, list[QPolygonF]] = {}
+        self.rings: list[QPolygonF] = []
+        self.whole = QPainterPath()
 
-    def at(self, drawn: DrawnPart, frame: Frame) -> None:
-        if self._for is not None and self._for[0] is drawn and self._for[1].same_as(frame):
-            return
-        self._for = drawn, frame
-        self._features = {}
-        self._whole = QPainterPath()
-        self._whole.setFillRule(Qt.FillRule.OddEvenFill)
-        tolerance = SAGITTA_PX / frame.scale
-        for loop in range(len(drawn.loops)):
-            points = drawn.polyline(loop, tolerance)
-            if len(points):
-                self._whole.addPolygon(polygon(frame.pxs(points)))
-                self._whole.closeSubpath()
+    def settle(self, drawn: DrawnPart, frame: Frame) -> QPointF:
+        """Make sure that the lines are of this part and zoom; gives how far they are panned."""
+        had = self._for
+        if had is None or had[0] is not drawn or not had[1].pans_to(frame, FARTHEST_PAN):
+            self._for = had = drawn, frame
+            tolerance = 2.0 ** math.floor(math.log2(SAGITTA_PX / frame.scale))  # kept over zooms
+            self._features = {}
+            self.rings = []
+            self.whole = QPainterPath()
+            self.whole.setFillRule(Qt.FillRule.OddEvenFill)
+            for loop in range(len(drawn.loops)):
+                points = drawn.polyline(loop, tolerance)
+                if len(points):
+                    ring = polygon(frame.pxs(points))
+                    self.rings.append(ring)
+                    self.whole.addPolygon(ring)
+                    self.whole.closeSubpath()
+        return had[1].shift_to(frame)
 
-    def whole(self) -> QPainterPath:
-        return self._whole
-
-    def feature(self, id_: str) -> QPainterPath:
+    def feature(self, id_: str) -> list[QPolygonF]:
         """The pieces of an edge, fillet or hole."""
         if id_ not in self._features and self._for is not None:
             drawn, frame = self._for
-            path = QPainterPath()
-            for piece in drawn.pieces_of(id_):
-                points = flatten(piece.curve, SAGITTA_PX / frame.scale)
-                path.addPolygon(polygon(frame.pxs(points)))
-            self._features[id_] = path
-        return self._features[id_]
+            self._features[id_] = [
+                polygon(frame.pxs(flatten(p.curve, SAGITTA_PX / frame.scale)))
+                for p in drawn.pieces_of(id_)
+            ]
+        return self._features.get(id_, [])
 
 
 class FillItem(ScreenItem):
     """The wall's face, a shade off the board; results are painted over it."""
 
-    def __init__(self) -> None:
+    def __init__(self, paths: PartPaths) -> None:
         super().__init__(Z_FILL)
         self.drawn: DrawnPart | None = None
-        self._paths = _Paths()
+        self._paths = paths
 
     def show_part(self, drawn: DrawnPart) -> None:
         """Paint this part from now on."""
@@ -80,21 +85,21 @@ class FillItem(ScreenItem):
         """Fill the outline, holes left out."""
         if self.drawn is None or self.drawn.part.outline is None:
             return
-        self._paths.at(self.drawn, frame)
+        painter.translate(self._paths.settle(self.drawn, frame))
         palette = theme.current()
-        painter.fillPath(self._paths.whole(), mixed(palette.paper, palette.accent, 0.07))
+        painter.fillPath(self._paths.whole, mixed(palette.paper, palette.accent, 0.07))
 
 
 class OutlineItem(ScreenItem):
     """Outline, holes, centre lines, and whatever is hovered or selected of them."""
 
-    def __init__(self) -> None:
+    def __init__(self, paths: PartPaths) -> None:
         super().__init__(Z_OUTLINE)
         self.drawn: DrawnPart | None = None
         self.selected: tuple[str, ...] = ()
         self.hovered: str | None = None
         self.faint = False
-        self._paths = _Paths()
+        self._paths = paths
 
     def show_part(self, drawn: DrawnPart) -> None:
         """Paint this part from now on."""
@@ -105,7 +110,7 @@ class OutlineItem(ScreenItem):
         """Paint all lines."""
         if self.drawn is None:
             return
-        self._paths.at(self.drawn, frame)
+        shift = self._paths.settle(self.drawn, frame)
         palette = theme.current()
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         ink = QColor(palette.quiet if self.faint else palette.ink)
@@ -114,7 +119,10 @@ class OutlineItem(ScreenItem):
         width = 1.0 if self.faint else 2.0
         painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.setPen(_pen(ink, width))
-        painter.drawPath(self._paths.whole())
+        painter.translate(shift)
+        for ring in self._paths.rings:  # one by one: a path of many rings is slow to stroke
+            painter.drawPolygon(ring)
+        painter.translate(-shift)
         if not self.faint:
             self._draw_centre_lines(painter, frame)
         for id_ in self.selected:
@@ -131,7 +139,11 @@ class OutlineItem(ScreenItem):
         assert drawn is not None
         painter.setPen(_pen(colour, width))
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        painter.drawPath(self._paths.feature(id_))
+        shift = self._paths.settle(drawn, frame)
+        painter.translate(shift)
+        for piece in self._paths.feature(id_):
+            painter.drawPolyline(piece)
+        painter.translate(-shift)
         if (corner := drawn.corners.get(id_)) is not None:
             p = frame.px(corner.at)
             painter.setPen(_pen(colour, 1.5))
@@ -178,9 +190,3 @@ def _pen(colour: QColor, width: float) -> QPen:
     pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
     pen.setCapStyle(Qt.PenCapStyle.RoundCap)
     return pen
-
-
-def ring_points(centre: Point, radius: float, n: int = 64) -> np.ndarray:
-    """A circle as points (n + 1, 2) [mm]."""
-    a = np.linspace(0.0, 2.0 * math.pi, n + 1)
-    return np.asarray(centre) + radius * np.stack([np.cos(a), np.sin(a)], axis=-1)

@@ -10,9 +10,9 @@ from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter, QPainterPath, 
 from screenapp.model.curves import Arc, Curve
 from screenapp.model.part import DisplayUnits, Point
 from screenapp.window import theme
-from screenapp.window.board.drawn_part import flatten
 from screenapp.window.board.frame import Frame, polygon
 from screenapp.window.board.quantity import written
+from screenapp.window.board.ring import flatten
 
 OFFSET = QPoint(18, 18)
 """From a place to the row of fields about it [px]."""

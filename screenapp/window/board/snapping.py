@@ -5,17 +5,20 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Literal
 
+import numpy as np
 from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.curves import Arc
-from screenapp.model.part import DisplayUnits, Loop, LoopHole, Point, SlotHole
+from screenapp.model.part import DisplayUnits, Hole, Loop, LoopHole, Point, SlotHole
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
-from screenapp.window.board.frame import Frame
+from screenapp.window.board.frame import Floats, Frame
 from screenapp.window.board.grid import grid_step
+from screenapp.window.board.ring import Ring
 
 SnapKind = Literal["none", "grid", "corner", "centre", "middle", "edge", "start"]
 
@@ -61,13 +64,14 @@ def snap(
         passes_over: kinds of point that must not.
     """
     reach = POINT_REACH_PX / frame.scale
-    best: tuple[float, Snap] | None = None
-    for one in (*extra, *points_of(drawn, without)):
-        far = math.dist(one.at, at)
-        if one.kind not in passes_over and far <= reach and (best is None or far < best[0] - 1e-9):
-            best = far, one
-    if best is not None:
-        return best[1]
+    points, places = snap_points(drawn)
+    near = np.flatnonzero(np.hypot(*(places - at).T) <= reach) if len(points) else ()
+    offered = [*extra, *(points[i] for i in near if points[i].id not in without)]
+    offered = [
+        one for one in offered if one.kind not in passes_over and math.dist(one.at, at) <= reach
+    ]
+    if offered:
+        return min(offered, key=lambda one: math.dist(one.at, at))
     return snap_to_edge(drawn, at, EDGE_REACH_PX / frame.scale, without) or snap_to_grid(
         frame, at, units
     )
@@ -77,17 +81,11 @@ def snap_to_edge(
     drawn: DrawnPart, at: Point, reach: float, without: frozenset[str] = frozenset()
 ) -> Snap | None:
     """The nearest place on the exact boundary within `reach` [mm]."""
-    best: tuple[float, Snap] | None = None
-    for piece in drawn.pieces:
-        if piece.feature in without:
-            continue
-        t = piece.curve.nearest(at)
-        x, y = piece.curve.point(t)
-        far = math.dist((x, y), at)
-        if far <= reach and (best is None or far < best[0]):
-            dx, dy = piece.curve.tangent(t)
-            best = far, Snap("edge", (float(x), float(y)), piece.feature, math.atan2(dy, dx))
-    return best[1] if best else None
+    foot = drawn.index.nearest(at, without)
+    if foot is None or foot.far > reach:
+        return None
+    dx, dy = foot.piece.curve.tangent(foot.t)
+    return Snap("edge", foot.at, foot.piece.feature, math.atan2(dy, dx))
 
 
 def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
@@ -98,30 +96,40 @@ def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
     return Snap("grid", (x, y))
 
 
-def points_of(drawn: DrawnPart, without: frozenset[str]) -> Iterator[Snap]:
-    """Corners, centres and middles of the part, save those of the ids in `without`."""
-    for corner in drawn.corners.values():
-        if corner.id not in without:
-            yield Snap("corner", corner.at, corner.id)
+@lru_cache(maxsize=4)
+def snap_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
+    """Corners, centres and middles of a part, and the same as places (n, 2) [mm]."""
+    points = [Snap("corner", corner.at, corner.id) for corner in drawn.corners.values()]
     for hole in drawn.part.holes:
-        if hole.id in without or isinstance(hole, LoopHole):
-            continue
-        yield Snap("centre", hole.centre, hole.id)
-        if isinstance(hole, SlotHole):
-            half = (hole.length - hole.width) / 2.0
-            c, s = math.cos(math.radians(hole.angle)), math.sin(math.radians(hole.angle))
-            for sign in (-1.0, 1.0):
-                x, y = hole.centre[0] + sign * half * c, hole.centre[1] + sign * half * s
-                yield Snap("centre", (x, y), hole.id)
-    for piece in drawn.pieces:
-        if piece.feature in without:
-            continue
+        points += [Snap("centre", at, hole.id) for at in _centres_of(hole)]
+    for ring in drawn.loops:
+        points += _points_of(ring)
+    return tuple(points), np.array([p.at for p in points], dtype=float).reshape(-1, 2)
+
+
+def _centres_of(hole: Hole) -> Iterator[Point]:
+    if isinstance(hole, LoopHole):
+        return
+    yield hole.centre
+    if isinstance(hole, SlotHole):
+        half = (hole.length - hole.width) / 2.0
+        c, s = math.cos(math.radians(hole.angle)), math.sin(math.radians(hole.angle))
+        for sign in (-1.0, 1.0):
+            yield hole.centre[0] + sign * half * c, hole.centre[1] + sign * half * s
+
+
+@lru_cache(maxsize=1024)
+def _points_of(ring: Ring) -> list[Snap]:
+    """Middles of a ring's edges and centres of its arcs."""
+    points: list[Snap] = []
+    for piece in ring.pieces:
         if piece.kind == "edge":
             x, y = piece.curve.point(0.5)
             dx, dy = piece.curve.tangent(0.5)
-            yield Snap("middle", (float(x), float(y)), piece.feature, math.atan2(dy, dx))
+            points.append(Snap("middle", (float(x), float(y)), piece.feature, math.atan2(dy, dx)))
         if piece.kind != "hole" and isinstance(piece.curve, Arc):
-            yield Snap("centre", piece.curve.centre, piece.feature)
+            points.append(Snap("centre", piece.curve.centre, piece.feature))
+    return points
 
 
 def neighbours(loop: Loop, corner: str) -> frozenset[str]:

@@ -9,13 +9,16 @@ from PySide6.QtGui import QColor, QPainter, QPen
 from screenapp.model.errors import Fault
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
-from screenapp.window.board.frame import Frame, polygon
-from screenapp.window.board.hit_test import Clickable
+from screenapp.window.board.frame import Floats, Frame, polygon
+from screenapp.window.board.hit_test import HitKind
 from screenapp.window.board.load_marks import load_mark
 from screenapp.window.board.marks import Mark
 from screenapp.window.board.screen_item import Z_PROBES, Z_SYMBOLS, ScreenItem
 from screenapp.window.board.sketch import label
 from screenapp.window.board.support_marks import support_mark
+
+FARTHEST_PAN = 2000.0
+"""Symbols are worked out afresh after a pan of this length [px]."""
 
 
 class SymbolsItem(ScreenItem):
@@ -29,6 +32,7 @@ class SymbolsItem(ScreenItem):
         self.hovered: str | None = None
         self._marks: list[Mark] = []
         self._for: tuple[DrawnPart, int, Frame] | None = None
+        self._strokes: _Strokes | None = None
 
     def show_part(self, drawn: DrawnPart, case: int) -> None:
         """Show the supports and the loads of case number `case` from now on."""
@@ -36,35 +40,46 @@ class SymbolsItem(ScreenItem):
         self.update()
 
     def marks(self, frame: Frame) -> list[Mark]:
-        """The symbols as they stand at this zoom."""
+        """The symbols as they stand at this zoom, at `shift` from where the view now is."""
         if self.drawn is None:
             return []
-        had = self._for
-        if had is None or had[0] is not self.drawn or had[1] != self.case or had[2] != frame:
+        if not self._fits(frame):
             self._for = self.drawn, self.case, frame
             part = self.drawn.part
             self._marks = [support_mark(self.drawn, frame, s) for s in part.supports]
             if self.case < len(part.cases):
                 loads = part.cases[self.case].loads
                 self._marks += [load_mark(self.drawn, frame, load) for load in loads]
+            self._strokes = None
         return self._marks
 
-    def clickables(self, frame: Frame) -> tuple[Clickable, ...]:
-        """The symbols for the hit test."""
-        return tuple(
-            Clickable(
-                m.kind,
-                m.id,
-                (*m.lines, *(np.vstack([f, f[:1]]) for f in m.fills), *_rims(m)),
-            )
-            for m in self.marks(frame)
-        )
+    def shift(self, frame: Frame) -> QPointF:
+        """How far the view was panned since the symbols were worked out [px]."""
+        return QPointF() if self._for is None else self._for[2].shift_to(frame)
+
+    def nearest(self, px: QPointF, frame: Frame, within: float) -> tuple[HitKind, str] | None:
+        """Kind and id of the nearest symbol that is nearer than `within` [px]."""
+        marks = self.marks(frame)
+        if not marks:
+            return None
+        if self._strokes is None:
+            self._strokes = _Strokes(marks)
+        found = self._strokes.nearest(px - self.shift(frame), within)
+        return None if found is None else (marks[found].kind, marks[found].id)
+
+    def _fits(self, frame: Frame) -> bool:
+        """Whether the symbols at hand belong to this part, case and zoom."""
+        had = self._for
+        if had is None or had[0] is not self.drawn or had[1] != self.case:
+            return False
+        return had[2].pans_to(frame, FARTHEST_PAN)
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Paint all symbols, labels last."""
         palette = theme.current()
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         marks = self.marks(frame)
+        painter.translate(self.shift(frame))
         for mark in marks:
             chosen = mark.id in self.selected
             name = palette.support if mark.kind == "support" else palette.load
@@ -169,7 +184,36 @@ def _paint(painter: QPainter, mark: Mark, colour: QColor, width: float) -> None:
         painter.drawPolygon(polygon(fill))
 
 
-def _rims(mark: Mark) -> list[np.ndarray]:
+def _rims(mark: Mark) -> list[Floats]:
     turn = np.linspace(0.0, 2.0 * np.pi, 17)
     ring = np.stack([np.cos(turn), np.sin(turn)], axis=-1)
     return [centre + radius * ring for centre, radius in mark.circles]
+
+
+class _Strokes:
+    """All strokes of all symbols as one array of straight pieces, to find the nearest."""
+
+    def __init__(self, marks: list[Mark]) -> None:
+        starts: list[Floats] = []
+        runs: list[Floats] = []
+        owners: list[int] = []
+        for i, mark in enumerate(marks):
+            closed = [np.vstack([f, f[:1]]) for f in mark.fills]
+            for line in (*mark.lines, *closed, *_rims(mark)):
+                starts.append(line[:-1])
+                runs.append(np.diff(line, axis=0))
+                owners += [i] * (len(line) - 1)
+        none = np.empty((0, 2))
+        self._start, self._run = np.vstack([none, *starts]), np.vstack([none, *runs])
+        self._owner = np.array(owners, dtype=int)
+        self._square = np.maximum((self._run**2).sum(axis=1), 1e-12)
+
+    def nearest(self, px: QPointF, within: float) -> int | None:
+        """Number of the symbol nearest to `px`, if nearer than `within` [px]."""
+        if not len(self._owner):
+            return None
+        p = np.array([px.x(), px.y()])
+        t = np.clip(((p - self._start) * self._run).sum(axis=1) / self._square, 0.0, 1.0)
+        far = np.hypot(*(self._start + t[:, None] * self._run - p).T)
+        best = int(np.argmin(far))
+        return int(self._owner[best]) if far[best] < within else None

@@ -1,0 +1,141 @@
+"""One closed ring of the boundary as the board needs it; kept as long as its record stays."""
+
+from __future__ import annotations
+
+import math
+from functools import cached_property, lru_cache
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.model.curves import Curve, Segment
+from screenapp.model.errors import InvalidPartError
+from screenapp.model.part import Corner, Edge, Hole, Loop, LoopHole, Part, Point
+from screenapp.model.shape import BoundaryCurve, edge_curves, shape_of
+from screenapp.window.board.boundary_index import BoundaryIndex
+
+Floats = NDArray[np.float64]
+
+_STAND_IN = Loop(
+    (Corner("", (0.0, 0.0)), Corner("", (1.0, 0.0)), Corner("", (0.0, 1.0))),
+    (Edge(""), Edge(""), Edge("")),
+)
+"""An outline for holes to be worked out without their part."""
+
+FINE = 2e-4
+"""Sagitta for asking whether a place is inside, relative to the ring's own size."""
+
+
+class Ring:
+    """The pieces of the outline or of one hole, material on their left.
+
+    A ring at fault may be open or empty.
+    """
+
+    def __init__(self, pieces: tuple[BoundaryCurve, ...]) -> None:
+        self.pieces = pieces
+        self._lines: dict[float, Floats] = {}
+
+    @cached_property
+    def index(self) -> BoundaryIndex:
+        """Finds the nearest piece."""
+        return BoundaryIndex.of(self.pieces)
+
+    @cached_property
+    def box(self) -> tuple[float, float, float, float] | None:
+        """Smallest x, y and largest x, y [mm]; None if the ring is empty."""
+        if not self.pieces:
+            return None
+        points = np.concatenate([flatten(p.curve, 0.01 * p.curve.length) for p in self.pieces])
+        if not np.isfinite(points).all():
+            return None
+        (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
+        return float(x0), float(y0), float(x1), float(y1)
+
+    def polyline(self, tolerance: float) -> Floats:
+        """The ring as points (n, 2) [mm], arcs flattened to a sagitta of `tolerance` [mm].
+
+        The polylines last asked for are kept.
+        """
+        if tolerance not in self._lines:
+            if len(self._lines) > 4:
+                self._lines.clear()
+            parts = [flatten(p.curve, tolerance) for p in self.pieces]
+            self._lines[tolerance] = np.concatenate(parts) if parts else np.empty((0, 2))
+        return self._lines[tolerance]
+
+    def inside(self, at: Point) -> bool:
+        """Whether a place lies inside the ring."""
+        if self.box is None:
+            return False
+        x0, y0, x1, y1 = self.box
+        size = max(x1 - x0, y1 - y0)
+        slack = 0.05 * size  # the box is of a coarse polyline
+        x, y = at
+        if not (x0 - slack <= x <= x1 + slack and y0 - slack <= y <= y1 + slack):
+            return False
+        return point_in_ring(at, self.polyline(FINE * size))
+
+
+@lru_cache(maxsize=1024)
+def outline_ring(outline: Loop) -> Ring:
+    """The ring of an outline; if its rounds do not fit, without them."""
+    try:
+        shape = shape_of(Part(outline=outline))
+    except (InvalidPartError, ArithmeticError, ValueError):
+        return Ring(_unrounded(outline, hole=False))
+    return Ring(shape.curves)
+
+
+@lru_cache(maxsize=1024)
+def hole_ring(hole: Hole) -> Ring:
+    """The ring of a hole; if its rounds do not fit, without them; empty if it has no size."""
+    try:
+        shape = shape_of(Part(outline=_STAND_IN, holes=(hole,)))
+    except (InvalidPartError, ArithmeticError, ValueError):
+        return Ring(_unrounded(hole.loop, hole=True) if isinstance(hole, LoopHole) else ())
+    first, last = shape.loops[1]
+    return Ring(shape.curves[first:last])
+
+
+def flatten(curve: Curve, tolerance: float) -> Floats:
+    """A curve as points (n, 2) [mm], both ends included, to a sagitta of `tolerance` [mm]."""
+    if isinstance(curve, Segment):
+        return np.array([curve.start, curve.end], dtype=float)
+    step = 2.0 * math.acos(max(0.0, 1.0 - tolerance / curve.radius))
+    n = int(min(2000, max(4, math.ceil(abs(curve.sweep) / max(step, 1e-4)))))
+    return np.asarray(curve.point(np.linspace(0.0, 1.0, n + 1)))
+
+
+def point_in_ring(at: Point, ring: Floats) -> bool:
+    """Whether a place lies inside a closed polyline (n, 2), by the crossings of a ray."""
+    if len(ring) < 3:
+        return False
+    x, y = at
+    a, b = ring, np.roll(ring, -1, axis=0)
+    spans = (a[:, 1] > y) != (b[:, 1] > y)
+    with np.errstate(divide="ignore", invalid="ignore"):
+        cross = a[:, 0] + (y - a[:, 1]) * (b[:, 0] - a[:, 0]) / (b[:, 1] - a[:, 1])
+    return bool(np.count_nonzero(spans & (x < cross)) % 2)
+
+
+def _unrounded(loop: Loop, hole: bool) -> tuple[BoundaryCurve, ...]:
+    """The edges alone, those without a length left out."""
+    if len(loop.edges) != len(loop.corners):
+        return ()
+    number = 1 if hole else 0
+    pieces = [
+        BoundaryCurve(edge.id, "edge", curve, number)
+        for edge, curve in zip(loop.edges, edge_curves(loop), strict=True)
+        if math.isfinite(curve.length) and curve.length > 0.0
+    ]
+    if not pieces:
+        return ()
+    ring = np.concatenate([flatten(p.curve, 0.01 * p.curve.length) for p in pieces])
+    x, y = ring[:, 0], ring[:, 1]
+    area = 0.5 * float(np.sum(x * np.roll(y, -1) - np.roll(x, -1) * y))
+    if (area < 0.0) != hole:
+        pieces = [
+            BoundaryCurve(p.feature, p.kind, p.curve.reversed(), number) for p in reversed(pieces)
+        ]
+    return tuple(pieces)
