@@ -112,8 +112,8 @@ class Board(QWidget):
         control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
         tool = next((t for t in self.tools if t.key == text), None) if plain else None
         if tool is not None:
-            self.take(tool.name)
             self.canvas.setFocus(Qt.FocusReason.ShortcutFocusReason)
+            self.take(tool.name)
         elif key == Qt.Key.Key_Home:
             self.fit()
         elif text == "+" or (control and key in (Qt.Key.Key_Plus, Qt.Key.Key_Equal)):

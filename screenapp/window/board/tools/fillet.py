@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, ClassVar
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPoint, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
@@ -45,6 +45,13 @@ class FilletTool(Tool):
         over = place is not None and corner_of(place) is not None
         return Qt.CursorShape.PointingHandCursor if over else Qt.CursorShape.ArrowCursor
 
+    def start(self) -> None:
+        """Take up the corner that is selected, so that no mouse is needed."""
+        selection, canvas = self.canvas.document.selection, self.canvas
+        if len(selection) == 1 and selection[0] in canvas.drawn.corners:
+            at = canvas.frame_now.px(canvas.drawn.corners[selection[0]].at).toPoint()
+            self._take_up(selection[0], at + sketch.OFFSET)
+
     def stop(self, following: Tool | None) -> None:
         """Drop the radius being typed."""
         self._drop()
@@ -70,13 +77,14 @@ class FilletTool(Tool):
         corner = corner_of(place)
         if corner is None:
             return
-        self.corner = corner
-        now = self.canvas.document.part
-        found = edits.find(now, corner)
-        had = getattr(found.record, "round", 0.0) if found is not None else 0.0
         self.canvas.document.select(corner)
-        self._try(had or self._last)
-        self.canvas.entry.open_row(None)
+        self._take_up(corner, None)
+
+    def _take_up(self, corner: str, near: QPoint | None) -> None:
+        """Show the corner with the radius it has, or the one last given."""
+        self.corner = corner
+        self._try(self.canvas.drawn.corners[corner].round or self._last)
+        self.canvas.entry.open_row(None, near)
 
     def entry_fields(self) -> tuple[EntryField, ...]:
         """The radius."""

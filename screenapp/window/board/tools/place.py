@@ -4,8 +4,9 @@ from __future__ import annotations
 
 from typing import ClassVar
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPoint, Qt
 
+from screenapp.model.features import find
 from screenapp.window.board.tools.base import Place, Tool
 
 
@@ -21,9 +22,19 @@ class PlaceTool(Tool):
         over = place is not None and target_of(place) is not None
         return Qt.CursorShape.PointingHandCursor if over else Qt.CursorShape.ArrowCursor
 
-    def open_at(self, on: str, place: Place) -> None:
+    def open_at(self, on: str, near: QPoint) -> None:
         """Open the popover for a place."""
         raise NotImplementedError
+
+    def start(self) -> None:
+        """Take up what is selected, so that no mouse is needed."""
+        canvas, selection = self.canvas, self.canvas.document.selection
+        found = find(canvas.document.part, selection[0]) if len(selection) == 1 else None
+        if found is None or found.kind not in ("edge", "hole", "corner"):
+            return
+        at = canvas.drawn.anchor_of(selection[0])
+        if at is not None:
+            self.open_at(selection[0], canvas.frame_now.px(at).toPoint())
 
     def stop(self, following: Tool | None) -> None:
         """Settle what is open."""
@@ -48,7 +59,7 @@ class PlaceTool(Tool):
             self.say("Click an edge, a hole or a sharp corner.")
             return
         self.canvas.document.select(on)
-        self.open_at(on, place)
+        self.open_at(on, place.px.toPoint())
 
 
 class HoldTool(PlaceTool):
@@ -59,9 +70,9 @@ class HoldTool(PlaceTool):
     line: ClassVar[str] = "Click an edge, hole or corner to hold it."
     icon: ClassVar[str] = "hold"
 
-    def open_at(self, on: str, place: Place) -> None:
+    def open_at(self, on: str, near: QPoint) -> None:
         """Choose how it is held."""
-        self.canvas.placing.hold(on, place.px.toPoint())
+        self.canvas.placing.hold(on, near)
 
 
 class LoadTool(PlaceTool):
@@ -72,9 +83,9 @@ class LoadTool(PlaceTool):
     line: ClassVar[str] = "Click an edge, hole or corner to load it in the present case."
     icon: ClassVar[str] = "load"
 
-    def open_at(self, on: str, place: Place) -> None:
+    def open_at(self, on: str, near: QPoint) -> None:
         """Choose how it is loaded."""
-        self.canvas.placing.load(on, place.px.toPoint())
+        self.canvas.placing.load(on, near)
 
 
 def target_of(place: Place) -> str | None:

@@ -8,13 +8,14 @@ from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QKeyEvent, QPainter
 
 from screenapp.model import edits
-from screenapp.model.features import find, loops_of, place_name
+from screenapp.model.features import everything, find, loops_of, place_name
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board import sketch
 from screenapp.window.board.exact import exact_fields, exact_values, with_exact
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import grid_step
+from screenapp.window.board.naming import described
 from screenapp.window.board.quantity import written
 from screenapp.window.board.snapping import neighbours
 from screenapp.window.board.tools.base import Place, Tool
@@ -154,11 +155,13 @@ class SelectTool(Tool):
     # keys
 
     def key_press(self, event: QKeyEvent) -> bool:
-        """Delete, nudge, exact editor, everything."""
+        """Delete, nudge, exact editor, everything, and from one thing to the next."""
         key, selection = event.key(), self.canvas.document.selection
         control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
         if key == Qt.Key.Key_A and control:
             self._select_all()
+        elif key in (Qt.Key.Key_PageDown, Qt.Key.Key_PageUp):
+            self._select_next(1 if key == Qt.Key.Key_PageDown else -1)
         elif not selection:
             return False
         elif key in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace):
@@ -290,6 +293,23 @@ class SelectTool(Tool):
     def _select_all(self) -> None:
         drawn = self.canvas.drawn
         self.canvas.document.select(*drawn.corners, *drawn.holes, *drawn.probes)
+
+    def _select_next(self, step: int) -> None:
+        """Select the thing after or before the selected one, and say what it is."""
+        part, case = self.canvas.document.part, self.canvas.document.view.case
+        here = part.cases[case].id if case < len(part.cases) else ""
+        kinds = ("corner", "edge", "hole", "support", "load", "probe")
+        found = [
+            f for f in everything(part) if f.kind in kinds and (f.kind != "load" or f.owner == here)
+        ]
+        if not found:
+            return
+        ids = [f.record.id for f in found]
+        had = self.canvas.document.selection
+        at = ids.index(had[0]) + step if had and had[0] in ids else (0 if step > 0 else -1)
+        chosen = found[at % len(found)]
+        self.canvas.document.select(chosen.record.id)
+        self.say(f"Selected: {described(part, chosen)}.")
 
     def _select_box(self, box: QRectF, add: bool) -> None:
         if box.width() < DRAG_FROM and box.height() < DRAG_FROM:
