@@ -1,17 +1,26 @@
 """Colours, text sizes and spacing of the window: a paper and a slate theme.
 
 Supports are teal, loads ochre, what the user draws is ink; all are told apart by shape as well.
+Widgets ask `current()` when they paint and repaint on `notifier.changed`; the application's style
+sheet (`window/style.py`) is made from the same palette.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Literal
+
+from PySide6.QtCore import QObject, Qt, Signal
+from PySide6.QtGui import QColor, QFont, QFontDatabase, QGuiApplication, QPalette
 
 GRID = 4
 """Every margin and gap is a multiple of this [px]."""
 
 TEXT_SMALL, TEXT_BODY, TEXT_HEAD = 11, 13, 18
 """The three text sizes [px]."""
+
+Choice = Literal["system", "paper", "slate"]
+CHOICES: tuple[Choice, ...] = ("system", "paper", "slate")
 
 
 @dataclass(frozen=True)
@@ -35,6 +44,8 @@ class Palette:
     doubt: str
     doubt_ground: str
     good_ground: str
+    hover: str  # ground of what the pointer is over
+    chosen: str  # ground of what is selected
 
 
 PAPER = Palette(
@@ -55,6 +66,8 @@ PAPER = Palette(
     doubt="#8a6100",
     doubt_ground="#fbf3dc",
     good_ground="#e7f4ea",
+    hover="#eeece4",
+    chosen="#dfeaf3",
 )
 
 SLATE = Palette(
@@ -75,4 +88,111 @@ SLATE = Palette(
     doubt="#e6bf57",
     doubt_ground="#352d18",
     good_ground="#1f3327",
+    hover="#2a323c",
+    chosen="#24405a",
 )
+
+
+class _Notifier(QObject):
+    """Says when another palette is in force."""
+
+    changed = Signal()
+
+
+notifier = _Notifier()
+_choice: Choice = "system"
+_current: Palette = PAPER
+
+
+def current() -> Palette:
+    """The palette in force."""
+    return _current
+
+
+def choice() -> Choice:
+    """What the user chose: a theme, or to follow the system."""
+    return _choice
+
+
+def choose(wanted: Choice) -> None:
+    """Take a theme, or follow the system's colour scheme; tells `notifier` if colours change."""
+    global _choice
+    _choice = wanted
+    _settle()
+
+
+def follow_system(app: QGuiApplication) -> None:
+    """Take note of the system's colour scheme now and whenever it changes."""
+    app.styleHints().colorSchemeChanged.connect(lambda _scheme: _settle())
+    _settle()
+
+
+def _settle() -> None:
+    global _current
+    wanted = PAPER
+    if _choice == "slate" or (_choice == "system" and _system_is_dark()):
+        wanted = SLATE
+    if wanted is not _current:
+        _current = wanted
+        notifier.changed.emit()
+
+
+def _system_is_dark() -> bool:
+    app = QGuiApplication.instance()
+    if not isinstance(app, QGuiApplication):
+        return False
+    return app.styleHints().colorScheme() == Qt.ColorScheme.Dark
+
+
+def colour(name: str, alpha: float = 1.0) -> QColor:
+    """A colour of the palette in force by its field name, e.g. `colour("accent", 0.5)`."""
+    found = QColor(str(getattr(_current, name)))
+    found.setAlphaF(alpha)
+    return found
+
+
+def font(size: int = TEXT_BODY, weight: QFont.Weight = QFont.Weight.Normal) -> QFont:
+    """The program's one text face at a size [px], with figures of equal width."""
+    family = "Inter" if "Inter" in QFontDatabase.families() else ""
+    made = (
+        QFont(family) if family else QFontDatabase.systemFont(QFontDatabase.SystemFont.GeneralFont)
+    )
+    made.setPixelSize(size)
+    made.setWeight(weight)
+    made.setFeature(QFont.Tag("tnum"), 1)
+    return made
+
+
+def qt_palette(palette: Palette) -> QPalette:
+    """The palette for what Qt draws by itself."""
+    roles = QPalette.ColorRole
+    made = QPalette()
+    for role, name in {
+        roles.Window: palette.chrome,
+        roles.WindowText: palette.ink,
+        roles.Base: palette.sheet,
+        roles.AlternateBase: palette.chrome,
+        roles.Text: palette.ink,
+        roles.PlaceholderText: palette.quiet,
+        roles.Button: palette.chrome,
+        roles.ButtonText: palette.ink,
+        roles.BrightText: palette.bad,
+        roles.Highlight: palette.accent,
+        roles.HighlightedText: palette.on_accent,
+        roles.Link: palette.accent,
+        roles.LinkVisited: palette.accent,
+        roles.ToolTipBase: palette.ink,
+        roles.ToolTipText: palette.sheet,
+        roles.Light: palette.sheet,
+        roles.Midlight: palette.chrome,
+        roles.Mid: palette.faint,
+        roles.Dark: palette.quiet,
+        roles.Shadow: palette.ink,
+        roles.Accent: palette.accent,
+    }.items():
+        made.setColor(role, QColor(name))
+    for role in (roles.WindowText, roles.Text, roles.ButtonText):
+        faded = QColor(palette.quiet)
+        faded.setAlphaF(0.6)
+        made.setColor(QPalette.ColorGroup.Disabled, role, faded)
+    return made

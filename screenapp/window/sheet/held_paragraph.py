@@ -1,0 +1,109 @@
+"""3 Held: where and how the part is held."""
+
+from __future__ import annotations
+
+from screenapp.model.errors import Fault
+from screenapp.model.features import place_name
+from screenapp.model.part import FixedSupport, PrescribedSupport, RollerSupport, Support
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.places import place_choices
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf
+
+KINDS = (
+    Choice("fixed", "fixed", "held in both directions"),
+    Choice("normal", "held across its boundary", "slides along it; on a hole: a pin"),
+    Choice("angle", "held along one direction", "slides across it"),
+    Choice("moved", "moved by a given amount", "x, y or both"),
+)
+
+
+class HeldParagraph(Paragraph):
+    """The supports."""
+
+    number = 3
+    title = "Held"
+    fields = ("supports",)
+
+    def build(self) -> None:
+        """The list and the link that adds to it."""
+        self.list = self.rows()
+        self.add = self.sentence()
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the supports."""
+        part = self.document.part
+        q = Quantities(part.display_units)
+        self.list.set([self._row(s, q) for s in part.supports])
+        add = Link("add", "+ support", self._add, "Hold another place", self._places)
+        self.add.set(add)
+        self.add.setVisible(bool(part.supports))
+        if part.supports:
+            return ()
+        if part.outline is None:
+            return ("Nothing holds it yet.",)
+        hold = Link("hold", "hold a place", self._add, choices=self._places)
+        return ("Nothing holds the part: ", hold, " or use the board's support tool.")
+
+    def says_already(self, fault: Fault) -> bool:
+        """That nothing holds it is told once."""
+        return fault.field == "supports" and not self.document.part.supports
+
+    def _places(self) -> tuple[Choice, ...]:
+        return place_choices(self.document)
+
+    def _add(self, on: str) -> None:
+        changes.add_support(self.document, on)
+
+    def _row(self, support: Support, q: Quantities) -> RowOf:
+        where = place_name(self.document.part, support.on)
+        return RowOf(
+            support.id,
+            (where,),
+            self._pieces(support, where, q),
+            lambda: changes.remove(self.document, support.id),
+            f"Remove the support at {where}",
+            (support.on,),
+        )
+
+    def _pieces(self, support: Support, where: str, q: Quantities) -> tuple[Piece | str, ...]:
+        change = changes.SupportChange(self.document, support.id)
+        texts = {c.key: c.text for c in KINDS}
+
+        def kind(key: str) -> Value:
+            return Value("kind", texts[key], f"How {where} is held", change.kind, lambda: KINDS)
+
+        if isinstance(support, FixedSupport):
+            return (kind("fixed"), " in both directions")
+        if isinstance(support, RollerSupport):
+            if support.angle is None:
+                turns = ", so that it can turn on it" if where.startswith("hole") else ""
+                return (kind("normal"), f", free to slide along it{turns}")
+            angle = q.value(
+                "angle",
+                support.angle,
+                "angle",
+                f"Held direction at {where}",
+                change.setter("angle"),
+            )
+            return (kind("angle"), ", at ", angle)
+        assert isinstance(support, PrescribedSupport)
+        x = q.optional_value(
+            "x",
+            support.x,
+            "displacement",
+            f"Movement of {where} along x",
+            change.setter("x"),
+            "free",
+        )
+        y = q.optional_value(
+            "y",
+            support.y,
+            "displacement",
+            f"Movement of {where} along y",
+            change.setter("y"),
+            "free",
+        )
+        return (kind("moved"), ": x ", x, ", y ", y)

@@ -1,0 +1,102 @@
+"""5 Limits: what the part must stay under."""
+
+from __future__ import annotations
+
+from screenapp.model.errors import Fault
+from screenapp.model.part import DisplacementLimit, Limit, Part, StressLimit
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf
+
+MEASURES = {"von_mises": "von Mises stress", "sigma_1": "largest tension"}
+AGAINST = {"proof_stress": "proof stress", "strength": "tensile strength"}
+
+
+class LimitsParagraph(Paragraph):
+    """The limits."""
+
+    number = 5
+    title = "Limits"
+    fields = ("limits",)
+
+    def build(self) -> None:
+        """The list and the links that add to it."""
+        self.list = self.rows(0)
+        self.add = self.sentence()
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the limits."""
+        part = self.document.part
+        q = Quantities(part.display_units)
+        self.list.set([self._row(part, limit, q) for limit in part.limits])
+        self.add.set(
+            Link("stress", "+ stress limit", lambda _key: changes.add_stress_limit(self.document)),
+            "   ",
+            Link(
+                "displacement",
+                "+ displacement limit",
+                lambda _key: changes.add_displacement_limit(self.document),
+            ),
+        )
+        self.add.setVisible(bool(part.limits))
+        if part.limits:
+            return ()
+        return (
+            "There is nothing to judge yet: set a ",
+            Link("stress", "stress limit", lambda _key: changes.add_stress_limit(self.document)),
+            " or a ",
+            Link(
+                "displacement",
+                "displacement limit",
+                lambda _key: changes.add_displacement_limit(self.document),
+            ),
+            ".",
+        )
+
+    def says_already(self, fault: Fault) -> bool:
+        """That there is no limit is told once."""
+        return fault.field == "limits" and not self.document.part.limits
+
+    def _row(self, part: Part, limit: Limit, q: Quantities) -> RowOf:
+        change = changes.LimitChange(self.document, limit.id)
+        pieces: tuple[Piece | str, ...]
+        if isinstance(limit, DisplacementLimit):
+            most = q.value(
+                "most", limit.most, "displacement", "Most displacement", change.setter("most")
+            )
+            pieces = ("Nothing moves by more than ", most, ".")
+        else:
+            pieces = self._stress(part, limit, change, q)
+        return RowOf(
+            limit.id,
+            (),
+            pieces,
+            lambda: changes.remove(self.document, limit.id),
+            "Remove this limit",
+        )
+
+    def _stress(
+        self, part: Part, limit: StressLimit, change: changes.LimitChange, q: Quantities
+    ) -> tuple[Piece | str, ...]:
+        measure = Value(
+            "measure",
+            MEASURES.get(limit.measure, limit.measure),
+            "Which stress",
+            lambda key: change.set("measure", key),
+            lambda: tuple(Choice(k, t) for k, t in MEASURES.items()),
+        )
+        against = Value(
+            "against",
+            AGAINST.get(limit.against, limit.against),
+            "Against what",
+            lambda key: change.set("against", key),
+            lambda: tuple(Choice(k, t) for k, t in AGAINST.items()),
+        )
+        factor = q.value("factor", limit.factor, "number", "Safety factor", change.setter("factor"))
+        allowed: tuple[str, ...] = (".",)
+        known = part.material and getattr(part.material, limit.against, None)
+        if known and limit.factor > 0.0:
+            allowed = (f": at most {q.show(known / limit.factor, 'stress')}.",)
+        return (measure, " times ", factor, " stays under the ", against, *allowed)

@@ -1,0 +1,228 @@
+"""4 Loaded: the load cases and what acts in each."""
+
+from __future__ import annotations
+
+import math
+
+from PySide6.QtCore import Qt
+from PySide6.QtWidgets import QVBoxLayout, QWidget
+
+from screenapp.model.errors import Fault
+from screenapp.model.features import everything, name_of, place_name
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    CircleHole,
+    Corner,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Load,
+    PointLoad,
+    PressureLoad,
+    ShearLoad,
+)
+from screenapp.window.document import Document
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.direction import direction_text
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf, Rows
+from screenapp.window.sheet.sentence import Sentence
+
+KIND_WORDS = {
+    "bearing": "a pin bears on it",
+    "force": "a force, spread evenly",
+    "line": "a force per length",
+    "pressure": "a pressure",
+    "shear": "a shear along it",
+    "point": "a force at the point",
+}
+
+
+class CaseBlock(QWidget):
+    """One load case: its name, its loads, and links that add and remove."""
+
+    def __init__(self, document: Document, parent: QWidget) -> None:
+        super().__init__(parent)
+        self._document = document
+        self.head = Sentence(self)
+        self.loads = Rows(document, 92, self)
+        self.foot = Sentence(self)
+        column = QVBoxLayout(self)
+        column.setContentsMargins(0, 0, 0, 4)
+        column.setSpacing(0)
+        for widget in (self.head, self.loads, self.foot):
+            column.addWidget(widget)
+
+    def show_case(self, case: Case, number: int) -> None:
+        """Show a case."""
+        document = self._document
+        q = Quantities(document.part.display_units)
+        change = changes.CaseChange(document, case.id)
+        name = Value("name", case.name, "Name of the load case", change.rename)
+        self.head.set("In case ", name, ":" if case.loads else ": nothing acts yet.")
+        self.head.on_delete = change.remove
+        self.loads.set([_load_row(document, case, load, q) for load in case.loads])
+        add = Link("add", "+ load", change.add, "Add a load to this case", self._choices)
+        pieces: list[Piece | str] = [add]
+        if len(document.part.cases) > 1:
+            gone = Link("remove", "remove the case", lambda _key: change.remove())
+            pieces += ["   ", gone]
+        if number != document.view.case and len(document.part.cases) > 1:
+            show = Link("view", "show it on the board", lambda _key: document.look(case=number))
+            pieces += ["   ", show]
+        self.foot.set(*pieces)
+
+    def _choices(self) -> tuple[Choice, ...]:
+        return load_choices(self._document)
+
+
+class LoadedParagraph(Paragraph):
+    """All cases."""
+
+    number = 4
+    title = "Loaded"
+    fields = ("cases",)
+
+    def build(self) -> None:
+        """A column of case blocks, kept by id."""
+        self._blocks: dict[str, CaseBlock] = {}
+        self._column = QVBoxLayout()
+        self._column.setContentsMargins(0, 0, 0, 0)
+        self._column.setSpacing(4)
+        self.body.addLayout(self._column)
+        self.add = self.sentence()
+        self.document.view_changed.connect(self.refresh)
+
+    def block(self, case_id: str) -> CaseBlock:
+        """The block of a case."""
+        return self._blocks[case_id]
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the cases."""
+        part = self.document.part
+        wanted = [case.id for case in part.cases]
+        for id_ in [i for i in self._blocks if i not in wanted]:
+            gone = self._blocks.pop(id_)
+            self._column.removeWidget(gone)
+            gone.hide()
+            gone.deleteLater()
+        for number, case in enumerate(part.cases):
+            block = self._blocks.get(case.id)
+            if block is None:
+                block = self._blocks[case.id] = CaseBlock(self.document, self)
+            if self._column.indexOf(block) != number:
+                self._column.removeWidget(block)
+                self._column.insertWidget(number, block, 0, Qt.AlignmentFlag(0))
+            block.show_case(case, number)
+        self.add.set(
+            Link("add", "+ case", lambda _key: changes.add_case(self.document), "Add a load case")
+        )
+        self.add.setVisible(bool(part.cases))
+        if part.cases:
+            return ()
+        if part.outline is None:
+            return ("Nothing acts on it yet.",)
+        load = Link(
+            "load",
+            "load a place",
+            lambda key: changes.add_load(self.document, None, key),
+            choices=lambda: load_choices(self.document),
+        )
+        return ("Nothing acts on the part: ", load, " or use the board's load tool.")
+
+    def says_already(self, fault: Fault) -> bool:
+        """That nothing acts is told once."""
+        return fault.field == "cases" and not self.document.part.cases
+
+
+def load_choices(document: Document) -> tuple[Choice, ...]:
+    """Kinds of load by place: keys are "kind place"; the part's own weight is "gravity"."""
+    groups: dict[str, list[Choice]] = {"Holes": [], "Edges": [], "Sharp corners": []}
+    chosen: list[Choice] = []
+    for found in everything(document.part):
+        record = found.record
+        if found.kind == "hole":
+            kinds = ("force", "line", "pressure", "shear")
+            if isinstance(record, CircleHole):
+                kinds = ("bearing", *kinds)
+            title = "Holes"
+        elif found.kind == "edge":
+            kinds, title = ("force", "line", "pressure", "shear"), "Edges"
+        elif isinstance(record, Corner) and record.round == 0.0:
+            kinds, title = ("point",), "Sharp corners"
+        else:
+            continue
+        lines = tuple(Choice(f"{kind} {record.id}", KIND_WORDS[kind]) for kind in kinds)
+        line = Choice(record.id, name_of(found), children=lines)
+        groups[title].append(line)
+        if record.id in document.selection:
+            chosen.append(line)
+    made: list[Choice] = [Choice("-", "Selected"), *chosen] if chosen else []
+    for title, lines_of in groups.items():
+        if lines_of:
+            made += [Choice("-", title), *lines_of]
+    return (*made, Choice("-", ""), Choice("gravity", "the part's own weight"))
+
+
+def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowOf:
+    change = changes.LoadChange(document, load.id)
+    if isinstance(load, GravityLoad):
+        where, also, name = "everywhere", (), "own weight"
+    else:
+        where, also = place_name(document.part, load.on), (load.on,)
+        name = f"load at {where}"
+    return RowOf(
+        load.id,
+        (where,),
+        _load_pieces(load, name, change, q),
+        change.remove,
+        f"Remove the {name} from {case.name}",
+        also,
+    )
+
+
+def _load_pieces(
+    load: Load, name: str, change: changes.LoadChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    if isinstance(load, PressureLoad):
+        value = q.value(
+            "p",
+            load.pressure,
+            "stress",
+            f"Pressure of {name}",
+            change.setter("pressure"),
+            "positive presses on the material",
+        )
+        return ("pressed by ", value)
+    if isinstance(load, ShearLoad):
+        value = q.value(
+            "q",
+            load.per_length,
+            "line load",
+            f"Shear of {name}",
+            change.setter("per_length"),
+            "positive runs with the material on its left",
+        )
+        return ("sheared along by ", value)
+    kinds = {
+        BearingLoad: ("a pin bears with ", "force"),
+        ForceLoad: ("pulled by ", "force"),
+        PointLoad: ("pulled at the point by ", "force"),
+        LineLoad: ("pulled by ", "line load"),
+        GravityLoad: ("own weight under ", "acceleration"),
+    }
+    lead, kind = kinds[type(load)]
+    size = math.hypot(load.x, load.y)
+    parts = f"x {q.show(load.x, kind)}, y {q.show(load.y, kind)}"
+    way = Value(
+        "way",
+        direction_text(load.x, load.y),
+        f"Direction of {name}",
+        change.direct,
+        hint=f"right, up, left, down, or an angle from +x; now {parts}",
+    )
+    amount = q.value("size", size, kind, f"Size of {name}", change.resize, f"Now {parts}")
+    return (lead, amount, " ", way)

@@ -1,0 +1,134 @@
+"""A numbered paragraph of the sheet: its mark, its sentences, what is missing and what is wrong."""
+
+from __future__ import annotations
+
+from PySide6.QtCore import Qt
+from PySide6.QtGui import QFont, QPainter, QPaintEvent, QPen
+from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
+
+from screenapp.model.errors import Fault
+from screenapp.window import theme
+from screenapp.window.document import Document
+from screenapp.window.sheet.field import LINE
+from screenapp.window.sheet.mark import Mark, State
+from screenapp.window.sheet.pieces import Link, Piece, Words
+from screenapp.window.sheet.rows import RowOf, Rows
+from screenapp.window.sheet.sentence import Sentence
+
+
+class Paragraph(QWidget):
+    """Base of the eight paragraphs; each fills its own body from the document.
+
+    A subclass sets `number`, `title` and `fields` (first names of the file's fields whose faults it
+    shows) and implements `fill`, which returns what is missing (empty when nothing is).
+    """
+
+    number = 0
+    title = ""
+    fields: tuple[str, ...] = ()
+
+    def __init__(self, document: Document, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.document = document
+        self.state: State = "open"
+        self.mark = Mark(self)
+        self.body = QVBoxLayout()
+        self.body.setContentsMargins(0, 0, 0, 0)
+        self.body.setSpacing(4)
+        number = QLabel(str(self.number), self)
+        number.setProperty("quiet", True)
+        number.setFixedSize(20, LINE)
+        heading = QLabel(self.title, self)
+        heading.setFont(theme.font(theme.TEXT_BODY, QFont.Weight.DemiBold))
+        heading.setFixedHeight(LINE)
+        self.missing = Sentence(self)
+        self.missing.hide()
+        self._faults = Rows(document, 0, self)
+        column = QVBoxLayout()
+        column.setContentsMargins(0, 0, 0, 0)
+        column.setSpacing(2)
+        column.addWidget(heading)
+        column.addLayout(self.body)
+        column.addWidget(self.missing)
+        column.addWidget(self._faults)
+        line = QHBoxLayout(self)
+        line.setContentsMargins(20, 10, 20, 12)
+        line.setSpacing(4)
+        line.addWidget(number, 0, Qt.AlignmentFlag.AlignTop)
+        line.addLayout(column, 1)
+        line.addSpacing(8)
+        line.addWidget(self.mark, 0, Qt.AlignmentFlag.AlignTop)
+        self.setAccessibleName(f"Paragraph {self.number}, {self.title}")
+        self.build()
+
+    def build(self) -> None:
+        """Make the widgets of the body, once."""
+        raise NotImplementedError
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the document's state; return the sentence that says what is missing, or ()."""
+        raise NotImplementedError
+
+    def outdated(self) -> bool:
+        """Whether it shows findings of an older part."""
+        return False
+
+    def refresh(self) -> None:
+        """Show the document as it now is."""
+        missing = self.fill()
+        faults = [f for f in self.document.faults if self.owns(f)]
+        shown = [f for f in faults if not self.says_already(f)]
+        self.missing.set(*missing)
+        self.missing.setVisible(bool(missing))
+        self._faults.set([_fault_row(i, f, self._mend(f)) for i, f in enumerate(shown)])
+        blocked = any(f.blocks for f in faults)
+        self.state = "open" if missing or blocked else "set"
+        if self.state == "set" and self.outdated():
+            self.state = "out of date"
+        self.mark.show_state(self.state, self.title)
+
+    def owns(self, fault: Fault) -> bool:
+        """Whether a fault belongs to this paragraph."""
+        return fault.field.split(".")[0] in self.fields
+
+    def says_already(self, fault: Fault) -> bool:
+        """Whether the missing sentence says the same; a subclass may answer."""
+        del fault
+        return False
+
+    def sentence(self) -> Sentence:
+        """A sentence at the end of the body."""
+        made = Sentence(self)
+        made.pointed.connect(lambda id_: self.document.hover(id_ or None))
+        self.body.addWidget(made)
+        return made
+
+    def rows(self, first_width: int = 92) -> Rows:
+        """A list at the end of the body."""
+        made = Rows(self.document, first_width, self)
+        self.body.addWidget(made)
+        return made
+
+    def _mend(self, fault: Fault) -> tuple[Piece | str, ...]:
+        ids = fault.ids
+        if not ids:
+            return ()
+        return (" ", Link("show", "Show it", lambda _key: self.document.select(*ids)))
+
+    def paintEvent(self, _event: QPaintEvent) -> None:
+        """A pale line at its foot."""
+        painter = QPainter(self)
+        painter.setPen(QPen(theme.colour("faint"), 1))
+        painter.drawLine(0, self.height() - 1, self.width(), self.height() - 1)
+
+
+def _fault_row(number: int, fault: Fault, mend: tuple[Piece | str, ...]) -> RowOf:
+    colour = "bad" if fault.blocks else "doubt"
+    said = f"{capital(fault.cause)}: {fault.mend.rstrip('.')}."
+    return RowOf(f"fault {number}", (), (Words(said, colour=colour), *mend))
+
+
+def capital(text: str) -> str:
+    """The sentence with a capital letter and no full stop."""
+    text = text.rstrip(".")
+    return text[:1].upper() + text[1:]

@@ -1,0 +1,166 @@
+"""1 Part: what is drawn, and the numbers of its holes and of what is selected."""
+
+from __future__ import annotations
+
+
+from screenapp.model.errors import Fault, InvalidPartError
+from screenapp.model.features import find, hole_word
+from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole
+from screenapp.model.shape import Shape, shape_of
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Choice, Piece, Value, Words
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf
+
+UNITS = {"mm-N-MPa": "mm, N, MPa", "in-lbf-ksi": "in, lbf, ksi"}
+SHOWN_HOLES = 12
+
+
+class PartParagraph(Paragraph):
+    """Outline and holes."""
+
+    number = 1
+    title = "Part"
+    fields = ("outline", "holes", "dimensions", "display_units", "formulas", "")
+
+    def build(self) -> None:
+        """A summary, the holes, and what is selected."""
+        self.summary = self.sentence()
+        self.holes = self.rows(64)
+        self.more = self.sentence()
+        self.picked = self.rows(64)
+        self.document.selection_changed.connect(self.refresh)
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the part."""
+        part = self.document.part
+        q = Quantities(part.display_units)
+        self.summary.set(*self._summary(part, q))
+        self.holes.set([self._hole_row(h, q) for h in part.holes[:SHOWN_HOLES]])
+        rest = len(part.holes) - SHOWN_HOLES
+        self.more.set(f"And {rest} more holes: select one to see it." if rest > 0 else "")
+        self.more.setVisible(rest > 0)
+        self.picked.set(self._picked_rows(part, q))
+        if part.outline is None:
+            return ("Nothing is drawn yet: draw a closed outline on the board.",)
+        return ()
+
+    def says_already(self, fault: Fault) -> bool:
+        """The missing outline is told once."""
+        return fault.field == "outline" and self.document.part.outline is None
+
+    def _summary(self, part: Part, q: Quantities) -> tuple[Piece | str, ...]:
+        units = Value(
+            "units",
+            UNITS[part.display_units],
+            "Units shown",
+            lambda key: changes.set_units(self.document, key),
+            lambda: tuple(Choice(k, t) for k, t in UNITS.items()),
+            "Anything typed may carry a unit of its own",
+        )
+        shown: tuple[Piece | str, ...] = (" Shown in ", units, ".")
+        if part.outline is None:
+            return ("Shown in ", units, ".")
+        holes = _count(len(part.holes), "hole")
+        text = f"Outline of {_count(len(part.outline.edges), 'edge')}, {holes}"
+        try:
+            shape = shape_of(part)
+        except InvalidPartError:
+            return (f"{text}.", *shown)
+        return (f"{text}; {_size(part, shape, q)}.", *shown)
+
+    def _hole_row(self, hole: Hole, q: Quantities) -> RowOf:
+        change = changes.HoleChange(self.document, hole.id)
+        pieces: tuple[Piece | str, ...]
+        where = f"hole {hole.id}"
+
+        def length(key: str, value: float, what: str) -> Value:
+            return q.value(key, value, "length", f"{what} of {where}", change.setter(key))
+
+        if isinstance(hole, CircleHole):
+            pieces = (
+                "round, Ø ",
+                length("diameter", hole.diameter, "Diameter"),
+                " at ",
+                length("x", hole.centre[0], "Centre x"),
+                ", ",
+                length("y", hole.centre[1], "Centre y"),
+            )
+        elif isinstance(hole, SlotHole):
+            pieces = (
+                "slot ",
+                length("length", hole.length, "Length"),
+                " × ",
+                length("width", hole.width, "Width"),
+                " at ",
+                length("x", hole.centre[0], "Centre x"),
+                ", ",
+                length("y", hole.centre[1], "Centre y"),
+                ", turned ",
+                q.value("angle", hole.angle, "angle", f"Angle of {where}", change.setter("angle")),
+            )
+        else:
+            edges = len(hole.loop.edges) if isinstance(hole, LoopHole) else 0
+            pieces = (f"{hole_word(hole)} of {_count(edges, 'edge')}",)
+        return RowOf(
+            hole.id,
+            (where,),
+            pieces,
+            lambda: changes.remove(self.document, hole.id),
+            f"Remove {where}",
+        )
+
+    def _picked_rows(self, part: Part, q: Quantities) -> list[RowOf]:
+        rows = []
+        for id_ in self.document.selection[:6]:
+            found = find(part, id_)
+            if found is None:
+                continue
+            record = found.record
+            if isinstance(record, Corner):
+                rows.append(self._corner_row(record, q))
+            elif isinstance(record, Edge):
+                rows.append(self._edge_row(part, record, q))
+        return rows
+
+    def _corner_row(self, corner: Corner, q: Quantities) -> RowOf:
+        change = changes.CornerChange(self.document, corner.id)
+        name = f"corner {corner.id}"
+        return RowOf(
+            corner.id,
+            (name,),
+            (
+                "at ",
+                q.value("x", corner.at[0], "length", f"x of {name}", change.setter("x")),
+                ", ",
+                q.value("y", corner.at[1], "length", f"y of {name}", change.setter("y")),
+                ", rounded by ",
+                q.value(
+                    "round", corner.round, "length", f"Round of {name}", change.setter("round")
+                ),
+            ),
+            lambda: changes.remove(self.document, corner.id),
+            f"Remove {name}",
+        )
+
+    def _edge_row(self, part: Part, edge: Edge, q: Quantities) -> RowOf:
+        long = changes.edge_length(part, edge.id)
+        kind = "straight" if edge.through is None else "arc"
+        text = f"{kind}, {q.show(long, 'length')} long" if long is not None else kind
+        return RowOf(edge.id, (f"edge {edge.id}",), (Words(text),))
+
+
+def _size(part: Part, shape: Shape, q: Quantities) -> str:
+    x0, y0, x1, y1 = shape.bounds
+    text = (
+        f"{q.bare(x1 - x0, 'length')} × {q.show(y1 - y0, 'length')}, {q.show(shape.area, 'area')}"
+    )
+    if part.material is not None:
+        mass = shape.area * part.wall.thickness * 1e-9 * part.material.density
+        text += f", {q.show(mass, 'mass')}"
+    return text
+
+
+def _count(n: int, word: str) -> str:
+    return f"{n or 'no'} {word}{'' if n == 1 else 's'}"

@@ -1,0 +1,161 @@
+"""Numbers of the sheet as text and back, in the units that the part is shown in."""
+
+from __future__ import annotations
+
+import math
+import re
+from collections.abc import Callable
+from dataclasses import dataclass
+
+from screenapp.model.errors import ScreenappError
+from screenapp.model.kinds import KINDS, KindName
+from screenapp.model.part import DisplayUnits
+from screenapp.model.units import format_number, format_quantity, parse_quantity
+from screenapp.window.sheet.pieces import Value
+
+_BARE = re.compile(r"[\d\s.,+\-−eE/]+")
+
+
+@dataclass(frozen=True)
+class Quantities:
+    """Shows and reads quantities.
+
+    Beside the kinds of `model.kinds` it knows "modulus" (shown in GPa or ksi) and "count".
+    """
+
+    units: DisplayUnits
+
+    def show(self, value: float, kind: str) -> str:
+        """A value with its unit."""
+        if kind == "count":
+            return str(round(value))
+        if kind == "modulus":
+            if self.units == "mm-N-MPa":
+                return f"{format_number(value / 1000.0, 'stress')} GPa"
+            kind = "stress"
+        if kind == "mass" and self.units == "mm-N-MPa" and value < 1.0:
+            return f"{format_number(value * 1000.0, 'number', digits=3)} g"
+        return format_quantity(value, _known(kind), self.units)
+
+    def bare(self, value: float, kind: str) -> str:
+        """A value without its unit."""
+        return format_number(value, _known(kind), self.units)
+
+    def read(self, text: str, kind: str) -> float:
+        """The stored value of what was typed.
+
+        Raises:
+            ScreenappError: it is no quantity of this kind.
+        """
+        if kind == "count":
+            value = parse_quantity(text, "number", self.units)
+            if value != round(value):
+                raise ScreenappError(f"“{text}” is not a whole number", "type one such as 3")
+            return value
+        if kind == "modulus":
+            if self.units == "mm-N-MPa" and _BARE.fullmatch(text):
+                text = f"{text} GPa"
+            kind = "stress"
+        return parse_quantity(text, _known(kind), self.units)
+
+    def typed(self, value: float, kind: str) -> str:
+        """The text to begin typing with: all figures, so that accepting it changes nothing."""
+        if kind in ("count", "modulus"):
+            return self.show(value, kind)
+        number = format_number(value, _known(kind), self.units, None)
+        label = KINDS[_known(kind)].shown(self.units)[0]
+        return number + label if label in ("", "°") else f"{number} {label}"
+
+    def value(
+        self,
+        key: str,
+        value: float,
+        kind: str,
+        name: str,
+        set_: Callable[[float], None],
+        hint: str = "",
+    ) -> Value:
+        """A number of a sentence that can be typed anew; `set_` takes the stored value."""
+        return Value(
+            key,
+            self.show(value, kind),
+            name,
+            lambda text: set_(self.read(text, kind)),
+            hint=hint or self._hint(kind),
+            typed=self.typed(value, kind),
+        )
+
+    def optional_value(
+        self,
+        key: str,
+        value: float | None,
+        kind: str,
+        name: str,
+        set_: Callable[[float | None], None],
+        none: str = "not given",
+    ) -> Value:
+        """As `value`, but it may be missing: an empty text or the word `none` leaves it out."""
+
+        def commit(text: str) -> None:
+            empty = not text.strip() or text.strip() == none
+            set_(None if empty else self.read(text, kind))
+
+        return Value(
+            key,
+            none if value is None else self.show(value, kind),
+            name,
+            commit,
+            hint=f"{self._hint(kind)}; empty: {none}",
+            typed="" if value is None else self.typed(value, kind),
+        )
+
+    def _hint(self, kind: str) -> str:
+        if kind in ("count", "number"):
+            return "Enter or click to type"
+        if kind == "modulus":
+            kind = "stress"
+        return f"Type e.g. {KINDS[_known(kind)].example}"
+
+
+def _known(kind: str) -> KindName:
+    names: dict[str, KindName] = {
+        "displacement": "length",
+        "line load": "line_load",
+        "share": "ratio",
+        "modulus": "stress",
+    }
+    if kind in names:
+        return names[kind]
+    for name in KINDS:
+        if name == kind:
+            return name
+    raise KeyError(kind)
+
+
+def grouped(n: int) -> str:
+    """A whole number with its thousands set apart by thin spaces.
+
+    Example:
+        >>> grouped(6480)
+        '6\\u202f480'
+    """
+    return f"{n:,}".replace(",", "\u202f")
+
+
+def percent(share: float) -> str:
+    """A share as a percentage with two figures."""
+    return f"{100.0 * share:.2g} %" if math.isfinite(share) else "unknown"
+
+
+def power(value: float) -> str:
+    """A small number as a power of ten: 3·10⁻¹².
+
+    Example:
+        >>> power(3.2e-12), power(0.0)
+        ('3·10⁻¹²', '0')
+    """
+    if value == 0.0 or not math.isfinite(value):
+        return "0" if value == 0.0 else "no value"
+    mantissa, exponent = f"{value:.0e}".split("e")
+    raised = str(int(exponent)).translate(str.maketrans("-0123456789", "⁻⁰¹²³⁴⁵⁶⁷⁸⁹"))
+    return f"{mantissa}·10{raised}"

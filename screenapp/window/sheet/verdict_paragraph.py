@@ -1,0 +1,60 @@
+"""8 Verdict: each limit in each case, the reasons, the cautions, and who decides."""
+
+from __future__ import annotations
+
+from screenapp.model.findings import Findings, LimitFindings
+from screenapp.window.sheet.limits_table import LimitsTable
+from screenapp.window.sheet.paragraph import Paragraph, capital
+from screenapp.window.sheet.pieces import Piece, Words
+from screenapp.window.sheet.rows import RowOf
+
+ALWAYS = "A screening, not an approval: local codes and a licensed engineer decide."
+
+
+class VerdictParagraph(Paragraph):
+    """The verdicts."""
+
+    number = 8
+    title = "Verdict"
+    fields = ()
+
+    def build(self) -> None:
+        """A table, reasons, cautions and the closing sentence."""
+        self.table = LimitsTable(self.document, self)
+        self.body.addWidget(self.table)
+        self.reasons = self.rows(0)
+        self.cautions = self.sentence()
+        self.always = self.sentence()
+        self.always.set(ALWAYS)
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the verdicts."""
+        findings = self.document.findings
+        self.table.show_limits(findings.limits if findings else ())
+        texts = _reasons(findings) if findings else []
+        quiet = self.outdated()
+        self.reasons.set(
+            [RowOf(f"reason {i}", (), (Words(t, quiet=quiet),)) for i, t in enumerate(texts)]
+        )
+        cautions = " ".join(f"{capital(c)}." for c in findings.cautions) if findings else ""
+        self.cautions.set(Words(cautions, colour="doubt"))
+        self.cautions.setVisible(bool(cautions))
+        if findings is None:
+            return ("The part has not been screened.",)
+        return ()
+
+    def outdated(self) -> bool:
+        """The verdict belongs to an older part."""
+        return self.document.findings is not None and not self.document.current
+
+
+def _reasons(findings: Findings) -> list[str]:
+    said = [f"{capital(reason)}." for reason in findings.reasons]
+    for limit in findings.limits:
+        if limit.reason and not any(_same(limit, text) for text in said):
+            said.append(f"{capital(limit.reason)}.")
+    return said
+
+
+def _same(limit: LimitFindings, text: str) -> bool:
+    return capital(limit.reason) in text

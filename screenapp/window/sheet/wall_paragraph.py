@@ -1,0 +1,127 @@
+"""2 Wall: thickness, material, and what holds across the wall."""
+
+from __future__ import annotations
+
+from screenapp.model.errors import Fault
+from screenapp.model.materials import library
+from screenapp.model.part import Material
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.quantities import Quantities
+
+OWN = "own"
+STATES = {
+    "plane stress": ("plane stress", "Free to contract across: "),
+    "plane strain": ("plane strain", "Held from contracting across: "),
+}
+
+
+class WallParagraph(Paragraph):
+    """The wall and its material."""
+
+    number = 2
+    title = "Wall"
+    fields = ("wall", "materials")
+
+    def build(self) -> None:
+        """One sentence for the wall, one for the material's figures."""
+        self.wall = self.sentence()
+        self.figures = self.sentence()
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the wall."""
+        part = self.document.part
+        q = Quantities(part.display_units)
+        thickness = q.value(
+            "thickness",
+            part.wall.thickness,
+            "length",
+            "Wall thickness",
+            lambda value: changes.set_wall(self.document, "thickness of the wall", thickness=value),
+        )
+        state, lead = STATES.get(part.wall.state, (part.wall.state, ""))
+        across = Value(
+            "state",
+            state,
+            "What holds across the wall",
+            lambda key: changes.set_wall(self.document, "state of the wall", state=key),
+            lambda: (
+                Choice("plane stress", "plane stress", "thin wall, free to contract"),
+                Choice("plane strain", "plane strain", "long or thick, held across"),
+            ),
+        )
+        if part.material is None:
+            self.wall.set("The wall is ", thickness, " thick. ", lead, across, ".")
+            self.figures.hide()
+            return (
+                "No material is chosen: ",
+                Link("choose", "choose a material", self._choose, choices=self._choices),
+                ".",
+            )
+        material = Value(
+            "material", part.material.name, "Material", self._choose, choices=self._choices
+        )
+        self.wall.set("The wall is ", thickness, " thick, of ", material, ". ", lead, across, ".")
+        self.figures.set(*self._figures(part.material, q))
+        self.figures.show()
+        return ()
+
+    def says_already(self, fault: Fault) -> bool:
+        """That no material is chosen is told once."""
+        return fault.field == "wall.material" and not self.document.part.wall.material
+
+    def _figures(self, m: Material, q: Quantities) -> tuple[Piece | str, ...]:
+        change = changes.MaterialChange(self.document, m.name)
+        proof = q.optional_value(
+            "proof_stress", m.proof_stress, "stress", "Proof stress", change.setter("proof_stress")
+        )
+        strength = q.optional_value(
+            "strength", m.strength, "stress", "Tensile strength", change.setter("strength")
+        )
+        source = (f" ({m.source})",) if m.source else ()
+        return (
+            "E ",
+            q.value(
+                "E",
+                m.youngs_modulus,
+                "modulus",
+                "Young's modulus E",
+                change.setter("youngs_modulus"),
+            ),
+            ", ν ",
+            q.value(
+                "nu", m.poissons_ratio, "number", "Poisson's ratio", change.setter("poissons_ratio")
+            ),
+            ", density ",
+            q.value("density", m.density, "density", "Density", change.setter("density")),
+            ", proof stress ",
+            proof,
+            ", strength ",
+            strength,
+            ".",
+            *source,
+        )
+
+    def _choices(self) -> tuple[Choice, ...]:
+        part = self.document.part
+        own = {m.name for m in part.materials}
+        lines = [Choice(m.name, m.name, self._remark(m)) for m in part.materials]
+        if lines:
+            lines.insert(0, Choice("-", "In this part"))
+            lines.append(Choice("-", "Library"))
+        lines += [Choice(m.name, m.name, self._remark(m)) for m in library() if m.name not in own]
+        lines += [Choice("-", ""), Choice(OWN, "Own material…", "give its figures")]
+        return tuple(lines)
+
+    def _remark(self, m: Material) -> str:
+        q = Quantities(self.document.part.display_units)
+        return "" if m.proof_stress is None else q.show(m.proof_stress, "stress")
+
+    def _choose(self, key: str) -> None:
+        part = self.document.part
+        if key == OWN:
+            changes.own_material(self.document)
+            return
+        known = {m.name: m for m in (*library(), *part.materials)}
+        changes.choose_material(self.document, known[key])
