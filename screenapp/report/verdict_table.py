@@ -4,14 +4,15 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
-from screenapp.report.estimate_words import estimate_words
 
 
 def verdict_table(part: Part, findings: Findings) -> str:
     """Title, verdict, limits, peaks, readings and the mesh, a line each."""
     cases = {case.case: case.name for case in findings.cases}
+    units = part.display_units
     lines = [part.title, findings.headline]
     lines += [f"  {reason}" for reason in findings.reasons if reason not in findings.headline]
     rows = [("limit", "case", "use", "trust", "verdict", "where")]
@@ -19,7 +20,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
         (
             limit.name,
             cases.get(limit.case, limit.case),
-            estimate_words(limit.utilisation, ""),
+            estimate_text(limit.utilisation, "factor", units),
             limit.utilisation.trust,
             limit.verdict,
             limit.place,
@@ -30,7 +31,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
     peaks = [("von Mises peak", "case", "value", "trust")]
     for case in findings.cases:
         peaks += [
-            (p.place, case.name, estimate_words(p.estimate, "MPa"), p.estimate.trust)
+            (p.place, case.name, estimate_text(p.estimate, "stress", units), p.estimate.trust)
             for p in case.peaks
             if p.quantity == "von_mises"
         ]
@@ -41,7 +42,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
             (
                 r.name,
                 cases.get(r.case, r.case),
-                estimate_words(r.values["von_mises"], "MPa"),
+                estimate_text(r.values["von_mises"], "stress", units),
                 r.trust,
                 r.place,
             )

@@ -10,7 +10,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from screenapp.model.findings import Estimate
-from screenapp.window.estimate_text import estimate_text, significant, unit_of, value_text
+from screenapp.model.estimate_text import estimate_text, significant, unit_of, value_text
 
 
 @pytest.mark.parametrize(

@@ -1,0 +1,124 @@
+"""The part as a vector drawing (SVG) for the record: outline, holes, mesh and peaks."""
+
+from __future__ import annotations
+
+import math
+from xml.sax.saxutils import escape
+
+import numpy as np
+
+from screenapp.model.curves import Segment
+from screenapp.model.findings import Findings
+from screenapp.model.part import Part
+from screenapp.model.shape import BoundaryCurve, Shape
+
+WIDTH = 720.0
+MARGIN = 48.0
+
+
+class _Paper:
+    """Turns mm into the drawing's pixels, y downwards."""
+
+    def __init__(self, shape: Shape) -> None:
+        x0, y0, x1, y1 = shape.bounds
+        span = max(x1 - x0, (y1 - y0) * 1.2)
+        self.scale = (WIDTH - 2.0 * MARGIN) / span
+        self.x0, self.y1 = x0, y1
+        self.width = (x1 - x0) * self.scale + 2.0 * MARGIN
+        self.height = (y1 - y0) * self.scale + 2.0 * MARGIN
+
+    def at(self, x: float, y: float) -> tuple[float, float]:
+        return MARGIN + (x - self.x0) * self.scale, MARGIN + (self.y1 - y) * self.scale
+
+
+def part_svg(part: Part, shape: Shape, findings: Findings) -> str:
+    """The part with its mesh in the background and its peaks numbered as in the tables."""
+    paper = _Paper(shape)
+    body = [_mesh_path(findings, paper), _outline_path(shape, paper)]
+    body += _names(part, shape, paper)
+    number = 0
+    for case in findings.cases:
+        for peak in case.peaks:
+            number += 1
+            x, y = paper.at(*peak.at)
+            kind = "open" if peak.estimate.trust != "settled" else "firm"
+            body.append(
+                f'<circle class="peak {kind}" cx="{x:.1f}" cy="{y:.1f}" r="4"/>'
+                f'<text class="number" x="{x + 7:.1f}" y="{y - 6:.1f}">{number}</text>'
+            )
+    for probe in part.readings:
+        x, y = paper.at(*probe.at)
+        body.append(
+            f'<path class="probe" d="M{x - 5:.1f} {y:.1f}h10M{x:.1f} {y - 5:.1f}v10"/>'
+            f'<text class="number" x="{x + 7:.1f}" y="{y + 13:.1f}">{escape(probe.name)}</text>'
+        )
+    return (
+        f'<svg xmlns="http://www.w3.org/2000/svg" role="img" aria-label="The part with its mesh" '
+        f'viewBox="0 0 {paper.width:.0f} {paper.height:.0f}" width="{paper.width:.0f}">'
+        + "".join(body)
+        + "</svg>"
+    )
+
+
+def _outline_path(shape: Shape, paper: _Paper) -> str:
+    data: list[str] = []
+    for first, last in shape.loops:
+        start = paper.at(*shape.curves[first].curve.start)
+        data.append(f"M{start[0]:.2f} {start[1]:.2f}")
+        data += [_piece(piece, paper) for piece in shape.curves[first:last]]
+        data.append("Z")
+    return f'<path class="outline" d="{"".join(data)}"/>'
+
+
+def _piece(piece: BoundaryCurve, paper: _Paper) -> str:
+    curve = piece.curve
+    x, y = paper.at(*curve.end)
+    if isinstance(curve, Segment):
+        return f"L{x:.2f} {y:.2f}"
+    r = curve.radius * paper.scale
+    large = int(abs(curve.sweep) > math.pi)
+    turn = int(curve.sweep < 0.0)  # y points down on paper
+    return f"A{r:.2f} {r:.2f} 0 {large} {turn} {x:.2f} {y:.2f}"
+
+
+def _mesh_path(findings: Findings, paper: _Paper) -> str:
+    fields = findings.last
+    if fields is None:
+        return ""
+    mesh = fields.mesh
+    pairs = np.sort(
+        np.concatenate([mesh.quads[:, [i, (i + 1) % 4]] for i in range(4)]), axis=1
+    )
+    pairs = np.unique(pairs, axis=0)
+    rim = {tuple(sorted((int(a), int(b)))) for a, _, b in mesh.side_nodes}
+    data: list[str] = []
+    for a, b in pairs:
+        if (int(a), int(b)) in rim:
+            continue
+        x0, y0 = paper.at(*mesh.nodes[a])
+        x1, y1 = paper.at(*mesh.nodes[b])
+        data.append(f"M{x0:.1f} {y0:.1f}L{x1:.1f} {y1:.1f}")
+    return f'<path class="mesh" d="{"".join(data)}"/>'
+
+
+def _names(part: Part, shape: Shape, paper: _Paper) -> list[str]:
+    """What supports and loads stand on, named where it is."""
+    held = {s.on for s in part.supports}
+    loaded = {load.on for case in part.cases for load in case.loads if hasattr(load, "on")}
+    out: list[str] = []
+    for feature in sorted(held | loaded):
+        pieces = shape.pieces_of(feature)
+        if pieces:
+            at = np.mean([shape.curves[i].curve.point(0.5) for i in pieces], axis=0)
+        else:
+            found = dict(shape.sharp_corners).get(feature)
+            if found is None:
+                continue
+            at = np.asarray(found)
+        x, y = paper.at(float(at[0]), float(at[1]))
+        kind = "support" if feature in held else "load"
+        out.append(
+            f'<text class="{kind}" x="{x:.1f}" y="{y + 4:.1f}" text-anchor="middle">'
+            f"{escape(feature)}</text>"
+        )
+    return out

@@ -1,0 +1,41 @@
+"""The numbers of a screening as CSV: peaks and readings, one row each."""
+
+from __future__ import annotations
+
+import csv
+import io
+
+from screenapp.model.findings import READING_QUANTITIES, Findings
+
+
+def peaks_csv(findings: Findings) -> str:
+    """Every peak of every case; stresses in MPa, lengths in mm; an empty high has no bound."""
+    text = io.StringIO()
+    writer = csv.writer(text, lineterminator="\n")
+    writer.writerow(
+        ["case", "quantity", "value_MPa", "low_MPa", "high_MPa", "trust", "x_mm", "y_mm", "place"]
+    )
+    for case in findings.cases:
+        for p in case.peaks:
+            e = p.estimate
+            high = "" if e.trust == "rising" else e.high
+            writer.writerow(
+                [case.name, p.quantity, e.value, e.low, high, e.trust, *p.at, p.place]
+            )
+    return text.getvalue()
+
+
+def readings_csv(findings: Findings) -> str:
+    """Every reading in every case: value, low and high of each quantity (MPa, mm)."""
+    text = io.StringIO()
+    writer = csv.writer(text, lineterminator="\n")
+    columns = [f"{q}{end}" for q in READING_QUANTITIES for end in ("", "_low", "_high")]
+    writer.writerow(["reading", "case", "x_mm", "y_mm", "trust", *columns])
+    names = {case.case: case.name for case in findings.cases}
+    for r in findings.readings:
+        numbers: list[float | str] = []
+        for q in READING_QUANTITIES:
+            e = r.values[q]
+            numbers += [e.value, e.low, "" if e.trust == "rising" else e.high]
+        writer.writerow([r.name, names.get(r.case, r.case), *r.at, r.trust, *numbers])
+    return text.getvalue()

@@ -1,0 +1,36 @@
+"""The fields of the last pass as a VTU file (nine-node quads, VTK cell type 28)."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import meshio
+import numpy as np
+
+from screenapp.model.findings import Fields
+from screenapp.model.part import Part
+from screenapp.model.solution import von_mises
+
+
+def write_vtu(part: Part, fields: Fields, path: Path) -> None:
+    """Write displacements [mm], stresses [MPa] and energy error of every case.
+
+    Arrays are named after the case's id: `displacement k1`, `stress k1` (σx, σy, τxy),
+    `von Mises k1`.  In plane strain the von Mises stress counts σz.
+    """
+    material = part.material
+    strain = part.wall.state == "plane strain" and material is not None
+    poisson = material.poissons_ratio if strain and material is not None else 0.0
+    mesh = fields.mesh
+    points = np.column_stack([mesh.nodes, np.zeros(mesh.n_nodes)])
+    at_nodes: dict[str, object] = {}
+    in_cells: dict[str, list[object]] = {}
+    for k, case in enumerate(part.cases):
+        moved = fields.solution.displacements[k]
+        at_nodes[f"displacement {case.id}"] = np.column_stack([moved, np.zeros(len(moved))])
+        at_nodes[f"stress {case.id}"] = fields.stress.nodal[k]
+        at_nodes[f"von Mises {case.id}"] = von_mises(fields.stress.nodal[k], poisson)
+        in_cells[f"energy error {case.id}"] = [fields.stress.energy_error[k]]
+    meshio.Mesh(points, [("quad9", mesh.quads)], point_data=at_nodes, cell_data=in_cells).write(
+        path, file_format="vtu"
+    )
