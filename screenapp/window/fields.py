@@ -9,8 +9,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.model.findings import Fields
-from screenapp.model.part import Material, Part, StressLimit
+from screenapp.model.part import Part, StressLimit
 from screenapp.model.solution import principal, von_mises
+from screenapp.screening.limits import allowable
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -67,22 +68,14 @@ def utilisation_of(fields: Fields, case: int, part: Part) -> Floats | NoField:
         return NoField("No limit on stress is set: add one under 5 Limits to see how much is used")
     shares: list[Floats] = []
     for limit in limits:
-        allowable = allowable_of(limit, part.material)
-        if allowable is None:
+        allowed = allowable(limit, part.material) if part.material is not None else None
+        if allowed is None:
             what = "proof stress" if limit.against == "proof_stress" else "strength"
             return NoField(f"The material has no {what}: give one under 2 Wall")
         # compression uses nothing of a limit on the largest principal stress
         measured = np.maximum(stress_of(fields, case, limit.measure, part), 0.0)
-        shares.append(measured / allowable)
+        shares.append(measured / allowed)
     return np.asarray(np.max(shares, axis=0))
-
-
-def allowable_of(limit: StressLimit, material: Material | None) -> float | None:
-    """The stress that the limit allows [MPa]: the material's value over the factor."""
-    if material is None:
-        return None
-    value = material.proof_stress if limit.against == "proof_stress" else material.strength
-    return None if value is None else value / limit.factor
 
 
 def error_share_of(fields: Fields, case: int, tolerance: float) -> Floats:

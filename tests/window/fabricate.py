@@ -189,9 +189,7 @@ def findings(part: Part, key: str, mesh: Mesh | None = None, trust: Trust = "set
         area=9286.0,
         cases=cases,
         readings=_readings(part, peak),
-        limits=(
-            LimitFindings("m1", "", "case1", use, "holds", (0.0, RADIUS), "hole h1, 90°", ""),
-        ),
+        limits=(LimitFindings("m1", "", "case1", use, "holds", (0.0, RADIUS), "hole h1, 90°", ""),),
         mesh=MeshFindings(
             "quad9",
             arrays.mesh.n_elements,

@@ -16,7 +16,7 @@ Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
 
 GROWN = 2
-"""Pixels by which the painted field is grown past the mesh before it is cut at the true boundary."""
+"""Pixels that the painted field is grown past the mesh before it is cut at the true boundary."""
 
 
 class FieldItem(ViewImage):

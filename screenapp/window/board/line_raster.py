@@ -12,7 +12,7 @@ Image = NDArray[np.float32]
 
 
 def rasterise_lines(starts: Floats, ends: Floats, view: Viewport) -> Image:
-    """Coverage (height, width), 0 to 1, of lines one pixel wide from `starts` to `ends`, (n, 2) [mm].
+    """Coverage (height, width), 0 to 1, of lines one pixel wide between points (n, 2) [mm].
 
     Each line is stepped along its longer direction; every step spreads over the two nearest pixels
     across it (Wu 1991, from memory).
@@ -48,9 +48,7 @@ def _draw(total: Floats, a: Floats, b: Floats, along: int, across: int, view: Vi
     share = place - floor
     line = floor.astype(np.int64)
     stride_along, stride_across = (view.width, 1) if along == 1 else (1, view.width)
-    most_along, most_across = (
-        (view.height, view.width) if along == 1 else (view.width, view.height)
-    )
+    most_along, most_across = (view.height, view.width) if along == 1 else (view.width, view.height)
     for offset, weight in ((0, 1.0 - share), (1, share)):
         row = line + offset
         kept = (row >= 0) & (row < most_across) & (position >= 0) & (position < most_along)
@@ -59,7 +57,7 @@ def _draw(total: Floats, a: Floats, b: Floats, along: int, across: int, view: Vi
 
 
 def _clip(a: Floats, b: Floats, width: int, height: int) -> tuple[Floats, Floats]:
-    """The pieces of the lines within two pixels of the image (Liang and Barsky 1984, from memory)."""
+    """The pieces within two pixels of the image (Liang and Barsky 1984, from memory)."""
     d = b - a
     enter, leave = np.zeros(len(a)), np.ones(len(a))
     for axis, most in ((0, width), (1, height)):

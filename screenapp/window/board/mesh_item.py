@@ -30,7 +30,7 @@ class MeshItem(ViewImage):
         super().__init__(Z_MESH)
 
     def show_mesh(self, mesh: Mesh, points: Floats, colour: str, strength: float) -> None:
-        """Show the mesh with its nodes at `points` [mm], (n_nodes, 2), in a colour at a strength."""
+        """Show the mesh, nodes at `points` (n_nodes, 2) [mm], at a strength of 0 to 1."""
         starts, ends = mesh_lines(mesh, points)
         sizes = mesh.element_sizes
 

@@ -95,7 +95,6 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         super().__init__()
         self.setZValue(z)
         self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
-        self.strength = 1.0
         self._render: Render | None = None
         self._colour: Callable[[Scalars], Words] | None = None
         self._clip: QPainterPath | None = None
@@ -176,12 +175,12 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
             round(area.height() * ratio),
         )
 
-    def viewRangeChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+    def viewRangeChanged(self, *_args: object) -> None:
         """The view moved: make a sharp picture when it stands still."""
         if self._render is not None:
             self._timer.start()
 
-    def viewTransformChanged(self, *_args: object) -> None:  # noqa: N802 - pyqtgraph's name
+    def viewTransformChanged(self, *_args: object) -> None:
         """The view was resized: make a sharp picture when it stands still."""
         if self._render is not None:
             self._timer.start()
@@ -202,7 +201,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         view = self.viewport()
         if self._render is None or view is None:
             return
-        views = (view,)
+        views: tuple[Viewport, ...] = (view,)
         if self._whole is None and not self._bounds.isEmpty():
             self._whole = self._bounds
             views = (_coarse(self._bounds), view)
@@ -241,7 +240,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
 
     # --- painting -------------------------------------------------------------------------
 
-    def boundingRect(self) -> QRectF:  # noqa: N802 - Qt's name
+    def boundingRect(self) -> QRectF:
         """Where something is shown [mm]."""
         return self._bounds
 
@@ -264,7 +263,6 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
     def _show(self, painter: QPainter, to_screen: QTransform) -> None:
         if not self._shown:
             return
-        painter.setOpacity(self.strength)
         clip = self._clip if self._clip is not None else _rectangle(self._bounds)
         outline = to_screen.map(clip)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing, self._clip is not None)

@@ -1,0 +1,309 @@
+"""Puts what the lens paints on the board, and keeps it there as part, view and findings change."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Protocol
+
+import numpy as np
+from PySide6.QtCore import QObject
+from PySide6.QtGui import QPainterPath
+
+from screenapp.model.errors import ScreenappError
+from screenapp.model.findings import Fields, Findings
+from screenapp.model.kinds import KindName
+from screenapp.model.units import parse_quantity
+from screenapp.window import theme
+from screenapp.window.board import colours
+from screenapp.window.board.callouts import Callout, CalloutItem, PointValue
+from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.colour_bar import MARGIN, WIDTH, BarContent, ColourBar
+from screenapp.window.board.colours import Scale
+from screenapp.window.board.field_item import FieldItem
+from screenapp.window.board.hatching import HatchItem, Zone
+from screenapp.window.board.lens_heading import LensHeading
+from screenapp.window.board.mesh_item import MeshItem
+from screenapp.window.board.outline_path import mesh_path, region_path
+from screenapp.window.board.rim_item import RimItem
+from screenapp.window.document import Document
+from screenapp.model.estimate_text import unit_of
+from screenapp.window.fields import moved
+from screenapp.window.painting import WAITING, Painting, Source, paint
+
+FADED = 0.35
+"""Strength at which findings that are out of date are painted."""
+
+FADED_WORDS = 0.6
+"""Strength of their numbers, which have to stay readable."""
+
+Range = tuple[float, float]
+
+
+class BoardLike(Protocol):
+    """What the painter needs of the board."""
+
+    canvas: Canvas
+
+    def set_outline_faint(self, faint: bool) -> None:
+        """Draw the undeformed outline faintly."""
+
+
+@dataclass(frozen=True, eq=False)
+class _Shown:
+    """What is on the board: the arrays and all that decides how they are painted."""
+
+    fields: Fields
+    key: tuple[object, ...]
+    painting: Painting
+
+
+class LensPainter(QObject):
+    """Listens to the document and paints on the board's canvas."""
+
+    def __init__(self, document: Document, board: BoardLike) -> None:
+        super().__init__(board.canvas)
+        self._document = document
+        self._board = board
+        self._pass: tuple[Fields, int] | None = None
+        self._findings_at_pass: Findings | None = None
+        self._passes = 0
+        self._shown: _Shown | None = None
+        self._typed: dict[tuple[str, str], Range] = {}
+        self._path = QPainterPath()
+        self.field, self.mesh = FieldItem(), MeshItem()
+        self.hatch, self.rim, self.callouts = HatchItem(), RimItem(), CalloutItem()
+        for item in (self.field, self.mesh, self.hatch, self.rim, self.callouts):
+            board.canvas.view_box.addItem(item, ignoreBounds=True)
+        self.bar = ColourBar(board.canvas)
+        self.heading = LensHeading(document, board.canvas)
+        self.bar.range_wanted.connect(self._take_range)
+        self.bar.said.connect(document.said)
+        for signal in (
+            document.findings_changed,
+            document.view_changed,
+            document.part_changed,
+            theme.notifier.changed,
+        ):
+            signal.connect(self.refresh)
+        self.refresh()
+
+    # --- for others -----------------------------------------------------------------------
+
+    def show_pass(self, fields: Fields | None) -> None:
+        """Paint a pass that is not judged yet, in place of older findings; None goes back to them.
+
+        New findings end it by themselves.
+        """
+        self._passes = 0 if fields is None else self._passes + 1
+        self._pass = None if fields is None else (fields, self._passes)
+        if fields is not None:
+            self._findings_at_pass = self._document.findings
+        self.refresh()
+
+    def wait(self) -> None:
+        """Make sharp pictures at once (to save an image of the board)."""
+        for item in (self.field, self.mesh):
+            item.refresh_now()
+
+    # --- painting -------------------------------------------------------------------------
+
+    def refresh(self) -> None:
+        """Bring the board up to date; arrays that are painted already are not painted again."""
+        document = self._document
+        self.heading.sync()
+        if self._pass is not None and document.findings is not self._findings_at_pass:
+            self._pass, self._passes = None, 0
+        source, why = self._source()
+        if source is None:
+            self._clear()
+            empty = document.part.outline is None
+            self.heading.say("" if empty else why)
+            return
+        painting = paint(document.view, source)
+        if painting is None:
+            self._clear()
+            self.heading.say("")
+            return
+        key = self._key(source)
+        known = self._shown
+        if known is None or known.fields is not source.fields or known.key != key:
+            self._put(source, painting)
+        self._shown = _Shown(source.fields, key, painting)
+        self._put_numbers(source, painting)
+        self._put_strength(source, painting)
+
+    def _key(self, source: Source) -> tuple[object, ...]:
+        """All that the painted field depends on besides the arrays."""
+        part = self._document.part
+        trusts: tuple[object, ...] = ()
+        if (found := source.case_findings) is not None:
+            trusts = tuple((p.at, p.estimate.trust) for p in found.peaks)
+        return (
+            source.case,
+            self._document.view,
+            part.material,
+            part.wall.state,
+            part.limits,
+            part.mesh.tolerance,
+            part.display_units,
+            trusts,
+            theme.current().name,
+        )
+
+    def _source(self) -> tuple[Source | None, str]:
+        """What is to be painted, or the words for why nothing is."""
+        document = self._document
+        part, view = document.part, document.view
+        if self._pass is not None:
+            fields = self._pass[0]
+            cases = len(fields.solution.displacements)
+            return (Source(fields, min(view.case, cases - 1), part) if cases else None), ""
+        findings = document.findings
+        if findings is None:
+            return None, WAITING[view.lens]
+        if findings.last is None:
+            return None, WAITING[view.lens] and (
+                "Only the numbers of this screening were kept: screen the part again to paint it"
+            )
+        wanted = part.cases[view.case].id if view.case < len(part.cases) else ""
+        ids = [case.case for case in findings.cases]
+        if wanted not in ids:
+            return None, WAITING[view.lens] and "This case has not been screened yet"
+        return Source(findings.last, ids.index(wanted), part, findings), ""
+
+    def _clear(self) -> None:
+        self._shown = None
+        self.field.clear()
+        self.mesh.clear()
+        self.hatch.show_zones(())
+        self.rim.show_path(None)
+        self.callouts.show_callouts((), (), QPainterPath())
+        self.bar.show_content(None)
+        self._board.set_outline_faint(False)
+
+    def _put(self, source: Source, painting: Painting) -> None:
+        mesh, points = source.fields.mesh, painting.points
+        self._path = mesh_path(mesh, points)
+        if painting.values is None:
+            self.field.clear()
+            self.bar.show_content(None)
+        else:
+            scale = self._scale(painting)
+            self.field.show_field(points, mesh.quads, painting.values, scale, self._path)
+            self._put_bar(painting, scale)
+        colour = theme.current().ink
+        if painting.mesh > 0.0:
+            self.mesh.show_mesh(mesh, points, colour, painting.mesh * self._ink_strength(painting))
+        else:
+            self.mesh.clear()
+        self.hatch.show_zones(
+            tuple(
+                Zone(
+                    region_path(mesh, zone.elements, points),
+                    "bad" if zone.trust == "rising" else "doubt",
+                    zone.trust == "unsettled",
+                )
+                for zone in painting.zones
+            )
+        )
+        deformed = painting.deformation != 0.0
+        self.rim.show_path(self._path if deformed else None)
+        self._board.set_outline_faint(deformed)
+
+    @staticmethod
+    def _ink_strength(painting: Painting) -> float:
+        """Lines of ink on bare paper may be paler than on colours."""
+        return 0.55 if painting.values is None else 1.0
+
+    def _put_numbers(self, source: Source, painting: Painting) -> None:
+        callouts = tuple(
+            Callout(
+                moved(source.fields, source.case, painting.deformation, card.at),
+                card.head,
+                card.detail,
+                card.trust,
+            )
+            for card in painting.cards
+        )
+        values = tuple(PointValue(at, text) for at, text in painting.probes)
+        self.callouts.right_margin = float(WIDTH + MARGIN) if self.bar.content else 0.0
+        self.callouts.show_callouts(callouts, values, self._path)
+
+    def _put_strength(self, source: Source, painting: Painting) -> None:
+        old = source.findings is not None and not self._document.current
+        warning = ""
+        if old:
+            warning = "Out of date: the part has changed since it was screened"
+        elif self._pass is not None:
+            warning = f"Pass {self._pass[1]}: nothing is settled yet"
+        for item in (self.field, self.mesh, self.hatch, self.rim):
+            item.setOpacity(FADED if old else 1.0)
+        self.callouts.setOpacity(FADED_WORDS if old else 1.0)
+        self.heading.say(painting.caption, warning)
+
+    # --- colours and their range ----------------------------------------------------------
+
+    def _slot(self) -> tuple[str, str]:
+        view = self._document.view
+        component = {"Stress": view.stress, "Displacement": view.displacement}
+        return view.lens, component.get(view.lens, "")
+
+    def _scale(self, painting: Painting) -> Scale:
+        assert painting.values is not None
+        low, high = float(np.min(painting.values)), float(np.max(painting.values))
+        p = theme.current()
+        lens = self._document.view.lens
+        if lens == "Utilisation":
+            return colours.utilisation(high)
+        if lens == "Trust":
+            return colours.error_share(max(high, 1e-12), p.paper, p.ink)
+        low, high = self._typed.get(self._slot(), (min(low, 0.0) if _positive(low) else low, high))
+        if not low < high:  # the same everywhere: nothing to tell apart
+            high = low + max(abs(low), 1.0) * 1e-6
+        return colours.cividis(low, high)
+
+    def _put_bar(self, painting: Painting, scale: Scale) -> None:
+        assert painting.values is not None
+        units = self._document.part.display_units
+        factor, unit = (1.0, "") if painting.kind is None else unit_of(painting.kind, units)
+        lens = self._document.view.lens
+        marks: tuple[tuple[float, str], ...] = ()
+        if lens in ("Utilisation", "Trust"):
+            marks = ((1.0, "1.00"),)
+        elif scale.low < 0.0 < scale.high:
+            marks = ((0.0, "0"),)
+        editable = lens in ("Stress", "Displacement")
+        self.bar.show_content(
+            BarContent(
+                f"{painting.title}, {unit}" if unit else painting.title,
+                scale,
+                factor,
+                editable,
+                self._slot() in self._typed,
+                marks,
+                float(np.max(painting.values)) > scale.high * (1 + 1e-9),
+                self._read_end,
+            )
+        )
+
+    def _read_end(self, text: str) -> float:
+        kind: KindName = "stress" if self._document.view.lens == "Stress" else "length"
+        try:
+            return parse_quantity(text, kind, self._document.part.display_units)
+        except ScreenappError as fault:
+            raise ValueError(f"{fault.cause}: {fault.mend}") from fault
+
+    def _take_range(self, low: float | None, high: float | None) -> None:
+        if low is None or high is None:
+            self._typed.pop(self._slot(), None)
+        else:
+            self._typed[self._slot()] = (low, high)
+        if self._shown is not None and self._shown.painting.values is not None:
+            scale = self._scale(self._shown.painting)
+            self.field.set_scale(scale)
+            self._put_bar(self._shown.painting, scale)
+
+
+def _positive(low: float) -> bool:
+    """Whether a field that is nowhere negative should be shown from zero."""
+    return low >= 0.0
