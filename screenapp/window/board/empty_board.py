@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import logging
+import textwrap
 from pathlib import Path
 
 from PySide6.QtCore import QSize, Qt, Signal
@@ -109,7 +110,7 @@ class EmptyBoard(QFrame):
             log.warning("sample %s cannot be offered: %s", path.name, fault)
             return None
         button = QToolButton()
-        button.setText(part.title)
+        button.setText(textwrap.fill(part.title, 22))
         button.setToolTip(f"Open the sample “{part.title}”")
         button.setAccessibleName(f"Sample: {part.title}")
         button.setToolButtonStyle(Qt.ToolButtonStyle.ToolButtonTextUnderIcon)

@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 
 from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFont, QPainter, QPen
+from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.part import DisplayUnits
 from screenapp.window import theme
@@ -107,9 +107,7 @@ class ScaleBarItem(ScreenItem):
         wide = length * unit * frame.scale
         foot = frame.px((rect.left(), rect.top())) + QPointF(20.0, -16.0)
         text = f"{length:.6g} {'in' if unit != 1.0 else 'mm'}"
-        font = QFont(painter.font())
-        font.setPixelSize(theme.TEXT_SMALL)
-        painter.setFont(font)
+        painter.setFont(theme.font(theme.TEXT_SMALL))
         ground = QColor(palette.paper)
         ground.setAlphaF(0.8)
         painter.fillRect(QRectF(foot.x() - 8, foot.y() - 24, wide + 16, 34), ground)

@@ -156,7 +156,6 @@ class OutlineItem(ScreenItem):
         colour = QColor(theme.current().quiet)
         pen = QPen(colour, 1.0)
         pen.setDashPattern([12.0, 3.0, 2.0, 3.0])
-        pen.setCosmetic(True)
         painter.setPen(pen)
         for hole in self.drawn.part.holes:
             if isinstance(hole, CircleHole):
@@ -186,7 +185,6 @@ def _cross(
 
 def _pen(colour: QColor, width: float) -> QPen:
     pen = QPen(colour, width)
-    pen.setCosmetic(True)
     pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
     pen.setCapStyle(Qt.PenCapStyle.RoundCap)
     return pen

@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import math
+from functools import lru_cache
 
-from PySide6.QtCore import QPoint, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter, QPainterPath, QPen
+from PySide6.QtCore import QPoint, QPointF, Qt
+from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen
 
 from screenapp.model.curves import Arc, Curve
 from screenapp.model.part import DisplayUnits, Point
@@ -49,21 +50,27 @@ def dot(painter: QPainter, frame: Frame, at: Point) -> None:
 
 
 def label(painter: QPainter, text: str, at: QPointF, colour: str | None = None) -> None:
-    """A text centred at a pixel position, with a halo so that lines do not cross it."""
-    font = QFont(painter.font())
-    font.setPixelSize(theme.TEXT_SMALL)
+    """A text centred at a pixel position, with a seam so that lines do not run into it."""
+    path = _text_path(text)
+    seam = QColor(theme.current().paper)
+    seam.setAlphaF(0.92)
+    pen = QPen(seam, 4.0)
+    pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
+    painter.translate(at)
+    painter.strokePath(path, pen)
+    painter.fillPath(path, QColor(colour or theme.current().accent))
+    painter.translate(-at)
+
+
+@lru_cache(maxsize=256)
+def _text_path(text: str) -> QPainterPath:
+    """A text as lines, centred at the origin."""
+    font = theme.font(theme.TEXT_SMALL)
     metrics = QFontMetricsF(font)
-    wide = metrics.horizontalAdvance(text)
-    box = QRectF(at.x() - wide / 2 - 3, at.y() - metrics.height() / 2 - 1, wide + 6, 0)
-    box.setHeight(metrics.height() + 2)
-    ground = QColor(theme.current().paper)
-    ground.setAlphaF(0.85)
     path = QPainterPath()
-    path.addRoundedRect(box, 3.0, 3.0)
-    painter.fillPath(path, ground)
-    painter.setFont(font)
-    painter.setPen(QColor(colour or theme.current().accent))
-    painter.drawText(box, int(Qt.AlignmentFlag.AlignCenter), text)
+    wide = metrics.horizontalAdvance(text)
+    path.addText(QPointF(-wide / 2.0, (metrics.ascent() - metrics.descent()) / 2.0), font, text)
+    return path
 
 
 def measure(
