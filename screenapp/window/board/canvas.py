@@ -4,15 +4,13 @@ from __future__ import annotations
 
 from dataclasses import replace
 
-import pyqtgraph as pg
-from PySide6.QtCore import QEvent, QPointF, QRectF, Qt, Signal
-from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QResizeEvent, QWheelEvent
-from PySide6.QtWidgets import QFrame, QWidget
+from PySide6.QtCore import QEvent, QPointF, Qt, Signal
+from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QWheelEvent
+from PySide6.QtWidgets import QWidget
 
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
-from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.naming import name_at
@@ -23,23 +21,17 @@ from screenapp.window.board.snapping import Snap, snap
 from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryRow
+from screenapp.window.board.zoom_view import ZoomView
 from screenapp.window.document import Document
-
-EMPTY_VIEW = QRectF(-20.0, -20.0, 240.0, 160.0)
-"""What an empty board shows [mm]."""
-
-FINEST, COARSEST = 1e-2, 1e4
-"""Bounds of the zoom [px/mm]."""
 
 HOLD_OFF = Qt.KeyboardModifier.ControlModifier
 """Held down, nothing snaps."""
 
 
-class Canvas(pg.GraphicsView):  # type: ignore[misc]
+class Canvas(ZoomView):
     """One view of the part in mm, y up, for drawing and for results.
 
     Attributes:
-        view_box: everything painted is added to it.
         document: what is shown.
         tool: the tool in hand.
         place: where the cursor is, None while it is elsewhere.
@@ -47,33 +39,21 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
     Signals:
         pointed: `place` or the tool's state changed.
         tool_wanted: a tool asks for another one, by name.
-        view_moved: after a pan, zoom or fit.
     """
 
     pointed = Signal()
     tool_wanted = Signal(str)
-    view_moved = Signal()
 
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
-        super().__init__(parent, background=None)
+        super().__init__(parent)
         self.document = document
         self.tool: Tool | None = None
         self.place: Place | None = None
         self._preview: Part | None = None
-        self._pan_from: QPointF | None = None
         self._space = False
         self._last_px: QPointF | None = None
         self._modifiers = Qt.KeyboardModifier.NoModifier
-        self.setFrameShape(QFrame.Shape.NoFrame)
-        self.setMouseTracking(True)
-        self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
-        self.setAntialiasing(True)
-        self.setMinimumSize(240, 180)
         self.setAccessibleName("Drawing board")
-        self.view_box = pg.ViewBox(lockAspect=True, enableMenu=False, enableMouse=False)
-        self.view_box.setDefaultPadding(0.0)
-        self.view_box.disableAutoRange()
-        self.setCentralItem(self.view_box)
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
         paths = PartPaths()
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
@@ -92,8 +72,6 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
             self.view_box.addItem(item, ignoreBounds=True)
         self.entry = EntryRow(self)
         self.placing = Placing(self)
-        self.view_box.setRange(EMPTY_VIEW, padding=0.0)
-        self.view_box.sigRangeChanged.connect(self.view_moved)
         self.apply_theme()
 
     # what is shown
@@ -141,43 +119,16 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.setBackground(theme.current().paper)
         self.viewport().update()
 
-    @property
-    def frame_now(self) -> Frame:
-        """The present mapping between mm and px."""
-        self.view_box.updateMatrix()
-        scene = self.view_box.childGroup.sceneTransform()
-        return Frame(scene * self.viewportTransform())
-
     # view
 
     def fit(self) -> None:
         """Show the whole part with room for its symbols."""
-        bounds = self.drawn.bounds
-        if bounds is None:
-            self.view_box.setRange(EMPTY_VIEW, padding=0.0)
-            return
-        x0, y0, x1, y1 = bounds
-        room = 0.16 * max(x1 - x0, y1 - y0, 1e-3)
-        self.view_box.setRange(
-            QRectF(x0 - room, y0 - room, x1 - x0 + 2 * room, y1 - y0 + 2 * room), padding=0.0
-        )
+        self.show_box(self.drawn.bounds)
 
     def zoom(self, factor: float, about: QPointF | None = None) -> None:
         """Magnify by `factor`, keeping the place at `about` [px] where it is."""
-        frame = self.frame_now
-        factor = min(max(factor, FINEST / frame.scale), COARSEST / frame.scale)
-        if about is None:
-            about = QPointF(self.viewport().rect().center())
-        x, y = frame.mm(about)
-        self.view_box.scaleBy((1.0 / factor, 1.0 / factor), center=pg.Point(x, y))
+        super().zoom(factor, about)
         self._refresh_place()
-
-    def _pan_to(self, px: QPointF) -> None:
-        assert self._pan_from is not None
-        frame = self.frame_now
-        (x0, y0), (x1, y1) = frame.mm(self._pan_from), frame.mm(px)
-        self.view_box.translateBy(x=x0 - x1, y=y0 - y1)
-        self._pan_from = px
 
     # tools
 
@@ -196,7 +147,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
     def refresh(self) -> None:
         """Repaint the preview and bring the cursor, the entry row and the corner up to date."""
         self.preview_item.update()
-        if self.tool is not None and self._pan_from is None:
+        if self.tool is not None and not self.panning:
             self.viewport().setCursor(self.tool.cursor)
         self.entry.sync()
         self.pointed.emit()
@@ -261,8 +212,7 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         button = event.button()
         pans = button in (Qt.MouseButton.MiddleButton, Qt.MouseButton.RightButton)
         if pans or (button == Qt.MouseButton.LeftButton and self._space):
-            self._pan_from = event.position()
-            self.viewport().setCursor(Qt.CursorShape.ClosedHandCursor)
+            self.begin_pan(event.position())
         elif button == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.press(self._set_place(event.position(), event.modifiers()))
             self.refresh()
@@ -270,9 +220,9 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
 
     def mouseMoveEvent(self, event: QMouseEvent) -> None:
         """Pan, or tell the tool."""
-        if self._pan_from is not None:
+        if self.panning:
             self._last_px = event.position()
-            self._pan_to(event.position())
+            self.pan_to(event.position())
         else:
             super().mouseMoveEvent(event)
             place = self._set_place(event.position(), event.modifiers())
@@ -283,8 +233,8 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
 
     def mouseReleaseEvent(self, event: QMouseEvent) -> None:
         """End a pan, or tell the tool."""
-        if self._pan_from is not None:
-            self._pan_from = None
+        if self.panning:
+            self.end_pan()
             self._set_place(event.position(), event.modifiers())
         elif event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.release(self._set_place(event.position(), event.modifiers()))
@@ -310,12 +260,6 @@ class Canvas(pg.GraphicsView):  # type: ignore[misc]
         self.place = self._last_px = None
         self.document.hover(None)
         self.refresh()
-
-    def resizeEvent(self, event: QResizeEvent | None) -> None:
-        """Keep the overlays in place."""
-        super().resizeEvent(event)
-        if event is not None and hasattr(self, "entry"):
-            self.view_moved.emit()
 
     # keys
 
