@@ -1,0 +1,98 @@
+"""The record as one self-contained HTML page that reads like a calculation note."""
+
+from __future__ import annotations
+
+from datetime import datetime
+
+from jinja2 import Environment, StrictUndefined
+from markupsafe import Markup
+
+from screenapp import __version__
+from screenapp.model.assets import resource
+from screenapp.model.estimate_text import EstimateKind, estimate_text
+from screenapp.model.findings import Estimate, Findings
+from screenapp.model.part import GravityLoad, Load, Part
+from screenapp.model.shape import shape_of
+from screenapp.model.units import format_quantity
+from screenapp.report.drawing import part_svg
+
+CAUTION = (
+    "A screening, not an approval: it covers only what is written here, with the supports and loads "
+    "as assumed. Local codes and a licensed engineer decide."
+)
+
+
+def record_page(part: Part, findings: Findings, when: datetime) -> str:
+    """The page for a screened part; `when` is printed as its date."""
+    template = _environment().from_string(
+        resource("report/record.html").read_text(encoding="utf-8")
+    )
+    units = part.display_units
+
+    def estimate(value: Estimate, kind: EstimateKind) -> str:
+        return estimate_text(value, kind, units)
+
+    shape = shape_of(part)
+    x0, y0, x1, y1 = shape.bounds
+    return template.render(
+        part=part,
+        findings=findings,
+        names={case.case: case.name for case in findings.cases},
+        numbered=_numbered(findings),
+        estimate=estimate,
+        length=lambda v: format_quantity(v, "length", units),
+        force=lambda v: format_quantity(v, "force", units),
+        stress=lambda v: format_quantity(v, "stress", units),
+        load_words=load_words,
+        support_words=support_words,
+        size=(x1 - x0, y1 - y0),
+        drawing=Markup(part_svg(part, shape, findings)),  # made here, its texts escaped there
+        version=__version__,
+        when=when.strftime("%Y-%m-%d %H:%M %Z"),
+        caution=CAUTION,
+    )
+
+
+def _environment() -> Environment:
+    return Environment(
+        autoescape=True, undefined=StrictUndefined, trim_blocks=True, lstrip_blocks=True
+    )
+
+
+def _numbered(findings: Findings) -> list[tuple[int, str, object]]:
+    """Every peak with its number in the drawing and the name of its case."""
+    rows = [(case.name, peak) for case in findings.cases for peak in case.peaks]
+    return [(i + 1, name, peak) for i, (name, peak) in enumerate(rows)]
+
+
+def load_words(load: Load) -> str:
+    """A load in words with stored units."""
+    if isinstance(load, GravityLoad):
+        return f"own weight under ({load.x:g}, {load.y:g}) m/s²"
+    kind = type(load).__name__
+    if kind == "PressureLoad":
+        return f"pressure {load.pressure:g} MPa on {load.on}"  # type: ignore[union-attr]
+    if kind == "ShearLoad":
+        return f"shear {load.per_length:g} N/mm along {load.on}"  # type: ignore[union-attr]
+    words = {
+        "LineLoad": "({x:g}, {y:g}) N/mm along {on}",
+        "ForceLoad": "({x:g}, {y:g}) N spread evenly over {on}",
+        "BearingLoad": "a pin bears on {on} with ({x:g}, {y:g}) N",
+        "PointLoad": "({x:g}, {y:g}) N at the point {on}",
+    }[kind]
+    return words.format(x=load.x, y=load.y, on=load.on)  # type: ignore[union-attr]
+
+
+def support_words(support: object) -> str:
+    """A support in words."""
+    kind = type(support).__name__
+    on = getattr(support, "on", "")
+    if kind == "FixedSupport":
+        return f"{on} is fixed in both directions"
+    if kind == "RollerSupport":
+        angle = getattr(support, "angle", None)
+        along = "its normal" if angle is None else f"{angle:g}°"
+        return f"{on} is held along {along} and slides across it"
+    x, y = getattr(support, "x", None), getattr(support, "y", None)
+    moved = [f"{axis} by {v:g} mm" for axis, v in (("x", x), ("y", y)) if v is not None]
+    return f"{on} is moved in " + " and ".join(moved) if moved else f"{on} is left free"
