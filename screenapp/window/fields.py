@@ -124,13 +124,11 @@ def zone_round(fields: Fields, at: tuple[float, float]) -> Ints:
     four elements of the size found there, and never less than can be seen on the whole part.
     """
     mesh = fields.mesh
-    centres = mesh.nodes[mesh.quads[:, 8]]
-    distance = np.hypot(*(centres - at).T)
+    distance = np.hypot(*(mesh.nodes - at).T)[mesh.quads].min(axis=1)
     nearest = int(distance.argmin())
     size = float(np.hypot(*np.ptp(mesh.nodes, axis=0)))
     reach = max(ZONE_ELEMENTS * float(mesh.element_sizes[nearest]), ZONE_SHARE * size)
-    inside = np.flatnonzero(distance <= reach)
-    return inside if len(inside) else np.array([nearest])
+    return np.flatnonzero(distance <= max(reach, float(distance[nearest])))
 
 
 def _poisson(part: Part) -> float:

@@ -130,7 +130,7 @@ def _mesh(_view: View, source: Source) -> Painting:
     caption = f"{grouped(mesh.n_elements)} elements, {grouped(unknowns)} unknowns"
     if mesh.fallback:
         caption += f". {mesh.fallback}"
-    return Painting(mesh.nodes, mesh=0.9, caption=caption)
+    return Painting(mesh.nodes, mesh=0.5, caption=caption)
 
 
 def _stress(view: View, source: Source) -> Painting:
@@ -212,7 +212,7 @@ def _trust(_view: View, source: Source) -> Painting:
     return Painting(
         fields.mesh.nodes,
         scalars.error_share_of(fields, source.case, tolerance),
-        "Error, share of allowed",
+        "Mesh error / allowed",
         None,
         mesh=0.15,
         zones=_zones(source),

@@ -152,7 +152,7 @@ def _cost(
         min(max(at.x(), card.left()), card.right()), min(max(at.y(), card.top()), card.bottom())
     )
     leader = math.hypot(nearest.x() - at.x(), nearest.y() - at.y())
-    return 20.0 * lost + 8.0 * clashes + 2.0 * covers + 0.3 * crosses + leader / 100.0
+    return 20.0 * lost + 8.0 * clashes + 4.0 * covers + 0.3 * crosses + leader / 100.0
 
 
 def _colour(trust: Trust) -> QColor:
@@ -209,19 +209,13 @@ def _paint_card(painter: QPainter, card: QRectF, callout: Callout) -> None:
 
 
 def _paint_value(painter: QPainter, at: QPointF, text: str) -> None:
-    """The text under the probe's name, with a pale seam."""
+    """The text under the probe's name, on a pale ground."""
     font = theme.font(theme.TEXT_SMALL)
-    width = QFontMetricsF(font).horizontalAdvance(text)
-    path = QPainterPath()
-    path.addText(QPointF(at.x() - width / 2.0, at.y() + 32.0), font, text)
-    painter.strokePath(
-        path,
-        QPen(
-            theme.colour("paper", 0.9),
-            3.0,
-            Qt.PenStyle.SolidLine,
-            Qt.PenCapStyle.RoundCap,
-            Qt.PenJoinStyle.RoundJoin,
-        ),
-    )
-    painter.fillPath(path, theme.colour("ink"))
+    width = QFontMetricsF(font).horizontalAdvance(text) + 8.0
+    box = QRectF(at.x() - width / 2.0, at.y() + 23.0, width, 16.0)
+    painter.setPen(Qt.PenStyle.NoPen)
+    painter.setBrush(theme.colour("paper", 0.85))
+    painter.drawRoundedRect(box, 3.0, 3.0)
+    painter.setFont(font)
+    painter.setPen(theme.colour("ink"))
+    painter.drawText(box, Qt.AlignmentFlag.AlignCenter, text)

@@ -16,9 +16,13 @@ from screenapp.window.board.colours import Scale
 from screenapp.window.board.overlay import Anchor
 from screenapp.window.board.ticks import end_text, ticks
 
-WIDTH, BAR, MARGIN = 132, 14, 16
+WIDTH, BAR, MARGIN = 168, 14, 12
+LABELS = 52  # room for the figures beside the bar
+TAKEN = LABELS + BAR + MARGIN + 8
+"""What the bar takes of the board's right edge [px]; only its title reaches further."""
+
 TALLEST, SHORTEST = 320, 140
-_HEAD = 28  # room for the title above the bar
+_HEAD = 36  # room for the title above the bar
 
 
 @dataclass(frozen=True, eq=False)
@@ -125,7 +129,7 @@ class ColourBar(QWidget):
         left = int(bar.right()) + 6
         for button, y in zip(self._ends, (bar.bottom(), bar.top()), strict=True):
             button.setGeometry(left, int(y) - 10, WIDTH - left, 20)
-        self._reset.setGeometry(WIDTH - 96, int(bar.bottom()) + 12, 96, 20)
+        self._reset.setGeometry(WIDTH - 80, int(bar.bottom()) + 12, 76, 20)
         self.raise_()
 
     def apply_theme(self) -> None:
@@ -202,15 +206,17 @@ class ColourBar(QWidget):
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         bar = self._bar()
         painter.setFont(theme.font(theme.TEXT_SMALL))
+        metrics = QFontMetricsF(painter.font())
+        title = metrics.elidedText(content.title, Qt.TextElideMode.ElideRight, WIDTH - 12)
+        wide = metrics.horizontalAdvance(title)
+        head = QRectF(WIDTH - wide - 6, 6, wide, 16)
+        painter.setPen(Qt.PenStyle.NoPen)
+        painter.setBrush(theme.colour("paper", 0.85))  # figures must not mix with what lies beneath
+        painter.drawRoundedRect(head.adjusted(-6, -3, 6, 3), 4.0, 4.0)
+        painter.drawRoundedRect(QRectF(bar.left() - 6, 24, WIDTH, self.height() - 24), 4.0, 4.0)
+        painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.setPen(theme.colour("quiet"))
-        title = QFontMetricsF(painter.font()).elidedText(
-            content.title, Qt.TextElideMode.ElideRight, WIDTH
-        )
-        painter.drawText(
-            QRectF(0, 0, WIDTH, 16),
-            Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter,
-            title,
-        )
+        painter.drawText(head, Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter, title)
         painter.drawImage(bar, _strip(content.scale, max(2, round(bar.height() * 2))))
         painter.setPen(QPen(theme.colour("ink", 0.7), 1.0))
         painter.drawRect(bar)
@@ -243,7 +249,7 @@ class ColourBar(QWidget):
             )
 
     def _bar(self) -> QRectF:
-        return QRectF(WIDTH - 64 - BAR, _HEAD, BAR, self.height() - _HEAD - 40)
+        return QRectF(WIDTH - LABELS - BAR, _HEAD, BAR, self.height() - _HEAD - 40)
 
     @staticmethod
     def _shown_range(content: BarContent) -> tuple[float, float]:

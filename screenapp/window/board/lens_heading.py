@@ -92,10 +92,11 @@ class LensHeading(QWidget):
         if not self.deformation.hasFocus() or not self.deformation.isModified():
             factor = view.deformation
             self.deformation.setText(AUTOMATIC if factor is None else f"{factor:g}")
+        self._under.setText("under" if stress or displacement else "Case")
         for widget, shown in (
             (self.stress, stress),
             (self.displacement, displacement),
-            (self._under, cases and (stress or displacement)),
+            (self._under, cases),
             (self.case, cases),
             (self._times, displacement),
             (self.deformation, displacement),

@@ -17,7 +17,7 @@ from screenapp.window import theme
 from screenapp.window.board import colours
 from screenapp.window.board.callouts import Callout, CalloutItem, PointValue
 from screenapp.window.board.canvas import Canvas
-from screenapp.window.board.colour_bar import MARGIN, WIDTH, BarContent, ColourBar
+from screenapp.window.board.colour_bar import TAKEN, BarContent, ColourBar
 from screenapp.window.board.colours import Scale
 from screenapp.window.board.field_item import FieldItem
 from screenapp.window.board.hatching import HatchItem, Zone
@@ -35,6 +35,9 @@ FADED = 0.35
 
 FADED_WORDS = 0.6
 """Strength of their numbers, which have to stay readable."""
+
+LEAST_SHARE_SHOWN = 1.5
+"""The bar of the estimated error reaches at least this far, so that 1.0 is on it."""
 
 Range = tuple[float, float]
 
@@ -191,9 +194,10 @@ class LensPainter(QObject):
             scale = self._scale(painting)
             self.field.show_field(points, mesh.quads, painting.values, scale, self._path)
             self._put_bar(painting, scale)
-        colour = theme.current().ink
         if painting.mesh > 0.0:
-            self.mesh.show_mesh(mesh, points, colour, painting.mesh * self._ink_strength(painting))
+            # colours of fields are the same in every theme, so the lines over them are too
+            colour = theme.PAPER.ink if painting.values is not None else theme.current().ink
+            self.mesh.show_mesh(mesh, points, colour, painting.mesh)
         else:
             self.mesh.clear()
         self.hatch.show_zones(
@@ -210,11 +214,6 @@ class LensPainter(QObject):
         self.rim.show_path(self._path if deformed else None)
         self._board.set_outline_faint(deformed)
 
-    @staticmethod
-    def _ink_strength(painting: Painting) -> float:
-        """Lines of ink on bare paper may be paler than on colours."""
-        return 0.55 if painting.values is None else 1.0
-
     def _put_numbers(self, source: Source, painting: Painting) -> None:
         callouts = tuple(
             Callout(
@@ -226,7 +225,7 @@ class LensPainter(QObject):
             for card in painting.cards
         )
         values = tuple(PointValue(at, text) for at, text in painting.probes)
-        self.callouts.right_margin = float(WIDTH + MARGIN) if self.bar.content else 0.0
+        self.callouts.right_margin = float(TAKEN) if self.bar.content else 0.0
         self.callouts.show_callouts(callouts, values, self._path)
 
     def _put_strength(self, source: Source, painting: Painting) -> None:
@@ -256,7 +255,7 @@ class LensPainter(QObject):
         if lens == "Utilisation":
             return colours.utilisation(high)
         if lens == "Trust":
-            return colours.error_share(max(high, 1e-12), p.paper, p.ink)
+            return colours.error_share(max(high, LEAST_SHARE_SHOWN), p.paper, p.ink)
         low, high = self._typed.get(self._slot(), (min(low, 0.0) if _positive(low) else low, high))
         if not low < high:  # the same everywhere: nothing to tell apart
             high = low + max(abs(low), 1.0) * 1e-6

@@ -27,7 +27,7 @@ def ticks(low: float, high: float, most: int) -> list[tuple[float, str]]:
 def end_text(value: float, low: float, high: float) -> str:
     """An end of the range, with digits by the range."""
     span = max(abs(low), abs(high))
-    if not span > 0.0:
+    if not span > 0.0 or value == 0.0:
         return "0"
     decimals = 2 - math.floor(math.log10(span) + 1e-9)
     return plain(value, max(0, decimals))
