@@ -1,0 +1,145 @@
+"""Opening and saving: nothing is lost, and what goes wrong is told with its cause and mend."""
+
+from __future__ import annotations
+
+import logging
+from collections.abc import Callable
+from datetime import datetime
+from pathlib import Path
+
+from PySide6.QtCore import QObject, Signal
+from PySide6.QtWidgets import QWidget
+
+from screenapp.model import findings_cache
+from screenapp.model.errors import InvalidPartError, ScreenappError
+from screenapp.model.findings import Findings
+from screenapp.model.part import Part
+from screenapp.model.part_json import read_part, write_part
+from screenapp.model.shape import shape_of
+from screenapp.screening.probes import read_probes
+from screenapp.window.ask import SUFFIX, Ask
+from screenapp.window.document import Document
+from screenapp.window.settings import Settings
+
+log = logging.getLogger(__name__)
+
+
+class Files(QObject):
+    """The file side of one window.
+
+    Signals:
+        failed: a lead sentence and a ScreenappError.
+        saved: the part stands in its file, since this time.
+        opened: another part is shown.
+    """
+
+    failed = Signal(str, object)
+    saved = Signal(object)
+    opened = Signal()
+
+    def __init__(
+        self, document: Document, settings: Settings, ask: Ask, window: QWidget
+    ) -> None:
+        super().__init__(window)
+        self._document = document
+        self._settings = settings
+        self._ask = ask
+        self._window = window
+
+    def new(self) -> bool:
+        """Show an empty part."""
+        if not self.may_leave():
+            return False
+        self._document.open(Part(), None)
+        self.opened.emit()
+        return True
+
+    def choose_and_open(self) -> bool:
+        """Ask for a file and open it."""
+        path = self._ask.path_to_open(self._window, self._settings.folder)
+        return path is not None and self.open(path)
+
+    def open(self, path: Path) -> bool:
+        """Open a part file; the present part stays if it cannot be read."""
+        return self._open(path, lambda part: (part, path))
+
+    def open_sample(self, path: Path) -> bool:
+        """Open a sample as a new part without a file, so that saving asks where to."""
+        return self._open(path, lambda part: (part, None))
+
+    def _open(self, path: Path, place: Callable[[Part], tuple[Part, Path | None]]) -> bool:
+        try:
+            part, where = place(read_part(path))
+        except ScreenappError as error:
+            self.failed.emit(f"{path.name} was not opened", error)
+            return False
+        if not self.may_leave():
+            return False
+        self._document.open(part, where)
+        if where is not None:
+            self._settings.note_recent(where)
+            self.saved.emit(datetime.fromtimestamp(where.stat().st_mtime))
+        self.opened.emit()
+        self._restore()
+        self._document.said.emit(f"Opened {path.name}")
+        return True
+
+    def save(self) -> bool:
+        """Save where the part came from, or ask."""
+        path = self._document.path
+        return self.save_as() if path is None else self._write(path)
+
+    def save_as(self) -> bool:
+        """Ask where to save."""
+        document = self._document
+        suggested = document.path or self._settings.folder / (_file_name(document.part) + SUFFIX)
+        path = self._ask.path_to_save(self._window, suggested)
+        return path is not None and self._write(path)
+
+    def may_leave(self) -> bool:
+        """Whether the present part may go: it is saved, or the user said so."""
+        if not self._document.unsaved:
+            return True
+        answer = self._ask.unsaved(self._window, self._document.part.title)
+        if answer == "save":
+            return self.save()
+        return answer == "discard"
+
+    def _write(self, path: Path) -> bool:
+        try:
+            write_part(self._document.part, path)
+        except ScreenappError as error:
+            self.failed.emit("The part was not saved", error)
+            return False
+        self._document.mark_saved(path)
+        self._settings.note_recent(path)
+        self.saved.emit(datetime.now())
+        self._document.said.emit(f"Saved {path.name}")
+        return True
+
+    def _restore(self) -> None:
+        """Show findings that were kept for this very part."""
+        document = self._document
+        kept = findings_cache.load(document.key)
+        if kept is not None:
+            document.set_findings(with_readings(document.part, kept))
+
+
+def with_readings(part: Part, findings: Findings) -> Findings:
+    """The findings with the readings of the part's present probes."""
+    try:
+        return read_probes(part, shape_of(part), findings)
+    except InvalidPartError as error:  # findings are only of sound parts: worth a line in the log
+        log.warning("readings could not be renewed: %s", error.cause)
+        return findings
+
+
+def _file_name(part: Part) -> str:
+    """A file name made of the title.
+
+    Example:
+        >>> _file_name(Part(title="Cable tray bracket, rev. B"))
+        'cable-tray-bracket-rev-b'
+    """
+    kept = "".join(c if c.isalnum() else " " for c in part.title.lower())
+    return "-".join(kept.split()) or "part"

@@ -1,0 +1,369 @@
+"""The window: board and readings at the left, the check sheet at the right."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from datetime import datetime
+from pathlib import Path
+
+from PySide6.QtCore import Qt, QTimer
+from PySide6.QtGui import (
+    QCloseEvent,
+    QDragEnterEvent,
+    QDropEvent,
+    QKeySequence,
+    QShowEvent,
+)
+from PySide6.QtWidgets import QLabel, QMainWindow, QSplitter
+
+from screenapp.model import findings_cache
+from screenapp.model.edits import EditError
+from screenapp.model.errors import ScreenappError
+from screenapp.model.findings import Fields, Findings, PassSummary
+from screenapp.model.part import Part, Probe
+from screenapp.model.part_json import screening_key
+from screenapp.window import theme
+from screenapp.window.actions import Actions, keeps_delete
+from screenapp.window.ask import Ask
+from screenapp.window.board.board import Board
+from screenapp.window.board.lens_bar import LensBar
+from screenapp.window.board.lens_painter import LensPainter
+from screenapp.window.document import Document
+from screenapp.window.files import Files, with_readings
+from screenapp.window.help_panels import Keys, Panel, about_panel, keys_panel
+from screenapp.window.jobs import MakeMesher, Screener, ScreenFunction
+from screenapp.window.readings import Readings
+from screenapp.window.settings import Settings
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.sheet import Sheet
+
+SHARE_OF_BOARD = 0.62
+FIRST_SIZE = (1440, 900)
+WARM_UP_MS = 250
+SAID_MS = 6000
+
+
+class MainWindow(QMainWindow):
+    """Shows one document; everything that could be someone else's is handed in."""
+
+    def __init__(
+        self,
+        screen: ScreenFunction,
+        make_mesher: MakeMesher,
+        settings: Settings | None = None,
+        ask: Ask | None = None,
+    ) -> None:
+        super().__init__()
+        self.settings = settings or Settings()
+        self.document = Document(parent=self)
+        self.screener = Screener(screen, make_mesher, self)
+        self.files = Files(self.document, self.settings, ask or Ask(), self)
+        self.board = Board(self.document)
+        self.lens_bar = LensBar(self.document)
+        self.board.set_lens_bar(self.lens_bar)
+        self.painter = LensPainter(self.document, self.board)
+        self.readings = Readings(self.document)
+        self.sheet = Sheet(self.document)
+        self._read_last: tuple[Probe, ...] = ()
+        self._panels: dict[str, Panel] = {}
+        self._warmed = False
+        self._lay_out()
+        self.actions_ = Actions(self)
+        self._connect()
+        self.setAcceptDrops(True)
+        self._show_title()
+
+    # --- what the menus ask -------------------------------------------------------------------
+
+    def screen(self) -> None:
+        """Screen the part as it now is."""
+        self._accept_typing()
+        blocking = [f for f in self.document.faults if f.blocks]
+        if blocking:
+            first = blocking[0]
+            self._say(f"Not screened: {first.cause}; {first.mend}")
+            self.document.select(*first.ids)
+            return
+        self.sheet.head.notice.hide()
+        self.screener.start(self.document.part)
+
+    def cancel(self) -> None:
+        """Stop screening."""
+        if self.screener.busy:
+            self.sheet.foot.show_cancelling()
+            self.screener.cancel()
+
+    def delete(self) -> None:
+        """Delete what is selected."""
+        focus = self.focusWidget()
+        if keeps_delete(focus) or not self.document.selection:
+            return
+        try:
+            changes.remove(self.document, *self.document.selection)
+        except EditError as error:
+            self._say(f"{error.cause}: {error.mend}")
+
+    def choose_theme(self, choice: theme.Choice) -> None:
+        """Take a theme and remember it."""
+        self.settings.theme = choice
+        theme.choose(choice)
+        self.actions_.refresh()
+
+    def go_to_board(self) -> None:
+        """Put the keyboard on the board."""
+        self.board.canvas.setFocus(Qt.FocusReason.ShortcutFocusReason)
+
+    def go_to_sheet(self) -> None:
+        """Put the keyboard on the sheet's first value that is missing, or its first one."""
+        wanted = next((p for p in self.sheet.paragraphs if p.state == "open"), None)
+        stops = self.sheet.stops()
+        inside = [w for w in stops if wanted is not None and wanted.isAncestorOf(w)]
+        target = next(iter(inside or stops), None)
+        if target is not None:
+            target.setFocus(Qt.FocusReason.ShortcutFocusReason)
+            if self.sheet.page.isAncestorOf(target):
+                self.sheet.scroll.ensureWidgetVisible(target, 0, 40)
+
+    def go_to_readings(self) -> None:
+        """Put the keyboard on the readings."""
+        table = self.readings.table
+        table.setFocus(Qt.FocusReason.ShortcutFocusReason)
+        if table.figures.lines and not table.selectionModel().hasSelection():
+            table.selectRow(0)
+
+    def show_keys(self) -> None:
+        """List every key."""
+        self._show_panel("keys", lambda: keys_panel(self, self._window_keys(), self._board_keys()))
+
+    def show_about(self) -> None:
+        """Say what this is, with the cautions."""
+        self._show_panel("about", lambda: about_panel(self))
+
+    # --- laying out -----------------------------------------------------------------------------
+
+    def _lay_out(self) -> None:
+        self.left = QSplitter(Qt.Orientation.Vertical)
+        self.left.addWidget(self.board)
+        self.left.addWidget(self.readings)
+        self.left.setStretchFactor(0, 1)
+        self.left.setStretchFactor(1, 0)
+        self.left.setCollapsible(0, False)
+        self.whole = QSplitter(Qt.Orientation.Horizontal)
+        self.whole.addWidget(self.left)
+        self.whole.addWidget(self.sheet)
+        for splitter in (self.left, self.whole):
+            splitter.setHandleWidth(1)
+            splitter.setChildrenCollapsible(False)
+        self.whole.setStretchFactor(0, round(100 * SHARE_OF_BOARD))
+        self.whole.setStretchFactor(1, round(100 * (1 - SHARE_OF_BOARD)))
+        self.setCentralWidget(self.whole)
+        self.said = QLabel()
+        self.said.setProperty("quiet", True)
+        self.said.setContentsMargins(0, 0, 12, 0)
+        self.menuBar().setCornerWidget(self.said, Qt.Corner.TopRightCorner)
+        self._unsay = QTimer(self)
+        self._unsay.setSingleShot(True)
+        self._unsay.setInterval(SAID_MS)
+        self._unsay.timeout.connect(lambda: self.said.setText(""))
+        self.resize(*FIRST_SIZE)
+        geometry = self.settings.bytes_of("geometry")
+        if geometry is not None:
+            self.restoreGeometry(geometry)
+        self._share_out()
+
+    def _share_out(self) -> None:
+        wide, tall = self.width(), self.height()
+        self.whole.setSizes([round(wide * SHARE_OF_BOARD), round(wide * (1 - SHARE_OF_BOARD))])
+        self.left.setSizes([round(tall * 0.8), round(tall * 0.2)])
+        for name, splitter in (("columns", self.whole), ("rows", self.left)):
+            state = self.settings.bytes_of(name)
+            if state is not None:
+                splitter.restoreState(state)
+
+    def _connect(self) -> None:
+        document, screener, sheet = self.document, self.screener, self.sheet
+        document.said.connect(self._say)
+        document.path_changed.connect(self._show_title)
+        document.part_changed.connect(self._renew_readings)
+        self.board.sample_wanted.connect(lambda path: self.files.open_sample(Path(path)))
+        self.files.failed.connect(sheet.head.notice.tell)
+        self.files.saved.connect(self._saved)
+        self.files.opened.connect(self._opened)
+        sheet.head.screen_wanted.connect(self.screen)
+        sheet.foot.screen_wanted.connect(self.screen)
+        sheet.foot.cancel_wanted.connect(self.cancel)
+        screener.started.connect(self._started)
+        screener.progress.connect(sheet.foot.show_step)
+        screener.pass_done.connect(self._passed)
+        screener.finished.connect(self._finished)
+        screener.failed.connect(self._failed)
+        screener.cancelled.connect(lambda: self._end("cancelled"))
+
+    # --- screening ------------------------------------------------------------------------------
+
+    def _started(self) -> None:
+        self.sheet.foot.begin()
+        self.sheet.head.show_screening(True)
+        self.actions_.refresh()
+
+    def _passed(self, fields: Fields, summary: PassSummary) -> None:
+        self.sheet.foot.show_pass(summary)
+        if self.document.view.lens == "Shape":
+            self.document.look(lens="Mesh")
+        self.painter.show_pass(fields)
+
+    def _finished(self, findings: Findings, part: Part) -> None:
+        findings_cache.store(findings, part)
+        self._end("")
+        if findings.key != self.document.key:
+            self._end("the part changed meanwhile")
+            if screening_key(part) == findings.key:
+                self.document.set_findings(findings)  # shown, and marked out of date
+            return
+        self._read_last = self.document.part.readings
+        self.document.set_findings(with_readings(self.document.part, findings))
+        if self.document.view.lens in ("Shape", "Mesh"):
+            self.document.look(lens="Utilisation" if _judges_stress(findings) else "Stress")
+
+    def _failed(self, error: ScreenappError) -> None:
+        self._end("not screened")
+        self.sheet.head.notice.tell("The screening failed; the part is unharmed", error)
+        ids = [id_ for fault in error.faults for id_ in fault.ids]
+        if ids:
+            self.document.select(*dict.fromkeys(ids))
+
+    def _end(self, how: str) -> None:
+        self.painter.show_pass(None)
+        self.sheet.foot.end(how)
+        self.sheet.head.show_screening(False)
+        self.actions_.refresh()
+
+    def _renew_readings(self) -> None:
+        """Read changed probes at once, without solving."""
+        document, findings = self.document, self.document.findings
+        if findings is None or not document.current or not findings.fields:
+            return
+        if self._read_last != document.part.readings:
+            self._read_last = document.part.readings
+            document.set_findings(with_readings(document.part, findings))
+
+    # --- saying ---------------------------------------------------------------------------------
+
+    def _say(self, text: str) -> None:
+        short = self.said.fontMetrics().elidedText(
+            text, Qt.TextElideMode.ElideRight, max(240, self.width() - 360)
+        )
+        self.said.setText(short)
+        self.said.setToolTip(text)
+        self.menuBar().adjustSize()
+        self._unsay.start()
+
+    def _show_title(self) -> None:
+        document = self.document
+        name = document.path.name if document.path else document.part.title
+        self.setWindowTitle(f"{name}[*] · screenapp")
+        self.setWindowModified(document.unsaved)
+
+    def _saved(self, when: datetime) -> None:
+        self.sheet.head.notice.hide()
+        self.sheet.head.note_saved(when)
+
+    def _opened(self) -> None:
+        if self.screener.busy:
+            self.screener.cancel()
+        self.painter.show_pass(None)
+        self._read_last = self.document.part.readings
+        self.sheet.head.notice.hide()
+        self.sheet.foot.end("")
+        self.sheet.scroll.verticalScrollBar().setValue(0)
+
+    def _show_panel(self, name: str, make: Callable[[], Panel]) -> None:
+        panel = self._panels.get(name)
+        if panel is None:
+            panel = make()
+            self._panels[name] = panel
+            panel.destroyed.connect(lambda: self._panels.pop(name, None))
+        panel.show()
+        panel.raise_()
+        panel.activateWindow()
+
+    def _window_keys(self) -> Keys:
+        keys = []
+        for action in self.actions_.by_name.values():
+            shortcuts = action.shortcuts()
+            if shortcuts:
+                form = QKeySequence.SequenceFormat.NativeText
+                text = action.text().replace("&", "").rstrip("…")
+                if action is self.actions_.by_name["undo"]:
+                    text = "Undo"
+                elif action is self.actions_.by_name["redo"]:
+                    text = "Redo"
+                keys.append((", ".join(s.toString(form) for s in shortcuts), text.lower()))
+        keys.append(("Alt+1 … Alt+6", "choose a lens"))
+        return tuple(keys)
+
+    def _board_keys(self) -> Keys:
+        tools = [(tool.key, tool.name.lower()) for tool in self.board.tools if tool.key]
+        return (
+            *tools,
+            ("+, −", "zoom in, zoom out"),
+            ("Home", "fit the part in the board"),
+            ("Esc", "one step back; put the tool down; select nothing"),
+        )
+
+    def _accept_typing(self) -> None:
+        """What is still being typed in the sheet counts."""
+        focus = self.focusWidget()
+        if focus is not None and self.sheet.isAncestorOf(focus):
+            self.sheet.foot.button.setFocus(Qt.FocusReason.OtherFocusReason)
+            self.sheet.take_typing()
+
+    # --- events ---------------------------------------------------------------------------------
+
+    def showEvent(self, event: QShowEvent) -> None:
+        """Share the width out; warm the mesher up once the window stands."""
+        super().showEvent(event)
+        if not self._warmed:
+            self._warmed = True
+            self._share_out()
+            QTimer.singleShot(WARM_UP_MS, self.screener, self.screener.warm_up)
+
+    def closeEvent(self, event: QCloseEvent) -> None:
+        """Ask about unsaved work, remember the window, stop the thread."""
+        if not self.files.may_leave():
+            event.ignore()
+            return
+        self.settings.keep_bytes("geometry", self.saveGeometry())
+        self.settings.keep_bytes("columns", self.whole.saveState())
+        self.settings.keep_bytes("rows", self.left.saveState())
+        self.settings.sync()
+        self.screener.shut_down()
+        for panel in list(self._panels.values()):
+            panel.close()
+        super().closeEvent(event)
+
+    def dragEnterEvent(self, event: QDragEnterEvent) -> None:
+        """A part file may be dropped."""
+        if _dropped(event) is not None:
+            event.acceptProposedAction()
+
+    def dropEvent(self, event: QDropEvent) -> None:
+        """Open the dropped file."""
+        path = _dropped(event)
+        if path is not None:
+            event.acceptProposedAction()
+            self.files.open(path)
+
+
+def _dropped(event: QDropEvent) -> Path | None:
+    urls = event.mimeData().urls()
+    if len(urls) != 1 or not urls[0].isLocalFile():
+        return None
+    path = Path(urls[0].toLocalFile())
+    return path if path.suffix == ".json" else None
+
+
+def _judges_stress(findings: Findings) -> bool:
+    return any("stress" in limit.name.lower() or "von" in limit.name.lower()
+               for limit in findings.limits)
+

@@ -1,0 +1,178 @@
+"""7 Findings: the largest stresses by place and case, displacements and reactions."""
+
+from __future__ import annotations
+
+import math
+
+from screenapp.model.features import find, place_name
+from screenapp.model.findings import CaseFindings, Findings, Peak
+from screenapp.model.part import Part, StressLimit
+from screenapp.screening.limits import allowable
+from screenapp.model.estimate_text import estimate_text, plain, value_text
+from screenapp.window.figure_table import Column, FigureTable, Line
+from screenapp.window.sheet.direction import direction_text
+from screenapp.window.sheet.paragraph import Paragraph
+from screenapp.window.sheet.pieces import Piece, Words
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf
+
+MOST_PEAKS = 8
+QUANTITIES = {"von_mises": "", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
+
+
+class FindingsParagraph(Paragraph):
+    """What the screening found."""
+
+    number = 7
+    title = "Findings"
+    fields = ("readings",)
+
+    def build(self) -> None:
+        """Peaks, what moves most, and what the supports give."""
+        self.table = FigureTable(self.document, "Largest stresses", self, grows=True)
+        self.body.addWidget(self.table)
+        self.why = self.rows(0)
+        self.cases = self.rows(0)
+        self.reactions = self.rows(92)
+        self.document.view_changed.connect(self.refresh)
+
+    def fill(self) -> tuple[Piece | str, ...]:
+        """Show the findings."""
+        document = self.document
+        findings = document.findings
+        part = document.part
+        peaks = _shown_peaks(part, findings) if findings else []
+        self.table.show_lines(_columns(part), tuple(_line(part, c, p) for c, p in peaks),
+                              self.outdated())
+        self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks))])
+        self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
+        case = _viewed(findings, document.view.case) if findings else None
+        self.reactions.set(self._reaction_rows(case) if case else [])
+        if findings is None:
+            if any(fault.blocks for fault in document.faults):
+                return ("Nothing yet: the open paragraphs above come first.",)
+            return ("Nothing yet: screen the part to see where it is stressed most.",)
+        return ()
+
+    def outdated(self) -> bool:
+        """They belong to an older part."""
+        return self.document.findings is not None and not self.document.current
+
+    def _case_row(self, case: CaseFindings) -> RowOf:
+        units = self.document.part.display_units
+        moved = estimate_text(case.displacement_max, "displacement", units)
+        q = Quantities(units)
+        x, y = case.displacement_at
+        at = f"({q.bare(x, 'length')}, {q.bare(y, 'length')})"
+        text = f"{case.name}: moves by at most {moved} at {at}."
+        return RowOf(case.case, (), (Words(text, quiet=self.outdated()),))
+
+    def _reaction_rows(self, case: CaseFindings) -> list[RowOf]:
+        part = self.document.part
+        q = Quantities(part.display_units)
+        rows = []
+        for reaction in case.reactions:
+            found = find(part, reaction.support)
+            on = getattr(found.record, "on", "") if found else ""
+            where = place_name(part, on) if on else reaction.support
+            size = math.hypot(reaction.x, reaction.y)
+            way = _way(reaction.x, reaction.y)
+            text = f"gives {q.show(_three(size), 'force')} {way} in {case.name}"
+            rows.append(
+                RowOf(reaction.support, (where,), (Words(text, quiet=self.outdated()),), also=(on,))
+            )
+        return rows
+
+
+def _columns(part: Part) -> tuple[Column, ...]:
+    unit = Quantities(part.display_units).show(1.0, "stress").split()[-1]
+    columns = [Column("where")]
+    if len(part.cases) > 1:
+        columns.append(Column("case"))
+    columns.append(Column(f"von Mises {unit}", number=True))
+    if any(isinstance(limit, StressLimit) for limit in part.limits):
+        columns.append(
+            Column("use", number=True, tip="Stress over what the limit allows; 1 is all of it")
+        )
+    columns.append(Column("trust", pill=True))
+    return tuple(columns)
+
+
+def _line(part: Part, case: CaseFindings, peak: Peak) -> Line:
+    texts = [QUANTITIES.get(peak.quantity, "") + peak.place]
+    if len(part.cases) > 1:
+        texts.append(case.name)
+    texts.append(value_text(peak.estimate, "stress", part.display_units, unit=False))
+    if any(isinstance(limit, StressLimit) for limit in part.limits):
+        texts.append(use_text(part, peak))
+    texts.append(peak.estimate.trust)
+    tip = " ".join(filter(None, (peak.why, peak.mend)))
+    return Line(peak.feature or f"peak {case.case} {peak.at}", tuple(texts), tip)
+
+
+def use_text(part: Part, peak: Peak) -> str:
+    """Share of the allowable stress that the peak uses; a dash where no limit is on it."""
+    uses = []
+    for limit in part.limits:
+        if isinstance(limit, StressLimit) and limit.measure == peak.quantity and part.material:
+            allowed = allowable(limit, part.material)
+            if allowed:
+                uses.append(peak.estimate.value / allowed)
+    if not uses:
+        return "–"
+    text = plain(max(uses), 2)
+    return f"≥ {text}" if peak.estimate.trust == "rising" else text
+
+
+def _shown_peaks(part: Part, findings: Findings) -> list[tuple[CaseFindings, Peak]]:
+    """The largest peaks over all cases, of the stresses that are judged."""
+    judged = {limit.measure for limit in part.limits if isinstance(limit, StressLimit)}
+    judged = judged or {"von_mises"}
+    peaks = [(c, p) for c in findings.cases for p in c.peaks if p.quantity in judged]
+    rank = {"rising": 0, "unsettled": 1, "settled": 1}
+    peaks.sort(key=lambda cp: (rank[cp[1].estimate.trust], -abs(cp[1].estimate.value)))
+    return peaks[:MOST_PEAKS]
+
+
+def _doubtful(peaks: list[tuple[CaseFindings, Peak]]) -> list[tuple[CaseFindings, Peak]]:
+    seen: set[str] = set()
+    kept = []
+    for case, peak in peaks:
+        if peak.why and peak.why not in seen:
+            seen.add(peak.why)
+            kept.append((case, peak))
+    return kept[:3]
+
+
+def _why_row(number: int, peak: Peak) -> RowOf:
+    mend = f" {_sentence(peak.mend)}" if peak.mend else ""
+    colour = "bad" if peak.estimate.trust == "rising" else "doubt"
+    text = f"{_sentence(f'{peak.place}: {peak.why}')}{mend}"
+    return RowOf(f"why {number}", (), (Words(text, colour=colour),), also=(peak.feature,))
+
+
+def _sentence(text: str) -> str:
+    text = text.strip().rstrip(".")
+    return f"{text[:1].upper()}{text[1:]}."
+
+
+def _viewed(findings: Findings, case: int) -> CaseFindings | None:
+    if not findings.cases:
+        return None
+    return findings.cases[min(case, len(findings.cases) - 1)]
+
+
+def _way(x: float, y: float) -> str:
+    size = math.hypot(x, y)
+    if size == 0.0:
+        return ""
+    # a component below a thousandth is nothing to a reader
+    flat = [0.0 if abs(v) < 1e-3 * size else v for v in (x, y)]
+    text = direction_text(*flat)
+    return text if not text.endswith("°") else f"at {float(text[:-1]):.0f}°"
+
+
+def _three(value: float) -> float:
+    return float(f"{value:.3g}")
+
+
