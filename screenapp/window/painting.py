@@ -12,6 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.estimate_text import EstimateKind, estimate_text, value_text
 from screenapp.model.findings import (
     CaseFindings,
     Estimate,
@@ -25,7 +26,6 @@ from screenapp.model.findings import (
 from screenapp.model.part import Part, Point, StressLimit
 from screenapp.window import fields as scalars
 from screenapp.window.document import Lens, View
-from screenapp.model.estimate_text import EstimateKind, estimate_text, value_text
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import itertools
+
 import numpy as np
 import pytest
 
@@ -33,7 +35,7 @@ def test_one_is_the_last_blue(largest: float) -> None:
 def test_utilisation_has_a_step_of_colour_at_one_only() -> None:
     table = colours.utilisation(1.5).table
     steps = [
-        np.abs(rgb(int(a)) - rgb(int(b))).max() for a, b in zip(table, table[1:], strict=False)
+        np.abs(rgb(int(a)) - rgb(int(b))).max() for a, b in itertools.pairwise(table)
     ]
     assert int(np.argmax(steps)) == colours.ENTRIES
     assert sorted(steps)[-2] < 4, "everywhere else neighbours are alike"
@@ -58,7 +60,7 @@ def test_blue_yellow_blindness_is_served_by_the_red_green_axis() -> None:
 def test_cividis_grows_lighter_all_the_way() -> None:
     table = colours.cividis(0.0, 1.0).table
     grades = [lightness(int(w)) for w in table[::16]]
-    assert all(b > a for a, b in zip(grades, grades[1:], strict=False))
+    assert all(b > a for a, b in itertools.pairwise(grades))
 
 
 def test_ends_and_blanks() -> None:

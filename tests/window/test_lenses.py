@@ -74,7 +74,7 @@ class Bench:
 @pytest.fixture
 def bench(qtbot: QtBot) -> Iterator[Bench]:
     theme.choose("paper")
-    yield Bench(qtbot)
+    return Bench(qtbot)
 
 
 def close(a: QColor, b: QColor, by: int = 6) -> bool:

@@ -10,6 +10,7 @@ from PySide6.QtCore import QObject
 from PySide6.QtGui import QPainterPath
 
 from screenapp.model.errors import ScreenappError
+from screenapp.model.estimate_text import unit_of
 from screenapp.model.findings import Fields, Findings
 from screenapp.model.kinds import KindName
 from screenapp.model.units import parse_quantity
@@ -26,7 +27,6 @@ from screenapp.window.board.mesh_item import MeshItem
 from screenapp.window.board.outline_path import mesh_path, region_path
 from screenapp.window.board.rim_item import RimItem
 from screenapp.window.document import Document
-from screenapp.model.estimate_text import unit_of
 from screenapp.window.fields import moved
 from screenapp.window.painting import WAITING, Painting, Source, paint
 
