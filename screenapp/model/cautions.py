@@ -2,29 +2,53 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 import numpy as np
 
+from screenapp.model.crossings import piece_name
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault
+from screenapp.model.features import place_name
+from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.part import Part, PointLoad
 from screenapp.model.shape import Shape
 
+RE_ENTERS = 185.0
+"""Sharp corners with a larger angle within the material [deg] are pointed out."""
 
-def cautions_of(part: Part, shape: Shape) -> list[Fault]:
+NARROW = 2.0
+"""Ligaments narrower than this [mm] are pointed out."""
+
+SHORT = 1e-3
+"""Edges shorter than this share of the part's size are pointed out."""
+
+SOFT, STIFF = 1.0, 1.3e6
+"""Young's moduli outside these [MPa] are pointed out: softer than foam, stiffer than diamond
+(1.05e6 to 1.2e6 MPa, from memory)."""
+
+MOST = 20
+"""No more cautions of one kind are listed."""
+
+
+def cautions_of(part: Part, shape: Shape, table: CurveTable) -> list[Fault]:
     """All cautions; none of them blocks."""
     return [
-        *_corner_cautions(shape),
+        *_corner_cautions(shape, table),
+        *_ligament_cautions(part, shape, table),
+        *_piece_cautions(shape, table),
+        *_wall_cautions(part, shape),
         *_point_cautions(part, shape),
         *_limit_cautions(part),
-        *_probe_cautions(part, shape),
+        *_probe_cautions(part, shape, table),
     ]
 
 
-def material_angles(shape: Shape) -> list[tuple[str, tuple[float, float], float]]:
+def material_angles(
+    shape: Shape, table: CurveTable
+) -> list[tuple[str, tuple[float, float], float]]:
     """Id, place [mm] and angle within the material [deg] of each sharp corner; 270 re-enters."""
-    table = CurveTable.of(shape.curves)
     n = len(table)
     ahead = table.tangents(np.arange(n), np.zeros(n))
     behind = table.tangents(np.arange(n), np.ones(n))
@@ -33,27 +57,115 @@ def material_angles(shape: Shape) -> list[tuple[str, tuple[float, float], float]
         before[first] = last - 1
     u, v = behind[before], ahead
     turn = np.degrees(np.arctan2(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0], np.sum(u * v, axis=1)))
-    at_start = {tuple(np.round(p, 9)): k for k, p in enumerate(table.start)}
+    at_start = {(round(x, 9), round(y, 9)): k for k, (x, y) in enumerate(table.start.tolist())}
     angles = []
     for id_, at in shape.sharp_corners:
-        k = at_start.get(tuple(np.round(np.asarray(at, dtype=float), 9)))
+        k = at_start.get((round(at[0], 9), round(at[1], 9)))
         if k is not None:
             angles.append((id_, at, float(180.0 - turn[k])))
     return angles
 
 
-def _corner_cautions(shape: Shape) -> Iterator[Fault]:
-    for id_, at, angle in material_angles(shape):
-        if angle > 185.0:
-            yield Fault(
-                f"corner {id_} re-enters the material at {angle:.0f}° and is sharp: "
-                "the stress there has no finite value",
-                "round it, or read the stress at a distance from it",
-                "",
-                (id_,),
-                at,
-                blocks=False,
-            )
+def _corner_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
+    entering = [found for found in material_angles(shape, table) if found[2] > RE_ENTERS]
+    for id_, at, angle in entering[:MOST]:
+        yield Fault(
+            f"corner {id_} re-enters the material at {angle:.0f}° and is sharp: "
+            "the stress there has no finite value",
+            "round it, or read the stress at a distance from it",
+            "",
+            (id_,),
+            at,
+            blocks=False,
+        )
+    if len(entering) > MOST:
+        yield Fault(
+            f"{len(entering) - MOST} more corners re-enter the material and are sharp",
+            "round them, or read the stress at a distance from them",
+            "outline",
+            tuple(id_ for id_, _, _ in entering[MOST:]),
+            blocks=False,
+        )
+
+
+def _ligament_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fault]:
+    """Narrow places: under 2 mm anywhere, under the wall's thickness beside a hole."""
+    thickness = part.wall.thickness if math.isfinite(part.wall.thickness) else 0.0
+    below = min(max(NARROW, thickness), shape.size)
+    said: list[Ligament] = []
+    for ligament in ligaments(shape, below, table):
+        holes = [f for f in ligament.between if f in shape.hole_ids]
+        if ligament.width >= NARROW and not holes:
+            continue
+        if any(_beside(ligament, other) for other in said):
+            continue
+        said.append(ligament)
+        if len(said) > MOST:
+            return
+        one, two = (place_name(part, f) for f in ligament.between)
+        yield Fault(
+            f"only {ligament.width:.3g} mm of material stands between {one} and {two}",
+            "move them apart unless it is meant",
+            "",
+            ligament.between,
+            ligament.at,
+            blocks=False,
+        )
+
+
+def _beside(one: Ligament, other: Ligament) -> bool:
+    """Whether two ligaments are the same narrow place, seen from neighbouring pieces."""
+    return math.dist(one.at, other.at) < one.width
+
+
+def _piece_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
+    """Edges and fillets so short that the mesh must be very fine there."""
+    lengths = table.lengths
+    short = [k for k in np.flatnonzero(lengths < SHORT * shape.size) if not _is_hole(shape, k)]
+    for k in short[:MOST]:
+        piece = shape.curves[k]
+        x, y = piece.curve.point(0.5)
+        yield Fault(
+            f"{piece_name(piece)} is only {lengths[k]:.2g} mm long",
+            "remove it unless it is meant: it makes the mesh very fine there",
+            "",
+            (piece.feature,),
+            (float(x), float(y)),
+            blocks=False,
+        )
+
+
+def _is_hole(shape: Shape, piece: int) -> bool:
+    return shape.curves[piece].kind == "hole"
+
+
+def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
+    if part.wall.thickness > shape.size / 3.0:
+        yield Fault(
+            f"the wall is {part.wall.thickness:g} mm thick and the part only "
+            f"{shape.size:.3g} mm across: it is not thin",
+            "check the thickness; stresses across the wall are left out",
+            "wall.thickness",
+            blocks=False,
+        )
+    material = part.material
+    if material is None:
+        return
+    modulus, proof, strength = material.youngs_modulus, material.proof_stress, material.strength
+    if not SOFT <= modulus <= STIFF:
+        yield Fault(
+            f"the Young's modulus of “{material.name}” is {modulus:g} MPa",
+            "check its unit: metals have 40 000 to 210 000 MPa, plastics 1000 to 20 000 MPa",
+            f"materials.{material.name}.youngs_modulus",
+            blocks=False,
+        )
+    if proof is not None and strength is not None and proof > strength:
+        yield Fault(
+            f"the proof stress of “{material.name}” is above its strength",
+            "check both figures",
+            f"materials.{material.name}.proof_stress",
+            blocks=False,
+        )
 
 
 def _point_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
@@ -93,15 +205,19 @@ def _limit_cautions(part: Part) -> Iterator[Fault]:
         )
 
 
-def _probe_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
+def _probe_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fault]:
     probes = [p for p in part.readings if np.isfinite(p.at).all()]
     if not probes:
         return
-    table = CurveTable.of(shape.curves)
     points = np.array([p.at for p in probes], dtype=float)
     inside = table.inside(0, points)
+    boxes = table.loop_boxes(shape)
     for loop in range(1, len(shape.loops)):
-        inside &= ~table.inside(loop, points)
+        near = np.flatnonzero(
+            np.all((points > boxes[loop, :2]) & (points < boxes[loop, 2:]), axis=1)
+        )
+        if len(near):
+            inside[near] &= ~table.inside(loop, points[near])
     everyone = np.arange(len(table))
     for probe, point, ok in zip(probes, points, inside, strict=True):
         if ok:

@@ -11,7 +11,12 @@ from numpy.typing import NDArray
 
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault
-from screenapp.model.meetings import close_pairs, closest_approaches, intersections
+from screenapp.model.meetings import (
+    close_pairs,
+    closest_approaches,
+    following_pieces,
+    intersections,
+)
 from screenapp.model.shape import BoundaryCurve, Shape
 
 TOUCH = 1e-6
@@ -27,9 +32,8 @@ Ints = NDArray[np.int64]
 Floats = NDArray[np.float64]
 
 
-def boundary_faults(shape: Shape) -> list[Fault]:
+def boundary_faults(shape: Shape, table: CurveTable) -> list[Fault]:
     """All that is wrong with the boundary as a whole; every fault blocks."""
-    table = CurveTable.of(shape.curves)
     touch = TOUCH * shape.size
     faults = _short_pieces(shape, table, touch)
     if faults:
@@ -64,18 +68,10 @@ def _short_pieces(shape: Shape, table: CurveTable, touch: float) -> list[Fault]:
     return faults
 
 
-def _neighbours(shape: Shape) -> Ints:
-    """The piece that follows each piece on its loop, (n,)."""
-    following = np.arange(1, len(shape.curves) + 1)
-    for first, last in shape.loops:
-        following[last - 1] = first
-    return following
-
-
 def _folds(shape: Shape, table: CurveTable) -> list[Fault]:
     """Neighbours that leave no angle between them."""
     here = np.arange(len(table))
-    there = _neighbours(shape)
+    there = following_pieces(shape)
     t_in = table.tangents(here, np.ones(len(here)))
     t_out = table.tangents(there, np.zeros(len(here)))
     cosine = np.sum(t_in * t_out, axis=1)
@@ -153,7 +149,7 @@ def _at_common_end(
     Where a curve leaves its neighbour tangentially, they stay close for a while: the reach of the
     common end is there sqrt(2 R gap) for the smaller radius R.
     """
-    following = _neighbours(shape)
+    following = following_pieces(shape)
     common = np.zeros(len(points), dtype=bool)
     for first, second in ((i, j), (j, i)):
         follows = following[first] == second
@@ -233,10 +229,8 @@ def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[
 
 
 def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fault]:
-    boxes = table.boxes()
-    starts = [first for first, _ in shape.loops]
-    low = np.minimum.reduceat(boxes[:, :2], starts, axis=0)
-    high = np.maximum.reduceat(boxes[:, 2:], starts, axis=0)
+    boxes = table.loop_boxes(shape)
+    low, high = boxes[:, :2], boxes[:, 2:]
     size = np.prod(high - low, axis=1)
     faults: list[Fault] = []
     order = sorted(holes, key=lambda n: -size[n])

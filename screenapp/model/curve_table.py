@@ -7,12 +7,14 @@ segments and circular arcs: nothing is flattened.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
+import shapely
 from numpy.typing import NDArray
 
 from screenapp.model.curves import Arc
-from screenapp.model.shape import BoundaryCurve
+from screenapp.model.shape import BoundaryCurve, Shape
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -69,6 +71,7 @@ class CurveTable:
         chord = np.hypot(*(self.end - self.start).T)
         return np.where(self.arc, self.radius * np.abs(self.sweep), chord)
 
+    @cached_property
     def boxes(self) -> Floats:
         """Bounding box of each curve: smallest x, y, largest x, y [mm], (n, 4)."""
         low = np.minimum(self.start, self.end)
@@ -80,6 +83,14 @@ class CurveTable:
             extreme = self.centre + self.radius[:, None] * way
             low = np.where(reached[:, None], np.minimum(low, extreme), low)
             high = np.where(reached[:, None], np.maximum(high, extreme), high)
+        return np.concatenate([low, high], axis=1)
+
+    def loop_boxes(self, shape: Shape) -> Floats:
+        """Bounding box of each loop of the shape that the table is of, (n_loops, 4)."""
+        boxes = self.boxes
+        starts = [first for first, _ in shape.loops]
+        low = np.minimum.reduceat(boxes[:, :2], starts, axis=0)
+        high = np.maximum.reduceat(boxes[:, 2:], starts, axis=0)
         return np.concatenate([low, high], axis=1)
 
     def points(self, which: Ints, t: Floats) -> Floats:
@@ -114,26 +125,46 @@ class CurveTable:
         return np.asarray(np.where(self.arc[which], round_, straight))
 
     def inside(self, loop: int, points: Floats) -> Bools:
-        """Which points lie inside a loop, whichever way it runs, (k,).
+        """Which points lie inside a sound loop, whichever way it runs, (k,).
+
+        Away from the arcs the polygon of the chords decides; beside them the winding number.
+        """
+        mine = np.flatnonzero(self.loop == loop)
+        if len(mine) * len(points) < 20_000:
+            return self._wound_by(mine, points)
+        ring = shapely.polygons(self.start[mine])
+        shapely.prepare(ring)
+        within = np.asarray(shapely.contains_xy(ring, points), dtype=bool)
+        arcs = mine[self.arc[mine]]
+        if len(arcs):
+            boxes = shapely.box(*self.boxes[arcs].T)
+            near, _ = shapely.STRtree(boxes).query(shapely.points(points))
+            beside = np.unique(near)
+            within[beside] = self._wound_by(mine, points[beside])
+        return within
+
+    def _wound_by(self, mine: Ints, points: Floats) -> Bools:
+        """Whether the curves `mine` wind round each point.
 
         The winding number is the sum of the angles under which a point sees the chords, and one
         turn more for each arc whose circular segment (between arc and chord) holds the point.
         """
-        mine = np.flatnonzero(self.loop == loop)
         winding = np.zeros(len(points))
-        step = max(1, 2_000_000 // max(1, len(mine)))
+        step = max(1, 500_000 // max(1, len(mine)))
         for first in range(0, len(points), step):
             p = points[first : first + step, None, :]
             a, b = self.start[mine] - p, self.end[mine] - p
-            cross = a[..., 0] * b[..., 1] - a[..., 1] * b[..., 0]
+            cross = a[..., 0] * b[..., 1] - a[..., 1] * b[..., 0] + 0.0  # no negative zeros
             dot = a[..., 0] * b[..., 0] + a[..., 1] * b[..., 1]
             total = np.arctan2(cross, dot).sum(axis=1) / TWO_PI
-            arcs = mine[self.arc[mine]]
-            c, d = self.start[arcs] - p, self.end[arcs] - p
-            right = (c[..., 0] * d[..., 1] - c[..., 1] * d[..., 0]) * np.sign(self.sweep[arcs]) < 0
-            within = np.sum((p - self.centre[arcs]) ** 2, axis=2) < self.radius[arcs] ** 2
-            total += np.sum(np.where(within & right, np.sign(self.sweep[arcs]), 0.0), axis=1)
-            winding[first : first + step] = total
+            arcs = self.arc[mine]
+            way = np.sign(self.sweep[mine[arcs]])
+            beyond = np.where(way > 0.0, cross[:, arcs] < 0.0, cross[:, arcs] >= 0.0)
+            centre, radius = self.centre[mine[arcs]], self.radius[mine[arcs]]
+            within = np.sum((p - centre) ** 2, axis=2) < radius**2
+            winding[first : first + step] = total + np.sum(
+                np.where(within & beyond, way, 0.0), axis=1
+            )
         return np.abs(winding) > 0.5
 
     def _turned(self, which: Ints, angles: Floats) -> Floats:

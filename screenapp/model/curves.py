@@ -38,7 +38,7 @@ class Segment:
     def point(self, t: ArrayLike) -> Floats:
         """Points [mm] at parameters `t`, shape `t.shape + (2,)`."""
         t = np.asarray(t, dtype=float)[..., None]
-        return np.asarray(self.start) * (1.0 - t) + np.asarray(self.end) * t
+        return np.asarray(np.asarray(self.start) * (1.0 - t) + np.asarray(self.end) * t)
 
     def tangent(self, t: ArrayLike) -> Floats:
         """Unit tangents at `t`, shape `t.shape + (2,)`."""
@@ -52,7 +52,9 @@ class Segment:
 
     def part(self, t0: float, t1: float) -> Segment:
         """The piece from parameter `t0` to `t1`."""
-        return Segment(_pair(self.point(t0)), _pair(self.point(t1)))
+        (ax, ay), (bx, by) = self.start, self.end
+        start, end = ((ax * (1.0 - t) + bx * t, ay * (1.0 - t) + by * t) for t in (t0, t1))
+        return Segment(start, end)
 
     def reversed(self) -> Segment:
         """The same segment run backwards."""
@@ -78,12 +80,12 @@ class Arc:
     @property
     def start(self) -> Point:
         """First point [mm]."""
-        return _pair(self.point(0.0))
+        return self._at(self.begin)
 
     @property
     def end(self) -> Point:
         """Last point [mm]."""
-        return _pair(self.point(1.0))
+        return self._at(self.begin + self.sweep)
 
     @property
     def length(self) -> float:
@@ -118,6 +120,11 @@ class Arc:
         """The piece from parameter `t0` to `t1`."""
         return Arc(self.centre, self.radius, self.begin + t0 * self.sweep, (t1 - t0) * self.sweep)
 
+    def _at(self, angle: float) -> Point:
+        """The point of the circle at an angle [rad], in plain floats: asked for very often."""
+        (x, y), r = self.centre, self.radius
+        return x + r * math.cos(angle), y + r * math.sin(angle)
+
     def reversed(self) -> Arc:
         """The same arc run backwards."""
         return Arc(self.centre, self.radius, self.begin + self.sweep, -self.sweep)
@@ -148,7 +155,3 @@ def arc_through(start: Point, through: Point, end: Point) -> Curve:
     left = cross > 0.0  # start, through, end turn left: the arc runs counter-clockwise
     sweep = turn % (2.0 * math.pi) if left else -(-turn % (2.0 * math.pi))
     return Arc(centre, math.hypot(ux, uy), begin, sweep)
-
-
-def _pair(p: Floats) -> Point:
-    return float(p[0]), float(p[1])

@@ -51,34 +51,40 @@ class Found:
         kind: what sort of thing it is.
         record: the record itself.
         owner: id of the hole for a corner or edge of a loop hole, of the case for a load; else "".
-        field: dotted path of the record in the part file.
+        group: dotted path of the list in the part file that holds it.
     """
 
     kind: Kind
     record: Record
     owner: str
-    field: str
+    group: str
+
+    @property
+    def field(self) -> str:
+        """Dotted path of the record in the part file, e.g. "outline.corners.c4"."""
+        return f"{self.group}.{self.record.id}"
 
 
 def everything(part: Part) -> Iterator[Found]:
     """All things of a part that bear an id, outline first, in the order of the part file."""
     for where, owner, loop in loops_of(part):
+        corners, edges = f"{where}.corners", f"{where}.edges"
         for corner in loop.corners:
-            yield Found("corner", corner, owner, f"{where}.corners.{corner.id}")
+            yield Found("corner", corner, owner, corners)
         for edge in loop.edges:
-            yield Found("edge", edge, owner, f"{where}.edges.{edge.id}")
+            yield Found("edge", edge, owner, edges)
     for hole in part.holes:
-        yield Found("hole", hole, "", f"holes.{hole.id}")
+        yield Found("hole", hole, "", "holes")
     for support in part.supports:
-        yield Found("support", support, "", f"supports.{support.id}")
+        yield Found("support", support, "", "supports")
     for case in part.cases:
-        yield Found("case", case, "", f"cases.{case.id}")
+        yield Found("case", case, "", "cases")
         for load in case.loads:
-            yield Found("load", load, case.id, f"cases.{case.id}.loads.{load.id}")
+            yield Found("load", load, case.id, f"cases.{case.id}.loads")
     for limit in part.limits:
-        yield Found("limit", limit, "", f"limits.{limit.id}")
+        yield Found("limit", limit, "", "limits")
     for probe in part.readings:
-        yield Found("probe", probe, "", f"readings.{probe.id}")
+        yield Found("probe", probe, "", "readings")
 
 
 def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:

@@ -12,6 +12,7 @@ import shapely
 from numpy.typing import NDArray
 
 from screenapp.model.curve_table import CurveTable
+from screenapp.model.shape import Shape
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -40,9 +41,17 @@ class Approaches:
         return np.asarray(np.hypot(*(self.p_j - self.p_i).T))
 
 
+def following_pieces(shape: Shape) -> Ints:
+    """The piece that follows each piece on its loop, (n,)."""
+    following = np.arange(1, len(shape.curves) + 1)
+    for first, last in shape.loops:
+        following[last - 1] = first
+    return following
+
+
 def close_pairs(table: CurveTable, within: float) -> tuple[Ints, Ints]:
     """Pairs i < j of curves whose bounding boxes come nearer than `within` [mm]."""
-    boxes = table.boxes()
+    boxes = table.boxes
     half = within / 2.0
     grown = shapely.box(
         boxes[:, 0] - half, boxes[:, 1] - half, boxes[:, 2] + half, boxes[:, 3] + half

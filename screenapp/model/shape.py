@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 from typing import Literal
 
 import numpy as np
@@ -57,15 +58,12 @@ class Shape:
         """Exact area [mm²], holes taken out."""
         return sum(_area_under(c.curve) for c in self.curves)
 
-    @property
+    @cached_property
     def bounds(self) -> tuple[float, float, float, float]:
         """Smallest x, smallest y, largest x, largest y [mm] of the outline."""
         first, last = self.loops[0]
-        points = np.concatenate(
-            [c.curve.point(np.linspace(0.0, 1.0, 65)) for c in self.curves[first:last]]
-        )
-        (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
-        return float(x0), float(y0), float(x1), float(y1)
+        xs, ys = zip(*(p for c in self.curves[first:last] for p in _extremes(c.curve)), strict=True)
+        return min(xs), min(ys), max(xs), max(ys)
 
     @property
     def size(self) -> float:
@@ -216,6 +214,8 @@ def _fillet(before: Curve, after: Curve, radius: float) -> tuple[Arc, float, flo
 
     Returns the arc, run from `before` to `after`, and the parameters at which it touches each.
     """
+    if isinstance(before, Segment) and isinstance(after, Segment):
+        return _fillet_of_lines(before, after, radius)
     t_in, t_out = before.tangent(1.0), after.tangent(0.0)
     turn = float(t_in[0] * t_out[1] - t_in[1] * t_out[0])
     if abs(turn) < 1e-7:
@@ -227,7 +227,10 @@ def _fillet(before: Curve, after: Curve, radius: float) -> tuple[Arc, float, flo
         t1, t2 = before.nearest(centre), after.nearest(centre)
         p1, p2 = before.point(t1), after.point(t2)
         slack = 1e-7 * max(radius, 1e-9)
-        if abs(math.dist(p1, centre) - radius) > slack or abs(math.dist(p2, centre) - radius) > slack:
+        if (
+            abs(math.dist(p1, centre) - radius) > slack
+            or abs(math.dist(p2, centre) - radius) > slack
+        ):
             continue
         begin = math.atan2(p1[1] - centre[1], p1[0] - centre[0])
         stop = math.atan2(p2[1] - centre[1], p2[0] - centre[0])
@@ -240,15 +243,29 @@ def _fillet(before: Curve, after: Curve, radius: float) -> tuple[Arc, float, flo
     return best[1:] if best else None
 
 
+def _fillet_of_lines(
+    before: Segment, after: Segment, radius: float
+) -> tuple[Arc, float, float] | None:
+    """The same for two straight edges, in plain floats: a part can have thousands."""
+    (ax, ay), (bx, by), (cx, cy) = before.start, before.end, after.end
+    len1, len2 = before.length, after.length
+    ux, uy, vx, vy = (bx - ax) / len1, (by - ay) / len1, (cx - bx) / len2, (cy - by) / len2
+    sine = ux * vy - uy * vx
+    if abs(sine) < 1e-7:
+        return None
+    side = math.copysign(1.0, sine)  # the centre lies on this side of both edges (+: left)
+    turn = math.atan2(sine, ux * vx + uy * vy)
+    back = radius * math.tan(abs(turn) / 2.0)  # from the corner to where the fillet touches
+    if back > min(len1, len2) * (1.0 + 1e-9):
+        return None
+    begin = math.atan2(-side * ux, side * uy)
+    centre = (bx - back * ux - side * radius * uy, by - back * uy + side * radius * ux)
+    t_before, t_after = max(0.0, 1.0 - back / len1), min(1.0, back / len2)
+    return Arc(centre, radius, begin, turn), t_before, t_after
+
+
 def _offset_crossings(a: Curve, b: Curve, left: float) -> list[Point]:
-    """Points at the signed distance `left` to the left of both curves (extended)."""
-    if isinstance(a, Segment) and isinstance(b, Segment):
-        pa, da = _offset_line(a, left)
-        pb, db = _offset_line(b, left)
-        cross = da[0] * db[1] - da[1] * db[0]
-        gap = pb - pa
-        s = (gap[0] * db[1] - gap[1] * db[0]) / cross
-        return [(float(pa[0] + s * da[0]), float(pa[1] + s * da[1]))]
+    """Points at the signed distance `left` to the left of both curves (extended), one an arc."""
     if isinstance(a, Segment) and isinstance(b, Arc):
         p, d = _offset_line(a, left)
         return _line_circle(p, d, b.centre, _offset_radius(b, left))
@@ -296,9 +313,7 @@ def _circle_circle(c1: Point, r1: float, c2: Point, r2: float) -> list[Point]:
         return []
     ux, uy = (c2[0] - c1[0]) / far, (c2[1] - c1[1]) / far
     half = math.sqrt(half2)
-    return [
-        (c1[0] + along * ux - h * uy, c1[1] + along * uy + h * ux) for h in (-half, half)
-    ]
+    return [(c1[0] + along * ux - h * uy, c1[1] + along * uy + h * ux) for h in (-half, half)]
 
 
 def _plain_hole(hole: CircleHole | SlotHole, faults: list[Fault]) -> list[BoundaryCurve]:
@@ -360,6 +375,17 @@ def _plain_hole(hole: CircleHole | SlotHole, faults: list[Fault]) -> list[Bounda
 
 def _turned(piece: BoundaryCurve) -> BoundaryCurve:
     return BoundaryCurve(piece.feature, piece.kind, piece.curve.reversed(), piece.loop)
+
+
+def _extremes(curve: Curve) -> list[Point]:
+    """Both ends of a curve and the points of an arc that lie farthest along an axis."""
+    points = [curve.start, curve.end]
+    if isinstance(curve, Arc):
+        (x, y), r, way = curve.centre, curve.radius, math.copysign(1.0, curve.sweep)
+        for i, (dx, dy) in enumerate(((r, 0.0), (0.0, r), (-r, 0.0), (0.0, -r))):
+            if (0.5 * math.pi * i - curve.begin) * way % (2.0 * math.pi) < abs(curve.sweep):
+                points.append((x + dx, y + dy))
+    return points
 
 
 def _area_under(curve: Curve) -> float:

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from screenapp.model.cautions import cautions_of
 from screenapp.model.crossings import boundary_faults
+from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import places_of
 from screenapp.model.load_faults import load_faults
@@ -17,6 +18,7 @@ from screenapp.model.size_faults import id_faults, size_faults
 from screenapp.model.support_faults import support_faults
 from screenapp.model.value_faults import (
     dimension_faults,
+    element_count_faults,
     limit_faults,
     limit_material_faults,
     material_faults,
@@ -51,11 +53,11 @@ def check(part: Part) -> Shape:
 
 def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
     """All faults, and the shape if nothing is wrong with it."""
-    faults = id_faults(part)
-    shape, shape_faults = _sound_shape(part)
-    faults += shape_faults
+    shape, table, shape_faults = _sound_shape(part)
     places = places_of(part)
-    faults += [
+    faults = [
+        *id_faults(part),
+        *shape_faults,
         *wall_faults(part),
         *material_faults(part),
         *dimension_faults(part),
@@ -66,20 +68,22 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *mesh_faults(part.mesh),
         *probe_faults(part),
     ]
-    if shape is not None:
-        faults += cautions_of(part, shape)
+    if shape is not None and table is not None:
+        faults += element_count_faults(part.mesh, shape.area)
+        faults += cautions_of(part, shape, table)
     ordered = [f for f in faults if f.blocks] + [f for f in faults if not f.blocks]
     return tuple(ordered), shape
 
 
-def _sound_shape(part: Part) -> tuple[Shape | None, list[Fault]]:
-    """The shape if its boundary is sound, and all that is wrong with it."""
+def _sound_shape(part: Part) -> tuple[Shape | None, CurveTable | None, list[Fault]]:
+    """The shape and its curves if the boundary is sound, and all that is wrong with it."""
     faults = size_faults(part)
     if faults:
-        return None, faults
+        return None, None, faults
     try:
         shape = shape_of(part)
     except InvalidPartError as error:
-        return None, list(error.faults)
-    faults = boundary_faults(shape)
-    return (None if faults else shape), faults
+        return None, None, list(error.faults)
+    table = CurveTable.of(shape.curves)
+    faults = boundary_faults(shape, table)
+    return (None, None, faults) if faults else (shape, table, [])

@@ -22,6 +22,9 @@ from screenapp.model.size_faults import FARTHEST, SMALLEST
 TIGHTEST, LOOSEST = 0.0005, 0.2
 """Bounds of the mesh tolerance [-]."""
 
+MOST_ELEMENTS = 1e6
+"""An element size must not ask for more elements than this."""
+
 
 def positive(value: float) -> bool:
     """Whether a number is finite and above zero."""
@@ -199,6 +202,17 @@ def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:
             f"{mesh.across:g} elements are wanted across the thinnest wall",
             "give a whole number from 1 to 20",
             "mesh.across",
+        )
+
+
+def element_count_faults(mesh: MeshWishes, area: float) -> Iterator[Fault]:
+    """An element size that asks for more elements than any laptop holds."""
+    if mesh.size is not None and positive(mesh.size) and area > MOST_ELEMENTS * mesh.size**2:
+        yield Fault(
+            f"elements of {mesh.size:g} mm would be about {area / mesh.size**2:.1e} in number",
+            f"give a size of at least {math.sqrt(area / MOST_ELEMENTS):.2g} mm, "
+            "or leave it to the program",
+            "mesh.size",
         )
 
 
