@@ -110,6 +110,8 @@ class CalloutItem(ScreenItem):
             QRectF(frame.px(c.at) - QPointF(8, 8), frame.px(c.at) + QPointF(8, 8))
             for c in self._callouts
         ]
+        # marks, names and values of probes
+        taken += [QRectF(frame.px(v.at) + QPointF(-60, -8), QSizeF(120, 48)) for v in self._values]
         offsets: list[QPointF] = []
         for callout in self._callouts:
             at = frame.px(callout.at)

@@ -8,7 +8,16 @@ from dataclasses import dataclass
 
 import numpy as np
 from PySide6.QtCore import QEvent, QObject, QPointF, QRectF, Qt, Signal
-from PySide6.QtGui import QFont, QFontMetricsF, QImage, QKeyEvent, QPainter, QPaintEvent, QPen
+from PySide6.QtGui import (
+    QFont,
+    QFontMetricsF,
+    QImage,
+    QKeyEvent,
+    QPainter,
+    QPaintEvent,
+    QPen,
+    QRegion,
+)
 from PySide6.QtWidgets import QLineEdit, QPushButton, QWidget
 
 from screenapp.window import theme
@@ -129,6 +138,8 @@ class ColourBar(QWidget):
         left = int(bar.right()) + 6
         for button, y in zip(self._ends, (bar.bottom(), bar.top()), strict=True):
             button.setGeometry(left, int(y) - 10, WIDTH - left, 20)
+        beside = QRegion(int(bar.left()) - 6, 24, WIDTH, self.height() - 24)
+        self.setMask(beside.united(QRegion(0, 0, WIDTH, 26)))  # the rest is the board's
         self._reset.setGeometry(WIDTH - 80, int(bar.bottom()) + 12, 76, 20)
         self.raise_()
 

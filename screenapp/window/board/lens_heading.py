@@ -3,7 +3,8 @@ about it."""
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPointF, Qt
+from PySide6.QtGui import QPainter, QPaintEvent, QPen
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
 from screenapp.window import theme
@@ -15,6 +16,20 @@ MARGIN = 16
 AUTOMATIC = "auto"
 
 
+class Chooser(QComboBox):
+    """A box to choose from that shows so by a small angle at its right."""
+
+    def paintEvent(self, event: QPaintEvent) -> None:
+        """Paint the box, then the angle."""
+        super().paintEvent(event)
+        painter = QPainter(self)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        painter.setPen(QPen(theme.colour("quiet"), 1.5))
+        x, y = self.width() - 12.0, self.height() / 2.0
+        painter.drawPolyline([QPointF(x - 4, y - 2), QPointF(x, y + 2), QPointF(x + 4, y - 2)])
+        painter.end()
+
+
 class LensHeading(QWidget):
     """Choosers of component, case and deformation, and the caption below them."""
 
@@ -23,9 +38,10 @@ class LensHeading(QWidget):
         self._document = document
         self._host = host
         self._filling = False
+        self.setAttribute(Qt.WidgetAttribute.WA_NoSystemBackground)
         self.stress = self._chooser("Stress component", STRESS_NAMES)
         self.displacement = self._chooser("Displacement component", DISPLACEMENT_NAMES)
-        self.case = QComboBox()
+        self.case = Chooser()
         self.case.setAccessibleName("Case")
         self.case.setToolTip("The load case that is painted")
         self.deformation = QLineEdit()
@@ -41,6 +57,8 @@ class LensHeading(QWidget):
         self.caption.setAccessibleName("What is painted")
         self.warning = QLabel()
         self.warning.setAccessibleName("Caution about what is painted")
+        for label in (self._times, self._under, self.caption, self.warning):
+            label.setAttribute(Qt.WidgetAttribute.WA_TransparentForMouseEvents)
         self._row = QWidget()
         row = QHBoxLayout(self._row)
         row.setContentsMargins(0, 0, 0, 0)
@@ -160,8 +178,8 @@ class LensHeading(QWidget):
         self.sync()
 
     @staticmethod
-    def _chooser(name: str, choices: dict[str, str]) -> QComboBox:
-        box = QComboBox()
+    def _chooser(name: str, choices: dict[str, str]) -> Chooser:
+        box = Chooser()
         box.setAccessibleName(name)
         box.setToolTip(f"{name} that is painted")
         for key, words in choices.items():

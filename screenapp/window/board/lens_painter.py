@@ -5,39 +5,32 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Protocol
 
-import numpy as np
 from PySide6.QtCore import QObject
 from PySide6.QtGui import QPainterPath
 
-from screenapp.model.errors import ScreenappError
-from screenapp.model.estimate_text import unit_of
 from screenapp.model.findings import Fields, Findings
-from screenapp.model.kinds import KindName
-from screenapp.model.units import parse_quantity
 from screenapp.window import theme
-from screenapp.window.board import colours
 from screenapp.window.board.callouts import Callout, CalloutItem, PointValue
 from screenapp.window.board.canvas import Canvas
-from screenapp.window.board.colour_bar import TAKEN, BarContent, ColourBar
+from screenapp.window.board.colour_bar import TAKEN, ColourBar
 from screenapp.window.board.colours import Scale
 from screenapp.window.board.field_item import FieldItem
 from screenapp.window.board.hatching import HatchItem, Zone
+from screenapp.window.board.lens_colours import bar_content, scale_of
 from screenapp.window.board.lens_heading import LensHeading
 from screenapp.window.board.mesh_item import MeshItem
 from screenapp.window.board.outline_path import mesh_path, region_path
 from screenapp.window.board.rim_item import RimItem
 from screenapp.window.document import Document
 from screenapp.window.fields import moved
-from screenapp.window.painting import WAITING, Painting, Source, paint
+from screenapp.window.painted import Painting, Source
+from screenapp.window.painting import WAITING, paint
 
 FADED = 0.35
 """Strength at which findings that are out of date are painted."""
 
 FADED_WORDS = 0.6
 """Strength of their numbers, which have to stay readable."""
-
-LEAST_SHARE_SHOWN = 1.5
-"""The bar of the estimated error reaches at least this far, so that 1.0 is on it."""
 
 Range = tuple[float, float]
 
@@ -248,49 +241,13 @@ class LensPainter(QObject):
         return view.lens, component.get(view.lens, "")
 
     def _scale(self, painting: Painting) -> Scale:
-        assert painting.values is not None
-        low, high = float(np.min(painting.values)), float(np.max(painting.values))
-        p = theme.current()
-        lens = self._document.view.lens
-        if lens == "Utilisation":
-            return colours.utilisation(high)
-        if lens == "Trust":
-            return colours.error_share(max(high, LEAST_SHARE_SHOWN), p.paper, p.ink)
-        low, high = self._typed.get(self._slot(), (min(low, 0.0) if _positive(low) else low, high))
-        if not low < high:  # the same everywhere: nothing to tell apart
-            high = low + max(abs(low), 1.0) * 1e-6
-        return colours.cividis(low, high)
+        return scale_of(self._document.view.lens, painting, self._typed.get(self._slot()))
 
     def _put_bar(self, painting: Painting, scale: Scale) -> None:
-        assert painting.values is not None
-        units = self._document.part.display_units
-        factor, unit = (1.0, "") if painting.kind is None else unit_of(painting.kind, units)
-        lens = self._document.view.lens
-        marks: tuple[tuple[float, str], ...] = ()
-        if lens in ("Utilisation", "Trust"):
-            marks = ((1.0, "1.00"),)
-        elif scale.low < 0.0 < scale.high:
-            marks = ((0.0, "0"),)
-        editable = lens in ("Stress", "Displacement")
+        view, units = self._document.view, self._document.part.display_units
         self.bar.show_content(
-            BarContent(
-                f"{painting.title}, {unit}" if unit else painting.title,
-                scale,
-                factor,
-                editable,
-                self._slot() in self._typed,
-                marks,
-                float(np.max(painting.values)) > scale.high * (1 + 1e-9),
-                self._read_end,
-            )
+            bar_content(view.lens, painting, scale, units, self._slot() in self._typed)
         )
-
-    def _read_end(self, text: str) -> float:
-        kind: KindName = "stress" if self._document.view.lens == "Stress" else "length"
-        try:
-            return parse_quantity(text, kind, self._document.part.display_units)
-        except ScreenappError as fault:
-            raise ValueError(f"{fault.cause}: {fault.mend}") from fault
 
     def _take_range(self, low: float | None, high: float | None) -> None:
         if low is None or high is None:
@@ -301,8 +258,3 @@ class LensPainter(QObject):
             scale = self._scale(self._shown.painting)
             self.field.set_scale(scale)
             self._put_bar(self._shown.painting, scale)
-
-
-def _positive(low: float) -> bool:
-    """Whether a field that is nowhere negative should be shown from zero."""
-    return low >= 0.0

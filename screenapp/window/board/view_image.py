@@ -9,78 +9,26 @@ from __future__ import annotations
 
 import logging
 from collections.abc import Callable
-from dataclasses import dataclass
 
 import numpy as np
 import pyqtgraph as pg
 from numpy.typing import NDArray
-from PySide6.QtCore import QObject, QRectF, QRunnable, Qt, QThreadPool, QTimer, Signal, Slot
+from PySide6.QtCore import QRectF, Qt, QTimer, Signal, Slot
 from PySide6.QtGui import QBrush, QColor, QImage, QPainter, QPainterPath, QRegion, QTransform
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
+from screenapp.window.board.picture_jobs import Picture, PictureJob, Render, Scalars, threads
 from screenapp.window.board.raster import Viewport
 
 log = logging.getLogger(__name__)
 
-Scalars = NDArray[np.float32]
 Words = NDArray[np.uint32]
-Render = Callable[[Viewport], Scalars]
 
 SETTLED_MS = 80
 """The sharp picture is made when the view has stood still this long [ms]."""
 
 COARSE_PIXELS = 700
 """Longer side of the coarse picture of the whole [px]."""
-
-
-@dataclass(frozen=True, eq=False)
-class Picture:
-    """An image (height, width) of scalars and what it shows of the plane."""
-
-    view: Viewport
-    scalars: Scalars
-
-
-class _Bridge(QObject):
-    """Carries a picture, or the fault that prevented it, from the thread to the item."""
-
-    done = Signal(object)
-
-
-class _Job(QRunnable):
-    """Makes the pictures wanted; touches numpy arrays only, and tells by the bridge."""
-
-    def __init__(self, number: int, render: Render, views: tuple[Viewport, ...]) -> None:
-        super().__init__()
-        self.bridge = _Bridge()
-        self._number = number
-        self._render = render
-        self._views = views
-
-    def run(self) -> None:
-        """Make the pictures (in a thread of the pool)."""
-        pictures: list[Picture] = []
-        try:
-            pictures = [Picture(view, self._render(view)) for view in self._views]
-        except Exception:
-            log.exception("a picture of the field could not be made")
-        self.bridge.done.emit((self._number, pictures))
-
-
-_pool: QThreadPool | None = None
-
-
-def _threads() -> QThreadPool:
-    global _pool
-    if _pool is None:
-        _pool = QThreadPool()
-        _pool.setMaxThreadCount(2)
-    return _pool
-
-
-def wait_for_pictures(milliseconds: int = 10_000) -> bool:
-    """Wait until no picture is being made; for tests and at the program's end."""
-    return _threads().waitForDone(milliseconds)
 
 
 class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
@@ -102,7 +50,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         self._whole: QRectF | None = None
         self._shown: list[tuple[Picture, QImage]] = []  # coarse first
         self._asked = 0
-        self._running: _Job | None = None
+        self._running: PictureJob | None = None
         self._stale = False
         self._timer = QTimer(self)
         self._timer.setSingleShot(True)
@@ -205,12 +153,12 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         if self._whole is None and not self._bounds.isEmpty():
             self._whole = self._bounds
             views = (_coarse(self._bounds), view)
-        job = _Job(self._asked, self._render, views)
+        job = PictureJob(self._asked, self._render, views)
         job.setAutoDelete(False)
         job.bridge.done.connect(self._arrived, Qt.ConnectionType.QueuedConnection)
         self._running = job
         self._stale = False
-        _threads().start(job)
+        threads().start(job)
 
     @Slot(object)
     def _arrived(self, result: tuple[int, list[Picture]]) -> None:

@@ -1,0 +1,94 @@
+"""Numbers that are pointed at on the board, in words: each with its band, place and trust."""
+
+from __future__ import annotations
+
+import math
+
+from screenapp.model.estimate_text import EstimateKind, estimate_text, value_text
+from screenapp.model.findings import Estimate, LimitFindings, Peak, Reading
+from screenapp.model.part import Part, Point, StressLimit
+from screenapp.window.painted import Card, Source
+
+
+def peaks_of(source: Source, quantity: str) -> list[Peak]:
+    """The peaks of one quantity in the case, largest first."""
+    found = source.case_findings
+    return [p for p in found.peaks if p.quantity == quantity] if found is not None else []
+
+
+def apart(peaks: tuple[Peak, ...]) -> list[Peak]:
+    """One peak for each place: the same corner is a peak of several quantities."""
+    kept: dict[str, Peak] = {}
+    for peak in peaks:
+        kept.setdefault(peak.place or str(peak.at), peak)
+    return list(kept.values())
+
+
+def peak_card(peak: Peak, part: Part) -> Card:
+    """The card of one peak."""
+    head = estimate_text(peak.estimate, "stress", part.display_units)
+    return Card(peak.at, head, trailing(peak.place, peak.estimate), peak.estimate.trust)
+
+
+def use_cards(source: Source) -> tuple[Card, ...]:
+    """The stress limit that is used most in the case."""
+    found = source.case_findings
+    if found is None or source.findings is None:
+        return ()
+    limits = {x.id: x for x in source.part.limits if isinstance(x, StressLimit)}
+    uses = [x for x in source.findings.limits if x.case == found.case and x.limit in limits]
+    if not uses:
+        return ()
+    most = max(uses, key=lambda x: x.utilisation.value)
+    return (_use_card(source, most, limits[most.limit]),)
+
+
+def _use_card(source: Source, use: LimitFindings, limit: StressLimit) -> Card:
+    units = source.part.display_units
+    share = value_text(use.utilisation, "factor", units)
+    near = [p for p in peaks_of(source, limit.measure) if math.dist(p.at, use.at) < 1e-6]
+    if near:
+        head = estimate_text(near[0].estimate, "stress", units)
+        detail = trailing(" · ".join(filter(None, (use.place, f"use {share}"))), use.utilisation)
+    else:
+        head = f"use {estimate_text(use.utilisation, 'factor', units)}"
+        detail = trailing(use.place, use.utilisation)
+    return Card(use.at, head, detail, use.utilisation.trust)
+
+
+def trailing(words: str, estimate: Estimate) -> str:
+    """The words, with "settled" behind them where the number itself does not say its trust."""
+    tail = ("settled",) if estimate.trust == "settled" else ()
+    return " · ".join(filter(None, (words, *tail)))
+
+
+def probe_values(
+    source: Source, quantity: str, kind: EstimateKind
+) -> tuple[tuple[Point, str], ...]:
+    """Value of each probe that still stands where it was read."""
+    found = source.case_findings
+    if found is None or source.findings is None:
+        return ()
+    places = {probe.id: probe.at for probe in source.part.readings}
+    texts: list[tuple[Point, str]] = []
+    for reading in source.findings.readings:
+        if reading.case != found.case or places.get(reading.probe) != reading.at:
+            continue
+        estimate = _read(reading, quantity)
+        if estimate is not None:
+            texts.append((reading.at, estimate_text(estimate, kind, source.part.display_units)))
+    return tuple(texts)
+
+
+def _read(reading: Reading, quantity: str) -> Estimate | None:
+    if quantity != "u":
+        return reading.values.get(quantity)
+    parts = [reading.values.get(name) for name in ("u_x", "u_y")]
+    known = [p for p in parts if p is not None]
+    if len(known) < 2:
+        return None
+    size = math.hypot(*(p.value for p in known))
+    # the length of a vector is off by at most the length of what its components are off by
+    half = math.hypot(*(max(p.high - p.value, p.value - p.low) for p in known))
+    least = next((p for p in known if p.trust != "settled"), known[0])
+    return Estimate(size, max(0.0, size - half), size + half, least.trust)

@@ -1,0 +1,83 @@
+"""The records that lenses are made of: where the numbers come from and what is painted of them."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.model.estimate_text import EstimateKind
+from screenapp.model.findings import CaseFindings, Fields, Findings, Trust
+from screenapp.model.part import Part, Point
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+
+@dataclass(frozen=True)
+class Card:
+    """A number to be pointed at: where [mm, undeformed], and its words."""
+
+    at: Point
+    head: str
+    detail: str
+    trust: Trust
+
+
+@dataclass(frozen=True, eq=False)
+class Zone:
+    """Elements whose numbers are not to be trusted, and why."""
+
+    elements: Ints
+    trust: Trust
+
+
+@dataclass(frozen=True, eq=False)
+class Painting:
+    """What a lens shows.
+
+    Attributes:
+        points: places of the nodes as drawn [mm], (n_nodes, 2).
+        values: scalars, (n_nodes,) or (n_elements, 9), stored units; None paints no field.
+        title: what the values are.
+        kind: their kind, which gives the unit; None for a plain share.
+        deformation: the factor drawn; 0 where the part is drawn as it is.
+        mesh: strength of the mesh lines, 0 to 1.
+        zones, cards: as named.
+        probes: place and text of each probe's value.
+        caption: a sentence or two; "" for none.
+    """
+
+    points: Floats
+    values: Floats | None = None
+    title: str = ""
+    kind: EstimateKind | None = None
+    deformation: float = 0.0
+    mesh: float = 0.0
+    zones: tuple[Zone, ...] = ()
+    cards: tuple[Card, ...] = ()
+    probes: tuple[tuple[Point, str], ...] = ()
+    caption: str = ""
+
+
+@dataclass(frozen=True, eq=False)
+class Source:
+    """The arrays that are painted and what is known about them.
+
+    Attributes:
+        fields: the arrays.
+        case: index of the case in them.
+        part: the part as it now is.
+        findings: None for a pass that is not judged yet.
+    """
+
+    fields: Fields
+    case: int
+    part: Part
+    findings: Findings | None = None
+
+    @property
+    def case_findings(self) -> CaseFindings | None:
+        """What was found in the case."""
+        return self.findings.cases[self.case] if self.findings is not None else None
