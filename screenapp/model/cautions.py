@@ -121,8 +121,8 @@ def _beside(one: Ligament, other: Ligament) -> bool:
 def _piece_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
     """Edges and fillets so short that the mesh must be very fine there."""
     lengths = table.lengths
-    short = [k for k in np.flatnonzero(lengths < SHORT * shape.size) if not _is_hole(shape, k)]
-    for k in short[:MOST]:
+    drawn = np.array([c.kind != "hole" for c in shape.curves])
+    for k in np.flatnonzero(drawn & (lengths < SHORT * shape.size))[:MOST]:
         piece = shape.curves[k]
         x, y = piece.curve.point(0.5)
         yield Fault(
@@ -133,10 +133,6 @@ def _piece_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
             (float(x), float(y)),
             blocks=False,
         )
-
-
-def _is_hole(shape: Shape, piece: int) -> bool:
-    return shape.curves[piece].kind == "hole"
 
 
 def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
