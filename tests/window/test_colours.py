@@ -34,9 +34,7 @@ def test_one_is_the_last_blue(largest: float) -> None:
 
 def test_utilisation_has_a_step_of_colour_at_one_only() -> None:
     table = colours.utilisation(1.5).table
-    steps = [
-        np.abs(rgb(int(a)) - rgb(int(b))).max() for a, b in itertools.pairwise(table)
-    ]
+    steps = [np.abs(rgb(int(a)) - rgb(int(b))).max() for a, b in itertools.pairwise(table)]
     assert int(np.argmax(steps)) == colours.ENTRIES
     assert sorted(steps)[-2] < 4, "everywhere else neighbours are alike"
 

@@ -393,3 +393,31 @@ def test_theme_changes_what_lies_over_the_board(bench: Bench) -> None:
         assert bench.colour_at(-40.0, 22.0).lightness() < light.lightness() - 30
     finally:
         theme.choose("paper")
+
+
+def test_fault_while_painting_is_told_and_harms_nothing(bench: Bench) -> None:
+    bench.document.look(lens="Stress")
+    bench.screen()
+    bench.settle()
+
+    def broken(_view: object) -> np.ndarray:
+        raise MemoryError("no room for the picture")
+
+    bench.painter.field._render = broken
+    bench.board.canvas.zoom(1.5)
+    bench.settle()
+    assert "no room for the picture" in bench.said[-1]
+    bench.document.look(stress="sigma_x")
+    bench.settle()
+    assert bench.painter.field.picture is not None
+
+
+def test_old_picture_stays_in_its_own_colours_until_the_new_one_is_there(bench: Bench) -> None:
+    bench.document.look(lens="Utilisation")
+    bench.screen()
+    bench.settle()
+    px = bench.board.canvas.frame_now.px((-40.0, 22.0)).toPoint()
+    before = bench.board.canvas.grab().toImage().pixelColor(px)
+    bench.document.look(lens="Stress")
+    assert close(bench.board.canvas.grab().toImage().pixelColor(px), before, 8)
+    assert not close(bench.colour_at(-40.0, 22.0), before, 30)

@@ -33,8 +33,7 @@ class FieldItem(ViewImage):
         def render(view: Viewport) -> Image:
             return grow(rasterise(points, quads, values, view), GROWN)
 
-        self.set_colour(scale.words)
-        self.set_render(render, bounds_of(points), clip)
+        self.set_render(render, scale.words, bounds_of(points), clip)
 
     def set_scale(self, scale: Scale) -> None:
         """Colour the field at hand by another range."""
@@ -42,13 +41,14 @@ class FieldItem(ViewImage):
 
     def clear(self) -> None:
         """Show nothing."""
-        self.set_render(None)
+        self.hide_picture()
 
 
 def bounds_of(points: Floats) -> QRectF:
     """The box round points (n, 2) [mm]."""
-    (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
-    return QRectF(float(x0), float(y0), float(x1 - x0), float(y1 - y0))
+    x, y = points[:, 0], points[:, 1]  # by columns: far quicker than along axis 0
+    x0, y0 = float(x.min()), float(y.min())
+    return QRectF(x0, y0, float(x.max()) - x0, float(y.max()) - y0)
 
 
 def grow(image: Image, pixels: int) -> Image:

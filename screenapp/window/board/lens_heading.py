@@ -3,8 +3,7 @@ about it."""
 
 from __future__ import annotations
 
-from PySide6.QtCore import QPointF, Qt
-from PySide6.QtGui import QPainter, QPaintEvent, QPen
+from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
 from screenapp.window import theme
@@ -14,20 +13,6 @@ from screenapp.window.fields import DISPLACEMENT_NAMES, STRESS_NAMES
 
 MARGIN = 16
 AUTOMATIC = "auto"
-
-
-class Chooser(QComboBox):
-    """A box to choose from that shows so by a small angle at its right."""
-
-    def paintEvent(self, event: QPaintEvent) -> None:
-        """Paint the box, then the angle."""
-        super().paintEvent(event)
-        painter = QPainter(self)
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        painter.setPen(QPen(theme.colour("quiet"), 1.5))
-        x, y = self.width() - 12.0, self.height() / 2.0
-        painter.drawPolyline([QPointF(x - 4, y - 2), QPointF(x, y + 2), QPointF(x + 4, y - 2)])
-        painter.end()
 
 
 class LensHeading(QWidget):
@@ -41,7 +26,7 @@ class LensHeading(QWidget):
         self.setAttribute(Qt.WidgetAttribute.WA_NoSystemBackground)
         self.stress = self._chooser("Stress component", STRESS_NAMES)
         self.displacement = self._chooser("Displacement component", DISPLACEMENT_NAMES)
-        self.case = Chooser()
+        self.case = QComboBox()
         self.case.setAccessibleName("Case")
         self.case.setToolTip("The load case that is painted")
         self.deformation = QLineEdit()
@@ -178,8 +163,8 @@ class LensHeading(QWidget):
         self.sync()
 
     @staticmethod
-    def _chooser(name: str, choices: dict[str, str]) -> Chooser:
-        box = Chooser()
+    def _chooser(name: str, choices: dict[str, str]) -> QComboBox:
+        box = QComboBox()
         box.setAccessibleName(name)
         box.setToolTip(f"{name} that is painted")
         for key, words in choices.items():

@@ -74,6 +74,10 @@ class LensPainter(QObject):
         self.heading = LensHeading(document, board.canvas)
         self.bar.range_wanted.connect(self._take_range)
         self.bar.said.connect(document.said)
+        for picture in (self.field, self.mesh):
+            picture.failed.connect(
+                lambda fault: document.said.emit(f"The board could not be painted: {fault}")
+            )
         for signal in (
             document.findings_changed,
             document.view_changed,

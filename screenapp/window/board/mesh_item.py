@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -28,33 +30,42 @@ class MeshItem(ViewImage):
 
     def __init__(self) -> None:
         super().__init__(Z_MESH)
+        self._known: tuple[Mesh, Floats] | None = None
 
     def show_mesh(self, mesh: Mesh, points: Floats, colour: str, strength: float) -> None:
         """Show the mesh, nodes at `points` (n_nodes, 2) [mm], at a strength of 0 to 1."""
-        starts, ends = mesh_lines(mesh, points)
-        sizes = mesh.element_sizes
+        words = line_colours(colour, strength)
+        known = self._known
+        if not self.blank and known is not None and known[0] is mesh and known[1] is points:
+            self.set_colour(words)
+            return
+        self._known = (mesh, points)
+        lines: list[tuple[Floats, Floats, Floats]] = []
 
         def render(view: Viewport) -> Image:
+            if not lines:  # worked out in the thread, once
+                lines.append((*mesh_lines(mesh, points), mesh.element_sizes))
+            starts, ends, sizes = lines[0]
             share = _visible_share(mesh, points, sizes, view)
             if share <= 0.0:
                 return np.zeros((view.height, view.width), dtype=np.float32)
             return np.asarray(rasterise_lines(starts, ends, view) * np.float32(share))
 
-        self.set_colours(colour, strength)
-        self.set_render(render, bounds_of(points))
-
-    def set_colours(self, colour: str, strength: float) -> None:
-        """Draw the lines at hand in another colour (#rrggbb) and strength."""
-        table = veil(colour, strength)
-
-        def words(coverage: Image) -> Words:
-            return np.asarray(table[(coverage * np.float32(255)).astype(np.uint8)])
-
-        self.set_colour(words)
+        self.set_render(render, words, bounds_of(points))
 
     def clear(self) -> None:
         """Show nothing."""
-        self.set_render(None)
+        self.hide_picture()
+
+
+def line_colours(colour: str, strength: float) -> Callable[[Image], Words]:
+    """Turns coverage into lines of a colour (#rrggbb) and strength."""
+    table = veil(colour, strength)
+
+    def words(coverage: Image) -> Words:
+        return np.asarray(table[(coverage * np.float32(255)).astype(np.uint8)])
+
+    return words
 
 
 def mesh_lines(mesh: Mesh, points: Floats) -> tuple[Floats, Floats]:

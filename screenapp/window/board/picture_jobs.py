@@ -28,7 +28,7 @@ class Picture:
 
 
 class Bridge(QObject):
-    """Carries a picture, or the fault that prevented it, from the thread to the item."""
+    """Carries pictures, or the words of the fault that prevented them, from thread to item."""
 
     done = Signal(object)
 
@@ -46,11 +46,13 @@ class PictureJob(QRunnable):
     def run(self) -> None:
         """Make the pictures (in a thread of the pool)."""
         pictures: list[Picture] = []
+        fault = ""
         try:
             pictures = [Picture(view, self._render(view)) for view in self._views]
-        except Exception:
+        except Exception as error:  # an exception must not leave the thread
             log.exception("a picture of the field could not be made")
-        self.bridge.done.emit((self._number, pictures))
+            fault = f"{type(error).__name__}: {error}"
+        self.bridge.done.emit((self._number, pictures, fault))
 
 
 _pool: QThreadPool | None = None

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import logging
 from collections.abc import Callable
+from dataclasses import dataclass, replace
 
 import numpy as np
 import pyqtgraph as pg
@@ -23,6 +24,7 @@ from screenapp.window.board.raster import Viewport
 log = logging.getLogger(__name__)
 
 Words = NDArray[np.uint32]
+Colour = Callable[[Scalars], Words]
 
 SETTLED_MS = 80
 """The sharp picture is made when the view has stood still this long [ms]."""
@@ -31,23 +33,37 @@ COARSE_PIXELS = 700
 """Longer side of the coarse picture of the whole [px]."""
 
 
+@dataclass(frozen=True, eq=False)
+class Look:
+    """How pictures are shown: within which box [mm], cut at which path [mm], in which colours.
+
+    `colour` turns scalars into premultiplied ARGB words.
+    """
+
+    bounds: QRectF
+    clip: QPainterPath | None
+    colour: Colour
+
+
 class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
     """Shows what `render` makes of the view, coloured by `colour`.
 
-    `colour` turns scalars into premultiplied ARGB words; changing it costs no new picture.
+    Signals:
+        ready: a sharp picture of the present view is shown.
+        failed: the words of a fault that kept a picture from being made.
     """
 
-    ready = Signal()  # a sharp picture of the present view is shown
+    ready = Signal()
+    failed = Signal(str)
 
     def __init__(self, z: int) -> None:
         super().__init__()
         self.setZValue(z)
         self.setAcceptedMouseButtons(Qt.MouseButton.NoButton)
         self._render: Render | None = None
-        self._colour: Callable[[Scalars], Words] | None = None
-        self._clip: QPainterPath | None = None
-        self._bounds = QRectF()
-        self._whole: QRectF | None = None
+        self._wanted: Look | None = None  # of the pictures being made
+        self._look: Look | None = None  # of those shown
+        self._coarse_wanted = False
         self._shown: list[tuple[Picture, QImage]] = []  # coarse first
         self._asked = 0
         self._running: PictureJob | None = None
@@ -61,29 +77,38 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
 
     def set_render(
         self,
-        render: Render | None,
-        bounds: QRectF | None = None,
+        render: Render,
+        colour: Colour,
+        bounds: QRectF,
         clip: QPainterPath | None = None,
     ) -> None:
-        """Show what `render` makes (None: nothing) within `bounds` [mm], cut off at `clip` [mm]."""
-        self.prepareGeometryChange()
-        self._render = render
-        self._clip = clip
-        self._bounds = QRectF() if bounds is None else QRectF(bounds)
-        self._whole = None
-        self._asked += 1  # pictures under way belong to the past
-        if render is None:
-            self._shown = []
-            self._timer.stop()
-            self.update()
-        else:
-            self._refresh()
+        """Show what `render` makes, coloured by `colour`, within `bounds` [mm], cut at `clip` [mm].
 
-    def set_colour(self, colour: Callable[[Scalars], Words]) -> None:
-        """Colour pictures by `colour`, those at hand at once."""
-        self._colour = colour
-        self._shown = [(picture, self._image(picture)) for picture, _ in self._shown]
+        What is shown now stays until the first picture is there.
+        """
+        self._render = render
+        self._wanted = Look(QRectF(bounds), clip, colour)
+        self._coarse_wanted = True
+        self._asked += 1  # pictures under way belong to the past
+        self._refresh()
+
+    def hide_picture(self) -> None:
+        """Show nothing."""
+        self.prepareGeometryChange()
+        self._render = self._wanted = self._look = None
+        self._asked += 1
+        self._shown = []
+        self._timer.stop()
         self.update()
+
+    def set_colour(self, colour: Colour) -> None:
+        """Colour pictures by `colour`, those at hand at once; costs no new picture."""
+        if self._wanted is not None:
+            self._wanted = replace(self._wanted, colour=colour)
+        if self._look is not None and not self._coarse_wanted:
+            self._look = replace(self._look, colour=colour)
+            self._shown = [(picture, self._image(picture)) for picture, _ in self._shown]
+            self.update()
 
     @property
     def blank(self) -> bool:
@@ -140,7 +165,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
             return
         self._timer.stop()
         self._asked += 1
-        self._take([Picture(view, self._render(view))], keep_coarse=True)
+        self._take([Picture(v, self._render(v)) for v in self._views(view)])
 
     def _refresh(self) -> None:
         if self._running is not None:
@@ -149,36 +174,45 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         view = self.viewport()
         if self._render is None or view is None:
             return
-        views: tuple[Viewport, ...] = (view,)
-        if self._whole is None and not self._bounds.isEmpty():
-            self._whole = self._bounds
-            views = (_coarse(self._bounds), view)
-        job = PictureJob(self._asked, self._render, views)
+        job = PictureJob(self._asked, self._render, self._views(view))
         job.setAutoDelete(False)
         job.bridge.done.connect(self._arrived, Qt.ConnectionType.QueuedConnection)
         self._running = job
         self._stale = False
         threads().start(job)
 
+    def _views(self, view: Viewport) -> tuple[Viewport, ...]:
+        """What has to be made: the view, and the whole if it has not been made yet."""
+        if self._coarse_wanted and self._wanted is not None:
+            return _coarse(self._wanted.bounds), view
+        return (view,)
+
     @Slot(object)
-    def _arrived(self, result: tuple[int, list[Picture]]) -> None:
-        number, pictures = result
+    def _arrived(self, result: tuple[int, list[Picture], str]) -> None:
+        number, pictures, fault = result
         self._running = None
-        if number == self._asked and pictures:
-            self._take(pictures, keep_coarse=len(pictures) == 1)
+        if fault:
+            self.failed.emit(fault)
+        elif number == self._asked:
+            self._take(pictures)
         if self._stale or (number != self._asked and self._render is not None):
             self._refresh()
         elif not self._timer.isActive():
             self.ready.emit()
 
-    def _take(self, pictures: list[Picture], keep_coarse: bool) -> None:
-        coarse = self._shown[:1] if keep_coarse and len(self._shown) == 2 else []
+    def _take(self, pictures: list[Picture]) -> None:
+        """Show new pictures: a sharp one over the coarse one at hand, or both."""
+        coarse = self._shown[:1] if len(pictures) == 1 and len(self._shown) == 2 else []
+        if len(pictures) == 2:
+            self._coarse_wanted = False
+        self.prepareGeometryChange()
+        self._look = self._wanted
         self._shown = coarse + [(picture, self._image(picture)) for picture in pictures]
         self.update()
 
     def _image(self, picture: Picture) -> QImage:
-        assert self._colour is not None
-        words = np.ascontiguousarray(self._colour(picture.scalars))
+        assert self._look is not None
+        words = np.ascontiguousarray(self._look.colour(picture.scalars))
         height, width = words.shape
         image = QImage(
             words.data, width, height, 4 * width, QImage.Format.Format_ARGB32_Premultiplied
@@ -190,7 +224,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
 
     def boundingRect(self) -> QRectF:
         """Where something is shown [mm]."""
-        return self._bounds
+        return QRectF() if self._look is None else self._look.bounds
 
     def paint(
         self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None = None
@@ -209,11 +243,11 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
             painter.restore()
 
     def _show(self, painter: QPainter, to_screen: QTransform) -> None:
-        if not self._shown:
+        look = self._look
+        if not self._shown or look is None:
             return
-        clip = self._clip if self._clip is not None else _rectangle(self._bounds)
-        outline = to_screen.map(clip)
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing, self._clip is not None)
+        outline = to_screen.map(look.clip if look.clip is not None else _rectangle(look.bounds))
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, look.clip is not None)
         device = painter.device()
         ratio = device.devicePixelRatioF() if device is not None else 1.0
         shown = self._shown
