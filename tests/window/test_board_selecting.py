@@ -250,3 +250,34 @@ def test_keys_zoom_and_fit(hand: Hand) -> None:
     assert hand.canvas.frame_now.scale == pytest.approx(0.8 * fitted.scale, rel=1e-9)
     hand.key(Qt.Key.Key_Home)
     assert hand.canvas.frame_now.scale == pytest.approx(fitted.scale, rel=1e-9)
+
+
+def test_an_edge_is_dragged_with_both_its_corners(hand: Hand) -> None:
+    hand.drag((100.0, 20.0), (110.0, 20.0))
+    assert corner(hand, "c2") == (110.0, 0.0)
+    assert corner(hand, "c3") == (110.0, 60.0)
+    assert hand.document.history.undo_name == "move edge e2"
+
+
+def test_all_that_is_selected_is_dragged_together(hand: Hand) -> None:
+    hand.click(100.0, 60.0)
+    hand.click(60.0, 30.0, SHIFT)
+    hand.drag((100.0, 60.0), (106.0, 64.0))
+    assert corner(hand, "c3") == (106.0, 64.0)
+    hole = hand.part.holes[0]
+    assert isinstance(hole, CircleHole)
+    assert hole.centre == pytest.approx((56.0, 34.0), abs=1e-9)
+    assert corner(hand, "c2") == (100.0, 0.0)
+    hand.click(106.0, 64.0)
+    assert hand.document.selection == ("c3",)
+
+
+def test_a_double_click_on_an_edge_puts_a_corner_there(hand: Hand) -> None:
+    hand.double(100.0, 30.2)  # snaps to the middle
+    assert hand.document.selection == ("c5",)
+    assert corner(hand, "c5") == (100.0, 30.0)
+    hand.type("120")
+    hand.enter()
+    assert corner(hand, "c5") == (120.0, 30.0)
+    assert hand.part.outline is not None
+    assert [e.id for e in hand.part.outline.edges] == ["e1", "e2", "e5", "e3", "e4"]

@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from PySide6.QtCore import Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
-from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 
 from screenapp.window import theme
 from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.elided_label import ElidedLabel
 from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
 from screenapp.window.board.tool_strip import ToolStrip
@@ -36,7 +37,7 @@ class Board(QWidget):
         self.strip = ToolStrip(self.tools)
         self._history = document.history
         self._fitted = False
-        self._corner = QLabel()
+        self._corner = ElidedLabel()
         self._corner.setAccessibleName("Cursor and snap")
         self._foot = QWidget()
         self._foot.setObjectName("boardFoot")
@@ -44,8 +45,8 @@ class Board(QWidget):
         self._foot_row.setContentsMargins(12, 4, 12, 4)
         self._foot_row.setSpacing(12)
         self._lens_bar: QWidget = QWidget()
-        self._foot_row.addWidget(self._lens_bar, 1)
-        self._foot_row.addWidget(self._corner, 0, Qt.AlignmentFlag.AlignRight)
+        self._foot_row.addWidget(self._lens_bar)
+        self._foot_row.addWidget(self._corner, 1)
         right = QVBoxLayout()
         right.setSpacing(0)
         right.addWidget(self.canvas, 1)
@@ -69,7 +70,6 @@ class Board(QWidget):
         self._foot_row.replaceWidget(self._lens_bar, widget)
         self._lens_bar.deleteLater()
         self._lens_bar = widget
-        self._foot_row.setStretchFactor(widget, 1)
 
     def set_outline_faint(self, faint: bool) -> None:
         """Draw the undeformed outline faintly, e.g. while a deformed shape is shown."""
@@ -79,7 +79,7 @@ class Board(QWidget):
     @property
     def corner_text(self) -> str:
         """The words at the right below the canvas: cursor place and snap in force."""
-        return self._corner.text()
+        return self._corner.full
 
     def take(self, name: str) -> None:
         """Put the tool called `name` in hand."""
@@ -188,7 +188,7 @@ class Board(QWidget):
     def _show_corner(self) -> None:
         place, tool = self.canvas.place, self.canvas.tool
         if place is None:
-            self._corner.setText(tool.hint() if tool is not None else "")
+            self._corner.say(tool.hint() if tool is not None else "")
             return
         units = self.document.part.display_units
         unit = unit_length(units)
@@ -198,4 +198,4 @@ class Board(QWidget):
         if tool is not None and tool.snapping:
             name = "off" if place.snap.kind == "none" else place.snap.kind
             text += f"  ·  snap: {name}"
-        self._corner.setText(text)
+        self._corner.say(text)

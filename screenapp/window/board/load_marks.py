@@ -176,9 +176,7 @@ def _own_weight(mark: Mark, drawn: DrawnPart, frame: Frame, load: GravityLoad) -
         mark.fills.append(np.vstack([at, arc]))
     tip = at + (LONG - 4.0) * way
     mark.arrow(at + 6.0 * way, tip)
-    units = drawn.part.display_units
-    text = format_quantity(math.hypot(load.x, load.y), "acceleration", units)
-    mark.say(f"own weight, {text}", tip + label_gap(way))
+    mark.say("own weight", at + 0.5 * (tip - at) + np.array([44.0, 0.0]))
 
 
 def label_gap(way: Floats) -> Floats:

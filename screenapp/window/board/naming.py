@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 
 from screenapp.model.errors import Fault
@@ -55,7 +56,8 @@ def described(part: Part, found: Found) -> str:
     if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
         return f"{place_name(part, record.on)} {_held(record, units)}"
     if isinstance(record, GravityLoad):
-        return "the part's own weight"
+        pull = format_quantity(math.hypot(record.x, record.y), "acceleration", units)
+        return f"load {record.id}, the part's own weight at {pull}"
     if found.kind == "load":
         return f"{_loaded(record, units)} on {place_name(part, record.on)}"  # type: ignore
     return words

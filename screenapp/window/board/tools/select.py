@@ -8,7 +8,7 @@ from PySide6.QtCore import QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QKeyEvent, QPainter
 
 from screenapp.model import edits
-from screenapp.model.features import everything, find, loops_of, place_name
+from screenapp.model.features import find, loops_of, place_name
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board import sketch
@@ -17,8 +17,9 @@ from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import grid_step
 from screenapp.window.board.naming import described
 from screenapp.window.board.quantity import written
-from screenapp.window.board.snapping import neighbours
 from screenapp.window.board.tools.base import Place, Tool
+from screenapp.window.board.tools.choosing import all_of, in_box, next_after
+from screenapp.window.board.tools.drag import Drag, grip_of
 from screenapp.window.board.typed_entry import EntryField
 
 if TYPE_CHECKING:
@@ -40,15 +41,14 @@ class SelectTool(Tool):
 
     name: ClassVar[str] = "Select"
     key: ClassVar[str] = "S"
-    line: ClassVar[str] = "Click to select, drag to move, double-click for exact values."
+    line: ClassVar[str] = "Click to select, drag to move, double-click to edit or to put a corner."
     icon: ClassVar[str] = "select"
     snaps: ClassVar[bool] = False
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
         self._pressed: Place | None = None
-        self._dragged: str | None = None
-        self._from: Point = (0.0, 0.0)
+        self._drag: Drag | None = None
         self._at: Point | None = None
         self._box: QPointF | None = None
         self.editing: str | None = None
@@ -56,12 +56,12 @@ class SelectTool(Tool):
     @property
     def cursor(self) -> Qt.CursorShape:
         """A hand over what can be dragged."""
-        if self._dragged is not None:
+        if self._drag is not None:
             return Qt.CursorShape.ClosedHandCursor
         place = self.canvas.place
         if place is None or place.hit is None:
             return Qt.CursorShape.ArrowCursor
-        if self._grip(place.hit.id) is not None:
+        if grip_of(self.canvas.drawn, place.hit.id) is not None:
             return Qt.CursorShape.OpenHandCursor
         return Qt.CursorShape.PointingHandCursor
 
@@ -72,34 +72,25 @@ class SelectTool(Tool):
 
     def part_changed(self) -> None:
         """Whatever was dragged or edited may be gone."""
-        self._pressed = self._dragged = self._at = self._box = None
+        self._pressed = self._drag = self._at = self._box = None
         self.editing = None
 
     def step_back(self) -> bool:
         """Drop the drag, the box or the exact editor."""
         busy = self.canvas.placing.busy or self._box is not None
-        busy = busy or self._dragged is not None or self.editing is not None
+        busy = busy or self._drag is not None or self.editing is not None
         self.canvas.placing.drop()
         self._drop()
         return busy
 
     def unsnapped(self) -> frozenset[str]:
         """What is dragged must not draw the cursor to itself."""
-        if self._dragged is None:
-            return frozenset()
-        for _, owner, loop in loops_of(self.canvas.part):
-            if owner == self._dragged:
-                return frozenset(
-                    {owner, *(c.id for c in loop.corners), *(e.id for e in loop.edges)}
-                )
-            if near := neighbours(loop, self._dragged):
-                return near
-        return frozenset({self._dragged})
+        return frozenset() if self._drag is None else self._drag.unsnapped()
 
     @property
     def snapping(self) -> bool:
         """Only a drag snaps."""
-        return self._dragged is not None
+        return self._drag is not None
 
     # mouse
 
@@ -118,39 +109,46 @@ class SelectTool(Tool):
             rest = tuple(i for i in document.selection if i != hit.id)
             document.select(*(rest if hit.id in document.selection else (*rest, hit.id)))
             return
-        document.select(hit.id)
+        if hit.id not in document.selection:
+            document.select(hit.id)
         self._pressed = place
 
     def move(self, place: Place) -> None:
         """Drag live."""
         pressed = self._pressed
-        if pressed is not None and pressed.hit is not None and self._dragged is None:
+        if pressed is not None and pressed.hit is not None and self._drag is None:
             gap = place.px - pressed.px
-            grip = self._grip(pressed.hit.id)
+            grip = grip_of(self.canvas.drawn, pressed.hit.id)
             if grip is not None and gap.manhattanLength() >= DRAG_FROM:
-                self._dragged, self._from = pressed.hit.id, grip
-        if self._dragged is not None and pressed is not None:
-            self._drag_to(place, pressed)
+                document = self.canvas.document
+                self._drag = Drag(document.part, document.selection, grip, pressed.raw)
+        if self._drag is not None:
+            self._drag_to(place, self._drag)
 
     def release(self, place: Place) -> None:
-        """End of a drag: one undoable step."""
-        if self._dragged is not None and self._at is not None:
-            id_, at = self._dragged, self._at
-            part = self.canvas.document.part
-            self._pressed = self._dragged = self._at = None
-            name = f"move {place_name(part, id_)}"
-            if not self.apply(name, lambda: moved(part, id_, at)):
-                self.canvas.preview(None)
+        """End of a drag: one undoable step; a click on one of several selects it alone."""
+        drag, at, pressed = self._drag, self._at, self._pressed
+        box = self._box
+        self._pressed = self._drag = self._at = self._box = None
+        if drag is not None and at is not None:
+            self.apply(drag.name, lambda: drag.moved(at))
             self.canvas.preview(None)
-        elif self._box is not None:
-            self._select_box(QRectF(self._box, place.px).normalized(), place.shift)
-        self._pressed = self._dragged = self._at = self._box = None
+        elif box is not None:
+            self._select_box(QRectF(box, place.px).normalized(), place.shift)
+        elif pressed is not None and pressed.hit is not None:
+            self.canvas.document.select(pressed.hit.id)
 
     def double(self, place: Place) -> None:
-        """Edit exactly what is there."""
-        if place.hit is not None:
-            self.canvas.document.select(place.hit.id)
-            self.edit(place.hit.id, place.px)
+        """Edit exactly what is there; on an edge, put a corner there and edit that."""
+        hit = place.hit
+        if hit is None:
+            return
+        if hit.kind == "edge":
+            at = place.snap.at if place.snap.id == hit.id else hit.at
+            self._split(hit.id, at, place.px)
+            return
+        self.canvas.document.select(hit.id)
+        self.edit(hit.id, place.px)
 
     # keys
 
@@ -159,7 +157,7 @@ class SelectTool(Tool):
         key, selection = event.key(), self.canvas.document.selection
         control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
         if key == Qt.Key.Key_A and control:
-            self._select_all()
+            self.canvas.document.select(*all_of(self.canvas.drawn))
         elif key in (Qt.Key.Key_PageDown, Qt.Key.Key_PageUp):
             self._select_next(1 if key == Qt.Key.Key_PageDown else -1)
         elif not selection:
@@ -240,7 +238,7 @@ class SelectTool(Tool):
             painter.setPen(sketch.line_pen(1.0, dashed=True))
             painter.setBrush(ground)
             painter.drawRect(QRectF(self._box, self.canvas.place.px).normalized())
-        if self._dragged is not None and self._at is not None:
+        if self._drag is not None and self._at is not None:
             units = self.canvas.part.display_units
             x, y = (written(v, "length", units) for v in self._at)
             p = frame.px(self._at)
@@ -248,32 +246,24 @@ class SelectTool(Tool):
 
     # steps
 
-    def _grip(self, id_: str) -> Point | None:
-        """The place by which a corner, hole or probe is dragged; None for what stays."""
-        drawn = self.canvas.drawn
-        if id_ in drawn.corners:
-            return drawn.corners[id_].at
-        if id_ in drawn.holes:
-            return edits.hole_centre(drawn.holes[id_])
-        return drawn.probes[id_].at if id_ in drawn.probes else None
-
-    def _drag_to(self, place: Place, pressed: Place) -> None:
-        assert self._dragged is not None
-        raw = (
-            self._from[0] + place.raw[0] - pressed.raw[0],
-            self._from[1] + place.raw[1] - pressed.raw[1],
-        )
-        found = self.canvas.snap_at(raw, self.canvas.held_off)
+    def _drag_to(self, place: Place, drag: Drag) -> None:
+        found = self.canvas.snap_at(drag.aim(place), self.canvas.held_off)
         self.canvas.show_snap(found)
         self._at = found.at
-        part = self.canvas.document.part
         try:
-            self.canvas.preview(moved(part, self._dragged, found.at))
+            self.canvas.preview(drag.moved(found.at))
         except edits.EditError as fault:
             self.say(f"{fault.cause}: {fault.mend}.")
 
+    def _split(self, edge: str, at: Point, px: QPointF) -> None:
+        part = self.canvas.document.part
+        corner = edits.new_id(part, "c")
+        if self.apply(f"put a corner on edge {edge}", lambda: edits.insert_corner(part, edge, at)):
+            self.canvas.document.select(corner)
+            self.edit(corner, px)
+
     def _drop(self) -> None:
-        self._pressed = self._dragged = self._at = self._box = None
+        self._pressed = self._drag = self._at = self._box = None
         self.editing = None
         self.canvas.preview(None)
         self.canvas.entry.close_row()
@@ -290,49 +280,20 @@ class SelectTool(Tool):
         step = grid_step(self.canvas.frame_now.scale, part.display_units)
         self.apply("nudge", lambda: edits.move(part, selection, dx * step, dy * step))
 
-    def _select_all(self) -> None:
-        drawn = self.canvas.drawn
-        self.canvas.document.select(*drawn.corners, *drawn.holes, *drawn.probes)
-
     def _select_next(self, step: int) -> None:
         """Select the thing after or before the selected one, and say what it is."""
-        part, case = self.canvas.document.part, self.canvas.document.view.case
-        here = part.cases[case].id if case < len(part.cases) else ""
-        kinds = ("corner", "edge", "hole", "support", "load", "probe")
-        found = [
-            f for f in everything(part) if f.kind in kinds and (f.kind != "load" or f.owner == here)
-        ]
-        if not found:
-            return
-        ids = [f.record.id for f in found]
-        had = self.canvas.document.selection
-        at = ids.index(had[0]) + step if had and had[0] in ids else (0 if step > 0 else -1)
-        chosen = found[at % len(found)]
-        self.canvas.document.select(chosen.record.id)
-        self.say(f"Selected: {described(part, chosen)}.")
+        document = self.canvas.document
+        chosen = next_after(document.part, document.view.case, document.selection, step)
+        if chosen is not None:
+            document.select(chosen.record.id)
+            self.say(f"Selected: {described(document.part, chosen)}.")
 
     def _select_box(self, box: QRectF, add: bool) -> None:
         if box.width() < DRAG_FROM and box.height() < DRAG_FROM:
             return
-        drawn, frame = self.canvas.drawn, self.canvas.frame_now
-        spots = [(id_, c.at) for id_, c in drawn.corners.items()]
-        spots += [(id_, drawn.centre_of(h)) for id_, h in drawn.holes.items()]
-        spots += [(id_, p.at) for id_, p in drawn.probes.items()]
-        inside = [id_ for id_, at in spots if box.contains(frame.px(at))]
+        inside = in_box(self.canvas.drawn, self.canvas.frame_now, box)
         had = self.canvas.document.selection if add else ()
         self.canvas.document.select(*had, *(i for i in inside if i not in had))
-
-
-def moved(part: Part, id_: str, to: Point) -> Part:
-    """The part with a corner, hole or probe at another place [mm]."""
-    found = find(part, id_)
-    if found is None:
-        return part
-    if found.kind == "corner":
-        return edits.move_corner(part, id_, to)
-    if found.kind == "hole":
-        return edits.move_hole(part, id_, to)
-    return edits.move_probe(part, id_, to)
 
 
 def edges_of(part: Part) -> frozenset[str]:
