@@ -15,6 +15,21 @@ from screenapp.window.board.tool_strip import ToolStrip
 from screenapp.window.board.tools.every import every_tool
 from screenapp.window.document import Document
 
+KEYS = (
+    ("+, −", "zoom in, zoom out; the wheel does so about the cursor"),
+    ("Home", "fit the part in the board"),
+    ("Space, middle or right button", "drag the board"),
+    ("Tab, or a figure", "type exact values while drawing"),
+    ("Enter", "accept; close the ring"),
+    ("Ctrl, held", "let nothing snap"),
+    ("Page Down, Page Up", "select the next or the last thing"),
+    ("F2, double-click", "edit what is selected exactly"),
+    ("arrows", "nudge by a grid step; ten with Shift"),
+    ("Delete", "remove what is selected"),
+    ("Esc", "one step back; put the tool down; select nothing"),
+)
+"""Keys of the board besides those of its tools, with what they do."""
+
 
 class Board(QWidget):
     """Shows one document and lets it be drawn, held, loaded and probed.

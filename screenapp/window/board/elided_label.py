@@ -6,6 +6,8 @@ from PySide6.QtCore import QSize, Qt
 from PySide6.QtGui import QResizeEvent
 from PySide6.QtWidgets import QLabel, QSizePolicy
 
+from screenapp.window import theme
+
 
 class ElidedLabel(QLabel):
     """Right-aligned; asks for little room and takes what it gets; the tooltip has it whole."""
@@ -13,6 +15,7 @@ class ElidedLabel(QLabel):
     def __init__(self) -> None:
         super().__init__()
         self.full = ""
+        self.setFont(theme.font())
         self.setAlignment(Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter)
         self.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Preferred)
 

@@ -3,12 +3,19 @@
 from __future__ import annotations
 
 import logging
-import textwrap
 from pathlib import Path
 
 from PySide6.QtCore import QSize, Qt, Signal
 from PySide6.QtGui import QColor, QIcon, QPainter, QPainterPath, QPen, QPixmap, QTransform
-from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QToolButton, QVBoxLayout, QWidget
+from PySide6.QtWidgets import (
+    QFrame,
+    QHBoxLayout,
+    QLabel,
+    QSizePolicy,
+    QToolButton,
+    QVBoxLayout,
+    QWidget,
+)
 
 from screenapp.model.assets import PACKAGE
 from screenapp.model.errors import ScreenappError
@@ -55,6 +62,7 @@ class EmptyBoard(QFrame):
         self._host = parent
         self.setObjectName("emptyBoard")
         self.setAccessibleName("How to begin")
+        self.setFont(theme.font())
         self._buttons: list[tuple[QToolButton, Part]] = []
         column = QVBoxLayout(self)
         column.setContentsMargins(32, 24, 32, 28)
@@ -110,7 +118,8 @@ class EmptyBoard(QFrame):
             log.warning("sample %s cannot be offered: %s", path.name, fault)
             return None
         button = QToolButton()
-        button.setText(textwrap.fill(part.title, 22))
+        button.setText(in_two_lines(part.title))
+        button.setSizePolicy(QSizePolicy.Policy.Fixed, QSizePolicy.Policy.Expanding)
         button.setToolTip(f"Open the sample “{part.title}”")
         button.setAccessibleName(f"Sample: {part.title}")
         button.setToolButtonStyle(Qt.ToolButtonStyle.ToolButtonTextUnderIcon)
@@ -119,6 +128,17 @@ class EmptyBoard(QFrame):
         button.clicked.connect(lambda: self.sample_wanted.emit(path))
         self._buttons.append((button, part))
         return button
+
+
+def in_two_lines(title: str, most: int = 22) -> str:
+    """A title broken where its halves come out about equal, if it is longer than `most`."""
+    if len(title) <= most:
+        return title
+    spaces = [i for i, c in enumerate(title) if c == " "]
+    if not spaces:
+        return title
+    at = min(spaces, key=lambda i: abs(2 * i - len(title)))
+    return title[:at] + "\n" + title[at + 1 :]
 
 
 def picture(part: Part, ratio: float) -> QIcon:

@@ -39,6 +39,7 @@ class Popover(QFrame):
         super().__init__(parent)
         self._host = parent
         self.setObjectName("popover")
+        self.setFont(theme.font())
         self.way: Way | None = None
         self.values: dict[str, float] = {}
         self._ways: tuple[Way, ...] = ()

@@ -51,6 +51,7 @@ class EntryRow(QFrame):
         self._typed: dict[str, str] = {}
         self.setObjectName("entryRow")
         self.setAccessibleName("Exact entry")
+        self.setFont(theme.font())
         self._row = QHBoxLayout(self)
         self._row.setContentsMargins(8, 4, 8, 4)
         self._row.setSpacing(6)
