@@ -172,6 +172,8 @@ def _rounded(value: float, factor: Fraction, digits: int) -> Decimal:
     shown = _in_decimal(Fraction(value) / factor, max(digits, 30))
     if shown == 0:
         return Decimal(0)
+    if shown.adjusted() > 25:  # rounding to whole ones needs more figures than decimal keeps
+        return _in_decimal(Fraction(value) / factor, digits)
     places = max(0, digits - 1 - shown.adjusted())
     return round(shown, places) if places < 400 else shown
 
