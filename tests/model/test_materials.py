@@ -37,7 +37,7 @@ def test_figures_are_in_the_stored_units() -> None:
 
 
 def test_stiffness_over_density_is_that_of_structural_metals() -> None:
-    """Steel, aluminium and titanium share E / ρ of about 26e6 m²/s² (common practice, no source)."""
+    """Steel, aluminium and titanium share E / ρ near 26e6 m²/s² (common practice, no source)."""
     for m in library():
         if m.name.startswith(("S", "DC", "1.4", "EN AW", "Ti")):
             assert 24e6 < m.youngs_modulus * 1e6 / m.density < 28e6, m.name
