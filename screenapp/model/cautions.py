@@ -14,6 +14,7 @@ from screenapp.model.features import place_name
 from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.part import Part, PointLoad
 from screenapp.model.shape import Shape
+from screenapp.model.size_faults import FARTHEST
 
 RE_ENTERS = 185.0
 """Sharp corners with a larger angle within the material [deg] are pointed out."""
@@ -202,7 +203,7 @@ def _limit_cautions(part: Part) -> Iterator[Fault]:
 
 
 def _probe_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fault]:
-    probes = [p for p in part.readings if np.isfinite(p.at).all()]
+    probes = [p for p in part.readings if np.abs(p.at).max() <= FARTHEST]  # NaN compares false
     if not probes:
         return
     points = np.array([p.at for p in probes], dtype=float)

@@ -153,7 +153,8 @@ def _named(motion: Floats, middle: Floats, size: float, weak: bool = False) -> F
             weak,
         )
     rate = r / (0.5 * size)
-    centre = (float(middle[0] - b / rate), float(middle[1] + a / rate))
+    x, y = float(middle[0] - b / rate), float(middle[1] + a / rate)
+    centre = (x if abs(x) > 1e-9 * size else 0.0, y if abs(y) > 1e-9 * size else 0.0)
     return FreeMotion("turn", (0.0, 0.0), centre, weak)
 
 

@@ -19,6 +19,7 @@ from screenapp.model.part import (
 )
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
+from screenapp.model.size_faults import finite_point
 
 
 def support_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fault]:
@@ -72,7 +73,7 @@ def place_fault(
             f"{edges}, or set the round of {on} to 0",
             field,
             (id_, on),
-            record.at,
+            finite_point(record.at),
         )
     if found.kind == "edge" and shape is not None and not shape.pieces_of(on):
         return Fault(

@@ -226,3 +226,10 @@ def probe_faults(part: Part) -> Iterator[Fault]:
                 f"readings.{probe.id}.at",
                 (probe.id,),
             )
+        elif max(abs(x) for x in probe.at) > FARTHEST:
+            yield Fault(
+                f"probe {probe.id} lies at ({probe.at[0]:.4g}, {probe.at[1]:.4g}) mm",
+                "move it onto the part or remove it",
+                f"readings.{probe.id}.at",
+                (probe.id,),
+            )
