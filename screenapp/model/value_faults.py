@@ -191,10 +191,10 @@ def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:
             f"give a tolerance between {TIGHTEST:g} (0.05 %) and {LOOSEST:g} (20 %)",
             "mesh.tolerance",
         )
-    if mesh.size is not None and not (positive(mesh.size) and mesh.size >= SMALLEST):
+    if mesh.size is not None and not SMALLEST <= mesh.size <= FARTHEST:
         yield Fault(
             f"the element size is {mesh.size:g} mm",
-            "give a size above zero, or leave it to the program",
+            f"give a size of at least {SMALLEST:g} mm, or leave it to the program",
             "mesh.size",
         )
     if not 1 <= mesh.across <= 20:
@@ -207,7 +207,9 @@ def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:
 
 def element_count_faults(mesh: MeshWishes, area: float) -> Iterator[Fault]:
     """An element size that asks for more elements than any laptop holds."""
-    if mesh.size is not None and positive(mesh.size) and area > MOST_ELEMENTS * mesh.size**2:
+    if mesh.size is None or not SMALLEST <= mesh.size <= FARTHEST:
+        return
+    if area > MOST_ELEMENTS * mesh.size**2:
         yield Fault(
             f"elements of {mesh.size:g} mm would be about {area / mesh.size**2:.1e} in number",
             f"give a size of at least {math.sqrt(area / MOST_ELEMENTS):.2g} mm, "
