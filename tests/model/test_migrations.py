@@ -49,6 +49,13 @@ def test_a_fault_in_an_older_file_names_the_line_of_that_file() -> None:
     assert [(f.line, f.field) for f in caught.value.faults] == [(line, "readings.p2")]
 
 
+def test_a_fault_in_the_list_itself_names_its_line_too() -> None:
+    text = '{"format": "screenapp part",\n"version": 1,\n"probes": 3}'
+    with pytest.raises(PartFileError) as caught:
+        part_from_text(text)
+    assert [(f.line, f.field) for f in caught.value.faults] == [(3, "readings")]
+
+
 def test_probes_in_a_file_of_the_present_version_are_a_fault() -> None:
     text = FIRST.read_text(encoding="utf-8").replace('"version": 1', '"version": 2')
     with pytest.raises(PartFileError) as caught:

@@ -195,6 +195,9 @@ def test_the_key_ignores_what_findings_do_not_depend_on() -> None:
     assert screening_key(renamed) == screening_key(plate)
     assert screening_key(replace(plate, formulas=(), dimensions=())) == screening_key(plate)
     assert part_sha256(renamed) != part_sha256(plate)
+    plain_sum = replace(plate, formulas=(Formula("wall.thickness", "1 + 2"),))
+    assert screening_key(plain_sum) == screening_key(plate)
+    assert part_sha256(plain_sum) != part_sha256(replace(plate, formulas=()))
 
 
 @pytest.mark.parametrize(
