@@ -10,36 +10,70 @@ are smooth.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
-
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.boundary_chains import BoundaryChains, side_lengths
+from screenapp.mechanics.boundary_chains import BoundaryChains
+from screenapp.mechanics.corner_stress import known_corners, mirrored_ends
+from screenapp.mechanics.edge_fit import fit_at_ends, fit_at_middles, sample_places
 from screenapp.model.mesh import Mesh
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
 Bools = NDArray[np.bool_]
 
-GAUSS = 1.0 / np.sqrt(3.0)
-ENDS_AND_MIDDLE = np.array([-1.0, 0.0, 1.0])
 
+def recover_edge_stress(
+    mesh: Mesh,
+    chains: BoundaryChains,
+    samples: Floats,
+    traction: Floats,
+    held: Bools,
+    disturbed: Bools,
+    inside: Floats,
+    hooke: Floats,
+) -> Floats:
+    """Stresses at start, middle and end of every boundary side, (n_cases, n_sides, 3, 3) [MPa].
 
-@dataclass(frozen=True, eq=False)
-class EdgeData:
-    """What is known of the boundary, for every case.
-
-    Attributes:
-        traction: [MPa] at start, middle and end of every side, (n_cases, n_sides, 3, 2), in x, y.
-        held: whether a support holds the side along its normal and along its tangent (n_sides, 2);
-            the traction is unknown there.
-        joined: whether strain and traction go on smoothly past each side's end, (n_sides,).
+    Args:
+        samples: stretching of the sides by `edge_strains`.
+        traction: known tractions, (n_cases, n_sides, 3, 2) [MPa].
+        held: sides held along their normal and tangent, (n_sides, 2).
+        disturbed: sides that end at a corner with a force or support of its own, (n_sides,).
+        inside: averaged stresses at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa]; they stand
+            in for the traction of a support.
+        hooke: (3, 3) matrix that turns εx, εy, γxy into stresses [MPa].
     """
+    joined = joined_sides(chains, traction, held)
+    mirrored = mirrored_ends(chains, traction, held)
+    corner, known = known_corners(chains, traction, held, disturbed)
+    ends = fit_at_ends(mesh, chains, joined, mirrored, samples)
+    compliance = np.linalg.inv(hooke)
+    for end, stress, given in (
+        (1, corner, known),
+        (0, corner[:, chains.preceding], known[:, chains.preceding]),
+    ):
+        stretch = _along(stress @ compliance, chains.tangents[:, 2 * end], 0.5)
+        ends[:, :, end] = np.where(given, stretch, ends[:, :, end])
+    strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
+    normal, shear = edge_tractions(chains, traction, held, inside)
+    side = edge_stress(strain, normal, shear, chains, hooke)
+    # the support's side takes over what the side that it mirrors knows better
+    at_start, at_end = np.flatnonzero(mirrored[:, 0]), np.flatnonzero(mirrored[:, 1])
+    side[:, chains.preceding[at_start], 2] = side[:, at_start, 0]
+    side[:, chains.following[at_end], 0] = side[:, at_end, 2]
+    return side
 
-    traction: Floats
-    held: Bools
-    joined: Bools
+
+def _along(tensor: Floats, direction: Floats, shear: float = 1.0) -> Floats:
+    """The component along unit vectors (n, 2) of tensors (..., n, 3), xx, yy, xy.
+
+    `shear` is 0.5 for strains, whose last component is γ.
+    """
+    x, y = direction[:, 0], direction[:, 1]
+    return np.asarray(
+        tensor[..., 0] * x * x + tensor[..., 1] * y * y + 2.0 * shear * tensor[..., 2] * x * y
+    )
 
 
 def joined_sides(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:
@@ -70,126 +104,8 @@ def _sample_slopes(linear: bool) -> Floats:
     """Derivatives of a side's three shape functions at the sample places, (n_samples, 3)."""
     if linear:
         return np.array([[-0.5, 0.0, 0.5]])
-    xi = np.array([-GAUSS, GAUSS])
+    xi = sample_places(2)
     return np.stack([xi - 0.5, -2.0 * xi, xi + 0.5], axis=1)
-
-
-def fit_along_edge(
-    mesh: Mesh, chains: BoundaryChains, joined: Bools, mirrored: Bools, samples: Floats
-) -> Floats:
-    """Sampled values fitted along the edge, at start, middle and end of every side.
-
-    Where two sides join, a parabola through the samples of both (least squares) gives their
-    common value; the middle of a side takes a cubic through its own samples and both neighbours'.
-    At the end of a stretch the window leans inwards; at a mirror it runs on into the reflection.
-
-    Args:
-        joined: where the fit may run past a side's end, (n_sides,).
-        mirrored: whether a line of symmetry stands at start and end of each side, (n_sides, 2).
-        samples: (n_cases, n_sides, n_samples), n_samples = 1 or 2.
-
-    Returns:
-        (n_cases, n_sides, 3).
-    """
-    per_side = samples.shape[2]
-    reach = 1 if per_side == 2 else 2  # sides on either hand of a junction
-    local = np.array([-GAUSS, GAUSS]) if per_side == 2 else np.array([0.0])
-    at = side_lengths(mesh, local)
-    places = side_lengths(mesh, ENDS_AND_MIDDLE)
-    walk = _walk(chains, joined, mirrored)
-    fitted = np.empty((*samples.shape[:2], 3))
-    windows = ((reach, reach - 1, 2), (reach, reach, per_side + 1), (reach - 1, reach, 2))
-    for place, (back, ahead, degree) in enumerate(windows):
-        sides, far = _windows(walk, at, chains.lengths, back, ahead)
-        known = np.repeat(sides >= 0, per_side, axis=1)
-        far = far.reshape(len(sides), -1) - places[:, place, None]
-        weights = fit_weights(np.where(known, far, 0.0), known, degree)
-        values = samples[:, sides].reshape(len(samples), len(sides), -1)
-        fitted[:, :, place] = (values * weights).sum(axis=-1)
-    return fitted
-
-
-def fit_weights(far: Floats, known: Bools, degree: int) -> Floats:
-    """Weights that give a least-squares polynomial's value at 0 from its values at `far`.
-
-    Args:
-        far: distances of the samples, (n, n_samples).
-        known: which of them count, (n, n_samples).
-        degree: of the polynomial, lowered where there are too few samples.
-
-    Returns:
-        (n, n_samples), zero where not known.
-    """
-    weights = np.zeros_like(far)
-    scale = np.abs(far).max(axis=1, keepdims=True)
-    scale[scale == 0.0] = 1.0
-    degrees = np.minimum(degree, known.sum(axis=1) - 1)
-    for d in np.unique(degrees):
-        rows = degrees == d
-        powers = (far[rows] / scale[rows])[..., None] ** np.arange(d + 1)
-        powers = np.where(known[rows][..., None], powers, 0.0)
-        gram = np.swapaxes(powers, 1, 2) @ powers
-        first = np.zeros((int(rows.sum()), d + 1, 1))
-        first[:, 0] = 1.0
-        weights[rows] = (powers @ np.linalg.solve(gram, first))[..., 0]
-    return weights
-
-
-def _walk(chains: BoundaryChains, joined: Bools, mirrored: Bools) -> Ints:
-    """Where a walk along the boundary goes next, (2 n_sides,), -1 where it stops.
-
-    Entry s is side s walked forwards, entry n + s the same side walked backwards.
-    """
-    own = np.arange(len(joined))
-    n, before = len(own), chains.preceding
-    ahead = np.where(joined, chains.following, np.where(mirrored[:, 1], n + own, -1))
-    back = np.where(joined[before], n + before, np.where(mirrored[:, 0], own, -1))
-    return np.concatenate([ahead, back])
-
-
-def _windows(walk: Ints, at: Floats, lengths: Floats, back: int, ahead: int) -> tuple[Ints, Floats]:
-    """The sides that each side's fit draws on, and where their samples lie.
-
-    The side itself comes first.  What the stretch does not offer on one hand is taken on the other.
-
-    Returns:
-        sides (n_sides, 1 + 2 w), -1 for none, and distances of their samples from the start of
-        the side itself, (n_sides, 1 + 2 w, n_samples).
-    """
-    n, wanted = len(lengths), back + ahead
-    own = np.arange(n)
-    fore, aft = _run(walk, own, wanted), _run(walk, own + n, wanted)
-    has_fore, has_aft = (fore >= 0).sum(axis=1), (aft >= 0).sum(axis=1)
-    n_aft = np.minimum(back, has_aft)
-    n_fore = np.minimum(wanted - n_aft, has_fore)
-    n_aft = np.minimum(wanted - n_fore, has_aft)
-    far_fore = lengths[:, None, None] + _far(fore, at, lengths)
-    far_aft = -_far(aft, at, lengths)
-    count = np.arange(wanted)
-    fore = np.where((fore >= 0) & (count < n_fore[:, None]), fore % n, -1)
-    aft = np.where((aft >= 0) & (count < n_aft[:, None]), aft % n, -1)
-    sides = np.concatenate([own[:, None], fore, aft], axis=1)
-    return sides, np.concatenate([at[:, None], far_fore, far_aft], axis=1)
-
-
-def _run(walk: Ints, start: Ints, steps: int) -> Ints:
-    """The next `steps` entries of a walk from `start`, (n, steps), -1 past its end."""
-    run = np.full((len(start), steps), -1, dtype=np.int64)
-    here, going = start, np.ones(len(start), dtype=bool)
-    for k in range(steps):
-        here = np.where(going, walk[here], here)
-        going = going & (here >= 0) & (here != start)
-        run[going, k] = here[going]
-    return run
-
-
-def _far(run: Ints, at: Floats, lengths: Floats) -> Floats:
-    """Distances of the samples along a run from where it begins, (n, steps, n_samples)."""
-    n = len(lengths)
-    side = run % n
-    inside = np.where((run >= n)[..., None], lengths[side][..., None] - at[side], at[side])
-    span = lengths[side]
-    return np.asarray(inside + (np.cumsum(span, axis=1) - span)[..., None])
 
 
 def edge_stress(
@@ -218,3 +134,28 @@ def edge_stress(
         + shear * (t[..., 0] * n[..., 1] + t[..., 1] * n[..., 0])
     )
     return np.stack([xx, yy, xy], axis=-1)
+
+
+def edge_tractions(
+    chains: BoundaryChains, traction: Floats, held: Bools, stress: Floats
+) -> tuple[Floats, Floats]:
+    """σn and τ along the boundary: given where it is free or loaded, from `stress` where held.
+
+    Args:
+        stress: the averaged field at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa].
+
+    Returns:
+        normal and shear stress, (n_cases, n_sides, 3) each [MPa].
+    """
+    t, n = chains.tangents, chains.normals
+    given = np.stack([(traction * n).sum(axis=-1), (traction * t).sum(axis=-1)], axis=-1)
+    met = np.stack(
+        [
+            stress[..., 0] * n[..., 0] + stress[..., 2] * n[..., 1],
+            stress[..., 2] * n[..., 0] + stress[..., 1] * n[..., 1],
+        ],
+        axis=-1,
+    )
+    own = np.stack([(met * n).sum(axis=-1), (met * t).sum(axis=-1)], axis=-1)
+    both = np.where(held[:, None, :], own, given)
+    return both[..., 0], both[..., 1]

@@ -10,8 +10,10 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics import constraints, edge_recovery, loads, shape_functions
-from screenapp.mechanics.boundary_chains import BoundaryChains, boundary_chains
+from screenapp.mechanics import constraints, loads, shape_functions
+from screenapp.mechanics.boundary_chains import boundary_chains
+from screenapp.mechanics.corner_stress import disturbed_corners
+from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
 from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
 from screenapp.mechanics.energy_error import energy_error
 from screenapp.mechanics.quadrature import gauss_square
@@ -22,7 +24,6 @@ from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution, StressField
 
 Floats = NDArray[np.float64]
-Bools = NDArray[np.bool_]
 
 
 def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressField:
@@ -35,7 +36,17 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in part.cases])
     held = constraints.held_sides(part, shape, mesh)
     inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
-    side = recover_edges(shape, mesh, solution, hooke, traction, held, inside)
+    samples = edge_strains(mesh, solution.displacements, solution.element.startswith("quad4"))
+    side = recover_edge_stress(
+        mesh,
+        boundary_chains(shape, mesh),
+        samples,
+        traction,
+        held,
+        disturbed_corners(part, mesh),
+        inside[:, mesh.side_nodes],
+        hooke,
+    )
     nodal = with_edges(mesh, inside, side)
     error = energy_error(mesh, solution, hooke, nodal, side)
     return StressField(nodal, side, error)
@@ -68,59 +79,6 @@ def averaged_stress(mesh: Mesh, own: Floats) -> Floats:
         [[np.bincount(flat, case[..., k].ravel(), mesh.n_nodes) for k in range(3)] for case in own]
     )
     return np.asarray(np.swapaxes(total / np.maximum(count, 1), 1, 2))
-
-
-def recover_edges(
-    shape: Shape,
-    mesh: Mesh,
-    solution: Solution,
-    hooke: Floats,
-    traction: Floats,
-    held: Bools,
-    inside: Floats,
-) -> Floats:
-    """Stresses at start, middle and end of every boundary side, (n_cases, n_sides, 3, 3) [MPa].
-
-    Args:
-        hooke: (3, 3) [MPa].
-        traction: known tractions, (n_cases, n_sides, 3, 2) [MPa].
-        held: sides held along their normal and tangent, (n_sides, 2).
-        inside: averaged stresses, (n_cases, n_nodes, 3) [MPa]; they stand in for the traction of
-            a support.
-    """
-    chains = boundary_chains(shape, mesh)
-    linear = solution.element.startswith("quad4")
-    joined = edge_recovery.joined_sides(chains, traction, held)
-    mirrored = np.zeros((len(joined), 2), dtype=bool)
-    strain = edge_recovery.edge_strains(mesh, solution.displacements, linear)
-    strain = edge_recovery.fit_along_edge(mesh, chains, joined, mirrored, strain)
-    normal, shear = edge_tractions(chains, traction, held, inside[:, mesh.side_nodes])
-    return edge_recovery.edge_stress(strain, normal, shear, chains, hooke)
-
-
-def edge_tractions(
-    chains: BoundaryChains, traction: Floats, held: Bools, stress: Floats
-) -> tuple[Floats, Floats]:
-    """σn and τ along the boundary: given where it is free or loaded, from `stress` where held.
-
-    Args:
-        stress: the averaged field at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa].
-
-    Returns:
-        normal and shear stress, (n_cases, n_sides, 3) each [MPa].
-    """
-    t, n = chains.tangents, chains.normals
-    given = np.stack([(traction * n).sum(axis=-1), (traction * t).sum(axis=-1)], axis=-1)
-    met = np.stack(
-        [
-            stress[..., 0] * n[..., 0] + stress[..., 2] * n[..., 1],
-            stress[..., 2] * n[..., 0] + stress[..., 1] * n[..., 1],
-        ],
-        axis=-1,
-    )
-    own = np.stack([(met * n).sum(axis=-1), (met * t).sum(axis=-1)], axis=-1)
-    both = np.where(held[:, None, :], own, given)
-    return both[..., 0], both[..., 1]
 
 
 def with_edges(mesh: Mesh, inside: Floats, side: Floats) -> Floats:
