@@ -84,9 +84,7 @@ class Actions:
         self._add(menu, Item("undo", "&Undo", document.undo, (Standard.Undo,)))
         self._add(menu, Item("redo", "&Redo", document.redo, ("Ctrl+Shift+Z", "Ctrl+Y")))
         menu.addSeparator()
-        self._add(
-            menu, Item("delete", "&Delete what is selected", self._window.delete, ("Del",))
-        )
+        self._add(menu, Item("delete", "&Delete what is selected", self._window.delete, ("Del",)))
 
     def _view_menu(self, menu: QMenu) -> None:
         window = self._window
@@ -121,7 +119,7 @@ class Actions:
         window = self._window
         self._add(
             menu,
-            Item("screen", "&Screen the part", window.screen, ("Ctrl+Return", "Ctrl+Enter")),
+            Item("screen", "&Screen the part", window.screen_part, ("Ctrl+Return", "Ctrl+Enter")),
         )
         self._add(menu, Item("cancel", "&Cancel screening", window.cancel, ("Ctrl+.",)))
         menu.addSeparator()

@@ -28,10 +28,20 @@ from PySide6.QtWidgets import (
 from screenapp.model.errors import ScreenappError
 from screenapp.window import theme
 from screenapp.window.document import Document
-from screenapp.window.pill import PillDelegate, pill_width
+from screenapp.window.figure_painting import (
+    LINE_ROLE,
+    PADDING,
+    PILL_ROLE,
+    FigureDelegate,
+    FigureHeading,
+)
+from screenapp.window.pill import pill_width
 
 ROW = 24
 """Height of a row [px]."""
+
+LEAST_NAME, LEAST_WORDS = 72, 56
+"""The first column, and others of words, are not made narrower [px]; numbers are never cut."""
 
 Index = QModelIndex | QPersistentModelIndex
 
@@ -103,6 +113,10 @@ class FigureModel(QAbstractTableModel):
             return f"{text}\n{line.tip}" if line.tip else text
         if role == Qt.ItemDataRole.ForegroundRole:
             return theme.colour("quiet" if self.faded else "ink")
+        if role == LINE_ROLE:
+            return line
+        if role == PILL_ROLE:
+            return column.pill
         if role == Qt.ItemDataRole.AccessibleTextRole:
             return f"{column.title}: {text}"
         return None
@@ -170,8 +184,9 @@ class FigureTable(QTableView):
             QAbstractItemView.EditTrigger.DoubleClicked
             | QAbstractItemView.EditTrigger.EditKeyPressed
         )
-        self.setItemDelegate(PillDelegate(self))
+        self.setItemDelegate(FigureDelegate(self))
         self.setFocusPolicy(Qt.FocusPolicy.StrongFocus)
+        self.setHorizontalHeader(FigureHeading(self))
         upright = self.verticalHeader()
         upright.hide()
         upright.setDefaultSectionSize(ROW)
@@ -302,20 +317,19 @@ class FigureTable(QTableView):
                 text = line.texts[i]
                 need = pill_width(text) if column.pill else body.horizontalAdvance(text)
                 wide = max(wide, round(need))
-            wants.append(wide + 17)
+            wants.append(wide + 2 * PADDING + 1)
         spare = self.viewport().width() - sum(wants)
-        if spare >= 0 and not self.grows:
-            # wide enough: let the columns breathe, the names most
-            share = spare // (len(wants) + 1)
-            wants = [w + min(share, 48) for w in wants]
-            wants[0] += self.viewport().width() - sum(wants) if len(wants) == 1 else 0
-        elif spare >= 0:
+        words = [i for i, c in enumerate(columns) if not c.number and not c.pill]
+        if spare >= 0 and self.grows:
             wants[0] += spare
-        else:
-            texts = [i for i, c in enumerate(columns) if not c.number and not c.pill]
-            for i in texts:
-                cut = min(max(0, wants[i] - 64), -spare)
-                wants[i] -= cut
-                spare += cut
+        elif spare >= 0:  # let the columns breathe
+            wants = [wide + min(spare // len(wants), 40) for wide in wants]
+        for some, least in (([i for i in words if i > 0], LEAST_WORDS), ([0], LEAST_NAME)):
+            while spare < 0 and some:  # from the widest, a pixel at a time
+                widest = max(some, key=lambda i: wants[i])
+                if wants[widest] <= least:
+                    break
+                wants[widest] -= 1
+                spare += 1
         for i, wide in enumerate(wants):
             self.setColumnWidth(i, wide)

@@ -31,15 +31,15 @@ class Files(QObject):
         failed: a lead sentence and a ScreenappError.
         saved: the part stands in its file, since this time.
         opened: another part is shown.
+        restored: its findings were kept and are shown.
     """
 
     failed = Signal(str, object)
     saved = Signal(object)
     opened = Signal()
+    restored = Signal()
 
-    def __init__(
-        self, document: Document, settings: Settings, ask: Ask, window: QWidget
-    ) -> None:
+    def __init__(self, document: Document, settings: Settings, ask: Ask, window: QWidget) -> None:
         super().__init__(window)
         self._document = document
         self._settings = settings
@@ -123,6 +123,7 @@ class Files(QObject):
         kept = findings_cache.load(document.key)
         if kept is not None:
             document.set_findings(with_readings(document.part, kept))
+            self.restored.emit()
 
 
 def with_readings(part: Part, findings: Findings) -> Findings:

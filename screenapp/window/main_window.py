@@ -14,13 +14,13 @@ from PySide6.QtGui import (
     QKeySequence,
     QShowEvent,
 )
-from PySide6.QtWidgets import QLabel, QMainWindow, QSplitter
+from PySide6.QtWidgets import QMainWindow, QSplitter
 
 from screenapp.model import findings_cache
 from screenapp.model.edits import EditError
 from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
-from screenapp.model.part import Part, Probe
+from screenapp.model.part import Part, Probe, StressLimit
 from screenapp.model.part_json import screening_key
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
@@ -28,6 +28,7 @@ from screenapp.window.ask import Ask
 from screenapp.window.board.board import Board
 from screenapp.window.board.lens_bar import LensBar
 from screenapp.window.board.lens_painter import LensPainter
+from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
 from screenapp.window.files import Files, with_readings
 from screenapp.window.help_panels import Keys, Panel, about_panel, keys_panel
@@ -40,7 +41,7 @@ from screenapp.window.sheet.sheet import Sheet
 SHARE_OF_BOARD = 0.62
 FIRST_SIZE = (1440, 900)
 WARM_UP_MS = 250
-SAID_MS = 6000
+SAID_MS, SAID_HEIGHT = 6000, 28
 
 
 class MainWindow(QMainWindow):
@@ -75,7 +76,7 @@ class MainWindow(QMainWindow):
 
     # --- what the menus ask -------------------------------------------------------------------
 
-    def screen(self) -> None:
+    def screen_part(self) -> None:
         """Screen the part as it now is."""
         self._accept_typing()
         blocking = [f for f in self.document.faults if f.blocks]
@@ -122,7 +123,7 @@ class MainWindow(QMainWindow):
         if target is not None:
             target.setFocus(Qt.FocusReason.ShortcutFocusReason)
             if self.sheet.page.isAncestorOf(target):
-                self.sheet.scroll.ensureWidgetVisible(target, 0, 40)
+                self.sheet.scroll_area.ensureWidgetVisible(target, 0, 40)
 
     def go_to_readings(self) -> None:
         """Put the keyboard on the readings."""
@@ -157,9 +158,10 @@ class MainWindow(QMainWindow):
         self.whole.setStretchFactor(0, round(100 * SHARE_OF_BOARD))
         self.whole.setStretchFactor(1, round(100 * (1 - SHARE_OF_BOARD)))
         self.setCentralWidget(self.whole)
-        self.said = QLabel()
-        self.said.setProperty("quiet", True)
-        self.said.setContentsMargins(0, 0, 12, 0)
+        self.said = CutLabel()
+        self.said.setContentsMargins(0, 0, 16, 0)
+        self.said.setFixedHeight(SAID_HEIGHT)
+        self.said.setAlignment(Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter)
         self.menuBar().setCornerWidget(self.said, Qt.Corner.TopRightCorner)
         self._unsay = QTimer(self)
         self._unsay.setSingleShot(True)
@@ -189,8 +191,9 @@ class MainWindow(QMainWindow):
         self.files.failed.connect(sheet.head.notice.tell)
         self.files.saved.connect(self._saved)
         self.files.opened.connect(self._opened)
-        sheet.head.screen_wanted.connect(self.screen)
-        sheet.foot.screen_wanted.connect(self.screen)
+        self.files.restored.connect(self._show_results)
+        sheet.head.screen_wanted.connect(self.screen_part)
+        sheet.foot.screen_wanted.connect(self.screen_part)
         sheet.foot.cancel_wanted.connect(self.cancel)
         screener.started.connect(self._started)
         screener.progress.connect(sheet.foot.show_step)
@@ -205,6 +208,14 @@ class MainWindow(QMainWindow):
         self.sheet.foot.begin()
         self.sheet.head.show_screening(True)
         self.actions_.refresh()
+
+    def _show_results(self) -> None:
+        """Paint what was found, unless a lens for results is chosen already."""
+        findings = self.document.findings
+        if findings is not None and self.document.view.lens in ("Shape", "Mesh"):
+            self.document.look(
+                lens="Utilisation" if _judges_stress(self.document.part) else "Stress"
+            )
 
     def _passed(self, fields: Fields, summary: PassSummary) -> None:
         self.sheet.foot.show_pass(summary)
@@ -222,8 +233,7 @@ class MainWindow(QMainWindow):
             return
         self._read_last = self.document.part.readings
         self.document.set_findings(with_readings(self.document.part, findings))
-        if self.document.view.lens in ("Shape", "Mesh"):
-            self.document.look(lens="Utilisation" if _judges_stress(findings) else "Stress")
+        self._show_results()
 
     def _failed(self, error: ScreenappError) -> None:
         self._end("not screened")
@@ -250,12 +260,7 @@ class MainWindow(QMainWindow):
     # --- saying ---------------------------------------------------------------------------------
 
     def _say(self, text: str) -> None:
-        short = self.said.fontMetrics().elidedText(
-            text, Qt.TextElideMode.ElideRight, max(240, self.width() - 360)
-        )
-        self.said.setText(short)
-        self.said.setToolTip(text)
-        self.menuBar().adjustSize()
+        self.said.setText(text)
         self._unsay.start()
 
     def _show_title(self) -> None:
@@ -275,7 +280,7 @@ class MainWindow(QMainWindow):
         self._read_last = self.document.part.readings
         self.sheet.head.notice.hide()
         self.sheet.foot.end("")
-        self.sheet.scroll.verticalScrollBar().setValue(0)
+        self.sheet.scroll_area.verticalScrollBar().setValue(0)
 
     def _show_panel(self, name: str, make: Callable[[], Panel]) -> None:
         panel = self._panels.get(name)
@@ -363,7 +368,5 @@ def _dropped(event: QDropEvent) -> Path | None:
     return path if path.suffix == ".json" else None
 
 
-def _judges_stress(findings: Findings) -> bool:
-    return any("stress" in limit.name.lower() or "von" in limit.name.lower()
-               for limit in findings.limits)
-
+def _judges_stress(part: Part) -> bool:
+    return any(isinstance(limit, StressLimit) for limit in part.limits)

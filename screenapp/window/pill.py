@@ -2,9 +2,8 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import QModelIndex, QPersistentModelIndex, QRectF, QSize, Qt
+from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QFontMetricsF, QPainter, QPen
-from PySide6.QtWidgets import QStyle, QStyledItemDelegate, QStyleOptionViewItem
 
 from screenapp.window import theme
 
@@ -45,30 +44,6 @@ def paint_pill(painter: QPainter, left: float, middle: float, text: str) -> None
     painter.restore()
 
 
-class PillDelegate(QStyledItemDelegate):
-    """Paints the text of its cells as pills; a dash stays a dash."""
-
-    def paint(
-        self,
-        painter: QPainter,
-        option: QStyleOptionViewItem,
-        index: QModelIndex | QPersistentModelIndex,
-    ) -> None:
-        """Paint ground and pill."""
-        text = str(index.data() or "")
-        if text not in _COLOURS:
-            super().paint(painter, option, index)
-            return
-        blank = QStyleOptionViewItem(option)
-        self.initStyleOption(blank, index)
-        blank.text = ""  # type: ignore[attr-defined]
-        style = option.widget.style()  # type: ignore[attr-defined]
-        style.drawControl(QStyle.ControlElement.CE_ItemViewItem, blank, painter, option.widget)  # type: ignore[attr-defined]
-        rect = option.rect  # type: ignore[attr-defined]
-        paint_pill(painter, rect.left() + 8.0, rect.center().y() + 1.0, text)
-
-    def sizeHint(
-        self, option: QStyleOptionViewItem, index: QModelIndex | QPersistentModelIndex
-    ) -> QSize:
-        """Room for the pill."""
-        return QSize(round(pill_width(str(index.data() or ""))) + 16, 24)
+def is_pill(text: str) -> bool:
+    """Whether a text is one that stands in a pill."""
+    return text in _COLOURS

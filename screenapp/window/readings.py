@@ -8,12 +8,13 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QStackedLayout, QToolB
 
 from screenapp.model.edits import rename_probe
 from screenapp.model.errors import ScreenappError
+from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import Estimate, Reading
 from screenapp.model.part import Part
 from screenapp.window import theme
 from screenapp.window.document import Document
-from screenapp.model.estimate_text import value_text
 from screenapp.window.figure_table import Column, FigureTable, Line
+from screenapp.window.icons import icon
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.field import sentence_of
 from screenapp.window.sheet.quantities import Quantities
@@ -36,7 +37,7 @@ class Readings(QWidget):
         self.empty.setWordWrap(True)
         self.empty.setContentsMargins(16, 12, 16, 8)
         self.copy_button = QToolButton(self)
-        self.copy_button.setText("Copy")
+        self.copy_button.setIcon(icon("copy", theme.current().quiet))
         self.copy_button.setToolTip("Copy the table as text")
         self.copy_button.setAccessibleName("Copy the readings as text")
         self.copy_button.clicked.connect(self.table.copy)
@@ -45,15 +46,19 @@ class Readings(QWidget):
         self._stack.addWidget(self.table)
         self._stack.addWidget(self.empty)
         row = QHBoxLayout(self)
-        row.setContentsMargins(8, 4, 8, 4)
-        row.setSpacing(4)
+        row.setContentsMargins(8, 4, 4, 4)
+        row.setSpacing(0)
         row.addWidget(holder, 1)
         row.addWidget(self.copy_button, 0, Qt.AlignmentFlag.AlignTop)
         self.setMinimumHeight(96)
         document.part_changed.connect(self.refresh)
         document.findings_changed.connect(self.refresh)
-        theme.notifier.changed.connect(self.update)
+        theme.notifier.changed.connect(self._colour)
         self.refresh()
+
+    def _colour(self) -> None:
+        self.copy_button.setIcon(icon("copy", theme.current().quiet))
+        self.update()
 
     def refresh(self) -> None:
         """Show the document as it now is."""

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from PySide6.QtWidgets import QApplication
 
+from screenapp.model.assets import resource
 from screenapp.window import theme
 from screenapp.window.theme import Palette
 
@@ -14,7 +15,8 @@ QToolTip {{
     background: {ink}; color: {sheet}; border: 1px solid {ink}; padding: 4px 8px;
 }}
 
-QMenuBar {{ background: {chrome}; color: {ink}; border-bottom: 1px solid {faint}; padding: 2px 8px; }}
+QMenuBar {{ background: {chrome}; color: {ink}; border-bottom: 1px solid {faint};
+    padding: 2px 8px; }}
 QMenuBar::item {{ padding: 4px 8px; border-radius: 4px; background: transparent; }}
 QMenuBar::item:selected, QMenuBar::item:pressed {{ background: {hover}; }}
 QMenu {{
@@ -116,9 +118,8 @@ QTableView {{
     border: none; gridline-color: transparent; outline: none;
     selection-background-color: {chosen}; selection-color: {ink};
 }}
-QTableView::item {{ border: none; padding: 0 8px; }}
 QHeaderView, QHeaderView::section {{
-    background: transparent; color: {quiet}; border: none; padding: 0 8px;
+    background: transparent; color: {quiet}; border: none; padding: 0;
 }}
 QTableCornerButton::section {{ background: transparent; border: none; }}
 QTableView QLineEdit {{ border: 1px solid {accent}; border-radius: 3px; padding: 0 4px; }}
@@ -147,8 +148,13 @@ def style_sheet(palette: Palette) -> str:
         line=blend(palette.faint, palette.quiet, 0.35),
         dim=blend(palette.quiet, palette.chrome, 0.45),
         accent_warm=blend(palette.accent, palette.ink, 0.18),
-        down_arrow="image: none;",
+        down_arrow=_image(f"style/down-{palette.name}.svg"),
     )
+
+
+def _image(name: str) -> str:
+    """The rule that shows one of the program's own pictures."""
+    return f'image: url("{resource(name).as_posix()}");'
 
 
 def blend(a: str, b: str, share: float) -> str:

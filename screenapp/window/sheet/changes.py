@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 from dataclasses import replace
-from typing import Any
+from typing import Any, TypeVar
 
 from screenapp.model.curves import arc_through
 from screenapp.model.edit_loops import move_corner, set_round
@@ -16,7 +16,6 @@ from screenapp.model.features import find, loops_of
 from screenapp.model.part import (
     BearingLoad,
     Case,
-    CircleHole,
     Corner,
     DisplacementLimit,
     Edge,
@@ -30,11 +29,10 @@ from screenapp.model.part import (
     Material,
     Part,
     PointLoad,
-    PressureLoad,
     PrescribedSupport,
+    PressureLoad,
     RollerSupport,
     ShearLoad,
-    SlotHole,
     StressLimit,
     Support,
 )
@@ -46,6 +44,14 @@ FIRST_FORCE, FIRST_LINE, FIRST_PRESSURE = 100.0, 1.0, 1.0
 
 FREE_FALL = 9.80665
 """Standard gravity [m/s²] (3rd CGPM, 1901; from memory)."""
+
+
+Record = TypeVar("Record")
+
+
+def with_field(record: Record, field: str, value: Any) -> Record:
+    """A frozen record with one field changed by its name."""
+    return replace(record, **{field: value})  # type: ignore[type-var]
 
 
 def apply(document: Document, name: str, part: Part) -> None:
@@ -147,7 +153,9 @@ class MaterialChange:
     def _set(self, field: str, value: Any) -> None:
         part = self._document.part
         materials = tuple(
-            replace(m, **{field: value}, source=_own_source(m)) if m.name == self._name else m
+            replace(with_field(m, field, value), source=_own_source(m))
+            if m.name == self._name
+            else m
             for m in part.materials
         )
         words = field.replace("_", " ")
@@ -187,8 +195,7 @@ def _with(hole: Hole, field: str, value: float) -> Hole:
         return replace(hole, centre=(value, hole.centre[1]))
     if field == "y":
         return replace(hole, centre=(hole.centre[0], value))
-    changed: CircleHole | SlotHole = replace(hole, **{field: value})
-    return changed
+    return with_field(hole, field, value)
 
 
 class CornerChange:
@@ -268,7 +275,7 @@ class SupportChange:
 
     def _set(self, field: str, value: float | None) -> None:
         old = next(s for s in self._document.part.supports if s.id == self._support)
-        self._put(f"{field} of the support at {old.on}", replace(old, **{field: value}))
+        self._put(f"{field} of the support at {old.on}", with_field(old, field, value))
 
     def _put(self, name: str, new: Support) -> None:
         part = self._document.part
@@ -314,7 +321,11 @@ def _first_load(kind: str, id_: str, on: str) -> Load:
         return ShearLoad(id_, on, FIRST_LINE)
     if kind == "line":
         return LineLoad(id_, on, 0.0, -FIRST_LINE)
-    made = {"bearing": BearingLoad, "force": ForceLoad, "point": PointLoad}[kind]
+    made: type[BearingLoad | ForceLoad | PointLoad] = {
+        "bearing": BearingLoad,
+        "force": ForceLoad,
+        "point": PointLoad,
+    }[kind]
     return made(id_, on, 0.0, -FIRST_FORCE)
 
 
@@ -354,22 +365,23 @@ class LoadChange:
 
     def setter(self, field: str) -> Callable[[float], None]:
         """A function that sets a field."""
-        return lambda value: self._put(replace(self._find(), **{field: value}))
+        return lambda value: self._put(with_field(self._find(), field, value))
 
     def resize(self, size: float) -> None:
         """Another size in the same direction; a negative one turns it round."""
         load = self._find()
-        x, y = getattr(load, "x", 0.0), getattr(load, "y", 0.0)
+        assert not isinstance(load, PressureLoad | ShearLoad)
+        x, y = load.x, load.y
         old = math.hypot(x, y)
         ux, uy = (x / old, y / old) if old > 0.0 else (0.0, -1.0)
-        self._put(replace(load, x=size * ux + 0.0, y=size * uy + 0.0))  # type: ignore[call-arg]
+        self._put(replace(load, x=size * ux + 0.0, y=size * uy + 0.0))
 
     def direct(self, text: str) -> None:
         """Another direction, the same size."""
         load = self._find()
-        size = math.hypot(getattr(load, "x", 0.0), getattr(load, "y", 0.0))
-        x, y = components(size, read_direction(text))
-        self._put(replace(load, x=x, y=y))  # type: ignore[call-arg]
+        assert not isinstance(load, PressureLoad | ShearLoad)
+        x, y = components(math.hypot(load.x, load.y), read_direction(text))
+        self._put(replace(load, x=x, y=y))
 
     def remove(self) -> None:
         """Remove it."""
@@ -430,6 +442,6 @@ class LimitChange:
         """Set a field."""
         part = self._document.part
         limits = tuple(
-            replace(g, **{field: value}) if g.id == self._limit else g for g in part.limits
+            with_field(g, field, value) if g.id == self._limit else g for g in part.limits
         )
         apply(self._document, f"{field} of limit {self._limit}", replace(part, limits=limits))

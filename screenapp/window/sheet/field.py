@@ -24,7 +24,8 @@ from screenapp.window.sheet.pieces import Choice, Link, Value
 LINE = 20
 """Height of a line of text in the sheet [px]."""
 
-_PAD = 3
+PAD = 3
+"""Room left and right of a field's text [px]."""
 _OPENERS = (Qt.Key.Key_Return, Qt.Key.Key_Enter, Qt.Key.Key_F2, Qt.Key.Key_Space)
 
 
@@ -90,7 +91,7 @@ class Field(QWidget):
         if self._editor is not None:
             wide = self._width(self._editor.text()) + 24
             return QSize(max(88, wide), LINE)
-        return QSize(self._width(self.piece.text) + 2 * _PAD, LINE)
+        return QSize(self._width(self.piece.text) + 2 * PAD, LINE)
 
     def open(self) -> None:
         """Act on the link, or begin to change the value."""
@@ -152,7 +153,7 @@ class Field(QWidget):
             return
         had_focus = editor.hasFocus()
         editor.removeEventFilter(self)
-        self.setFocusProxy(None)  # type: ignore[arg-type]
+        self.setFocusProxy(None)
         editor.hide()
         editor.deleteLater()
         if had_focus:
@@ -239,10 +240,10 @@ class Field(QWidget):
 
     def event(self, event: QEvent) -> bool:
         """Keep Delete for the row that the field stands in."""
-        if event.type() == QEvent.Type.ShortcutOverride and isinstance(event, QKeyEvent):
-            if event.key() == Qt.Key.Key_Delete:
-                event.accept()
-                return True
+        asked = event.type() == QEvent.Type.ShortcutOverride
+        if asked and isinstance(event, QKeyEvent) and event.key() == Qt.Key.Key_Delete:
+            event.accept()
+            return True
         return super().event(event)
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
@@ -321,14 +322,14 @@ class Field(QWidget):
         painter.setPen(accent)
         metrics = QFontMetrics(self.font())
         text = metrics.elidedText(
-            self.piece.text, Qt.TextElideMode.ElideRight, self.width() - 2 * _PAD + 1
+            self.piece.text, Qt.TextElideMode.ElideRight, self.width() - 2 * PAD + 1
         )
         base = baseline(self.font())
-        painter.drawText(QPointF(_PAD, base), text)
+        painter.drawText(QPointF(PAD, base), text)
         if isinstance(self.piece, Value) or self._under:
             painter.setPen(QPen(accent, 1))
             y = base + 2.5
-            painter.drawLine(QPointF(_PAD, y), QPointF(self.width() - _PAD, y))
+            painter.drawLine(QPointF(PAD, y), QPointF(self.width() - PAD, y))
         if focused:
             painter.setBrush(Qt.BrushStyle.NoBrush)
             painter.setPen(QPen(accent, 1.5))

@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import math
 
+from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
 from screenapp.screening.limits import allowable
-from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
@@ -42,8 +42,9 @@ class FindingsParagraph(Paragraph):
         findings = document.findings
         part = document.part
         peaks = _shown_peaks(part, findings) if findings else []
-        self.table.show_lines(_columns(part), tuple(_line(part, c, p) for c, p in peaks),
-                              self.outdated())
+        self.table.show_lines(
+            _columns(part), tuple(_line(part, c, p) for c, p in peaks), self.outdated()
+        )
         self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks))])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
@@ -63,7 +64,7 @@ class FindingsParagraph(Paragraph):
         moved = estimate_text(case.displacement_max, "displacement", units)
         q = Quantities(units)
         x, y = case.displacement_at
-        at = f"({q.bare(x, 'length')}, {q.bare(y, 'length')})"
+        at = f"({q.bare(x, 'length')}, {q.show(y, 'length')})"
         text = f"{case.name}: moves by at most {moved} at {at}."
         return RowOf(case.case, (), (Words(text, quiet=self.outdated()),))
 
@@ -174,5 +175,3 @@ def _way(x: float, y: float) -> str:
 
 def _three(value: float) -> float:
     return float(f"{value:.3g}")
-
-

@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 from PySide6.QtCore import Signal
-from PySide6.QtWidgets import QHBoxLayout, QLabel, QProgressBar, QPushButton, QSizePolicy, QWidget
+from PySide6.QtWidgets import QHBoxLayout, QProgressBar, QPushButton, QWidget
 
 from screenapp.model.findings import PassSummary
 from screenapp.model.progress import Step
+from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
 from screenapp.window.sheet.quantities import grouped
 
@@ -41,15 +42,16 @@ class Foot(QWidget):
         self.bar.setRange(0, STEPS)
         self.bar.setTextVisible(False)
         self.bar.setAccessibleName("Progress of the screening")
-        self.text = QLabel(self)
+        self.bar.setMinimumWidth(48)
+        self.text = CutLabel(self)
         self.text.setProperty("quiet", True)
-        self.text.setSizePolicy(QSizePolicy.Policy.Ignored, QSizePolicy.Policy.Preferred)
         row = QHBoxLayout(self)
         row.setContentsMargins(20, 12, 20, 12)
         row.setSpacing(12)
         row.addWidget(self.button)
         row.addWidget(self.bar, 1)
-        row.addWidget(self.text, 2)
+        row.addWidget(self.text, 0)
+        row.addStretch(0)
         row.addWidget(self.stop)
         document.part_changed.connect(self.refresh)
         document.findings_changed.connect(self.refresh)
@@ -73,7 +75,6 @@ class Foot(QWidget):
         """Show stage, pass and share done."""
         number = f"pass {step.number}: " if step.number else ""
         self.text.setText(f"{number}{step.stage}{self._pass}".capitalize())
-        self.text.setToolTip(self.text.text())
         self.bar.setValue(round(STEPS * min(1.0, max(0.0, step.done))))
 
     def show_pass(self, summary: PassSummary) -> None:
@@ -107,8 +108,9 @@ class Foot(QWidget):
         self.button.setText("Screen the part")
         self.button.setEnabled(not blocking)
         self.button.setToolTip(
-            f"First: {blocking[0].cause}; {blocking[0].mend}" if blocking else
-            "Mesh, solve and judge the part (Ctrl+Enter)"
+            f"First: {blocking[0].cause}; {blocking[0].mend}"
+            if blocking
+            else "Mesh, solve and judge the part (Ctrl+Enter)"
         )
         findings = document.findings
         fresh = document.current and findings is not None
@@ -128,7 +130,6 @@ class Foot(QWidget):
             self.text.setText("1 thing is open" if n == 1 else f"{n} things are open")
         else:
             self.text.setText("ready")
-        self.text.setToolTip(self.text.text())
 
     def _dress(self, done: bool) -> None:
         if self.bar.property("done") != done:

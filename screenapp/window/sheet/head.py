@@ -9,6 +9,7 @@ from PySide6.QtGui import QFont, QKeyEvent, QPainter, QPaintEvent
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
 from screenapp.model.errors import ScreenappError
+from screenapp.model.features import find
 from screenapp.window import theme
 from screenapp.window.document import Document
 from screenapp.window.sheet import changes
@@ -75,16 +76,16 @@ class Banner(QWidget):
         self.shape = StandingShape(self)
         self.headline = Sentence(self)
         self.detail = Sentence(self)
-        column = QVBoxLayout()
-        column.setContentsMargins(0, 0, 0, 0)
-        column.setSpacing(0)
-        column.addWidget(self.headline)
-        column.addWidget(self.detail)
+        self.column = QVBoxLayout()
+        self.column.setContentsMargins(0, 0, 0, 0)
+        self.column.setSpacing(0)
+        self.column.addWidget(self.headline)
+        self.column.addWidget(self.detail)
         self.line = QHBoxLayout(self)
         self.line.setContentsMargins(16, 10, 12, 10)
         self.line.setSpacing(12)
         self.line.addWidget(self.shape, 0, Qt.AlignmentFlag.AlignTop)
-        self.line.addLayout(column, 1)
+        self.line.addLayout(self.column, 1)
         theme.notifier.changed.connect(self.update)
 
     @property
@@ -117,7 +118,7 @@ class Notice(Banner):
     def __init__(self, document: Document, parent: QWidget) -> None:
         super().__init__(parent)
         self._document = document
-        self.lines = Sentence(self)
+        self._rows: list[Sentence] = []
         self.cross = Cross(self)
         self.cross.setToolTip("Put this notice away")
         self.cross.setAccessibleName("Put this notice away")
@@ -126,42 +127,36 @@ class Notice(Banner):
         self.faults = QVBoxLayout()
         self.faults.setContentsMargins(0, 4, 0, 0)
         self.faults.setSpacing(0)
-        column = self.line.itemAt(1).layout()
-        assert isinstance(column, QVBoxLayout)
-        column.addLayout(self.faults)
+        self.column.addLayout(self.faults)
         self.hide()
 
     def tell(self, lead: str, error: ScreenappError) -> None:
         """Say what went wrong; `lead` begins, e.g. "The file was not opened"."""
         self.show_standing("does not hold", lead, (sentence_of(error),))
-        while self.faults.count():
-            item = self.faults.takeAt(0)
-            if (widget := item.widget()) is not None:
-                widget.hide()
-                widget.deleteLater()
+        for row in self._rows:
+            self.faults.removeWidget(row)
+            row.hide()
+            row.deleteLater()
+        self._rows = []
         several = len(error.faults) > 1 or any(f.line is not None for f in error.faults)
         for fault in error.faults[:MOST_LINES] if several else ():
             line = f"Line {fault.line}: " if fault.line is not None else ""
             where = f" ({fault.field})" if fault.field else ""
             text = f"{line}{fault.cause}{where}; {fault.mend}."
-            row = Sentence(self)
-            pieces: list[Piece | str] = [text]
-            if fault.ids:
-                ids = fault.ids
-                pieces += [" ", Link("show", "Show it", lambda _k, i=ids: self._document.select(*i))]
-            row.set(*pieces)
-            self.faults.addWidget(row)
+            self._add(text, fault.ids)
         rest = len(error.faults) - MOST_LINES
-        if rest > 0:
-            self.faults.addWidget(_words(self, f"And {rest} more."))
+        if several and rest > 0:
+            self._add(f"And {rest} more.", ())
         self.setAccessibleName(f"{lead}. {sentence_of(error)}")
         self.show()
 
-
-def _words(parent: QWidget, text: str) -> Sentence:
-    made = Sentence(parent)
-    made.set(text)
-    return made
+    def _add(self, text: str, ids: tuple[str, ...]) -> None:
+        known = all(find(self._document.part, id_) is not None for id_ in ids)
+        show = Link("show", "Show it", lambda _key: self._document.select(*ids))
+        row = Sentence(self)
+        row.set(text, *((" ", show) if ids and known else ()))
+        self.faults.addWidget(row)
+        self._rows.append(row)
 
 
 class Head(QWidget):
@@ -181,7 +176,7 @@ class Head(QWidget):
         self.title = TitleEdit(document, self)
         self.brief = QLabel(self)
         self.brief.setProperty("quiet", True)
-        self.brief.setContentsMargins(5, 0, 0, 0)
+        self.brief.setContentsMargins(4, 0, 0, 0)
         self.verdict = Banner(self)
         self.notice = Notice(document, self)
         column = QVBoxLayout(self)

@@ -6,7 +6,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.part import DisplacementLimit, Limit, Part, StressLimit
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
 
@@ -33,7 +33,7 @@ class LimitsParagraph(Paragraph):
         self.list.set([self._row(part, limit, q) for limit in part.limits])
         self.add.set(
             Link("stress", "+ stress limit", lambda _key: changes.add_stress_limit(self.document)),
-            "   ",
+            SEPARATOR,
             Link(
                 "displacement",
                 "+ displacement limit",

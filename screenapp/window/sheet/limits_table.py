@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from PySide6.QtWidgets import QWidget
 
+from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
 from screenapp.window.document import Document
-from screenapp.model.estimate_text import value_text
 from screenapp.window.figure_table import Column, FigureTable, Line
 
 COLUMNS = (

@@ -26,7 +26,7 @@ from screenapp.window.document import Document
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf, Rows
 from screenapp.window.sheet.sentence import Sentence
@@ -69,10 +69,10 @@ class CaseBlock(QWidget):
         pieces: list[Piece | str] = [add]
         if len(document.part.cases) > 1:
             gone = Link("remove", "remove the case", lambda _key: change.remove())
-            pieces += ["   ", gone]
+            pieces += [SEPARATOR, gone]
         if number != document.view.case and len(document.part.cases) > 1:
             show = Link("view", "show it on the board", lambda _key: document.look(case=number))
-            pieces += ["   ", show]
+            pieces += [SEPARATOR, show]
         self.foot.set(*pieces)
 
     def _choices(self) -> tuple[Choice, ...]:
@@ -144,6 +144,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
     chosen: list[Choice] = []
     for found in everything(document.part):
         record = found.record
+        kinds: tuple[str, ...]
         if found.kind == "hole":
             kinds = ("force", "line", "pressure", "shear")
             if isinstance(record, CircleHole):
@@ -169,6 +170,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
 
 def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowOf:
     change = changes.LoadChange(document, load.id)
+    also: tuple[str, ...]
     if isinstance(load, GravityLoad):
         where, also, name = "everywhere", (), "own weight"
     else:
@@ -225,4 +227,4 @@ def _load_pieces(
         hint=f"right, up, left, down, or an angle from +x; now {parts}",
     )
     amount = q.value("size", size, kind, f"Size of {name}", change.resize, f"Now {parts}")
-    return (lead, amount, " ", way)
+    return (lead, amount, " at " if way.text.endswith("°") else " ", way)

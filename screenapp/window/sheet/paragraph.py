@@ -9,7 +9,7 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 from screenapp.model.errors import Fault
 from screenapp.window import theme
 from screenapp.window.document import Document
-from screenapp.window.sheet.field import LINE
+from screenapp.window.sheet.field import LINE, PAD
 from screenapp.window.sheet.mark import Mark, State
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.rows import RowOf, Rows
@@ -41,10 +41,11 @@ class Paragraph(QWidget):
         heading = QLabel(self.title, self)
         heading.setFont(theme.font(theme.TEXT_BODY, QFont.Weight.DemiBold))
         heading.setFixedHeight(LINE)
+        heading.setContentsMargins(PAD, 0, 0, 0)
         self.missing = Sentence(self)
         self.missing.hide()
         self._faults = Rows(document, 0, self)
-        column = QVBoxLayout()
+        self.column = column = QVBoxLayout()
         column.setContentsMargins(0, 0, 0, 0)
         column.setSpacing(2)
         column.addWidget(heading)

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import find, hole_word
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole

@@ -79,6 +79,9 @@ class Link:
 
 Piece = Words | Value | Link
 
+SEPARATOR = Words(" · ", quiet=True)
+"""Between links that stand side by side."""
+
 
 def plain_text(pieces: tuple[Piece, ...]) -> str:
     """The sentence as a reader hears it."""

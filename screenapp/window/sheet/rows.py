@@ -98,7 +98,7 @@ class Row(QWidget):
         self.cross = Cross(self)
         self.cross.clicked.connect(self.remove)
         line = QHBoxLayout(self)
-        line.setContentsMargins(4, 1, 0, 1)
+        line.setContentsMargins(0, 1, 0, 1)
         line.setSpacing(4)
         line.addWidget(self.where, 0, Qt.AlignmentFlag.AlignTop)
         line.addWidget(self.sentence, 1)

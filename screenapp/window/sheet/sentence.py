@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable
 from dataclasses import dataclass
 
@@ -10,7 +11,7 @@ from PySide6.QtGui import QFont, QFontMetricsF, QPainter, QPaintEvent, QResizeEv
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from screenapp.window import theme
-from screenapp.window.sheet.field import LINE, Field, baseline
+from screenapp.window.sheet.field import LINE, PAD, Field, baseline
 from screenapp.window.sheet.pieces import Link, Piece, Value, Words, plain_text
 
 
@@ -100,7 +101,7 @@ class Sentence(QWidget):
         wide = 0.0
         for group in self._groups:
             wide += sum(self._width(bit) for bit in group) + self._space()
-        width = min(420, max(40, int(wide) + 1))
+        width = min(420, max(40, int(wide) + 1 + 2 * PAD))
         return QSize(width, self.heightForWidth(max(width, self.width() or width)))
 
     def minimumSizeHint(self) -> QSize:
@@ -135,7 +136,9 @@ class Sentence(QWidget):
 
     def _flow(self, width: int, place: bool) -> int:
         """Set the groups in lines of `width` [px]; returns the height [px]."""
-        x, line = 0.0, 0
+        # lines begin PAD from the left, so that the ring of a field there has room
+        x, line, start = float(PAD), 0, float(PAD)
+        width -= PAD
         space = self._space()
         placed: list[tuple[QPointF, str, Words]] = []
         base = baseline(self.font())
@@ -146,19 +149,21 @@ class Sentence(QWidget):
             groups += [[_Bit(word, said)] for word in self._complaint.split()]
         for number, group in enumerate(groups):
             wide = sum(self._width(bit) for bit in group)
-            if number == complaint_from and number > 0:
-                x, line = 0.0, line + 1
-            elif x > 0.0 and x + space + wide > width:
-                x, line = 0.0, line + 1
-            elif x > 0.0:
+            if (number == complaint_from and number > 0) or (
+                x > start and x + space + wide > width
+            ):
+                x, line = start, line + 1
+            elif x > start:
                 x += space
             for bit in group:
                 wide = self._width(bit)
                 if bit.words is not None:
                     placed.append((QPointF(x, line * LINE + base), bit.text, bit.words))
                 elif place:
-                    room = min(wide, max(40.0, width - x))
-                    self._fields[bit.key].setGeometry(round(x), line * LINE, round(room), LINE)
+                    room = min(wide, max(40.0, width - x)) + 2 * PAD
+                    self._fields[bit.key].setGeometry(
+                        math.floor(x) - PAD, line * LINE, math.ceil(room), LINE
+                    )
                 x += wide
         if place:
             self._placed = placed
@@ -166,7 +171,7 @@ class Sentence(QWidget):
 
     def _width(self, bit: _Bit) -> float:
         if bit.words is None:
-            return float(self._fields[bit.key].sizeHint().width())
+            return float(self._fields[bit.key].sizeHint().width() - 2 * PAD)
         return QFontMetricsF(self._font_of(bit.words)).horizontalAdvance(bit.text)
 
     def _space(self) -> float:

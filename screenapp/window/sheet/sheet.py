@@ -62,16 +62,16 @@ class Sheet(QWidget):
         for paragraph in self.paragraphs:
             column.addWidget(paragraph)
         column.addStretch(1)
-        self.scroll = QScrollArea(self)
-        self.scroll.setWidget(self.page)
-        self.scroll.setWidgetResizable(True)
-        self.scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
-        self.scroll.setFocusPolicy(Qt.FocusPolicy.NoFocus)
+        self.scroll_area = QScrollArea(self)
+        self.scroll_area.setWidget(self.page)
+        self.scroll_area.setWidgetResizable(True)
+        self.scroll_area.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        self.scroll_area.setFocusPolicy(Qt.FocusPolicy.NoFocus)
         whole = QVBoxLayout(self)
         whole.setContentsMargins(0, 0, 0, 0)
         whole.setSpacing(0)
         whole.addWidget(self.head)
-        whole.addWidget(self.scroll, 1)
+        whole.addWidget(self.scroll_area, 1)
         whole.addWidget(self.foot)
         self._soon = QTimer(self)
         self._soon.setSingleShot(True)
@@ -123,18 +123,18 @@ class Sheet(QWidget):
     def _step_to(self, widget: QWidget, forward: bool) -> None:
         widget.setFocus(_reason(forward))
         if self.page.isAncestorOf(widget):
-            self.scroll.ensureWidgetVisible(widget, 0, 40)
+            self.scroll_area.ensureWidgetVisible(widget, 0, 40)
 
     def _outside(self, forward: bool) -> QWidget | None:
         """The stop beyond the sheet's end."""
-        widget: QWidget = self
-        while True:
+        widget: QWidget | None = self
+        while widget is not None:
             widget = widget.nextInFocusChain() if forward else widget.previousInFocusChain()
-            if widget is self or widget is None:
+            if widget is None or widget is self:
                 return None
-            inside = self.isAncestorOf(widget)
-            if not inside and widget.isVisibleTo(self.window()) and _takes_tab(widget):
+            if not self.isAncestorOf(widget) and _takes_tab(widget):
                 return widget
+        return None
 
     # --- painting -----------------------------------------------------------------------------
 
@@ -179,7 +179,8 @@ def _in_order(widget: QWidget) -> Iterator[QWidget]:
     elif isinstance(widget, Field):
         yield widget
     elif isinstance(widget, QScrollArea):
-        yield from _in_order(widget.widget())
+        if (page := widget.widget()) is not None:
+            yield from _in_order(page)
     else:
         if (layout := widget.layout()) is not None:
             yield from _in_layout(layout)
@@ -189,6 +190,8 @@ def _in_order(widget: QWidget) -> Iterator[QWidget]:
 def _in_layout(layout: QLayout) -> Iterator[QWidget]:
     for i in range(layout.count()):
         item = layout.itemAt(i)
+        if item is None:
+            continue
         if (widget := item.widget()) is not None:
             yield from _in_order(widget)
         elif (inner := item.layout()) is not None:

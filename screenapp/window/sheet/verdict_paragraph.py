@@ -23,8 +23,9 @@ class VerdictParagraph(Paragraph):
         self.table = LimitsTable(self.document, self)
         self.body.addWidget(self.table)
         self.reasons = self.rows(0)
-        self.cautions = self.sentence()
+        self.cautions = self.rows(0)
         self.always = self.sentence()
+        self.column.addWidget(self.always)  # after all else
         self.always.set(ALWAYS)
 
     def fill(self) -> tuple[Piece | str, ...]:
@@ -36,9 +37,10 @@ class VerdictParagraph(Paragraph):
         self.reasons.set(
             [RowOf(f"reason {i}", (), (Words(t, quiet=quiet),)) for i, t in enumerate(texts)]
         )
-        cautions = " ".join(f"{capital(c)}." for c in findings.cautions) if findings else ""
-        self.cautions.set(Words(cautions, colour="doubt"))
-        self.cautions.setVisible(bool(cautions))
+        cautions = [f"{capital(c)}." for c in findings.cautions] if findings else []
+        self.cautions.set(
+            [RowOf(f"caution {i}", (), (Words(t, colour="doubt"),)) for i, t in enumerate(cautions)]
+        )
         if findings is None:
             return ("The part has not been screened.",)
         return ()
