@@ -83,7 +83,7 @@ def _product(text: str, kind: Kind) -> Any:
         at = token.end()
         sign, one, name, exponent = token.groups()
         if sign in ("*", "/"):
-            if wants_factor or (sign == "*" and at == token.end() == 1):
+            if wants_factor or (sign == "*" and token.start() == 0):
                 raise _unknown(text, kind)
             divides, wants_factor = sign == "/", True
         elif sign == "(" and not inside:
@@ -113,6 +113,8 @@ def _named(name: str, text: str, kind: Kind) -> Any:
     known = _ALIASES.get(name, name)
     if kind is KINDS["acceleration"] and name == "g":
         known = "standard_gravity"
+    if not known.isidentifier():  # "¼" counts as a letter to the pattern, but names nothing
+        raise _unknown(text, kind, name)
     try:
         unit = registry.Quantity(Fraction(1)) * registry.Quantity(
             Fraction(1), registry.parse_units(known)

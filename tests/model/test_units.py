@@ -132,6 +132,7 @@ def test_a_bare_number_is_in_the_display_unit() -> None:
         ("1e999", "length", "out of range", ""),
         ("1e99999999999", "length", "out of range", ""),
         ("9" * 61, "length", "too long", ""),
+        ("0¼", "length", "not known", ""),
         ("5 N/", "force", "not known", ""),
         ("5 *N", "force", "not known", ""),
         ("5 (N", "force", "not known", ""),
