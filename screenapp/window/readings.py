@@ -161,15 +161,23 @@ def _figures(part: Part, reading: Reading | None) -> tuple[str, ...]:
 
     def text(name: str) -> str:
         assert reading is not None
+        if name not in reading.values:
+            return DASH
         return value_text(reading.values[name], "stress", part.display_units, unit=False)
 
     return (
         text("von_mises"),
         text("sigma_1"),
         text("sigma_2"),
-        value_text(size_of(reading), "displacement", part.display_units, unit=False),
+        _moved(part, reading),
         reading.trust,
     )
+
+
+def _moved(part: Part, reading: Reading) -> str:
+    if not {"u_x", "u_y"} <= reading.values.keys():
+        return DASH
+    return value_text(size_of(reading), "displacement", part.display_units, unit=False)
 
 
 def size_of(reading: Reading) -> Estimate:

@@ -321,12 +321,11 @@ def _first_load(kind: str, id_: str, on: str) -> Load:
         return ShearLoad(id_, on, FIRST_LINE)
     if kind == "line":
         return LineLoad(id_, on, 0.0, -FIRST_LINE)
-    made: type[BearingLoad | ForceLoad | PointLoad] = {
-        "bearing": BearingLoad,
-        "force": ForceLoad,
-        "point": PointLoad,
-    }[kind]
-    return made(id_, on, 0.0, -FIRST_FORCE)
+    if kind == "bearing":
+        return BearingLoad(id_, on, 0.0, -FIRST_FORCE)
+    if kind == "force":
+        return ForceLoad(id_, on, 0.0, -FIRST_FORCE)
+    return PointLoad(id_, on, 0.0, -FIRST_FORCE)
 
 
 class CaseChange:

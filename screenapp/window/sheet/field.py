@@ -153,7 +153,7 @@ class Field(QWidget):
             return
         had_focus = editor.hasFocus()
         editor.removeEventFilter(self)
-        self.setFocusProxy(None)
+        self.setFocusProxy(None)  # type: ignore[arg-type]
         editor.hide()
         editor.deleteLater()
         if had_focus:
@@ -162,7 +162,7 @@ class Field(QWidget):
         self.resized.emit()
         self.update()
 
-    def eventFilter(self, watched: object, event: QEvent) -> bool:  # type: ignore[override]
+    def eventFilter(self, watched: object, event: QEvent) -> bool:
         """Enter accepts, Esc restores, leaving accepts if it can."""
         if watched is self._editor and self._editor is not None:
             if event.type() == QEvent.Type.KeyPress and isinstance(event, QKeyEvent):
