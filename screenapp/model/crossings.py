@@ -99,7 +99,8 @@ def _meetings(shape: Shape, table: CurveTable, touch: float) -> tuple[list[Fault
     i, j = close_pairs(table, touch)
     plain = np.array([shape.curves[first].kind == "hole" for first, _ in shape.loops])
     same_plain = (table.loop[i] == table.loop[j]) & plain[table.loop[i]]  # sound by making
-    i, j = i[~same_plain], j[~same_plain]
+    open_ = ~same_plain & ~_meet_only_at_joint(shape, table, i, j)
+    i, j = i[open_], j[open_]
     pair, points, crosses = _meeting_points(shape, table, i, j, touch)
     faults: list[Fault] = []
     spoilt: set[int] = set()
@@ -114,6 +115,23 @@ def _meetings(shape: Shape, table: CurveTable, touch: float) -> tuple[list[Fault
         said.add(names)
         faults.append(_meeting_fault(shape, a, b, names, point, bool(cross)))
     return faults, spoilt
+
+
+def _meet_only_at_joint(shape: Shape, table: CurveTable, i: Ints, j: Ints) -> NDArray[np.bool_]:
+    """Neighbours that cannot meet again: two straight edges, or an edge and an arc tangent to it.
+
+    Most pairs of a boundary are such, so they are set aside cheaply.
+    """
+    following = following_pieces(shape)
+    here = np.arange(len(table))
+    u = table.tangents(here, np.ones(len(here)))
+    v = table.tangents(here, np.zeros(len(here)))[following]
+    smooth = (np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]) < 1e-6) & (np.sum(u * v, axis=1) > 0.0)
+    forward, backward = following[i] == j, following[j] == i
+    joint = np.where(forward, i, j)
+    straight = ~table.arc[i] & ~table.arc[j]
+    one_arc = table.arc[i] ^ table.arc[j]
+    return np.asarray((forward ^ backward) & (straight | (one_arc & smooth[joint])))
 
 
 def _meeting_points(
@@ -213,13 +231,19 @@ def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[
     firsts = table.start[[shape.loops[n][0] for n in holes]]
     faults: list[Fault] = []
     inside = table.inside(0, firsts)
+    drawn = table.start[:1]
     for n, point, ok in zip(holes, firsts, inside, strict=True):
         if not ok and len(faults) < MOST:
             hole = shape.hole_ids[n] or ""
+            around = bool(table.inside(n, drawn)[0])
             faults.append(
                 Fault(
-                    f"hole {hole} lies outside the outline",
-                    "move the hole into the outline or remove it",
+                    f"hole {hole} surrounds the whole outline"
+                    if around
+                    else f"hole {hole} lies outside the outline",
+                    "make the hole smaller or remove it"
+                    if around
+                    else "move the hole into the outline or remove it",
                     f"holes.{hole}",
                     (hole,),
                     (float(point[0]), float(point[1])),

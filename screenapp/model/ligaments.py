@@ -51,7 +51,9 @@ def ligaments(shape: Shape, below: float, table: CurveTable | None = None) -> li
     table = table if table is not None else CurveTable.of(shape.curves)
     i, j = close_pairs(table, below)
     following = following_pieces(shape)
+    plain = np.array([c.kind == "hole" for c in shape.curves])
     apart = (following[i] != j) & (following[j] != i)
+    apart &= ~plain[i] | (table.loop[i] != table.loop[j])  # across a round hole is no material
     i, j = i[apart], j[apart]
     near = closest_approaches(table, i, j)
     a, b, gap = i[near.pair], j[near.pair], near.gap

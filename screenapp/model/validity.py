@@ -69,7 +69,7 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *probe_faults(part),
     ]
     if shape is not None and table is not None:
-        faults += element_count_faults(part.mesh, shape.area)
+        faults += element_count_faults(part.mesh, shape)
         faults += cautions_of(part, shape, table)
     ordered = [f for f in faults if f.blocks] + [f for f in faults if not f.blocks]
     return tuple(ordered), shape

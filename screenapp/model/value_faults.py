@@ -17,6 +17,7 @@ from screenapp.model.part import (
     StressLimit,
     WallState,
 )
+from screenapp.model.shape import Shape
 from screenapp.model.size_faults import FARTHEST, SMALLEST
 
 TIGHTEST, LOOSEST = 0.0005, 0.2
@@ -205,10 +206,11 @@ def mesh_faults(mesh: MeshWishes) -> Iterator[Fault]:
         )
 
 
-def element_count_faults(mesh: MeshWishes, area: float) -> Iterator[Fault]:
+def element_count_faults(mesh: MeshWishes, shape: Shape) -> Iterator[Fault]:
     """An element size that asks for more elements than any laptop holds."""
     if mesh.size is None or not SMALLEST <= mesh.size <= FARTHEST:
         return
+    area = shape.area
     if area > MOST_ELEMENTS * mesh.size**2:
         yield Fault(
             f"elements of {mesh.size:g} mm would be about {area / mesh.size**2:.1e} in number",

@@ -90,7 +90,7 @@ def test_rounds_of_any_size_are_no_touch(round_: float) -> None:
         (SlotHole("h1", (50.0, 25.0), 60.0, 10.0, 90.0), "cross"),
         (LoopHole("h1", loop([(50, 0), (60, 20), (40, 20)], prefix="b")), "touch"),
         (CircleHole("h1", (150.0, 25.0), 10.0), "outside"),
-        (CircleHole("h1", (50.0, 25.0), 500.0), "outside"),
+        (CircleHole("h1", (50.0, 25.0), 500.0), "surrounds"),
         (LoopHole("h1", PLATE), "touch"),
     ],
 )
