@@ -18,6 +18,7 @@ from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
 from screenapp.mechanics.energy_error import energy_error
 from screenapp.mechanics.quadrature import gauss_square
 from screenapp.mechanics.strain_displacement import element_strains
+from screenapp.mechanics.support_tractions import supported_stress
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape
@@ -36,15 +37,19 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in part.cases])
     held = constraints.held_sides(part, shape, mesh)
     inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
+    chains = boundary_chains(shape, mesh)
+    at_supports = supported_stress(
+        mesh, chains, solution, held, traction, part.wall.thickness, inside[:, mesh.side_nodes]
+    )
     samples = edge_strains(mesh, solution.displacements, solution.element.startswith("quad4"))
     side = recover_edge_stress(
         mesh,
-        boundary_chains(shape, mesh),
+        chains,
         samples,
         traction,
         held,
         disturbed_corners(part, mesh),
-        inside[:, mesh.side_nodes],
+        at_supports,
         hooke,
     )
     nodal = with_edges(mesh, inside, side)

@@ -86,6 +86,7 @@ def solve_system(
         residual=residual,
         unknowns=reduced.shape[0],
         internal_modes=modes,
+        support_forces=support_forces,
     )
 
 

@@ -47,6 +47,8 @@ class Solution:
         unknowns: number of free displacement components solved for.
         internal_modes: amplitudes of the incompatible modes,
             (n_cases, n_elements, 4), only for "quad4-incompatible"; else None.
+        support_forces: what the supports give at each node, (n_cases, n_nodes, 2) [N]; None where
+            it was not kept.
     """
 
     element: ElementName
@@ -56,6 +58,7 @@ class Solution:
     residual: float
     unknowns: int
     internal_modes: Floats | None = None
+    support_forces: Floats | None = None
 
 
 @dataclass(frozen=True, eq=False)
