@@ -36,6 +36,7 @@ def run(path: Path | None) -> int:
     theme.choose(settings.theme)
     dress(app)
     window = MainWindow(screen, Mesher, settings)
+    app.aboutToQuit.connect(window.screener.shut_down)
     window.show()
     if path is not None:
         QTimer.singleShot(0, window, lambda: window.files.open(path))

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 from dataclasses import replace
 
 import pytest
@@ -183,7 +184,7 @@ def test_tab_reads_the_sheet_from_top_to_bottom_and_back(sheet: Sheet) -> None:
     places = [
         w.mapTo(sheet.page, w.rect().center()).y() for w in stops if sheet.page.isAncestorOf(w)
     ]
-    assert all(b >= a - 12 for a, b in zip(places, places[1:], strict=False))
+    assert all(b >= a - 12 for a, b in itertools.pairwise(places))
 
 
 def test_a_value_reached_by_tab_is_scrolled_to(sheet: Sheet) -> None:

@@ -56,6 +56,7 @@ class Sentence(QWidget):
         if made == self._pieces:
             return
         self._pieces = made
+        self._groups = []  # fields ask for room while they change: not before all are there
         wanted = {p.key: p for p in made if isinstance(p, Value | Link)}
         for key in [k for k in self._fields if k not in wanted]:
             self._drop(key)

@@ -1,0 +1,342 @@
+"""The eight paragraphs: what they say, what is open, and what is lit together."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import pytest
+from PySide6.QtCore import QPoint, Qt
+from PySide6.QtTest import QTest
+from PySide6.QtWidgets import QApplication
+from pytestqt.qtbot import QtBot
+
+from screenapp.model.part import (
+    BearingLoad,
+    CircleHole,
+    DisplacementLimit,
+    FixedSupport,
+    ForceLoad,
+    GravityLoad,
+    Part,
+    PrescribedSupport,
+    RollerSupport,
+    StressLimit,
+)
+from screenapp.window.document import Document
+from screenapp.window.sheet.findings_paragraph import FindingsParagraph
+from screenapp.window.sheet.held_paragraph import HeldParagraph
+from screenapp.window.sheet.limits_paragraph import LimitsParagraph
+from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
+from screenapp.window.sheet.mesh_paragraph import MeshParagraph
+from screenapp.window.sheet.part_paragraph import PartParagraph
+from screenapp.window.sheet.sheet import Sheet
+from screenapp.window.sheet.verdict_paragraph import ALWAYS, VerdictParagraph
+from tests.window.fabricate import plate
+from tests.window.window_kit import made_up, pick, settle, texts, type_into
+
+
+def shown(qtbot: QtBot, part: Part) -> Sheet:
+    """The sheet of a part."""
+    made = Sheet(Document(part))
+    qtbot.addWidget(made)
+    made.resize(540, 900)
+    made.show()
+    made.activateWindow()
+    settle()
+    return made
+
+
+@pytest.fixture
+def sheet(qtbot: QtBot) -> Sheet:
+    """The sheet of a strip with a hole."""
+    return shown(qtbot, plate())
+
+
+def the(sheet: Sheet, kind: type) -> object:
+    """The paragraph of a kind."""
+    return next(p for p in sheet.paragraphs if isinstance(p, kind))
+
+
+def states(sheet: Sheet) -> list[str]:
+    """States of the eight marks."""
+    return [p.mark.state for p in sheet.paragraphs]
+
+
+def test_a_new_part_is_open_everywhere_but_in_its_mesh(qtbot: QtBot) -> None:
+    sheet = shown(qtbot, Part())
+    assert states(sheet) == ["open"] * 5 + ["set"] + ["open"] * 2
+    for paragraph in sheet.paragraphs:
+        assert paragraph.missing.isVisibleTo(sheet) == (paragraph.state == "open")
+    said = texts(sheet)
+    assert len(said) == len(set(said)), "nothing is said twice"
+    assert not sheet.foot.button.isEnabled()
+    assert "no outline" in sheet.foot.button.toolTip()
+
+
+def test_a_complete_part_is_set_until_findings_are_wanted(sheet: Sheet) -> None:
+    assert states(sheet) == ["set"] * 6 + ["open"] * 2
+    assert sheet.foot.button.isEnabled()
+    assert ALWAYS in texts(sheet)
+
+
+def test_the_part_in_words(sheet: Sheet) -> None:
+    paragraph = the(sheet, PartParagraph)
+    assert isinstance(paragraph, PartParagraph)
+    # 120 × 80 less a hole of 20: 9285.8 mm², 4 mm thick of 7850 kg/m³ is 291.6 g
+    assert paragraph.summary.text.startswith(
+        "Outline of 4 edges, 1 hole; 120 × 80 mm, 9286 mm², 292 g."
+    )
+    type_into(paragraph.holes.row("h1").sentence.field("diameter"), "24")
+    type_into(paragraph.holes.row("h1").sentence.field("x"), "5")
+    assert sheet.document.part.holes == (CircleHole("h1", (5.0, 0.0), 24.0),)
+    sheet.document.select("c2")
+    settle()
+    type_into(paragraph.picked.row("c2").sentence.field("round"), "8 mm")
+    outline = sheet.document.part.outline
+    assert outline is not None
+    assert outline.corners[1].round == 8.0
+
+
+def test_other_units_show_other_numbers_and_store_the_same(sheet: Sheet) -> None:
+    paragraph = the(sheet, PartParagraph)
+    assert isinstance(paragraph, PartParagraph)
+    wall = sheet.document.part.wall
+    pick(paragraph.summary.field("units"), "in, lbf, ksi")
+    assert "4.724 × 3.15 in" in paragraph.summary.text
+    assert sheet.document.part.wall == wall
+
+
+# --- supports -------------------------------------------------------------------------------
+
+
+def held(sheet: Sheet) -> HeldParagraph:
+    paragraph = the(sheet, HeldParagraph)
+    assert isinstance(paragraph, HeldParagraph)
+    return paragraph
+
+
+def test_a_support_is_added_changed_and_removed(sheet: Sheet) -> None:
+    pick(held(sheet).add.field("add"), "hole h1")
+    document = sheet.document
+    assert document.part.supports[1:] == (FixedSupport("s2", "h1"),)
+    assert document.selection == ("s2",)
+    row = held(sheet).list.row("s2")
+    pick(row.sentence.field("kind"), "held along one direction")
+    type_into(row.sentence.field("angle"), "30°")
+    assert document.part.supports[1] == RollerSupport("s2", "h1", 30.0)
+    pick(row.sentence.field("kind"), "moved by a given amount")
+    type_into(row.sentence.field("x"), "0.2 mm")
+    type_into(row.sentence.field("y"), "free")
+    assert document.part.supports[1] == PrescribedSupport("s2", "h1", 0.2, None)
+    QTest.mouseClick(row.cross, Qt.MouseButton.LeftButton)
+    settle()
+    assert document.part.supports == plate().supports
+    assert held(sheet).list.ids == ("s1",)
+
+
+def test_delete_on_a_value_removes_its_row(sheet: Sheet) -> None:
+    field = held(sheet).list.row("s1").sentence.field("kind")
+    field.setFocus()
+    QTest.keyClick(field, Qt.Key.Key_Delete)
+    settle()
+    assert sheet.document.part.supports == ()
+    assert held(sheet).state == "open"
+    assert "Nothing holds the part" in held(sheet).missing.text
+    pick(held(sheet).missing.field("hold"), "edge e4")
+    assert held(sheet).state == "set"
+
+
+def test_a_part_that_can_still_move_says_so_in_its_paragraph(sheet: Sheet) -> None:
+    pick(held(sheet).list.row("s1").sentence.field("kind"), "held across its boundary")
+    assert held(sheet).state == "open"
+    assert any("sliding along y" in text for text in texts(held(sheet)))
+
+
+# --- loads ----------------------------------------------------------------------------------
+
+
+def loaded(sheet: Sheet) -> LoadedParagraph:
+    paragraph = the(sheet, LoadedParagraph)
+    assert isinstance(paragraph, LoadedParagraph)
+    return paragraph
+
+
+def test_loads_are_read_and_changed_by_size_and_direction(sheet: Sheet) -> None:
+    row = loaded(sheet).block("case1").loads.row("l1")
+    assert row.sentence.text == "pulled by 16000 N right"
+    type_into(row.sentence.field("way"), "down")
+    type_into(row.sentence.field("size"), "2 kN")
+    load = sheet.document.part.cases[0].loads[0]
+    assert load == ForceLoad("l1", "e2", 0.0, -2000.0)
+    type_into(row.sentence.field("way"), "30")
+    load = sheet.document.part.cases[0].loads[0]
+    assert isinstance(load, ForceLoad)
+    assert (load.x, load.y) == pytest.approx((2000 * 3**0.5 / 2, 1000.0))
+    type_into(row.sentence.field("way"), "sideways")
+    assert "not a direction" in row.sentence.complaint
+
+
+def test_loads_of_every_kind_can_be_added_by_place(sheet: Sheet) -> None:
+    block = loaded(sheet).block("case1")
+    pick(block.foot.field("add"), "hole h1", "a pin bears on it")
+    pick(block.foot.field("add"), "edge e1", "a pressure")
+    pick(block.foot.field("add"), "the part's own weight")
+    kinds = [type(load).__name__ for load in sheet.document.part.cases[0].loads]
+    assert kinds == ["ForceLoad", "BearingLoad", "PressureLoad", "GravityLoad"]
+    assert isinstance(sheet.document.part.cases[0].loads[1], BearingLoad)
+    weight = sheet.document.part.cases[0].loads[3]
+    assert isinstance(weight, GravityLoad)
+    assert "own weight under 9.807 m/s² down" in block.loads.row(weight.id).sentence.text
+
+
+def test_cases_are_added_renamed_shown_and_removed(sheet: Sheet) -> None:
+    document = sheet.document
+    QTest.mouseClick(loaded(sheet).add.field("add"), Qt.MouseButton.LeftButton)
+    settle()
+    assert [c.name for c in document.part.cases][:2] == ["Pull", "Push"]
+    assert document.view.case == 2
+    new = document.part.cases[2]
+    type_into(loaded(sheet).block(new.id).head.field("name"), "Push", Qt.Key.Key_Return)
+    assert "Push" in loaded(sheet).block(new.id).head.complaint
+    editor = loaded(sheet).block(new.id).head.field("name").editor
+    assert editor is not None
+    editor.selectAll()
+    QTest.keyClicks(editor, "Jolt")
+    QTest.keyClick(editor, Qt.Key.Key_Return)
+    assert document.part.cases[2].name == "Jolt"
+    QTest.mouseClick(loaded(sheet).block("case1").foot.field("view"), Qt.MouseButton.LeftButton)
+    assert document.view.case == 0
+    QTest.mouseClick(loaded(sheet).block(new.id).foot.field("remove"), Qt.MouseButton.LeftButton)
+    settle()
+    assert [c.name for c in document.part.cases] == ["Pull", "Push"]
+
+
+def test_the_first_load_brings_its_case(qtbot: QtBot) -> None:
+    sheet = shown(qtbot, replace(plate(), cases=()))
+    pick(loaded(sheet).missing.field("load"), "edge e2", "a force, spread evenly")
+    assert [type(x) for c in sheet.document.part.cases for x in c.loads] == [ForceLoad]
+
+
+# --- limits and mesh ------------------------------------------------------------------------
+
+
+def test_limits_say_what_they_allow(sheet: Sheet) -> None:
+    paragraph = the(sheet, LimitsParagraph)
+    assert isinstance(paragraph, LimitsParagraph)
+    row = paragraph.list.row("m1")
+    # 235 / 1.5
+    assert row.sentence.text.endswith("stays under the proof stress: at most 156.7 MPa.")
+    type_into(row.sentence.field("factor"), "2")
+    pick(row.sentence.field("measure"), "largest tension")
+    assert sheet.document.part.limits[0] == StressLimit("m1", "sigma_1", factor=2.0)
+    QTest.mouseClick(paragraph.add.field("displacement"), Qt.MouseButton.LeftButton)
+    settle()
+    new = sheet.document.part.limits[1]
+    assert isinstance(new, DisplacementLimit)
+    type_into(paragraph.list.row(new.id).sentence.field("most"), "0.5")
+    assert sheet.document.part.limits[1] == DisplacementLimit(new.id, 0.5)
+    pick(row.sentence.field("against"), "tensile strength")
+    told = [*texts(paragraph), row.sentence.complaint]
+    assert any("strength, which “Steel” has not" in text for text in told)
+
+
+def test_plain_bilinear_quads_carry_a_warning(sheet: Sheet) -> None:
+    paragraph = the(sheet, MeshParagraph)
+    assert isinstance(paragraph, MeshParagraph)
+    assert not paragraph.warning.isVisibleTo(sheet)
+    pick(paragraph.wishes.field("element"), "plain bilinear quads")
+    assert sheet.document.part.mesh.element == "quad4"
+    assert paragraph.warning.isVisibleTo(sheet)
+    assert "too stiff" in paragraph.warning.text
+    type_into(paragraph.wishes.field("tolerance"), "0.5 %")
+    type_into(paragraph.wishes.field("across"), "4")
+    type_into(paragraph.wishes.field("size"), "6 mm")
+    mesh = sheet.document.part.mesh
+    assert (mesh.tolerance, mesh.across, mesh.size) == (0.005, 4, 6.0)
+    type_into(paragraph.wishes.field("across"), "2.5")
+    assert "whole number" in paragraph.wishes.complaint
+
+
+# --- findings and verdict -------------------------------------------------------------------
+
+
+def test_findings_fill_the_last_paragraphs(sheet: Sheet) -> None:
+    document = sheet.document
+    document.set_findings(made_up(document.part))
+    settle()
+    assert states(sheet) == ["set"] * 8
+    findings, verdict = the(sheet, FindingsParagraph), the(sheet, VerdictParagraph)
+    assert isinstance(findings, FindingsParagraph)
+    assert isinstance(verdict, VerdictParagraph)
+    lines = findings.table.figures.lines
+    # 150.2 MPa · 1.5 / 235 MPa = 0.959
+    assert lines[0].texts == ("hole h1, 90°", "Pull", "150.2 ± 0.6", "0.96", "settled")
+    assert verdict.table.figures.lines[0].texts[-1] == "holds"
+    assert sheet.head.verdict.standing == "holds"
+    assert sheet.head.verdict.headline.text == "Holds, 1.04 in hand"
+    assert "up to date" in sheet.foot.text.text()
+
+
+def test_a_change_puts_findings_out_of_date_and_undo_takes_it_back(sheet: Sheet) -> None:
+    document = sheet.document
+    document.set_findings(made_up(document.part))
+    type_into(sheet.paragraph(2).wall.field("thickness"), "6")  # type: ignore[attr-defined]
+    assert states(sheet)[5:] == ["out of date"] * 3
+    assert sheet.head.verdict.standing == "out of date"
+    assert sheet.head.verdict.headline.text == "Out of date"
+    assert "Holds, 1.04 in hand" in sheet.head.verdict.detail.text
+    document.undo()
+    settle()
+    assert states(sheet)[5:] == ["set"] * 3
+    assert sheet.head.verdict.standing == "holds"
+
+
+def test_a_rising_peak_has_no_value_only_a_bound(sheet: Sheet) -> None:
+    from screenapp.model.part_json import screening_key
+    from tests.window.fabricate import findings
+
+    document = sheet.document
+    document.set_findings(findings(document.part, screening_key(document.part), trust="rising"))
+    settle()
+    paragraph = the(sheet, FindingsParagraph)
+    assert isinstance(paragraph, FindingsParagraph)
+    texts_ = paragraph.table.figures.lines[0].texts
+    assert texts_[2:] == ("≥ 310", "≥ 1.98", "rising")
+
+
+# --- lit together ---------------------------------------------------------------------------
+
+
+def test_hovering_a_row_lights_it_on_the_board_and_back(sheet: Sheet) -> None:
+    document = sheet.document
+    row = held(sheet).list.row("s1")
+    QTest.mouseMove(row, QPoint(row.width() // 2, row.height() // 2))
+    QApplication.processEvents()
+    row.enterEvent(_enter(row))
+    assert document.hovered == "s1"
+    row.leaveEvent(_leave())
+    assert document.hovered is None
+    document.hover("e4")  # the edge that it holds
+    assert row.lit
+    document.hover("l1")
+    assert not row.lit
+    assert loaded(sheet).block("case1").loads.row("l1").lit
+
+
+def test_a_click_on_a_row_selects_it(sheet: Sheet) -> None:
+    row = held(sheet).list.row("s1")
+    QTest.mouseClick(row.where, Qt.MouseButton.LeftButton, pos=QPoint(40, 10))
+    assert sheet.document.selection == ("s1",)
+
+
+def _enter(widget: object) -> object:
+    from PySide6.QtCore import QPointF
+    from PySide6.QtGui import QEnterEvent
+
+    return QEnterEvent(QPointF(5, 5), QPointF(5, 5), QPointF(5, 5))
+
+
+def _leave() -> object:
+    from PySide6.QtCore import QEvent
+
+    return QEvent(QEvent.Type.Leave)
