@@ -11,6 +11,7 @@ from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.elided_label import ElidedLabel
 from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
+from screenapp.window.board.quantity import warm_up
 from screenapp.window.board.tool_strip import ToolStrip
 from screenapp.window.board.tools.every import every_tool
 from screenapp.window.document import Document
@@ -149,6 +150,7 @@ class Board(QWidget):
         if not self._fitted:
             self._fitted = True
             self.canvas.fit()
+            warm_up()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """Keep the card in the middle."""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from threading import Thread
+
 from screenapp.model.kinds import KindName
 from screenapp.model.part import DisplayUnits
 from screenapp.model.units import format_quantity, parse_quantity
@@ -14,6 +16,11 @@ def parse(text: str, kind: KindName, units: DisplayUnits) -> float:
         QuantityError: the text is not such a quantity.
     """
     return parse_quantity(text, kind, units)
+
+
+def warm_up() -> None:
+    """Load the table of units aside: it takes half a second, which the first unit typed would."""
+    Thread(target=parse_quantity, args=("1 in", "length"), daemon=True).start()
 
 
 def written(value: float, kind: KindName, units: DisplayUnits) -> str:
