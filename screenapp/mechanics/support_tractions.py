@@ -15,7 +15,7 @@ from __future__ import annotations
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.sparse import coo_matrix
+from scipy.sparse import coo_matrix, csr_matrix
 from scipy.sparse.linalg import splu
 
 from screenapp.mechanics.boundary_chains import BoundaryChains
@@ -57,7 +57,7 @@ def supported_stress(
     found = traction + support_tractions(
         mesh, chains, held, solution.support_forces, thickness, met - traction, linear
     )
-    lack = np.where(held.any(axis=1)[:, None, None], found - met, 0.0)
+    lack = np.where(np.asarray(held.any(axis=1))[:, None, None], found - met, 0.0)
     # the symmetric tensor d with d·n = lack that adds nothing along the edge
     across = (lack * n).sum(axis=-1)
     return np.asarray(
@@ -155,7 +155,7 @@ def _equations(
     forces: Floats,
     thickness: float,
     count: int,
-) -> tuple[coo_matrix, Floats]:
+) -> tuple[csr_matrix, Floats]:
     """Mass matrix of the held sides and the reactions on its right side."""
     nodes = mesh.side_nodes[own]
     slopes = np.stack([_POINTS - 0.5, -2.0 * _POINTS, _POINTS + 0.5], axis=1)
@@ -182,7 +182,7 @@ def _corner_values(
     chains: BoundaryChains, held: Bools, own: Ints, ends: Ints, inside: Floats
 ) -> dict[int, Floats]:
     """The tractions that are taken from inside: on both sides of a corner between held sides."""
-    is_held = held.any(axis=1)
+    is_held = np.asarray(held.any(axis=1))
     known: dict[int, Floats] = {}
     for k, side in enumerate(own):
         if not chains.smooth[side] and is_held[chains.following[side]]:

@@ -1,20 +1,23 @@
 """The sizes of the next mesh, from what the last one shows.
 
 Two criteria, the smaller size wins: every element should carry the same share of the energy error
-(Zienkiewicz & Zhu 1987, exponent 1/(p+1)), and where the stress is above 0.6 of the peak, or a
-probe stands, the pointwise gap between the recovered and the elements' own stress should be a set
-share of the peak.
+(Zienkiewicz & Zhu 1987, exponent 1/(p+1)), and where the stress is above 0.6 of the peak the
+pointwise gap between the recovered and the elements' own stress should be a set share of the peak.
+Where a peak or a reading is not settled, the mesh goes on to be refined by what its band exceeds.
 """
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
+from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.singular_spots import SingularSpot
-from screenapp.model.part import Part
+from screenapp.model.findings import CaseFindings, Estimate, Reading
+from screenapp.model.part import Part, Point
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import measure
 
@@ -33,8 +36,46 @@ def order(element: str) -> int:
     return 1 if element.startswith("quad4") else 2
 
 
+@dataclass(frozen=True)
+class Target:
+    """A number that is not settled: its place [mm] and its half band over what is allowed."""
+
+    at: Point
+    excess: float
+
+
+def targets(
+    part: Part, cases: Sequence[CaseFindings], readings: Sequence[Reading]
+) -> tuple[Target, ...]:
+    """Where the next mesh must be finer because a peak or a reading is not settled."""
+    found: list[Target] = []
+    for case in cases:
+        top = case.peaks[0].estimate.value if case.peaks else 0.0
+        for peak in case.peaks:
+            if peak.estimate.trust == "unsettled":
+                allowed = part.mesh.tolerance * max(peak.estimate.value, 0.5 * top)
+                found.append(Target(peak.at, _excess(peak.estimate, allowed)))
+    for reading in readings:
+        if reading.trust == "unsettled":
+            estimate = reading.values["von_mises"]
+            allowed = part.mesh.tolerance * abs(estimate.value)
+            found.append(Target(reading.at, _excess(estimate, allowed)))
+    return tuple(found)
+
+
+def _excess(estimate: Estimate, allowed: float) -> float:
+    half = 0.5 * (estimate.high - estimate.low)
+    if allowed <= 0.0 or not math.isfinite(half):
+        return 1.0
+    return max(1.0, half / allowed)
+
+
 def wanted_sizes(
-    part: Part, last: Pass, spots: Sequence[SingularSpot], first_sizes: Sequence[float]
+    part: Part,
+    last: Pass,
+    spots: Sequence[SingularSpot],
+    first_sizes: Sequence[float],
+    open_targets: Sequence[Target] = (),
 ) -> Floats:
     """Wanted element size [mm] at each node of the last mesh, (n_nodes,).
 
@@ -43,11 +84,19 @@ def wanted_sizes(
         last: the last pass.
         spots: singular places.
         first_sizes: element size [mm] at each spot on the first pass.
+        open_targets: numbers that are not settled yet.
     """
     mesh = last.fields.mesh
     size = _nodal_sizes(last)
     factor = np.minimum(_energy_factor(part, last), _point_factor(part, last))
     wanted = size * np.clip(factor, FACTOR_LEAST, FACTOR_MOST)
+    p = order(last.fields.solution.element)
+    for target in open_targets:
+        far = np.hypot(*(mesh.nodes - target.at).T)
+        here = size[int(np.argmin(far))]
+        finer = here * min(0.7, max(FACTOR_LEAST, target.excess ** (-1.0 / p)))
+        near = far < 2.0 * here
+        wanted[near] = np.minimum(wanted[near], finer)
     for spot, first in zip(spots, first_sizes, strict=True):
         far = np.hypot(*(mesh.nodes - spot.at).T)
         here = int(np.argmin(far))
@@ -100,16 +149,4 @@ def _point_factor(part: Part, last: Pass) -> Floats:
         goal = part.mesh.tolerance * peak
         doubt = np.maximum(last.doubt[k], 1e-3 * goal)
         factor[high] = np.minimum(factor[high], (goal / doubt[high]) ** (1.0 / p))
-        if part.readings:
-            near = _round_probes(part, last)
-            own = part.mesh.tolerance * np.maximum(value, 0.2 * peak)
-            factor[near] = np.minimum(
-                factor[near], (own[near] / np.maximum(doubt[near], 1e-6 * peak)) ** (1.0 / p)
-            )
     return factor
-
-
-def _round_probes(part: Part, last: Pass) -> NDArray[np.int64]:
-    """Nodes of the elements that hold a probe."""
-    element, _ = last.reader.locator.locate(np.array([probe.at for probe in part.readings]))
-    return np.unique(last.fields.mesh.quads[element[element >= 0]])

@@ -56,7 +56,7 @@ def measure(name: str, stress: Floats, part: Part) -> Floats:
         strain = part.wall.state == "plane strain" and material is not None
         return von_mises(stress, material.poissons_ratio if strain and material else 0.0)
     first, second, _ = principal(stress)
-    return first if name == "sigma_1" else -second
+    return first if name == "sigma_1" else np.negative(second)
 
 
 def find(name: str, part: Part, shape: Shape, fields: Fields, case: int) -> list[RawPeak]:

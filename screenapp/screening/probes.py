@@ -8,21 +8,21 @@ from dataclasses import replace
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Reading
 from screenapp.model.part import Part, Probe
 from screenapp.model.shape import Shape
 from screenapp.model.solution import principal
-from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
 from screenapp.screening.passes import Pass, PointValues, passes_of
-from screenapp.screening.peaks import feature_of, measure, place_in_words, piece_at
+from screenapp.screening.peaks import feature_of, measure, piece_at, place_in_words
 from screenapp.screening.spots import spot_at
 from screenapp.screening.trust import Sample, judge, worst
 
 Floats = NDArray[np.float64]
 
-_COMPONENT_SCALE = 0.2
-"""Stress components are judged against at least this share of the von Mises stress there: a
-component that happens to pass through zero has no relative accuracy of its own."""
+_LEAST_SCALE = 0.05
+"""A reading is judged against at least this share of the case's largest stress or displacement:
+how closely a place is known where next to nothing happens does not matter."""
 
 
 def read_probes(part: Part, shape: Shape, findings: Findings) -> Findings:
@@ -42,11 +42,14 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     spots = singular_spots(part, shape)
     found: list[Reading] = []
     for k, case in enumerate(part.cases):
-        largest = float(passes[-1].measure_max("von_mises", k))
+        largest = passes[-1].measure_max("von_mises", k)
+        moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
         for i, probe in enumerate(part.readings):
             if np.isfinite(read[-1].stress[k, i]).all():
                 spot = spot_at(spots, probe.at, case.id, 1e-6 * shape.size)
-                found.append(_reading(part, shape, read, k, i, probe, case.id, spot, largest))
+                found.append(
+                    _reading(part, shape, read, k, i, probe, case.id, spot, largest, moved)
+                )
     return tuple(found)
 
 
@@ -60,28 +63,32 @@ def _reading(
     case: str,
     spot: SingularSpot | None,
     largest: float,
+    largest_moved: float,
 ) -> Reading:
-    tolerance = part.mesh.tolerance
     rate = spot.rate if spot else 0.0
+    piece = piece_at(shape, probe.at)
     columns = [_quantities(part, values.stress[k, i], values.displacement[k, i]) for values in read]
     von_mises = [column["von_mises"] for column in columns]
-    moved = max(float(np.hypot(*values.displacement[k, i])) for values in read)
+    # a tensor is as close as its largest parts: a component near zero has no accuracy of its own
+    stress_scale = max(von_mises[-1], _LEAST_SCALE * largest)
+    moved = float(np.hypot(columns[-1]["u_x"], columns[-1]["u_y"]))
+    moved_scale = max(moved, _LEAST_SCALE * largest_moved)
     values: dict[str, Estimate] = {}
     for name in READING_QUANTITIES:
         stress = not name.startswith("u_")
-        scale = max(
-            abs(columns[-1][name]),
-            _COMPONENT_SCALE * von_mises[-1] if stress else _COMPONENT_SCALE * moved,
-            0.01 * largest if stress else 0.0,
-        )
         samples = [
-            Sample(abs(c[name]) if spot else c[name], float(v.size[i]), _doubt(v, k, i, stress))
+            Sample(
+                abs(c[name]) if spot else c[name],
+                float(v.size[i]),
+                float(v.doubt[k, i]) if stress else 0.0,
+                "edge" if piece >= 0 or not stress else "inside",
+            )
             for c, v in zip(columns, read, strict=True)
         ]
-        estimate = judge(samples, tolerance, scale, rate if stress else 0.0)
+        scale = stress_scale if stress else moved_scale
+        estimate = judge(samples, part.mesh.tolerance, scale, rate if stress else 0.0)
         values[name] = _signed(estimate, columns[-1][name]) if spot else estimate
     trust = worst([estimate.trust for estimate in values.values()])
-    piece = piece_at(shape, probe.at)
     why = ""
     if trust == "rising":
         why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
@@ -99,10 +106,6 @@ def _reading(
         why,
         tuple(von_mises),
     )
-
-
-def _doubt(values: PointValues, k: int, i: int, stress: bool) -> float:
-    return float(values.doubt[k, i]) if stress else 0.0
 
 
 def _quantities(part: Part, stress: Floats, displacement: Floats) -> dict[str, float]:

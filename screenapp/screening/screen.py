@@ -37,7 +37,7 @@ from screenapp.model.part_json import part_sha256, screening_key
 from screenapp.model.progress import SILENT, Progress, Step
 from screenapp.model.shape import Shape
 from screenapp.model.validity import check, faults_of
-from screenapp.screening.adapt import wanted_sizes
+from screenapp.screening.adapt import targets, wanted_sizes
 from screenapp.screening.capacity import refuse_beyond_memory
 from screenapp.screening.limits import judge_limits, overall
 from screenapp.screening.passes import Pass
@@ -125,7 +125,7 @@ def screen(
         if number >= most or (number >= LEAST_PASSES and _done(cases, read)):
             break
         with clock.stage("adapting"):
-            wanted = wanted_sizes(part, this, spots, first_sizes)
+            wanted = wanted_sizes(part, this, spots, first_sizes, targets(part, cases, read))
             largest = part.mesh.size or SHARE_OF_PART * shape.size
             smallest = min(float(wanted.min()), largest)
             sizes = adapted_sizes(shape, mesh, wanted, smallest, largest, part.mesh.across)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from typing import Literal
 
 import numpy as np
 
@@ -105,10 +106,11 @@ def _sample(
 ) -> Sample:
     """The value of the same peak on another pass."""
     point = np.array([raw.at])
+    place: Literal["edge", "inside"] = "inside" if raw.piece < 0 else "edge"
     values = earlier.read(point)
     size, doubt = float(values.size[0]), float(values.doubt[k, 0])
-    if earlier.peaks(name, k) and any(p is raw for p in earlier.peaks(name, k)):
-        return Sample(raw.value, _finest(raw.size, size, spot), doubt)
+    if any(p is raw for p in earlier.peaks(name, k)):
+        return Sample(raw.value, _finest(raw.size, size, spot), doubt, place)
     near = [
         p
         for p in earlier.peaks(name, k)
@@ -117,8 +119,8 @@ def _sample(
     ]
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))
-        return Sample(best.value, _finest(best.size, size, spot), doubt)
-    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt)
+        return Sample(best.value, _finest(best.size, size, spot), doubt, place)
+    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt, place)
 
 
 def _finest(of_side: float, of_element: float, spot: SingularSpot | None) -> float:
