@@ -32,7 +32,7 @@ DEFORMATION_SHARE = 0.08
 ZONE_SHARE = 0.015
 """The hatched zone round an untrusted peak reaches at least this share of the part's size."""
 
-ZONE_ELEMENTS = 4.0
+ZONE_ELEMENTS = 2.0
 """... and at least this many elements of the size that stands at the peak."""
 
 
@@ -121,7 +121,7 @@ def zone_round(fields: Fields, at: tuple[float, float]) -> Ints:
     """Elements of the zone round an untrusted peak at `at` [mm]; at least one.
 
     Stress near a point where it keeps rising is as untrustworthy as the peak; the zone reaches
-    four elements of the size found there, and never less than can be seen on the whole part.
+    two elements of the size found there, and never less than can be seen on the whole part.
     """
     mesh = fields.mesh
     distance = np.hypot(*(mesh.nodes - at).T)[mesh.quads].min(axis=1)
