@@ -163,7 +163,7 @@ def loaded(sheet: Sheet) -> LoadedParagraph:
 
 def test_loads_are_read_and_changed_by_size_and_direction(sheet: Sheet) -> None:
     row = loaded(sheet).block("case1").loads.row("l1")
-    assert row.sentence.text == "pulled by 16000 N right"
+    assert row.sentence.text == "pulled by 16000 N, right"
     type_into(row.sentence.field("way"), "down")
     type_into(row.sentence.field("size"), "2 kN")
     load = sheet.document.part.cases[0].loads[0]
@@ -186,7 +186,7 @@ def test_loads_of_every_kind_can_be_added_by_place(sheet: Sheet) -> None:
     assert isinstance(sheet.document.part.cases[0].loads[1], BearingLoad)
     weight = sheet.document.part.cases[0].loads[3]
     assert isinstance(weight, GravityLoad)
-    assert "own weight under 9.807 m/s² down" in block.loads.row(weight.id).sentence.text
+    assert "own weight under 9.807 m/s², down" in block.loads.row(weight.id).sentence.text
 
 
 def test_cases_are_added_renamed_shown_and_removed(sheet: Sheet) -> None:

@@ -24,7 +24,7 @@ from screenapp.window.sheet.pieces import Choice, Link, Value
 LINE = 20
 """Height of a line of text in the sheet [px]."""
 
-PAD = 3
+PAD = 2
 """Room left and right of a field's text [px]."""
 _OPENERS = (Qt.Key.Key_Return, Qt.Key.Key_Enter, Qt.Key.Key_F2, Qt.Key.Key_Space)
 
@@ -353,9 +353,21 @@ def baseline(font: QFont) -> float:
 
 def sentence_of(error: ScreenappError) -> str:
     """Cause and mend as two sentences."""
-    return f"{_capital(error.cause)}. {_capital(error.mend)}."
+    return f"{capital(error.cause)}. {capital(error.mend)}."
 
 
-def _capital(text: str) -> str:
+_SHORT_WORDS = ("a", "an", "no", "the", "its", "it", "all", "two", "one", "use", "add", "give")
+
+
+def capital(text: str) -> str:
+    """The sentence with a capital letter and no full stop; units and file names stay as they are.
+
+    Example:
+        >>> capital("the wall is thin."), capital("kg is a mass"), capital("a.part.json is cut")
+        ('The wall is thin', 'kg is a mass', 'a.part.json is cut')
+    """
     text = text.rstrip(".")
-    return text[:1].upper() + text[1:]
+    first = text.split(" ")[0]
+    if first.isalpha() and (len(first) > 3 or first in _SHORT_WORDS):
+        return text[:1].upper() + text[1:]
+    return text

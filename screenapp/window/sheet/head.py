@@ -20,7 +20,7 @@ from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import Cross
 from screenapp.window.sheet.sentence import Sentence
 
-MOST_LINES = 6
+MOST_LINES = 4
 """Faults of a file told one by one; the rest are counted."""
 
 GROUNDS: dict[Standing, str] = {
@@ -132,16 +132,17 @@ class Notice(Banner):
 
     def tell(self, lead: str, error: ScreenappError) -> None:
         """Say what went wrong; `lead` begins, e.g. "The file was not opened"."""
-        self.show_standing("does not hold", lead, (sentence_of(error),))
+        several = len(error.faults) > 1
+        said = f"{len(error.faults)} things are wrong:" if several else sentence_of(error)
+        self.show_standing("does not hold", lead, (said,))
         for row in self._rows:
             self.faults.removeWidget(row)
             row.hide()
             row.deleteLater()
         self._rows = []
-        several = len(error.faults) > 1 or any(f.line is not None for f in error.faults)
         for fault in error.faults[:MOST_LINES] if several else ():
             line = f"Line {fault.line}: " if fault.line is not None else ""
-            where = f" ({fault.field})" if fault.field else ""
+            where = "" if fault.field in fault.cause else f" ({fault.field})"
             text = f"{line}{fault.cause}{where}; {fault.mend}."
             self._add(text, fault.ids)
         rest = len(error.faults) - MOST_LINES

@@ -227,4 +227,4 @@ def _load_pieces(
         hint=f"right, up, left, down, or an angle from +x; now {parts}",
     )
     amount = q.value("size", size, kind, f"Size of {name}", change.resize, f"Now {parts}")
-    return (lead, amount, " at " if way.text.endswith("°") else " ", way)
+    return (lead, amount, " at " if way.text.endswith("°") else ", ", way)

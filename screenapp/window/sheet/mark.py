@@ -57,7 +57,7 @@ class StandingShape(QWidget):
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self._standing: Standing = "not screened"
-        self.setFixedSize(QSize(24, 24))
+        self.setFixedSize(QSize(20, 20))
         theme.notifier.changed.connect(self.update)
 
     def show_standing(self, standing: Standing) -> None:
@@ -69,7 +69,7 @@ class StandingShape(QWidget):
         """Paint the shape."""
         painter = QPainter(self)
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        paint_standing(painter, QRectF(2, 2, 20, 20), self._standing)
+        paint_standing(painter, QRectF(1, 1, 18, 18), self._standing)
 
 
 def colour_of(standing: Standing) -> QColor:

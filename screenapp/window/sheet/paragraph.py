@@ -9,7 +9,7 @@ from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 from screenapp.model.errors import Fault
 from screenapp.window import theme
 from screenapp.window.document import Document
-from screenapp.window.sheet.field import LINE, PAD
+from screenapp.window.sheet.field import LINE, PAD, capital
 from screenapp.window.sheet.mark import Mark, State
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.rows import RowOf, Rows
@@ -127,9 +127,3 @@ def _fault_row(number: int, fault: Fault, mend: tuple[Piece | str, ...]) -> RowO
     colour = "bad" if fault.blocks else "doubt"
     said = f"{capital(fault.cause)}: {fault.mend.rstrip('.')}."
     return RowOf(f"fault {number}", (), (Words(said, colour=colour), *mend))
-
-
-def capital(text: str) -> str:
-    """The sentence with a capital letter and no full stop."""
-    text = text.rstrip(".")
-    return text[:1].upper() + text[1:]

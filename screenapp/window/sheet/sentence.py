@@ -14,6 +14,9 @@ from screenapp.window import theme
 from screenapp.window.sheet.field import LINE, PAD, Field, baseline
 from screenapp.window.sheet.pieces import Link, Piece, Value, Words, plain_text
 
+_GAP = 1.0
+"""Between a field and what stands right after it [px], so that its ring hides no full stop."""
+
 
 @dataclass(frozen=True)
 class _Bit:
@@ -42,7 +45,7 @@ class Sentence(QWidget):
         self._complaint = ""
         self._complainer: Field | None = None
         self._size = size
-        self._tall = -1
+        self._widths: tuple[object, ...] = ()
         self.on_delete: Callable[[], None] | None = None
         self.setFont(theme.font(size))
         policy = QSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Minimum)
@@ -129,9 +132,10 @@ class Sentence(QWidget):
             painter.drawText(where, text)
 
     def _settle(self) -> None:
-        tall = self._flow(self.width(), place=True)
-        if tall != self._tall:
-            self._tall = tall
+        self._flow(self.width(), place=True)
+        widths = (*(tuple(map(self._width, group)) for group in self._groups), self._complaint)
+        if widths != self._widths:  # what layouts know of its height holds no more, at any width
+            self._widths = widths
             self.updateGeometry()
         self.update()
 
@@ -149,14 +153,14 @@ class Sentence(QWidget):
             said = Words(self._complaint, colour="bad")
             groups += [[_Bit(word, said)] for word in self._complaint.split()]
         for number, group in enumerate(groups):
-            wide = sum(self._width(bit) for bit in group)
+            wide = self._group_width(group)
             if (number == complaint_from and number > 0) or (
                 x > start and x + space + wide > width
             ):
                 x, line = start, line + 1
             elif x > start:
                 x += space
-            for bit in group:
+            for place_in_group, bit in enumerate(group):
                 wide = self._width(bit)
                 if bit.words is not None:
                     placed.append((QPointF(x, line * LINE + base), bit.text, bit.words))
@@ -166,9 +170,15 @@ class Sentence(QWidget):
                         math.floor(x) - PAD, line * LINE, math.ceil(room), LINE
                     )
                 x += wide
+                if bit.words is None and place_in_group + 1 < len(group):
+                    x += _GAP
         if place:
             self._placed = placed
         return (line + 1) * LINE if groups else 0
+
+    def _group_width(self, group: list[_Bit]) -> float:
+        gaps = sum(_GAP for bit in group[:-1] if bit.words is None)
+        return sum(self._width(bit) for bit in group) + gaps
 
     def _width(self, bit: _Bit) -> float:
         if bit.words is None:

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 from screenapp.model.findings import Findings, LimitFindings
+from screenapp.window.sheet.field import capital
 from screenapp.window.sheet.limits_table import LimitsTable
-from screenapp.window.sheet.paragraph import Paragraph, capital
+from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
 from screenapp.window.sheet.rows import RowOf
 
