@@ -86,9 +86,7 @@ def _mesh_path(findings: Findings, paper: _Paper) -> str:
     if fields is None:
         return ""
     mesh = fields.mesh
-    pairs = np.sort(
-        np.concatenate([mesh.quads[:, [i, (i + 1) % 4]] for i in range(4)]), axis=1
-    )
+    pairs = np.sort(np.concatenate([mesh.quads[:, [i, (i + 1) % 4]] for i in range(4)]), axis=1)
     pairs = np.unique(pairs, axis=0)
     rim = {tuple(sorted((int(a), int(b)))) for a, _, b in mesh.side_nodes}
     data: list[str] = []

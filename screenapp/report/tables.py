@@ -19,9 +19,7 @@ def peaks_csv(findings: Findings) -> str:
         for p in case.peaks:
             e = p.estimate
             high = "" if e.trust == "rising" else e.high
-            writer.writerow(
-                [case.name, p.quantity, e.value, e.low, high, e.trust, *p.at, p.place]
-            )
+            writer.writerow([case.name, p.quantity, e.value, e.low, high, e.trust, *p.at, p.place])
     return text.getvalue()
 
 

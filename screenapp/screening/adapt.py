@@ -105,7 +105,7 @@ def wanted_sizes(
         near = far < 2.0 * size[here]
         wanted[near] = np.maximum(wanted[near], floor)
         wanted[here] = max(_SPOT_SHRINK * size[here], floor)
-    return wanted
+    return np.asarray(wanted)
 
 
 def energy_goal(tolerance: float) -> float:

@@ -132,6 +132,14 @@ def _scaled(estimate: Estimate, factor: float) -> Estimate:
     )
 
 
+def governing(limits: Sequence[LimitFindings]) -> LimitFindings | None:
+    """The limit that the verdict rests on: the worst verdict, then the most used; None if none."""
+    order: list[Verdict] = ["holds", "undecided", "does not hold"]
+    return max(
+        limits, key=lambda f: (order.index(f.verdict), f.utilisation.value), default=None
+    )
+
+
 def overall(limits: Sequence[LimitFindings]) -> tuple[Verdict, str, tuple[str, ...]]:
     """Verdict, headline and reasons over all limits and cases."""
     if not limits:

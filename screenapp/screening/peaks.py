@@ -74,7 +74,7 @@ def find(name: str, part: Part, shape: Shape, fields: Fields, case: int) -> list
 def side_stress(stress: Floats, t: Floats) -> Floats:
     """Stress along sides: (n_sides, 3 places, 3) at local t in [0, 1] -> (n_sides, n_t, 3)."""
     shape = np.stack([(1 - t) * (1 - 2 * t), 4 * t * (1 - t), t * (2 * t - 1)])
-    return np.einsum("pt,npc->ntc", shape, stress)
+    return np.asarray(np.einsum("pt,npc->ntc", shape, stress))
 
 
 def _on_boundary(
@@ -178,12 +178,26 @@ def _hole_centre(shape: Shape, loop: int) -> Point:
     return float(x), float(y)
 
 
+ON_BOUNDARY = 1e-4
+"""A point this near to the boundary, as a share of the part's size, counts as on it: places are
+typed and stored with a few decimals, and the boundary is where the stress peaks."""
+
+
 def piece_at(shape: Shape, at: Point) -> int:
-    """Index of the boundary piece that a point lies on (within 1e-6 of the part's size), or -1."""
-    best, piece = 1e-6 * shape.size, -1
+    """Index of the boundary piece that a point lies on, or -1."""
+    return _nearest(shape, at)[0]
+
+
+def on_boundary(shape: Shape, at: Point) -> Point:
+    """The point itself, brought exactly onto the boundary if it lies on it but for rounding."""
+    return _nearest(shape, at)[1]
+
+
+def _nearest(shape: Shape, at: Point) -> tuple[int, Point]:
+    best, piece, point = ON_BOUNDARY * shape.size, -1, at
     for i, candidate in enumerate(shape.curves):
         nearest = candidate.curve.point(candidate.curve.nearest(at))
         far = math.dist(nearest, at)
         if far < best:
-            best, piece = far, i
-    return piece
+            best, piece, point = far, i, (float(nearest[0]), float(nearest[1]))
+    return piece, point

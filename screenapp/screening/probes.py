@@ -14,7 +14,14 @@ from screenapp.model.part import Part, Probe
 from screenapp.model.shape import Shape
 from screenapp.model.solution import principal
 from screenapp.screening.passes import Pass, PointValues, passes_of
-from screenapp.screening.peaks import feature_of, measure, piece_at, place_in_words
+from screenapp.screening.peaks import (
+    ON_BOUNDARY,
+    feature_of,
+    measure,
+    on_boundary,
+    piece_at,
+    place_in_words,
+)
 from screenapp.screening.spots import spot_at
 from screenapp.screening.trust import Sample, judge, worst
 
@@ -37,7 +44,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     """Every probe in every case, from all passes so far; probes outside the part are left out."""
     if not part.readings:
         return ()
-    points = np.array([probe.at for probe in part.readings])
+    points = np.array([on_boundary(shape, probe.at) for probe in part.readings])
     read = [p.read(points) for p in passes]
     spots = singular_spots(part, shape)
     found: list[Reading] = []
@@ -46,7 +53,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
         moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
         for i, probe in enumerate(part.readings):
             if np.isfinite(read[-1].stress[k, i]).all():
-                spot = spot_at(spots, probe.at, case.id, 1e-6 * shape.size)
+                spot = spot_at(spots, probe.at, case.id, ON_BOUNDARY * shape.size)
                 found.append(
                     _reading(part, shape, read, k, i, probe, case.id, spot, largest, moved)
                 )
