@@ -86,6 +86,9 @@ def test_the_part_in_words(sheet: Sheet) -> None:
     assert paragraph.summary.text.startswith(
         "Outline of 4 edges, 1 hole; 120 × 80 mm, 9286 mm², 292 g."
     )
+    assert "Narrowest ligament 30 mm, between edge e1 and hole h1." in paragraph.summary.text
+    QTest.mouseClick(paragraph.summary.field("ligament"), Qt.MouseButton.LeftButton)
+    assert set(sheet.document.selection) == {"e1", "h1"}
     type_into(paragraph.holes.row("h1").sentence.field("diameter"), "24")
     type_into(paragraph.holes.row("h1").sentence.field("x"), "5")
     assert sheet.document.part.holes == (CircleHole("h1", (5.0, 0.0), 24.0),)

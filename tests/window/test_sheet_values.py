@@ -154,6 +154,8 @@ def test_a_material_of_ones_own(sheet: Sheet) -> None:
     assert own.youngs_modulus == 70_000.0
     assert own.poissons_ratio == 0.33
     assert own.proof_stress == pytest.approx(12 * 6.894757, rel=1e-6)
+    type_into(wall(sheet).figures.field("name"), "Cast, lot 7")
+    assert sheet.document.part.wall.material == "Cast, lot 7"
     type_into(wall(sheet).figures.field("strength"), "400 MPa")
     field = wall(sheet).figures.field("strength")
     QTest.mouseClick(field, Qt.MouseButton.LeftButton)

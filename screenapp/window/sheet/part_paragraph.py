@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault, InvalidPartError
-from screenapp.model.features import find, hole_word
+from screenapp.model.features import find, hole_word, place_name
+from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole
 from screenapp.model.shape import Shape, shape_of
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import Choice, Piece, Value, Words
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value, Words
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
 
@@ -29,6 +30,7 @@ class PartParagraph(Paragraph):
         self.holes = self.rows(64)
         self.more = self.sentence()
         self.picked = self.rows(64)
+        self._narrowest: tuple[Part, Ligament | None] | None = None
         self.document.selection_changed.connect(self.refresh)
 
     def fill(self) -> tuple[Piece | str, ...]:
@@ -67,7 +69,25 @@ class PartParagraph(Paragraph):
             shape = shape_of(part)
         except InvalidPartError:
             return (f"{text}.", *shown)
-        return (f"{text}; {_size(part, shape, q)}.", *shown)
+        return (f"{text}; {_size(part, shape, q)}.", *self._ligament(part, shape, q), *shown)
+
+    def _ligament(self, part: Part, shape: Shape, q: Quantities) -> tuple[Piece | str, ...]:
+        """The narrowest place; worked out once for each part, and only of a sound boundary."""
+        if self._narrowest is None or self._narrowest[0] is not part:
+            sound = not any(f.blocks and self.owns(f) for f in self.document.faults)
+            found = ligaments(shape, shape.size)[:1] if sound else []
+            self._narrowest = (part, found[0] if found else None)
+        narrowest = self._narrowest[1]
+        if narrowest is None:
+            return ()
+        one, other = narrowest.between
+        place = Link(
+            "ligament",
+            f"{place_name(part, one)} and {place_name(part, other)}",
+            lambda _key: self.document.select(one, other),
+            "Show where the part is narrowest",
+        )
+        return (f" Narrowest ligament {q.show(narrowest.width, 'length')}, between ", place, ".")
 
     def _hole_row(self, hole: Hole, q: Quantities) -> RowOf:
         change = changes.HoleChange(self.document, hole.id)

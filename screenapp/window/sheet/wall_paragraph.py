@@ -79,7 +79,14 @@ class WallParagraph(Paragraph):
         strength = q.optional_value(
             "strength", m.strength, "stress", "Tensile strength", change.setter("strength")
         )
-        source = (f" ({m.source})",) if m.source else ()
+        source: tuple[Piece | str, ...] = (f" ({m.source})",) if m.source else ()
+        if m.source.startswith("own"):
+            source = (
+                *source,
+                " Called ",
+                Value("name", m.name, "Name of the material", change.rename),
+                ".",
+            )
         return (
             "E ",
             q.value(
