@@ -17,6 +17,9 @@ from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
 
 MOST_PEAKS = 8
+ROUNDING = 1e-7
+"""A reaction below this share of the force that a millimetre of the most stressed wall carries is
+rounding."""
 QUANTITIES = {"von_mises": "", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
 
 
@@ -72,13 +75,18 @@ class FindingsParagraph(Paragraph):
         part = self.document.part
         q = Quantities(part.display_units)
         rows = []
+        largest = max((abs(peak.estimate.value) for peak in case.peaks), default=0.0)
+        nothing = ROUNDING * largest * part.wall.thickness  # times a millimetre: a force [N]
         for reaction in case.reactions:
             found = find(part, reaction.support)
             on = getattr(found.record, "on", "") if found else ""
             where = place_name(part, on) if on else reaction.support
             size = math.hypot(reaction.x, reaction.y)
-            way = _way(reaction.x, reaction.y)
-            text = f"gives {q.show(_three(size), 'force')} {way} in {case.name}"
+            if size < nothing:
+                text = f"carries nothing in {case.name}"
+            else:
+                way = _way(reaction.x, reaction.y)
+                text = f"gives {q.show(_three(size), 'force')} {way} in {case.name}"
             rows.append(
                 RowOf(reaction.support, (where,), (Words(text, quiet=self.outdated()),), also=(on,))
             )
@@ -107,7 +115,9 @@ def _line(part: Part, case: CaseFindings, peak: Peak) -> Line:
     if any(isinstance(limit, StressLimit) for limit in part.limits):
         texts.append(use_text(part, peak))
     texts.append(peak.estimate.trust)
-    tip = " ".join(filter(None, (peak.why, peak.mend)))
+    q = Quantities(part.display_units)
+    at = f"at x {q.bare(peak.at[0], 'length')}, y {q.show(peak.at[1], 'length')}"
+    tip = "\n".join(filter(None, (at, peak.why, peak.mend)))
     return Line(peak.feature or f"peak {case.case} {peak.at}", tuple(texts), tip)
 
 

@@ -6,8 +6,10 @@ from PySide6.QtWidgets import QWidget
 
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
+from screenapp.model.part import DisplacementLimit, Part, StressLimit
 from screenapp.window.document import Document
 from screenapp.window.figure_table import Column, FigureTable, Line
+from screenapp.window.sheet.quantities import Quantities
 
 COLUMNS = (
     Column("limit"),
@@ -32,14 +34,26 @@ class LimitsTable(FigureTable):
         lines = []
         for found in limits:
             texts = [
-                found.name,
+                _short_name(document.part, found),
                 names.get(found.case, found.case),
                 value_text(found.utilisation, "factor", document.part.display_units),
                 found.verdict,
             ]
             if not several:
                 del texts[1]
-            tip = f"{found.place}: {found.reason}" if found.reason else found.place
+            tip = "\n".join(filter(None, (found.name, found.place, found.reason)))
             lines.append(Line(found.limit, tuple(texts), tip))
         stale = document.findings is not None and not document.current
         self.show_lines(columns, tuple(lines), stale)
+
+
+def _short_name(part: Part, found: LimitFindings) -> str:
+    """The limit in a few words; its full name stands in the tooltip."""
+    limit = next((g for g in part.limits if g.id == found.limit), None)
+    if isinstance(limit, StressLimit):
+        measure = "von Mises" if limit.measure == "von_mises" else "tension"
+        against = "proof" if limit.against == "proof_stress" else "strength"
+        return f"{measure} × {limit.factor:.4g} ≤ {against}"
+    if isinstance(limit, DisplacementLimit):
+        return f"moves ≤ {Quantities(part.display_units).show(limit.most, 'length')}"
+    return found.name
