@@ -23,6 +23,9 @@ Ints = NDArray[np.int64]
 FEWEST = 9
 """Points of each piece at which the size is read at first."""
 
+MOST_SIDES = 500_000
+"""More sides than a mesh that fits into the memory of a laptop can have."""
+
 MENDS = 8
 """How often crossing chords are split before giving up."""
 
@@ -57,13 +60,26 @@ class BoundaryPoints:
         return following
 
 
+def count_sides(shape: Shape, sizes: SizeField) -> float:
+    """The integral of ds / h over the whole boundary: about how many sides it will have."""
+    return sum(float(running[-1]) for _, running in _integrals(shape, sizes))
+
+
 def place_points(shape: Shape, sizes: SizeField) -> BoundaryPoints:
     """Divide every piece by the wanted sizes, more where the chords would cross.
 
     Raises:
-        MeshingError: the chords still cross after splitting; the shape crosses itself.
+        MeshingError: more than `MOST_SIDES`, or the chords still cross after splitting: the shape
+            touches itself.
     """
-    parameters = _divide(shape, sizes)
+    integrals = _integrals(shape, sizes)
+    total = sum(float(running[-1]) for _, running in integrals)
+    if not total < MOST_SIDES:
+        raise MeshingError(
+            f"the boundary would be divided into {total:.3g} sides",
+            f"ask for larger elements: at most {MOST_SIDES} sides can be handled",
+        )
+    parameters = [_equal_shares(t, running) for t, running in integrals]
     for _ in range(MENDS):
         crossing = _crossing_pieces(shape, parameters)
         if not crossing:
@@ -77,8 +93,11 @@ def place_points(shape: Shape, sizes: SizeField) -> BoundaryPoints:
     )
 
 
-def _divide(shape: Shape, sizes: SizeField) -> list[Floats]:
-    """Parameters (0 ... 1) of the nodes of every piece."""
+def _integrals(shape: Shape, sizes: SizeField) -> list[tuple[Floats, Floats]]:
+    """For every piece: parameters from 0 to 1, and the running integral of ds / h up to each.
+
+    Parameters are added until the size is known closely enough between them.
+    """
     table = CurveTable.of(shape.curves)
     piece = np.repeat(np.arange(len(table)), FEWEST)
     t = np.tile(np.linspace(0.0, 1.0, FEWEST), len(table))
@@ -100,16 +119,17 @@ def _divide(shape: Shape, sizes: SizeField) -> list[Floats]:
         piece, t = np.append(piece, piece[split]), np.append(t, middle)
         h = np.append(h, sizes.at(table.points(piece[-len(split) :], middle)))
     bounds = np.searchsorted(piece, np.arange(len(table) + 1))
-    return [
-        _equal_shares(lengths[k], t[bounds[k] : bounds[k + 1]], h[bounds[k] : bounds[k + 1]])
-        for k in range(len(table))
-    ]
+    found = []
+    for k in range(len(table)):
+        own_t, own_h = t[bounds[k] : bounds[k + 1]], h[bounds[k] : bounds[k + 1]]
+        density = 0.5 * (1.0 / own_h[:-1] + 1.0 / own_h[1:])
+        steps = np.diff(own_t) * lengths[k] * density
+        found.append((own_t, np.concatenate([[0.0], np.cumsum(steps)])))
+    return found
 
 
-def _equal_shares(length: float, t: Floats, h: Floats) -> Floats:
+def _equal_shares(t: Floats, running: Floats) -> Floats:
     """Parameters that cut a piece into an even number of sides of equal integral of ds / h."""
-    density = np.diff(t) * length * 0.5 * (1.0 / h[:-1] + 1.0 / h[1:])
-    running = np.concatenate([[0.0], np.cumsum(density)])
     count = 2 * max(1, round(0.5 * running[-1] + 0.1))
     inner = np.interp(np.arange(1, count) / count * running[-1], running, t)
     return np.concatenate([[0.0], inner, [1.0]])

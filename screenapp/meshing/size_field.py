@@ -115,15 +115,37 @@ def background(
         depth = np.clip(np.ceil(np.log2(side / sizes)), 1, DEEPEST).astype(np.int64)
         squares = _square_corners((spots - corner) / side, depth)
         points = np.concatenate([corner + side * squares, spots])
-    # Points closer than a tiny share of the box are one: Delaunay would make slivers of them.
-    _, first = np.unique(np.round((points - corner) / (side * 1e-9)), axis=0, return_index=True)
-    points = points[np.sort(first)]
-    triangles = np.asarray(Delaunay(points).simplices, dtype=np.int64)
     wanted = np.full(len(points), largest)
     if len(spots):
-        _, node = cKDTree(points).query(spots)
-        np.minimum.at(wanted, node, sizes)
+        wanted[-len(spots) :] = sizes
+    points, wanted = _merged(points, wanted)
+    triangles = np.asarray(Delaunay(points).simplices, dtype=np.int64)
     return SizeField(points, triangles, grade(points, triangles, wanted))
+
+
+def with_spots(field: SizeField, spots: Floats, sizes: Floats) -> SizeField:
+    """The field with sizes of at most `sizes` (k,) [mm] at `spots` (k, 2) [mm], graded."""
+    (x0, y0), (x1, y1) = field.nodes.min(axis=0), field.nodes.max(axis=0)
+    largest = float(field.sizes.max())
+    extra = background(spots, sizes, (float(x0), float(y0), float(x1), float(y1)), largest)
+    nodes = np.concatenate([field.nodes, extra.nodes])
+    wanted = np.concatenate([field.sizes, np.minimum(extra.sizes, field.at(extra.nodes))])
+    nodes, wanted = _merged(nodes, wanted)
+    triangles = np.asarray(Delaunay(nodes).simplices, dtype=np.int64)
+    return SizeField(nodes, triangles, grade(nodes, triangles, np.minimum(wanted, extra.at(nodes))))
+
+
+def _merged(points: Floats, sizes: Floats) -> tuple[Floats, Floats]:
+    """Points nearer than a tiny share of all are one, with the least size of them: Delaunay would
+    make slivers of them."""
+    low = points.min(axis=0)
+    cell = 1e-9 * float((points.max(axis=0) - low).max())
+    _, first, group = np.unique(
+        np.round((points - low) / cell), axis=0, return_index=True, return_inverse=True
+    )
+    least = np.full(len(first), np.inf)
+    np.minimum.at(least, group.ravel(), sizes)
+    return points[first], least
 
 
 def _square_corners(spots: Floats, depth: Ints) -> Floats:

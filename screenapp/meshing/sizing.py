@@ -13,6 +13,7 @@ import math
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.meshing.boundary_points import count_sides
 from screenapp.meshing.inside import inside_shape
 from screenapp.meshing.size_field import SizeField, background, grade
 from screenapp.meshing.walls import measure_walls
@@ -30,6 +31,9 @@ ARC_ANGLE = math.radians(22.5)
 
 COARSEST_ANGLE = math.radians(45.0)
 """Turn of an arc over one element that no later mesh may exceed."""
+
+INSIDE, ALONG = 0.92, 0.65
+"""Elements per unit of the integral of 1/h² over the part, and of 1/h along its boundary."""
 
 SHARE_OF_PART = 1.0 / 24.0
 """Largest side of the first mesh over the diagonal of the part, where the user has no wish."""
@@ -70,9 +74,12 @@ def adapted_sizes(
 
 
 def estimate_elements(shape: Shape, sizes: SizeField) -> int:
-    """About how many quads a mesh with these sizes will have: the integral of 1/h² over the part.
+    """About how many quads a mesh with these sizes will have, before it is made.
 
-    Each triangle is split in 16 and every bit counts by its centre, so that the edge of the part
+    The integral of 1/h² over the part and that of 1/h along its boundary, each by a measured
+    share: inside, triangles come out a little larger than asked, along the boundary smaller.
+    Measured on 160 random parts and six uniform meshes of 400 to 190 000 elements: the meshes
+    had 0.98 to 1.31 times as many.  Each triangle is split in 16 and every bit counts by its centre, so that the edge of the part
     is followed; the density is that of the linear size at the bit's centre.
     """
     corners, h = sizes.nodes[sizes.triangles], sizes.sizes[sizes.triangles]
@@ -89,7 +96,8 @@ def estimate_elements(shape: Shape, sizes: SizeField) -> int:
         size = np.einsum("ks,ms->mk", split, h[group])
         inside = inside_shape(shape, points.reshape(-1, 2)).reshape(size.shape)
         total += float(np.sum(inside / size**2 * area[group, None] / len(split)))
-    return math.ceil(total)
+    along = count_sides(shape, sizes)
+    return math.ceil(INSIDE * total + ALONG * along)
 
 
 def piece_limit(curve: Curve, angle: float) -> float:
@@ -107,14 +115,16 @@ def _from_form(shape: Shape, largest: float, angle: float, across: int) -> SizeF
         limit = piece_limit(piece.curve, angle)
         if limit >= largest:
             continue
-        count = min(4000, math.ceil(piece.curve.length / limit))
+        count = math.ceil(piece.curve.length / limit)
         spots.append(piece.curve.point(np.linspace(0.0, 1.0, count + 1)))
         sizes.append(np.full(count + 1, limit))
     if across > 0:
         walls = measure_walls(shape)
-        thin = walls.thickness < across * largest
+        # Elements come from triangles twice as large, of which a whole number lies across.
+        layers = 2 * math.ceil(0.5 * across)
+        thin = walls.thickness < layers * largest
         spots.append(walls.points[thin])
-        sizes.append(walls.thickness[thin] / across)
+        sizes.append(walls.thickness[thin] / layers)
     points = np.concatenate(spots) if spots else np.empty((0, 2))
     limits = np.concatenate(sizes) if sizes else np.empty(0)
     return background(points, limits, shape.bounds, largest)
