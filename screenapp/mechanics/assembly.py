@@ -111,7 +111,7 @@ def condense_loads(system: System, forces: Floats) -> Floats:
 
     The share of the 9-node quad's centre node goes to the nodes around it as its stiffness says.
     """
-    loads = forces[:, system.carried].reshape(len(forces), -1)
+    loads = forces[:, system.carried].reshape(len(forces), 2 * len(system.carried))
     if system.element == "quad9" and system.recovery is not None:
         inner = forces[:, system.mesh.quads[:, 8]]
         if inner.any():
@@ -138,8 +138,8 @@ def internal_forces(system: System, terms: Sequence[Floats]) -> Floats:
     """
     n_cases = len(terms[0])
     m = CARRIED_NODES[system.element]
-    nodes = system.element_nodes
-    out = np.zeros((n_cases, 2 * len(system.carried)))
+    nodes, n_carried = system.element_nodes, len(system.carried)
+    out = np.zeros((n_cases, 2 * n_carried))
     unpack = np.zeros((2 * m, 2 * m), dtype=np.int64)
     upper = np.triu_indices(2 * m)
     unpack[upper] = np.arange(len(upper[0]))
@@ -149,9 +149,10 @@ def internal_forces(system: System, terms: Sequence[Floats]) -> Floats:
         at = nodes[rows]
         positions = system.mesh.nodes[system.mesh.quads[rows, :m]]
         stretch = np.sum(
-            [_without_motion(t.reshape(n_cases, -1, 2)[:, at], positions) for t in terms], axis=0
+            [_without_motion(t.reshape(n_cases, n_carried, 2)[:, at], positions) for t in terms],
+            axis=0,
         )
-        stacked = np.moveaxis(stretch, 0, 3).transpose(0, 2, 1, 3).reshape(len(at), 2 * m, -1)
+        stacked = np.moveaxis(stretch, 0, 3).transpose(0, 2, 1, 3).reshape(len(at), 2 * m, n_cases)
         forces = system.packed[rows][:, unpack] @ stacked
         places = _places(at).ravel()
         for case in range(n_cases):
@@ -174,7 +175,7 @@ def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Fl
     n_cases = len(unknowns)
     mesh, element, m = system.mesh, system.element, CARRIED_NODES[system.element]
     out = np.zeros((n_cases, mesh.n_nodes, 2))
-    out[:, system.carried] = unknowns.reshape(n_cases, -1, 2)
+    out[:, system.carried] = unknowns.reshape(n_cases, len(system.carried), 2)
     local = out[:, mesh.quads[:, :m]]  # (n_cases, n_elements, m, 2)
     inner: Floats | None = None
     if system.recovery is not None:

@@ -73,7 +73,7 @@ def solve_system(
     displacements, modes = spread(system, unknowns, forces)
     support_forces = np.zeros(forces.shape)
     support_forces[:, system.carried] = (internal_forces(system, parts) - loads).reshape(
-        len(forces), -1, 2
+        len(forces), len(system.carried), 2
     )
     given = tuple(reactions(held, mesh.nodes, case) for case in support_forces)
     return Solution(

@@ -100,8 +100,8 @@ def test_shape_integrals_add_up_to_the_volume(element: ElementName) -> None:
 
 @pytest.mark.parametrize("element", ELEMENTS)
 def test_a_folded_element_is_refused_with_its_place(element: ElementName) -> None:
-    nodes = np.tile(shape_functions.LOCAL_NODES + [7.0, 3.0], (3, 1, 1))
-    nodes[1] = nodes[1][:, ::-1] * [1.0, 1.0]  # mirrored: runs clockwise
+    nodes = np.tile(np.array([7.0, 3.0]) + shape_functions.LOCAL_NODES, (3, 1, 1))
+    nodes[1] = nodes[1][:, ::-1]  # x and y exchanged: it runs clockwise
     with pytest.raises(SolvingError, match="folded element near") as caught:
         element_matrices(element, nodes, np.ones(3), ELASTIC)
     assert "(3, 7)" in caught.value.cause
