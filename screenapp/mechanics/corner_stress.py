@@ -32,7 +32,8 @@ def known_corners(
     """Stress at the corner at every side's end, where the tractions on both sides fix it.
 
     Four tractions fix three stresses; where they contradict each other (a shear on one side only)
-    the stress is not single-valued and nothing is known.
+    the stress is not single-valued and nothing is known.  One such case rules the corner out for
+    all, so that the recovery of a sum of cases is the sum of their recoveries.
 
     Args:
         traction: (n_cases, n_sides, 3, 2) [MPa].
@@ -41,7 +42,7 @@ def known_corners(
             there, (n_sides,).
 
     Returns:
-        σx, σy, τxy (n_cases, n_sides, 3) [MPa] and whether they are known (n_cases, n_sides).
+        σx, σy, τxy (n_cases, n_sides, 3) [MPa] and whether they are known (n_sides,).
     """
     after = chains.following
     turn = chains.turn
@@ -51,8 +52,8 @@ def known_corners(
     t1, t2 = traction[:, :, 2], traction[:, after, 0]
     contradiction = np.abs((t1 * n2).sum(axis=-1) - (t2 * n1).sum(axis=-1))
     scale = np.abs(traction).max(axis=(1, 2, 3))[:, None]
-    known = open_ & (contradiction <= NEGLIGIBLE * scale)
-    stress = np.zeros((*known.shape, 3))
+    known = open_ & (contradiction <= NEGLIGIBLE * scale).all(axis=0)
+    stress = np.zeros((*contradiction.shape, 3))
     some = np.flatnonzero(open_)
     rows = np.zeros((len(some), 4, 3))
     for k, n in ((0, n1[some]), (2, n2[some])):

@@ -51,7 +51,7 @@ def recover_edge_stress(
     compliance = np.linalg.inv(hooke)
     for end, stress, given in (
         (1, corner, known),
-        (0, corner[:, chains.preceding], known[:, chains.preceding]),
+        (0, corner[:, chains.preceding], known[chains.preceding]),
     ):
         stretch = _along(stress @ compliance, chains.tangents[:, 2 * end], 0.5)
         ends[:, :, end] = np.where(given, stretch, ends[:, :, end])
