@@ -40,7 +40,7 @@ from screenapp.window.pill import pill_width
 ROW = 24
 """Height of a row [px]."""
 
-LEAST_NAME, LEAST_WORDS = 72, 56
+LEAST_NAME, LEAST_WORDS, LEAST_IN_SHEET = 72, 56, 76
 """The first column, and others of words, are not made narrower [px]; numbers are never cut."""
 
 Index = QModelIndex | QPersistentModelIndex
@@ -324,7 +324,8 @@ class FigureTable(QTableView):
             wants[0] += spare
         elif spare >= 0:  # let the columns breathe
             wants = [wide + min(spare // len(wants), 40) for wide in wants]
-        for some, least in (([i for i in words if i > 0], LEAST_WORDS), ([0], LEAST_NAME)):
+        least_words = LEAST_IN_SHEET if self.grows else LEAST_WORDS
+        for some, least in (([i for i in words if i > 0], least_words), ([0], LEAST_NAME)):
             while spare < 0 and some:  # from the widest, a pixel at a time
                 widest = max(some, key=lambda i: wants[i])
                 if wants[widest] <= least:

@@ -25,7 +25,7 @@ log = logging.getLogger(__name__)
 
 
 class Files(QObject):
-    """The file side of one window.
+    """The file side of one window; `take_typing` is called first, so that what is typed counts.
 
     Signals:
         failed: a lead sentence and a ScreenappError.
@@ -45,6 +45,7 @@ class Files(QObject):
         self._settings = settings
         self._ask = ask
         self._window = window
+        self.take_typing: Callable[[], None] = lambda: None
 
     def new(self) -> bool:
         """Show an empty part."""
@@ -86,11 +87,13 @@ class Files(QObject):
 
     def save(self) -> bool:
         """Save where the part came from, or ask."""
+        self.take_typing()
         path = self._document.path
         return self.save_as() if path is None else self._write(path)
 
     def save_as(self) -> bool:
         """Ask where to save."""
+        self.take_typing()
         document = self._document
         suggested = document.path or self._settings.folder / (_file_name(document.part) + SUFFIX)
         path = self._ask.path_to_save(self._window, suggested)
@@ -98,6 +101,7 @@ class Files(QObject):
 
     def may_leave(self) -> bool:
         """Whether the present part may go: it is saved, or the user said so."""
+        self.take_typing()
         if not self._document.unsaved:
             return True
         answer = self._ask.unsaved(self._window, self._document.part.title)

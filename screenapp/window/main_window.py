@@ -66,6 +66,7 @@ class MainWindow(QMainWindow):
         self.painter = LensPainter(self.document, self.board)
         self.readings = Readings(self.document)
         self.sheet = Sheet(self.document)
+        self.files.take_typing = self.sheet.take_typing
         self._read_last: tuple[Probe, ...] = ()
         self._panels: dict[str, Panel] = {}
         self._warmed = False

@@ -307,6 +307,20 @@ def test_what_is_still_being_typed_counts(
     assert screen.parts[0].wall.thickness == 11.0
 
 
+def test_what_is_still_being_typed_is_saved(main: MainWindow, file: Path) -> None:
+    main.files.open(file)
+    settle()
+    type_into(main.sheet.paragraph(2).wall.field("thickness"), "13", None)  # type: ignore
+    QTest.keyClick(main.focusWidget(), Qt.Key.Key_S, CONTROL)
+    assert read_part(file).wall.thickness == 13.0
+    title = main.sheet.head.title
+    title.setFocus()
+    title.selectAll()
+    QTest.keyClicks(title, "Strip, second issue")
+    QTest.keyClick(title, Qt.Key.Key_S, CONTROL)
+    assert read_part(file).title == "Strip, second issue"
+
+
 # --- keys, menus, memory --------------------------------------------------------------------
 
 

@@ -22,6 +22,7 @@ from screenapp.model.part import (
     RollerSupport,
     StressLimit,
 )
+from screenapp.model.solution import Reaction
 from screenapp.window.document import Document
 from screenapp.window.sheet.findings_paragraph import FindingsParagraph
 from screenapp.window.sheet.held_paragraph import HeldParagraph
@@ -305,6 +306,21 @@ def test_a_rising_peak_has_no_value_only_a_bound(sheet: Sheet) -> None:
     assert isinstance(paragraph, FindingsParagraph)
     texts_ = paragraph.table.figures.lines[0].texts
     assert texts_[2:] == ("≥ 310", "≥ 1.98", "rising")
+
+
+def test_a_reaction_that_is_rounding_is_said_in_words(sheet: Sheet) -> None:
+    document = sheet.document
+    found = made_up(document.part)
+    reactions = (Reaction("s1", 3e-13, -1e-13, 0.0),)
+    cases = (replace(found.cases[0], reactions=reactions), *found.cases[1:])
+    document.set_findings(replace(found, cases=cases))
+    settle()
+    assert "carries nothing in Pull" in texts(sheet)
+    reactions = (Reaction("s1", -16_000.0, 0.0, 0.0),)
+    cases = (replace(found.cases[0], reactions=reactions), *found.cases[1:])
+    document.set_findings(replace(found, cases=cases))
+    settle()
+    assert "gives 16000 N left in Pull" in texts(sheet)
 
 
 # --- lit together ---------------------------------------------------------------------------

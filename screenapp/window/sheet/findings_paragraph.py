@@ -158,7 +158,8 @@ def _doubtful(peaks: list[tuple[CaseFindings, Peak]]) -> list[tuple[CaseFindings
 def _why_row(number: int, peak: Peak) -> RowOf:
     mend = f" {_sentence(peak.mend)}" if peak.mend else ""
     colour = "bad" if peak.estimate.trust == "rising" else "doubt"
-    text = f"{_sentence(f'{peak.place}: {peak.why}')}{mend}"
+    why = peak.why if peak.place in peak.why else f"{peak.place}: {peak.why}"
+    text = f"{_sentence(why)}{mend}"
     return RowOf(f"why {number}", (), (Words(text, colour=colour),), also=(peak.feature,))
 
 

@@ -43,7 +43,7 @@ class TitleEdit(QLineEdit):
         self.setFixedHeight(32)
         self.setAccessibleName("Title of the part")
         self.setToolTip("Title of the part")
-        self.editingFinished.connect(self._accept)
+        self.editingFinished.connect(self.accept)
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """Esc restores."""
@@ -59,7 +59,8 @@ class TitleEdit(QLineEdit):
         self.setModified(False)
         self.setCursorPosition(0)
 
-    def _accept(self) -> None:
+    def accept(self) -> None:
+        """Take the title that was typed."""
         if not self.isModified():
             return
         self.setModified(False)

@@ -94,6 +94,7 @@ class Sheet(QWidget):
 
     def take_typing(self) -> None:
         """Accept whatever is still being typed."""
+        self.head.title.accept()
         for field in self.findChildren(Field):
             field.accept()
 
