@@ -19,6 +19,7 @@ from PySide6.QtWidgets import QLineEdit, QMenu, QWidget
 
 from screenapp.model.errors import ScreenappError
 from screenapp.window import theme
+from screenapp.window.sheet.chooser import fill_menu
 from screenapp.window.sheet.pieces import Choice, Link, Value
 
 LINE = 20
@@ -191,33 +192,11 @@ class Field(QWidget):
 
     def _open_menu(self, choices: tuple[Choice, ...]) -> None:
         menu = QMenu(self)
-        self._add_lines(menu, choices)
-        if menu.activeAction() is None:
-            first = [a for a in menu.actions() if a.isEnabled() and not a.isSeparator()]
-            if first:
-                menu.setActiveAction(first[0])
+        fill_menu(menu, choices, self.piece.text if isinstance(self.piece, Value) else None)
         menu.triggered.connect(lambda action: self._chosen(str(action.data())))
         menu.aboutToHide.connect(self._menu_closed)
         self._menu = menu
         menu.popup(self.mapToGlobal(QPoint(0, self.height() + 2)))
-
-    def _add_lines(self, menu: QMenu, choices: tuple[Choice, ...]) -> None:
-        for choice in choices:
-            if choice.key.startswith("-"):
-                if choice.text:
-                    add_heading(menu, choice.text)
-                else:
-                    menu.addSeparator()
-            elif choice.children:
-                self._add_lines(menu.addMenu(choice.text.replace("&", "&&")), choice.children)
-            else:
-                label = f"{choice.text}\t{choice.remark}" if choice.remark else choice.text
-                action = menu.addAction(label.replace("&", "&&"))
-                action.setData(choice.key)
-                if isinstance(self.piece, Value) and choice.text == self.piece.text:
-                    action.setCheckable(True)
-                    action.setChecked(True)
-                    menu.setActiveAction(action)
 
     def _chosen(self, key: str) -> None:
         try:
@@ -337,12 +316,6 @@ class Field(QWidget):
 
     def _width(self, text: str) -> int:
         return QFontMetrics(self.font()).horizontalAdvance(text)
-
-
-def add_heading(menu: QMenu, text: str) -> None:
-    """A quiet heading between the lines of a menu."""
-    heading = menu.addAction(text)
-    heading.setEnabled(False)
 
 
 def baseline(font: QFont) -> float:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from screenapp.model.errors import Fault
 from screenapp.model.features import place_name
 from screenapp.model.part import FixedSupport, PrescribedSupport, RollerSupport, Support
-from screenapp.window.sheet import changes
+from screenapp.window.sheet import changes, support_changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
 from screenapp.window.sheet.places import place_choices
@@ -55,7 +55,7 @@ class HeldParagraph(Paragraph):
         return place_choices(self.document)
 
     def _add(self, on: str) -> None:
-        changes.add_support(self.document, on)
+        support_changes.add_support(self.document, on)
 
     def _row(self, support: Support, q: Quantities) -> RowOf:
         where = place_name(self.document.part, support.on)
@@ -69,7 +69,7 @@ class HeldParagraph(Paragraph):
         )
 
     def _pieces(self, support: Support, where: str, q: Quantities) -> tuple[Piece | str, ...]:
-        change = changes.SupportChange(self.document, support.id)
+        change = support_changes.SupportChange(self.document, support.id)
         texts = {c.key: c.text for c in KINDS}
 
         def kind(key: str) -> Value:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from screenapp.model.errors import Fault
 from screenapp.model.part import DisplacementLimit, Limit, Part, StressLimit
-from screenapp.window.sheet import changes
+from screenapp.window.sheet import changes, limit_changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -32,12 +32,16 @@ class LimitsParagraph(Paragraph):
         q = Quantities(part.display_units)
         self.list.set([self._row(part, limit, q) for limit in part.limits])
         self.add.set(
-            Link("stress", "+ stress limit", lambda _key: changes.add_stress_limit(self.document)),
+            Link(
+                "stress",
+                "+ stress limit",
+                lambda _key: limit_changes.add_stress_limit(self.document),
+            ),
             SEPARATOR,
             Link(
                 "displacement",
                 "+ displacement limit",
-                lambda _key: changes.add_displacement_limit(self.document),
+                lambda _key: limit_changes.add_displacement_limit(self.document),
             ),
         )
         self.add.setVisible(bool(part.limits))
@@ -45,12 +49,14 @@ class LimitsParagraph(Paragraph):
             return ()
         return (
             "There is nothing to judge yet: set a ",
-            Link("stress", "stress limit", lambda _key: changes.add_stress_limit(self.document)),
+            Link(
+                "stress", "stress limit", lambda _key: limit_changes.add_stress_limit(self.document)
+            ),
             " or a ",
             Link(
                 "displacement",
                 "displacement limit",
-                lambda _key: changes.add_displacement_limit(self.document),
+                lambda _key: limit_changes.add_displacement_limit(self.document),
             ),
             ".",
         )
@@ -60,7 +66,7 @@ class LimitsParagraph(Paragraph):
         return fault.field == "limits" and not self.document.part.limits
 
     def _row(self, part: Part, limit: Limit, q: Quantities) -> RowOf:
-        change = changes.LimitChange(self.document, limit.id)
+        change = limit_changes.LimitChange(self.document, limit.id)
         pieces: tuple[Piece | str, ...]
         if isinstance(limit, DisplacementLimit):
             most = q.value(
@@ -78,7 +84,7 @@ class LimitsParagraph(Paragraph):
         )
 
     def _stress(
-        self, part: Part, limit: StressLimit, change: changes.LimitChange, q: Quantities
+        self, part: Part, limit: StressLimit, change: limit_changes.LimitChange, q: Quantities
     ) -> tuple[Piece | str, ...]:
         measure = Value(
             "measure",

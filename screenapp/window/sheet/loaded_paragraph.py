@@ -23,7 +23,7 @@ from screenapp.model.part import (
     ShearLoad,
 )
 from screenapp.window.document import Document
-from screenapp.window.sheet import changes
+from screenapp.window.sheet import load_changes
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
@@ -60,7 +60,7 @@ class CaseBlock(QWidget):
         """Show a case."""
         document = self._document
         q = Quantities(document.part.display_units)
-        change = changes.CaseChange(document, case.id)
+        change = load_changes.CaseChange(document, case.id)
         name = Value("name", case.name, "Name of the load case", change.rename)
         self.head.set("In case ", name, ":" if case.loads else ": nothing acts yet.")
         self.head.on_delete = change.remove
@@ -118,7 +118,12 @@ class LoadedParagraph(Paragraph):
                 self._column.insertWidget(number, block, 0, Qt.AlignmentFlag(0))
             block.show_case(case, number)
         self.add.set(
-            Link("add", "+ case", lambda _key: changes.add_case(self.document), "Add a load case")
+            Link(
+                "add",
+                "+ case",
+                lambda _key: load_changes.add_case(self.document),
+                "Add a load case",
+            )
         )
         self.add.setVisible(bool(part.cases))
         if part.cases:
@@ -128,7 +133,7 @@ class LoadedParagraph(Paragraph):
         load = Link(
             "load",
             "load a place",
-            lambda key: changes.add_load(self.document, None, key),
+            lambda key: load_changes.add_load(self.document, None, key),
             choices=lambda: load_choices(self.document),
         )
         return ("Nothing acts on the part: ", load, " or use the board's load tool.")
@@ -169,7 +174,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
 
 
 def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowOf:
-    change = changes.LoadChange(document, load.id)
+    change = load_changes.LoadChange(document, load.id)
     also: tuple[str, ...]
     if isinstance(load, GravityLoad):
         where, also, name = "everywhere", (), "own weight"
@@ -187,7 +192,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
 
 
 def _load_pieces(
-    load: Load, name: str, change: changes.LoadChange, q: Quantities
+    load: Load, name: str, change: load_changes.LoadChange, q: Quantities
 ) -> tuple[Piece | str, ...]:
     if isinstance(load, PressureLoad):
         value = q.value(

@@ -1,0 +1,51 @@
+"""What the sheet does to supports."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+from screenapp.model import edits
+from screenapp.model.part import FixedSupport, PrescribedSupport, RollerSupport, Support
+from screenapp.window.document import Document
+from screenapp.window.sheet.changes import with_field
+
+
+def add_support(document: Document, on: str) -> None:
+    """Hold a place in both directions; its row then says how else it may be held."""
+    part = edits.add_support(document.part, FixedSupport("", on))
+    document.apply(f"hold {on}", part)
+    document.select(part.supports[-1].id)
+
+
+class SupportChange:
+    """Changes how a place is held."""
+
+    def __init__(self, document: Document, support: str) -> None:
+        self._document = document
+        self._support = support
+
+    def kind(self, kind: str) -> None:
+        """Hold it "fixed", by its "normal", along an "angle", or "moved"."""
+        old = next(s for s in self._document.part.supports if s.id == self._support)
+        new: Support
+        if kind == "fixed":
+            new = FixedSupport(old.id, old.on)
+        elif kind == "normal":
+            new = RollerSupport(old.id, old.on)
+        elif kind == "angle":
+            new = RollerSupport(old.id, old.on, 90.0)
+        else:
+            new = PrescribedSupport(old.id, old.on, 0.0, 0.0)
+        self._put(f"how {old.on} is held", new)
+
+    def setter(self, field: str) -> Callable[[Any], None]:
+        """A function that sets "angle", "x" or "y"."""
+        return lambda value: self._set(field, value)
+
+    def _set(self, field: str, value: float | None) -> None:
+        old = next(s for s in self._document.part.supports if s.id == self._support)
+        self._put(f"{field} of the support at {old.on}", with_field(old, field, value))
+
+    def _put(self, name: str, new: Support) -> None:
+        self._document.apply(name, edits.replace_support(self._document.part, new))
