@@ -56,6 +56,8 @@ class Peak:
         why: for a rising or unsettled peak, the reason in words; else "".
         mend: for a rising peak, what would settle it; else "".
         history: value on each pass.
+        structural: for a rising peak beside a free edge, the structural stress drawn on from
+            0.4 t and 1.0 t [MPa]; else None.
     """
 
     quantity: str
@@ -66,6 +68,7 @@ class Peak:
     why: str = ""
     mend: str = ""
     history: tuple[float, ...] = ()
+    structural: Estimate | None = None
 
 
 @dataclass(frozen=True)

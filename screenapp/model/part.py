@@ -228,7 +228,7 @@ class PointLoad:
 
 @dataclass(frozen=True)
 class GravityLoad:
-    """The part's own weight under the acceleration of free fall `x`, `y` [m/s²], e.g. (0, -9.81)."""
+    """The part's own weight under the free-fall acceleration `x`, `y` [m/s²], e.g. (0, -9.81)."""
 
     id: str
     x: float
@@ -253,12 +253,17 @@ class Case:
 
 @dataclass(frozen=True)
 class StressLimit:
-    """Everywhere: `measure` times `factor` stays under the material's `against` stress."""
+    """Everywhere: `measure` times `factor` stays under the material's `against` stress.
+
+    `at_rising` says what counts where the stress has no finite value: nothing (the verdict stays
+    undecided) or the structural stress, drawn on from 0.4 and 1.0 wall thicknesses.
+    """
 
     id: str
     measure: Literal["von_mises", "sigma_1"] = "von_mises"
     against: Literal["proof_stress", "strength"] = "proof_stress"
     factor: float = 1.5
+    at_rising: Literal["undecided", "structural"] = "undecided"
 
 
 @dataclass(frozen=True)

@@ -116,6 +116,7 @@ def _peak(peak: Peak) -> Tree:
         "why": peak.why,
         "mend": peak.mend,
         "history": [_finite(value) for value in peak.history],
+        "structural": None if peak.structural is None else _estimate(peak.structural),
     }
 
 

@@ -101,6 +101,7 @@ def _peak_of(tree: Tree) -> Peak:
         tree["why"],
         tree["mend"],
         _history_of(tree["history"]),
+        _estimate_of(tree["structural"]) if tree.get("structural") is not None else None,
     )
 
 

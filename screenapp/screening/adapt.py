@@ -18,8 +18,10 @@ from numpy.typing import NDArray
 from screenapp.mechanics.singular_spots import SingularSpot
 from screenapp.model.findings import CaseFindings, Estimate, Reading
 from screenapp.model.part import Part, Point
+from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import measure
+from screenapp.screening.structural import reading_places
 
 Floats = NDArray[np.float64]
 
@@ -45,7 +47,11 @@ class Target:
 
 
 def targets(
-    part: Part, cases: Sequence[CaseFindings], readings: Sequence[Reading]
+    part: Part,
+    shape: Shape,
+    spots: Sequence[SingularSpot],
+    cases: Sequence[CaseFindings],
+    readings: Sequence[Reading],
 ) -> tuple[Target, ...]:
     """Where the next mesh must be finer because a peak or a reading is not settled."""
     found: list[Target] = []
@@ -55,6 +61,12 @@ def targets(
             if peak.estimate.trust == "unsettled":
                 allowed = part.mesh.tolerance * max(peak.estimate.value, 0.5 * top)
                 found.append(Target(peak.at, _excess(peak.estimate, allowed)))
+            beside = peak.structural
+            if beside is not None and beside.trust == "unsettled":
+                excess = _excess(beside, part.mesh.tolerance * abs(beside.value))
+                near = [s for s in spots if math.dist(s.at, peak.at) < 1e-9 * shape.size]
+                places = [p for s in near for p in reading_places(part, shape, s)]
+                found += [Target(p, excess) for p in places]
     for reading in readings:
         if reading.trust == "unsettled":
             estimate = reading.values["von_mises"]

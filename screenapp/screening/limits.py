@@ -25,7 +25,8 @@ def limit_name(limit: StressLimit | DisplacementLimit) -> str:
         return f"displacement under {limit.most:g} mm"
     what = "von Mises" if limit.measure == "von_mises" else "largest principal"
     against = "proof stress" if limit.against == "proof_stress" else "strength"
-    return f"{what} under {against} with {limit.factor:g} in hand"
+    rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
+    return f"{what} under {against} with {limit.factor:g} in hand{rising}"
 
 
 def judge_limits(part: Part, cases: Sequence[CaseFindings]) -> tuple[LimitFindings, ...]:
@@ -50,40 +51,56 @@ def _stress(limit: StressLimit, part: Part, case: CaseFindings) -> LimitFindings
         trust: Estimate = Estimate(0.0, 0.0, 0.0, "settled" if allowed is not None else "unsettled")
         verdict: Verdict = "holds" if allowed is not None else "undecided"
         return LimitFindings(limit.id, name, case.case, trust, verdict, (0.0, 0.0), "", why)
-    over = [p for p in peaks if p.estimate.trust == "settled" and p.estimate.low > allowed]
+    over = [p for p in peaks if _settled_over(_counted(p, allowed, limit), allowed)]
     open_ = [
         p
         for p in peaks
-        if p.estimate.trust == "rising"
-        or (p not in over and p.estimate.high >= allowed)
-        or (p.estimate.trust == "unsettled" and p.estimate.high >= allowed)
+        if _counted(p, allowed, limit).trust == "rising"
+        or (p not in over and _counted(p, allowed, limit).high >= allowed)
     ]
-    unsettled_top = peaks[0].estimate.trust != "settled"
+    top = _counted(peaks[0], allowed, limit)
     if over:
-        governing = max(over, key=lambda p: p.estimate.value)
+        governing_peak = max(over, key=lambda p: _counted(p, allowed, limit).value)
+        used = _counted(governing_peak, allowed, limit)
         verdict = "does not hold"
+        beside = "the structural stress beside " if used is governing_peak.structural else ""
         reason = (
-            f"{governing.place} uses {governing.estimate.value / allowed:.2f} of its allowable "
+            f"{beside}{governing_peak.place} uses {used.value / allowed:.2f} of its allowable "
             f"under “{case.name}”"
         )
-    elif open_ or unsettled_top:
-        governing = _most_doubtful(open_ or peaks[:1])
+    elif open_ or top.trust != "settled":
+        governing_peak = _most_doubtful(open_ or peaks[:1])
         verdict = "undecided"
-        reason = _why_undecided(governing, allowed, case.name)
+        reason = _why_undecided(governing_peak, allowed, case.name)
     else:
-        governing = peaks[0]
+        governing_peak = max(peaks, key=lambda p: _counted(p, allowed, limit).value)
         verdict = "holds"
         reason = ""
     return LimitFindings(
         limit.id,
         name,
         case.case,
-        _scaled(governing.estimate, 1.0 / allowed),
+        _scaled(_counted(governing_peak, allowed, limit), 1.0 / allowed),
         verdict,
-        governing.at,
-        governing.place,
+        governing_peak.at,
+        governing_peak.place,
         reason,
     )
+
+
+def _counted(peak: Peak, allowed: float, limit: StressLimit) -> Estimate:
+    """What counts of a peak: its value, or beside a rising one its structural stress, where the
+    user accepts that or where it alone is already too much."""
+    beside = peak.structural
+    if peak.estimate.trust != "rising" or beside is None or beside.trust != "settled":
+        return peak.estimate
+    if limit.at_rising == "structural" or beside.low > allowed:
+        return beside
+    return peak.estimate
+
+
+def _settled_over(estimate: Estimate, allowed: float) -> bool:
+    return estimate.trust == "settled" and estimate.low > allowed
 
 
 def _most_doubtful(peaks: Sequence[Peak]) -> Peak:
@@ -135,9 +152,7 @@ def _scaled(estimate: Estimate, factor: float) -> Estimate:
 def governing(limits: Sequence[LimitFindings]) -> LimitFindings | None:
     """The limit that the verdict rests on: the worst verdict, then the most used; None if none."""
     order: list[Verdict] = ["holds", "undecided", "does not hold"]
-    return max(
-        limits, key=lambda f: (order.index(f.verdict), f.utilisation.value), default=None
-    )
+    return max(limits, key=lambda f: (order.index(f.verdict), f.utilisation.value), default=None)
 
 
 def overall(limits: Sequence[LimitFindings]) -> tuple[Verdict, str, tuple[str, ...]]:

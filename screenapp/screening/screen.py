@@ -32,7 +32,7 @@ from screenapp.model.findings import (
     Peak,
     Reading,
 )
-from screenapp.model.part import Part, Point
+from screenapp.model.part import Part, Point, StressLimit
 from screenapp.model.part_json import part_sha256, screening_key
 from screenapp.model.progress import SILENT, Progress, Step
 from screenapp.model.shape import Shape
@@ -125,7 +125,9 @@ def screen(
         if number >= most or (number >= LEAST_PASSES and _done(cases, read)):
             break
         with clock.stage("adapting"):
-            wanted = wanted_sizes(part, this, spots, first_sizes, targets(part, cases, read))
+            wanted = wanted_sizes(
+                part, this, spots, first_sizes, targets(part, shape, spots, cases, read)
+            )
             largest = part.mesh.size or SHARE_OF_PART * shape.size
             smallest = min(float(wanted.min()), largest)
             sizes = adapted_sizes(shape, mesh, wanted, smallest, largest, part.mesh.across)
@@ -137,6 +139,7 @@ def _done(cases: Sequence[CaseFindings], read: Sequence[Reading]) -> bool:
     """Whether every number is known: settled, or rising and never to be settled."""
     numbers = [p.estimate for c in cases for p in c.peaks]
     numbers += [c.displacement_max for c in cases]
+    numbers += [p.structural for c in cases for p in c.peaks if p.structural is not None]
     return all(n.trust != "unsettled" for n in numbers) and all(
         r.trust != "unsettled" for r in read
     )
@@ -209,6 +212,14 @@ def _findings(
     cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]
     if part.mesh.element == "quad4":
         cautions.append("plain bilinear quads are too stiff in bending; nine-node quads are not")
+    cautions += [
+        f"at {peak.place} the structural stress was accepted, as no finite value exists"
+        for limit in part.limits
+        if isinstance(limit, StressLimit) and limit.at_rising == "structural"
+        for case in cases
+        for peak in case.peaks
+        if peak.quantity == limit.measure and peak.structural is not None
+    ]
     if last.mesh.fallback:
         cautions.append(last.mesh.fallback)
     return Findings(
@@ -234,6 +245,6 @@ def _findings(
             last.mesh.fallback,
         ),
         timing=dict(clock.spent),
-        cautions=tuple(cautions),
+        cautions=tuple(dict.fromkeys(cautions)),
         fields=tuple(this.fields for this in passes),
     )

@@ -15,6 +15,7 @@ from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import RawPeak, feature_of, measure, place_in_words
 from screenapp.screening.spots import spot_at
+from screenapp.screening.structural import structural_stress
 from screenapp.screening.trust import Sample, judge
 
 _REACH = 2.5
@@ -71,10 +72,18 @@ def _peak(
     estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
     at, place = raw.at, place_in_words(shape, raw.piece, raw.at)
     why = mend = ""
+    structural: Estimate | None = None
     if estimate.trust == "rising":
         if spot is not None:
             at, why, mend = spot.at, spot.why, spot.mend
             place = _spot_place(spot)
+            found = structural_stress(part, shape, passes, spot, name, k)
+            if found is not None:
+                structural = found[0]
+                mend += (
+                    f", or accept the structural stress beside it (drawn on along {found[1]} from "
+                    "0.4 and 1.0 wall thicknesses) in the Limits paragraph"
+                )
         else:
             why = f"the stress at {place} keeps rising as the mesh is refined"
             mend = "look for a sharp corner or the end of a load there and ease it"
@@ -82,7 +91,7 @@ def _peak(
         why = _why_unsettled(estimate, spot)
     history = tuple(s.value for s in samples)
     feature = spot.ids[0] if spot and estimate.trust == "rising" else feature_of(shape, raw.piece)
-    return Peak(name, estimate, at, feature, place, why, mend, history)
+    return Peak(name, estimate, at, feature, place, why, mend, history, structural)
 
 
 def _spot_place(spot: SingularSpot) -> str:

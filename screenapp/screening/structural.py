@@ -1,0 +1,83 @@
+"""The structural stress beside a place of rising stress: read at 0.4 t and 1.0 t, drawn on to it.
+
+Linear extrapolation along the free edge from two stated distances, in wall thicknesses,
+
+    σ_s = 5/3 σ(0.4 t) - 2/3 σ(1.0 t),
+
+as is common for welded toes (A. Hobbacher, IIW Recommendations for Fatigue Design of Welded Joints
+and Components, surface stress extrapolation with a fine mesh: 1.67 and 0.67; from memory).  It
+always has a finite value, and it counts only where the user accepts it, or where it alone already
+exceeds what is allowed.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Sequence
+
+import numpy as np
+
+from screenapp.mechanics.singular_spots import SingularSpot, faces
+from screenapp.model.curves import Curve
+from screenapp.model.findings import Estimate
+from screenapp.model.part import Part, Point
+from screenapp.model.shape import Shape
+from screenapp.screening.passes import Pass
+from screenapp.screening.peaks import measure
+from screenapp.screening.trust import Sample, judge
+
+NEAR, FAR = 0.4, 1.0
+"""Distances from the place, in wall thicknesses."""
+_WEIGHT_NEAR = FAR / (FAR - NEAR)
+_WEIGHT_FAR = NEAR / (FAR - NEAR)
+
+
+def structural_stress(
+    part: Part, shape: Shape, passes: Sequence[Pass], spot: SingularSpot, name: str, k: int
+) -> tuple[Estimate, str] | None:
+    """The largest structural stress [MPa] of the free edges that meet at a spot, and its edge.
+
+    None where no free edge is long enough, or where a point force or support acts.
+    """
+    best: tuple[Estimate, str] | None = None
+    for feature, points in _paths(part, shape, spot):
+        samples: list[Sample] = []
+        for this in passes:
+            values = this.read(np.array(points))
+            near, far = (float(v) for v in measure(name, values.stress[k], part))
+            doubt = _WEIGHT_NEAR * values.doubt[k, 0] + _WEIGHT_FAR * values.doubt[k, 1]
+            drawn = _WEIGHT_NEAR * near - _WEIGHT_FAR * far
+            samples.append(Sample(drawn, float(values.size[0]), float(doubt)))
+        if not math.isfinite(samples[-1].value):
+            continue
+        estimate = judge(samples, part.mesh.tolerance, samples[-1].value)
+        if best is None or estimate.value > best[0].value:
+            best = estimate, feature
+    return best
+
+
+def reading_places(part: Part, shape: Shape, spot: SingularSpot) -> tuple[Point, ...]:
+    """Where the structural stress of a spot is read [mm]."""
+    return tuple(point for _, points in _paths(part, shape, spot) for point in points)
+
+
+def _paths(part: Part, shape: Shape, spot: SingularSpot) -> list[tuple[str, tuple[Point, Point]]]:
+    """The free edges that meet at a spot, each with its near and far point."""
+    if spot.rate >= 1.0:  # a point force or support: no toe to draw a line to
+        return []
+    t, slack = part.wall.thickness, 1e-9 * shape.size
+    kinds = faces(part, shape)
+    found: list[tuple[str, tuple[Point, Point]]] = []
+    for piece, kind in zip(shape.curves, kinds, strict=True):
+        if kind != "free" or piece.curve.length < FAR * t:
+            continue
+        if math.dist(piece.curve.start, spot.at) < slack:
+            found.append((piece.feature, _points(piece.curve, t)))
+        elif math.dist(piece.curve.end, spot.at) < slack:
+            found.append((piece.feature, _points(piece.curve.reversed(), t)))
+    return found
+
+
+def _points(curve: Curve, thickness: float) -> tuple[Point, Point]:
+    near, far = curve.point(np.array([NEAR, FAR]) * thickness / curve.length)
+    return (float(near[0]), float(near[1])), (float(far[0]), float(far[1]))
