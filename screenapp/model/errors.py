@@ -73,5 +73,5 @@ class SolvingError(ScreenappError):
     """The equations could not be solved to an acceptable residual."""
 
 
-class Cancelled(Exception):  # noqa: N818 - not an error: the user asked for it
+class Cancelled(Exception):
     """The user cancelled the work in hand; nothing is lost."""
