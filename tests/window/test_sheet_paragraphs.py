@@ -229,10 +229,13 @@ def test_limits_say_what_they_allow(sheet: Sheet) -> None:
     assert isinstance(paragraph, LimitsParagraph)
     row = paragraph.list.row("m1")
     # 235 / 1.5
-    assert row.sentence.text.endswith("stays under the proof stress: at most 156.7 MPa.")
+    assert "stays under the proof stress: at most 156.7 MPa." in row.sentence.text
+    assert row.sentence.text.endswith("Where it keeps rising, the verdict is undecided.")
     type_into(row.sentence.field("factor"), "2")
     pick(row.sentence.field("measure"), "largest tension")
-    assert sheet.document.part.limits[0] == StressLimit("m1", "sigma_1", factor=2.0)
+    pick(row.sentence.field("at_rising"), "the stress drawn on from 0.4 and 1.0 walls away counts")
+    wanted = StressLimit("m1", "sigma_1", factor=2.0, at_rising="structural")
+    assert sheet.document.part.limits[0] == wanted
     QTest.mouseClick(paragraph.add.field("displacement"), Qt.MouseButton.LeftButton)
     settle()
     new = sheet.document.part.limits[1]

@@ -12,6 +12,10 @@ from screenapp.window.sheet.rows import RowOf
 
 MEASURES = {"von_mises": "von Mises stress", "sigma_1": "largest tension"}
 AGAINST = {"proof_stress": "proof stress", "strength": "tensile strength"}
+AT_RISING = {
+    "undecided": "the verdict is undecided",
+    "structural": "the stress drawn on from 0.4 and 1.0 walls away counts",
+}
 
 
 class LimitsParagraph(Paragraph):
@@ -105,4 +109,15 @@ class LimitsParagraph(Paragraph):
         known = part.material and getattr(part.material, limit.against, None)
         if known and limit.factor > 0.0:
             allowed = (f": at most {q.show(known / limit.factor, 'stress')}.",)
-        return (measure, " times ", factor, " stays under the ", against, *allowed)
+        rising = Value(
+            "at_rising",
+            AT_RISING.get(limit.at_rising, limit.at_rising),
+            "What counts where the stress keeps rising",
+            lambda key: change.set("at_rising", key),
+            lambda: tuple(Choice(k, t) for k, t in AT_RISING.items()),
+        )
+        return (
+            *(measure, " times ", factor, " stays under the ", against),
+            *allowed,
+            *(" Where it keeps rising, ", rising, "."),
+        )
