@@ -21,6 +21,13 @@ FLATTEST = np.radians(150.0)
 """Largest angle of the boundary that may be a corner of one element [rad]."""
 
 
+THINNEST = np.radians(5.0)
+"""Smallest angle of a triangle that turning may leave [rad]: smoothing opens it later."""
+
+ROUNDS = 4
+"""Turning one ear can free the way for, or make, another: looked at again so often."""
+
+
 def turn_ears(points: Floats, triangles: Ints, angles: Floats) -> Ints:
     """Triangles (m, 3) in which no ear sits at a boundary node of an angle beyond `FLATTEST`.
 
@@ -32,6 +39,16 @@ def turn_ears(points: Floats, triangles: Ints, angles: Floats) -> Ints:
         triangles: counter-clockwise, (m, 3).
         angles: the angle of the material at each boundary node [rad], infinite inside, (n,).
     """
+    for _ in range(ROUNDS):
+        turned = _turn_ears_once(points, triangles, angles)
+        if np.array_equal(turned, triangles):
+            break
+        triangles = turned
+    return triangles
+
+
+def _turn_ears_once(points: Floats, triangles: Ints, angles: Floats) -> Ints:
+    """One round: no triangle is touched twice."""
     triangles = triangles.copy()
     neighbours, across = _neighbours(triangles)
     touched = np.zeros(len(triangles), dtype=bool)
@@ -44,10 +61,10 @@ def turn_ears(points: Floats, triangles: Ints, angles: Floats) -> Ints:
         node, w = triangles[ear, (side + 2) % 3], triangles[other, far]
         if not FLATTEST < angles[node] < np.inf or touched[ear] or touched[other]:
             continue
-        new = np.array([[node, a, w], [node, w, b]])
-        if _angles_of(points, new).min() > np.radians(8.0):
-            triangles[[ear, other]] = new
-            touched[[ear, other]] = True
+        new = np.array([[node, a, w], [node, w, b]], dtype=np.int64)
+        if _angles_of(points, new).min() > THINNEST:
+            triangles[ear], triangles[other] = new
+            touched[ear] = touched[other] = True
     return triangles
 
 

@@ -33,6 +33,9 @@ SHARE_OF_TIP = 0.8
 """At a corner of the part sharper than an element's good angle, this share of its sine is good."""
 
 
+USUAL = Recipe()
+
+
 @dataclass(frozen=True)
 class Way:
     """One way of meshing.
@@ -44,7 +47,7 @@ class Way:
     """
 
     words: str
-    recipe: Recipe = Recipe()
+    recipe: Recipe = USUAL
     refine: bool = False
 
 

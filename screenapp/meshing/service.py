@@ -58,12 +58,16 @@ class Mesher:
         self._time_limit = time_limit
         self._work = work
         self._lock = threading.Lock()
+        self._closing = threading.Event()
         self._worker: _Worker | None = None
 
     def start(self) -> None:
         """Start the worker without waiting, so that it is warm when a mesh is asked for."""
-        with self._lock:
-            self._ensure()
+        if self._lock.acquire(blocking=False):  # else it is in use, and warm
+            try:
+                self._ensure()
+            finally:
+                self._lock.release()
 
     def mesh(self, shape: Shape, sizes: SizeField, progress: Progress = SILENT) -> Mesh:
         """Mesh a valid shape.
@@ -78,9 +82,11 @@ class Mesher:
         return cast(Mesh, self._run((shape, sizes), progress))
 
     def close(self) -> None:
-        """End the worker.  The mesher may be used again afterwards."""
+        """End the worker; a mesh in the making ends with Cancelled.  May be used again."""
+        self._closing.set()
         with self._lock:
             self._drop()
+            self._closing.clear()
 
     def __enter__(self) -> Self:
         return self
@@ -100,16 +106,21 @@ class Mesher:
         return worker.process.pid if worker is not None else None
 
     def _run(self, request: tuple[object, ...], progress: Progress) -> object:
-        progress.check()
-        with self._lock:
+        stopping = Progress(cancelled=lambda: self._closing.is_set() or progress.cancelled())
+        stopping.check()
+        while not self._lock.acquire(timeout=POLL):  # another thread's mesh is in the making
+            stopping.check()
+        try:
             worker = self._ensure()
             try:
-                worker.wait_ready(progress)
+                worker.wait_ready(stopping)
                 worker.ask(request)
-                kind, answer = worker.wait(progress, self._time_limit)
+                kind, answer = worker.wait(stopping, self._time_limit)
             except BaseException:
                 self._drop()
                 raise
+        finally:
+            self._lock.release()
         if kind == "done":
             return answer
         if isinstance(answer, MeshingError):
