@@ -7,7 +7,10 @@ positive definite matrix allows; where pypardiso is installed it is used instead
 from __future__ import annotations
 
 import importlib.util
+import logging
+import weakref
 from collections.abc import Callable, Sequence
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -18,6 +21,11 @@ from screenapp.model.errors import SolvingError
 
 Floats = NDArray[np.float64]
 Solve = Callable[[Floats], Floats]
+
+_log = logging.getLogger(__name__)
+
+PARDISO_NO_MEMORY = -2
+"""The library's error number for memory that does not suffice."""
 
 ENOUGH = 1e-12
 """Relative residual at which refinement stops."""
@@ -41,7 +49,8 @@ def factorise(matrix: sparse.csc_array) -> Solve:
             "the stiffness matrix holds a number that is not finite",
             "look for sizes, thickness or material values that are far too large or too small",
         )
-    return _pardiso(matrix) if importlib.util.find_spec("pypardiso") else superlu(matrix)
+    solver = _pardiso_solver()
+    return superlu(matrix) if solver is None else _pardiso(solver, matrix)
 
 
 def superlu(matrix: sparse.csc_array) -> Solve:
@@ -58,10 +67,7 @@ def superlu(matrix: sparse.csc_array) -> Solve:
             raise _mechanism() from error
         raise
     except MemoryError as error:
-        raise SolvingError(
-            f"{matrix.shape[0]} unknowns need more memory than this machine has",
-            "ask for larger elements",
-        ) from error
+        raise _no_memory(matrix) from error
 
     def solve(right: Floats) -> Floats:
         return np.asarray(factor.solve(np.ascontiguousarray(right)))
@@ -69,20 +75,39 @@ def superlu(matrix: sparse.csc_array) -> Solve:
     return solve
 
 
-def _pardiso(matrix: sparse.csc_array) -> Solve:
-    """The same by MKL PARDISO, real symmetric positive definite (matrix type 2)."""
-    from pypardiso import PyPardisoSolver
+def _pardiso_solver() -> Any:
+    """A fresh MKL PARDISO for real symmetric positive definite matrices (type 2), or None.
 
-    solver = PyPardisoSolver(mtype=2)
+    The package may be there without a library that it can load: that is no reason not to solve.
+    """
+    if importlib.util.find_spec("pypardiso") is None:
+        return None
+    try:
+        from pypardiso import PyPardisoSolver
+
+        return PyPardisoSolver(mtype=2)
+    except (ImportError, AttributeError, OSError) as error:
+        _log.warning("pypardiso is installed but cannot be used, SuperLU is: %s", error)
+        return None
+
+
+def _pardiso(solver: Any, matrix: sparse.csc_array) -> Solve:
+    """The same by MKL PARDISO, which reads the upper triangle only."""
+    from pypardiso.pardiso_wrapper import PyPardisoError
+
     upper = sparse.csr_matrix(sparse.triu(matrix, format="csr"))
     try:
         solver.factorize(upper)
-    except Exception as error:  # pypardiso raises its own type for a zero pivot
+    except PyPardisoError as error:
+        if error.value == PARDISO_NO_MEMORY:
+            raise _no_memory(matrix) from error
         raise _mechanism() from error
 
     def solve(right: Floats) -> Floats:
-        return np.asarray(solver.solve(upper, right)).reshape(right.shape)
+        return np.asarray(solver.solve(upper, np.asfortranarray(right))).reshape(right.shape)
 
+    # the library's memory is not Python's: give it back when the factor is no longer used
+    weakref.finalize(solve, solver.free_memory, everything=True).atexit = False
     return solve
 
 
@@ -138,6 +163,13 @@ def solve_refined(
 def _relative(gap: Floats, right: Floats) -> float:
     size = np.linalg.norm(right, axis=0)
     return float((np.linalg.norm(gap, axis=0) / np.where(size > 0.0, size, 1.0)).max())
+
+
+def _no_memory(matrix: sparse.csc_array) -> SolvingError:
+    return SolvingError(
+        f"{matrix.shape[0]} unknowns need more memory than this machine has",
+        "ask for larger elements",
+    )
 
 
 def _mechanism() -> SolvingError:

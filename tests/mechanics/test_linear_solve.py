@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import importlib.util
+import sys
 from collections.abc import Sequence
 
 import numpy as np
@@ -79,3 +81,14 @@ def test_nothing_to_solve_is_solved() -> None:
     terms, residual = solve_refined(matrix, np.zeros((3, 1)), _gap(matrix, np.zeros((3, 1))))
     assert not terms[0].any()
     assert residual == 0.0
+
+
+def test_a_pypardiso_that_cannot_be_loaded_is_passed_over(
+    monkeypatch: pytest.MonkeyPatch, caplog: pytest.LogCaptureFixture
+) -> None:
+    """It is found, but importing it fails (None in sys.modules does that): SuperLU steps in."""
+    monkeypatch.setattr(importlib.util, "find_spec", lambda name: name)
+    monkeypatch.setitem(sys.modules, "pypardiso", None)
+    matrix, wanted = _matrix(), np.ones((40, 1))
+    assert factorise(matrix)(matrix @ wanted) == pytest.approx(wanted)
+    assert "pypardiso is installed but cannot be used" in caplog.text
