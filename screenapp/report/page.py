@@ -17,8 +17,8 @@ from screenapp.model.units import format_quantity
 from screenapp.report.drawing import part_svg
 
 CAUTION = (
-    "A screening, not an approval: it covers only what is written here, with the supports and loads "
-    "as assumed. Local codes and a licensed engineer decide."
+    "A screening, not an approval: it covers only what is written here, with supports and loads as "
+    "assumed. Local codes and a licensed engineer decide."
 )
 
 

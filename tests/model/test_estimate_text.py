@@ -9,8 +9,8 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from screenapp.model.findings import Estimate
 from screenapp.model.estimate_text import estimate_text, significant, unit_of, value_text
+from screenapp.model.findings import Estimate
 
 
 @pytest.mark.parametrize(
