@@ -196,3 +196,17 @@ def test_a_tool_left_half_done_leaves_no_trace(on_plate: Hand) -> None:
     on_plate.type("S")
     assert on_plate.part == plate()
     assert not on_plate.canvas.previewing
+
+
+def test_sizes_typed_after_a_typed_place_replace_what_is_shown(hand: Hand) -> None:
+    hand.type("R")
+    hand.go(50.0, 50.0)
+    hand.type("0")
+    hand.tab()
+    hand.type("0")
+    hand.enter()
+    hand.type("80 mm")
+    hand.tab()
+    hand.type("40")
+    hand.enter()
+    assert corners_of(hand) == [(0, 0), (80, 0), (80, 40), (0, 40)]

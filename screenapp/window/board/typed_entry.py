@@ -129,7 +129,9 @@ class EntryRow(QFrame):
         elif fields != self._fields:
             self._typed = {}
             self._build(fields)
-            self._edits[fields[0].name].setFocus(Qt.FocusReason.OtherFocusReason)
+            first = self._edits[fields[0].name]
+            first.setFocus(Qt.FocusReason.OtherFocusReason)
+            first.selectAll()  # typing replaces the live value
         self._show_live()
 
     def eventFilter(self, watched: QObject, event: QEvent) -> bool:
