@@ -13,6 +13,8 @@ from pytestqt.qtbot import QtBot
 
 from screenapp.model.part import StressLimit
 from screenapp.window.document import Document
+from screenapp.window.sheet.field import LINE
+from screenapp.window.sheet.rows import Cross
 from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.wall_paragraph import WallParagraph
 from tests.window.fabricate import plate
@@ -183,11 +185,16 @@ def test_tab_reads_the_sheet_from_top_to_bottom_and_back(sheet: Sheet) -> None:
     assert walked == stops
     QTest.keyClick(QApplication.focusWidget(), Qt.Key.Key_Backtab)
     assert QApplication.focusWidget() is stops[-2]
+    # the cross at the end of a row stands at its first line, however many lines a row has
     places = [
-        w.mapTo(sheet.page, w.rect().center()).y() for w in stops if sheet.page.isAncestorOf(w)
+        w.mapTo(sheet.page, w.rect().center()).y()
+        for w in stops
+        if sheet.page.isAncestorOf(w) and not isinstance(w, Cross)
     ]
-    # the button at the end of a row stands at its first line, one line above a second one
-    assert all(b >= a - 26 for a, b in itertools.pairwise(places))
+    assert all(b >= a - LINE / 2 for a, b in itertools.pairwise(places))
+    for before, cross in itertools.pairwise(stops):
+        if isinstance(cross, Cross):
+            assert cross.parentWidget().isAncestorOf(before)
 
 
 def test_a_value_reached_by_tab_is_scrolled_to(sheet: Sheet) -> None:
