@@ -1,4 +1,4 @@
-"""Edits of holes, and moving a selection of corners, edges, holes and probes together."""
+"""Edits of holes, and moving a selection of corners, edges, holes, zones and probes together."""
 
 from __future__ import annotations
 
@@ -81,7 +81,7 @@ def hole_centre(hole: Hole) -> Point:
 
 
 def move(part: Part, ids: Iterable[str], dx: float, dy: float) -> Part:
-    """Move all the named corners, edges (with both ends), holes and probes by (dx, dy) [mm].
+    """Move all the named corners, edges (with both ends), holes, zones and probes by (dx, dy) [mm].
 
     Supports, loads and limits follow what they are on and are passed over here; so are ids that
     nothing bears.
@@ -97,17 +97,19 @@ def move(part: Part, ids: Iterable[str], dx: float, dy: float) -> Part:
         if going:
             to = {c.id: shifted(c.at, f"corner {c.id}") for c in going}
             after = with_loop(after, owner, moved_loop(loop, to))
-    holes = tuple(
-        replace(h, centre=shifted(h.centre, f"hole {h.id}"))
-        if h.id in wanted and isinstance(h, CircleHole | SlotHole)
-        else h
-        for h in after.holes
-    )
+
+    def carried(form: Hole) -> Hole:
+        if form.id in wanted and isinstance(form, CircleHole | SlotHole):
+            return replace(form, centre=shifted(form.centre, form.id))
+        return form
+
+    holes = tuple(carried(h) for h in after.holes)
+    zones = tuple(replace(z, form=carried(z.form)) for z in after.zones)
     readings = tuple(
         replace(p, at=shifted(p.at, f"probe {p.id}")) if p.id in wanted else p
         for p in part.readings
     )
-    return without_stale_formulas(part, replace(after, holes=holes, readings=readings))
+    return without_stale_formulas(part, replace(after, holes=holes, zones=zones, readings=readings))
 
 
 def _going_corners(loop: Loop, wanted: set[str], whole: bool) -> list[Corner]:

@@ -202,9 +202,10 @@ def remove_corner(part: Part, corner: str) -> Outcome:
     corners = tuple(c for c in loop.corners if c.id != corner)
     edges = tuple(joined if e is before else e for e in loop.edges if e is not after)
     if n <= 2 or (n == 3 and all(e.through is None for e in edges)):
+        whole = "zone" if found.inside else "hole" if found.owner else "outline"
         raise EditError(
-            f"without corner {corner} the {'hole' if found.owner else 'outline'} encloses nothing",
-            "remove the whole hole" if found.owner else "draw the outline anew",
+            f"without corner {corner} the {whole} encloses nothing",
+            f"remove the whole {whole}" if found.owner else "draw the outline anew",
         )
     bare = drop_from_places(part, {corner, after.id})
     result = with_loop(bare.part, found.owner, Loop(corners, edges))

@@ -7,12 +7,13 @@ from dataclasses import replace
 from screenapp.model.edit_loops import remove_corner
 from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_rules import EditError, Outcome, must_find, without_stale_formulas
+from screenapp.model.edit_zones import remove_zone
 from screenapp.model.features import find, loops_of
 from screenapp.model.part import Part
 
 
 def remove(part: Part, *ids: str) -> Outcome:
-    """Remove everything named: corners, holes, supports, loads, cases, limits, probes.
+    """Remove everything named: corners, holes, zones, supports, loads, cases, limits, probes.
 
     Of several ids those that go with another one are passed over.  A loop of which so many
     corners are named that nothing would be left goes as a whole.
@@ -30,7 +31,10 @@ def remove(part: Part, *ids: str) -> Outcome:
     for where, owner, loop in loops_of(part):
         named = [c.id for c in loop.corners if c.id in ids]
         if named and len(loop.corners) - len(named) < 2:
-            outcome = remove_hole(now, owner) if where != "outline" else remove_outline(now)
+            if where.startswith("zones"):
+                outcome = Outcome(remove_zone(now, owner))
+            else:
+                outcome = remove_hole(now, owner) if owner else remove_outline(now)
             now, lost = outcome.part, [*lost, *outcome.lost]
     for id_ in ids:
         if find(now, id_) is not None:
@@ -48,6 +52,8 @@ def _remove_one(part: Part, id_: str) -> Outcome:
         return remove_corner(part, id_)
     if kind == "hole":
         return remove_hole(part, id_)
+    if kind == "zone":
+        return Outcome(remove_zone(part, id_))
     if kind == "support":
         return Outcome(replace(part, supports=tuple(s for s in part.supports if s.id != id_)))
     if kind == "limit":

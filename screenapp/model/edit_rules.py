@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 
 from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.features import Found, everything, find
-from screenapp.model.part import Loop, LoopHole, Part, Point
+from screenapp.model.part import Loop, LoopHole, Part, Point, Zone
 from screenapp.model.size_faults import FARTHEST, id_faults, size_faults
 from screenapp.model.value_faults import (
     limit_faults,
@@ -39,7 +39,7 @@ class EditError(ScreenappError):
 def new_id(part: Part, prefix: str) -> str:
     """An id that the part does not use yet: the prefix and the number after the largest one.
 
-    Prefixes: c corner, e edge, h hole, s support, k case, l load, g limit, p probe.
+    Prefixes: c corner, e edge, h hole, z zone, s support, k case, l load, g limit, p probe.
 
     Example:
         >>> new_id(Part(), "h")
@@ -142,6 +142,8 @@ def value_at(part: Part, field: str) -> float | None:
     node: object = part
     rest = field
     while rest:
+        if isinstance(node, Zone) and not rest.startswith("thickness"):
+            node = node.form
         if isinstance(node, LoopHole):
             node = node.loop
         if isinstance(node, tuple) and node and not isinstance(node[0], float):
@@ -163,9 +165,16 @@ def value_at(part: Part, field: str) -> float | None:
 
 
 def with_loop(part: Part, owner: str, loop: Loop) -> Part:
-    """The part with the outline (`owner` "") or the loop of a loop hole replaced."""
+    """The part with the outline (`owner` "") or the loop of a hole or zone replaced."""
     if not owner:
         return replace(part, outline=loop)
+    if any(z.id == owner for z in part.zones):
+        return replace(
+            part,
+            zones=tuple(
+                replace(z, form=LoopHole(z.id, loop)) if z.id == owner else z for z in part.zones
+            ),
+        )
     return replace(
         part,
         holes=tuple(
@@ -176,14 +185,14 @@ def with_loop(part: Part, owner: str, loop: Loop) -> Part:
 
 
 def loop_of(part: Part, owner: str) -> Loop:
-    """The outline (`owner` "") or the loop of a loop hole.
+    """The outline (`owner` "") or the loop of a hole or zone.
 
     Raises:
         EditError: there is none.
     """
     if not owner and part.outline is not None:
         return part.outline
-    for hole in part.holes:
-        if hole.id == owner and isinstance(hole, LoopHole):
-            return hole.loop
+    for form in (*part.holes, *(z.form for z in part.zones)):
+        if form.id == owner and isinstance(form, LoopHole):
+            return form.loop
     raise EditError("there is no such loop", "draw an outline first")

@@ -55,6 +55,14 @@ from screenapp.model.edit_settings import (
     set_units,
     set_wall_state,
 )
+from screenapp.model.edit_zones import (
+    add_zone,
+    hole_to_zone,
+    remove_zone,
+    reshape_zone,
+    set_zone,
+    zone_to_hole,
+)
 from screenapp.model.features import Found, find, place_name
 
 __all__ = [
@@ -69,8 +77,10 @@ __all__ = [
     "add_probe",
     "add_slot_hole",
     "add_support",
+    "add_zone",
     "find",
     "hole_centre",
+    "hole_to_zone",
     "insert_corner",
     "move",
     "move_corner",
@@ -85,11 +95,13 @@ __all__ = [
     "remove_corner",
     "remove_hole",
     "remove_outline",
+    "remove_zone",
     "rename_case",
     "rename_probe",
     "replace_limit",
     "replace_load",
     "replace_support",
+    "reshape_zone",
     "resize_hole",
     "set_edge_arc",
     "set_material",
@@ -102,5 +114,7 @@ __all__ = [
     "set_title",
     "set_units",
     "set_wall_state",
+    "set_zone",
     "straighten",
+    "zone_to_hole",
 ]

@@ -25,15 +25,17 @@ from screenapp.model.part import (
     Probe,
     SlotHole,
     Support,
+    Zone,
 )
 
-Kind = Literal["corner", "edge", "hole", "support", "case", "load", "limit", "probe"]
-Record = Corner | Edge | Hole | Support | Case | Load | Limit | Probe
+Kind = Literal["corner", "edge", "hole", "zone", "support", "case", "load", "limit", "probe"]
+Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe
 
 PREFIXES: dict[Kind, str] = {
     "corner": "c",
     "edge": "e",
     "hole": "h",
+    "zone": "z",
     "support": "s",
     "case": "k",
     "load": "l",
@@ -50,7 +52,8 @@ class Found:
     Attributes:
         kind: what sort of thing it is.
         record: the record itself.
-        owner: id of the hole for a corner or edge of a loop hole, of the case for a load; else "".
+        owner: id of the hole or zone for a corner or edge of its loop, of the case for a load;
+            else "".
         group: dotted path of the list in the part file that holds it.
     """
 
@@ -64,6 +67,11 @@ class Found:
         """Dotted path of the record in the part file, e.g. "outline.corners.c4"."""
         return f"{self.group}.{self.record.id}"
 
+    @property
+    def inside(self) -> bool:
+        """Whether it is a zone or belongs to one: inside the part, where nothing can stand."""
+        return self.group.startswith("zones")
+
 
 def everything(part: Part) -> Iterator[Found]:
     """All things of a part that bear an id, outline first, in the order of the part file."""
@@ -75,6 +83,8 @@ def everything(part: Part) -> Iterator[Found]:
             yield Found("edge", edge, owner, edges)
     for hole in part.holes:
         yield Found("hole", hole, "", "holes")
+    for zone in part.zones:
+        yield Found("zone", zone, "", "zones")
     for support in part.supports:
         yield Found("support", support, "", "supports")
     for case in part.cases:
@@ -88,23 +98,28 @@ def everything(part: Part) -> Iterator[Found]:
 
 
 def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:
-    """Field, owning hole's id ("" for the outline) and loop of everything drawn as a loop."""
+    """Field, owner's id ("" for the outline, else a hole or zone) and loop of all that is drawn
+    as a loop."""
     if part.outline is not None:
         yield "outline", "", part.outline
     for hole in part.holes:
         if isinstance(hole, LoopHole):
             yield f"holes.{hole.id}", hole.id, hole.loop
+    for zone in part.zones:
+        if isinstance(zone.form, LoopHole):
+            yield f"zones.{zone.id}", zone.id, zone.form.loop
 
 
 Places = dict[str, Found]
-"""Corners, edges and holes of a part by id."""
+"""Corners, edges and holes on the boundary of a part by id."""
 
 
 def places_of(part: Part) -> Places:
-    """Corners, edges and holes of a part by id; of two with one id the first."""
+    """Corners, edges and holes on the boundary by id, of two with one id the first; none of a
+    zone."""
     places: Places = {}
     for found in everything(part):
-        if found.kind in ("corner", "edge", "hole"):
+        if found.kind in ("corner", "edge", "hole") and not found.inside:
             places.setdefault(found.record.id, found)
     return places
 

@@ -84,7 +84,8 @@ def _loops(tree: JsonObject) -> Iterator[tuple[Path, dict[str, Any]]]:
         return
     if isinstance(shape.get("outline"), dict):
         yield ("shape", "outline"), shape["outline"]
-    holes = shape.get("holes")
-    for i, hole in enumerate(holes if isinstance(holes, list) else ()):
-        if isinstance(hole, dict) and hole.get("kind") == "loop":
-            yield ("shape", "holes", i), hole
+    for group in ("holes", "zones"):
+        forms = shape.get(group)
+        for i, form in enumerate(forms if isinstance(forms, list) else ()):
+            if isinstance(form, dict) and form.get("kind") == "loop":
+                yield ("shape", group, i), form

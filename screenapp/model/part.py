@@ -88,6 +88,31 @@ Hole = CircleHole | SlotHole | LoopHole
 
 
 @dataclass(frozen=True)
+class Zone:
+    """A stretch of the wall with a thickness or material of its own: a pad, a pocket, a rib.
+
+    Its middle plane is that of the wall.  What of it lies outside the part does not count; where
+    zones overlap, the later one of the list wins.
+
+    Attributes:
+        form: the closed form, as of a hole; it bears the zone's id.
+        thickness: [mm], None for the wall's.
+        material: name of its material, None for the wall's.
+        name: what the user calls it, may be empty.
+    """
+
+    form: CircleHole | SlotHole | LoopHole
+    thickness: float | None = None
+    material: str | None = None
+    name: str = ""
+
+    @property
+    def id(self) -> str:
+        """The id, unique in the part."""
+        return self.form.id
+
+
+@dataclass(frozen=True)
 class Wall:
     """The wall: `thickness` [mm], the name of its material, and what holds across it."""
 
@@ -332,6 +357,7 @@ class Part:
     formulas: tuple[Formula, ...] = ()
     outline: Loop | None = None
     holes: tuple[Hole, ...] = ()
+    zones: tuple[Zone, ...] = ()
     wall: Wall = Wall(3.0, "")
     materials: tuple[Material, ...] = ()
     supports: tuple[Support, ...] = ()
@@ -343,4 +369,20 @@ class Part:
     @property
     def material(self) -> Material | None:
         """The wall's material, or None while none is chosen."""
-        return next((m for m in self.materials if m.name == self.wall.material), None)
+        return self.material_of(-1)
+
+    def wall_of(self, zone: int) -> Wall:
+        """Thickness and material of a zone, by its index in `zones`; -1 for the wall itself."""
+        if zone < 0:
+            return self.wall
+        own = self.zones[zone]
+        return Wall(
+            self.wall.thickness if own.thickness is None else own.thickness,
+            self.wall.material if own.material is None else own.material,
+            self.wall.state,
+        )
+
+    def material_of(self, zone: int) -> Material | None:
+        """The material of a zone (-1: of the wall itself), None if the part does not carry it."""
+        name = self.wall_of(zone).material
+        return next((m for m in self.materials if m.name == name), None)

@@ -40,6 +40,7 @@ from screenapp.model.part import (
     SlotHole,
     StressLimit,
     Wall,
+    Zone,
 )
 
 FORMAT = "screenapp part"
@@ -120,6 +121,7 @@ def tree_of_part(part: Part) -> Tree:
         "shape": {
             "outline": _loop_tree(part.outline) if part.outline is not None else None,
             "holes": [_hole_tree(h) for h in part.holes],
+            "zones": [_zone_tree(z) for z in part.zones] or None,
         },
         "wall": _tree(part.wall),
         "materials": [_tree(m) for m in part.materials],
@@ -169,6 +171,15 @@ def _hole_tree(hole: Any) -> Tree:
     return _tree(hole)
 
 
+def _zone_tree(zone: Zone) -> Tree:
+    return {
+        **_hole_tree(zone.form),
+        "thickness": zone.thickness,
+        "material": zone.material,
+        "name": zone.name or None,
+    }
+
+
 # --- tree to part ---------------------------------------------------------------------------
 
 
@@ -184,6 +195,7 @@ def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
         formulas=formulas,
         outline=_loop(shape["outline"]) if "outline" in shape else None,
         holes=tuple(_hole(h) for h in shape.get("holes", ())),
+        zones=tuple(_zone(z) for z in shape.get("zones", ())),
         wall=_record(Wall, tree["wall"]) if "wall" in tree else blank.wall,
         materials=tuple(_record(Material, m) for m in tree.get("materials", ())),
         supports=tuple(_record(SUPPORTS[s["kind"]], s) for s in tree.get("supports", ())),
@@ -213,6 +225,16 @@ def _hole(tree: Tree) -> Any:
     if tree["kind"] == "loop":
         return LoopHole(tree["id"], _loop(tree))
     return _record(HOLES[tree["kind"]], tree)
+
+
+def _zone(tree: Tree) -> Zone:
+    thickness = tree.get("thickness")
+    return Zone(
+        _hole(tree),
+        None if thickness is None else float(thickness),
+        tree.get("material"),
+        tree.get("name", ""),
+    )
 
 
 def _record(cls: type[Record], tree: Tree) -> Record:

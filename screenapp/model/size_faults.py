@@ -8,7 +8,7 @@ from collections.abc import Iterator
 from screenapp.model.curves import Segment, arc_through
 from screenapp.model.errors import Fault
 from screenapp.model.features import everything, loops_of
-from screenapp.model.part import CircleHole, Loop, Part, Point, SlotHole
+from screenapp.model.part import CircleHole, Hole, Loop, Part, Point, SlotHole
 
 FARTHEST = 1e6
 """No coordinate or length may be larger [mm]: a kilometre is no workpiece."""
@@ -44,30 +44,36 @@ def id_faults(part: Part) -> list[Fault]:
 
 
 def size_faults(part: Part) -> list[Fault]:
-    """Everything in outline and holes that keeps the boundary from being worked out at all."""
+    """Everything drawn that keeps the boundary and the zones from being worked out at all."""
     if part.outline is None:
         faults = [Fault("the part has no outline", "draw a closed outline", "outline")]
     else:
         faults = []
-    for where, hole, loop in loops_of(part):
-        faults += _loop_faults(loop, where, f"hole {hole}" if hole else "the outline")
+    for where, owner, loop in loops_of(part):
+        word = "zone" if where.startswith("zones") else "hole"
+        faults += _loop_faults(loop, where, f"{word} {owner}" if owner else "the outline")
     for h in part.holes:
-        if isinstance(h, CircleHole | SlotHole):
-            faults += _point_faults(h.centre, f"the centre of hole {h.id}", h.id, _hole(h.id))
-        if isinstance(h, CircleHole):
-            faults += length_fault(h.diameter, f"the diameter of hole {h.id}", h, "diameter")
-        elif isinstance(h, SlotHole):
-            faults += length_fault(h.length, f"the length of slot {h.id}", h, "length")
-            faults += length_fault(h.width, f"the width of slot {h.id}", h, "width")
-            if not math.isfinite(h.angle):
-                faults.append(
-                    _not_a_number("the angle of slot " + h.id, h.id, f"holes.{h.id}.angle")
-                )
+        faults += _form_faults(h, "holes", "slot" if isinstance(h, SlotHole) else "hole")
+    for z in part.zones:
+        faults += _form_faults(z.form, "zones", "zone")
     return faults
 
 
-def _hole(id_: str) -> str:
-    return f"holes.{id_}.centre"
+def _form_faults(form: Hole, group: str, word: str) -> Iterator[Fault]:
+    """Centre and sizes of a circle or slot that is a hole or a zone."""
+    where, id_ = f"{group}.{form.id}", form.id
+    noun = "hole" if group == "holes" else "zone"
+    if isinstance(form, CircleHole | SlotHole):
+        yield from _point_faults(form.centre, f"the centre of {noun} {id_}", id_, f"{where}.centre")
+    if isinstance(form, CircleHole):
+        yield from length_fault(
+            form.diameter, f"the diameter of {word} {id_}", form, "diameter", group
+        )
+    elif isinstance(form, SlotHole):
+        yield from length_fault(form.length, f"the length of {word} {id_}", form, "length", group)
+        yield from length_fault(form.width, f"the width of {word} {id_}", form, "width", group)
+        if not math.isfinite(form.angle):
+            yield _not_a_number(f"the angle of {word} {id_}", id_, f"{where}.angle")
 
 
 def _loop_faults(loop: Loop, where: str, name: str) -> Iterator[Fault]:
@@ -170,10 +176,10 @@ def _not_a_number(name: str, id_: str, field: str, at: Point | None = None) -> F
 
 
 def length_fault(
-    value: float, name: str, hole: CircleHole | SlotHole, attribute: str
+    value: float, name: str, hole: CircleHole | SlotHole, attribute: str, group: str = "holes"
 ) -> Iterator[Fault]:
-    """The fault of a hole's size, if it has one."""
-    field, at = f"holes.{hole.id}.{attribute}", finite_point(hole.centre)
+    """The fault of a hole's or zone's size, if it has one."""
+    field, at = f"{group}.{hole.id}.{attribute}", finite_point(hole.centre)
     if not math.isfinite(value):
         yield _not_a_number(name, hole.id, field, at)
     elif value < SMALLEST or value > FARTHEST:

@@ -26,6 +26,7 @@ from screenapp.model.value_faults import (
     probe_faults,
     wall_faults,
 )
+from screenapp.model.zone_faults import zone_value_faults
 
 
 def faults_of(part: Part) -> tuple[Fault, ...]:
@@ -46,6 +47,8 @@ def check(part: Part) -> Shape:
     """
     faults, shape = _examine(part)
     blocking = tuple(f for f in faults if f.blocks)
+    if part.zones:  # until the mechanics knows them: never a wrong number
+        blocking += (Fault("zones are not screened yet", "remove the zones", "zones"),)
     if blocking or shape is None:
         raise InvalidPartError.of(blocking)
     return shape
@@ -59,6 +62,7 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *id_faults(part),
         *shape_faults,
         *wall_faults(part),
+        *zone_value_faults(part),
         *material_faults(part),
         *dimension_faults(part),
         *support_faults(part, places, shape),

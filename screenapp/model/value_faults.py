@@ -169,14 +169,18 @@ def _stress_limit_faults(limit: StressLimit, where: str) -> Iterator[Fault]:
 
 
 def limit_material_faults(part: Part) -> Iterator[Fault]:
-    """Limits that need a stress which the wall's material has not."""
+    """Limits that need a stress which the material of the wall or of a zone has not."""
+    used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
+    materials = {m.name: m for m in used if m is not None}
     for limit in part.limits:
-        if not isinstance(limit, StressLimit) or part.material is None:
+        if not isinstance(limit, StressLimit):
             continue
-        if getattr(part.material, limit.against, 0.0) is None:
+        for material in materials.values():
+            if getattr(material, limit.against, 0.0) is not None:
+                continue
             words = limit.against.replace("_", " ")
             yield Fault(
-                f"limit {limit.id} asks for the {words}, which “{part.material.name}” has not",
+                f"limit {limit.id} asks for the {words}, which “{material.name}” has not",
                 f"give the material a {words}, or change the limit",
                 f"limits.{limit.id}.against",
                 (limit.id,),

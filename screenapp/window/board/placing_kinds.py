@@ -199,7 +199,7 @@ OWN_WEIGHT = Way(
 def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     """The ways in which a place may be held, the most likely first."""
     found = find(part, on)
-    if found is None or found.kind not in ("edge", "hole", "corner"):
+    if found is None or found.inside or found.kind not in ("edge", "hole", "corner"):
         return ()
     if found.kind == "corner":
         return FIXED, CORNER_ROLLER, MOVED
@@ -209,7 +209,7 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
 def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
     """The ways in which a place may be loaded, the most likely first."""
     found = find(part, on)
-    if found is None or found.kind not in ("edge", "hole", "corner"):
+    if found is None or found.inside or found.kind not in ("edge", "hole", "corner"):
         return ()
     if found.kind == "corner":
         return (POINT,)

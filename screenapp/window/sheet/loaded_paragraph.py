@@ -150,6 +150,8 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
     for found in everything(document.part):
         record = found.record
         kinds: tuple[str, ...]
+        if found.inside:
+            continue
         if found.kind == "hole":
             kinds = ("force", "line", "pressure", "shear")
             if isinstance(record, CircleHole):

@@ -13,7 +13,7 @@ def place_choices(document: Document, corners: bool = True) -> tuple[Choice, ...
     found = {"hole": [], "edge": [], "corner": []}  # type: dict[str, list[Choice]]
     chosen: list[Choice] = []
     for thing in everything(document.part):
-        if thing.kind not in found:
+        if thing.kind not in found or thing.inside:
             continue
         record = thing.record
         if isinstance(record, Corner) and (record.round != 0.0 or not corners):

@@ -30,7 +30,7 @@ class PlaceTool(Tool):
         """Take up what is selected, so that no mouse is needed."""
         canvas, selection = self.canvas, self.canvas.document.selection
         found = find(canvas.document.part, selection[0]) if len(selection) == 1 else None
-        if found is None or found.kind not in ("edge", "hole", "corner"):
+        if found is None or found.inside or found.kind not in ("edge", "hole", "corner"):
             return
         at = canvas.drawn.anchor_of(selection[0])
         if at is not None:

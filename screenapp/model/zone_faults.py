@@ -1,0 +1,40 @@
+"""What is wrong with zones by their values: thickness, material, and the state of the wall."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from screenapp.model.errors import Fault
+from screenapp.model.part import Part
+from screenapp.model.size_faults import FARTHEST, SMALLEST
+
+
+def zone_value_faults(part: Part) -> Iterator[Fault]:
+    """Zones whose thickness or material cannot be worked with; every fault blocks."""
+    for zone in part.zones:
+        where, t = f"zones.{zone.id}", zone.thickness
+        if t is not None and not (math.isfinite(t) and SMALLEST <= t <= FARTHEST):
+            yield Fault(
+                f"zone {zone.id} is {t:g} mm thick",
+                "give a thickness above zero, or make it a hole",
+                f"{where}.thickness",
+                (zone.id,),
+            )
+        if zone.material is not None and all(m.name != zone.material for m in part.materials):
+            known = ", ".join(m.name for m in part.materials) or "none"
+            yield Fault(
+                f"the material “{zone.material}” of zone {zone.id} is not among the part's "
+                f"materials ({known})",
+                "choose another material or add this one",
+                f"{where}.material",
+                (zone.id,),
+            )
+    if part.zones and part.wall.state == "plane strain":
+        yield Fault(
+            f"zone {part.zones[0].id} stands in a wall in plane strain, whose section is the same "
+            "all through",
+            "set the wall to plane stress, or remove the zones",
+            "wall.state",
+            tuple(z.id for z in part.zones),
+        )
