@@ -12,7 +12,7 @@ from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault
 from screenapp.model.features import place_name
 from screenapp.model.ligaments import Ligament, ligaments
-from screenapp.model.part import Part, PointLoad
+from screenapp.model.part import Material, Part, PointLoad
 from screenapp.model.shape import Shape
 from screenapp.model.size_faults import FARTHEST
 
@@ -148,6 +148,14 @@ def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
     material = part.material
     if material is None:
         return
+    if not material.stands_for(part.wall.thickness):
+        yield Fault(
+            f"the figures of “{material.name}” stand for walls {_range_words(material)}, "
+            f"this one has {part.wall.thickness:g} mm",
+            "choose the material anew, or give figures of your own",
+            "wall.material",
+            blocks=False,
+        )
     modulus, proof, strength = material.youngs_modulus, material.proof_stress, material.strength
     if not SOFT <= modulus <= STIFF:
         yield Fault(
@@ -163,6 +171,13 @@ def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
             f"materials.{material.name}.proof_stress",
             blocks=False,
         )
+
+
+def _range_words(m: Material) -> str:
+    """The walls that a material's figures stand for, e.g. "from 3 mm to 16 mm"."""
+    low = f"from {m.thickness_from:g} mm" if m.thickness_from is not None else ""
+    high = f"up to {m.thickness_upto:g} mm" if m.thickness_upto is not None else ""
+    return " ".join(words for words in (low, high) if words)
 
 
 def _point_cautions(part: Part, shape: Shape) -> Iterator[Fault]:

@@ -8,11 +8,11 @@ from dataclasses import dataclass, replace
 
 from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.features import Found, everything, find
+from screenapp.model.material_faults import material_faults
 from screenapp.model.part import Loop, LoopHole, Part, Point, Zone
 from screenapp.model.size_faults import FARTHEST, id_faults, size_faults
 from screenapp.model.value_faults import (
     limit_faults,
-    material_faults,
     mesh_faults,
     probe_faults,
     wall_faults,

@@ -12,6 +12,7 @@ from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import places_of
 from screenapp.model.load_faults import load_faults
+from screenapp.model.material_faults import material_faults
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape, shape_of
 from screenapp.model.size_faults import id_faults, size_faults
@@ -21,7 +22,6 @@ from screenapp.model.value_faults import (
     element_count_faults,
     limit_faults,
     limit_material_faults,
-    material_faults,
     mesh_faults,
     probe_faults,
     wall_faults,

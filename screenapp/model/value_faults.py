@@ -1,4 +1,4 @@
-"""Wall, materials, limits, mesh wishes and probes whose numbers cannot be worked with."""
+"""Wall, limits, mesh wishes and probes whose numbers cannot be worked with."""
 
 from __future__ import annotations
 
@@ -7,11 +7,11 @@ from collections.abc import Iterator
 from typing import get_args
 
 from screenapp.model.errors import Fault
+from screenapp.model.material_faults import positive
 from screenapp.model.part import (
     DisplacementLimit,
     DisplayUnits,
     ElementName,
-    Material,
     MeshWishes,
     Part,
     StressLimit,
@@ -25,11 +25,6 @@ TIGHTEST, LOOSEST = 0.0005, 0.2
 
 MOST_ELEMENTS = 1e6
 """An element size must not ask for more elements than this."""
-
-
-def positive(value: float) -> bool:
-    """Whether a number is finite and above zero."""
-    return math.isfinite(value) and value > 0.0
 
 
 def one_of(value: object, allowed: object, name: str, field: str) -> Iterator[Fault]:
@@ -58,50 +53,6 @@ def wall_faults(part: Part) -> Iterator[Fault]:
             f"the material “{wall.material}” is not among the part's materials ({known})",
             "choose another material or add this one",
             "wall.material",
-        )
-
-
-def material_faults(part: Part) -> Iterator[Fault]:
-    """Properties of all materials that the part carries."""
-    seen: set[str] = set()
-    for m in part.materials:
-        if m.name in seen:
-            yield Fault(
-                f"two materials are called “{m.name}”",
-                "rename or remove one",
-                f"materials.{m.name}",
-            )
-        seen.add(m.name)
-        yield from _properties(m)
-
-
-def _properties(m: Material) -> Iterator[Fault]:
-    where = f"materials.{m.name}"
-    for name, words, unit in (
-        ("youngs_modulus", "the Young's modulus", "MPa"),
-        ("density", "the density", "kg/m³"),
-        ("proof_stress", "the proof stress", "MPa"),
-        ("strength", "the strength", "MPa"),
-    ):
-        value = getattr(m, name)
-        if value is not None and not (positive(value) and 1e-9 < value < 1e12):
-            optional = "" if name in ("youngs_modulus", "density") else ", or leave it out"
-            yield Fault(
-                f"{words} of “{m.name}” is {value:g} {unit}",
-                f"give a sensible number of {unit} above zero{optional}",
-                f"{where}.{name}",
-            )
-    if not -1.0 < m.poissons_ratio < 0.5:
-        yield Fault(
-            f"Poisson's ratio of “{m.name}” is {m.poissons_ratio:g}",
-            "give a ratio above -1 and below 0.5",
-            f"{where}.poissons_ratio",
-        )
-    if m.expansion is not None and not math.isfinite(m.expansion):
-        yield Fault(
-            f"the expansion of “{m.name}” is not a finite number",
-            "give a coefficient in 1/K, or leave it out",
-            f"{where}.expansion",
         )
 
 

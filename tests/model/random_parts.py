@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from dataclasses import fields
+from typing import get_args
+
 from hypothesis import strategies as st
 
 from screenapp.model.part import (
@@ -20,6 +23,7 @@ from screenapp.model.part import (
     Loop,
     LoopHole,
     Material,
+    MaterialFamily,
     MeshWishes,
     Part,
     PointLoad,
@@ -95,7 +99,11 @@ def _loads(case: int):  # type: ignore[no-untyped-def]
 
 def _materials(i: int) -> st.SearchStrategy[Material]:
     name = texts.map(lambda text: f"{text} {i}")
-    return st.builds(Material, name, numbers, numbers, numbers, maybe, maybe, maybe, texts)
+    optional = {f.name: maybe for f in fields(Material) if f.default is None and f.name != "family"}
+    families = st.one_of(st.none(), st.sampled_from(get_args(MaterialFamily)))
+    return st.builds(
+        Material, name, numbers, numbers, numbers, family=families, source=texts, **optional
+    )
 
 
 def _limits(i: int) -> st.SearchStrategy[object]:

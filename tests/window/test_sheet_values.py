@@ -138,9 +138,23 @@ def test_a_chooser_by_keys_alone(sheet: Sheet) -> None:
 def test_choosing_a_material_of_the_library(sheet: Sheet) -> None:
     from screenapp.model.materials import library
 
-    wanted = library()[0]
-    pick(wall(sheet).wall.field("material"), wanted.name)
-    assert sheet.document.part.material == wanted
+    grade = library()[0]
+    pick(wall(sheet).wall.field("material"), "Steel grades", grade.name)
+    assert sheet.document.part.material == grade.at(sheet.document.part.wall.thickness)
+
+
+def test_the_same_material_chosen_anew_for_another_thickness(sheet: Sheet) -> None:
+    document = sheet.document
+    pick(wall(sheet).wall.field("material"), "Steel grades", "S235JR plate")
+    type_into(wall(sheet).wall.field("thickness"), "20 mm")
+    material = document.part.material
+    assert material is not None
+    assert (material.proof_stress, material.stands_for(20.0)) == (235.0, False)
+    pick(wall(sheet).wall.field("material"), "S235JR plate")
+    material = document.part.material
+    assert material is not None
+    assert (material.proof_stress, material.stands_for(20.0)) == (225.0, True)
+    assert [m.name for m in document.part.materials] == ["S235JR plate"]
 
 
 def test_a_material_of_ones_own(sheet: Sheet) -> None:

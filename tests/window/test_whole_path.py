@@ -274,7 +274,7 @@ def say_what_it_is_made_of(main: MainWindow) -> None:
     """Thickness and material, in the sheet's second paragraph."""
     wall = main.sheet.paragraph(2)
     type_into(wall.wall.field("thickness"), f"{THICKNESS:g}")  # type: ignore[attr-defined]
-    pick(wall.missing.field("choose"), "S355J2 plate")
+    pick(wall.missing.field("choose"), "Steel grades", "S355J2 plate")
     assert main.document.part.wall.thickness == THICKNESS
     assert main.document.part.wall.material == "S355J2 plate"
 

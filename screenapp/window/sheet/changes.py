@@ -77,11 +77,13 @@ def set_mesh(document: Document, name: str, **fields: Any) -> None:
 
 
 def choose_material(document: Document, material: Material) -> None:
-    """Make the wall of a material, which the part takes up if it has not got it."""
+    """Make the wall of a material, which the part takes up in place of its last or a namesake."""
     part = document.part
-    materials = part.materials
-    if all(m.name != material.name for m in materials):
-        materials = (*(m for m in materials if m.name != part.wall.material), material)
+    if material in part.materials:
+        materials = part.materials
+    else:
+        replaced = (part.wall.material, material.name)
+        materials = (*(m for m in part.materials if m.name not in replaced), material)
     wall = replace(part.wall, material=material.name)
     apply(document, f"material {material.name}", replace(part, materials=materials, wall=wall))
 
@@ -94,7 +96,7 @@ def own_material(document: Document) -> None:
     name = next(
         n for n in ("Own material", *(f"Own material {i}" for i in range(2, 999))) if n not in names
     )
-    own = replace(base, name=name, source="own figures")
+    own = replace(base, name=name, thickness_from=None, thickness_upto=None, source="own figures")
     apply(
         document,
         "own material",

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from typing import get_args
+
 from screenapp.model.errors import Fault
 from screenapp.model.materials import library
-from screenapp.model.part import Material
+from screenapp.model.part import Material, MaterialFamily
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
@@ -117,7 +119,12 @@ class WallParagraph(Paragraph):
         if lines:
             lines.insert(0, Choice("-", "In this part"))
             lines.append(Choice("-", "Library"))
-        lines += [Choice(m.name, m.name, self._remark(m)) for m in library() if m.name not in own]
+        offered = [grade.at(part.wall.thickness) for grade in library()]
+        for family in get_args(MaterialFamily):
+            kin = [m for m in offered if m.family == family and m.name not in own]
+            grades = tuple(Choice(m.name, m.name, self._remark(m)) for m in kin)
+            if grades:
+                lines.append(Choice(family, f"{family.capitalize()} grades", children=grades))
         lines += [Choice("-", ""), Choice(OWN, "Own material…", "give its figures")]
         return tuple(lines)
 
@@ -130,5 +137,9 @@ class WallParagraph(Paragraph):
         if key == OWN:
             changes.own_material(self.document)
             return
-        known = {m.name: m for m in (*library(), *part.materials)}
-        changes.choose_material(self.document, known[key])
+        known = {grade.name: grade.at(part.wall.thickness) for grade in library()}
+        own = next((m for m in part.materials if m.name == key), None)
+        if own is None or not own.stands_for(part.wall.thickness):
+            own = known.get(key, own)
+        assert own is not None
+        changes.choose_material(self.document, own)
