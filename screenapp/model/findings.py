@@ -197,3 +197,12 @@ class Findings:
     def last(self) -> Fields | None:
         """The arrays of the last pass, None when only the record was kept."""
         return self.fields[-1] if self.fields else None
+
+    @property
+    def governing(self) -> LimitFindings | None:
+        """The limit that the verdict rests on: the worst verdict, then the most used; None if no
+        limit is set."""
+        order: list[Verdict] = ["holds", "undecided", "does not hold"]
+        return max(
+            self.limits, key=lambda f: (order.index(f.verdict), f.utilisation.value), default=None
+        )

@@ -9,14 +9,9 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from screenapp.model.allowables import allowable
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
-from screenapp.model.part import DisplacementLimit, Material, Part, StressLimit
-
-
-def allowable(limit: StressLimit, material: Material) -> float | None:
-    """The stress [MPa] that the limit allows; None if the material does not have it."""
-    base = getattr(material, limit.against)
-    return None if base is None else float(base) / limit.factor
+from screenapp.model.part import DisplacementLimit, Part, StressLimit
 
 
 def limit_name(limit: StressLimit | DisplacementLimit) -> str:
@@ -147,12 +142,6 @@ def _scaled(estimate: Estimate, factor: float) -> Estimate:
     return Estimate(
         estimate.value * factor, estimate.low * factor, estimate.high * factor, estimate.trust
     )
-
-
-def governing(limits: Sequence[LimitFindings]) -> LimitFindings | None:
-    """The limit that the verdict rests on: the worst verdict, then the most used; None if none."""
-    order: list[Verdict] = ["holds", "undecided", "does not hold"]
-    return max(limits, key=lambda f: (order.index(f.verdict), f.utilisation.value), default=None)
 
 
 def overall(limits: Sequence[LimitFindings]) -> tuple[Verdict, str, tuple[str, ...]]:

@@ -8,10 +8,10 @@ from math import floor, log10
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.allowables import allowable
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part, StressLimit
 from screenapp.model.solution import principal, von_mises
-from screenapp.screening.limits import allowable
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]

@@ -22,7 +22,6 @@ from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
 from screenapp.model.part import Part, Probe, StressLimit
 from screenapp.model.part_json import screening_key
-from screenapp.screening.limits import governing
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
 from screenapp.window.ask import Ask
@@ -215,7 +214,7 @@ class MainWindow(QMainWindow):
         """Paint what was found, unless a lens for results is chosen already."""
         findings = self.document.findings
         if findings is not None and self.document.view.lens in ("Shape", "Mesh"):
-            worst = governing(findings.limits)
+            worst = findings.governing
             cases = [case.id for case in self.document.part.cases]
             self.document.look(
                 lens="Utilisation" if _judges_stress(self.document.part) else "Stress",

@@ -14,13 +14,13 @@ from pytest_benchmark.fixture import BenchmarkFixture
 from pytestqt.qtbot import QtBot
 
 from screenapp.model.mesh import Mesh
-from screenapp.window.board import colours
+from screenapp.report import colours
+from screenapp.report.raster import Viewport, rasterise
 from screenapp.window.board.board import Board
 from screenapp.window.board.field_item import GROWN, grow
 from screenapp.window.board.lens_painter import LensPainter
 from screenapp.window.board.line_raster import rasterise_lines
 from screenapp.window.board.mesh_item import mesh_lines
-from screenapp.window.board.raster import Viewport, rasterise
 from screenapp.window.document import Document
 from tests.window import fabricate as made
 

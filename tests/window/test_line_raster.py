@@ -6,9 +6,9 @@ import numpy as np
 import pytest
 from numpy.testing import assert_allclose
 
+from screenapp.report.raster import Viewport
 from screenapp.window.board.line_raster import rasterise_lines
 from screenapp.window.board.mesh_item import mesh_lines
-from screenapp.window.board.raster import Viewport
 from tests.window import fabricate as made
 
 VIEW = Viewport(0.0, 40.0, 1.0, 1.0, 60, 40)

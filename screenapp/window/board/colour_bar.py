@@ -20,8 +20,8 @@ from PySide6.QtGui import (
 )
 from PySide6.QtWidgets import QLineEdit, QPushButton, QWidget
 
+from screenapp.report.colours import Scale
 from screenapp.window import theme
-from screenapp.window.board.colours import Scale
 from screenapp.window.board.overlay import Anchor
 from screenapp.window.board.ticks import end_text, ticks
 

@@ -7,8 +7,8 @@ from numpy.typing import NDArray
 from PySide6.QtCore import QRectF
 from PySide6.QtGui import QPainterPath
 
-from screenapp.window.board.colours import Scale
-from screenapp.window.board.raster import Image, Viewport, rasterise
+from screenapp.report.colours import Scale
+from screenapp.report.raster import Image, Viewport, rasterise
 from screenapp.window.board.screen_item import Z_FIELD
 from screenapp.window.board.view_image import ViewImage
 

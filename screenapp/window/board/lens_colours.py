@@ -9,10 +9,10 @@ from screenapp.model.estimate_text import unit_of
 from screenapp.model.kinds import KindName
 from screenapp.model.part import DisplayUnits
 from screenapp.model.units import parse_quantity
+from screenapp.report import colours
+from screenapp.report.colours import Scale
 from screenapp.window import theme
-from screenapp.window.board import colours
 from screenapp.window.board.colour_bar import BarContent
-from screenapp.window.board.colours import Scale
 from screenapp.window.document import Lens
 from screenapp.window.painted import Painting
 

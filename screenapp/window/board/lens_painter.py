@@ -9,11 +9,11 @@ from PySide6.QtCore import QObject
 from PySide6.QtGui import QPainterPath
 
 from screenapp.model.findings import Fields, Findings
+from screenapp.report.colours import Scale
 from screenapp.window import theme
 from screenapp.window.board.callouts import Callout, CalloutItem, PointValue
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.colour_bar import TAKEN, ColourBar
-from screenapp.window.board.colours import Scale
 from screenapp.window.board.field_item import FieldItem
 from screenapp.window.board.hatching import HatchItem, Zone
 from screenapp.window.board.lens_colours import bar_content, scale_of

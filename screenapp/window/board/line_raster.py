@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.window.board.raster import Viewport, counted
+from screenapp.report.raster import Viewport, counted
 
 Floats = NDArray[np.float64]
 Image = NDArray[np.float32]

@@ -8,10 +8,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.model.mesh import Mesh
-from screenapp.window.board.colours import Words, veil
+from screenapp.report.colours import Words, veil
+from screenapp.report.raster import Image, Viewport
 from screenapp.window.board.field_item import bounds_of
 from screenapp.window.board.line_raster import rasterise_lines
-from screenapp.window.board.raster import Image, Viewport
 from screenapp.window.board.screen_item import Z_MESH
 from screenapp.window.board.view_image import ViewImage
 

@@ -11,7 +11,7 @@ import numpy as np
 from numpy.typing import NDArray
 from PySide6.QtCore import QObject, QRunnable, QThreadPool, Signal
 
-from screenapp.window.board.raster import Viewport
+from screenapp.report.raster import Viewport
 
 log = logging.getLogger(__name__)
 

@@ -18,8 +18,8 @@ from PySide6.QtCore import QRectF, Qt, QTimer, Signal, Slot
 from PySide6.QtGui import QBrush, QColor, QImage, QPainter, QPainterPath, QRegion, QTransform
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
+from screenapp.report.raster import Viewport
 from screenapp.window.board.picture_jobs import Picture, PictureJob, Render, Scalars, threads
-from screenapp.window.board.raster import Viewport
 
 log = logging.getLogger(__name__)
 

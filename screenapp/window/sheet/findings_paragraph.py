@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import math
 
+from screenapp.model.allowables import allowable
 from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
-from screenapp.screening.limits import allowable
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph

@@ -7,9 +7,9 @@ Tables hold premultiplied 0xAARRGGBB words, as QImage's `Format_ARGB32_Premultip
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cache
 
 import numpy as np
-import pyqtgraph as pg
 from numpy.typing import NDArray
 
 Words = NDArray[np.uint32]
@@ -71,7 +71,7 @@ def utilisation(largest: float) -> Scale:
     """The scale of utilisation from 0 to the largest value, within 4/3 and 2."""
     high = float(np.clip(largest, LEAST_USE_SHOWN, MOST_USE))
     over = int(np.ceil(high * ENTRIES)) - ENTRIES
-    below = _from_map("CET-L12", ENTRIES + 1)
+    below = _from_map("cet_CET_L12", ENTRIES + 1)
     stops = np.array([_rgb(c) for c in _OVER], dtype=float)
     at = np.linspace(0.0, len(stops) - 1.0, over)
     above = np.stack([np.interp(at, np.arange(len(stops)), stops[:, k]) for k in range(3)], axis=1)
@@ -94,9 +94,16 @@ def veil(colour: str, strength: float) -> Words:
     return np.asarray(opacity << 24 | _packed(premultiplied), dtype=np.uint32)
 
 
+@cache
 def _from_map(name: str, entries: int = ENTRIES) -> Words:
-    rgba = pg.colormap.get(name).map(np.linspace(0.0, 1.0, entries), mode="byte")
-    return _words(np.asarray(rgba)[:, :3].astype(float))
+    from matplotlib import colormaps  # not at the top: the window starts without it
+
+    if name not in colormaps:
+        import colorcet  # noqa: F401  (registers its maps with matplotlib)
+    known = np.linspace(0.0, 1.0, colormaps[name].N)
+    colours = 255.0 * colormaps[name](known)
+    at = np.linspace(0.0, 1.0, entries)
+    return _words(np.stack([np.interp(at, known, colours[:, k]) for k in range(3)], axis=1))
 
 
 def _words(rgb: NDArray[np.float64]) -> Words:

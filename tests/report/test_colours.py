@@ -7,7 +7,7 @@ import itertools
 import numpy as np
 import pytest
 
-from screenapp.window.board import colours
+from screenapp.report import colours
 
 
 def rgb(word: int) -> np.ndarray:

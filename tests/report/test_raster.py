@@ -8,7 +8,7 @@ from numpy.testing import assert_allclose, assert_array_equal
 from scipy.ndimage import label
 from shapely import Polygon, contains_xy
 
-from screenapp.window.board.raster import Viewport, rasterise
+from screenapp.report.raster import Viewport, rasterise
 from tests.window import fabricate as made
 
 VIEW = Viewport(left=-70.0, top=46.5, per_pixel_x=0.2, per_pixel_y=0.2, width=700, height=465)
