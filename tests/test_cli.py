@@ -21,7 +21,7 @@ def test_screen_answers_with_its_status_and_writes_the_record(
     record = json.loads(capsys.readouterr().out)
     assert record["verdict"] == ("holds" if status == 0 else "does not hold")
     written = {path.name for path in tmp_path.iterdir()}
-    endings = ("html", "result.json", "part.json", "peaks.csv", "readings.csv", "vtu")
+    endings = ("html", "result.json", "part.json", "peaks.csv", "readings.csv", "vtu", "png")
     assert written == {f"{name}.{ending}" for ending in endings}
 
 

@@ -10,7 +10,9 @@ from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import part_to_text
 from screenapp.model.result_json import findings_to_record, record_to_text
+from screenapp.model.shape import shape_of
 from screenapp.report.page import record_page
+from screenapp.report.picture import part_picture
 from screenapp.report.tables import peaks_csv, readings_csv
 from screenapp.report.vtu import write_vtu
 
@@ -27,7 +29,8 @@ def write_record(part: Part, findings: Findings, folder: Path, source: Path) -> 
     """Write everything about a screening into `folder` and return the files written.
 
     Files: NAME.html (to read and print), NAME.result.json (the result record), NAME.part.json (the
-    part as screened), NAME.peaks.csv, NAME.readings.csv, NAME.vtu (the fields of the last pass).
+    part as screened), NAME.peaks.csv, NAME.readings.csv, NAME.vtu (the fields of the last pass),
+    NAME.png (the part with the field its verdict rests on).
 
     Raises:
         OSError: the folder cannot be made or written to.
@@ -51,5 +54,8 @@ def write_record(part: Part, findings: Findings, folder: Path, source: Path) -> 
     if findings.last is not None:
         path = folder / f"{stem}.vtu"
         write_vtu(part, findings.last, path)
+        written.append(path)
+        path = folder / f"{stem}.png"
+        write_atomically(path, part_picture(part, shape_of(part), findings))
         written.append(path)
     return written

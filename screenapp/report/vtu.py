@@ -10,6 +10,7 @@ import numpy as np
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part
 from screenapp.model.solution import von_mises
+from screenapp.report.picture_field import out_of_plane_ratio
 
 
 def write_vtu(part: Part, fields: Fields, path: Path) -> None:
@@ -18,9 +19,7 @@ def write_vtu(part: Part, fields: Fields, path: Path) -> None:
     Arrays are named after the case's id: `displacement k1`, `stress k1` (σx, σy, τxy),
     `von Mises k1`.  In plane strain the von Mises stress counts σz.
     """
-    material = part.material
-    strain = part.wall.state == "plane strain" and material is not None
-    poisson = material.poissons_ratio if strain and material is not None else 0.0
+    poisson = out_of_plane_ratio(part)
     mesh = fields.mesh
     points = np.column_stack([mesh.nodes, np.zeros(mesh.n_nodes)])
     at_nodes: dict[str, object] = {}
