@@ -84,11 +84,11 @@ _UNARY: dict[type[ast.unaryop], Callable[[float], float]] = {
 }
 FUNCTIONS = tuple(sorted((*_ONE_ARGUMENT, *_MANY_ARGUMENTS)))
 
-_TOKEN = re.compile(
+TOKEN = re.compile(
     r"\s+ | (?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?(?!\w|\.\d) | [^\W\d]\w* | \*\* | [-+*/(),]",
     re.VERBOSE,
 )
-_SAME = str.maketrans({"−": "-", "–": "-", "×": "*", "·": "*", "÷": "/"})
+SAME = str.maketrans({"−": "-", "–": "-", "×": "*", "·": "*", "÷": "/"})
 
 
 def evaluate(text: str, dimensions: Mapping[str, float]) -> float:
@@ -133,6 +133,34 @@ def names_in(text: str) -> frozenset[str]:
     return frozenset(found - set(FUNCTIONS) - set(_CONSTANTS))
 
 
+def plain_number(value: float) -> str:
+    """A number as an expression writes it; it reads back exactly.
+
+    Example:
+        >>> plain_number(12.0), plain_number(0.1)
+        ('12', '0.1')
+    """
+    return f"{value:.0f}" if value == round(value) and abs(value) < 1e15 else repr(value)
+
+
+def with_name_replaced(text: str, name: str, by: str) -> str:
+    """The expression with every use of a name replaced by other text; all else stays as written.
+
+    Example:
+        >>> with_name_replaced("width/2 - w", "w", "5")
+        'width/2 - 5'
+    """
+    normal = unicodedata.normalize("NFKC", name)
+    pieces, at = [], 0
+    while at < len(text):
+        token = TOKEN.match(text, at)
+        word = token.group() if token is not None else text[at]
+        is_name = word.isidentifier() and unicodedata.normalize("NFKC", word) == normal
+        pieces.append(by if is_name else word)
+        at += len(word)
+    return "".join(pieces)
+
+
 def check_name(name: str) -> None:
     """Raise ExpressionError if a dimension cannot have this name."""
     if not name.isidentifier() or keyword.iskeyword(name):
@@ -150,12 +178,12 @@ def _parse(text: str) -> ast.expr:
             f"the expression is {len(text)} characters long, {LONGEST} are allowed",
             "put parts of it into dimensions of their own",
         )
-    plain = text.translate(_SAME).strip()
+    plain = text.translate(SAME).strip()
     if not plain:
         raise ExpressionError("the expression is empty", "give a number or an expression")
     at = 0
     while at < len(plain):
-        token = _TOKEN.match(plain, at)
+        token = TOKEN.match(plain, at)
         if token is None:
             raise ExpressionError(*_stranger(text, plain, at))
         at = token.end()

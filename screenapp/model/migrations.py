@@ -2,6 +2,7 @@
 
 Version 1 listed its readings as `probes`, which could only be points and had no `kind`.
 Version 2 lists `readings`, each with a `kind`, so that cuts can stand beside points.
+Version 3 lets the value of a dimension be an expression, and lets it say what it measures.
 """
 
 from __future__ import annotations
@@ -23,7 +24,11 @@ def from_1_to_2(tree: JsonObject) -> None:
             reading.setdefault("kind", "probe")
 
 
-STEPS: dict[int, Callable[[JsonObject], None]] = {1: from_1_to_2}
+def from_2_to_3(_tree: JsonObject) -> None:
+    """Everything that version 2 could say means the same."""
+
+
+STEPS: dict[int, Callable[[JsonObject], None]] = {1: from_1_to_2, 2: from_2_to_3}
 """The step that leads from each older version to the next one."""
 
 

@@ -32,6 +32,7 @@ DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
 MaterialFamily = Literal[
     "steel", "cast iron", "aluminium", "magnesium", "titanium", "copper", "zinc", "plastic"
 ]
+Measures = Literal["length", "angle", "number"]
 
 
 @dataclass(frozen=True)
@@ -354,12 +355,16 @@ class Probe:
 
 @dataclass(frozen=True)
 class Dimension:
-    """A named value that expressions may use, with the bounds it may vary within [mm or deg]."""
+    """A named value that expressions may use, with the bounds it may vary within.
+
+    `measures` says what the numbers are: a length [mm], an angle [deg] or a plain number.
+    """
 
     name: str
     value: float
     lower: float | None = None
     upper: float | None = None
+    measures: Measures = "length"
 
 
 @dataclass(frozen=True)

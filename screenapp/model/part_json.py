@@ -14,8 +14,8 @@ from dataclasses import replace
 from pathlib import Path
 
 from screenapp.model.atomic_write import write_atomically
-from screenapp.model.errors import Fault, InvalidPartError, PartFileError
-from screenapp.model.formulas import number_slots, put_back, work_out
+from screenapp.model.errors import Fault, PartFileError
+from screenapp.model.formulas import number_slots, work_out, written_tree
 from screenapp.model.json_reader import JsonObject, dotted, line_of, read_json
 from screenapp.model.json_writer import json_text
 from screenapp.model.migrations import migrate
@@ -24,10 +24,7 @@ from screenapp.model.part import Part
 from screenapp.model.part_tree import (
     FORMAT,
     VERSION,
-    Tree,
     part_of_tree,
-    tree_of_part,
-    without_blanks,
 )
 from screenapp.model.schema_check import schema_faults
 
@@ -43,7 +40,7 @@ def part_to_text(part: Part) -> str:
     Raises:
         PartFileError: a number of the part is not finite; the faults name every such field.
     """
-    tree = _written_tree(part)
+    tree = written_tree(part)
     slots = [(holder[key], path) for holder, key, path in number_slots(tree)]
     slots += [
         (value, ("dimensions", i, key))
@@ -145,38 +142,12 @@ def part_from_text(text: str, name: str = "") -> Part:
     return part_of_tree(tree, formulas)
 
 
-def with_dimension_value(part: Part, name: str, value: float) -> Part:
-    """The part with another value of one dimension, all formulas worked out again.
-
-    Raises:
-        KeyError: the part has no such dimension.
-        InvalidPartError: a formula has no value with it; the faults name the fields.
-    """
-    if all(d.name != name for d in part.dimensions):
-        raise KeyError(name)
-    tree = _written_tree(part)
-    for dimension in tree["dimensions"]:
-        if dimension["name"] == name:
-            dimension["value"] = value
-    formulas, faults = work_out(tree)
-    if faults:
-        raise InvalidPartError.of(faults)
-    return part_of_tree(tree, formulas)
-
-
 # --- steps ----------------------------------------------------------------------------------
-
-
-def _written_tree(part: Part) -> Tree:
-    tree = tree_of_part(part)
-    put_back(tree, part.formulas)
-    written: Tree = without_blanks(tree)
-    return written
 
 
 def _loose_text(part: Part) -> str:
     """The text to hash: as stored; a number that is not finite is spelt out."""
-    tree = _written_tree(part)
+    tree = written_tree(part)
     for holder, key, _ in list(number_slots(tree)):
         if isinstance(holder[key], float) and not math.isfinite(holder[key]):
             holder[key] = str(holder[key])

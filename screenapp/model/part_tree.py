@@ -44,7 +44,7 @@ from screenapp.model.part import (
 )
 
 FORMAT = "screenapp part"
-VERSION = 2
+VERSION = 3
 """The version that is written; `migrations.py` tells what each version changed."""
 
 Tree = dict[str, Any]
@@ -117,7 +117,7 @@ def tree_of_part(part: Part) -> Tree:
         "title": part.title,
         "notes": part.notes,
         "display_units": part.display_units,
-        "dimensions": [_tree(d) for d in part.dimensions],
+        "dimensions": [_dimension_tree(d) for d in part.dimensions],
         "shape": {
             "outline": _loop_tree(part.outline) if part.outline is not None else None,
             "holes": [_hole_tree(h) for h in part.holes],
@@ -156,6 +156,12 @@ def _tree(record: Any) -> Tree:
         if name == "id" and type(record) in KIND_OF:
             tree["kind"] = KIND_OF[type(record)]
     return tree
+
+
+def _dimension_tree(dimension: Dimension) -> Tree:
+    """A length need not say that it is one."""
+    tree = _tree(dimension)
+    return tree if dimension.measures != "length" else {**tree, "measures": None}
 
 
 def _loop_tree(loop: Loop) -> Tree:

@@ -73,10 +73,14 @@ def dimension_faults(part: Part) -> Iterator[Fault]:
         elif (d.lower is not None and d.value < d.lower) or (
             d.upper is not None and d.value > d.upper
         ):
+            low = d.lower is not None and d.value < d.lower
+            bound = d.lower if low else d.upper
             yield Fault(
-                f"dimension “{d.name}” is {d.value:g}, outside its bounds",
-                "change the value or its bounds",
+                f"dimension “{d.name}” is {d.value:g}, "
+                f"{'below' if low else 'above'} its bound of {bound:g}",
+                "change the value or the bound",
                 f"{where}.value",
+                blocks=False,
             )
 
 
