@@ -8,6 +8,7 @@ from dataclasses import replace
 import pytest
 
 from screenapp.model import edits
+from screenapp.model.edit_dimensions import set_dimension
 from screenapp.model.errors import PartFileError
 from screenapp.model.part import (
     CircleHole,
@@ -25,7 +26,6 @@ from screenapp.model.part_json import (
     part_from_text,
     part_to_text,
     screening_key,
-    with_dimension_value,
 )
 from screenapp.model.validity import faults_of
 from tests.model.plates import plate
@@ -101,7 +101,7 @@ def test_a_part_without_zones_is_written_without_the_key() -> None:
 
 
 def test_a_changed_dimension_reaches_the_zones() -> None:
-    part = with_dimension_value(part_from_text(ZONED), "pad", 40.0)
+    part = set_dimension(part_from_text(ZONED), "pad", 40.0)
     assert part.zones[0].thickness == 10.0
     assert isinstance(part.zones[1].form, LoopHole)
     assert part.zones[1].form.loop.corners[0].at == (60.0, -5.0)
