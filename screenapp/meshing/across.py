@@ -1,6 +1,8 @@
-"""How many elements lie across the narrowest wall, for the record."""
+"""Which elements lie across a wall, and how many across the narrowest one."""
 
 from __future__ import annotations
+
+from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
@@ -8,6 +10,7 @@ from scipy.sparse import coo_array, csr_array
 from scipy.sparse.csgraph import dijkstra
 
 from screenapp.meshing.walls import measure_walls
+from screenapp.model.ligaments import Ligament
 from screenapp.model.mesh import Mesh
 from screenapp.model.shape import Shape
 
@@ -50,16 +53,40 @@ def elements_across(mesh: Mesh, shape: Shape) -> int:
     return int(fewest)
 
 
+def elements_between(mesh: Mesh, shape: Shape, walls: Sequence[Ligament]) -> list[Ints]:
+    """For each wall the elements that are passed on the shortest way from end to end, in order.
+
+    The way starts and ends as in `elements_across`.
+    """
+    neighbours = _neighbours(mesh)
+    middles = mesh.nodes[mesh.side_nodes[:, 1]]
+    lengths = np.hypot(*(mesh.nodes[mesh.side_nodes[:, 2]] - mesh.nodes[mesh.side_nodes[:, 0]]).T)
+    chains: list[Ints] = []
+    for wall in walls:
+        near, far = (
+            _elements_at(mesh, middles, lengths, np.array(at), wall.width, *shape.pieces_of(id_))
+            for at, id_ in zip(wall.ends, wall.between, strict=True)
+        )
+        steps, before, _ = dijkstra(
+            neighbours, indices=near, unweighted=True, min_only=True, return_predecessors=True
+        )
+        chain = [int(far[np.argmin(steps[far])])]
+        while before[chain[-1]] >= 0:
+            chain.append(int(before[chain[-1]]))
+        chains.append(np.array(chain[::-1], dtype=np.int64))
+    return chains
+
+
 def _elements_at(
     mesh: Mesh,
     middles: NDArray[np.float64],
     lengths: NDArray[np.float64],
     at: NDArray[np.float64],
     reach: float,
-    piece: int,
+    *pieces: int,
 ) -> Ints:
-    """Elements with a side on the piece within `reach` [mm] of a point, at least the nearest."""
-    mine = np.flatnonzero(mesh.side_piece == piece)
+    """Elements with a side on a piece within `reach` [mm] of a point, at least the nearest."""
+    mine = np.flatnonzero(np.isin(mesh.side_piece, pieces))
     far = np.hypot(*(middles[mine] - at).T) - 0.5 * lengths[mine]
     picked = mine[(far <= 0.5 * reach) | (far == far.min())]
     return np.unique(mesh.sides[picked, 0])

@@ -56,6 +56,9 @@ class Peak:
         why: for a rising or unsettled peak, the reason in words; else "".
         mend: for a rising peak, what would settle it; else "".
         history: value on each pass.
+        sizes: size of the elements there on each pass [mm].
+        rate: growth α = -d ln(value) / d ln(size) over the last passes; None where it is not known.
+        allowed: half band within which it counts as settled [MPa]; None where it is not known.
         structural: for a rising peak beside a free edge, the structural stress drawn on from
             0.4 t and 1.0 t [MPa]; else None.
     """
@@ -69,6 +72,9 @@ class Peak:
     mend: str = ""
     history: tuple[float, ...] = ()
     structural: Estimate | None = None
+    sizes: tuple[float, ...] = ()
+    rate: float | None = None
+    allowed: float | None = None
 
 
 @dataclass(frozen=True)
@@ -92,8 +98,8 @@ class CaseFindings:
 class Reading:
     """A probe read in one case; `values` follows READING_QUANTITIES.
 
-    `history` holds, for each pass, the value of von Mises stress.  `feature` and `place` are as in
-    `Peak`; `why` says why it is not settled.
+    `history` holds, for each pass, the value of von Mises stress.  `feature`, `place`, `sizes`,
+    `rate` and `allowed` are as in `Peak`, of that stress; `why` says why it is not settled.
     """
 
     probe: str
@@ -106,6 +112,9 @@ class Reading:
     place: str = ""
     why: str = ""
     history: tuple[float, ...] = ()
+    sizes: tuple[float, ...] = ()
+    rate: float | None = None
+    allowed: float | None = None
 
 
 @dataclass(frozen=True)
@@ -135,8 +144,58 @@ class PassSummary:
 
 
 @dataclass(frozen=True)
+class WallGauge:
+    """A thin wall of the part, and what plain bilinear quads would make of its bending.
+
+    Attributes:
+        between: ids of the two features that it lies between.
+        place: the same in words, e.g. "edge e1 and hole h3".
+        width: [mm].
+        ends: the two nearest points of the features [mm].
+        layers: elements across it on the last mesh.
+        aspect: length of those elements along the wall over their size across it.
+        stiffness: stiffness of plain bilinear rectangles of that number and aspect in pure bending
+            over the true one, by the closed form of `mechanics.wall_bending`.
+    """
+
+    between: tuple[str, str]
+    place: str
+    width: float
+    ends: tuple[Point, Point]
+    layers: int
+    aspect: float
+    stiffness: float
+
+
+@dataclass(frozen=True)
+class PlainLoss:
+    """What plain bilinear quads show too little of in one case, on the very mesh of the findings.
+
+    Each share is 1 - (plain quads) / (nine-node quads, or the element that was chosen if that is
+    another one), negative where they show more.
+
+    Attributes:
+        case: id.
+        energy: share of the strain energy.
+        displacement: share of the largest displacement, at its place.
+        peak: share of the largest von Mises peak that is not rising; None where there is none.
+        place: where that peak is, in words.
+    """
+
+    case: str
+    energy: float
+    displacement: float
+    peak: float | None
+    place: str
+
+
+@dataclass(frozen=True)
 class MeshFindings:
-    """The last mesh and how it came about."""
+    """The last mesh and how it came about.
+
+    `walls` are its thin walls, narrowest first; `plain` has one entry for each case, and is empty
+    where the comparison was left out.
+    """
 
     element: str
     elements: int
@@ -147,6 +206,8 @@ class MeshFindings:
     across: int
     residual: float
     note: str = ""
+    walls: tuple[WallGauge, ...] = ()
+    plain: tuple[PlainLoss, ...] = ()
 
 
 @dataclass(frozen=True, eq=False)

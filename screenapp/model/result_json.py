@@ -20,6 +20,7 @@ from screenapp.model.findings import (
     MeshFindings,
     Peak,
     Reading,
+    WallGauge,
 )
 from screenapp.model.json_writer import json_text
 from screenapp.model.part import Part, Point
@@ -117,6 +118,7 @@ def _peak(peak: Peak) -> Tree:
         "mend": peak.mend,
         "history": [_finite(value) for value in peak.history],
         "structural": None if peak.structural is None else _estimate(peak.structural),
+        **_trace(peak),
     }
 
 
@@ -135,6 +137,16 @@ def _reading(reading: Reading) -> Tree:
         "trust": reading.trust,
         "why": reading.why,
         "history": [_finite(value) for value in reading.history],
+        **_trace(reading),
+    }
+
+
+def _trace(number: Peak | Reading) -> Tree:
+    """What goes with a history."""
+    return {
+        "sizes": [_finite(size) for size in number.sizes],
+        "rate": None if number.rate is None else _finite(number.rate),
+        "allowed": None if number.allowed is None else _finite(number.allowed),
     }
 
 
@@ -171,4 +183,27 @@ def _mesh(mesh: MeshFindings) -> Tree:
         "across": int(mesh.across),
         "residual": _finite(mesh.residual),
         "note": mesh.note,
+        "walls": [_wall(wall) for wall in mesh.walls],
+        "plain": [
+            {
+                "case": loss.case,
+                "energy": _finite(loss.energy),
+                "displacement": _finite(loss.displacement),
+                "peak": None if loss.peak is None else _finite(loss.peak),
+                "place": loss.place,
+            }
+            for loss in mesh.plain
+        ],
+    }
+
+
+def _wall(wall: WallGauge) -> Tree:
+    return {
+        "between": list(wall.between),
+        "place": wall.place,
+        "width": float(wall.width),
+        "ends": [_point(end) for end in wall.ends],
+        "layers": int(wall.layers),
+        "aspect": float(wall.aspect),
+        "stiffness": float(wall.stiffness),
     }

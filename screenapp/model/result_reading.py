@@ -15,7 +15,9 @@ from screenapp.model.findings import (
     MeshFindings,
     PassSummary,
     Peak,
+    PlainLoss,
     Reading,
+    WallGauge,
 )
 from screenapp.model.part import Point
 from screenapp.model.solution import Balance, Reaction
@@ -102,10 +104,17 @@ def _peak_of(tree: Tree) -> Peak:
         tree["mend"],
         _history_of(tree["history"]),
         _estimate_of(tree["structural"]) if tree.get("structural") is not None else None,
+        *_trace_of(tree),
     )
 
 
+def _trace_of(tree: Tree) -> tuple[tuple[float, ...], float | None, float | None]:
+    """Sizes, rate and allowed half band, which older records do not have."""
+    return _history_of(tree.get("sizes", [])), tree.get("rate"), tree.get("allowed")
+
+
 def _reading_of(tree: Tree) -> Reading:
+    sizes, rate, allowed = _trace_of(tree)
     values = {
         name: Estimate(
             _number(tree["values"][name]),
@@ -126,6 +135,9 @@ def _reading_of(tree: Tree) -> Reading:
         place=tree["place"],
         why=tree["why"],
         history=_history_of(tree["history"]),
+        sizes=sizes,
+        rate=rate,
+        allowed=allowed,
     )
 
 
@@ -162,4 +174,30 @@ def _mesh_of(tree: Tree) -> MeshFindings:
         across=tree["across"],
         residual=_number(tree["residual"]),
         note=tree["note"],
+        walls=tuple(_wall_of(wall) for wall in tree.get("walls", [])),
+        plain=tuple(_loss_of(loss) for loss in tree.get("plain", [])),
+    )
+
+
+def _wall_of(tree: Tree) -> WallGauge:
+    one, two = tree["between"]
+    begin, end = tree["ends"]
+    return WallGauge(
+        (one, two),
+        tree["place"],
+        float(tree["width"]),
+        (_point_of(begin), _point_of(end)),
+        tree["layers"],
+        float(tree["aspect"]),
+        float(tree["stiffness"]),
+    )
+
+
+def _loss_of(tree: Tree) -> PlainLoss:
+    return PlainLoss(
+        tree["case"],
+        _number(tree["energy"]),
+        _number(tree["displacement"]),
+        None if tree["peak"] is None else float(tree["peak"]),
+        tree["place"],
     )

@@ -11,6 +11,7 @@ from screenapp import __version__
 from screenapp.model.assets import resource
 from screenapp.model.estimate_text import EstimateKind, estimate_text
 from screenapp.model.findings import Estimate, Findings
+from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.part import GravityLoad, Load, Part
 from screenapp.model.shape import shape_of
 from screenapp.model.units import format_quantity
@@ -43,6 +44,8 @@ def record_page(part: Part, findings: Findings, when: datetime) -> str:
         length=lambda v: format_quantity(v, "length", units),
         force=lambda v: format_quantity(v, "force", units),
         stress=lambda v: format_quantity(v, "stress", units),
+        stiffness=stiffness_text,
+        share=share_text,
         load_words=load_words,
         support_words=support_words,
         size=(x1 - x0, y1 - y0),

@@ -6,6 +6,7 @@ from collections.abc import Sequence
 
 from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Findings
+from screenapp.model.gauge_text import wall_text
 from screenapp.model.part import Part
 
 
@@ -57,6 +58,8 @@ def verdict_table(part: Part, findings: Findings) -> str:
         f"{mesh.unknowns} unknowns; energy error {100 * mesh.error_estimate:.2g} %; loads and "
         f"reactions balance to {balance:.0e}; {findings.timing['total']:.2f} s",
     ]
+    if mesh.walls:
+        lines.append(wall_text(mesh.walls[0], units))
     lines += [f"caution: {caution}" for caution in findings.cautions]
     return "\n".join(lines)
 

@@ -23,7 +23,7 @@ from screenapp.screening.peaks import (
     place_in_words,
 )
 from screenapp.screening.spots import spot_at
-from screenapp.screening.trust import Sample, judge, worst
+from screenapp.screening.trust import Sample, growth, judge, worst
 
 Floats = NDArray[np.float64]
 
@@ -81,6 +81,7 @@ def _reading(
     moved = float(np.hypot(columns[-1]["u_x"], columns[-1]["u_y"]))
     moved_scale = max(moved, _LEAST_SCALE * largest_moved)
     values: dict[str, Estimate] = {}
+    rates: dict[str, float] = {}
     for name in READING_QUANTITIES:
         stress = not name.startswith("u_")
         samples = [
@@ -94,6 +95,7 @@ def _reading(
         ]
         scale = stress_scale if stress else moved_scale
         estimate = judge(samples, part.mesh.tolerance, scale, rate if stress else 0.0)
+        rates[name] = growth(samples)
         values[name] = _signed(estimate, columns[-1][name]) if spot else estimate
     trust = worst([estimate.trust for estimate in values.values()])
     why = ""
@@ -112,6 +114,9 @@ def _reading(
         place_in_words(shape, piece, probe.at),
         why,
         tuple(von_mises),
+        tuple(float(v.size[i]) for v in read),
+        rates["von_mises"],
+        part.mesh.tolerance * stress_scale,
     )
 
 

@@ -30,8 +30,10 @@ from screenapp.model.findings import (
     MeshFindings,
     PassSummary,
     Peak,
+    PlainLoss,
     Reading,
 )
+from screenapp.model.gauge_text import loss_text
 from screenapp.model.part import Part, Point, StressLimit
 from screenapp.model.part_json import part_sha256, screening_key
 from screenapp.model.progress import SILENT, Progress, Step
@@ -41,9 +43,11 @@ from screenapp.screening.adapt import targets, wanted_sizes
 from screenapp.screening.capacity import refuse_beyond_memory
 from screenapp.screening.limits import judge_limits, overall
 from screenapp.screening.passes import Pass
+from screenapp.screening.plain_quads import plain_losses
 from screenapp.screening.probes import readings
 from screenapp.screening.tracking import track
 from screenapp.screening.trust import LEAST_PASSES, Sample, judge
+from screenapp.screening.wall_gauge import wall_gauges
 
 MOST_PASSES = 7
 FAST_PASSES = 2
@@ -82,7 +86,7 @@ def screen(
         mesher: makes the meshes (a warm worker process).
         progress: told of every stage; asked whether to stop.
         on_pass: called with the fields of each pass as soon as they are known.
-        fast: stop after `FAST_PASSES`.
+        fast: stop after `FAST_PASSES` and do not compare with plain bilinear quads.
 
     Raises:
         InvalidPartError: the part cannot be screened; its faults say why.
@@ -131,8 +135,13 @@ def screen(
             largest = part.mesh.size or SHARE_OF_PART * shape.size
             smallest = min(float(wanted.min()), largest)
             sizes = adapted_sizes(shape, mesh, wanted, smallest, largest, part.mesh.across)
+    plain: tuple[PlainLoss, ...] = ()
+    if not fast:
+        progress.report(Step("comparing with plain quads", number, (most - 0.1) / most))
+        with clock.stage("comparing"):
+            plain = plain_losses(part, shape, passes[-1], cases, progress)
     clock.spent["total"] = time.perf_counter() - begin
-    return _findings(part, shape, passes, summaries, cases, read, clock)
+    return _findings(part, shape, passes, summaries, cases, read, plain, clock)
 
 
 def _done(cases: Sequence[CaseFindings], read: Sequence[Reading]) -> bool:
@@ -201,9 +210,11 @@ def _findings(
     summaries: Sequence[PassSummary],
     cases: tuple[CaseFindings, ...],
     read: tuple[Reading, ...],
+    plain: tuple[PlainLoss, ...],
     clock: Clock,
 ) -> Findings:
     last, summary = passes[-1].fields, summaries[-1]
+    walls = wall_gauges(part, shape, last.mesh)
     limits = judge_limits(part, cases)
     verdict, headline, reasons = overall(limits)
     material = part.material
@@ -211,7 +222,12 @@ def _findings(
     density = material.density if material else 0.0
     cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]
     if part.mesh.element == "quad4":
-        cautions.append("plain bilinear quads are too stiff in bending; nine-node quads are not")
+        said = loss_text(plain, {case.id: case.name for case in part.cases})
+        cautions.append(
+            f"{said[:1].lower()}{said[1:]}"
+            if said
+            else "plain bilinear quads are too stiff in bending; nine-node quads are not"
+        )
     cautions += [
         f"at {peak.place} the structural stress was accepted, as no finite value exists"
         for limit in part.limits
@@ -240,9 +256,11 @@ def _findings(
             tuple(summaries),
             summary.error,
             last.mesh.worst_jacobian,
-            elements_across(last.mesh, shape),
+            walls[0].layers if walls else elements_across(last.mesh, shape),
             last.solution.residual,
             last.mesh.fallback,
+            walls,
+            plain,
         ),
         timing=dict(clock.spent),
         cautions=tuple(dict.fromkeys(cautions)),

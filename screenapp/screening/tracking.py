@@ -16,7 +16,7 @@ from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import RawPeak, feature_of, measure, place_in_words
 from screenapp.screening.spots import spot_at
 from screenapp.screening.structural import structural_stress
-from screenapp.screening.trust import Sample, judge
+from screenapp.screening.trust import Sample, growth, judge
 
 _REACH = 2.5
 """A peak of an earlier pass is the same one if it lies within this many of its elements."""
@@ -89,9 +89,21 @@ def _peak(
             mend = "look for a sharp corner or the end of a load there and ease it"
     elif estimate.trust == "unsettled":
         why = _why_unsettled(estimate, spot)
-    history = tuple(s.value for s in samples)
     feature = spot.ids[0] if spot and estimate.trust == "rising" else feature_of(shape, raw.piece)
-    return Peak(name, estimate, at, feature, place, why, mend, history, structural)
+    return Peak(
+        name,
+        estimate,
+        at,
+        feature,
+        place,
+        why,
+        mend,
+        tuple(s.value for s in samples),
+        structural,
+        tuple(s.size for s in samples),
+        growth(samples),
+        part.mesh.tolerance * scale,
+    )
 
 
 def _spot_place(spot: SingularSpot) -> str:

@@ -15,7 +15,9 @@ from screenapp.model.findings import (
     MeshFindings,
     PassSummary,
     Peak,
+    PlainLoss,
     Reading,
+    WallGauge,
 )
 from screenapp.model.mesh import Mesh
 from screenapp.model.solution import Balance, Reaction, Solution, StressField
@@ -42,6 +44,10 @@ peaks = st.builds(
     texts,
     texts,
     histories,
+    st.none() | estimates,
+    histories,
+    st.none() | numbers,
+    st.none() | numbers,
 )
 cases = st.builds(
     CaseFindings,
@@ -66,7 +72,21 @@ readings = st.builds(
     texts,
     texts,
     histories,
+    histories,
+    st.none() | numbers,
+    st.none() | numbers,
 )
+walls = st.builds(
+    WallGauge,
+    st.tuples(texts, texts),
+    texts,
+    numbers,
+    st.tuples(points, points),
+    st.integers(1, 40),
+    numbers,
+    numbers,
+)
+losses = st.builds(PlainLoss, texts, numbers, numbers, st.none() | numbers, texts)
 limits = st.builds(LimitFindings, texts, texts, texts, estimates, verdicts, points, texts, texts)
 meshes = st.builds(
     MeshFindings,
@@ -81,6 +101,8 @@ meshes = st.builds(
     counts,
     numbers,
     texts,
+    st.lists(walls, max_size=2).map(tuple),
+    st.lists(losses, max_size=2).map(tuple),
 )
 findings = st.builds(
     Findings,

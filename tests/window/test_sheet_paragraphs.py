@@ -10,6 +10,7 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
+from screenapp.model.findings import PlainLoss, WallGauge
 from screenapp.model.part import (
     BearingLoad,
     CircleHole,
@@ -262,6 +263,54 @@ def test_plain_bilinear_quads_carry_a_warning(sheet: Sheet) -> None:
     assert (mesh.tolerance, mesh.across, mesh.size) == (0.005, 4, 6.0)
     type_into(paragraph.wishes.field("across"), "2.5")
     assert "whole number" in paragraph.wishes.complaint
+
+
+GAUGE = WallGauge(
+    ("e1", "h1"), "edge e1 and hole h1", 30.0, ((0.0, -40.0), (0.0, -10.0)), 2, 3.0, 1.4532
+)
+
+
+def test_the_warning_has_the_figure_of_the_closed_form_before_a_screening(sheet: Sheet) -> None:
+    """Three squares across 30 mm between edge and hole, ν 0.3: Cook's ratio 1.4835 by layers."""
+    paragraph = the(sheet, MeshParagraph)
+    assert isinstance(paragraph, MeshParagraph)
+    pick(paragraph.wishes.field("element"), "plain bilinear quads")
+    assert "3 squares across the wall between edge e1 and hole h1" in paragraph.warning.text
+    assert "1.05 × as stiff" in paragraph.warning.text  # 1 + 0.4835 / 3²
+    type_into(paragraph.wishes.field("across"), "1")
+    assert "one square across" in paragraph.warning.text
+    assert "1.48 × as stiff" in paragraph.warning.text
+
+
+def test_the_warning_has_the_measured_figure_after_a_screening(sheet: Sheet) -> None:
+    document = sheet.document
+    paragraph = the(sheet, MeshParagraph)
+    assert isinstance(paragraph, MeshParagraph)
+    pick(paragraph.wishes.field("element"), "plain bilinear quads")
+    loss = PlainLoss("case2", 0.1, 0.08, 0.23, "hole h1, 90°")
+    found = made_up(document.part)
+    document.set_findings(replace(found, mesh=replace(found.mesh, walls=(GAUGE,), plain=(loss,))))
+    settle()
+    assert "displacement 8.0 % low, stress at hole h1, 90° 23 % low" in paragraph.warning.text
+    assert not paragraph.losses.isVisibleTo(sheet)  # the warning has said it
+
+
+def test_thin_walls_stand_in_a_table_that_lights_their_features(sheet: Sheet) -> None:
+    document = sheet.document
+    paragraph = the(sheet, MeshParagraph)
+    assert isinstance(paragraph, MeshParagraph)
+    assert not paragraph.table.isVisibleTo(sheet)
+    loss = PlainLoss("case1", 0.1, 0.08, None, "")
+    found = made_up(document.part)
+    document.set_findings(replace(found, mesh=replace(found.mesh, walls=(GAUGE,), plain=(loss,))))
+    settle()
+    assert paragraph.table.isVisibleTo(sheet)
+    line = paragraph.table.line_at(0)
+    assert line.texts == ("edge e1 and hole h1", "30", "2", "1.45 ×")
+    assert "1.45 times as stiff" in line.tip
+    document.select("h1")
+    assert paragraph.table.selectionModel().hasSelection()
+    assert "displacement 8.0 % low" in paragraph.losses.text
 
 
 # --- findings and verdict -------------------------------------------------------------------
