@@ -17,6 +17,7 @@ from screenapp.mechanics.kernels import CARRIED_NODES, shape_integrals
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.model.curves import Arc
+from screenapp.model.members import spread_loads
 from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
 from screenapp.model.part import (
     BearingLoad,
@@ -71,7 +72,7 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
     """
     element = part.mesh.element
     out = np.zeros((mesh.n_nodes, 2))
-    for load in case.loads:
+    for load in spread_loads(part, case):
         if isinstance(load, GravityLoad):
             continue
         if isinstance(load, PointLoad):
@@ -99,7 +100,7 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
     """
     out = np.zeros((len(mesh.sides), 3, 2))
     tangents = side_tangents(shape, mesh)
-    for load in case.loads:
+    for load in spread_loads(part, case):
         if isinstance(load, GravityLoad | PointLoad):
             continue
         sides = sides_of(shape, mesh, load.on, load.id)

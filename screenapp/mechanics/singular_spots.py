@@ -10,6 +10,7 @@ import math
 from dataclasses import dataclass
 
 from screenapp.mechanics.corner_exponent import Face, growth_rate
+from screenapp.model.members import whole_id
 from screenapp.model.part import (
     Case,
     FixedSupport,
@@ -127,11 +128,14 @@ def _junction_spot(
 ) -> SingularSpot:
     degrees = math.degrees(angle)
     if before == after == "free":
+        whole = whole_id(corner)
+        instead = "" if whole == corner else " instead of the chamfer"
         return SingularSpot(
             at,
             ids,
             f"the corner {corner} is sharp ({degrees:.0f}° inside) and has no finite stress",
-            f"give corner {corner} a radius of at least the wall, {part.wall.thickness:g} mm",
+            f"give corner {whole} a radius of at least the wall, {part.wall.thickness:g} mm"
+            + instead,
             rate,
         )
     where = f"corner {corner}" if corner else "the junction of " + " and ".join(ids)

@@ -10,11 +10,11 @@ import numpy as np
 from screenapp.model.crossings import piece_name
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault
+from screenapp.model.extents import FARTHEST
 from screenapp.model.features import place_name
 from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.part import Material, Part, PointLoad
 from screenapp.model.shape import Shape
-from screenapp.model.size_faults import FARTHEST
 
 RE_ENTERS = 185.0
 """Sharp corners with a larger angle within the material [deg] are pointed out."""

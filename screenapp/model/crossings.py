@@ -17,6 +17,7 @@ from screenapp.model.meetings import (
     following_pieces,
     intersections,
 )
+from screenapp.model.members import whole_id
 from screenapp.model.shape import BoundaryCurve, Shape
 
 TOUCH = 1e-6
@@ -59,7 +60,7 @@ def _short_pieces(shape: Shape, table: CurveTable, touch: float) -> list[Fault]:
                 f"{piece_name(piece)} is only {table.lengths[k]:.3g} mm long",
                 "make it longer or remove it"
                 if piece.kind != "edge"
-                else "make it longer, make the rounds at its ends smaller, or remove it",
+                else "make it longer, make the corners at its ends sharper, or remove it",
                 _field(shape, piece),
                 (piece.feature,),
                 (float(x), float(y)),
@@ -217,7 +218,7 @@ def _meeting_fault(
         other = "the outline" if a.loop == 0 else names[0]
         mend = f"move hole {hole} or make it smaller, so that it stays clear of {other}"
         ids = (shape.hole_ids[a.loop] or a.feature, hole or b.feature)
-        field = f"holes.{hole}"
+        field = f"holes.{whole_id(hole or '')}"
     return Fault(
         f"{names[0]} and {names[1]} {word} at ({x:.4g}, {y:.4g})", mend, field, ids, (x, y)
     )
@@ -244,7 +245,7 @@ def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[
                     "make the hole smaller or remove it"
                     if around
                     else "move the hole into the outline or remove it",
-                    f"holes.{hole}",
+                    f"holes.{whole_id(hole)}",
                     (hole,),
                     (float(point[0]), float(point[1])),
                 )
@@ -272,7 +273,7 @@ def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fau
                     Fault(
                         f"hole {inner} lies inside hole {around}",
                         "move it out or remove one of the two",
-                        f"holes.{inner}",
+                        f"holes.{whole_id(inner)}",
                         (inner, around),
                         (float(rest[k][0]), float(rest[k][1])),
                     )
@@ -282,7 +283,10 @@ def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fau
 
 def _field(shape: Shape, piece: BoundaryCurve) -> str:
     hole = shape.hole_ids[piece.loop]
-    where = "outline" if hole is None else f"holes.{hole}"
+    where = "outline" if hole is None else f"holes.{whole_id(hole)}"
     if piece.kind == "edge":
         return f"{where}.edges.{piece.feature}"
-    return f"{where}.corners.{piece.feature}.round" if piece.kind == "fillet" else where
+    if piece.kind == "hole":
+        return where
+    size = "round" if piece.kind == "fillet" else "chamfer"
+    return f"{where}.corners.{piece.feature}.{size}"

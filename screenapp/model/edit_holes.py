@@ -16,6 +16,7 @@ from screenapp.model.edit_rules import (
     without_stale_formulas,
 )
 from screenapp.model.features import loops_of
+from screenapp.model.members import whole_id
 from screenapp.model.part import CircleHole, Corner, Hole, Loop, LoopHole, Part, Point, SlotHole
 
 
@@ -48,7 +49,7 @@ def resize_hole(part: Part, hole: str, **sizes: float) -> Part:
     Raises:
         EditError: a size that this hole has not, or that is not above zero.
     """
-    record = must_find(part, hole, "hole").record
+    record = must_find(part, whole_id(hole), "hole").record
     allowed = {CircleHole: ("diameter",), SlotHole: ("length", "width", "angle")}
     names = allowed.get(type(record), ())
     for name in sizes:
@@ -62,12 +63,16 @@ def resize_hole(part: Part, hole: str, **sizes: float) -> Part:
 
 
 def move_hole(part: Part, hole: str, to: Point) -> Part:
-    """Move a hole's centre to a point; of a loop hole, the middle of its corners' bounds."""
-    record = must_find(part, hole, "hole").record
+    """Move a hole's centre to a point; of a loop hole, the middle of its corners' bounds.
+
+    A member of a pattern takes the whole pattern with it.
+    """
+    found = must_find(part, hole, "hole")
+    record = found.record
     x, y = must_be_point(to, f"hole {hole}")
-    if isinstance(record, CircleHole | SlotHole):
+    if isinstance(record, CircleHole | SlotHole) and not found.owner:
         return without_stale_formulas(part, _with_changed(part, replace(record, centre=(x, y))))
-    assert isinstance(record, LoopHole)
+    assert isinstance(record, CircleHole | SlotHole | LoopHole)
     cx, cy = hole_centre(record)
     return move(part, [hole], x - cx, y - cy)
 
@@ -86,7 +91,7 @@ def move(part: Part, ids: Iterable[str], dx: float, dy: float) -> Part:
     Supports, loads and limits follow what they are on and are passed over here; so are ids that
     nothing bears.
     """
-    wanted = set(ids)
+    wanted = {whole_id(id_) for id_ in ids}
 
     def shifted(p: Point, name: str) -> Point:
         return must_be_point((p[0] + dx, p[1] + dy), name)

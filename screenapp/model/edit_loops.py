@@ -119,13 +119,27 @@ def _carried(through: Point, old: tuple[Point, Point], new: tuple[Point, Point])
 
 
 def set_round(part: Part, corner: str, radius: float) -> Part:
-    """Give a corner a fillet of `radius` [mm]; 0 makes it sharp.
+    """Give a corner a fillet of `radius` [mm], in place of a chamfer; 0 makes it sharp.
 
     A radius that does not fit is kept: the part's faults say so and by how much.
     """
+    return _with_cut(part, corner, float(radius), 0.0)
+
+
+def set_chamfer(part: Part, corner: str, length: float) -> Part:
+    """Cut a corner off by a straight chamfer that takes `length` [mm] of both edges; 0: sharp.
+
+    A length that does not fit is kept: the part's faults say so.  A round goes.
+    """
+    return _with_cut(part, corner, 0.0, float(length))
+
+
+def _with_cut(part: Part, corner: str, radius: float, chamfer: float) -> Part:
     found = must_find(part, corner, "corner")
     loop = loop_of(part, found.owner)
-    corners = tuple(replace(c, round=float(radius)) if c.id == corner else c for c in loop.corners)
+    corners = tuple(
+        replace(c, round=radius, chamfer=chamfer) if c.id == corner else c for c in loop.corners
+    )
     return settle(part, with_loop(part, found.owner, replace(loop, corners=corners)))
 
 

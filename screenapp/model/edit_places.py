@@ -2,11 +2,28 @@
 
 from __future__ import annotations
 
-from collections.abc import Collection
+from collections.abc import Collection, Mapping
 from dataclasses import replace
 
 from screenapp.model.edit_rules import Outcome, must_find
+from screenapp.model.members import member_ids
 from screenapp.model.part import GravityLoad, LoopHole, Part
+
+
+def moved_references(part: Part, to: Mapping[str, str]) -> Part:
+    """Supports and loads on the keys of `to` put on its values (the places stay as they are)."""
+    supports = tuple(replace(s, on=to[s.on]) if s.on in to else s for s in part.supports)
+    cases = tuple(
+        replace(
+            case,
+            loads=tuple(
+                replace(x, on=to[x.on]) if not isinstance(x, GravityLoad) and x.on in to else x
+                for x in case.loads
+            ),
+        )
+        for case in part.cases
+    )
+    return replace(part, supports=supports, cases=cases)
 
 
 def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
@@ -42,7 +59,7 @@ def remove_outline(part: Part) -> Outcome:
 def remove_hole(part: Part, hole: str) -> Outcome:
     """Take a hole away with the supports and loads on it."""
     record = must_find(part, hole, "hole").record
-    places = {hole}
+    places = {hole, *member_ids(record)}  # type: ignore[arg-type]
     if isinstance(record, LoopHole):
         places |= {c.id for c in record.loop.corners} | {e.id for e in record.loop.edges}
     bare = drop_from_places(part, places)

@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import replace
 
 from screenapp.model.edit_loops import remove_corner
+from screenapp.model.edit_patterns import must_be_whole
 from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_rules import EditError, Outcome, must_find, without_stale_formulas
 from screenapp.model.edit_zones import remove_zone
@@ -19,13 +20,15 @@ def remove(part: Part, *ids: str) -> Outcome:
     corners are named that nothing would be left goes as a whole.
 
     Raises:
-        EditError: an id that nothing bears, or an edge (its corners are what can be removed).
+        EditError: an id that nothing bears, an edge (its corners are what can be removed), or one
+            member of a pattern.
     """
     for id_ in ids:
         if must_find(part, id_).kind == "edge":
             raise EditError(
                 f"edge {id_} cannot be removed by itself", "remove one of the corners at its ends"
             )
+        must_be_whole(part, id_)
     now = part
     lost: list[str] = []
     for where, owner, loop in loops_of(part):

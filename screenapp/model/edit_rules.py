@@ -7,10 +7,11 @@ from collections.abc import Callable, Iterable
 from dataclasses import dataclass, replace
 
 from screenapp.model.errors import Fault, ScreenappError
+from screenapp.model.extents import FARTHEST
 from screenapp.model.features import Found, everything, find
 from screenapp.model.material_faults import material_faults
 from screenapp.model.part import Loop, LoopHole, Part, Point, Zone
-from screenapp.model.size_faults import FARTHEST, id_faults, size_faults
+from screenapp.model.size_faults import id_faults, size_faults
 from screenapp.model.value_faults import (
     limit_faults,
     mesh_faults,

@@ -32,11 +32,13 @@ from screenapp.model.edit_loops import (
     outline_from_rectangle,
     rectangle_corners,
     remove_corner,
+    set_chamfer,
     set_edge_arc,
     set_outline,
     set_round,
     straighten,
 )
+from screenapp.model.edit_patterns import break_pattern, change_pattern, set_pattern
 from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_removal import remove
 from screenapp.model.edit_rules import EditError, Outcome, new_id, new_ids
@@ -78,6 +80,8 @@ __all__ = [
     "add_slot_hole",
     "add_support",
     "add_zone",
+    "break_pattern",
+    "change_pattern",
     "find",
     "hole_centre",
     "hole_to_zone",
@@ -103,12 +107,14 @@ __all__ = [
     "replace_support",
     "reshape_zone",
     "resize_hole",
+    "set_chamfer",
     "set_edge_arc",
     "set_material",
     "set_mesh",
     "set_mesh_size",
     "set_notes",
     "set_outline",
+    "set_pattern",
     "set_round",
     "set_thickness",
     "set_title",

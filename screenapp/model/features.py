@@ -11,6 +11,8 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from typing import Literal
 
+from screenapp.model.loop_curves import loop_curves, sharp_places
+from screenapp.model.members import member_ids, members, whole_id
 from screenapp.model.part import (
     Case,
     CircleHole,
@@ -27,6 +29,7 @@ from screenapp.model.part import (
     Support,
     Zone,
 )
+from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 
 Kind = Literal["corner", "edge", "hole", "zone", "support", "case", "load", "limit", "probe"]
 Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe
@@ -45,6 +48,14 @@ PREFIXES: dict[Kind, str] = {
 """The letter that ids made by this program begin with."""
 
 
+PATTERN_WORDS: dict[type, str] = {
+    RowPattern: "row of holes",
+    GridPattern: "grid of holes",
+    BoltCircle: "bolt circle",
+}
+"""What each pattern of holes is called."""
+
+
 @dataclass(frozen=True)
 class Found:
     """What an id stands for.
@@ -52,8 +63,8 @@ class Found:
     Attributes:
         kind: what sort of thing it is.
         record: the record itself.
-        owner: id of the hole or zone for a corner or edge of its loop, of the case for a load;
-            else "".
+        owner: id of the hole or zone for a corner or edge of its loop, of the whole for a member
+            of a pattern, of the case for a load; else "".
         group: dotted path of the list in the part file that holds it.
     """
 
@@ -65,7 +76,7 @@ class Found:
     @property
     def field(self) -> str:
         """Dotted path of the record in the part file, e.g. "outline.corners.c4"."""
-        return f"{self.group}.{self.record.id}"
+        return f"{self.group}.{whole_id(self.record.id)}"
 
     @property
     def inside(self) -> bool:
@@ -83,6 +94,9 @@ def everything(part: Part) -> Iterator[Found]:
             yield Found("edge", edge, owner, edges)
     for hole in part.holes:
         yield Found("hole", hole, "", "holes")
+        if member_ids(hole):
+            for member in members(hole):
+                yield Found("hole", member, hole.id, "holes")
     for zone in part.zones:
         yield Found("zone", zone, "", "zones")
     for support in part.supports:
@@ -125,8 +139,22 @@ def places_of(part: Part) -> Places:
 
 
 def find(part: Part, id_: str) -> Found | None:
-    """What `id_` stands for in the part, None if nothing bears it."""
-    return next((found for found in everything(part) if found.record.id == id_), None)
+    """What `id_` stands for in the part, None if nothing bears it.
+
+    The two ends of a chamfer ("c4.1", "c4.2") are found as sharp corners.
+    """
+    found = next((found for found in everything(part) if found.record.id == id_), None)
+    return found if found is not None or "." not in id_ else _chamfer_end(part, id_)
+
+
+def _chamfer_end(part: Part, id_: str) -> Found | None:
+    corner = whole_id(id_)
+    for where, owner, loop in loops_of(part):
+        if any(c.id == corner and c.chamfer for c in loop.corners):
+            for name, at in sharp_places(loop, loop_curves(loop, where, [])):
+                if name == id_:
+                    return Found("corner", Corner(id_, at), owner, f"{where}.corners")
+    return None
 
 
 def place_name(part: Part, id_: str) -> str:
@@ -141,8 +169,10 @@ def place_name(part: Part, id_: str) -> str:
 def name_of(found: Found) -> str:
     """The words for something found: "edge e3", "fillet c3" for a rounded corner ..."""
     record = found.record
-    if isinstance(record, Corner) and record.round != 0.0:
-        return f"fillet {record.id}"
+    if isinstance(record, Corner) and not record.sharp:
+        return f"{'fillet' if record.round != 0.0 else 'chamfer'} {record.id}"
+    if isinstance(record, CircleHole | SlotHole) and record.pattern is not None:
+        return f"{PATTERN_WORDS[type(record.pattern)]} {record.id}"
     return f"{found.kind} {record.id}"
 
 

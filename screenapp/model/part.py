@@ -24,6 +24,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
+from screenapp.model.pattern import Pattern
+
 Point = tuple[float, float]
 
 WallState = Literal["plane stress", "plane strain"]
@@ -37,11 +39,21 @@ Measures = Literal["length", "angle", "number"]
 
 @dataclass(frozen=True)
 class Corner:
-    """A corner of a loop at `at` [mm], rounded by a fillet of radius `round` [mm] (0: sharp)."""
+    """A corner of a loop at `at` [mm], where its two edges would meet.
+
+    It is sharp, or rounded by a fillet of radius `round` [mm], or cut off by a chamfer that takes
+    `chamfer` [mm] of both edges; not both.
+    """
 
     id: str
     at: Point
     round: float = 0.0
+    chamfer: float = 0.0
+
+    @property
+    def sharp(self) -> bool:
+        """Whether the two edges meet in the corner itself."""
+        return self.round == 0.0 and self.chamfer == 0.0
 
 
 @dataclass(frozen=True)
@@ -62,22 +74,27 @@ class Loop:
 
 @dataclass(frozen=True)
 class CircleHole:
-    """A round hole: centre [mm] and diameter [mm]."""
+    """A round hole: centre [mm] and diameter [mm]; with a pattern, many of them."""
 
     id: str
     centre: Point
     diameter: float
+    pattern: Pattern | None = None
 
 
 @dataclass(frozen=True)
 class SlotHole:
-    """A slot with round ends: overall `length` [mm] >= `width` [mm], axis at `angle` [deg]."""
+    """A slot with round ends: overall `length` [mm] >= `width` [mm], axis at `angle` [deg].
+
+    With a pattern, many of them.
+    """
 
     id: str
     centre: Point
     length: float
     width: float
     angle: float = 0.0
+    pattern: Pattern | None = None
 
 
 @dataclass(frozen=True)

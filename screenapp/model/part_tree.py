@@ -42,6 +42,7 @@ from screenapp.model.part import (
     Wall,
     Zone,
 )
+from screenapp.model.pattern import BoltCircle, GridPattern, Pattern, RowPattern
 
 FORMAT = "screenapp part"
 VERSION = 3
@@ -67,9 +68,12 @@ LOADS: dict[str, type] = {
 }
 LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLimit}
 READINGS: dict[str, type] = {"probe": Probe}
+PATTERNS: dict[str, type] = {"row": RowPattern, "grid": GridPattern, "bolt circle": BoltCircle}
 
 KIND_OF: dict[type, str] = {
-    cls: kind for group in (HOLES, SUPPORTS, LOADS, LIMITS, READINGS) for kind, cls in group.items()
+    cls: kind
+    for group in (HOLES, SUPPORTS, LOADS, LIMITS, READINGS, PATTERNS)
+    for kind, cls in group.items()
 }
 
 
@@ -86,7 +90,7 @@ def _form(hint: Any) -> str:
 
 def _forms(cls: Any) -> dict[str, str]:
     hints = typing.get_type_hints(cls)
-    return {f.name: _form(hints[f.name]) for f in dataclasses.fields(cls)}
+    return {f.name: _form(hints[f.name]) for f in dataclasses.fields(cls) if f.name != "pattern"}
 
 
 FORMS: dict[type, dict[str, str]] = {
@@ -137,19 +141,19 @@ def tree_of_part(part: Part) -> Tree:
 
 
 def without_blanks(tree: Any) -> Any:
-    """The tree without what is None and without rounds of zero, as it is written."""
+    """The tree without what is None and without rounds and chamfers of zero, as it is written."""
     if isinstance(tree, dict):
         return {
             key: without_blanks(value)
             for key, value in tree.items()
-            if value is not None and not (key == "round" and value == 0)
+            if value is not None and not (key in ("round", "chamfer") and value == 0)
         }
     return [without_blanks(item) for item in tree] if isinstance(tree, list) else tree
 
 
 def _tree(record: Any) -> Tree:
     """A record of plain fields."""
-    tree: Tree = {}
+    tree: Tree = {"kind": KIND_OF[type(record)]} if isinstance(record, Pattern) else {}
     for name in FORMS[type(record)]:
         value = getattr(record, name)
         tree[name] = list(value) if isinstance(value, tuple) else value
@@ -174,7 +178,8 @@ def _loop_tree(loop: Loop) -> Tree:
 def _hole_tree(hole: Any) -> Tree:
     if isinstance(hole, LoopHole):
         return {"id": hole.id, "kind": "loop", **_loop_tree(hole.loop)}
-    return _tree(hole)
+    pattern = None if hole.pattern is None else _tree(hole.pattern)
+    return {**_tree(hole), "pattern": pattern}
 
 
 def _zone_tree(zone: Zone) -> Tree:
@@ -230,7 +235,11 @@ def _loop(tree: Tree) -> Loop:
 def _hole(tree: Tree) -> Any:
     if tree["kind"] == "loop":
         return LoopHole(tree["id"], _loop(tree))
-    return _record(HOLES[tree["kind"]], tree)
+    hole: Any = _record(HOLES[tree["kind"]], tree)
+    if "pattern" in tree:
+        pattern = tree["pattern"]
+        hole = dataclasses.replace(hole, pattern=_record(PATTERNS[pattern["kind"]], pattern))
+    return hole
 
 
 def _zone(tree: Tree) -> Zone:

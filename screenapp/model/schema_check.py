@@ -80,6 +80,8 @@ def _words(error: ValidationError) -> tuple[str, str]:
         return f"{shown} is not one of the choices", hint
     if error.validator == "const":
         return f"{shown} stands here", f"write {_shown(bound)}"
+    if error.validator == "minimum":
+        return f"{shown} stands here", f"give at least {_shown(bound)}"
     if error.validator == "minItems":
         return f"the list has {len(value)} entries", f"give at least {bound}"
     if error.validator == "items" and bound is False:

@@ -7,14 +7,10 @@ from collections.abc import Iterator
 
 from screenapp.model.curves import Segment, arc_through
 from screenapp.model.errors import Fault
+from screenapp.model.extents import FARTHEST, SMALLEST
 from screenapp.model.features import everything, loops_of
-from screenapp.model.part import CircleHole, Hole, Loop, Part, Point, SlotHole
-
-FARTHEST = 1e6
-"""No coordinate or length may be larger [mm]: a kilometre is no workpiece."""
-
-SMALLEST = 1e-4
-"""No size may be smaller [mm]: a tenth of a micrometre is below any drawing."""
+from screenapp.model.part import CircleHole, Corner, Hole, Loop, Part, Point, SlotHole
+from screenapp.model.pattern_faults import pattern_faults, zone_pattern_faults
 
 
 def id_faults(part: Part) -> list[Fault]:
@@ -54,8 +50,10 @@ def size_faults(part: Part) -> list[Fault]:
         faults += _loop_faults(loop, where, f"{word} {owner}" if owner else "the outline")
     for h in part.holes:
         faults += _form_faults(h, "holes", "slot" if isinstance(h, SlotHole) else "hole")
+        faults += pattern_faults(h)
     for z in part.zones:
         faults += _form_faults(z.form, "zones", "zone")
+        faults += zone_pattern_faults(z)
     return faults
 
 
@@ -102,23 +100,30 @@ def _loop_faults(loop: Loop, where: str, name: str) -> Iterator[Fault]:
 def _corner_faults(loop: Loop, where: str) -> Iterator[Fault]:
     for c in loop.corners:
         yield from _point_faults(c.at, f"corner {c.id}", c.id, f"{where}.corners.{c.id}.at")
-        field = f"{where}.corners.{c.id}.round"
-        if not math.isfinite(c.round):
-            yield _not_a_number(f"the round of corner {c.id}", c.id, field, finite_point(c.at))
-        elif c.round > FARTHEST or 0.0 < c.round < SMALLEST or c.round < 0.0:
-            yield Fault(
-                f"the round of corner {c.id} is {c.round:g} mm",
-                f"give a radius of at least {SMALLEST:g} mm, or 0 for a sharp corner"
-                if c.round < SMALLEST
-                else "give a smaller radius",
-                field,
-                (c.id,),
-                finite_point(c.at),
-            )
+        if not c.sharp:
+            yield from _cut_faults(c, "round", c.round, "radius", where)
+            yield from _cut_faults(c, "chamfer", c.chamfer, "length", where)
     for e in loop.edges:
         if e.through is not None:
             field = f"{where}.edges.{e.id}.through"
             yield from _point_faults(e.through, f"the arc point of edge {e.id}", e.id, field)
+
+
+def _cut_faults(c: Corner, name: str, size: float, what: str, where: str) -> Iterator[Fault]:
+    """What is wrong with the round or chamfer of a corner by itself."""
+    field = f"{where}.corners.{c.id}.{name}"
+    if not math.isfinite(size):
+        yield _not_a_number(f"the {name} of corner {c.id}", c.id, field, finite_point(c.at))
+    elif size > FARTHEST or 0.0 < size < SMALLEST or size < 0.0:
+        yield Fault(
+            f"the {name} of corner {c.id} is {size:g} mm",
+            f"give a {what} of at least {SMALLEST:g} mm, or 0 for a sharp corner"
+            if size < SMALLEST
+            else f"give a smaller {what}",
+            field,
+            (c.id,),
+            finite_point(c.at),
+        )
 
 
 def _arc_faults(loop: Loop, where: str) -> Iterator[Fault]:

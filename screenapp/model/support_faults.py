@@ -57,7 +57,7 @@ def place_fault(
             ids,
         )
     record = found.record
-    if isinstance(record, Corner) and record.round != 0.0:
+    if isinstance(record, Corner) and not record.sharp:
         around = next(
             (
                 e
@@ -67,18 +67,19 @@ def place_fault(
             ),
             None,
         )
+        cut = "round" if record.round != 0.0 else "chamfer"
         edges = f"use edge {around[0].id} or {around[1].id}" if around else "use an edge"
         return Fault(
-            f"{id_} is on corner {on}, which is rounded, so there is no point there",
-            f"{edges}, or set the round of {on} to 0",
+            f"{id_} is on corner {on}, which is {cut}ed, so there is no point there",
+            f"{edges}, or set the {cut} of {on} to 0",
             field,
             (id_, on),
             finite_point(record.at),
         )
     if found.kind == "edge" and shape is not None and not shape.pieces_of(on):
         return Fault(
-            f"{id_} is on edge {on}, which is used up by the rounds at its ends",
-            "make these rounds smaller or choose another place",
+            f"{id_} is on edge {on}, which is used up by the corners at its ends",
+            "make their rounds or chamfers smaller or choose another place",
             field,
             (id_, on),
         )

@@ -7,6 +7,7 @@ from collections.abc import Iterator
 from typing import get_args
 
 from screenapp.model.errors import Fault
+from screenapp.model.extents import FARTHEST, SMALLEST
 from screenapp.model.material_faults import positive
 from screenapp.model.part import (
     DisplacementLimit,
@@ -18,7 +19,6 @@ from screenapp.model.part import (
     WallState,
 )
 from screenapp.model.shape import Shape
-from screenapp.model.size_faults import FARTHEST, SMALLEST
 
 TIGHTEST, LOOSEST = 0.0005, 0.2
 """Bounds of the mesh tolerance [-]."""

@@ -6,8 +6,8 @@ import math
 from collections.abc import Iterator
 
 from screenapp.model.errors import Fault
+from screenapp.model.extents import FARTHEST, SMALLEST
 from screenapp.model.part import Part
-from screenapp.model.size_faults import FARTHEST, SMALLEST
 
 
 def zone_value_faults(part: Part) -> Iterator[Fault]:

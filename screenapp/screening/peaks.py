@@ -162,8 +162,8 @@ def place_in_words(shape: Shape, piece: int, at: Point) -> str:
     for corner, point in shape.sharp_corners:
         if math.dist(point, at) < 1e-6 * shape.size:
             return f"corner {corner}"
-    if curve.kind == "fillet":
-        return f"fillet {curve.feature}"
+    if curve.kind in ("fillet", "chamfer"):
+        return f"{curve.kind} {curve.feature}"
     if curve.kind == "hole":
         centre = _hole_centre(shape, curve.loop)
         angle = math.degrees(math.atan2(at[1] - centre[1], at[0] - centre[0])) % 360.0

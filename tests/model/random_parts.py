@@ -36,6 +36,7 @@ from screenapp.model.part import (
     StressLimit,
     Wall,
 )
+from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 
 numbers = st.one_of(
     st.floats(allow_nan=False, allow_infinity=False),
@@ -45,17 +46,27 @@ numbers = st.one_of(
 maybe = st.none() | numbers
 points = st.tuples(numbers, numbers)
 texts = st.text(st.characters(exclude_categories=["Cs"]), max_size=30)
-on = st.sampled_from(["e1", "h1", "c1", "gone"])
+on = st.sampled_from(["e1", "h1", "h1.2", "h2.1-3", "c1", "gone"])
 
 
 @st.composite
 def _loops(draw: st.DrawFn, prefix: str) -> Loop:
     n = draw(st.integers(2, 5))
+    sizes = st.just(0.0) | numbers
     corners = tuple(
-        Corner(f"{prefix}c{i}", draw(points), draw(st.just(0.0) | numbers)) for i in range(n)
+        Corner(f"{prefix}c{i}", draw(points), draw(sizes), draw(sizes)) for i in range(n)
     )
     edges = tuple(Edge(f"{prefix}e{i}", draw(st.none() | points)) for i in range(n))
     return Loop(corners, edges)
+
+
+counts = st.integers(1, 12)
+patterns = st.one_of(
+    st.none(),
+    st.builds(RowPattern, counts, numbers, numbers),
+    st.builds(GridPattern, counts, counts, numbers, numbers, numbers),
+    st.builds(BoltCircle, counts, numbers, numbers),
+)
 
 
 @st.composite
@@ -63,9 +74,10 @@ def _holes(draw: st.DrawFn, number: int) -> CircleHole | SlotHole | LoopHole:
     name = f"h{number}"
     kind = draw(st.integers(0, 2))
     if kind == 0:
-        return CircleHole(name, draw(points), draw(numbers))
+        return CircleHole(name, draw(points), draw(numbers), draw(patterns))
     if kind == 1:
-        return SlotHole(name, draw(points), draw(numbers), draw(numbers), draw(numbers))
+        sizes = draw(numbers), draw(numbers), draw(numbers)
+        return SlotHole(name, draw(points), *sizes, draw(patterns))
     return LoopHole(name, draw(_loops(f"{name}-")))
 
 

@@ -9,6 +9,7 @@ from functools import cached_property, lru_cache
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.members import all_holes, member_ids
 from screenapp.model.part import Corner, Hole, Loop, LoopHole, Part, Point, Probe
 from screenapp.model.shape import BoundaryCurve
 from screenapp.window.board.boundary_index import BoundaryIndex
@@ -22,7 +23,8 @@ class DrawnPart:
     Attributes:
         part: the part drawn.
         loops: the rings; one at fault may be open or empty.
-        hole_ids: the hole's id for each ring, None for the outline.
+        hole_ids: the hole's id for each ring, None for the outline; members of a pattern have
+            their own.
     """
 
     part: Part
@@ -46,8 +48,15 @@ class DrawnPart:
 
     @cached_property
     def holes(self) -> dict[str, Hole]:
-        """Every hole by id."""
-        return {h.id: h for h in self.part.holes}
+        """Every hole by id, a pattern and each of its members too."""
+        found = {h.id: h for h in self.part.holes}
+        found.update((h.id, h) for h in self.cut_holes)
+        return found
+
+    @cached_property
+    def cut_holes(self) -> tuple[Hole, ...]:
+        """Every hole that is cut, patterns unfolded."""
+        return all_holes(self.part)
 
     @cached_property
     def probes(self) -> dict[str, Probe]:
@@ -64,10 +73,18 @@ class DrawnPart:
         return min(x0), min(y0), max(x1), max(y1)
 
     def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
-        """Pieces of an edge, fillet or hole of any kind."""
+        """Pieces of an edge, fillet, hole of any kind or whole pattern."""
         if feature in self.hole_ids:
             return self.loops[self.hole_ids.index(feature)].pieces
-        return tuple(p for p in self.pieces if p.feature == feature)
+        mine = tuple(p for p in self.pieces if p.feature == feature)
+        if mine or feature not in self.holes:
+            return mine
+        return tuple(p for p in self.pieces if p.feature.startswith(f"{feature}."))
+
+    def members_of(self, hole: str) -> tuple[str, ...]:
+        """Ids of a pattern's members; none for any other id."""
+        found = self.holes.get(hole)
+        return member_ids(found) if found is not None else ()
 
     def polyline(self, loop: int, tolerance: float) -> NDArray[np.float64]:
         """Ring `loop` as points (n, 2) [mm], arcs flattened to a sagitta of `tolerance` [mm]."""
@@ -78,7 +95,10 @@ class DrawnPart:
         return self.loops[loop].inside(at)
 
     def centre_of(self, hole: Hole) -> Point:
-        """The centre of a hole [mm]; of a loop hole the middle of its bounding box."""
+        """The centre of a hole or bolt circle, of a pattern's first member [mm].
+
+        Of a loop hole the middle of its bounding box.
+        """
         if not isinstance(hole, LoopHole):
             return hole.centre
         box = self.loops[self.hole_ids.index(hole.id)].box
@@ -116,8 +136,9 @@ class _ById:
 @lru_cache(maxsize=4)
 def _drawn(keeper: _ById) -> DrawnPart:
     part = keeper.part
-    rings = [hole_ring(hole) for hole in part.holes]
-    ids: list[str | None] = [hole.id for hole in part.holes]
+    holes = all_holes(part)
+    rings = [hole_ring(hole) for hole in holes]
+    ids: list[str | None] = [hole.id for hole in holes]
     if part.outline is not None:
         rings, ids = [outline_ring(part.outline), *rings], [None, *ids]
     return DrawnPart(part, tuple(rings), tuple(ids))

@@ -12,7 +12,7 @@ from screenapp.model.part import Point
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 
-HitKind = Literal["corner", "edge", "fillet", "hole", "support", "load", "probe"]
+HitKind = Literal["corner", "edge", "fillet", "chamfer", "hole", "support", "load", "probe"]
 
 POINT_PX, LINE_PX = 9.0, 7.0
 """How near the cursor must be to a point and to a line [px]."""
@@ -78,7 +78,7 @@ def _nearest_probe(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
 
 def _nearest_corner(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
     reach = POINT_PX / frame.scale
-    near = [c for c in drawn.corners.values() if c.round == 0.0 and math.dist(c.at, at) <= reach]
+    near = [c for c in drawn.corners.values() if c.sharp and math.dist(c.at, at) <= reach]
     if not near:
         return None
     corner = min(near, key=lambda c: math.dist(c.at, at))

@@ -157,7 +157,7 @@ class OutlineItem(ScreenItem):
         pen = QPen(colour, 1.0)
         pen.setDashPattern([12.0, 3.0, 2.0, 3.0])
         painter.setPen(pen)
-        for hole in self.drawn.part.holes:
+        for hole in self.drawn.cut_holes:
             if isinstance(hole, CircleHole):
                 half = hole.diameter / 2.0
                 _cross(painter, frame, hole.centre, half, half, 0.0)

@@ -100,7 +100,7 @@ def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
 def snap_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
     """Corners, centres and middles of a part, and the same as places (n, 2) [mm]."""
     points = [Snap("corner", corner.at, corner.id) for corner in drawn.corners.values()]
-    for hole in drawn.part.holes:
+    for hole in drawn.cut_holes:
         points += [Snap("centre", at, hole.id) for at in _centres_of(hole)]
     for ring in drawn.loops:
         points += _points_of(ring)

@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.errors import Fault
+from screenapp.model.part import BearingLoad, ForceLoad, GravityLoad, Load, Support
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
@@ -19,6 +22,28 @@ from screenapp.window.board.support_marks import support_mark
 
 FARTHEST_PAN = 2000.0
 """Symbols are worked out afresh after a pan of this length [px]."""
+
+
+def support_marks(drawn: DrawnPart, frame: Frame, support: Support) -> list[Mark]:
+    """The symbol of a support, or one on each hole of a pattern."""
+    places = drawn.members_of(support.on) or (support.on,)
+    marks = [support_mark(drawn, frame, replace(support, on=on)) for on in places]
+    for mark in marks[1:]:
+        mark.label = ""
+    return marks
+
+
+def load_marks(drawn: DrawnPart, frame: Frame, load: Load) -> list[Mark]:
+    """The symbol of a load, or one on each hole of a pattern; the value stands once."""
+    places = () if isinstance(load, GravityLoad) else drawn.members_of(load.on)
+    if isinstance(load, GravityLoad) or not places:
+        return [load_mark(drawn, frame, load)]
+    marks = [load_mark(drawn, frame, replace(load, on=on)) for on in places]
+    if marks[0].label and isinstance(load, ForceLoad | BearingLoad):
+        marks[0].label += " in all"
+    for mark in marks[1:]:
+        mark.label = ""
+    return marks
 
 
 class SymbolsItem(ScreenItem):
@@ -46,10 +71,10 @@ class SymbolsItem(ScreenItem):
         if not self._fits(frame):
             self._for = self.drawn, self.case, frame
             part = self.drawn.part
-            self._marks = [support_mark(self.drawn, frame, s) for s in part.supports]
+            self._marks = [m for s in part.supports for m in support_marks(self.drawn, frame, s)]
             if self.case < len(part.cases):
                 loads = part.cases[self.case].loads
-                self._marks += [load_mark(self.drawn, frame, load) for load in loads]
+                self._marks += [m for load in loads for m in load_marks(self.drawn, frame, load)]
             self._strokes = None
         return self._marks
 

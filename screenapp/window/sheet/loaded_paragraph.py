@@ -159,7 +159,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
             title = "Holes"
         elif found.kind == "edge":
             kinds, title = ("force", "line", "pressure", "shear"), "Edges"
-        elif isinstance(record, Corner) and record.round == 0.0:
+        elif isinstance(record, Corner) and record.sharp:
             kinds, title = ("point",), "Sharp corners"
         else:
             continue

@@ -16,7 +16,7 @@ def place_choices(document: Document, corners: bool = True) -> tuple[Choice, ...
         if thing.kind not in found or thing.inside:
             continue
         record = thing.record
-        if isinstance(record, Corner) and (record.round != 0.0 or not corners):
+        if isinstance(record, Corner) and not (record.sharp and corners):
             continue
         remark = f"Ø {record.diameter:.4g}" if isinstance(record, CircleHole) else ""
         line = Choice(record.id, name_of(thing), remark)

@@ -1,0 +1,84 @@
+"""The holes that are cut: patterns unfolded into their members, each a plain hole.
+
+A member's id is the pattern's id, a full stop and the member's name; ids of drawn things have no
+full stop, so the two never meet.
+"""
+
+from __future__ import annotations
+
+from dataclasses import replace
+from functools import lru_cache
+
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    CircleHole,
+    ForceLoad,
+    Hole,
+    Load,
+    LoopHole,
+    Part,
+    SlotHole,
+)
+from screenapp.model.pattern import stations
+
+
+def whole_id(id_: str) -> str:
+    """The id of the pattern (or chamfered corner) that a derived id belongs to; else the id.
+
+    Example:
+        >>> whole_id("h4.2-3"), whole_id("e7")
+        ('h4', 'e7')
+    """
+    return id_.partition(".")[0]
+
+
+@lru_cache(maxsize=4096)
+def members(hole: Hole) -> tuple[Hole, ...]:
+    """The plain holes of a pattern; a hole without one is its own only member."""
+    if isinstance(hole, LoopHole) or hole.pattern is None:
+        return (hole,)
+    made: list[Hole] = []
+    for station in stations(hole.pattern):
+        id_ = f"{hole.id}.{station.name}"
+        centre = hole.centre[0] + station.x, hole.centre[1] + station.y
+        if isinstance(hole, SlotHole):
+            turned = hole.angle + station.turn
+            made.append(replace(hole, id=id_, centre=centre, angle=turned, pattern=None))
+        else:
+            made.append(replace(hole, id=id_, centre=centre, pattern=None))
+    return tuple(made)
+
+
+def all_holes(part: Part) -> tuple[Hole, ...]:
+    """Every hole that is cut, patterns unfolded, in the order of the part file."""
+    return tuple(member for hole in part.holes for member in members(hole))
+
+
+def patterned(hole: object) -> bool:
+    """Whether a record is a hole with a pattern."""
+    return isinstance(hole, CircleHole | SlotHole) and hole.pattern is not None
+
+
+def member_ids(hole: Hole) -> tuple[str, ...]:
+    """Ids of a pattern's members; none for a hole without one."""
+    return tuple(m.id for m in members(hole)) if patterned(hole) else ()
+
+
+def spread_loads(part: Part, case: Case) -> tuple[Load, ...]:
+    """The loads of a case; a pin's force on a whole pattern is shared evenly by its members."""
+    wholes = {h.id: h for h in part.holes if patterned(h)}
+    loads: list[Load] = []
+    for load in case.loads:
+        if isinstance(load, BearingLoad) and load.on in wholes:
+            loads += shared(load, wholes[load.on])
+        else:
+            loads.append(load)
+    return tuple(loads)
+
+
+def shared(load: BearingLoad | ForceLoad, hole: Hole) -> list[BearingLoad | ForceLoad]:
+    """The load's equal shares, one on each member; their ids are the load's."""
+    ids = member_ids(hole)
+    n = len(ids)
+    return [replace(load, on=id_, x=load.x / n, y=load.y / n) for id_ in ids]
