@@ -8,13 +8,19 @@ from __future__ import annotations
 
 import argparse
 import sys
+import tempfile
 import traceback
 from collections.abc import Sequence
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 from screenapp import __version__
+from screenapp.console import plain_json, tell
 from screenapp.model.errors import Cancelled, Fault, PartFileError, ScreenappError
 from screenapp.model.findings import Verdict
+
+if TYPE_CHECKING:
+    from screenapp.meshing.service import Mesher
 
 HOLDS, DOES_NOT_HOLD, UNDECIDED, BAD_INPUT, INTERNAL_FAULT = range(5)
 
@@ -44,11 +50,8 @@ def main(words: Sequence[str] | None = None) -> int:
     except (Cancelled, KeyboardInterrupt):
         print("cancelled", file=sys.stderr)
         return UNDECIDED
-    except Exception as fault:  # the last line of defence: say it, keep the trace, fail
-        traceback.print_exc()
-        print(f"internal fault: {fault}", file=sys.stderr)
-        print("please report it with the lines above and the part file", file=sys.stderr)
-        return INTERNAL_FAULT
+    except Exception as fault:
+        return _say_fault(fault)
 
 
 class _Parser(argparse.ArgumentParser):
@@ -82,7 +85,11 @@ def _command_parser() -> argparse.ArgumentParser:
         epilog=CAUTION,
     )
     screen.add_argument("files", nargs="+", type=Path, metavar="FILE")
-    screen.add_argument("--json", action="store_true", help="print the result record instead")
+    screen.add_argument(
+        "--json",
+        action="store_true",
+        help="print the result record instead (a list of them for several files)",
+    )
     screen.add_argument("--out", type=Path, metavar="DIR", help="write the record into DIR")
     screen.add_argument("--fast", action="store_true", help="few passes: a first look")
     check = commands.add_parser("check", help="say line and field of every fault in part files")
@@ -103,60 +110,136 @@ def _check(arguments: argparse.Namespace) -> int:
     status = HOLDS
     for path in arguments.files:
         try:
-            faults = faults_of(read_part(path))
+            faults = _located(faults_of(read_part(path)), path)
         except PartFileError as error:
-            if not error.faults:
-                _say_error(error)
-            faults = error.faults or (Fault(error.cause, error.mend),)
+            if not error.faults:  # there is nothing to look into
+                _say_error(error, path)
+                status = BAD_INPUT
+                continue
+            faults = error.faults
         for fault in faults:
-            print(_fault_line(path, fault))
+            tell(_fault_line(path, fault))
         if any(fault.blocks for fault in faults):
             status = BAD_INPUT
         elif not faults:
-            print(f"{path}: no fault")
+            tell(f"{path}: no fault")
     return status
 
 
+def _located(faults: tuple[Fault, ...], path: Path) -> tuple[Fault, ...]:
+    """Faults of a part with their lines in the file it was read from."""
+    from screenapp.model.fault_lines import with_lines
+
+    if all(fault.line is not None for fault in faults):
+        return faults
+    try:
+        return with_lines(faults, path.read_text(encoding="utf-8"))
+    except (OSError, UnicodeDecodeError):
+        return faults
+
+
 def _fault_line(path: Path, fault: Fault) -> str:
-    place = f"{path}:{fault.line}" if fault.line is not None else str(path)
     kind = "" if fault.blocks else "caution: "
     field = f" [{fault.field}]" if fault.field else ""
-    return f"{place}: {kind}{fault.cause}{field}; {fault.mend}"
+    return f"{_place(path, fault)}: {kind}{fault.cause}{field}; {fault.mend}"
+
+
+def _place(path: Path, fault: Fault) -> str:
+    return f"{path}:{fault.line}" if fault.line is not None else str(path)
 
 
 def _screen(arguments: argparse.Namespace) -> int:
     from screenapp.meshing.service import Mesher
-    from screenapp.model.part_json import read_part
-    from screenapp.model.progress import Progress
-    from screenapp.model.result_json import findings_to_record, record_to_text
-    from screenapp.progress_bar import ProgressBar
-    from screenapp.report.record import write_record
-    from screenapp.report.verdict_table import verdict_table
-    from screenapp.screening.screen import screen
 
+    if arguments.out is not None:
+        _prepare(arguments.out, arguments.files)
     status = HOLDS
+    records: list[str] = []
     with Mesher() as mesher:
         mesher.start()
         for path in arguments.files:
             try:
-                part = read_part(path)
-                with ProgressBar(path.name) as bar:
-                    progress = Progress(report=bar.show)
-                    findings = screen(part, mesher, progress, fast=arguments.fast)
+                own = _screen_file(path, arguments, mesher, records)
             except ScreenappError as error:
                 _say_error(error, path)
-                status = _worse(status, BAD_INPUT)
-                continue
-            if arguments.json:
-                print(record_to_text(findings_to_record(findings, part)), end="")
-            else:
-                print(verdict_table(part, findings))
-                print(CAUTION)
-            if arguments.out is not None:
-                for written in write_record(part, findings, arguments.out, path):
-                    print(f"wrote {written}", file=sys.stderr)
-            status = _worse(status, STATUS[findings.verdict])
+                own = BAD_INPUT
+            except Exception as fault:  # the other files still have their turn
+                own = _say_fault(fault, path)
+            status = _worse(status, own)
+    if arguments.json and len(arguments.files) > 1:
+        tell("[\n" + ",\n".join(records) + "\n]", plain_json)
+    elif records:
+        tell(records[0], plain_json)
     return status
+
+
+def _screen_file(
+    path: Path, arguments: argparse.Namespace, mesher: Mesher, records: list[str]
+) -> int:
+    """Screen one file and print its table, or add its result record to `records`; its status."""
+    from screenapp.model.part_json import read_part
+    from screenapp.model.progress import Progress
+    from screenapp.model.result_json import findings_to_record, record_to_text
+    from screenapp.progress_bar import ProgressBar
+    from screenapp.report.verdict_table import verdict_table
+    from screenapp.screening.screen import screen
+
+    part = read_part(path)
+    with ProgressBar(path.name) as bar:
+        findings = screen(part, mesher, Progress(report=bar.show), fast=arguments.fast)
+    if arguments.json:
+        records.append(record_to_text(findings_to_record(findings, part)).rstrip("\n"))
+    else:
+        tell(verdict_table(part, findings))
+        tell(CAUTION)
+    if arguments.out is not None:
+        from screenapp.report.record import write_record  # it draws: slow to load
+
+        try:
+            for written in write_record(part, findings, arguments.out, path):
+                print(f"wrote {written}", file=sys.stderr)
+        except OSError as error:
+            raise ScreenappError(
+                f"the record cannot be written to {arguments.out}: {error.strerror or error}",
+                "give another folder, or make room there",
+            ) from error
+    return STATUS[findings.verdict]
+
+
+def _prepare(folder: Path, files: Sequence[Path]) -> None:
+    """Make the folder of the records, before any work.
+
+    Raises:
+        ScreenappError: it cannot be written to, two records would have the same name, or a record
+            would take the place of another part file.
+    """
+    from screenapp.report.record import PART_ENDING, record_stem
+
+    try:
+        folder.mkdir(parents=True, exist_ok=True)
+        with tempfile.TemporaryFile(dir=folder):
+            pass
+    except OSError as error:
+        raise ScreenappError(
+            f"the records cannot be written to {folder}: {error.strerror or error}",
+            "give another folder with --out",
+        ) from error
+    first: dict[str, Path] = {}
+    for path in files:
+        stem = record_stem(path)
+        if stem in first:
+            raise ScreenappError(
+                f"the records of {first[stem]} and {path} would have the same name in {folder}",
+                "screen them one by one, each with its own --out",
+            )
+        first[stem] = path
+        copy = folder / f"{stem}{PART_ENDING}"
+        of_record = (folder / f"{stem}.result.json").exists()
+        if copy.exists() and not of_record and copy.resolve() != path.resolve():
+            raise ScreenappError(
+                f"{copy} is there already and belongs to no record: it would be replaced by {path}",
+                "give another folder with --out, or move the file away",
+            )
 
 
 def _worse(a: int, b: int) -> int:
@@ -166,8 +249,25 @@ def _worse(a: int, b: int) -> int:
 
 
 def _say_error(error: ScreenappError, path: Path | None = None) -> None:
-    start = f"{path}: " if path is not None else ""
-    print(f"{start}{error.cause}", file=sys.stderr)
+    """The cause on one line and the mend on the next, then every further fault."""
+    faults = error.faults if path is None else _located(error.faults, path)
+    start = place = ""
+    if path is not None:
+        start = place = f"{path}: "
+        if faults and not isinstance(error, PartFileError):
+            place = f"{_place(path, faults[0])}: "
+        elif error.cause.startswith((str(path), path.name)):
+            place = ""  # it says itself which file it is
+    print(f"{place}{error.cause}", file=sys.stderr)
     print(f"{start}{error.mend}", file=sys.stderr)
-    for fault in error.faults[1:]:
-        print(f"{start}{fault}", file=sys.stderr)
+    for fault in faults[1:]:
+        at = f"{_place(path, fault)}: " if path is not None else ""
+        print(f"{at}{fault}", file=sys.stderr)
+
+
+def _say_fault(fault: Exception, path: Path | None = None) -> int:
+    """The last line of defence: say it, keep the trace, fail."""
+    traceback.print_exception(fault)
+    print(f"internal fault{f' at {path}' if path else ''}: {fault}", file=sys.stderr)
+    print("please report it with the lines above and the part file", file=sys.stderr)
+    return INTERNAL_FAULT
