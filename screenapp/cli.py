@@ -15,7 +15,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from screenapp import __version__
-from screenapp.console import plain_json, tell
+from screenapp.console import plain_json, plain_text, tell
 from screenapp.model.errors import Cancelled, Fault, PartFileError, ScreenappError
 from screenapp.model.findings import Verdict
 
@@ -40,9 +40,10 @@ def main(words: Sequence[str] | None = None) -> int:
     words = list(sys.argv[1:] if words is None else words)
     try:
         if words and words[0] in COMMANDS:
-            arguments = _command_parser().parse_args(words)
-            run = {"screen": _screen, "check": _check}[arguments.command]
-            return run(arguments)
+            parser, run = {"screen": (_screen_parser, _screen), "check": (_check_parser, _check)}[
+                words[0]
+            ]
+            return run(parser().parse_intermixed_args(words[1:]))
         return _open_window(_window_parser().parse_args(words))
     except ScreenappError as error:
         _say_error(error)
@@ -75,25 +76,31 @@ def _window_parser() -> argparse.ArgumentParser:
     return parser
 
 
-def _command_parser() -> argparse.ArgumentParser:
-    parser = _Parser(prog="screenapp", epilog=CAUTION)
-    commands = parser.add_subparsers(dest="command", required=True)
-    screen = commands.add_parser(
-        "screen",
-        help="screen parts with no window and print the verdicts",
-        description="Exit status: 0 holds, 1 does not hold, 2 undecided, 3 bad input, 4 fault.",
+def _screen_parser() -> argparse.ArgumentParser:
+    parser = _Parser(
+        prog="screenapp screen",
+        description="Screens parts with no window and prints the verdicts.  "
+        "Exit status: 0 holds, 1 does not hold, 2 undecided, 3 bad input, 4 fault.",
         epilog=CAUTION,
     )
-    screen.add_argument("files", nargs="+", type=Path, metavar="FILE")
-    screen.add_argument(
+    parser.add_argument("files", nargs="+", type=Path, metavar="FILE")
+    parser.add_argument(
         "--json",
         action="store_true",
-        help="print the result record instead (a list of them for several files)",
+        help="print the result record instead; for several files, an array of their records",
     )
-    screen.add_argument("--out", type=Path, metavar="DIR", help="write the record into DIR")
-    screen.add_argument("--fast", action="store_true", help="few passes: a first look")
-    check = commands.add_parser("check", help="say line and field of every fault in part files")
-    check.add_argument("files", nargs="+", type=Path, metavar="FILE")
+    parser.add_argument("--out", type=Path, metavar="DIR", help="write the record into DIR")
+    parser.add_argument("--fast", action="store_true", help="few passes: a first look")
+    return parser
+
+
+def _check_parser() -> argparse.ArgumentParser:
+    parser = _Parser(
+        prog="screenapp check",
+        description="Says line and field of every fault in part files.  "
+        "Exit status: 0 no fault, 3 faults.",
+    )
+    parser.add_argument("files", nargs="+", type=Path, metavar="FILE")
     return parser
 
 
@@ -190,7 +197,10 @@ def _screen_file(
     if arguments.json:
         records.append(record_to_text(findings_to_record(findings, part)).rstrip("\n"))
     else:
-        tell(verdict_table(part, findings))
+        tell(
+            verdict_table(part, findings),
+            lambda _: verdict_table(part, findings, plain_text),
+        )
         tell(CAUTION)
     if arguments.out is not None:
         from screenapp.report.record import write_record  # it draws: slow to load

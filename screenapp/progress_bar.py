@@ -18,12 +18,14 @@ class ProgressBar:
         self._title = title
         self._stream = sys.stderr if stream is None else stream
         self._shown = self._stream.isatty()
+        wide = (self._stream.encoding or "").lower().startswith("utf")
+        self._full, self._empty = ("█", "·") if wide else ("#", ".")
 
     def show(self, step: Step) -> None:
         """Draw a step."""
         if self._shown:
             full = round(_WIDTH * min(max(step.done, 0.0), 1.0))
-            bar = "█" * full + "·" * (_WIDTH - full)
+            bar = self._full * full + self._empty * (_WIDTH - full)
             text = f"{self._title} {bar} pass {step.number}, {step.stage}"
             self._stream.write(f"\r\x1b[K{text}")
             self._stream.flush()

@@ -25,6 +25,7 @@ from screenapp.model.findings import Fields, Findings
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
 from screenapp.report.colours import Scale
+from screenapp.report.one_line import one_line
 from screenapp.report.picture_field import PaintedField, governing_field
 from screenapp.report.raster import Image, Viewport, rasterise
 
@@ -222,11 +223,6 @@ def _fit(text: Text, words: str, room: float, whole_words: bool) -> str:
         return words[gap + 1 :]
     text.set_text(words[:fits].rstrip() + "…")
     return ""
-
-
-def one_line(words: str) -> str:
-    """The same words on one line, without characters that cannot be drawn."""
-    return " ".join("".join(c if c.isprintable() else " " for c in words).split())
 
 
 def _point_at(axes: Axes, field: PaintedField, view: Viewport, painted: NDArray[np.bool_]) -> None:

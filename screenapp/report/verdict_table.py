@@ -2,19 +2,25 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 
 from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Findings
 from screenapp.model.gauge_text import wall_text
 from screenapp.model.part import Part
+from screenapp.report.one_line import columns_of, one_line
 
 
-def verdict_table(part: Part, findings: Findings) -> str:
-    """Title, verdict, limits, peaks, readings and the mesh, a line each."""
+def verdict_table(
+    part: Part, findings: Findings, spell: Callable[[str], str] = lambda text: text
+) -> str:
+    """Title, verdict, limits, peaks, readings and the mesh, a line each.
+
+    `spell` may put other letters for those that the terminal lacks; columns are lined up after it.
+    """
     cases = {case.case: case.name for case in findings.cases}
     units = part.display_units
-    lines = [part.title, findings.headline]
+    lines = [one_line(part.title), findings.headline]
     lines += [f"  {reason}" for reason in findings.reasons if reason not in findings.headline]
     rows = [("limit", "case", "use", "trust", "verdict", "where")]
     rows += [
@@ -28,7 +34,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
         )
         for limit in findings.limits
     ]
-    lines += ["", *_columns(rows)]
+    lines += ["", *_columns(rows, spell)]
     peaks = [("von Mises peak", "case", "value", "trust")]
     for case in findings.cases:
         peaks += [
@@ -36,7 +42,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
             for p in case.peaks
             if p.quantity == "von_mises"
         ]
-    lines += ["", *_columns(peaks)]
+    lines += ["", *_columns(peaks, spell)]
     if findings.readings:
         read = [("reading", "case", "von Mises", "trust", "where")]
         read += [
@@ -49,7 +55,7 @@ def verdict_table(part: Part, findings: Findings) -> str:
             )
             for r in findings.readings
         ]
-        lines += ["", *_columns(read)]
+        lines += ["", *_columns(read, spell)]
     mesh = findings.mesh
     balance = max(max(c.balance.force, c.balance.moment) for c in findings.cases)
     lines += [
@@ -61,13 +67,15 @@ def verdict_table(part: Part, findings: Findings) -> str:
     if mesh.walls:
         lines.append(wall_text(mesh.walls[0], units))
     lines += [f"caution: {caution}" for caution in findings.cautions]
-    return "\n".join(lines)
+    return "\n".join(spell(line) for line in lines)
 
 
-def _columns(rows: Sequence[Sequence[str]]) -> list[str]:
+def _columns(rows: Sequence[Sequence[str]], spell: Callable[[str], str]) -> list[str]:
     """Rows with their columns lined up."""
-    widths = [max(len(row[i]) for row in rows) for i in range(len(rows[0]))]
-    return [
-        "  " + "  ".join(f"{cell:<{w}}" for cell, w in zip(row, widths, strict=True)).rstrip()
-        for row in rows
-    ]
+    cells = [[spell(one_line(cell)) for cell in row] for row in rows]
+    widths = [max(columns_of(row[i]) for row in cells) for i in range(len(cells[0]))]
+    lines: list[str] = []
+    for row in cells:
+        padded = (c + " " * (w - columns_of(c)) for c, w in zip(row, widths, strict=True))
+        lines.append("  " + "  ".join(padded).rstrip())
+    return lines

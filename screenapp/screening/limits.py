@@ -122,7 +122,8 @@ def _why_undecided(peak: Peak, allowed: float, case: str) -> str:
 def _displacement(limit: DisplacementLimit, case: CaseFindings) -> LimitFindings:
     moved = case.displacement_max
     used = _scaled(moved, 1.0 / limit.most)
-    x, y = case.displacement_at
+    # six decimals: a node on an axis may lie beside it by a rounding
+    x, y = (round(v, 6) + 0.0 for v in case.displacement_at)
     place = f"({x:.4g}, {y:.4g}) mm"
     if moved.trust == "settled" and moved.high < limit.most:
         verdict: Verdict = "holds"

@@ -17,7 +17,7 @@ from screenapp.model.findings import Findings
 from screenapp.model.part import DisplacementLimit, Part
 from screenapp.model.part_json import read_part
 from screenapp.model.shape import Shape, shape_of
-from screenapp.report.picture import one_line, part_picture
+from screenapp.report.picture import part_picture
 from screenapp.report.picture_field import governing_field
 from screenapp.screening.screen import screen
 
@@ -108,10 +108,6 @@ def test_no_text_breaks_it(bracket: Screened, text: str) -> None:
     seen = pixels((named, shape, dataclasses.replace(findings, cases=cases, headline=text)))
     assert seen.shape[1] == 1600
     assert (seen[:, -8:] > 240).all(), "nothing runs over the right rim"
-
-
-def test_one_line_keeps_words_and_drops_what_cannot_be_drawn() -> None:
-    assert one_line(" two\n lines\x00\x1b[31m ") == "two lines [31m"
 
 
 def test_same_findings_same_bytes(bracket: Screened) -> None:
