@@ -1,8 +1,9 @@
-"""The stress field of a solution: averaged inside the part, recovered along its edges.
+"""The stress field of a solution: fitted inside the part, recovered along its edges.
 
-Inside, stresses are taken where the element is most accurate (2 × 2 points), carried to the nodes
-and averaged.  On the boundary that would lose an order of accuracy exactly where the peaks are, so
-`edge_recovery` takes over there.
+Inside, `patch_recovery` fits the stresses round every inner corner node; where no patch reaches (a
+wall one element wide) the elements' stresses are carried to the nodes and averaged.  On the
+boundary both would lose an order of accuracy exactly where the peaks are, so `edge_recovery` takes
+over there.
 """
 
 from __future__ import annotations
@@ -16,6 +17,7 @@ from screenapp.mechanics.corner_stress import disturbed_corners
 from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
 from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
 from screenapp.mechanics.energy_error import energy_error
+from screenapp.mechanics.patch_recovery import recover_inside
 from screenapp.mechanics.quadrature import gauss_square
 from screenapp.mechanics.strain_displacement import element_strains
 from screenapp.mechanics.support_tractions import supported_stress
@@ -52,7 +54,8 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
         at_supports,
         hooke,
     )
-    nodal = with_edges(mesh, inside, side)
+    fitted, reached = recover_inside(mesh, solution, hooke)
+    nodal = with_edges(mesh, np.where(reached[:, None], fitted, inside), side)
     error = energy_error(mesh, solution, hooke, nodal, side)
     return StressField(nodal, side, error)
 
@@ -87,7 +90,7 @@ def averaged_stress(mesh: Mesh, own: Floats) -> Floats:
 
 
 def with_edges(mesh: Mesh, inside: Floats, side: Floats) -> Floats:
-    """The averaged field with its boundary nodes replaced by the mean of their sides' values."""
+    """The field inside with its boundary nodes replaced by the mean of their sides' values."""
     flat = mesh.side_nodes.ravel()
     count = np.bincount(flat, minlength=mesh.n_nodes)
     rim = count > 0

@@ -66,7 +66,7 @@ class StressField:
     """Recovered stresses of all cases.
 
     Attributes:
-        nodal: averaged inside, edge recovery on the boundary, (n_cases, n_nodes, 3) [MPa].
+        nodal: fitted inside, edge recovery on the boundary, (n_cases, n_nodes, 3) [MPa].
         side: edge recovery at the start, middle and end of every boundary side,
             (n_cases, n_sides, 3, 3) [MPa]: axis 2 is the place, axis 3 the component.  Two sides
             that meet at a sharp corner keep different values.

@@ -99,7 +99,7 @@ def wanted_sizes(
         open_targets: numbers that are not settled yet.
     """
     mesh = last.fields.mesh
-    size = _nodal_sizes(last)
+    size = nodal_sizes(last)
     factor = np.minimum(_energy_factor(part, last), _point_factor(part, last))
     wanted = size * np.clip(factor, FACTOR_LEAST, FACTOR_MOST)
     p = order(last.fields.solution.element)
@@ -129,7 +129,7 @@ def energy_goal(tolerance: float) -> float:
     return 0.25 * float(np.sqrt(tolerance))
 
 
-def _nodal_sizes(last: Pass) -> Floats:
+def nodal_sizes(last: Pass) -> Floats:
     """Smallest size of the elements round each node [mm]."""
     mesh = last.fields.mesh
     size = np.full(mesh.n_nodes, np.inf)
