@@ -6,13 +6,17 @@ one another.
 
 from __future__ import annotations
 
+from collections.abc import Iterator, Mapping
+from contextlib import contextmanager
 from dataclasses import dataclass, replace
 from pathlib import Path
 from typing import Literal
 
 from PySide6.QtCore import QObject, Signal
 
+from screenapp.model.edit_dimensions import with_formulas
 from screenapp.model.errors import Fault
+from screenapp.model.field_names import field_words
 from screenapp.model.findings import Findings
 from screenapp.model.history import History
 from screenapp.model.part import Part
@@ -71,6 +75,7 @@ class Document(QObject):
         self._saved = self.history.part
         self._key_of: tuple[Part, str] | None = None
         self._faults_of: tuple[Part, tuple[Fault, ...]] | None = None
+        self._kept: Mapping[str, str | None] = {}
 
     @property
     def part(self) -> Part:
@@ -103,10 +108,26 @@ class Document(QObject):
 
     def apply(self, name: str, part: Part) -> None:
         """Make `part` the present one as a named, undoable step; nothing happens if it is equal."""
+        part = with_formulas(part, self._kept)
         if part == self.part:
             return
         self.history.push(name, part)
         self._told_part()
+
+    @contextmanager
+    def keeping(self, texts: Mapping[str, str | None]) -> Iterator[None]:
+        """Steps made inside carry these expressions at these fields (None: plain numbers).
+
+        An expression is kept where it gives the number that the step put there.
+        """
+        before = self.part
+        self._kept = texts
+        try:
+            yield
+            if self.part is before and texts:
+                self.apply(", ".join(map(field_words, texts)), before)
+        finally:
+            self._kept = {}
 
     def undo(self) -> None:
         """Step back once, if there is a step."""

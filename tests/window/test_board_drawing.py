@@ -72,9 +72,10 @@ def test_exact_places_lengths_and_angles_are_typed(hand: Hand) -> None:
     hand.tab()
     hand.type("0")
     hand.enter()
+    assert hand.canvas.hasFocus()  # Enter hands the keyboard back to the board
     hand.go(30.0, 0.0)
-    hand.key(Qt.Key.Key_Tab)
-    hand.key(Qt.Key.Key_Tab)  # on to the length
+    for _ in range(3):  # the row, y, the length
+        hand.key(Qt.Key.Key_Tab)
     hand.type("2 in")
     hand.tab()
     hand.type("0")

@@ -47,6 +47,16 @@ def exact_values(found: Found) -> dict[str, float]:
     return values
 
 
+def exact_paths(found: Found) -> dict[str, str]:
+    """The dotted path in the part file of each of those fields, where an expression is kept."""
+    record = found.record
+    if isinstance(record, LoopHole):
+        return {}
+    place = "centre" if isinstance(record, CircleHole | SlotHole) else "at"
+    places = {"x": f"{place}.0", "y": f"{place}.1"}
+    return {f.name: f"{found.field}.{places.get(f.name, f.name)}" for f in exact_fields(found)}
+
+
 def with_exact(part: Part, id_: str, typed: dict[str, float]) -> Part:
     """The part with the typed values in the place of the present ones.
 

@@ -115,8 +115,9 @@ class Placing:
         if not ways:
             return
         self._on, self._id = on, now.id if now is not None else ""
-        units = self._canvas.document.part.display_units
-        self.popover.open(title, ways, units, near, None if now is None else read_back(now))
+        part = self._canvas.document.part
+        before = None if now is None else read_back(now)
+        self.popover.open(title, ways, part.display_units, near, before, part.dimensions)
         self._show()
 
     def _record(self) -> Record | None:

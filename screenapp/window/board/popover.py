@@ -17,7 +17,7 @@ from PySide6.QtWidgets import (
 )
 
 from screenapp.model.errors import ScreenappError
-from screenapp.model.part import DisplayUnits
+from screenapp.model.part import Dimension, DisplayUnits
 from screenapp.window import theme
 from screenapp.window.board.placing_kinds import Way
 from screenapp.window.board.quantity import parse, written
@@ -44,6 +44,7 @@ class Popover(QFrame):
         self.values: dict[str, float] = {}
         self._ways: tuple[Way, ...] = ()
         self._units: DisplayUnits = "mm-N-MPa"
+        self._dimensions: tuple[Dimension, ...] = ()
         self._edits: dict[str, QLineEdit] = {}
         self._bad: dict[str, str] = {}
         self._title = QLabel()
@@ -88,9 +89,10 @@ class Popover(QFrame):
         units: DisplayUnits,
         near: QPoint,
         now: tuple[str, dict[str, float]] | None = None,
+        dimensions: tuple[Dimension, ...] = (),
     ) -> None:
         """Show the ways for a place, with `now` as (key, values) of what is there already."""
-        self._ways, self._units = ways, units
+        self._ways, self._units, self._dimensions = ways, units, dimensions
         self._title.setText(title)
         self.setAccessibleName(title)
         self._put.setText("Put it there" if now is None else "Change it")
@@ -189,7 +191,8 @@ class Popover(QFrame):
         self.values.pop(name, None)
         if text:
             try:
-                self.values[name] = parse(text, field.kind, self._units)
+                typed = parse(text, field.kind, self._units, self._dimensions)
+                self.values[name] = typed.value
             except ScreenappError as fault:
                 self._bad[name] = f"{fault.cause}: {fault.mend}."
             for other in field.excludes:

@@ -2,20 +2,24 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from threading import Thread
 
 from screenapp.model.kinds import KindName
-from screenapp.model.part import DisplayUnits
+from screenapp.model.part import Dimension, DisplayUnits
+from screenapp.model.typed_values import Typed, read_typed
 from screenapp.model.units import format_quantity, parse_quantity
 
 
-def parse(text: str, kind: KindName, units: DisplayUnits) -> float:
-    """The stored value of a typed text; a bare number is in the displayed unit.
+def parse(
+    text: str, kind: KindName, units: DisplayUnits, dimensions: Iterable[Dimension] = ()
+) -> Typed:
+    """What was typed, a quantity or an expression; a bare number is in the displayed unit.
 
     Raises:
-        QuantityError: the text is not such a quantity.
+        ScreenappError: the text is neither.
     """
-    return parse_quantity(text, kind, units)
+    return read_typed(text, kind, units, dimensions)
 
 
 def warm_up() -> None:

@@ -11,14 +11,18 @@ from PySide6.QtWidgets import QFrame, QHBoxLayout, QLabel, QLineEdit
 
 from screenapp.model.errors import ScreenappError
 from screenapp.model.kinds import KindName
+from screenapp.model.typed_values import Typed, shown_formula
 from screenapp.window import theme
 from screenapp.window.board.quantity import parse, written
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
 
-STARTERS = "0123456789.-"
-"""A key with one of these opens the row."""
+STARTERS = "0123456789.,-(="
+"""A key with one of these opens the row; "=" begins an expression and is not itself typed."""
+
+
+TIP = "type a value, with a unit if you like, or an expression; Enter accepts"
 
 
 @dataclass(frozen=True)
@@ -41,14 +45,20 @@ class EntryField:
 
 
 class EntryRow(QFrame):
-    """The row; it asks the canvas's tool what may be typed and tells it what was."""
+    """The row; it asks the canvas's tool what may be typed and tells it what was.
+
+    Attributes:
+        taken: of what was last accepted, the expression of each field; None for a plain number.
+    """
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
         self._canvas = canvas
         self._fields: tuple[EntryField, ...] = ()
         self._edits: dict[str, QLineEdit] = {}
+        self._labels: dict[str, QLabel] = {}
         self._typed: dict[str, str] = {}
+        self.taken: dict[str, str | None] = {}
         self.setObjectName("entryRow")
         self.setAccessibleName("Exact entry")
         self.setFont(theme.font())
@@ -64,10 +74,21 @@ class EntryRow(QFrame):
         for field in self._fields:
             if field.name in self._typed:
                 try:
-                    values[field.name] = self._parsed(field)
+                    values[field.name] = self._parsed(field).value
                 except ScreenappError:
                     continue
         return values
+
+    def _expressions(self) -> dict[str, str | None]:
+        """The expression of each typed field; None for a plain number."""
+        texts: dict[str, str | None] = {}
+        for field in self._fields:
+            if field.name in self._typed:
+                try:
+                    texts[field.name] = self._parsed(field).formula
+                except ScreenappError:
+                    continue
+        return texts
 
     def begin(self, event: QKeyEvent) -> bool:
         """Open the row if the key begins a number and the tool has fields."""
@@ -80,7 +101,7 @@ class EntryRow(QFrame):
             return False
         if tool is None or not tool.entry_fields():
             return False
-        self.open_row(event.text())
+        self.open_row(event.text().replace("=", ""))
         return True
 
     def open_row(self, first: str | None, near: QPoint | None = None) -> None:
@@ -112,6 +133,7 @@ class EntryRow(QFrame):
 
     def forget(self) -> None:
         """What was typed is used up; the fields show live values again."""
+        self.taken = self._expressions()
         self._typed = {}
 
     def edit_of(self, name: str) -> QLineEdit:
@@ -162,19 +184,19 @@ class EntryRow(QFrame):
                 old.hide()
                 old.deleteLater()
         self._fields = fields
-        self._edits = {}
+        self._edits, self._labels = {}, {}
         for field in fields:
             label = QLabel(field.label)
             edit = QLineEdit()
             edit.setFixedWidth(92)
             edit.setAccessibleName(field.label)
-            edit.setToolTip(f"{field.label}: type a value with or without a unit, Enter accepts")
+            edit.setToolTip(f"{field.label}: {TIP}")
             edit.textEdited.connect(lambda _text, name=field.name: self._edited(name))
             edit.installEventFilter(self)
             label.setBuddy(edit)
             self._row.addWidget(label)
             self._row.addWidget(edit)
-            self._edits[field.name] = edit
+            self._edits[field.name], self._labels[field.name] = edit, label
             label.show()
             edit.show()  # at once, or it could not take the focus
         self._style()
@@ -192,8 +214,10 @@ class EntryRow(QFrame):
         y = min(max(near.y(), 8), max(8, canvas.height() - self.height() - 8))
         self.move(x, y)
 
-    def _parsed(self, field: EntryField) -> float:
-        return parse(self._typed[field.name], field.kind, self._canvas.part.display_units)
+    def _parsed(self, field: EntryField) -> Typed:
+        part = self._canvas.document.part
+        text = self._typed[field.name]
+        return parse(text, field.kind, part.display_units, part.dimensions)
 
     def _edited(self, name: str) -> None:
         """A field was typed into: those it excludes go back to live values."""
@@ -219,6 +243,7 @@ class EntryRow(QFrame):
         for field in self._fields:
             edit = self._edits[field.name]
             edit.setProperty("bad", False)
+            edit.setToolTip(f"{field.label}: {TIP}")
             if field.name in self._typed:
                 try:
                     self._parsed(field)
@@ -238,13 +263,9 @@ class EntryRow(QFrame):
         tool, values = self._canvas.tool, self.typed
         if tool is None:
             return
-        fields = self._fields
-        self._typed = {}
+        self.forget()
+        self.close_row()  # Enter hands the keyboard back to the board; a figure opens the row again
         tool.entry_accept(values)
-        if tool is self._canvas.tool and tool.entry_fields() == fields:
-            self._show_live()
-            self._edits[fields[0].name].setFocus()
-            self._edits[fields[0].name].selectAll()
         self._canvas.refresh()
 
     def _step_back(self) -> None:
@@ -270,12 +291,17 @@ class EntryRow(QFrame):
     def _show_live(self) -> None:
         tool = self._canvas.tool
         live = tool.entry_live() if tool is not None else {}
-        units = self._canvas.part.display_units
+        given = tool.entry_expressions() if tool is not None else {}
+        part = self._canvas.part
+        units = part.display_units
         for field in self._fields:
             if field.name in self._typed or field.name not in live:
                 continue
             edit = self._edits[field.name]
             text = written(live[field.name], field.kind, units)
+            if field.name in given:
+                text = shown_formula(given[field.name], field.kind, units, part.dimensions)
+            self._labels[field.name].setText(field.label + (" =" if field.name in given else ""))
             if edit.text() != text:
                 edit.setText(text)
                 edit.setCursorPosition(0)

@@ -63,8 +63,9 @@ class Field(QWidget):
         if isinstance(piece, Value):
             how = "choose" if piece.choices else "type"
             hint = piece.hint or f"Enter or click to {how}"
-            self.setToolTip(f"{piece.name}. {hint}")
-            self.setAccessibleName(f"{piece.name}: {piece.text}")
+            given = f" = {piece.formula}" if piece.formula else ""
+            self.setToolTip(f"{piece.name}{given}. {hint}")
+            self.setAccessibleName(f"{piece.name}: {piece.text}{given}")
         else:
             self.setToolTip(piece.tip or piece.text)
             self.setAccessibleName(piece.text)

@@ -35,7 +35,7 @@ class HeldParagraph(Paragraph):
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the supports."""
         part = self.document.part
-        q = Quantities(part.display_units)
+        q = Quantities.of(self.document)
         self.list.set([self._row(s, q) for s in part.supports])
         add = Link("add", "+ support", self._add, "Hold another place", self._places)
         self.add.set(add)
@@ -87,6 +87,7 @@ class HeldParagraph(Paragraph):
                 "angle",
                 f"Held direction at {where}",
                 change.setter("angle"),
+                field=f"supports.{support.id}.angle",
             )
             return (kind("angle"), ", at ", angle)
         assert isinstance(support, PrescribedSupport)
@@ -97,6 +98,7 @@ class HeldParagraph(Paragraph):
             f"Movement of {where} along x",
             change.setter("x"),
             "free",
+            f"supports.{support.id}.x",
         )
         y = q.optional_value(
             "y",
@@ -105,5 +107,6 @@ class HeldParagraph(Paragraph):
             f"Movement of {where} along y",
             change.setter("y"),
             "free",
+            f"supports.{support.id}.y",
         )
         return (kind("moved"), ": x ", x, ", y ", y)

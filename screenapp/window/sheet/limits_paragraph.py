@@ -33,7 +33,7 @@ class LimitsParagraph(Paragraph):
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the limits."""
         part = self.document.part
-        q = Quantities(part.display_units)
+        q = Quantities.of(self.document)
         self.list.set([self._row(part, limit, q) for limit in part.limits])
         self.add.set(
             Link(
@@ -74,7 +74,12 @@ class LimitsParagraph(Paragraph):
         pieces: tuple[Piece | str, ...]
         if isinstance(limit, DisplacementLimit):
             most = q.value(
-                "most", limit.most, "displacement", "Most displacement", change.setter("most")
+                "most",
+                limit.most,
+                "displacement",
+                "Most displacement",
+                change.setter("most"),
+                field=f"limits.{limit.id}.most",
             )
             pieces = ("Nothing moves by more than ", most, ".")
         else:
@@ -104,7 +109,14 @@ class LimitsParagraph(Paragraph):
             lambda key: change.set("against", key),
             lambda: tuple(Choice(k, t) for k, t in AGAINST.items()),
         )
-        factor = q.value("factor", limit.factor, "number", "Safety factor", change.setter("factor"))
+        factor = q.value(
+            "factor",
+            limit.factor,
+            "number",
+            "Safety factor",
+            change.setter("factor"),
+            field=f"limits.{limit.id}.factor",
+        )
         allowed: tuple[str, ...] = (".",)
         known = part.material and getattr(part.material, limit.against, None)
         if known and limit.factor > 0.0:

@@ -59,7 +59,7 @@ class CaseBlock(QWidget):
     def show_case(self, case: Case, number: int) -> None:
         """Show a case."""
         document = self._document
-        q = Quantities(document.part.display_units)
+        q = Quantities.of(document)
         change = load_changes.CaseChange(document, case.id)
         name = Value("name", case.name, "Name of the load case", change.rename)
         self.head.set("In case ", name, ":" if case.loads else ": nothing acts yet.")
@@ -186,7 +186,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
     return RowOf(
         load.id,
         (where,),
-        _load_pieces(load, name, change, q),
+        _load_pieces(load, name, change, q, f"cases.{case.id}.loads.{load.id}"),
         change.remove,
         f"Remove the {name} from {case.name}",
         also,
@@ -194,7 +194,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
 
 
 def _load_pieces(
-    load: Load, name: str, change: load_changes.LoadChange, q: Quantities
+    load: Load, name: str, change: load_changes.LoadChange, q: Quantities, field: str
 ) -> tuple[Piece | str, ...]:
     if isinstance(load, PressureLoad):
         value = q.value(
@@ -204,6 +204,7 @@ def _load_pieces(
             f"Pressure of {name}",
             change.setter("pressure"),
             "positive presses on the material",
+            f"{field}.pressure",
         )
         return ("pressed by ", value)
     if isinstance(load, ShearLoad):
@@ -214,6 +215,7 @@ def _load_pieces(
             f"Shear of {name}",
             change.setter("per_length"),
             "positive runs with the material on its left",
+            f"{field}.per_length",
         )
         return ("sheared along by ", value)
     kinds = {

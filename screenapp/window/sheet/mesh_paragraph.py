@@ -54,7 +54,7 @@ class MeshParagraph(Paragraph):
         """Show the wishes and what came of them."""
         part = self.document.part
         mesh = part.mesh
-        q = Quantities(part.display_units)
+        q = Quantities.of(self.document)
         element = Value(
             "element",
             ELEMENTS[mesh.element].text if mesh.element in ELEMENTS else mesh.element,
@@ -68,6 +68,7 @@ class MeshParagraph(Paragraph):
             "share",
             "Tolerance at which a number counts as settled",
             lambda value: changes.set_mesh(self.document, "tolerance", tolerance=value),
+            field="mesh.tolerance",
         )
         across = q.value(
             "across",
@@ -83,6 +84,7 @@ class MeshParagraph(Paragraph):
             "Largest element side",
             lambda value: changes.set_mesh(self.document, "element size", size=value),
             "as the program chooses",
+            "mesh.size",
         )
         self.wishes.set(
             "Made of ",

@@ -36,7 +36,7 @@ class PartParagraph(Paragraph):
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the part."""
         part = self.document.part
-        q = Quantities(part.display_units)
+        q = Quantities.of(self.document)
         self.summary.set(*self._summary(part, q))
         self.holes.set([self._hole_row(h, q) for h in part.holes[:SHOWN_HOLES]])
         rest = len(part.holes) - SHOWN_HOLES
@@ -95,7 +95,10 @@ class PartParagraph(Paragraph):
         where = f"hole {hole.id}"
 
         def length(key: str, value: float, what: str) -> Value:
-            return q.value(key, value, "length", f"{what} of {where}", change.setter(key))
+            at = {"x": "centre.0", "y": "centre.1"}.get(key, key)
+            field = f"holes.{hole.id}.{at}"
+            name = f"{what} of {where}"
+            return q.value(key, value, "length", name, change.setter(key), field=field)
 
         if isinstance(hole, CircleHole):
             pieces = (
@@ -117,7 +120,14 @@ class PartParagraph(Paragraph):
                 ", ",
                 length("y", hole.centre[1], "Centre y"),
                 ", turned ",
-                q.value("angle", hole.angle, "angle", f"Angle of {where}", change.setter("angle")),
+                q.value(
+                    "angle",
+                    hole.angle,
+                    "angle",
+                    f"Angle of {where}",
+                    change.setter("angle"),
+                    field=f"holes.{hole.id}.angle",
+                ),
             )
         else:
             edges = len(hole.loop.edges) if isinstance(hole, LoopHole) else 0
@@ -138,26 +148,29 @@ class PartParagraph(Paragraph):
                 continue
             record = found.record
             if isinstance(record, Corner):
-                rows.append(self._corner_row(record, q))
+                rows.append(self._corner_row(record, found.field, q))
             elif isinstance(record, Edge):
                 rows.append(self._edge_row(part, record, q))
         return rows
 
-    def _corner_row(self, corner: Corner, q: Quantities) -> RowOf:
+    def _corner_row(self, corner: Corner, field: str, q: Quantities) -> RowOf:
         change = changes.CornerChange(self.document, corner.id)
         name = f"corner {corner.id}"
+
+        def length(key: str, value: float, what: str, at: str) -> Value:
+            full = f"{what} of {name}"
+            return q.value(key, value, "length", full, change.setter(key), field=f"{field}.{at}")
+
         return RowOf(
             corner.id,
             (name,),
             (
                 "at ",
-                q.value("x", corner.at[0], "length", f"x of {name}", change.setter("x")),
+                length("x", corner.at[0], "x", "at.0"),
                 ", ",
-                q.value("y", corner.at[1], "length", f"y of {name}", change.setter("y")),
+                length("y", corner.at[1], "y", "at.1"),
                 ", rounded by ",
-                q.value(
-                    "round", corner.round, "length", f"Round of {name}", change.setter("round")
-                ),
+                length("round", corner.round, "Round", "round"),
             ),
             lambda: changes.remove(self.document, corner.id),
             f"Remove {name}",

@@ -50,6 +50,7 @@ class Value:
         hint: more for the tooltip, e.g. which units are taken.
         typed: the text to begin with when it is typed, if it differs from what is shown.
         about: id that the board lights while the pointer is on it.
+        formula: the expression that gives it, "" for a plain value; a sign in front says so.
     """
 
     key: str
@@ -60,6 +61,7 @@ class Value:
     hint: str = ""
     typed: str | None = None
     about: str = ""
+    formula: str = ""
 
 
 @dataclass(frozen=True)

@@ -7,11 +7,17 @@ import re
 from collections.abc import Callable
 from dataclasses import dataclass
 
+from screenapp.model.edit_dimensions import formula_at
 from screenapp.model.errors import ScreenappError
 from screenapp.model.kinds import KINDS, KindName
 from screenapp.model.part import DisplayUnits
+from screenapp.model.typed_values import Typed, read_typed, shown_formula
 from screenapp.model.units import format_number, format_quantity, parse_quantity
+from screenapp.window.document import Document
 from screenapp.window.sheet.pieces import Value
+
+SIGN = "=\u2009"
+"""Stands before a value that an expression gives."""
 
 _BARE = re.compile(r"[\d\s.,+\-−eE/]+")
 
@@ -20,10 +26,17 @@ _BARE = re.compile(r"[\d\s.,+\-−eE/]+")
 class Quantities:
     """Shows and reads quantities.
 
-    Beside the kinds of `model.kinds` it knows "modulus" (shown in GPa or ksi) and "count".
+    Beside the kinds of `model.kinds` it knows "modulus" (shown in GPa or ksi) and "count".  Of a
+    document (see `of`) it also takes expressions in the named dimensions.
     """
 
     units: DisplayUnits
+    document: Document | None = None
+
+    @classmethod
+    def of(cls, document: Document) -> Quantities:
+        """The quantities of a document's part."""
+        return cls(document.part.display_units, document)
 
     def show(self, value: float, kind: str) -> str:
         """A value with its unit."""
@@ -56,7 +69,33 @@ class Quantities:
             if self.units == "mm-N-MPa" and _BARE.fullmatch(text):
                 text = f"{text} GPa"
             kind = "stress"
-        return parse_quantity(text, _known(kind), self.units)
+        return self._read(text, kind).value
+
+    def _read(self, text: str, kind: str) -> Typed:
+        """What was typed, with the expression if it is one."""
+        if kind in ("count", "modulus"):
+            return Typed(self.read(text, kind))
+        dimensions = self.document.part.dimensions if self.document is not None else ()
+        return read_typed(text, _known(kind), self.units, dimensions)
+
+    def formula(self, field: str, kind: str) -> str:
+        """The expression at a field of the part as it is typed; "" if there is none."""
+        if self.document is None or not field or kind in ("count", "modulus"):
+            return ""
+        part = self.document.part
+        text = formula_at(part, field)
+        if text is None:
+            return ""
+        return shown_formula(text, _known(kind), self.units, part.dimensions)
+
+    def _put(self, text: str, kind: str, set_: Callable[[float], None], field: str) -> None:
+        """Set what was typed, and keep the expression if it is one."""
+        typed = self._read(text, kind)
+        if self.document is None or not field:
+            set_(typed.value)
+            return
+        with self.document.keeping({field: typed.formula}):
+            set_(typed.value)
 
     def typed(self, value: float, kind: str) -> str:
         """The text to begin typing with: all figures, so that accepting it changes nothing."""
@@ -74,15 +113,21 @@ class Quantities:
         name: str,
         set_: Callable[[float], None],
         hint: str = "",
+        field: str = "",
     ) -> Value:
-        """A number of a sentence that can be typed anew; `set_` takes the stored value."""
+        """A number of a sentence that can be typed anew; `set_` takes the stored value.
+
+        `field` is its dotted path in the part file, where an expression is kept.
+        """
+        formula = self.formula(field, kind)
         return Value(
             key,
-            self.show(value, kind),
+            (SIGN if formula else "") + self.show(value, kind),
             name,
-            lambda text: set_(self.read(text, kind)),
+            lambda text: self._put(text, kind, set_, field),
             hint=hint or self._hint(kind),
-            typed=self.typed(value, kind),
+            typed=formula or self.typed(value, kind),
+            formula=formula,
         )
 
     def optional_value(
@@ -93,20 +138,26 @@ class Quantities:
         name: str,
         set_: Callable[[float | None], None],
         none: str = "not given",
+        field: str = "",
     ) -> Value:
         """As `value`, but it may be missing: an empty text or the word `none` leaves it out."""
 
         def commit(text: str) -> None:
-            empty = not text.strip() or text.strip() == none
-            set_(None if empty else self.read(text, kind))
+            if not text.strip() or text.strip() == none:
+                set_(None)
+            else:
+                self._put(text, kind, set_, field)
 
+        formula = self.formula(field, kind)
+        shown = none if value is None else (SIGN if formula else "") + self.show(value, kind)
         return Value(
             key,
-            none if value is None else self.show(value, kind),
+            shown,
             name,
             commit,
             hint=f"{self._hint(kind)}; empty: {none}",
-            typed="" if value is None else self.typed(value, kind),
+            typed=formula or ("" if value is None else self.typed(value, kind)),
+            formula=formula,
         )
 
     def _hint(self, kind: str) -> str:
@@ -114,7 +165,7 @@ class Quantities:
             return "Enter or click to type"
         if kind == "modulus":
             kind = "stress"
-        return f"Type e.g. {KINDS[_known(kind)].example}"
+        return f"Type e.g. {KINDS[_known(kind)].example}, or an expression"
 
 
 def _known(kind: str) -> KindName:

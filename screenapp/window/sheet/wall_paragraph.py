@@ -34,13 +34,14 @@ class WallParagraph(Paragraph):
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the wall."""
         part = self.document.part
-        q = Quantities(part.display_units)
+        q = Quantities.of(self.document)
         thickness = q.value(
             "thickness",
             part.wall.thickness,
             "length",
             "Wall thickness",
             lambda value: changes.set_wall(self.document, "thickness of the wall", thickness=value),
+            field="wall.thickness",
         )
         state, lead = STATES.get(part.wall.state, (part.wall.state, ""))
         across = Value(
@@ -76,10 +77,20 @@ class WallParagraph(Paragraph):
     def _figures(self, m: Material, q: Quantities) -> tuple[Piece | str, ...]:
         change = changes.MaterialChange(self.document, m.name)
         proof = q.optional_value(
-            "proof_stress", m.proof_stress, "stress", "Proof stress", change.setter("proof_stress")
+            "proof_stress",
+            m.proof_stress,
+            "stress",
+            "Proof stress",
+            change.setter("proof_stress"),
+            field=f"materials.{m.name}.proof_stress",
         )
         strength = q.optional_value(
-            "strength", m.strength, "stress", "Tensile strength", change.setter("strength")
+            "strength",
+            m.strength,
+            "stress",
+            "Tensile strength",
+            change.setter("strength"),
+            field=f"materials.{m.name}.strength",
         )
         source: tuple[Piece | str, ...] = (f" ({m.source})",) if m.source else ()
         if m.source.startswith("own"):
@@ -100,10 +111,22 @@ class WallParagraph(Paragraph):
             ),
             ", ν ",
             q.value(
-                "nu", m.poissons_ratio, "number", "Poisson's ratio", change.setter("poissons_ratio")
+                "nu",
+                m.poissons_ratio,
+                "number",
+                "Poisson's ratio",
+                change.setter("poissons_ratio"),
+                field=f"materials.{m.name}.poissons_ratio",
             ),
             ", density ",
-            q.value("density", m.density, "density", "Density", change.setter("density")),
+            q.value(
+                "density",
+                m.density,
+                "density",
+                "Density",
+                change.setter("density"),
+                field=f"materials.{m.name}.density",
+            ),
             ", proof stress ",
             proof,
             ", strength ",
@@ -129,7 +152,7 @@ class WallParagraph(Paragraph):
         return tuple(lines)
 
     def _remark(self, m: Material) -> str:
-        q = Quantities(self.document.part.display_units)
+        q = Quantities.of(self.document)
         return "" if m.proof_stress is None else q.show(m.proof_stress, "stress")
 
     def _choose(self, key: str) -> None:

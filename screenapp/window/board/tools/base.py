@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, ClassVar
 
@@ -112,10 +112,16 @@ class Tool:
         """What to do next, one short sentence for the corner of the board."""
         return self.line
 
-    def apply(self, name: str, make: Callable[[], Part | Outcome]) -> bool:
+    def apply(
+        self,
+        name: str,
+        make: Callable[[], Part | Outcome],
+        keep: Callable[[Part], Mapping[str, str | None]] | None = None,
+    ) -> bool:
         """Change the part as one undoable step and say what else went with it.
 
-        A change that is refused is said and not made; False then.
+        `keep` names the expressions, by their fields, that give numbers of the changed part.  A
+        change that is refused is said and not made; False then.
         """
         document = self.canvas.document
         try:
@@ -124,7 +130,8 @@ class Tool:
             document.said.emit(f"{fault.cause}: {fault.mend}.")
             return False
         part, lost = (made.part, made.lost) if isinstance(made, Outcome) else (made, ())
-        document.apply(name, part)
+        with document.keeping(keep(part) if keep is not None else {}):
+            document.apply(name, part)
         if lost:
             document.said.emit(f"Went with it: {', '.join(lost)}.")
         return True
@@ -144,6 +151,10 @@ class Tool:
 
     def entry_live(self) -> dict[str, float]:
         """Present value of every field, shown in those not typed."""
+        return {}
+
+    def entry_expressions(self) -> dict[str, str]:
+        """The expressions that give those values now, in stored units."""
         return {}
 
     def entry_accept(self, values: dict[str, float]) -> None:

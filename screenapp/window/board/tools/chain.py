@@ -10,7 +10,8 @@ from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
 from screenapp.model.curves import Curve, Segment, arc_through
-from screenapp.model.part import Point
+from screenapp.model.features import loops_of
+from screenapp.model.part import Loop, Part, Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.snapping import Snap
@@ -35,15 +36,27 @@ class Draft:
         points: places set.
         throughs: for each edge between them, the place its arc passes, None if straight.
         end: end of an arc whose place to pass is still to be given.
+        given: for each place set by typing, the expressions of x and y.
     """
 
     points: list[Point] = field(default_factory=list)
     throughs: list[Point | None] = field(default_factory=list)
     end: Point | None = None
+    given: dict[Point, dict[str, str | None]] = field(default_factory=dict)
 
     def clear(self) -> None:
         """Nothing is drawn."""
         self.points, self.throughs, self.end = [], [], None
+        self.given = {}
+
+    def expressions(self, loop: Loop, field_: str) -> dict[str, str | None]:
+        """By field, the expressions that give the corners of the loop drawn."""
+        return {
+            f"{field_}.corners.{corner.id}.at.{axis}": texts[name]
+            for corner in loop.corners
+            for axis, name in enumerate("xy")
+            if (texts := self.given.get(corner.at, {})).get(name)
+        }
 
     def step_back(self) -> bool:
         """Drop the last thing set; False if there was none."""
@@ -126,6 +139,7 @@ class LinesTool(DrawTool):
             if points:
                 self.draft.throughs.append(None)
             points.append(at)
+            self.draft.given[at] = self.canvas.entry.taken
 
     def enter(self) -> None:
         """Close the ring."""
@@ -134,14 +148,27 @@ class LinesTool(DrawTool):
         elif self.draft.points:
             self.say("A ring needs at least three corners, or two with an arc.")
 
+    def _expressions(self, made: Part) -> dict[str, str | None]:
+        """Those typed for the corners of the loop that was just drawn."""
+        where, _, loop = list(loops_of(made))[-1]
+        return self.draft.expressions(loop, where)
+
     def close(self, through: Point | None) -> None:
         """Make the chain the outline, or a hole in it."""
         part = self.canvas.document.part
         points, throughs = list(self.draft.points), [*self.draft.throughs, through]
         if part.outline is None:
-            done = self.apply("draw the outline", lambda: edits.set_outline(part, points, throughs))
+            done = self.apply(
+                "draw the outline",
+                lambda: edits.set_outline(part, points, throughs),
+                self._expressions,
+            )
         elif all(self.canvas.drawn.inside(p) for p in points):
-            done = self.apply("draw a hole", lambda: edits.add_loop_hole(part, points, throughs))
+            done = self.apply(
+                "draw a hole",
+                lambda: edits.add_loop_hole(part, points, throughs),
+                self._expressions,
+            )
         else:
             self.say(OUTSIDE)
             return

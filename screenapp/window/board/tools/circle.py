@@ -37,6 +37,8 @@ class CircleTool(DrawTool):
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
         self.centre: Point | None = None
+        self._given: dict[str, str | None] = {}
+        self._exact: float | None = None
 
     def stop(self, following: Tool | None) -> None:
         """Drop the centre."""
@@ -66,6 +68,14 @@ class CircleTool(DrawTool):
         place = self.canvas.place
         return None if self.centre is None or place is None else math.dist(self.centre, place.at)
 
+    def entry_accept(self, values: dict[str, float]) -> None:
+        """Take the size as it was typed."""
+        self._exact = values.get("diameter")
+        if "radius" in values:
+            self._exact = 2.0 * values["radius"]
+        super().entry_accept(values)
+        self._exact = None
+
     def typed_point(self, cursor: Point | None) -> Point | None:
         """Once the centre is set: a place on the rim."""
         if self.centre is None:
@@ -82,12 +92,23 @@ class CircleTool(DrawTool):
 
     def accept_point(self, at: Point) -> None:
         """Set the centre, then the size."""
+        taken = self.canvas.entry.taken
         if self.centre is None:
-            self.centre = at
+            self.centre, self._given = at, taken
             return
         part, centre = self.canvas.document.part, self.centre
-        diameter = 2.0 * (at[0] - centre[0])
-        if self.apply("draw a hole", lambda: edits.add_circle_hole(part, centre, diameter)):
+        diameter = self._exact if self._exact is not None else 2.0 * (at[0] - centre[0])
+        radius = taken.get("radius")
+        texts = {
+            "centre.0": self._given.get("x"),
+            "centre.1": self._given.get("y"),
+            "diameter": f"2*({radius})" if radius else taken.get("diameter"),
+        }
+        if self.apply(
+            "draw a hole",
+            lambda: edits.add_circle_hole(part, centre, diameter),
+            lambda made: {f"holes.{made.holes[-1].id}.{k}": text for k, text in texts.items()},
+        ):
             self.centre = None
 
     def press(self, place: Place) -> None:

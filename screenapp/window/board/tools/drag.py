@@ -5,7 +5,10 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from screenapp.model import edits
+from screenapp.model.edit_dimensions import formulas_lost
+from screenapp.model.expressions import names_in
 from screenapp.model.features import find, loops_of, place_name
+from screenapp.model.field_names import field_words
 from screenapp.model.part import Part, Point
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.snapping import neighbours
@@ -48,6 +51,24 @@ class Drag:
             if found.kind == "probe":
                 return edits.move_probe(self.part, self.ids[0], to)
         return edits.move(self.part, self.ids, to[0] - self.grip[0], to[1] - self.grip[1])
+
+    def held_by(self) -> str:
+        """Why it cannot be dragged: numbers of it are given by expressions; "" if none is."""
+        if not self.part.formulas:
+            return ""
+        try:
+            away = edits.move(self.part, self.ids, 1.0, 1.0)
+        except edits.EditError:
+            return ""
+        lost = formulas_lost(self.part, away)
+        if not lost:
+            return ""
+        first = lost[0]
+        names = " or ".join(sorted(names_in(first.text)))
+        return (
+            f"The {field_words(first.field)} is {first.text}: change {names or 'it there'}, "
+            "or type a number in its place."
+        )
 
     @property
     def name(self) -> str:

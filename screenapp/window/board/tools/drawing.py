@@ -71,6 +71,7 @@ class DrawTool(Tool):
     def key_press(self, event: QKeyEvent) -> bool:
         """Enter takes the place under the cursor."""
         if event.key() in (Qt.Key.Key_Return, Qt.Key.Key_Enter):
+            self.canvas.entry.forget()
             self.enter()
             return True
         return False

@@ -73,6 +73,7 @@ class FilletTool(Tool):
     def press(self, place: Place) -> None:
         """Take up a corner; what was typed for the one before is accepted."""
         if self.corner is not None:
+            self.canvas.entry.forget()
             self._accept()
         corner = corner_of(place)
         if corner is None:
@@ -131,7 +132,12 @@ class FilletTool(Tool):
         corner, radius = self.corner, self.radius
         assert corner is not None
         part = self.canvas.document.part
-        if self.apply("round a corner", lambda: edits.set_round(part, corner, radius)):
+        found, text = edits.find(part, corner), self.canvas.entry.taken.get("radius")
+        if self.apply(
+            "round a corner",
+            lambda: edits.set_round(part, corner, radius),
+            lambda _made: {} if found is None else {f"{found.field}.round": text},
+        ):
             self._last = radius or self._last
             self._drop()
 

@@ -42,7 +42,15 @@ class ProbeTool(DrawTool):
         if not on_material(self.canvas.drawn, at):
             self.say("There is no material at that place: click on the part.")
             return
-        if self.apply("put a probe", lambda: edits.add_probe(part, at)):
+        taken = self.canvas.entry.taken
+        if self.apply(
+            "put a probe",
+            lambda: edits.add_probe(part, at),
+            lambda made: {
+                f"readings.{made.readings[-1].id}.at.{i}": taken.get(name)
+                for i, name in enumerate("xy")
+            },
+        ):
             self.canvas.document.select(self.canvas.document.part.readings[-1].id)
 
 

@@ -9,7 +9,9 @@ from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
-from screenapp.model.part import Point
+from screenapp.model.expressions import plain_number
+from screenapp.model.features import loops_of
+from screenapp.model.part import Loop, Part, Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.quantity import written
@@ -35,6 +37,7 @@ class RectangleTool(DrawTool):
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
         self.first: Point | None = None
+        self._given: dict[str, str | None] = {}
 
     def stop(self, following: Tool | None) -> None:
         """Drop the first corner."""
@@ -75,6 +78,25 @@ class RectangleTool(DrawTool):
         )
         return x, y
 
+    def _expressions(
+        self, loop: Loop, where: str, sizes: dict[str, str | None], at: Point
+    ) -> dict[str, str | None]:
+        """By field, what gives the corners: the first one's place, and from there the sizes."""
+        assert self.first is not None
+        kept: dict[str, str | None] = {}
+        for corner in loop.corners:
+            for axis, (name, size) in enumerate((("x", "width"), ("y", "height"))):
+                start, text = self.first[axis], self._given.get(name)
+                if corner.at[axis] != start:
+                    begin = text or ("" if start == 0.0 else plain_number(start))
+                    wide, sign = sizes.get(size), "+" if at[axis] > start else "-"
+                    if wide and (begin or sign == "-"):
+                        text = f"{begin} {sign} ({wide})".strip()
+                    else:
+                        text = wide
+                kept[f"{where}.corners.{corner.id}.at.{axis}"] = text
+        return kept
+
     def entry_live(self) -> dict[str, float]:
         """Place or sizes."""
         at = self.point()
@@ -84,18 +106,25 @@ class RectangleTool(DrawTool):
 
     def accept_point(self, at: Point) -> None:
         """Set the first corner, then draw."""
+        taken = self.canvas.entry.taken
         if self.first is None:
-            self.first = at
+            self.first, self._given = at, taken
             return
         part, first = self.canvas.document.part, self.first
+
+        def keep(made: Part) -> dict[str, str | None]:
+            where, _, loop = list(loops_of(made))[-1]
+            return self._expressions(loop, where, taken, at)
+
         if part.outline is None:
             done = self.apply(
-                "draw the outline", lambda: edits.outline_from_rectangle(part, first, at)
+                "draw the outline", lambda: edits.outline_from_rectangle(part, first, at), keep
             )
         elif self.canvas.drawn.inside(first) and self.canvas.drawn.inside(at):
             done = self.apply(
                 "draw a hole",
                 lambda: edits.add_loop_hole(part, edits.rectangle_corners(first, at)),
+                keep,
             )
         else:
             self.say(OUTSIDE)

@@ -12,7 +12,7 @@ from screenapp.model.features import find, loops_of, place_name
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board import sketch
-from screenapp.window.board.exact import exact_fields, exact_values, with_exact
+from screenapp.window.board.exact import exact_fields, exact_paths, exact_values, with_exact
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import grid_step
 from screenapp.window.board.naming import described
@@ -61,8 +61,11 @@ class SelectTool(Tool):
         place = self.canvas.place
         if place is None or place.hit is None:
             return Qt.CursorShape.ArrowCursor
-        if grip_of(self.canvas.drawn, place.hit.id) is not None:
-            return Qt.CursorShape.OpenHandCursor
+        grip = grip_of(self.canvas.drawn, place.hit.id)
+        if grip is not None:
+            drag = Drag(self.canvas.document.part, (place.hit.id,), grip, grip)
+            held = bool(drag.held_by())
+            return Qt.CursorShape.ForbiddenCursor if held else Qt.CursorShape.OpenHandCursor
         return Qt.CursorShape.PointingHandCursor
 
     def stop(self, following: Tool | None) -> None:
@@ -121,7 +124,12 @@ class SelectTool(Tool):
             grip = grip_of(self.canvas.drawn, pressed.hit.id)
             if grip is not None and gap.manhattanLength() >= DRAG_FROM:
                 document = self.canvas.document
-                self._drag = Drag(document.part, document.selection, grip, pressed.raw)
+                drag = Drag(document.part, document.selection, grip, pressed.raw)
+                if why := drag.held_by():
+                    self._pressed = None
+                    self.say(why)
+                else:
+                    self._drag = drag
         if self._drag is not None:
             self._drag_to(place, self._drag)
 
@@ -201,6 +209,15 @@ class SelectTool(Tool):
         found = find(self.canvas.part, self.editing) if self.editing else None
         return exact_values(found) if found is not None else {}
 
+    def entry_expressions(self) -> dict[str, str]:
+        """Those that give its present values."""
+        part = self.canvas.document.part
+        found = find(part, self.editing) if self.editing else None
+        if found is None or not part.formulas:
+            return {}
+        given = {f.field: f.text for f in part.formulas}
+        return {n: given[path] for n, path in exact_paths(found).items() if path in given}
+
     def entry_typed(self, values: dict[str, float]) -> None:
         """Show what they would make."""
         if self.editing is None or not values:
@@ -217,8 +234,12 @@ class SelectTool(Tool):
         if id_ is None:
             return
         if values:
+            taken, found = self.canvas.entry.taken, find(part, id_)
+            paths = exact_paths(found) if found is not None else {}
             done = self.apply(
-                f"change {place_name(part, id_)}", lambda: with_exact(part, id_, values)
+                f"change {place_name(part, id_)}",
+                lambda: with_exact(part, id_, values),
+                lambda _made: {paths[n]: text for n, text in taken.items() if n in paths},
             )
             if not done:
                 return
@@ -278,6 +299,9 @@ class SelectTool(Tool):
     def _nudge(self, selection: tuple[str, ...], dx: float, dy: float) -> None:
         part = self.canvas.document.part
         step = grid_step(self.canvas.frame_now.scale, part.display_units)
+        if why := Drag(part, selection, (0.0, 0.0), (0.0, 0.0)).held_by():
+            self.say(why)
+            return
         self.apply("nudge", lambda: edits.move(part, selection, dx * step, dy * step))
 
     def _select_next(self, step: int) -> None:

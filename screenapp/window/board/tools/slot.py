@@ -112,8 +112,11 @@ class SlotTool(DrawTool):
         centre = (a[0] + b[0]) / 2.0, (a[1] + b[1]) / 2.0
         length = math.dist(a, b) + width
         angle = math.degrees(math.atan2(b[1] - a[1], b[0] - a[0]))
+        text = self.canvas.entry.taken.get("width")
         if self.apply(
-            "draw a slot", lambda: edits.add_slot_hole(part, centre, length, width, angle)
+            "draw a slot",
+            lambda: edits.add_slot_hole(part, centre, length, width, angle),
+            lambda made: {f"holes.{made.holes[-1].id}.width": text},
         ):
             self.ends = []
 
