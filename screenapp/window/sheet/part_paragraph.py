@@ -8,6 +8,7 @@ from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole
 from screenapp.model.shape import Shape, shape_of
 from screenapp.window.sheet import changes
+from screenapp.window.sheet.dimension_rows import add_link, dimension_rows
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value, Words
 from screenapp.window.sheet.quantities import Quantities
@@ -30,6 +31,8 @@ class PartParagraph(Paragraph):
         self.holes = self.rows(64)
         self.more = self.sentence()
         self.picked = self.rows(64)
+        self.dimensions = self.rows(64)
+        self.add = self.sentence()
         self._narrowest: tuple[Part, Ligament | None] | None = None
         self.document.selection_changed.connect(self.refresh)
 
@@ -43,6 +46,8 @@ class PartParagraph(Paragraph):
         self.more.set(f"And {rest} more holes: select one to see it." if rest > 0 else "")
         self.more.setVisible(rest > 0)
         self.picked.set(self._picked_rows(part, q))
+        self.dimensions.set(dimension_rows(self.document, q))
+        self.add.set(add_link(self.document))
         if part.outline is None:
             return ("Nothing is drawn yet: draw a closed outline on the board.",)
         return ()

@@ -69,9 +69,9 @@ class Quantities:
             if self.units == "mm-N-MPa" and _BARE.fullmatch(text):
                 text = f"{text} GPa"
             kind = "stress"
-        return self._read(text, kind).value
+        return self.read_expression(text, kind).value
 
-    def _read(self, text: str, kind: str) -> Typed:
+    def read_expression(self, text: str, kind: str) -> Typed:
         """What was typed, with the expression if it is one."""
         if kind in ("count", "modulus"):
             return Typed(self.read(text, kind))
@@ -90,7 +90,7 @@ class Quantities:
 
     def _put(self, text: str, kind: str, set_: Callable[[float], None], field: str) -> None:
         """Set what was typed, and keep the expression if it is one."""
-        typed = self._read(text, kind)
+        typed = self.read_expression(text, kind)
         if self.document is None or not field:
             set_(typed.value)
             return

@@ -34,6 +34,7 @@ class RowOf:
         remove: takes it out of the part; None if it cannot be removed here.
         remove_tip: tooltip of the cross, e.g. "Remove the support at hole h1".
         also: further ids that light this row, e.g. the hole that is held.
+        selects: whether `id` is that of a thing of the part, to be lit and selected.
     """
 
     id: str
@@ -42,6 +43,7 @@ class RowOf:
     remove: Callable[[], None] | None = None
     remove_tip: str = "Remove"
     also: tuple[str, ...] = ()
+    selects: bool = True
 
 
 class Cross(QAbstractButton):
@@ -131,7 +133,7 @@ class Row(QWidget):
 
     def enterEvent(self, event: QEnterEvent) -> None:
         """Light it on the board."""
-        if self.spec.id:
+        if self.spec.id and self.spec.selects:
             self._document.hover(self.spec.id)
         super().enterEvent(event)
 
@@ -143,7 +145,7 @@ class Row(QWidget):
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         """Select it."""
-        if event.button() == Qt.MouseButton.LeftButton and self.spec.id:
+        if event.button() == Qt.MouseButton.LeftButton and self.spec.id and self.spec.selects:
             self._document.select(self.spec.id)
         event.accept()
 
