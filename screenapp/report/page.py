@@ -10,12 +10,14 @@ from markupsafe import Markup
 from screenapp import __version__
 from screenapp.model.assets import resource
 from screenapp.model.estimate_text import EstimateKind, estimate_text
-from screenapp.model.findings import Estimate, Findings
+from screenapp.model.findings import Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
-from screenapp.model.part import GravityLoad, Load, Part
+from screenapp.model.history_figure import peak_figure
+from screenapp.model.part import DisplayUnits, GravityLoad, Load, Part
 from screenapp.model.shape import shape_of
 from screenapp.model.units import format_quantity
 from screenapp.report.drawing import part_svg
+from screenapp.report.history_svg import history_svg
 
 CAUTION = (
     "A screening, not an approval: it covers only what is written here, with supports and loads as "
@@ -40,6 +42,7 @@ def record_page(part: Part, findings: Findings, when: datetime) -> str:
         findings=findings,
         names={case.case: case.name for case in findings.cases},
         numbered=_numbered(findings),
+        history=lambda peak: _history(peak, findings, units),
         estimate=estimate,
         length=lambda v: format_quantity(v, "length", units),
         force=lambda v: format_quantity(v, "force", units),
@@ -66,6 +69,17 @@ def _numbered(findings: Findings) -> list[tuple[int, str, object]]:
     """Every peak with its number in the drawing and the name of its case."""
     rows = [(case.name, peak) for case in findings.cases for peak in case.peaks]
     return [(i + 1, name, peak) for i, (name, peak) in enumerate(rows)]
+
+
+def _history(peak: Peak, findings: Findings, units: DisplayUnits) -> tuple[Markup, str] | None:
+    """Drawing and note of a peak that is not settled, or that governs: largest in its case, or
+    where a limit is used most."""
+    largest = any(case.peaks and case.peaks[0] is peak for case in findings.cases)
+    judged = any(limit.at == peak.at for limit in findings.limits)
+    if peak.estimate.trust == "settled" and not largest and not judged:
+        return None
+    figure = peak_figure(peak, units)
+    return None if figure is None else (Markup(history_svg(figure)), figure.note)  # as drawing
 
 
 def load_words(load: Load) -> str:

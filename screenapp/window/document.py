@@ -22,6 +22,7 @@ from screenapp.model.history import History
 from screenapp.model.part import Part
 from screenapp.model.part_json import screening_key
 from screenapp.model.validity import faults_of
+from screenapp.window.traced import Traced
 
 Lens = Literal["Shape", "Mesh", "Utilisation", "Stress", "Displacement", "Trust"]
 StressComponent = Literal["von_mises", "sigma_1", "sigma_2", "sigma_x", "sigma_y", "tau_xy"]
@@ -51,6 +52,7 @@ class Document(QObject):
         findings_changed: other findings, or they became out of date or current.
         selection_changed, hovered_changed: ids of corners, edges, holes, supports, loads,
             readings, limits.
+        traced_changed: the history of another number, or of none, is to be shown.
         view_changed: another lens, component, case or deformation.
         path_changed: saved, saved as, opened; also when "unsaved" turns.
         said: a sentence for the status line.
@@ -60,6 +62,7 @@ class Document(QObject):
     findings_changed = Signal()
     selection_changed = Signal()
     hovered_changed = Signal()
+    traced_changed = Signal()
     view_changed = Signal()
     path_changed = Signal()
     said = Signal(str)
@@ -71,6 +74,7 @@ class Document(QObject):
         self.findings: Findings | None = None
         self.selection: tuple[str, ...] = ()
         self.hovered: str | None = None
+        self.traced: Traced | None = None
         self.view = View()
         self._saved = self.history.part
         self._key_of: tuple[Part, str] | None = None
@@ -149,6 +153,7 @@ class Document(QObject):
         self.findings = None
         self.selection = ()
         self.hovered = None
+        self.trace(None)
         self.view = View()
         self._told_part()
         self.findings_changed.emit()
@@ -167,10 +172,20 @@ class Document(QObject):
         self.findings_changed.emit()
 
     def select(self, *ids: str) -> None:
-        """Select these ids and nothing else."""
+        """Select these ids and nothing else; the history of a number is shown no more."""
         if ids != self.selection:
             self.selection = ids
+            self.trace(None)
             self.selection_changed.emit()
+
+    def trace(self, traced: Traced | None) -> None:
+        """Show the history of this number, under its case, or of none."""
+        if traced != self.traced:
+            self.traced = traced
+            cases = [case.id for case in self.part.cases]
+            if traced is not None and traced.case in cases:
+                self.look(case=cases.index(traced.case))
+            self.traced_changed.emit()
 
     def hover(self, id_: str | None) -> None:
         """Light one id on the board and in the sheet, or none."""

@@ -14,6 +14,7 @@ from PySide6.QtCore import (
     QPersistentModelIndex,
     QSize,
     Qt,
+    Signal,
 )
 from PySide6.QtGui import QFontMetrics, QMouseEvent, QResizeEvent
 from PySide6.QtWidgets import (
@@ -162,7 +163,12 @@ class FigureTable(QTableView):
     """Shows lines and keeps step with what the document hovers over and has selected.
 
     With `grows` it is as tall as its lines and has no scroll bars (in the sheet).
+
+    Signals:
+        line_picked: row of a line that the user went to by mouse or key, after it was selected.
     """
+
+    line_picked = Signal(int)
 
     def __init__(
         self, document: Document, name: str, parent: QWidget | None = None, grows: bool = False
@@ -264,6 +270,7 @@ class FigureTable(QTableView):
         index = self.indexAt(event.position().toPoint())
         if index.isValid():
             self.document.select(self.figures.lines[index.row()].id)
+            self.line_picked.emit(index.row())
 
     # --- keeping step -----------------------------------------------------------------------
 
@@ -295,6 +302,7 @@ class FigureTable(QTableView):
         if self._echo or not rows:
             return
         self.document.select(self.figures.lines[rows[0].row()].id)
+        self.line_picked.emit(rows[0].row())
 
     def _point(self, index: QModelIndex) -> None:
         self.document.hover(self.figures.lines[index.row()].id)

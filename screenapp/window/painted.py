@@ -9,7 +9,9 @@ from numpy.typing import NDArray
 
 from screenapp.model.estimate_text import EstimateKind
 from screenapp.model.findings import CaseFindings, Fields, Findings, Trust
+from screenapp.model.history_figure import HistoryFigure
 from screenapp.model.part import Part, Point
+from screenapp.window.traced import Traced
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -17,12 +19,15 @@ Ints = NDArray[np.int64]
 
 @dataclass(frozen=True)
 class Card:
-    """A number to be pointed at: where [mm, undeformed], and its words."""
+    """A number to be pointed at: where [mm, undeformed], its words, and its history if that is to
+    be shown; `number` is what it stands for."""
 
     at: Point
     head: str
     detail: str
     trust: Trust
+    history: HistoryFigure | None = None
+    number: Traced | None = None
 
 
 @dataclass(frozen=True, eq=False)
@@ -70,12 +75,14 @@ class Source:
         case: index of the case in them.
         part: the part as it now is.
         findings: None for a pass that is not judged yet.
+        traced: the number whose history is asked for.
     """
 
     fields: Fields
     case: int
     part: Part
     findings: Findings | None = None
+    traced: Traced | None = None
 
     @property
     def case_findings(self) -> CaseFindings | None:

@@ -10,7 +10,15 @@ import numpy as np
 
 from screenapp.model.estimate_text import estimate_text
 from screenapp.window import fields as scalars
-from screenapp.window.cards import apart, peak_card, peaks_of, probe_values, trailing, use_cards
+from screenapp.window.cards import (
+    apart,
+    peak_card,
+    peaks_of,
+    probe_values,
+    trailing,
+    use_cards,
+    with_history,
+)
 from screenapp.window.document import Lens, View
 from screenapp.window.painted import Card, Painting, Source, Zone
 
@@ -53,7 +61,7 @@ def _stress(view: View, source: Source) -> Painting:
     name = scalars.STRESS_NAMES[view.stress]
     values = scalars.stress_of(source.fields, source.case, view.stress, source.part)
     peaks = peaks_of(source, view.stress)
-    cards = tuple(peak_card(peak, source.part) for peak in peaks[:1])
+    cards = with_history(source, tuple(peak_card(peak, source) for peak in peaks[:1]))
     caption = ""
     if source.findings is not None and not peaks and view.stress not in ("von_mises", "sigma_1"):
         caption = "Largest values of this component are not judged: put a probe where you need one"
@@ -81,7 +89,7 @@ def _utilisation(_view: View, source: Source) -> Painting:
         "factor",
         mesh=0.3,
         zones=_zones(source),
-        cards=use_cards(source),
+        cards=with_history(source, use_cards(source)),
         probes=probe_values(source, "von_mises", "stress"),
     )
 
@@ -132,7 +140,9 @@ def _trust(_view: View, source: Source) -> Painting:
         None,
         mesh=0.15,
         zones=_zones(source),
-        cards=tuple(peak_card(p, source.part) for p in shown[:MOST_CARDS]),
+        cards=with_history(
+            source, tuple(peak_card(p, source) for p in shown[:MOST_CARDS]), first=True
+        ),
         probes=probe_values(source, "von_mises", "stress"),
         caption=caption,
     )

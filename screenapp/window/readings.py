@@ -18,6 +18,7 @@ from screenapp.window.icons import icon
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.field import sentence_of
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.traced import Traced
 
 DASH = "–"
 EMPTY = "No readings yet: click the part with the board's probe tool to read the stress there."
@@ -78,9 +79,15 @@ class _Table(FigureTable):
         super().__init__(document, "Readings", parent)
         self.figures.rename = self._rename
         self.figures.refused = self._refused
+        self.line_picked.connect(self._trace)
 
     def _rename(self, probe: str, name: str) -> None:
         self.document.apply("rename a reading", rename_probe(self.document.part, probe, name))
+
+    def _trace(self, row: int) -> None:
+        cases = self.document.part.cases
+        if cases:  # every probe has one line for each case
+            self.document.trace(Traced(cases[row % len(cases)].id, self.line_at(row).id))
 
     def _refused(self, error: ScreenappError) -> None:
         self.document.said.emit(sentence_of(error))

@@ -44,6 +44,8 @@ from screenapp.model.solution import Balance, Solution, StressField, von_mises
 Floats = NDArray[np.float64]
 
 HALF_LENGTH, HALF_WIDTH, RADIUS, REMOTE = 60.0, 40.0, 10.0, 50.0
+SIZES = (4.0, 2.0, 1.0)
+"""Size of the elements at every number, pass by pass [mm]."""
 
 
 def plate(unit_hole: bool = True) -> Part:
@@ -215,7 +217,19 @@ def _case(id_: str, name: str, arrays: Fields, i: int, peak: Estimate) -> CaseFi
     return CaseFindings(
         id_,
         name,
-        (Peak("von_mises", scaled, (0.0, RADIUS), "h1", "hole h1, 90°"),),
+        (
+            Peak(
+                "von_mises",
+                scaled,
+                (0.0, RADIUS),
+                "h1",
+                "hole h1, 90°",
+                history=tuple(share * scaled.value for share in (0.9, 0.98, 1.0)),
+                sizes=SIZES,
+                rate=0.25 if scaled.trust == "rising" else 0.01,
+                allowed=0.02 * scaled.value,
+            ),
+        ),
         Estimate(value, 0.995 * value, 1.005 * value, "settled"),
         (float(at[0]), float(at[1])),
         (16_000.0, 0.0, 0.0),
@@ -227,7 +241,18 @@ def _case(id_: str, name: str, arrays: Fields, i: int, peak: Estimate) -> CaseFi
 def _readings(part: Part, peak: Estimate) -> tuple[Reading, ...]:
     values = {"von_mises": Estimate(61.3, 60.9, 61.7, "settled")}
     return tuple(
-        Reading(probe.id, probe.name, case.id, probe.at, values, peak.trust)
+        Reading(
+            probe.id,
+            probe.name,
+            case.id,
+            probe.at,
+            values,
+            peak.trust,
+            history=(55.0, 61.0, 61.3),
+            sizes=SIZES,
+            rate=0.01,
+            allowed=1.2,
+        )
         for probe in part.readings
         for case in part.cases
     )

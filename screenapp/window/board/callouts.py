@@ -10,10 +10,13 @@ from PySide6.QtCore import QPointF, QRectF, QSizeF, Qt
 from PySide6.QtGui import QColor, QFont, QFontMetricsF, QPainter, QPainterPath, QPen
 
 from screenapp.model.findings import Trust
+from screenapp.model.history_figure import HistoryFigure
 from screenapp.model.part import Point
 from screenapp.window import theme
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.screen_item import Z_PROBES, ScreenItem
+from screenapp.window.history_painting import TALL, WIDE, paint_history
+from screenapp.window.traced import Traced
 
 RING = 4.5
 _PAD_X, _PAD_Y, _LINE = 10.0, 7.0, 16.0
@@ -30,12 +33,16 @@ class Callout:
         head: the number, in bold.
         detail: place, use, trust.
         trust: decides the colour of ring and frame, and its dashes.
+        history: the figure below the words, None for none.
+        number: what a click on the card chooses, None for nothing.
     """
 
     at: Point
     head: str
     detail: str
     trust: Trust
+    history: HistoryFigure | None = None
+    number: Traced | None = None
 
 
 @dataclass(frozen=True)
@@ -56,6 +63,7 @@ class CalloutItem(ScreenItem):
         self._outline = QPainterPath()
         self._kept: list[QPointF] = []  # offsets of the cards from their places [px]
         self._kept_for: tuple[float, QRectF] | None = None
+        self._cards: list[QRectF] = []  # as last painted [px]
         self.right_margin = 0.0  # px at the right edge that the colour bar takes
 
     def show_callouts(
@@ -92,9 +100,23 @@ class CalloutItem(ScreenItem):
             at = frame.px(callout.at)
             card = QRectF(at + offset, _size(callout))
             _paint_leader(painter, at, card, callout)
-        for callout, offset in zip(self._callouts, offsets, strict=True):
-            card = QRectF(frame.px(callout.at) + offset, _size(callout))
+        self._cards = self.cards(frame)
+        for callout, card in zip(self._callouts, self._cards, strict=True):
             _paint_card(painter, card, callout)
+
+    def cards(self, frame: Frame) -> list[QRectF]:
+        """Where the cards stand [px]."""
+        area = QRectF(self.getViewBox().sceneBoundingRect())
+        area.adjust(8.0, 8.0, -8.0 - self.right_margin, -8.0)
+        return [
+            QRectF(frame.px(callout.at) + offset, _size(callout))
+            for callout, offset in zip(self._callouts, self._offsets(frame, area), strict=True)
+        ]
+
+    def at(self, px: QPointF) -> Callout | None:
+        """The callout whose card is at a pixel, as last painted."""
+        shown = zip(self._callouts, self._cards, strict=False)
+        return next((callout for callout, card in shown if card.contains(px)), None)
 
     def _offsets(self, frame: Frame, area: QRectF) -> list[QPointF]:
         """Places of the cards; kept while the view only pans and they stay in it."""
@@ -171,8 +193,12 @@ def _size(callout: Callout) -> QSizeF:
         QFontMetricsF(head).horizontalAdvance(callout.head),
         QFontMetricsF(detail).horizontalAdvance(callout.detail),
     )
-    lines = 2 if callout.detail else 1
-    return QSizeF(width + 2 * _PAD_X, lines * _LINE + 2 * _PAD_Y)
+    tall = (2 if callout.detail else 1) * _LINE
+    if callout.history is not None:
+        note = QFontMetricsF(detail).horizontalAdvance(callout.history.note)
+        width = max(width, note, WIDE)
+        tall += TALL + _LINE
+    return QSizeF(width + 2 * _PAD_X, tall + 2 * _PAD_Y)
 
 
 def _paint_leader(painter: QPainter, at: QPointF, card: QRectF, callout: Callout) -> None:
@@ -208,6 +234,11 @@ def _paint_card(painter: QPainter, card: QRectF, callout: Callout) -> None:
     painter.setFont(detail)
     painter.setPen(theme.colour("quiet"))
     painter.drawText(line.translated(0.0, _LINE), flags, callout.detail)
+    if callout.history is not None:
+        line = line.translated(0.0, _LINE * (2 if callout.detail else 1))
+        box = QRectF(line.left(), line.top(), card.width() - 2 * _PAD_X, TALL)
+        paint_history(painter, box, callout.history)
+        painter.drawText(line.translated(0.0, TALL), flags, callout.history.note)
 
 
 def _paint_value(painter: QPainter, at: QPointF, text: str) -> None:

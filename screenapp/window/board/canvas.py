@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import replace
 
 from PySide6.QtCore import QEvent, QPointF, Qt, Signal
@@ -35,6 +36,7 @@ class Canvas(ZoomView):
         document: what is shown.
         tool: the tool in hand.
         place: where the cursor is, None while it is elsewhere.
+        pressed_first: asked about a press [px] before the tool; answers whether it was taken.
 
     Signals:
         pointed: `place` or the tool's state changed.
@@ -49,6 +51,7 @@ class Canvas(ZoomView):
         self.document = document
         self.tool: Tool | None = None
         self.place: Place | None = None
+        self.pressed_first: Callable[[QPointF], bool] = lambda px: False
         self._preview: Part | None = None
         self._space = False
         self._last_px: QPointF | None = None
@@ -213,6 +216,8 @@ class Canvas(ZoomView):
         pans = button in (Qt.MouseButton.MiddleButton, Qt.MouseButton.RightButton)
         if pans or (button == Qt.MouseButton.LeftButton and self._space):
             self.begin_pan(event.position())
+        elif button == Qt.MouseButton.LeftButton and self.pressed_first(event.position()):
+            self.refresh()
         elif button == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.press(self._set_place(event.position(), event.modifiers()))
             self.refresh()

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Protocol
 
-from PySide6.QtCore import QObject
+from PySide6.QtCore import QObject, QPointF
 from PySide6.QtGui import QPainterPath
 
 from screenapp.model.findings import Fields, Findings
@@ -72,6 +72,7 @@ class LensPainter(QObject):
             board.canvas.view_box.addItem(item, ignoreBounds=True)
         self.bar = ColourBar(board.canvas)
         self.heading = LensHeading(document, board.canvas)
+        board.canvas.pressed_first = self._press
         self.bar.range_wanted.connect(self._take_range)
         self.bar.said.connect(document.said)
         for picture in (self.field, self.mesh):
@@ -81,6 +82,7 @@ class LensPainter(QObject):
         for signal in (
             document.findings_changed,
             document.view_changed,
+            document.traced_changed,
             document.part_changed,
             theme.notifier.changed,
         ):
@@ -104,6 +106,16 @@ class LensPainter(QObject):
         """Make sharp pictures at once (to save an image of the board)."""
         for item in (self.field, self.mesh):
             item.refresh_now()
+
+    def _press(self, px: QPointF) -> bool:
+        """Choose the number whose card is pressed."""
+        callout = self.callouts.at(px)
+        if callout is None or callout.number is None:
+            return False
+        number = callout.number
+        self._document.select(*filter(None, (number.probe or number.feature,)))
+        self._document.trace(number)
+        return True
 
     # --- painting -------------------------------------------------------------------------
 
@@ -169,7 +181,7 @@ class LensPainter(QObject):
         ids = [case.case for case in findings.cases]
         if wanted not in ids:
             return None, WAITING[view.lens] and "This case has not been screened yet"
-        return Source(findings.last, ids.index(wanted), part, findings), ""
+        return Source(findings.last, ids.index(wanted), part, findings, document.traced), ""
 
     def _clear(self) -> None:
         self._shown = None
@@ -218,6 +230,8 @@ class LensPainter(QObject):
                 card.head,
                 card.detail,
                 card.trust,
+                card.history,
+                card.number,
             )
             for card in painting.cards
         )

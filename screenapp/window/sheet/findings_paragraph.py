@@ -10,11 +10,13 @@ from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
 from screenapp.window.figure_table import Column, FigureTable, Line
+from screenapp.window.history_plot import HistoryPlot
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
+from screenapp.window.traced import Traced, figure_of, traced_number
 
 MOST_PEAKS = 8
 ROUNDING = 1e-7
@@ -34,20 +36,26 @@ class FindingsParagraph(Paragraph):
         """Peaks, what moves most, and what the supports give."""
         self.table = FigureTable(self.document, "Largest stresses", self, grows=True)
         self.body.addWidget(self.table)
+        self.history = HistoryPlot(self)
+        self.body.addWidget(self.history)
+        self._peaks: list[tuple[CaseFindings, Peak]] = []
+        self.table.line_picked.connect(self._trace)
         self.why = self.rows(0)
         self.cases = self.rows(0)
         self.reactions = self.rows(92)
         self.document.view_changed.connect(self.refresh)
+        self.document.traced_changed.connect(self._show_history)
 
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the findings."""
         document = self.document
         findings = document.findings
         part = document.part
-        peaks = _shown_peaks(part, findings) if findings else []
+        self._peaks = peaks = _shown_peaks(part, findings) if findings else []
         self.table.show_lines(
             _columns(part), tuple(_line(part, c, p) for c, p in peaks), self.outdated()
         )
+        self._show_history()
         self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks))])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
@@ -61,6 +69,18 @@ class FindingsParagraph(Paragraph):
     def outdated(self) -> bool:
         """They belong to an older part."""
         return self.document.findings is not None and not self.document.current
+
+    def _trace(self, row: int) -> None:
+        case, peak = self._peaks[row]
+        self.document.trace(Traced.peak(case.case, peak))
+
+    def _show_history(self) -> None:
+        document = self.document
+        traced = document.traced
+        number = traced_number(document.findings, traced)
+        names = {case.id: case.name for case in document.part.cases}
+        case = names.get(traced.case, "") if traced is not None and len(names) > 1 else ""
+        self.history.show_figure(figure_of(number, document.part.display_units), case)
 
     def _case_row(self, case: CaseFindings) -> RowOf:
         units = self.document.part.display_units
