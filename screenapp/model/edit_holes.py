@@ -114,7 +114,14 @@ def move(part: Part, ids: Iterable[str], dx: float, dy: float) -> Part:
         replace(p, at=shifted(p.at, f"probe {p.id}")) if p.id in wanted else p
         for p in part.readings
     )
-    return without_stale_formulas(part, replace(after, holes=holes, zones=zones, readings=readings))
+    cuts = tuple(
+        replace(c, start=shifted(c.start, f"cut {c.id}"), end=shifted(c.end, f"cut {c.id}"))
+        if c.id in wanted
+        else c
+        for c in part.cuts
+    )
+    moved = replace(after, holes=holes, zones=zones, readings=readings, cuts=cuts)
+    return without_stale_formulas(part, moved)
 
 
 def _going_corners(loop: Loop, wanted: set[str], whole: bool) -> list[Corner]:

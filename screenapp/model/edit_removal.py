@@ -63,6 +63,8 @@ def _remove_one(part: Part, id_: str) -> Outcome:
         return Outcome(replace(part, limits=tuple(g for g in part.limits if g.id != id_)))
     if kind == "probe":
         return Outcome(replace(part, readings=tuple(p for p in part.readings if p.id != id_)))
+    if kind == "cut":
+        return Outcome(replace(part, cuts=tuple(c for c in part.cuts if c.id != id_)))
     if kind == "load":
         cases = tuple(
             replace(c, loads=tuple(x for x in c.loads if x.id != id_)) for c in part.cases

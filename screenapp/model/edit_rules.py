@@ -15,7 +15,7 @@ from screenapp.model.size_faults import id_faults, size_faults
 from screenapp.model.value_faults import (
     limit_faults,
     mesh_faults,
-    probe_faults,
+    reading_faults,
     wall_faults,
 )
 
@@ -108,7 +108,7 @@ def settle(before: Part, after: Part, *more: Check) -> Part:
         material_faults,
         limit_faults,
         lambda part: mesh_faults(part.mesh),
-        probe_faults,
+        reading_faults,
         *more,
     )
     known = {fault.cause for check in checks for fault in check(before)}

@@ -1,16 +1,13 @@
-"""Edits of what is said of the whole part: title, wall, limits, mesh wishes and probes."""
+"""Edits of what is said of the whole part: title, wall, limits and mesh wishes."""
 
 from __future__ import annotations
 
 from dataclasses import replace
 
 from screenapp.model.edit_rules import (
-    EditError,
-    must_be_point,
     must_find,
     new_id,
     settle,
-    without_stale_formulas,
 )
 from screenapp.model.part import (
     DisplayUnits,
@@ -19,8 +16,6 @@ from screenapp.model.part import (
     Material,
     MeshWishes,
     Part,
-    Point,
-    Probe,
     WallState,
 )
 
@@ -95,27 +90,3 @@ def set_mesh_size(part: Part, size: float | None) -> Part:
     """Set the largest element side [mm], or None to leave it to the program."""
     wanted = None if size is None else float(size)
     return settle(part, replace(part, mesh=replace(part.mesh, size=wanted)))
-
-
-def add_probe(part: Part, at: Point, name: str = "") -> Part:
-    """Put a probe at a point; its id is `new_id(part, "p")`, an empty name "P" and a number."""
-    id_ = new_id(part, "p")
-    probe = Probe(id_, name.strip() or id_.upper(), must_be_point(at, "the probe"))
-    return settle(part, replace(part, readings=(*part.readings, probe)))
-
-
-def move_probe(part: Part, probe: str, to: Point) -> Part:
-    """Move a probe."""
-    must_find(part, probe, "probe")
-    at = must_be_point(to, f"probe {probe}")
-    readings = tuple(replace(p, at=at) if p.id == probe else p for p in part.readings)
-    return without_stale_formulas(part, replace(part, readings=readings))
-
-
-def rename_probe(part: Part, probe: str, name: str) -> Part:
-    """Give a probe another name."""
-    must_find(part, probe, "probe")
-    if not name.strip():
-        raise EditError("a probe needs a name", "give it one, e.g. “fillet”")
-    readings = tuple(replace(p, name=name.strip()) if p.id == probe else p for p in part.readings)
-    return replace(part, readings=readings)

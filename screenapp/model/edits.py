@@ -40,13 +40,18 @@ from screenapp.model.edit_loops import (
 )
 from screenapp.model.edit_patterns import break_pattern, change_pattern, set_pattern
 from screenapp.model.edit_places import remove_hole, remove_outline
+from screenapp.model.edit_readings import (
+    add_cut,
+    add_probe,
+    move_cut,
+    move_probe,
+    rename_cut,
+    rename_probe,
+)
 from screenapp.model.edit_removal import remove
 from screenapp.model.edit_rules import EditError, Outcome, new_id, new_ids
 from screenapp.model.edit_settings import (
     add_limit,
-    add_probe,
-    move_probe,
-    rename_probe,
     replace_limit,
     set_material,
     set_mesh,
@@ -73,6 +78,7 @@ __all__ = [
     "Outcome",
     "add_case",
     "add_circle_hole",
+    "add_cut",
     "add_limit",
     "add_load",
     "add_loop_hole",
@@ -88,6 +94,7 @@ __all__ = [
     "insert_corner",
     "move",
     "move_corner",
+    "move_cut",
     "move_hole",
     "move_probe",
     "new_id",
@@ -101,6 +108,7 @@ __all__ = [
     "remove_outline",
     "remove_zone",
     "rename_case",
+    "rename_cut",
     "rename_probe",
     "replace_limit",
     "replace_load",

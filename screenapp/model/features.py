@@ -17,6 +17,7 @@ from screenapp.model.part import (
     Case,
     CircleHole,
     Corner,
+    Cut,
     Edge,
     Hole,
     Limit,
@@ -31,8 +32,8 @@ from screenapp.model.part import (
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 
-Kind = Literal["corner", "edge", "hole", "zone", "support", "case", "load", "limit", "probe"]
-Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe
+Kind = Literal["corner", "edge", "hole", "zone", "support", "case", "load", "limit", "probe", "cut"]
+Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe | Cut
 
 PREFIXES: dict[Kind, str] = {
     "corner": "c",
@@ -44,6 +45,7 @@ PREFIXES: dict[Kind, str] = {
     "load": "l",
     "limit": "g",
     "probe": "p",
+    "cut": "k",
 }
 """The letter that ids made by this program begin with."""
 
@@ -109,6 +111,8 @@ def everything(part: Part) -> Iterator[Found]:
         yield Found("limit", limit, "", "limits")
     for probe in part.readings:
         yield Found("probe", probe, "", "readings")
+    for cut in part.cuts:
+        yield Found("cut", cut, "", "readings")
 
 
 def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:

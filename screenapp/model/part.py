@@ -371,6 +371,20 @@ class Probe:
 
 
 @dataclass(frozen=True)
+class Cut:
+    """A reading along a straight line from `start` to `end` [mm] across the part.
+
+    Its normal points to the right of the way from start to end; the part to the left is the free
+    body whose section forces are read.
+    """
+
+    id: str
+    name: str
+    start: Point
+    end: Point
+
+
+@dataclass(frozen=True)
 class Dimension:
     """A named value that expressions may use, with the bounds it may vary within.
 
@@ -411,6 +425,7 @@ class Part:
     limits: tuple[Limit, ...] = ()
     mesh: MeshWishes = MeshWishes()
     readings: tuple[Probe, ...] = ()
+    cuts: tuple[Cut, ...] = ()
 
     @property
     def material(self) -> Material | None:

@@ -97,6 +97,7 @@ def screening_key(part: Part) -> str:
         notes=blank.notes,
         display_units=blank.display_units,
         readings=(),
+        cuts=(),
         formulas=(),
         dimensions=(),
     )

@@ -17,6 +17,7 @@ from screenapp.model.part import (
     Case,
     CircleHole,
     Corner,
+    Cut,
     Dimension,
     DisplacementLimit,
     Edge,
@@ -67,7 +68,7 @@ LOADS: dict[str, type] = {
     "gravity": GravityLoad,
 }
 LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLimit}
-READINGS: dict[str, type] = {"probe": Probe}
+READINGS: dict[str, type] = {"probe": Probe, "cut": Cut}
 PATTERNS: dict[str, type] = {"row": RowPattern, "grid": GridPattern, "bolt circle": BoltCircle}
 
 KIND_OF: dict[type, str] = {
@@ -136,7 +137,7 @@ def tree_of_part(part: Part) -> Tree:
         ],
         "limits": [_tree(limit) for limit in part.limits],
         "mesh": _tree(part.mesh),
-        "readings": [_tree(r) for r in part.readings],
+        "readings": [_tree(r) for r in (*part.readings, *part.cuts)],
     }
 
 
@@ -216,8 +217,15 @@ def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
         ),
         limits=tuple(_record(LIMITS[x["kind"]], x) for x in tree.get("limits", ())),
         mesh=_record(MeshWishes, tree.get("mesh", {})),
-        readings=tuple(_record(READINGS[r["kind"]], r) for r in tree.get("readings", ())),
+        readings=_of_kind(Probe, tree),
+        cuts=_of_kind(Cut, tree),
     )
+
+
+def _of_kind(cls: type[Record], tree: Tree) -> tuple[Record, ...]:
+    """The readings of one kind, in the order of the file."""
+    kind = KIND_OF[cls]
+    return tuple(_record(cls, r) for r in tree.get("readings", ()) if r["kind"] == kind)
 
 
 def material_of_tree(tree: Tree) -> Material:

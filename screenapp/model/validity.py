@@ -23,7 +23,7 @@ from screenapp.model.value_faults import (
     limit_faults,
     limit_material_faults,
     mesh_faults,
-    probe_faults,
+    reading_faults,
     wall_faults,
 )
 from screenapp.model.zone_faults import zone_value_faults
@@ -70,7 +70,7 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *limit_faults(part),
         *limit_material_faults(part),
         *mesh_faults(part.mesh),
-        *probe_faults(part),
+        *reading_faults(part),
     ]
     if shape is not None and table is not None:
         faults += element_count_faults(part.mesh, shape)

@@ -179,8 +179,9 @@ def element_count_faults(mesh: MeshWishes, shape: Shape) -> Iterator[Fault]:
         )
 
 
-def probe_faults(part: Part) -> Iterator[Fault]:
-    """Probes that stand nowhere."""
+def reading_faults(part: Part) -> Iterator[Fault]:
+    """Probes and cuts that stand nowhere."""
+    yield from _cut_faults(part)
     for probe in part.readings:
         if not all(math.isfinite(x) for x in probe.at):
             yield Fault(
@@ -195,4 +196,31 @@ def probe_faults(part: Part) -> Iterator[Fault]:
                 "move it onto the part or remove it",
                 f"readings.{probe.id}.at",
                 (probe.id,),
+            )
+
+
+def _cut_faults(part: Part) -> Iterator[Fault]:
+    for cut in part.cuts:
+        where = f"readings.{cut.id}"
+        numbers = (*cut.start, *cut.end)
+        if not all(math.isfinite(x) for x in numbers):
+            yield Fault(
+                f"the ends of cut {cut.id} are not pairs of finite numbers",
+                "give finite coordinates in mm",
+                where,
+                (cut.id,),
+            )
+        elif max(abs(x) for x in numbers) > FARTHEST:
+            yield Fault(
+                f"cut {cut.id} reaches beyond {FARTHEST:g} mm",
+                "draw it across the part or remove it",
+                where,
+                (cut.id,),
+            )
+        elif math.dist(cut.start, cut.end) < SMALLEST:
+            yield Fault(
+                f"cut {cut.id} begins and ends at one point",
+                "draw it across the part or remove it",
+                where,
+                (cut.id,),
             )
