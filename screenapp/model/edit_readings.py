@@ -46,7 +46,7 @@ def add_cut(part: Part, start: Point, end: Point, name: str = "") -> Part:
     Raises:
         EditError: the two points coincide or are no points.
     """
-    id_ = new_id(part, "k")
+    id_ = new_id(part, "x")
     name = name.strip() or f"Cut {id_[1:]}"
     return settle(part, replace(part, cuts=(*part.cuts, _cut(id_, name, start, end))))
 

@@ -45,7 +45,7 @@ PREFIXES: dict[Kind, str] = {
     "load": "l",
     "limit": "g",
     "probe": "p",
-    "cut": "k",
+    "cut": "x",
 }
 """The letter that ids made by this program begin with."""
 

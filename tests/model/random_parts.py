@@ -148,7 +148,7 @@ parts = st.builds(
     limits=_listed(_limits),
     mesh=st.builds(MeshWishes, elements, numbers, maybe, st.integers(0, 9)),
     readings=_listed(lambda i: st.builds(Probe, st.just(f"p{i}"), texts, points)),
-    cuts=_listed(lambda i: st.builds(Cut, st.just(f"k{i}"), texts, points, points)),
+    cuts=_listed(lambda i: st.builds(Cut, st.just(f"x{i}"), texts, points, points)),
 )
 """Parts without formulas."""
 
