@@ -213,6 +213,5 @@ class Board(QWidget):
         digits, word = (3, "in") if units == "in-lbf-ksi" else (2, "mm")
         text = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
         if tool is not None and tool.snapping:
-            name = "off" if place.snap.kind == "none" else place.snap.kind
-            text += f"  ·  snap: {name}"
+            text += f"  ·  snap: {place.snap.words}"
         self._corner.say(text)

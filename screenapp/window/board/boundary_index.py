@@ -94,6 +94,17 @@ class BoundaryIndex:
         x, y = piece.curve.point(t)
         return Foot(piece, t, (float(x), float(y)), float(far[best]))
 
+    def within(
+        self, at: Point, reach: float, without: frozenset[str] = frozenset()
+    ) -> list[BoundaryCurve]:
+        """The pieces no farther than `reach` [mm] from a place, nearest first."""
+        if not self._pieces:
+            return []
+        far = self._distances(np.asarray(at))
+        near = np.flatnonzero(far <= reach)
+        found = [self._pieces[i] for i in near[np.argsort(far[near])]]
+        return [p for p in found if p.feature not in without]
+
     def _distances(self, p: Floats) -> Floats:
         """Distance to every piece (n,)."""
         t = np.clip(((p - self._start) * self._run).sum(axis=1) / self._square, 0.0, 1.0)

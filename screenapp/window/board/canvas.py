@@ -168,6 +168,7 @@ class Canvas(ZoomView):
             tool.snap_points(),
             tool.unsnapped(),
             tool.passes_over,
+            tool.point_from(),
         )
 
     @property

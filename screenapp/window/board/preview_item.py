@@ -8,7 +8,7 @@ from PySide6.QtGui import QPainter
 
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.screen_item import Z_PREVIEW, ScreenItem
-from screenapp.window.board.snapping import draw_snap
+from screenapp.window.board.snap_signs import draw_snap
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas

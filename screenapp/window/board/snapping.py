@@ -1,46 +1,26 @@
-"""Where a click lands: on a point, on an edge, on the grid, or just where it is."""
+"""Where a click lands: on a point, on an edge, in line with a point, on the grid, or just there."""
 
 from __future__ import annotations
 
 import math
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass
 from functools import lru_cache
-from typing import Literal
 
 import numpy as np
-from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
-from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.curves import Arc
 from screenapp.model.part import DisplayUnits, Hole, Loop, LoopHole, Point, SlotHole
-from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
 from screenapp.window.board.grid import grid_step
 from screenapp.window.board.ring import Ring
+from screenapp.window.board.snap_lines import from_origin, level, level_on_edge, meetings
+from screenapp.window.board.snap_record import Snap, SnapKind
 
-SnapKind = Literal["none", "grid", "corner", "centre", "middle", "edge", "start"]
+__all__ = ["Snap", "SnapKind", "neighbours", "snap", "snap_points", "snap_to_grid"]
 
-POINT_REACH_PX, EDGE_REACH_PX = 10.0, 7.0
-"""How far a point and an edge draw the cursor [px]."""
-
-
-@dataclass(frozen=True)
-class Snap:
-    """Where a click would land.
-
-    Attributes:
-        kind: what drew it there.
-        at: the place [mm].
-        id: id of the corner, edge or hole; "" for grid and nothing.
-        along: direction of the edge there [rad], for the sign.
-    """
-
-    kind: SnapKind
-    at: Point
-    id: str = ""
-    along: float = 0.0
+POINT_REACH_PX, EDGE_REACH_PX, LINE_REACH_PX = 10.0, 7.0, 5.0
+"""How far a point, an edge and a level line through a point draw the cursor [px]."""
 
 
 def snap(
@@ -51,8 +31,9 @@ def snap(
     extra: Iterable[Snap] = (),
     without: frozenset[str] = frozenset(),
     passes_over: frozenset[SnapKind] = frozenset(),
+    origin: Point | None = None,
 ) -> Snap:
-    """Where a click at `at` lands: points first, then edges, then the grid.
+    """Where a click at `at` lands: points, then edges, then lines through points, then the grid.
 
     Args:
         drawn: the part.
@@ -61,20 +42,42 @@ def snap(
         units: the grid is round in these.
         extra: further points to offer, e.g. those of a chain being drawn.
         without: ids that must not draw the cursor, e.g. of what is being dragged.
-        passes_over: kinds of point that must not.
+        passes_over: kinds of snap that must not.
+        origin: the place that a line is being drawn from, for tangents and perpendiculars.
     """
     reach = POINT_REACH_PX / frame.scale
+    extra = tuple(extra)
     points, places = snap_points(drawn)
     near = np.flatnonzero(np.hypot(*(places - at).T) <= reach) if len(points) else ()
     offered = [*extra, *(points[i] for i in near if points[i].id not in without)]
+    offered += meetings(drawn.index, at, reach, without)
+    if origin is not None:
+        offered += from_origin(drawn.index, at, reach, origin, without)
     offered = [
         one for one in offered if one.kind not in passes_over and math.dist(one.at, at) <= reach
     ]
     if offered:
         return min(offered, key=lambda one: math.dist(one.at, at))
-    return snap_to_edge(drawn, at, EDGE_REACH_PX / frame.scale, without) or snap_to_grid(
-        frame, at, units
-    )
+    anchors = _anchors(drawn, extra, without)
+    line_reach = LINE_REACH_PX / frame.scale
+    edge = snap_to_edge(drawn, at, EDGE_REACH_PX / frame.scale, without)
+    grid = snap_to_grid(frame, at, units)
+    if edge is not None:
+        return level_on_edge(drawn.index, at, line_reach, anchors, without) or edge
+    found = level(at, line_reach, anchors, grid)
+    return grid if found is None or found.kind in passes_over else found
+
+
+def _anchors(
+    drawn: DrawnPart, extra: tuple[Snap, ...], without: frozenset[str]
+) -> tuple[list[Snap], Floats]:
+    """Corners and centres that a place may be level with, and the same as places (n, 2) [mm]."""
+    points, places = anchor_points(drawn)
+    if without:
+        keep = [i for i, p in enumerate(points) if p.id not in without]
+        points, places = tuple(points[i] for i in keep), places[keep]
+    more = np.array([p.at for p in extra], dtype=float).reshape(-1, 2)
+    return [*points, *extra], np.concatenate([places, more])
 
 
 def snap_to_edge(
@@ -94,6 +97,14 @@ def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
     digits = max(0, 2 - math.floor(math.log10(step)))
     x, y = (round(round(v / step) * step, digits) + 0.0 for v in at)
     return Snap("grid", (x, y))
+
+
+@lru_cache(maxsize=4)
+def anchor_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
+    """The corners and centres among the points of a part, and the same as places (n, 2) [mm]."""
+    points, places = snap_points(drawn)
+    keep = [i for i, point in enumerate(points) if point.kind != "middle"]
+    return tuple(points[i] for i in keep), places[keep]
 
 
 @lru_cache(maxsize=4)
@@ -139,46 +150,3 @@ def neighbours(loop: Loop, corner: str) -> frozenset[str]:
         return frozenset()
     i = ids.index(corner)
     return frozenset({corner, loop.edges[i - 1].id, loop.edges[i].id})
-
-
-def draw_snap(painter: QPainter, frame: Frame, found: Snap) -> None:
-    """The sign of a snap: each kind has its own form."""
-    if found.kind == "none":
-        return
-    p = frame.px(found.at)
-    colour = QColor(theme.current().accent)
-    pen = QPen(colour, 2.0)
-    pen.setCapStyle(Qt.PenCapStyle.FlatCap)
-    painter.setPen(pen)
-    painter.setBrush(Qt.BrushStyle.NoBrush)
-    if found.kind == "grid":
-        pen.setWidthF(1.0)
-        painter.setPen(pen)
-        painter.drawLines([_line(p, -5, 0, 5, 0), _line(p, 0, -5, 0, 5)])
-    elif found.kind == "corner":  # four brackets round the point
-        for sx in (-1, 1):
-            for sy in (-1, 1):
-                x, y = 7 * sx, 7 * sy
-                painter.drawLines([_line(p, x, y, x - 4 * sx, y), _line(p, x, y, x, y - 4 * sy)])
-    elif found.kind == "centre":
-        painter.drawEllipse(p, 7.0, 7.0)
-        painter.fillRect(QRectF(p.x() - 1.5, p.y() - 1.5, 3, 3), colour)
-    elif found.kind == "middle":  # two bars across, with a gap for the edge
-        c, s = math.cos(found.along), -math.sin(found.along)
-        for sign in (-1, 1):
-            foot = QPointF(p.x() + 3 * sign * c, p.y() + 3 * sign * s)
-            painter.drawLine(_line(foot, -7 * s, 7 * c, 7 * s, -7 * c))
-    elif found.kind == "edge":  # a thick dash on the edge, with a dot
-        c, s = math.cos(found.along), -math.sin(found.along)
-        pen.setWidthF(4.0)
-        painter.setPen(pen)
-        painter.drawLine(_line(p, -8 * c, -8 * s, 8 * c, 8 * s))
-    else:  # "start": closes the chain
-        painter.setBrush(colour)
-        painter.drawEllipse(p, 4.0, 4.0)
-        painter.setBrush(Qt.BrushStyle.NoBrush)
-        painter.drawEllipse(p, 9.0, 9.0)
-
-
-def _line(p: QPointF, x0: float, y0: float, x1: float, y1: float) -> QLineF:
-    return QLineF(p.x() + x0, p.y() + y0, p.x() + x1, p.y() + y1)

@@ -104,6 +104,10 @@ class Tool:
         """Further points that the cursor may snap to."""
         return ()
 
+    def point_from(self) -> Point | None:
+        """The place that a line is being drawn from [mm]; None if none is."""
+        return None
+
     def unsnapped(self) -> frozenset[str]:
         """Ids that must not draw the cursor."""
         return frozenset()
