@@ -54,8 +54,10 @@ def draw_snap(painter: QPainter, frame: Frame, found: Snap) -> None:
     elif found.kind == "perpendicular":  # a right angle on the edge
         c, s = math.cos(found.along), -math.sin(found.along)
         u, v = QPointF(8 * c, 8 * s), QPointF(8 * s, -8 * c)
-        painter.drawPolyline([p + u, p + u + v, p + v])
-        painter.drawLine(p - u, p + u)
+        painter.drawLines([QLineF(p - u, p + u), QLineF(p, p + 1.5 * v)])
+        pen.setWidthF(1.0)
+        painter.setPen(pen)
+        painter.drawPolyline([p + 0.7 * u, p + 0.7 * u + 0.7 * v, p + 0.7 * v])
     elif found.kind in ("horizontal", "vertical"):  # a short bar with two stops
         bars = [(-7, 0, 7, 0), (-7, -4, -7, 4), (7, -4, 7, 4)]
         turn = found.kind == "vertical"
