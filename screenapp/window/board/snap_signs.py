@@ -53,11 +53,11 @@ def draw_snap(painter: QPainter, frame: Frame, found: Snap) -> None:
         painter.drawEllipse(QPointF(p.x() - 5.5 * s, p.y() + 5.5 * c), 5.5, 5.5)
     elif found.kind == "perpendicular":  # a right angle on the edge
         c, s = math.cos(found.along), -math.sin(found.along)
-        u, v = QPointF(8 * c, 8 * s), QPointF(8 * s, -8 * c)
-        painter.drawLines([QLineF(p - u, p + u), QLineF(p, p + 1.5 * v)])
+        painter.drawLines([_line(p, -8 * c, -8 * s, 8 * c, 8 * s), _line(p, 0, 0, 12 * s, -12 * c)])
         pen.setWidthF(1.0)
         painter.setPen(pen)
-        painter.drawPolyline([p + 0.7 * u, p + 0.7 * u + 0.7 * v, p + 0.7 * v])
+        corners = ((5 * c, 5 * s), (5 * (c + s), 5 * (s - c)), (5 * s, -5 * c))
+        painter.drawPolyline([QPointF(p.x() + x, p.y() + y) for x, y in corners])
     elif found.kind in ("horizontal", "vertical"):  # a short bar with two stops
         bars = [(-7, 0, 7, 0), (-7, -4, -7, 4), (7, -4, 7, 4)]
         turn = found.kind == "vertical"
