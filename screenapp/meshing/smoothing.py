@@ -49,9 +49,13 @@ def smooth(points: Floats, quads: Ints, following: Ints, middles: Floats) -> Flo
     gather = csr_array(
         (np.ones(len(rows)), (quads.ravel(), rows)), shape=(n, len(rows))
     )  # adds up what the corners contribute to each node
+    # Moves are counted in sides of the elements round each node: sizes range over decades, and
+    # the method would otherwise see little but the smallest elements.
+    sides = np.sqrt(np.repeat(scale[:, 0], 4))
+    unit = np.repeat(((gather @ sides) / (gather @ np.ones(len(rows))))[fixed:], 2)
 
     def cost(moving: Floats) -> tuple[float, Floats]:
-        x = np.concatenate([points[:fixed], moving.reshape(-1, 2)])
+        x = np.concatenate([points[:fixed], points[fixed:] + (moving * unit).reshape(-1, 2)])
         side = x[stop] - x[start]
         leaving, arriving = side.copy(), side
         leaving[curved] = leaving_fixed
@@ -76,16 +80,17 @@ def smooth(points: Floats, quads: Ints, following: Ints, middles: Floats) -> Flo
         by_side = by_leaving + by_arriving  # at the start node of the side: minus this
         by_corner = np.roll(by_side, 1, axis=1) - by_side
         gradient = gather @ by_corner.reshape(-1, 2)
-        return value, gradient[fixed:].ravel()
+        return value, gradient[fixed:].ravel() * unit
 
     found = minimize(
         cost,
-        points[fixed:].ravel(),
+        np.zeros(2 * (n - fixed)),
         jac=True,
         method="L-BFGS-B",
         options={"maxiter": STEPS, "maxcor": 8},
     )
-    return np.concatenate([points[:fixed], np.asarray(found.x).reshape(-1, 2)])
+    moved = points[fixed:] + (np.asarray(found.x) * unit).reshape(-1, 2)
+    return np.concatenate([points[:fixed], moved])
 
 
 def _mean_areas(points: Floats, quads: Ints) -> Floats:
