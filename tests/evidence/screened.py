@@ -9,6 +9,7 @@ from pathlib import Path
 from typing import Any
 
 from screenapp.meshing.service import Mesher
+from screenapp.model.findings import Findings
 from screenapp.model.part import Corner, Edge, Loop, Part, Point
 from screenapp.model.part_json import read_part, write_part
 from screenapp.model.result_json import findings_to_record, record_to_text
@@ -41,13 +42,13 @@ class Record:
         low, high = found["band"][quantity]
         return Number(found["values"][quantity], low, high, found["trusts"][quantity])
 
-    def peaks(self, feature: str) -> list[dict[str, Any]]:
-        """The peaks of the first case on a feature, largest first."""
-        return [p for p in self.tree["cases"][0]["peaks"] if p["feature"] == feature]
+    def peaks(self, on: str) -> list[dict[str, Any]]:
+        """The peaks of the first case on a feature or at a place in words, largest first."""
+        return [p for p in self.tree["cases"][0]["peaks"] if on in (p["feature"], p["place"])]
 
-    def peak(self, feature: str, quantity: str = "von_mises") -> Number:
-        """The largest peak of a quantity on a feature in the first case."""
-        found = next(p for p in self.peaks(feature) if p["quantity"] == quantity)
+    def peak(self, on: str, quantity: str = "von_mises") -> Number:
+        """The largest peak of a quantity on a feature (or at a place) in the first case."""
+        found = next(p for p in self.peaks(on) if p["quantity"] == quantity)
         return Number(found["value"], found["low"], found["high"], found["trust"])
 
     @property
@@ -65,13 +66,17 @@ class Record:
 Screened = Callable[[Part], Record]
 
 
-def screen_from_file(part: Part, mesher: Mesher, folder: Path) -> Record:
-    """Save a part, read it back, screen it, write its record and read that."""
+def findings_from_file(part: Part, mesher: Mesher, folder: Path) -> Findings:
+    """Save a part, read it back and screen it."""
     place = folder / "check.part.json"
     write_part(part, place)
-    again = read_part(place)
-    findings = screen(again, mesher)
-    return Record(json.loads(record_to_text(findings_to_record(findings, again))))
+    return screen(read_part(place), mesher)
+
+
+def screen_from_file(part: Part, mesher: Mesher, folder: Path) -> Record:
+    """Save a part, read it back, screen it, write its record and read that."""
+    findings = findings_from_file(part, mesher, folder)
+    return Record(json.loads(record_to_text(findings_to_record(findings, part))))
 
 
 def chain(points: list[Point], through: dict[int, Point] | None = None) -> Loop:

@@ -14,7 +14,6 @@ from screenapp.mechanics.assembly import assemble
 from screenapp.mechanics.constraints import HeldDirections, prescribe_nodes
 from screenapp.mechanics.elasticity import constitutive_matrix
 from screenapp.mechanics.quadrature import gauss_square
-from screenapp.mechanics.recovery import recover
 from screenapp.mechanics.solve import solve, solve_system
 from screenapp.mechanics.strain_displacement import element_strains
 from screenapp.model.part import (
@@ -26,19 +25,15 @@ from screenapp.model.part import (
     Material,
     MeshWishes,
     Part,
-    PressureLoad,
-    RollerSupport,
     Support,
     Wall,
-    WallState,
 )
 from screenapp.model.solution import Solution
+from tests.evidence.closed_forms import curved_bar_deflection
 from tests.evidence.table import record
 from tests.mechanics.structured import (
-    Floats,
     Ints,
     Structured,
-    four_sided,
     mesh_from_corners,
     rectangle,
     ring_sector,
@@ -131,7 +126,7 @@ def test_curved_beam() -> None:
     case = ring_sector(4.12, 4.32, 90.0, 24, 2, Wall(0.1, ""), Material("bar", 1e7, 0.25, 1.0))
     solution = _solve(case, "quad9", (FixedSupport("s", "e1"),), ForceLoad("f", "e3", 0.0, 1.0))
     tip = _middle(case, solution, "e3")[1]
-    closed = _curved_bar_deflection(4.12, 4.32, 0.1, 1e7)
+    closed = curved_bar_deflection(4.12, 4.32, 0.1, 1e7)
     thin = math.pi * 4.22**3 / (4.0 * 1e7 * 0.1 * 0.2**3 / 12.0)
     assert closed == pytest.approx(thin, rel=2e-3)  # the formula itself, by another one
     error = 100.0 * (tip / closed - 1.0)
@@ -200,73 +195,6 @@ def test_over_stiffness_of_the_bilinear_quad_in_bending(slimness: float, poisson
             100.0 * error,
             "1e-9",
         )
-
-
-def test_tapered_panel() -> None:
-    """Unit shear on the free end, deflection in its middle, fixed fine mesh."""
-    case = four_sided(
-        ((0.0, 0.0), (48.0, 44.0), (48.0, 60.0), (0.0, 44.0)),
-        48,
-        48,
-        Wall(1.0, ""),
-        Material("panel", 1.0, 1.0 / 3.0, 1.0),
-    )
-    solution = _solve(case, "quad9", (FixedSupport("s", "e4"),), ForceLoad("f", "e2", 0.0, 1.0))
-    tip = _middle(case, solution, "e2")[1]
-    error = 100.0 * (tip / 23.96 - 1.0)
-    record(
-        "tapered panel, 48 x 48 quad9: tip deflection",
-        "Cook 1974 (from memory)",
-        23.96,
-        tip,
-        error,
-        "0.1 %",
-    )
-    assert abs(error) < 0.1
-
-
-@pytest.mark.parametrize("state", get_args(WallState))
-def test_thick_ring_under_inner_pressure(state: WallState) -> None:
-    """Lamé: displacement and hoop stress at the inner rim of a quarter ring on rollers."""
-    a, b, p, e, nu = 20.0, 40.0, 50.0, 210_000.0, 0.3
-    case = ring_sector(a, b, 90.0, 16, 8, Wall(5.0, "", state), Material("ring", e, nu, 1.0))
-    rollers = (RollerSupport("s1", "e1"), RollerSupport("s3", "e3"))
-    solution = _solve(case, "quad9", rollers, PressureLoad("p", "e4", p))
-    part = _loaded(case, "quad9", rollers, PressureLoad("p", "e4", p))
-    if state == "plane strain":
-        e, nu = e / (1 - nu**2), nu / (1 - nu)
-    moved = p * a * a / (e * (b * b - a * a)) * ((1 - nu) * a + (1 + nu) * b * b / a)
-    hoop = p * (b * b + a * a) / (b * b - a * a)
-    rim = np.unique(case.mesh.side_nodes[_sides(case, "e4")])
-    outward = _directions(case.mesh.nodes[rim])
-    radial = np.einsum("nd,nd->n", outward, solution.displacements[0, rim])
-    sides = _sides(case, "e4")
-    stress = recover(part, case.shape, case.mesh, solution).side[0, sides].reshape(-1, 3)
-    c, s = _directions(case.mesh.nodes[case.mesh.side_nodes[sides]].reshape(-1, 2)).T
-    around = stress[:, 0] * s**2 + stress[:, 1] * c**2 - 2 * stress[:, 2] * s * c
-    for what, found, wanted in (
-        ("widening of the bore [mm]", radial, moved),
-        ("hoop stress at the bore [MPa]", around, hoop),
-    ):
-        worst = float(found[np.argmax(np.abs(found - wanted))])
-        error = 100.0 * (worst / wanted - 1.0)
-        record(f"thick ring, {state}: {what}", "Lamé (derived)", wanted, worst, error, "0.1 %")
-        assert abs(error) < 0.1
-
-
-def _curved_bar_deflection(inner: float, outer: float, thickness: float, e: float) -> float:
-    """Deflection along a unit radial force at the end of a quarter ring clamped at the other.
-
-    Source: Timoshenko & Goodier, Theory of Elasticity, art. 33 (from memory).
-    """
-    a2, b2 = inner**2, outer**2
-    n = a2 - b2 + (a2 + b2) * math.log(outer / inner)
-    return math.pi * (a2 + b2) / (e * thickness * n)
-
-
-def _directions(positions: Floats) -> Floats:
-    """Unit vectors from the origin, (n, 2)."""
-    return np.asarray(positions / np.linalg.norm(positions, axis=1, keepdims=True))
 
 
 def _loaded(

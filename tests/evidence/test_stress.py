@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
 from dataclasses import replace
 
 import numpy as np
@@ -13,20 +12,15 @@ from screenapp.mechanics.constraints import prescribe_nodes
 from screenapp.mechanics.elasticity import constitutive_matrix
 from screenapp.mechanics.recovery import recover
 from screenapp.mechanics.solve import solve, solve_system
-from screenapp.meshing.service import Mesher
 from screenapp.model.part import (
     Case,
     CircleHole,
-    LineLoad,
     Material,
-    MeshWishes,
-    Part,
     PressureLoad,
     RollerSupport,
     Wall,
 )
 from screenapp.model.shape import shape_of
-from screenapp.screening.screen import screen
 from tests.evidence.table import record
 from tests.mechanics.stress_fields import kirsch_displacement, kirsch_stress
 from tests.mechanics.structured import (
@@ -37,12 +31,6 @@ from tests.mechanics.structured import (
 )
 
 STEEL = Material("steel", 210_000.0, 0.3, 7850.0)
-
-
-@pytest.fixture(scope="module")
-def mesher() -> Iterator[Mesher]:
-    with Mesher() as made:
-        yield made
 
 
 @pytest.mark.parametrize(("n_around", "hold"), [(16, 0.2), (32, 0.1)])
@@ -70,50 +58,6 @@ def test_elliptic_membrane(n_around: int, hold: float) -> None:
         f"{hold} %",
     )
     assert abs(error) < hold
-
-
-def strip(ratio: float) -> Part:
-    """A hole of 20 mm in the middle of a strip three times as long as wide, 100 MPa gross."""
-    width = 20.0 / ratio
-    part = outlined(
-        ((0.0, 0.0), (3 * width, 0.0), (3 * width, width), (0.0, width)),
-        None,
-        Wall(2.0, ""),
-        STEEL,
-    )
-    return replace(
-        part,
-        holes=(CircleHole("h1", (1.5 * width, 0.5 * width), 20.0),),
-        supports=(RollerSupport("s1", "e4", 0.0), RollerSupport("s2", "c1", 90.0)),
-        cases=(Case("k1", "pulled", (LineLoad("l1", "e2", 200.0, 0.0),)),),
-        mesh=MeshWishes(tolerance=0.005),
-    )
-
-
-@pytest.mark.parametrize(("ratio", "published", "own"), [(0.2, 3.14, 3.153), (0.5, 4.32, 4.348)])
-def test_hole_in_a_strip(ratio: float, published: float, own: float, mesher: Mesher) -> None:
-    """Stress at the hole over the gross stress, through the whole screening."""
-    findings = screen(strip(ratio), mesher)
-    peak = max(
-        (p for p in findings.cases[0].peaks if p.feature == "h1"), key=lambda p: p.estimate.value
-    )
-    found = peak.estimate.value / 100.0
-    for source, reference, hold in (
-        ("Howland 1930, Phil. Trans. A 229 (from memory)", published, 1.0),
-        ("own, finite strip", own, 0.3),
-    ):
-        error = 100.0 * (found / reference - 1.0)
-        record(
-            f"hole in a strip, d/W = {ratio}, screened ({source.split(',')[0]})",
-            source,
-            reference,
-            found,
-            error,
-            f"{hold} %",
-        )
-        assert abs(error) < hold
-    assert peak.estimate.trust == "settled"
-    assert peak.estimate.low <= 100.0 * own <= peak.estimate.high
 
 
 def wide_plate(n_around: int, n_across: int) -> Structured:
@@ -151,7 +95,14 @@ def test_small_hole_in_a_wide_plate() -> None:
     rim = mesh.sides_on(case.shape.pieces_of("h1"))
     found = float(field.side[0, rim, :, 0].max())
     error = 100.0 * (found / 3.0 - 1.0)
-    record("small hole in a wide plate", "Kirsch 1898 (from memory)", 3.0, found, error, "0.5 %")
+    record(
+        "small hole in a wide plate, 32 x 24 quad9",
+        "Kirsch 1898 (from memory)",
+        3.0,
+        found,
+        error,
+        "0.5 %",
+    )
     assert abs(error) < 0.5
     # the whole rim, not only the crown
     points = mesh.nodes[mesh.side_nodes[rim]].reshape(-1, 2)

@@ -1,0 +1,105 @@
+"""Free bodies: what the loads put on a part, its supports give back."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import numpy as np
+import pytest
+
+from screenapp.mechanics.places import outward
+from screenapp.model.part import (
+    BearingLoad,
+    Case,
+    ForceLoad,
+    GravityLoad,
+    LineLoad,
+    Part,
+    PointLoad,
+    PressureLoad,
+    ShearLoad,
+)
+from screenapp.model.part_json import read_part
+from screenapp.model.shape import Shape, shape_of
+from tests.evidence.band_parts import random_part
+from tests.evidence.screened import Record, Screened
+from tests.evidence.table import record
+
+SAMPLES = sorted((Path(__file__).parents[2] / "samples").glob("*.part.json"))
+
+
+def forces_of(part: Part, shape: Shape, case: Case) -> np.ndarray:
+    """Each load's force [N] straight from the drawing, no mesh, (n_loads, 2)."""
+    forces = np.zeros((len(case.loads), 2))
+    for k, load in enumerate(case.loads):
+        if isinstance(load, ForceLoad | BearingLoad | PointLoad):
+            forces[k] = load.x, load.y
+        elif isinstance(load, GravityLoad):
+            assert part.material is not None
+            mass = 1e-9 * shape.area * part.wall.thickness * part.material.density
+            forces[k] = mass * load.x, mass * load.y
+        else:
+            forces[k] = sum(_along(part, shape, load, i) for i in shape.pieces_of(load.on))
+    return forces
+
+
+def _along(
+    part: Part, shape: Shape, load: PressureLoad | ShearLoad | LineLoad, piece: int
+) -> np.ndarray:
+    """Force of an evenly spread load on one piece of the boundary [N], (2,)."""
+    curve = shape.curves[piece].curve
+    run = curve.point(1.0) - curve.point(0.0)  # the integral of the unit tangent
+    if isinstance(load, LineLoad):
+        return curve.length * np.array([load.x, load.y])
+    if isinstance(load, ShearLoad):
+        return load.per_length * run
+    return -load.pressure * part.wall.thickness * outward(run)
+
+
+def check_free_body(part: Part, found: Record) -> float:
+    """The largest relative gap of force or moment over the cases; forces also from the drawing."""
+    shape, worst = shape_of(part), 0.0
+    for case, told in zip(part.cases, found.tree["cases"], strict=True):
+        applied = np.array([told["applied"][k] for k in ("x", "y", "moment")])
+        back = np.array([[r[k] for k in ("x", "y", "moment")] for r in told["reactions"]])
+        drawn = forces_of(part, shape, case)
+        size = float(np.linalg.norm(drawn, axis=1).sum())  # loads may cancel each other
+        gap = applied + back.sum(axis=0)
+        worst = max(worst, *(np.abs(gap[:2]) / size), abs(gap[2]) / (size * shape.size))
+        worst = max(worst, told["balance"]["force"], told["balance"]["moment"])
+        # the mesh follows arcs by parabolas; their length is right to a few parts in 1e5
+        assert np.abs(applied[:2] - drawn.sum(axis=0)).max() < 1e-4 * size
+    return worst
+
+
+@pytest.mark.parametrize("place", SAMPLES, ids=lambda p: p.name.split(".")[0])
+def test_sample(place: Path, screened: Screened) -> None:
+    """Loads and reactions of every sample cancel."""
+    part = read_part(place)
+    worst = check_free_body(part, screened(part))
+    record(
+        f"free body of the sample {place.name.split('.')[0]}: loads + reactions, relative",
+        "statics",
+        "0",
+        f"{worst:.0e}",
+        "< 1e-6 %",
+        "1e-8",
+    )
+    assert worst < 1e-8
+
+
+def test_random_parts(screened: Screened) -> None:
+    """The same on ten random parts of five kinds with mixed supports and loads."""
+    worst = 0.0
+    for seed in range(200, 210):
+        part = random_part(seed)
+        worst = max(worst, check_free_body(part, screened(part)))
+    record(
+        "free body of 10 random parts: loads + reactions, relative, the worst",
+        "statics",
+        "0",
+        f"{worst:.0e}",
+        "< 1e-6 %",
+        "1e-8",
+    )
+    assert worst < 1e-8
