@@ -51,8 +51,9 @@ def smooth(points: Floats, quads: Ints, following: Ints, middles: Floats) -> Flo
     )  # adds up what the corners contribute to each node
     # Moves are counted in sides of the elements round each node: sizes range over decades, and
     # the method would otherwise see little but the smallest elements.
-    sides = np.sqrt(np.repeat(scale[:, 0], 4))
-    unit = np.repeat(((gather @ sides) / (gather @ np.ones(len(rows))))[fixed:], 2)
+    corners, sides = quads.ravel(), np.sqrt(np.repeat(scale[:, 0], 4))
+    around = np.bincount(corners, sides, n) / np.bincount(corners, minlength=n)
+    unit = np.repeat(around[fixed:], 2)
 
     def cost(moving: Floats) -> tuple[float, Floats]:
         x = np.concatenate([points[:fixed], points[fixed:] + (moving * unit).reshape(-1, 2)])
