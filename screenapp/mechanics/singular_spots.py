@@ -8,8 +8,13 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from typing import Literal
 
-from screenapp.mechanics.corner_exponent import Face, growth_rate
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics.corner_exponent import SLIDING, Face, growth_rate
+from screenapp.model.curves import Curve
 from screenapp.model.members import whole_id
 from screenapp.model.part import (
     Case,
@@ -20,10 +25,16 @@ from screenapp.model.part import (
     PrescribedSupport,
     Support,
 )
-from screenapp.model.shape import BoundaryCurve, Shape
+from screenapp.model.shape import Shape
+
+Held = Literal["free", "fixed", "normal"] | float
+"""How a piece of the boundary is held; a number is the angle [rad] of the one held direction."""
 
 _LEAST_RATE = 0.02
 """Growth slower than this cannot be told from none in seven passes and is not counted."""
+
+_SMOOTH = 1e-6  # the boundary is smooth where it turns by less [rad]
+_SAME_DIRECTION = 1e-6  # sine of the angle between directions that count as one
 
 
 @dataclass(frozen=True)
@@ -37,6 +48,7 @@ class SingularSpot:
             value".
         mend: what would settle it.
         rate: growth rate α = 1 - λ; 1 under a point force (stress as 1/r).
+        place: where, in words, e.g. "corner c4".
         case: id of the only case it belongs to; empty for all cases.
     """
 
@@ -45,6 +57,7 @@ class SingularSpot:
     why: str
     mend: str
     rate: float
+    place: str
     case: str = ""
 
 
@@ -54,16 +67,16 @@ def singular_spots(part: Part, shape: Shape) -> tuple[SingularSpot, ...]:
     return tuple(spots)
 
 
-def faces(part: Part, shape: Shape) -> list[Face]:
+def faces(part: Part, shape: Shape) -> list[Held]:
     """How each piece of the boundary is held."""
-    kinds: list[Face] = ["free"] * len(shape.curves)
+    kinds: list[Held] = ["free"] * len(shape.curves)
     for support in part.supports:
         for i in shape.pieces_of(support.on):
-            kinds[i] = _stricter(kinds[i], _face(support, shape.curves[i]))
+            kinds[i] = _both(kinds[i], _held(support), shape.curves[i].curve)
     return kinds
 
 
-def _face(support: Support, piece: BoundaryCurve) -> Face:
+def _held(support: Support) -> Held:
     if isinstance(support, FixedSupport):
         return "fixed"
     if isinstance(support, PrescribedSupport):
@@ -71,21 +84,29 @@ def _face(support: Support, piece: BoundaryCurve) -> Face:
             return "fixed"
         if support.x is None and support.y is None:
             return "free"
-        held = 0.0 if support.x is not None else math.pi / 2.0
-    elif support.angle is None:
-        return "sliding"
-    else:
-        held = math.radians(support.angle)
-    if piece.curve.curvature != 0.0:
-        return "other"
-    t = piece.curve.tangent(0.5)
-    along = abs(math.cos(held) * t[0] + math.sin(held) * t[1])
-    return "sliding" if along < 1e-6 else "other"
+        return 0.0 if support.x is not None else 0.5 * math.pi
+    return "normal" if support.angle is None else math.radians(support.angle) % math.pi
 
 
-def _stricter(a: Face, b: Face) -> Face:
-    order: list[Face] = ["free", "sliding", "other", "fixed"]
-    return max(a, b, key=order.index)
+def _both(a: Held, b: Held, curve: Curve) -> Held:
+    """What two supports on one piece hold together."""
+    if a == "free" or b == "free":
+        return b if a == "free" else a
+    if "fixed" in (a, b) or (curve.curvature != 0.0 and a != b):
+        return "fixed"
+    one, other = (_against(kind, curve.tangent(0.5)) for kind in (a, b))
+    assert not isinstance(one, str)
+    assert not isinstance(other, str)
+    return a if abs(math.sin(one - other)) < _SAME_DIRECTION else "fixed"
+
+
+def _against(held: Held, along: NDArray[np.float64]) -> Face:
+    """The hold of a face that leaves its corner in the direction `along`."""
+    if held == "normal":
+        return SLIDING
+    if isinstance(held, str):
+        return held
+    return round((held - math.atan2(along[1], along[0])) % math.pi, 9)
 
 
 def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
@@ -98,13 +119,15 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
         for i in range(first, last):
             j = i + 1 if i + 1 < last else first
             before, after = shape.curves[i], shape.curves[j]
-            t_in, t_out = before.curve.tangent(1.0), after.curve.tangent(0.0)
-            turn = math.atan2(t_in[0] * t_out[1] - t_in[1] * t_out[0], float(t_in @ t_out))
-            angle = math.pi - turn
-            rate = growth_rate(angle, (kinds[i], kinds[j]), poisson, part.wall.state)
-            smooth = abs(turn) < 1e-6
-            if smooth and kinds[i] == kinds[j]:
+            angle = _inside_angle(before.curve, after.curve)
+            if abs(angle - math.pi) < _SMOOTH and kinds[i] == kinds[j]:
                 continue
+            # the wedge opens from the piece that leaves the corner, the material on its left
+            sides = (
+                _against(kinds[j], after.curve.tangent(0.0)),
+                _against(kinds[i], -before.curve.tangent(1.0)),
+            )
+            rate = growth_rate(angle, sides, poisson, part.wall.state)
             if rate < _LEAST_RATE:
                 continue
             x, y = after.curve.start
@@ -116,6 +139,15 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
     return spots
 
 
+def _inside_angle(before: Curve, after: Curve) -> float:
+    """Angle of the material [rad] where one piece ends and the next begins, in [0, 2π]."""
+    t_in, t_out = before.tangent(1.0), after.tangent(0.0)
+    turn = math.atan2(t_in[0] * t_out[1] - t_in[1] * t_out[0], float(t_in @ t_out))
+    if math.pi - abs(turn) < _SMOOTH:  # a cusp: the curvatures say on which side the material is
+        return 0.0 if before.curvature + after.curvature < 0.0 else 2.0 * math.pi
+    return math.pi - turn
+
+
 def _junction_spot(
     part: Part,
     ids: tuple[str, ...],
@@ -123,37 +155,58 @@ def _junction_spot(
     at: Point,
     angle: float,
     rate: float,
-    before: Face,
-    after: Face,
+    before: Held,
+    after: Held,
 ) -> SingularSpot:
     degrees = math.degrees(angle)
+    whole = whole_id(corner)
+    instead = "" if whole == corner else " instead of the chamfer"
+    radius = f"a radius of at least the wall, {part.wall.thickness:g} mm{instead}"
     if before == after == "free":
-        whole = whole_id(corner)
-        instead = "" if whole == corner else " instead of the chamfer"
         return SingularSpot(
             at,
             ids,
             f"the corner {corner} is sharp ({degrees:.0f}° inside) and has no finite stress",
-            f"give corner {whole} a radius of at least the wall, {part.wall.thickness:g} mm"
-            + instead,
+            f"give corner {whole} {radius}",
             rate,
+            f"corner {corner}",
         )
     where = f"corner {corner}" if corner else "the junction of " + " and ".join(ids)
+    mend = (
+        "hold the part as it is really held (a bolt hole, a longer edge), or judge it by a "
+        "reading at a stated distance"
+    )
+    if before == after:
+        why = f"the held boundary turns sharply at {where} ({degrees:.0f}° inside)"
+        mend = f"give corner {whole} {radius}, or {mend}" if corner else mend
+    elif "free" in (before, after):
+        why = f"a support ends at {where}"
+    else:
+        why = f"two supports meet at {where}"
     return SingularSpot(
         at,
         ids,
-        f"a support ends at {where}, where a rigid hold gives no finite stress",
-        "hold the part as it is really held (a bolt hole, a longer edge), or judge it by a "
-        "reading at a stated distance",
+        f"{why}, where a rigid hold gives no finite stress",
+        mend,
         rate,
+        where if corner else "the end of a support between " + " and ".join(ids),
     )
 
 
 def _points(part: Part, shape: Shape) -> list[SingularSpot]:
     corners = dict(shape.sharp_corners)
+    fixed = [
+        end
+        for piece, held in zip(shape.curves, faces(part, shape), strict=True)
+        if held == "fixed"
+        for end in (piece.curve.start, piece.curve.end)
+    ]
     spots: list[SingularSpot] = []
     for support in part.supports:
-        if support.on in corners and not _holds_nothing(support):
+        if support.on in corners and _held(support) != "free":
+            at = corners[support.on]
+            if any(math.dist(at, end) < 1e-9 * shape.size for end in fixed):
+                continue  # the edge holds it already
             spots.append(
                 SingularSpot(
                     corners[support.on],
@@ -161,15 +214,12 @@ def _points(part: Part, shape: Shape) -> list[SingularSpot]:
                     f"corner {support.on} is held at a point, where the stress has no finite value",
                     "hold an edge or a hole instead",
                     1.0,
+                    f"corner {support.on}",
                 )
             )
     for case in part.cases:
         spots += _point_loads(case, corners)
     return spots
-
-
-def _holds_nothing(support: Support) -> bool:
-    return isinstance(support, PrescribedSupport) and support.x is None and support.y is None
 
 
 def _point_loads(case: Case, corners: dict[str, Point]) -> list[SingularSpot]:
@@ -180,6 +230,7 @@ def _point_loads(case: Case, corners: dict[str, Point]) -> list[SingularSpot]:
             f"a force acts at the point {load.on}, where the stress has no finite value",
             "spread the force over an edge or a hole",
             1.0,
+            f"corner {load.on}",
             case.id,
         )
         for load in case.loads

@@ -76,7 +76,7 @@ def _peak(
     if estimate.trust == "rising":
         if spot is not None:
             at, why, mend = spot.at, spot.why, spot.mend
-            place = _spot_place(spot)
+            place = spot.place
             found = structural_stress(part, shape, passes, spot, name, k)
             if found is not None:
                 structural = found[0]
@@ -104,13 +104,6 @@ def _peak(
         growth(samples),
         part.mesh.tolerance * scale,
     )
-
-
-def _spot_place(spot: SingularSpot) -> str:
-    first = spot.ids[0]
-    if first.startswith("c"):
-        return f"corner {first}"
-    return "the end of a support between " + " and ".join(spot.ids)
 
 
 def _why_unsettled(estimate: Estimate, spot: SingularSpot | None) -> str:
