@@ -13,7 +13,6 @@ import shapely
 from numpy.typing import NDArray
 
 from screenapp.meshing.size_field import GRADATION, SizeField
-from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import MeshingError
 from screenapp.model.shape import Shape
 
@@ -98,7 +97,7 @@ def _integrals(shape: Shape, sizes: SizeField) -> list[tuple[Floats, Floats]]:
 
     Parameters are added until the size is known closely enough between them.
     """
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     piece = np.repeat(np.arange(len(table)), FEWEST)
     t = np.tile(np.linspace(0.0, 1.0, FEWEST), len(table))
     h = sizes.at(table.points(piece, t))
@@ -188,7 +187,7 @@ def _collect(shape: Shape, parameters: list[Floats]) -> BoundaryPoints:
 
 def joint_angles(shape: Shape) -> Floats:
     """The angle of the material at the start of each piece [rad], in [0, 2π], (n_pieces,)."""
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     every = np.arange(len(table))
     before = every - 1
     for first, last in shape.loops:

@@ -59,7 +59,7 @@ class Walls:
 @lru_cache(maxsize=16)
 def measure_walls(shape: Shape) -> Walls:
     """Sample the boundary and measure the wall at each sample."""
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     piece, t = _first_samples(table, shape.size)
     piece, t = _with_critical(table, piece, t)
     found = _measure(table, shape, piece, t)

@@ -2,12 +2,10 @@
 
 from __future__ import annotations
 
-import math
 from dataclasses import dataclass
 from typing import Literal
 
-from screenapp.model.curves import Arc, Curve, Segment
-from screenapp.model.part import Point
+from screenapp.model.curves import Curve, Segment
 
 
 @dataclass(frozen=True)
@@ -30,17 +28,6 @@ class BoundaryCurve:
 def turned(piece: BoundaryCurve) -> BoundaryCurve:
     """The same piece run backwards."""
     return BoundaryCurve(piece.feature, piece.kind, piece.curve.reversed(), piece.loop)
-
-
-def extremes(curve: Curve) -> list[Point]:
-    """Both ends of a curve and the points of an arc that lie farthest along an axis."""
-    points = [curve.start, curve.end]
-    if isinstance(curve, Arc):
-        (x, y), r, way = curve.centre, curve.radius, math.copysign(1.0, curve.sweep)
-        for i, (dx, dy) in enumerate(((r, 0.0), (0.0, r), (-r, 0.0), (0.0, -r))):
-            if (0.5 * math.pi * i - curve.begin) * way % (2.0 * math.pi) < abs(curve.sweep):
-                points.append((x + dx, y + dy))
-    return points
 
 
 def area_under(curve: Curve) -> float:

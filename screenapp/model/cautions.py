@@ -51,20 +51,21 @@ def material_angles(
 ) -> list[tuple[str, tuple[float, float], float]]:
     """Id, place [mm] and angle within the material [deg] of each sharp corner; 270 re-enters."""
     n = len(table)
-    ahead = table.tangents(np.arange(n), np.zeros(n))
-    behind = table.tangents(np.arange(n), np.ones(n))
     before = np.arange(-1, n - 1)
     for first, last in shape.loops:
         before[first] = last - 1
-    u, v = behind[before], ahead
+    u, v = table.ways_out[before], table.ways_in
     turn = np.degrees(np.arctan2(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0], np.sum(u * v, axis=1)))
-    at_start = {(round(x, 9), round(y, 9)): k for k, (x, y) in enumerate(table.start.tolist())}
-    angles = []
-    for id_, at in shape.sharp_corners:
-        k = at_start.get((round(at[0], 9), round(at[1], 9)))
-        if k is not None:
-            angles.append((id_, at, float(180.0 - turn[k])))
-    return angles
+    bent = np.flatnonzero(np.abs(turn) > 1e-9)
+    starts = zip(
+        np.round(table.start[bent], 9).tolist(), (180.0 - turn[bent]).tolist(), strict=True
+    )
+    at_start = {(x, y): angle for (x, y), angle in starts}
+    places = np.round([at for _, at in shape.sharp_corners], 9).reshape(-1, 2).tolist()
+    return [
+        (id_, at, at_start.get((x, y), 180.0))
+        for (id_, at), (x, y) in zip(shape.sharp_corners, places, strict=True)
+    ]
 
 
 def _corner_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:

@@ -7,6 +7,7 @@ when they come nearer than one millionth of the part's size without being neighb
 from __future__ import annotations
 
 import numpy as np
+import shapely
 from numpy.typing import NDArray
 
 from screenapp.model.curve_table import CurveTable
@@ -71,10 +72,8 @@ def _short_pieces(shape: Shape, table: CurveTable, touch: float) -> list[Fault]:
 
 def _folds(shape: Shape, table: CurveTable) -> list[Fault]:
     """Neighbours that leave no angle between them."""
-    here = np.arange(len(table))
     there = following_pieces(shape)
-    t_in = table.tangents(here, np.ones(len(here)))
-    t_out = table.tangents(there, np.zeros(len(here)))
+    t_in, t_out = table.ways_out, table.ways_in[there]
     cosine = np.sum(t_in * t_out, axis=1)
     cross = t_in[:, 0] * t_out[:, 1] - t_in[:, 1] * t_out[:, 0]
     between = 180.0 - np.degrees(np.abs(np.arctan2(cross, cosine)))
@@ -124,9 +123,7 @@ def _meet_only_at_joint(shape: Shape, table: CurveTable, i: Ints, j: Ints) -> ND
     Most pairs of a boundary are such, so they are set aside cheaply.
     """
     following = following_pieces(shape)
-    here = np.arange(len(table))
-    u = table.tangents(here, np.ones(len(here)))
-    v = table.tangents(here, np.zeros(len(here)))[following]
+    u, v = table.ways_out, table.ways_in[following]
     smooth = (np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]) < 1e-6) & (np.sum(u * v, axis=1) > 0.0)
     forward, backward = following[i] == j, following[j] == i
     joint = np.where(forward, i, j)
@@ -173,8 +170,7 @@ def _at_common_end(
     for first, second in ((i, j), (j, i)):
         follows = following[first] == second
         corner = table.end[first]
-        u = table.tangents(first, np.ones(len(first)))
-        v = table.tangents(second, np.zeros(len(first)))
+        u, v = table.ways_out[first], table.ways_in[second]
         turn = np.arctan2(np.abs(u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0]), np.sum(u * v, axis=1))
         curved = np.where(
             table.arc[first] | table.arc[second],
@@ -255,27 +251,28 @@ def _misplaced_holes(shape: Shape, table: CurveTable, spoilt: set[int]) -> list[
 
 def _nested_holes(shape: Shape, table: CurveTable, holes: list[int]) -> list[Fault]:
     boxes = table.loop_boxes(shape)
-    low, high = boxes[:, :2], boxes[:, 2:]
-    size = np.prod(high - low, axis=1)
-    faults: list[Fault] = []
-    order = sorted(holes, key=lambda n: -size[n])
+    size = np.prod(boxes[:, 2:] - boxes[:, :2], axis=1)
+    order = np.array(sorted(holes, key=lambda n: -size[n]))
     points = table.start[[shape.loops[n][0] for n in order]]
-    for rank, outer in enumerate(order):
-        rest = points[rank + 1 :]
-        near = np.flatnonzero(np.all((rest > low[outer]) & (rest < high[outer]), axis=1))
-        if len(near) == 0:
-            continue
-        for k in near[table.inside(outer, rest[near])]:
-            inner = shape.hole_ids[order[rank + 1 + k]] or ""
-            around = shape.hole_ids[outer] or ""
+    x, y = points.T
+    tree = shapely.STRtree(shapely.box(*boxes[order].T))
+    inner, outer = tree.query(shapely.points(points))  # ranks in the order, larger holes first
+    around = np.sort(np.unique(outer[inner > outer]))
+    faults: list[Fault] = []
+    for rank in around:
+        low, high = boxes[order[rank], :2], boxes[order[rank], 2:]
+        near = np.sort(inner[(outer == rank) & (inner > rank)])
+        near = near[np.all((points[near] > low) & (points[near] < high), axis=1)]
+        for k in near[table.inside(int(order[rank]), points[near])]:
+            within, outside = shape.hole_ids[order[k]] or "", shape.hole_ids[order[rank]] or ""
             if len(faults) < MOST:
                 faults.append(
                     Fault(
-                        f"hole {inner} lies inside hole {around}",
+                        f"hole {within} lies inside hole {outside}",
                         "move it out or remove one of the two",
-                        f"holes.{whole_id(inner)}",
-                        (inner, around),
-                        (float(rest[k][0]), float(rest[k][1])),
+                        f"holes.{whole_id(within)}",
+                        (within, outside),
+                        (float(x[k]), float(y[k])),
                     )
                 )
     return faults

@@ -8,13 +8,17 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
+from typing import TYPE_CHECKING
 
 import numpy as np
 import shapely
 from numpy.typing import NDArray
 
+from screenapp.model.boundary_curve import BoundaryCurve
 from screenapp.model.curves import Arc
-from screenapp.model.shape import BoundaryCurve, Shape
+
+if TYPE_CHECKING:
+    from screenapp.model.shape import Shape
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -111,6 +115,16 @@ class CurveTable:
         d = self.end[which] - self.start[which]
         straight = d / np.maximum(np.hypot(*d.T), 1e-300)[:, None]
         return np.asarray(np.where(self.arc[which, None], round_, straight))
+
+    @cached_property
+    def ways_in(self) -> Floats:
+        """Unit tangent of each curve where it begins, (n, 2)."""
+        return self.tangents(np.arange(len(self)), np.zeros(len(self)))
+
+    @cached_property
+    def ways_out(self) -> Floats:
+        """Unit tangent of each curve where it ends, (n, 2)."""
+        return self.tangents(np.arange(len(self)), np.ones(len(self)))
 
     def nearest(self, which: Ints, points: Floats) -> Floats:
         """Parameters in [0, 1] of the points of the picked curves that lie nearest, (k,)."""

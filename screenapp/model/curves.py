@@ -53,8 +53,10 @@ class Segment:
     def part(self, t0: float, t1: float) -> Segment:
         """The piece from parameter `t0` to `t1`."""
         (ax, ay), (bx, by) = self.start, self.end
-        start, end = ((ax * (1.0 - t) + bx * t, ay * (1.0 - t) + by * t) for t in (t0, t1))
-        return Segment(start, end)
+        s0, s1 = 1.0 - t0, 1.0 - t1
+        return Segment(
+            (ax * s0 + bx * t0, ay * s0 + by * t0), (ax * s1 + bx * t1, ay * s1 + by * t1)
+        )
 
     def reversed(self) -> Segment:
         """The same segment run backwards."""

@@ -19,6 +19,7 @@ from screenapp.model.part import (
     Corner,
     Cut,
     Edge,
+    GravityLoad,
     Hole,
     Limit,
     Load,
@@ -115,6 +116,17 @@ def everything(part: Part) -> Iterator[Found]:
         yield Found("cut", cut, "", "readings")
 
 
+def ids_of(part: Part) -> Iterator[str]:
+    """The ids of `everything`, members of patterns left out (theirs follow from the whole's)."""
+    for _, _, loop in loops_of(part):
+        yield from (c.id for c in loop.corners)
+        yield from (e.id for e in loop.edges)
+    cases = part.cases
+    for group in (part.holes, part.zones, part.supports, cases, part.limits, part.readings):
+        yield from (one.id for one in group)
+    yield from (load.id for case in cases for load in case.loads)
+
+
 def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:
     """Field, owner's id ("" for the outline, else a hole or zone) and loop of all that is drawn
     as a loop."""
@@ -129,16 +141,32 @@ def loops_of(part: Part) -> Iterator[tuple[str, str, Loop]]:
 
 
 Places = dict[str, Found]
-"""Corners, edges and holes on the boundary of a part by id."""
+"""Corners, edges and holes on the boundary of a part by id, as far as they are asked for."""
 
 
 def places_of(part: Part) -> Places:
-    """Corners, edges and holes on the boundary by id, of two with one id the first; none of a
-    zone."""
+    """The places on the boundary that supports and loads stand on, by id.
+
+    Of two things with one id the first counts; those of a zone are not on the boundary.
+    """
+    wanted = {s.on for s in part.supports}
+    wanted |= {x.on for c in part.cases for x in c.loads if not isinstance(x, GravityLoad)}
     places: Places = {}
-    for found in everything(part):
-        if found.kind in ("corner", "edge", "hole") and not found.inside:
-            places.setdefault(found.record.id, found)
+    if not wanted:
+        return places
+    for where, owner, loop in loops_of(part):
+        if where.startswith("zones"):
+            continue
+        for kind, records in (("corner", loop.corners), ("edge", loop.edges)):
+            for record in records:
+                if record.id in wanted:
+                    found = Found(kind, record, owner, f"{where}.{kind}s")  # type: ignore[arg-type]
+                    places.setdefault(record.id, found)
+    for hole in part.holes:
+        for one in (hole, *members(hole)):
+            if one.id in wanted:
+                owner = "" if one.id == hole.id else hole.id
+                places.setdefault(one.id, Found("hole", one, owner, "holes"))
     return places
 
 

@@ -48,7 +48,7 @@ class Ligament:
 
 def ligaments(shape: Shape, below: float, table: CurveTable | None = None) -> list[Ligament]:
     """All ligaments narrower than `below` [mm], narrowest first; one for each pair of features."""
-    table = table if table is not None else CurveTable.of(shape.curves)
+    table = table if table is not None else shape.table
     i, j = close_pairs(table, below)
     following = following_pieces(shape)
     plain = np.array([c.kind == "hole" for c in shape.curves])
@@ -77,7 +77,7 @@ def ligaments(shape: Shape, below: float, table: CurveTable | None = None) -> li
 
 def narrowest_ligament(shape: Shape) -> Ligament | None:
     """The narrowest place of the part; None where no two pieces face each other (a disc)."""
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     reach = shape.size / 50.0
     while reach < 4.0 * shape.size:
         found = ligaments(shape, reach, table)
@@ -96,7 +96,7 @@ def local_thickness(shape: Shape, points: Floats, inward: Floats) -> Floats:
 
     The way ends at the first boundary it meets; infinite if it meets none.
     """
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     least = 1e-7 * shape.size
     widths = np.full(len(points), np.inf)
     step = max(1, 500_000 // max(1, len(table)))
@@ -142,8 +142,7 @@ def _facing(table: CurveTable, following: Ints, which: Ints, t: Floats, way: Flo
     leading = np.argsort(following)  # the piece before each piece
     before = np.where(t == 0.0, leading[which], which)
     after = np.where(t == 1.0, following[which], which)
-    u = table.tangents(before, np.ones(len(which)))
-    v = table.tangents(after, np.zeros(len(which)))
+    u, v = table.ways_out[before], table.ways_in[after]
     enters = u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0] < -1e-6
     farther = (np.sum(way * v, axis=1) <= 1e-9) & (np.sum(way * u, axis=1) >= -1e-9)
     at_corner = (t == 0.0) | (t == 1.0)

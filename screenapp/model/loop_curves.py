@@ -13,6 +13,9 @@ from screenapp.model.curves import Arc, Curve, Segment, arc_through
 from screenapp.model.errors import Fault
 from screenapp.model.part import Corner, Loop, Point
 
+Cut = tuple[Curve, float, float]
+"""What takes a corner's place, and the parameters at which it meets the edges before and after."""
+
 
 def edge_curves(loop: Loop) -> list[Curve]:
     """The edges of a loop before any round is worked in, in drawing order."""
@@ -44,10 +47,11 @@ def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCur
             return []
     begin, end = [0.0] * n, [1.0] * n  # what is left of each edge between its corners
     cuts: list[Curve | None] = [None] * n
+    ready = _line_fillets(loop, curves, lengths)
     for i, corner in enumerate(loop.corners):
         if corner.sharp:
             continue
-        cut = _corner_cut(corner, curves[i - 1], curves[i], where, faults)
+        cut = ready.get(i) or _corner_cut(corner, curves[i - 1], curves[i], where, faults)
         if cut is not None:
             cuts[i], end[i - 1], begin[i] = cut
     _faults_of_used_edges(loop, lengths, begin, end, where, faults)
@@ -63,6 +67,20 @@ def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCur
             rest = curves[i].part(begin[i], end[i])
             pieces.append(BoundaryCurve(edge.id, "edge", rest, 0))
     return pieces
+
+
+def runs_clockwise(loop: Loop) -> bool:
+    """Whether a loop was drawn clockwise, by the sign of its area before rounding."""
+    at = [c.at for c in loop.corners]
+    double = 0.0
+    for i, edge in enumerate(loop.edges):
+        (ax, ay), (bx, by) = at[i], at[(i + 1) % len(at)]
+        double += ax * by - bx * ay
+        if edge.through is not None and isinstance(
+            arc := arc_through((ax, ay), edge.through, (bx, by)), Arc
+        ):
+            double += arc.radius**2 * (arc.sweep - math.sin(arc.sweep))
+    return double < 0.0
 
 
 def sharp_places(loop: Loop, pieces: list[BoundaryCurve]) -> list[tuple[str, Point]]:
@@ -83,8 +101,8 @@ def sharp_places(loop: Loop, pieces: list[BoundaryCurve]) -> list[tuple[str, Poi
 
 def _corner_cut(
     corner: Corner, before: Curve, after: Curve, where: str, faults: list[Fault]
-) -> tuple[Curve, float, float] | None:
-    """The fillet or chamfer of a corner, and the parameters at which it meets both edges."""
+) -> Cut | None:
+    """The fillet or chamfer of a corner; what does not fit is added to `faults`."""
     name = "round" if corner.round != 0.0 else "chamfer"
     size = corner.round if corner.round != 0.0 else corner.chamfer
     field = f"{where}.corners.{corner.id}.{name}"
@@ -137,7 +155,7 @@ def _faults_of_used_edges(
         )
 
 
-def _chamfer(before: Curve, after: Curve, size: float) -> tuple[Segment, float, float] | None:
+def _chamfer(before: Curve, after: Curve, size: float) -> Cut | None:
     """The straight cut that takes `size` [mm] of both curves at their common corner."""
     len1, len2 = before.length, after.length
     if size > min(len1, len2) * (1.0 + 1e-9):
@@ -148,13 +166,14 @@ def _chamfer(before: Curve, after: Curve, size: float) -> tuple[Segment, float, 
     return (cut, t_before, t_after) if cut.length > 1e-9 * size else None
 
 
-def _fillet(before: Curve, after: Curve, radius: float) -> tuple[Arc, float, float] | None:
+def _fillet(before: Curve, after: Curve, radius: float) -> Cut | None:
     """The arc of `radius` that is tangent to both curves near their common corner.
 
     Returns the arc, run from `before` to `after`, and the parameters at which it touches each.
+    Those between two straight edges are made all at once in `_line_fillets`.
     """
     if isinstance(before, Segment) and isinstance(after, Segment):
-        return _fillet_of_lines(before, after, radius)
+        return None
     t_in, t_out = before.tangent(1.0), after.tangent(0.0)
     turn = float(t_in[0] * t_out[1] - t_in[1] * t_out[0])
     if abs(turn) < 1e-7:
@@ -182,25 +201,40 @@ def _fillet(before: Curve, after: Curve, radius: float) -> tuple[Arc, float, flo
     return best[1:] if best else None
 
 
-def _fillet_of_lines(
-    before: Segment, after: Segment, radius: float
-) -> tuple[Arc, float, float] | None:
-    """The same for two straight edges, in plain floats: a part can have thousands."""
-    (ax, ay), (bx, by), (cx, cy) = before.start, before.end, after.end
-    len1, len2 = before.length, after.length
-    ux, uy, vx, vy = (bx - ax) / len1, (by - ay) / len1, (cx - bx) / len2, (cy - by) / len2
-    sine = ux * vy - uy * vx
-    if abs(sine) < 1e-7:
-        return None
-    side = math.copysign(1.0, sine)  # the centre lies on this side of both edges (+: left)
-    turn = math.atan2(sine, ux * vx + uy * vy)
-    back = radius * math.tan(abs(turn) / 2.0)  # from the corner to where the fillet touches
-    if back > min(len1, len2) * (1.0 + 1e-9):
-        return None
-    begin = math.atan2(-side * ux, side * uy)
-    centre = (bx - back * ux - side * radius * uy, by - back * uy + side * radius * ux)
-    t_before, t_after = max(0.0, 1.0 - back / len1), min(1.0, back / len2)
-    return Arc(centre, radius, begin, turn), t_before, t_after
+def _line_fillets(loop: Loop, curves: list[Curve], lengths: list[float]) -> dict[int, Cut]:
+    """The fillets that fit between two straight edges, by corner; a part can have thousands."""
+    n = len(loop.corners)
+    straight = [isinstance(curve, Segment) for curve in curves]
+    rows = [
+        i
+        for i, c in enumerate(loop.corners)
+        if 0.0 < c.round < math.inf and c.chamfer == 0.0 and straight[i] and straight[i - 1]
+    ]
+    if not rows:
+        return {}
+    at, long = np.array([c.at for c in loop.corners]), np.array(lengths)
+    here = np.array(rows)
+    before, corner, after = at[here - 1], at[here], at[(here + 1) % n]
+    radius = np.array([loop.corners[i].round for i in rows])
+    len1, len2 = long[here - 1], long[here]
+    u, v = (corner - before) / len1[:, None], (after - corner) / len2[:, None]
+    sine, cosine = u[:, 0] * v[:, 1] - u[:, 1] * v[:, 0], np.sum(u * v, axis=1)
+    side = np.sign(sine)  # the centre lies on this side of both edges (+: left)
+    turn = np.arctan2(sine, cosine)
+    back = radius * np.tan(np.abs(turn) / 2.0)  # from the corner to where the fillet touches
+    fits = (np.abs(sine) >= 1e-7) & (back <= np.minimum(len1, len2) * (1.0 + 1e-9))
+    begin = np.arctan2(-side * u[:, 0], side * u[:, 1])
+    normal = np.stack([-u[:, 1], u[:, 0]], axis=1)
+    centre = corner - back[:, None] * u + (side * radius)[:, None] * normal
+    t_before, t_after = np.maximum(0.0, 1.0 - back / len1), np.minimum(1.0, back / len2)
+    columns = (centre, radius, begin, turn, t_before, t_after, fits)
+    made: dict[int, Cut] = {}
+    for i, (x, y), r, start, sweep, one, other, ok in zip(
+        rows, *(column.tolist() for column in columns), strict=True
+    ):
+        if ok:
+            made[i] = Arc((x, y), r, start, sweep), one, other
+    return made
 
 
 def _offset_crossings(a: Curve, b: Curve, left: float) -> list[Point]:

@@ -9,18 +9,19 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
-from functools import cached_property
+from functools import cached_property, lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.model.boundary_curve import BoundaryCurve, area_under, extremes, turned
+from screenapp.model.boundary_curve import BoundaryCurve, area_under, turned
+from screenapp.model.curve_table import CurveTable
 from screenapp.model.curves import Curve, Segment
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.hole_curves import hole_curves
-from screenapp.model.loop_curves import edge_curves, loop_curves, sharp_places
+from screenapp.model.loop_curves import edge_curves, loop_curves, runs_clockwise, sharp_places
 from screenapp.model.members import all_holes
-from screenapp.model.part import Hole, Loop, LoopHole, Part, Point
+from screenapp.model.part import CircleHole, Hole, Loop, LoopHole, Part, Point, SlotHole
 
 __all__ = ["BoundaryCurve", "Shape", "edge_curves", "loop_curves", "shape_of"]
 
@@ -51,8 +52,14 @@ class Shape:
     def bounds(self) -> tuple[float, float, float, float]:
         """Smallest x, smallest y, largest x, largest y [mm] of the outline."""
         first, last = self.loops[0]
-        xs, ys = zip(*(p for c in self.curves[first:last] for p in extremes(c.curve)), strict=True)
-        return min(xs), min(ys), max(xs), max(ys)
+        boxes = self.table.boxes[first:last]
+        (x0, y0), (x1, y1) = boxes[:, :2].min(axis=0), boxes[:, 2:].max(axis=0)
+        return float(x0), float(y0), float(x1), float(y1)
+
+    @cached_property
+    def table(self) -> CurveTable:
+        """The pieces as arrays, for questions that go over all of them at once."""
+        return CurveTable.of(self.curves)
 
     @property
     def size(self) -> float:
@@ -99,18 +106,25 @@ def shape_of(part: Part) -> Shape:
             where = "outline" if hole_id is None else f"holes.{hole_id}"
             curves = loop_curves(loop, where, faults)
             corners += sharp_places(loop, curves)
+            if curves and runs_clockwise(loop) == (hole_id is None):
+                curves = [turned(c) for c in reversed(curves)]
+            if number:
+                curves = [BoundaryCurve(c.feature, c.kind, c.curve, number) for c in curves]
         else:
-            curves = hole_curves(loop, faults)
-        if sum(area_under(c.curve) for c in curves) < 0.0:  # drawn clockwise
-            curves = [turned(c) for c in reversed(curves)]
-        if hole_id is not None:
-            curves = [turned(c) for c in reversed(curves)]
+            curves = _rim(loop, number) or hole_curves(loop, faults)
         loops.append((len(pieces), len(pieces) + len(curves)))
-        pieces += [BoundaryCurve(c.feature, c.kind, c.curve, number) for c in curves]
+        pieces += curves
         hole_ids.append(hole_id)
     if faults:
         raise InvalidPartError.of(tuple(faults))
     return Shape(tuple(pieces), tuple(loops), tuple(hole_ids), tuple(corners))
+
+
+@lru_cache(maxsize=8192)
+def _rim(hole: CircleHole | SlotHole, number: int) -> list[BoundaryCurve]:
+    """The rim of a hole, clockwise, empty if it is at fault; most holes stay in an edit."""
+    rim = [turned(c) for c in reversed(hole_curves(hole, []))]
+    return [BoundaryCurve(c.feature, c.kind, c.curve, number) for c in rim]
 
 
 def _flatten(curve: Curve, tolerance: float) -> NDArray[np.float64]:

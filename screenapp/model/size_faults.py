@@ -8,13 +8,16 @@ from collections.abc import Iterator
 from screenapp.model.curves import Segment, arc_through
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST, SMALLEST
-from screenapp.model.features import everything, loops_of
+from screenapp.model.features import everything, ids_of, loops_of
 from screenapp.model.part import CircleHole, Corner, Hole, Loop, Part, Point, SlotHole
 from screenapp.model.pattern_faults import pattern_faults, zone_pattern_faults
 
 
 def id_faults(part: Part) -> list[Fault]:
     """Ids that are empty or borne by more than one thing."""
+    ids = list(ids_of(part))
+    if len(set(ids)) == len(ids) and "" not in ids:
+        return []
     faults: list[Fault] = []
     seen: dict[str, str] = {}
     for found in everything(part):
@@ -59,6 +62,10 @@ def size_faults(part: Part) -> list[Fault]:
 
 def _form_faults(form: Hole, group: str, word: str) -> Iterator[Fault]:
     """Centre and sizes of a circle or slot that is a hole or a zone."""
+    if isinstance(form, CircleHole) and SMALLEST <= form.diameter <= FARTHEST:
+        x, y = form.centre
+        if abs(x) <= FARTHEST and abs(y) <= FARTHEST:
+            return  # sound, as most are
     where, id_ = f"{group}.{form.id}", form.id
     noun = "hole" if group == "holes" else "zone"
     if isinstance(form, CircleHole | SlotHole):
@@ -99,6 +106,8 @@ def _loop_faults(loop: Loop, where: str, name: str) -> Iterator[Fault]:
 
 def _corner_faults(loop: Loop, where: str) -> Iterator[Fault]:
     for c in loop.corners:
+        if _plainly_sound(c):
+            continue
         yield from _point_faults(c.at, f"corner {c.id}", c.id, f"{where}.corners.{c.id}.at")
         if not c.sharp:
             yield from _cut_faults(c, "round", c.round, "radius", where)
@@ -107,6 +116,14 @@ def _corner_faults(loop: Loop, where: str) -> Iterator[Fault]:
         if e.through is not None:
             field = f"{where}.edges.{e.id}.through"
             yield from _point_faults(e.through, f"the arc point of edge {e.id}", e.id, field)
+
+
+def _plainly_sound(c: Corner) -> bool:
+    """Whether nothing can be wrong with a corner; a part can have thousands, most of them so."""
+    x, y = c.at
+    if not (abs(x) <= FARTHEST and abs(y) <= FARTHEST):  # False for what is not a number, too
+        return False
+    return c.sharp or (c.chamfer == 0.0 and SMALLEST <= c.round <= FARTHEST)
 
 
 def _cut_faults(c: Corner, name: str, size: float, what: str, where: str) -> Iterator[Fault]:

@@ -88,6 +88,6 @@ def _sound_shape(part: Part) -> tuple[Shape | None, CurveTable | None, list[Faul
         shape = shape_of(part)
     except InvalidPartError as error:
         return None, None, list(error.faults)
-    table = CurveTable.of(shape.curves)
+    table = shape.table
     faults = boundary_faults(shape, table)
     return (None, None, faults) if faults else (shape, table, [])
