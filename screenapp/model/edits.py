@@ -9,6 +9,7 @@ A part that an edit returns may still have faults (a hole half outside, a round 
 for `validity.faults_of` to tell, since they come and go while something is dragged.
 """
 
+from screenapp.model.edit_booleans import cut, join, ring_meets
 from screenapp.model.edit_holding import (
     add_case,
     add_load,
@@ -88,10 +89,12 @@ __all__ = [
     "add_zone",
     "break_pattern",
     "change_pattern",
+    "cut",
     "find",
     "hole_centre",
     "hole_to_zone",
     "insert_corner",
+    "join",
     "move",
     "move_corner",
     "move_cut",
@@ -115,6 +118,7 @@ __all__ = [
     "replace_support",
     "reshape_zone",
     "resize_hole",
+    "ring_meets",
     "set_chamfer",
     "set_edge_arc",
     "set_material",

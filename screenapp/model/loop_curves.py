@@ -99,6 +99,17 @@ def sharp_places(loop: Loop, pieces: list[BoundaryCurve]) -> list[tuple[str, Poi
     return places
 
 
+def corner_cuts(loop: Loop, curves: list[Curve]) -> dict[int, Cut]:
+    """The fillets and chamfers that fit, by number of their corner."""
+    ready = _line_fillets(loop, curves, [curve.length for curve in curves])
+    for i, corner in enumerate(loop.corners):
+        if not corner.sharp and i not in ready:
+            cut = _corner_cut(corner, curves[i - 1], curves[i], "", [])
+            if cut is not None:
+                ready[i] = cut
+    return ready
+
+
 def _corner_cut(
     corner: Corner, before: Curve, after: Curve, where: str, faults: list[Fault]
 ) -> Cut | None:
