@@ -135,6 +135,38 @@ class Arc:
 Curve = Segment | Arc
 
 
+def tangent_arc(start: Point, direction: float, end: Point) -> Curve:
+    """The arc that leaves `start` in a direction [rad] and ends in `end`; a segment straight on.
+
+    It turns through twice the angle between the direction and the chord (inscribed angle).
+
+    Example:
+        >>> round(tangent_arc((0.0, 0.0), 0.0, (1.0, 1.0)).radius, 12)
+        1.0
+    """
+    (ax, ay), (bx, by) = start, end
+    chord = math.hypot(bx - ax, by - ay)
+    half = math.remainder(math.atan2(by - ay, bx - ax) - direction, 2.0 * math.pi)
+    if chord == 0.0 or abs(half) < 1e-9 or math.pi - abs(half) < 1e-9:
+        return Segment(start, end)
+    radius = chord / (2.0 * abs(math.sin(half)))
+    side = math.copysign(1.0, half)
+    normal = direction + side * math.pi / 2.0
+    centre = (ax + radius * math.cos(normal), ay + radius * math.sin(normal))
+    return Arc(centre, radius, normal + math.pi, 2.0 * half)
+
+
+def arc_about(centre: Point, start: Point, towards: Point, left: bool) -> Curve:
+    """The arc about a centre from `start` to the direction of a place, left-handed or not."""
+    begin = math.atan2(start[1] - centre[1], start[0] - centre[0])
+    stop = math.atan2(towards[1] - centre[1], towards[0] - centre[0])
+    sweep = (stop - begin) % (2.0 * math.pi) if left else -((begin - stop) % (2.0 * math.pi))
+    radius = math.dist(centre, start)
+    if radius == 0.0 or sweep == 0.0:
+        return Segment(start, start)
+    return Arc(centre, radius, begin, sweep)
+
+
 def arc_through(start: Point, through: Point, end: Point) -> Curve:
     """The arc from `start` by `through` to `end`; a segment when the three lie on one line.
 

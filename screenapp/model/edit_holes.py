@@ -37,10 +37,16 @@ def add_slot_hole(
 
 
 def add_loop_hole(
-    part: Part, corners: Sequence[Point], through: Sequence[Point | None] | None = None
+    part: Part,
+    corners: Sequence[Point],
+    through: Sequence[Point | None] | None = None,
+    round_: float = 0.0,
 ) -> Part:
-    """Add a hole of any form; `through[i]` is the arc point of the edge after corner i."""
-    return _with_hole(part, LoopHole(new_id(part, "h"), new_loop(part, corners, through)))
+    """Add a hole of any form, every corner rounded by `round_` [mm].
+
+    `through[i]` is the arc point of the edge after corner i.
+    """
+    return _with_hole(part, LoopHole(new_id(part, "h"), new_loop(part, corners, through, round_)))
 
 
 def resize_hole(part: Part, hole: str, **sizes: float) -> Part:

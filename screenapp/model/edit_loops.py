@@ -25,9 +25,14 @@ from screenapp.model.shape import edge_curves
 
 
 def new_loop(
-    part: Part, corners: Sequence[Point], through: Sequence[Point | None] | None = None
+    part: Part,
+    corners: Sequence[Point],
+    through: Sequence[Point | None] | None = None,
+    round_: float = 0.0,
 ) -> Loop:
     """A loop with fresh ids; `through[i]` is the arc point of the edge from corner i to i + 1.
+
+    Every corner gets a fillet of radius `round_` [mm].
 
     Raises:
         EditError: too few corners, or a place that is no finite point.
@@ -46,7 +51,8 @@ def new_loop(
     c_ids, e_ids = new_ids(part, "c", n), new_ids(part, "e", n)
     return Loop(
         tuple(
-            Corner(i, must_be_point(p, f"corner {i}")) for i, p in zip(c_ids, corners, strict=True)
+            Corner(i, must_be_point(p, f"corner {i}"), float(round_))
+            for i, p in zip(c_ids, corners, strict=True)
         ),
         tuple(
             Edge(i, None if p is None else must_be_point(p, f"the arc point of edge {i}"))
@@ -56,11 +62,14 @@ def new_loop(
 
 
 def set_outline(
-    part: Part, corners: Sequence[Point], through: Sequence[Point | None] | None = None
+    part: Part,
+    corners: Sequence[Point],
+    through: Sequence[Point | None] | None = None,
+    round_: float = 0.0,
 ) -> Outcome:
     """Draw the outline anew; what was on the old outline's edges and corners goes with it."""
     bare = remove_outline(part)
-    after = replace(bare.part, outline=new_loop(bare.part, corners, through))
+    after = replace(bare.part, outline=new_loop(bare.part, corners, through, round_))
     return Outcome(settle(part, after), bare.lost)
 
 

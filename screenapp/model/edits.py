@@ -10,6 +10,7 @@ for `validity.faults_of` to tell, since they come and go while something is drag
 """
 
 from screenapp.model.edit_booleans import cut, join, ring_meets
+from screenapp.model.edit_copies import add_holes, copy_text, pasted_holes
 from screenapp.model.edit_holding import (
     add_case,
     add_load,
@@ -39,6 +40,14 @@ from screenapp.model.edit_loops import (
     set_round,
     straighten,
 )
+from screenapp.model.edit_mirror import (
+    MirrorLine,
+    mirror_half,
+    mirror_holes,
+    mirror_line_between,
+    mirror_line_of,
+)
+from screenapp.model.edit_offset import offset_edge
 from screenapp.model.edit_patterns import break_pattern, change_pattern, set_pattern
 from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_readings import (
@@ -76,10 +85,12 @@ from screenapp.model.features import Found, find, place_name
 __all__ = [
     "EditError",
     "Found",
+    "MirrorLine",
     "Outcome",
     "add_case",
     "add_circle_hole",
     "add_cut",
+    "add_holes",
     "add_limit",
     "add_load",
     "add_loop_hole",
@@ -89,12 +100,17 @@ __all__ = [
     "add_zone",
     "break_pattern",
     "change_pattern",
+    "copy_text",
     "cut",
     "find",
     "hole_centre",
     "hole_to_zone",
     "insert_corner",
     "join",
+    "mirror_half",
+    "mirror_holes",
+    "mirror_line_between",
+    "mirror_line_of",
     "move",
     "move_corner",
     "move_cut",
@@ -102,7 +118,9 @@ __all__ = [
     "move_probe",
     "new_id",
     "new_ids",
+    "offset_edge",
     "outline_from_rectangle",
+    "pasted_holes",
     "place_name",
     "rectangle_corners",
     "remove",

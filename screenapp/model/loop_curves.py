@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.model.boundary_curve import BoundaryCurve
+from screenapp.model.carriers import circle_circle, line_circle
 from screenapp.model.curves import Arc, Curve, Segment, arc_through
 from screenapp.model.errors import Fault
 from screenapp.model.part import Corner, Loop, Point
@@ -252,13 +253,13 @@ def _offset_crossings(a: Curve, b: Curve, left: float) -> list[Point]:
     """Points at the signed distance `left` to the left of both curves (extended), one an arc."""
     if isinstance(a, Segment) and isinstance(b, Arc):
         p, d = _offset_line(a, left)
-        return _line_circle(p, d, b.centre, _offset_radius(b, left))
+        return line_circle(p, d, b.centre, _offset_radius(b, left))
     if isinstance(a, Arc) and isinstance(b, Segment):
         p, d = _offset_line(b, left)
-        return _line_circle(p, d, a.centre, _offset_radius(a, left))
+        return line_circle(p, d, a.centre, _offset_radius(a, left))
     assert isinstance(a, Arc)
     assert isinstance(b, Arc)
-    return _circle_circle(a.centre, _offset_radius(a, left), b.centre, _offset_radius(b, left))
+    return circle_circle(a.centre, _offset_radius(a, left), b.centre, _offset_radius(b, left))
 
 
 def _offset_line(s: Segment, left: float) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
@@ -268,33 +269,3 @@ def _offset_line(s: Segment, left: float) -> tuple[NDArray[np.float64], NDArray[
 
 def _offset_radius(arc: Arc, left: float) -> float:
     return arc.radius - math.copysign(1.0, arc.sweep) * left
-
-
-def _line_circle(
-    p: NDArray[np.float64], d: NDArray[np.float64], centre: Point, radius: float
-) -> list[Point]:
-    if radius < 0.0:
-        return []
-    rel = p - np.asarray(centre)
-    along = -float(rel @ d)
-    foot = rel + along * d
-    half2 = radius * radius - float(foot @ foot)
-    if half2 < 0.0:
-        return []
-    half = math.sqrt(half2)
-    return [
-        (float(p[0] + (along + h) * d[0]), float(p[1] + (along + h) * d[1])) for h in (-half, half)
-    ]
-
-
-def _circle_circle(c1: Point, r1: float, c2: Point, r2: float) -> list[Point]:
-    far = math.dist(c1, c2)
-    if r1 < 0.0 or r2 < 0.0 or far == 0.0:
-        return []
-    along = (far * far + r1 * r1 - r2 * r2) / (2.0 * far)
-    half2 = r1 * r1 - along * along
-    if half2 < 0.0:
-        return []
-    ux, uy = (c2[0] - c1[0]) / far, (c2[1] - c1[1]) / far
-    half = math.sqrt(half2)
-    return [(c1[0] + along * ux - h * uy, c1[1] + along * uy + h * ux) for h in (-half, half)]
