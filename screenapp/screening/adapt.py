@@ -21,6 +21,7 @@ from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import measure
+from screenapp.screening.probes import LEAST_SCALE
 from screenapp.screening.structural import reading_places
 
 Floats = NDArray[np.float64]
@@ -40,7 +41,11 @@ def order(element: str) -> int:
 
 @dataclass(frozen=True)
 class Target:
-    """A number that is not settled: its place [mm] and its half band over what is allowed."""
+    """A number that somebody waits for: its place [mm] and its half band over what is allowed.
+
+    With an excess of up to 1 it is settled; the mesh there must not become coarser again, or the
+    number would move by what the coarser mesh lacks.
+    """
 
     at: Point
     excess: float
@@ -53,33 +58,37 @@ def targets(
     cases: Sequence[CaseFindings],
     readings: Sequence[Reading],
 ) -> tuple[Target, ...]:
-    """Where the next mesh must be finer because a peak or a reading is not settled."""
+    """Where the next mesh must be as fine or finer for the sake of a peak or a reading."""
     found: list[Target] = []
+    tops: dict[str, float] = {}
     for case in cases:
         top = case.peaks[0].estimate.value if case.peaks else 0.0
+        tops[case.case] = top
         for peak in case.peaks:
-            if peak.estimate.trust == "unsettled":
+            if peak.estimate.trust != "rising":
                 allowed = part.mesh.tolerance * max(peak.estimate.value, 0.5 * top)
                 found.append(Target(peak.at, _excess(peak.estimate, allowed)))
             beside = peak.structural
-            if beside is not None and beside.trust == "unsettled":
+            if beside is not None:
                 excess = _excess(beside, part.mesh.tolerance * abs(beside.value))
                 near = [s for s in spots if math.dist(s.at, peak.at) < 1e-9 * shape.size]
                 places = [p for s in near for p in reading_places(part, shape, s)]
                 found += [Target(p, excess) for p in places]
     for reading in readings:
-        if reading.trust == "unsettled":
-            estimate = reading.values["von_mises"]
-            allowed = part.mesh.tolerance * abs(estimate.value)
-            found.append(Target(reading.at, _excess(estimate, allowed)))
+        stresses = [e for name, e in reading.values.items() if not name.startswith("u_")]
+        if any(e.trust == "rising" for e in stresses):
+            continue
+        scale = max(reading.values["von_mises"].value, LEAST_SCALE * tops.get(reading.case, 0.0))
+        worst = max(_excess(e, part.mesh.tolerance * scale) for e in stresses)
+        found.append(Target(reading.at, worst))
     return tuple(found)
 
 
 def _excess(estimate: Estimate, allowed: float) -> float:
     half = 0.5 * (estimate.high - estimate.low)
-    if allowed <= 0.0 or not math.isfinite(half):
+    if estimate.trust == "settled" or allowed <= 0.0 or not math.isfinite(half):
         return 1.0
-    return max(1.0, half / allowed)
+    return max(1.0 + 1e-9, half / allowed)
 
 
 def wanted_sizes(
@@ -87,7 +96,7 @@ def wanted_sizes(
     last: Pass,
     spots: Sequence[SingularSpot],
     first_sizes: Sequence[float],
-    open_targets: Sequence[Target] = (),
+    watched: Sequence[Target] = (),
 ) -> Floats:
     """Wanted element size [mm] at each node of the last mesh, (n_nodes,).
 
@@ -96,19 +105,20 @@ def wanted_sizes(
         last: the last pass.
         spots: singular places.
         first_sizes: element size [mm] at each spot on the first pass.
-        open_targets: numbers that are not settled yet.
+        watched: numbers that somebody waits for.
     """
     mesh = last.fields.mesh
     size = nodal_sizes(last)
     factor = np.minimum(_energy_factor(part, last), _point_factor(part, last))
     wanted = size * np.clip(factor, FACTOR_LEAST, FACTOR_MOST)
     p = order(last.fields.solution.element)
-    for target in open_targets:
+    for target in watched:
         far = np.hypot(*(mesh.nodes - target.at).T)
-        here = size[int(np.argmin(far))]
-        finer = here * min(0.7, max(FACTOR_LEAST, target.excess ** (-1.0 / p)))
-        near = far < 2.0 * here
-        wanted[near] = np.minimum(wanted[near], finer)
+        near = far < 2.0 * size[int(np.argmin(far))]
+        shrink = 1.0
+        if target.excess > 1.0:
+            shrink = min(0.7, max(FACTOR_LEAST, target.excess ** (-1.0 / p)))
+        wanted[near] = np.minimum(wanted[near], shrink * size[near])
     for spot, first in zip(spots, first_sizes, strict=True):
         far = np.hypot(*(mesh.nodes - spot.at).T)
         here = int(np.argmin(far))

@@ -22,12 +22,12 @@ from screenapp.screening.peaks import (
     piece_at,
     place_in_words,
 )
-from screenapp.screening.spots import spot_at
-from screenapp.screening.trust import Sample, growth, judge, worst
+from screenapp.screening.spots import sizes_at_points, spot_at
+from screenapp.screening.trust import Sample, growth, judge, judge_creeping, worst
 
 Floats = NDArray[np.float64]
 
-_LEAST_SCALE = 0.05
+LEAST_SCALE = 0.05
 """A reading is judged against at least this share of the case's largest stress or displacement:
 how closely a place is known where next to nothing happens does not matter."""
 
@@ -51,11 +51,14 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     for k, case in enumerate(part.cases):
         largest = passes[-1].measure_max("von_mises", k)
         moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
+        creeping = sizes_at_points(spots, case.id, passes)
         for i, probe in enumerate(part.readings):
             if np.isfinite(read[-1].stress[k, i]).all():
                 spot = spot_at(spots, probe.at, case.id, ON_BOUNDARY * shape.size)
                 found.append(
-                    _reading(part, shape, read, k, i, probe, case.id, spot, largest, moved)
+                    _reading(
+                        part, shape, read, k, i, probe, case.id, spot, creeping, largest, moved
+                    )
                 )
     return tuple(found)
 
@@ -69,6 +72,7 @@ def _reading(
     probe: Probe,
     case: str,
     spot: SingularSpot | None,
+    creeping: Sequence[float] | None,
     largest: float,
     largest_moved: float,
 ) -> Reading:
@@ -77,30 +81,31 @@ def _reading(
     columns = [_quantities(part, values.stress[k, i], values.displacement[k, i]) for values in read]
     von_mises = [column["von_mises"] for column in columns]
     # a tensor is as close as its largest parts: a component near zero has no accuracy of its own
-    stress_scale = max(von_mises[-1], _LEAST_SCALE * largest)
+    stress_scale = max(von_mises[-1], LEAST_SCALE * largest)
     moved = float(np.hypot(columns[-1]["u_x"], columns[-1]["u_y"]))
-    moved_scale = max(moved, _LEAST_SCALE * largest_moved)
+    moved_scale = max(moved, LEAST_SCALE * largest_moved)
     values: dict[str, Estimate] = {}
     rates: dict[str, float] = {}
     for name in READING_QUANTITIES:
-        stress = not name.startswith("u_")
+        numbers = [column[name] for column in columns]
+        if name.startswith("u_"):
+            values[name] = _moved(numbers, read, creeping, part.mesh.tolerance, moved_scale)
+            continue
         samples = [
-            Sample(
-                abs(c[name]) if spot else c[name],
-                float(v.size[i]),
-                float(v.doubt[k, i]) if stress else 0.0,
-                "edge" if piece >= 0 or not stress else "inside",
-            )
-            for c, v in zip(columns, read, strict=True)
+            Sample(abs(n) if spot else n, float(v.size[i]), float(v.doubt[k, i]))
+            for n, v in zip(numbers, read, strict=True)
         ]
-        scale = stress_scale if stress else moved_scale
-        estimate = judge(samples, part.mesh.tolerance, scale, rate if stress else 0.0)
+        estimate = judge(samples, part.mesh.tolerance, stress_scale, rate)
         rates[name] = growth(samples)
-        values[name] = _signed(estimate, columns[-1][name]) if spot else estimate
+        values[name] = _signed(estimate, numbers[-1]) if spot else estimate
     trust = worst([estimate.trust for estimate in values.values()])
     why = ""
     if trust == "rising":
-        why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
+        stress = [values[name].trust for name in READING_QUANTITIES if not name.startswith("u_")]
+        if worst(stress) != "rising":
+            why = "a force or a support at a point moves the part without bound as it is refined"
+        else:
+            why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
     elif trust == "unsettled":
         why = "screen the part again to settle this reading"
     return Reading(
@@ -118,6 +123,21 @@ def _reading(
         rates["von_mises"],
         part.mesh.tolerance * stress_scale,
     )
+
+
+def _moved(
+    numbers: Sequence[float],
+    read: Sequence[PointValues],
+    creeping: Sequence[float] | None,
+    tolerance: float,
+    scale: float,
+) -> Estimate:
+    """A displacement [mm] with its band, from its value on every pass."""
+    if creeping is None:
+        samples = [Sample(n, float(v.size.mean())) for n, v in zip(numbers, read, strict=True)]
+        return judge(samples, tolerance, scale)
+    samples = [Sample(n, size) for n, size in zip(numbers, creeping, strict=True)]
+    return judge_creeping(samples, tolerance, scale)
 
 
 def _quantities(part: Part, stress: Floats, displacement: Floats) -> dict[str, float]:

@@ -45,8 +45,9 @@ from screenapp.screening.limits import judge_limits, overall
 from screenapp.screening.passes import Pass
 from screenapp.screening.plain_quads import plain_losses
 from screenapp.screening.probes import readings
+from screenapp.screening.spots import sizes_at_points
 from screenapp.screening.tracking import track
-from screenapp.screening.trust import LEAST_PASSES, Sample, judge
+from screenapp.screening.trust import LEAST_PASSES, Sample, judge, judge_creeping
 from screenapp.screening.wall_gauge import wall_gauges
 
 MOST_PASSES = 7
@@ -170,7 +171,7 @@ def _cases(
     last = passes[-1].fields
     for k, case in enumerate(part.cases):
         peaks: tuple[Peak, ...] = track(part, shape, passes, spots, k)
-        moved, at = _displacement(part, passes, k)
+        moved, at = _displacement(part, passes, k, sizes_at_points(spots, case.id, passes))
         total = resultant(last.mesh.nodes, nodal_forces(part, shape, last.mesh, case))
         found.append(
             CaseFindings(
@@ -187,20 +188,27 @@ def _cases(
     return tuple(found)
 
 
-def _displacement(part: Part, passes: Sequence[Pass], k: int) -> tuple[Estimate, Point]:
-    """The largest displacement with its band, and where it is."""
+def _displacement(
+    part: Part, passes: Sequence[Pass], k: int, creeping: Sequence[float] | None
+) -> tuple[Estimate, Point]:
+    """The largest displacement with its band, and where it is.
+
+    `creeping` has the element sizes where a force or a support acts at a point, if one does.
+    """
     samples: list[Sample] = []
     at = (0.0, 0.0)
-    for this in passes:
+    for number, this in enumerate(passes):
         f = this.fields
-        size = np.hypot(*f.solution.displacements[k].T)
-        i = int(np.argmax(size))
+        moved = np.hypot(*f.solution.displacements[k].T)
+        i = int(np.argmax(moved))
         at = (float(f.mesh.nodes[i, 0]), float(f.mesh.nodes[i, 1]))
-        samples.append(Sample(float(size[i]), float(this.sizes.mean())))
+        size = creeping[number] if creeping is not None else float(this.sizes.mean())
+        samples.append(Sample(float(moved[i]), size))
     value = samples[-1].value
     if value == 0.0:
         return Estimate(0.0, 0.0, 0.0, "settled"), at
-    return judge(samples, part.mesh.tolerance, value), at
+    judged = judge if creeping is None else judge_creeping
+    return judged(samples, part.mesh.tolerance, value), at
 
 
 def _findings(

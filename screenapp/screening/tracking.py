@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from typing import Literal
 
 import numpy as np
 
@@ -120,11 +119,10 @@ def _sample(
 ) -> Sample:
     """The value of the same peak on another pass."""
     point = np.array([raw.at])
-    place: Literal["edge", "inside"] = "inside" if raw.piece < 0 else "edge"
     values = earlier.read(point)
     size, doubt = float(values.size[0]), float(values.doubt[k, 0])
     if any(p is raw for p in earlier.peaks(name, k)):
-        return Sample(raw.value, _finest(raw.size, size, spot), doubt, place)
+        return Sample(raw.value, _finest(raw.size, size, spot), doubt)
     near = [
         p
         for p in earlier.peaks(name, k)
@@ -133,8 +131,8 @@ def _sample(
     ]
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))
-        return Sample(best.value, _finest(best.size, size, spot), doubt, place)
-    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt, place)
+        return Sample(best.value, _finest(best.size, size, spot), doubt)
+    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt)
 
 
 def _finest(of_side: float, of_element: float, spot: SingularSpot | None) -> float:

@@ -30,7 +30,9 @@ Ints = NDArray[np.int64]
 Mapping = Callable[[Floats, Floats], tuple[Floats, Floats]]
 """Takes ξ, η in [0, 1] (arrays of one shape) to x, y [mm]."""
 
-STEEL = Material("steel", 210_000.0, 0.3, 7850.0, 235.0, 360.0, 12e-6, "typical, from memory")
+STEEL = Material(
+    "steel", 210_000.0, 0.3, 7850.0, 235.0, 360.0, 12e-6, source="typical, from memory"
+)
 WALL = Wall(1.0, "steel")
 
 
