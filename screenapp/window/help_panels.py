@@ -1,4 +1,4 @@
-"""Two panels beside the work: the list of keys, and what the program is and is not."""
+"""What the program is and is not, in a panel beside the work."""
 
 from __future__ import annotations
 
@@ -6,7 +6,6 @@ from PySide6.QtCore import Qt
 from PySide6.QtGui import QFont
 from PySide6.QtWidgets import (
     QDialog,
-    QGridLayout,
     QLabel,
     QPushButton,
     QScrollArea,
@@ -17,22 +16,6 @@ from PySide6.QtWidgets import (
 from screenapp import __version__
 from screenapp.window import theme
 
-Keys = tuple[tuple[str, str], ...]
-
-SHEET_KEYS: Keys = (
-    ("Tab, Shift+Tab", "next value, value before"),
-    ("Enter, F2 or Space", "change the value; open a chooser"),
-    ("a figure or letter", "type a new value"),
-    ("Enter", "accept"),
-    ("Esc", "restore"),
-    ("Del", "remove the row the value stands in"),
-)
-READING_KEYS: Keys = (
-    ("Up, Down", "line before, next line"),
-    ("Enter or F2", "rename the reading"),
-    ("Del", "remove it"),
-    ("Ctrl+C", "copy the table as text"),
-)
 CAUTIONS = (
     "A screening, not an approval: local codes and a licensed engineer decide.",
     "Parts are flat, of one wall, linear elastic, loaded in their plane, and move little against "
@@ -83,38 +66,6 @@ class Panel(QDialog):
         label.setWordWrap(True)
         label.setProperty("quiet", quiet)
         self.column.addWidget(label)
-
-    def keys(self, keys: Keys) -> None:
-        """Keys beside what they do."""
-        grid = QGridLayout()
-        grid.setContentsMargins(0, 0, 0, 0)
-        grid.setHorizontalSpacing(16)
-        grid.setVerticalSpacing(4)
-        grid.setColumnMinimumWidth(0, 168)
-        grid.setColumnStretch(1, 1)
-        for row, (key, what) in enumerate(keys):
-            grid.addWidget(QLabel(key), row, 0)
-            said = QLabel(what)
-            said.setProperty("quiet", True)
-            grid.addWidget(said, row, 1)
-        self.column.addLayout(grid)
-
-
-def keys_panel(parent: QWidget, window_keys: Keys, board_keys: Keys) -> Panel:
-    """Every key of the program."""
-    panel = Panel("Keys", parent)
-    for title, keys in (
-        ("Everywhere", window_keys),
-        ("On the board", board_keys),
-        ("In the sheet", SHEET_KEYS),
-        ("In the readings", READING_KEYS),
-    ):
-        if keys:
-            panel.heading(title)
-            panel.keys(keys)
-    panel.column.addStretch(1)
-    panel.resize(520, 600)
-    return panel
 
 
 def about_panel(parent: QWidget) -> Panel:

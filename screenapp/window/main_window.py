@@ -11,16 +11,15 @@ from PySide6.QtGui import (
     QCloseEvent,
     QDragEnterEvent,
     QDropEvent,
-    QKeySequence,
     QShowEvent,
 )
-from PySide6.QtWidgets import QMainWindow, QSplitter
+from PySide6.QtWidgets import QDialog, QMainWindow, QSplitter
 
 from screenapp.model import findings_cache
 from screenapp.model.edits import EditError
 from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
-from screenapp.model.part import Part, Probe, StressLimit
+from screenapp.model.part import DisplayUnits, Part, Probe, StressLimit
 from screenapp.model.part_json import screening_key
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
@@ -28,10 +27,12 @@ from screenapp.window.ask import Ask
 from screenapp.window.board.board import Board
 from screenapp.window.board.lens_bar import LensBar
 from screenapp.window.board.lens_painter import LensPainter
+from screenapp.window.commands import Command
+from screenapp.window.commands_panel import READINGS, SHEET, CommandsPanel
 from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
 from screenapp.window.files import Files, with_readings
-from screenapp.window.help_panels import Keys, Panel, about_panel, keys_panel
+from screenapp.window.help_panels import about_panel
 from screenapp.window.jobs import MakeMesher, Screener, ScreenFunction
 from screenapp.window.readings import Readings
 from screenapp.window.settings import Settings
@@ -67,7 +68,7 @@ class MainWindow(QMainWindow):
         self.sheet = Sheet(self.document)
         self.files.take_typing = self.sheet.take_typing
         self._read_last: tuple[Probe, ...] = ()
-        self._panels: dict[str, Panel] = {}
+        self._panels: dict[str, QDialog] = {}
         self._warmed = False
         self._lay_out()
         self.actions_ = Actions(self)
@@ -133,9 +134,20 @@ class MainWindow(QMainWindow):
         if table.figures.lines and not table.selectionModel().hasSelection():
             table.selectRow(0)
 
-    def show_keys(self) -> None:
-        """List every key."""
-        self._show_panel("keys", lambda: keys_panel(self, self._window_keys(), self._board_keys()))
+    def show_commands(self) -> None:
+        """List every command with its key; the list runs them too."""
+        self._show_panel("commands", lambda: CommandsPanel(lambda: self.commands, self))
+
+    @property
+    def commands(self) -> tuple[Command, ...]:
+        """Everything that can be done by a key, in menus, on the board and in the sheet."""
+        return (*self.board.commands, *self.actions_.commands, *SHEET, *READINGS)
+
+    def switch_units(self) -> None:
+        """Show the other units."""
+        part = self.document.part
+        units: DisplayUnits = "mm-N-MPa" if part.display_units != "mm-N-MPa" else "in-lbf-ksi"
+        changes.set_units(self.document, units)
 
     def show_about(self) -> None:
         """Say what this is, with the cautions."""
@@ -286,7 +298,7 @@ class MainWindow(QMainWindow):
         self.sheet.foot.end("")
         self.sheet.scroll_area.verticalScrollBar().setValue(0)
 
-    def _show_panel(self, name: str, make: Callable[[], Panel]) -> None:
+    def _show_panel(self, name: str, make: Callable[[], QDialog]) -> None:
         panel = self._panels.get(name)
         if panel is None:
             panel = make()
@@ -295,30 +307,6 @@ class MainWindow(QMainWindow):
         panel.show()
         panel.raise_()
         panel.activateWindow()
-
-    def _window_keys(self) -> Keys:
-        keys = []
-        for action in self.actions_.by_name.values():
-            shortcuts = action.shortcuts()
-            if shortcuts:
-                form = QKeySequence.SequenceFormat.NativeText
-                text = action.text().replace("&", "").rstrip("…")
-                if action is self.actions_.by_name["undo"]:
-                    text = "Undo"
-                elif action is self.actions_.by_name["redo"]:
-                    text = "Redo"
-                keys.append((", ".join(s.toString(form) for s in shortcuts), text.lower()))
-        keys.append(("Alt+1 … Alt+6", "choose a lens"))
-        return tuple(keys)
-
-    def _board_keys(self) -> Keys:
-        tools = [(tool.key, tool.name.lower()) for tool in self.board.tools if tool.key]
-        return (
-            *tools,
-            ("+, −", "zoom in, zoom out"),
-            ("Home", "fit the part in the board"),
-            ("Esc", "one step back; put the tool down; select nothing"),
-        )
 
     def _accept_typing(self) -> None:
         """What is still being typed in the sheet counts."""

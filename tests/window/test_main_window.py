@@ -375,14 +375,7 @@ def test_the_keyboard_goes_to_board_sheet_and_readings(main: MainWindow) -> None
     assert main.focusWidget() is main.board.canvas
 
 
-def test_the_keys_panel_lists_every_key_and_does_not_stop_the_work(main: MainWindow) -> None:
-    QTest.keyClick(main, Qt.Key.Key_F1)
-    panel = main._panels["keys"]
-    assert not panel.isModal()
-    words = {label.text() for label in panel.findChildren(QLabel)}
-    assert {"save", "screen the part", "undo", "Everywhere", "In the sheet"} <= words
-    QTest.keyClick(panel, Qt.Key.Key_Escape)
-    settle()
+def test_the_cautions_are_told(main: MainWindow) -> None:
     main.show_about()
     words = {label.text() for label in main._panels["about"].findChildren(QLabel)}
     assert any(word.startswith("A screening, not an approval") for word in words)

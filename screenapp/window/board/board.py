@@ -7,6 +7,7 @@ from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 
 from screenapp.window import theme
+from screenapp.window.board.board_commands import board_commands
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.elided_label import ElidedLabel
 from screenapp.window.board.empty_board import EmptyBoard
@@ -14,22 +15,8 @@ from screenapp.window.board.grid import unit_length
 from screenapp.window.board.quantity import warm_up
 from screenapp.window.board.tool_strip import ToolStrip
 from screenapp.window.board.tools.every import every_tool
+from screenapp.window.commands import run_pressed
 from screenapp.window.document import Document
-
-KEYS = (
-    ("+, −", "zoom in, zoom out; the wheel does so about the cursor"),
-    ("Home", "fit the part in the board"),
-    ("Space, middle or right button", "drag the board"),
-    ("Tab, or a figure", "type exact values while drawing"),
-    ("Enter", "accept; close the ring"),
-    ("Ctrl, held", "let nothing snap"),
-    ("Page Down, Page Up", "select the next or the last thing"),
-    ("F2, double-click", "edit what is selected exactly"),
-    ("arrows", "nudge by a grid step; ten with Shift"),
-    ("Delete", "remove what is selected"),
-    ("Esc", "one step back; put the tool down; select nothing"),
-)
-"""Keys of the board besides those of its tools, with what they do."""
 
 
 class Board(QWidget):
@@ -38,6 +25,7 @@ class Board(QWidget):
     Attributes:
         document: what is shown.
         canvas: results are painted on `canvas.view_box` too.
+        commands: everything that can be done here by a key.
 
     Signals:
         sample_wanted: path of a sample to open, chosen on the empty board.
@@ -50,6 +38,7 @@ class Board(QWidget):
         self.document = document
         self.canvas = Canvas(document)
         self.tools = every_tool(self.canvas)
+        self.commands = board_commands(self)
         self.strip = ToolStrip(self.tools)
         self._history = document.history
         self._fitted = False
@@ -104,9 +93,22 @@ class Board(QWidget):
         self.strip.show_tool(name)
         self._show_empty()
 
+    def take_by_key(self, name: str) -> None:
+        """Put a tool in hand and the keyboard on the canvas."""
+        self.canvas.setFocus(Qt.FocusReason.ShortcutFocusReason)
+        self.take(name)
+
     def fit(self) -> None:
         """Show the whole part."""
         self.canvas.fit()
+
+    def zoom_in(self) -> None:
+        """Magnify about the middle."""
+        self.canvas.zoom(1.25)
+
+    def zoom_out(self) -> None:
+        """Show more."""
+        self.canvas.zoom(0.8)
 
     def apply_theme(self) -> None:
         """Take the colours of the present theme."""
@@ -123,26 +125,11 @@ class Board(QWidget):
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """Keys that the canvas did not use: tools, zoom, fit, Escape."""
-        plain = not event.modifiers() & ~Qt.KeyboardModifier.KeypadModifier
-        key, text = event.key(), event.text().upper()
-        control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
-        tool = next((t for t in self.tools if t.key == text), None) if plain else None
-        if tool is not None:
-            self.canvas.setFocus(Qt.FocusReason.ShortcutFocusReason)
-            self.take(tool.name)
-        elif key == Qt.Key.Key_Home:
-            self.fit()
-        elif text == "+" or (control and key in (Qt.Key.Key_Plus, Qt.Key.Key_Equal)):
-            self.canvas.zoom(1.25)
-        elif text == "-" or (control and key == Qt.Key.Key_Minus):
-            self.canvas.zoom(0.8)
-        elif key == Qt.Key.Key_Escape:
-            self._step_back()
+        if run_pressed(self.commands, event):
+            self.canvas.refresh()
+            event.accept()
         else:
             super().keyPressEvent(event)
-            return
-        self.canvas.refresh()
-        event.accept()
 
     def showEvent(self, event: QShowEvent) -> None:
         """Fit once the size is known."""
@@ -165,7 +152,8 @@ class Board(QWidget):
         if self.empty.isVisibleTo(self):
             self.empty.centre()
 
-    def _step_back(self) -> None:
+    def step_back(self) -> None:
+        """Drop the last thing half done; else put the tool down; else select nothing."""
         tool = self.canvas.tool
         if tool is not None and tool.step_back():
             return

@@ -13,7 +13,7 @@ from screenapp.window.document import Document, Lens
 
 LENSES: tuple[Lens, ...] = get_args(Lens)
 
-_TIPS: dict[Lens, str] = {
+TIPS: dict[Lens, str] = {
     "Shape": "The part as drawn, nothing painted on it",
     "Mesh": "The elements of the last screening",
     "Utilisation": "Stress over what the limit allows: above 1.00 the part does not hold there",
@@ -70,8 +70,8 @@ class LensBar(QWidget):
         button.setCursor(Qt.CursorShape.PointingHandCursor)
         button.setAccessibleName(f"Lens {lens}")
         shown = keys.toString(QKeySequence.SequenceFormat.NativeText)
-        button.setToolTip(f"{lens}: {_TIPS[lens]} ({shown})")
-        button.setAccessibleDescription(_TIPS[lens])
+        button.setToolTip(f"{lens}: {TIPS[lens]} ({shown})")
+        button.setAccessibleDescription(TIPS[lens])
         button.clicked.connect(lambda: self._document.look(lens=lens))
         shortcut = QShortcut(keys, self)
         shortcut.activated.connect(lambda: self._document.look(lens=lens))

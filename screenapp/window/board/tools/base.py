@@ -14,6 +14,7 @@ from screenapp.model.part import Part, Point
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.hit_test import Hit
 from screenapp.window.board.snapping import Snap, SnapKind
+from screenapp.window.commands import Command, run_pressed
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -84,9 +85,13 @@ class Tool:
     def double(self, place: Place) -> None:
         """A double-click; the first press and release came before."""
 
+    def commands(self) -> tuple[Command, ...]:
+        """What its own keys do while it is in hand."""
+        return ()
+
     def key_press(self, event: QKeyEvent) -> bool:
         """A key; True if it was used."""
-        return False
+        return run_pressed(self.commands(), event)
 
     def step_back(self) -> bool:
         """Escape: drop the last thing half done; False if there was none."""

@@ -74,7 +74,7 @@ class DrawTool(Tool):
             self.canvas.entry.forget()
             self.enter()
             return True
-        return False
+        return super().key_press(event)
 
     def enter(self) -> None:
         """Enter with nothing typed."""

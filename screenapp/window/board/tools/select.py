@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from functools import partial
 from typing import TYPE_CHECKING, ClassVar
 
 from PySide6.QtCore import QPointF, QRectF, Qt
@@ -21,6 +22,7 @@ from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.tools.choosing import all_of, in_box, next_after
 from screenapp.window.board.tools.drag import Drag, grip_of
 from screenapp.window.board.typed_entry import EntryField
+from screenapp.window.commands import Command, run_pressed
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -28,12 +30,8 @@ if TYPE_CHECKING:
 DRAG_FROM = 4.0
 """How far the cursor must go with the button down before it drags [px]."""
 
-STEPS = {
-    Qt.Key.Key_Left: (-1.0, 0.0),
-    Qt.Key.Key_Right: (1.0, 0.0),
-    Qt.Key.Key_Up: (0.0, 1.0),
-    Qt.Key.Key_Down: (0.0, -1.0),
-}
+STEPS = {"left": (-1.0, 0.0), "right": (1.0, 0.0), "up": (0.0, 1.0), "down": (0.0, -1.0)}
+"""Ways to nudge, in grid steps."""
 
 
 class SelectTool(Tool):
@@ -52,6 +50,7 @@ class SelectTool(Tool):
         self._at: Point | None = None
         self._box: QPointF | None = None
         self.editing: str | None = None
+        self._commands = self._made_commands()
 
     @property
     def cursor(self) -> Qt.CursorShape:
@@ -160,28 +159,77 @@ class SelectTool(Tool):
 
     # keys
 
+    def commands(self) -> tuple[Command, ...]:
+        """Select, remove, nudge, edit, and go from one thing to the next."""
+        return self._commands
+
     def key_press(self, event: QKeyEvent) -> bool:
-        """Delete, nudge, exact editor, everything, and from one thing to the next."""
-        key, selection = event.key(), self.canvas.document.selection
-        control = bool(event.modifiers() & Qt.KeyboardModifier.ControlModifier)
-        if key == Qt.Key.Key_A and control:
-            self.canvas.document.select(*all_of(self.canvas.drawn))
-        elif key in (Qt.Key.Key_PageDown, Qt.Key.Key_PageUp):
-            self._select_next(1 if key == Qt.Key.Key_PageDown else -1)
-        elif not selection:
-            return False
-        elif key in (Qt.Key.Key_Delete, Qt.Key.Key_Backspace):
-            self._remove(selection)
-        elif key in STEPS and not control:
-            far = 10.0 if event.modifiers() & Qt.KeyboardModifier.ShiftModifier else 1.0
-            self._nudge(selection, *(s * far for s in STEPS[Qt.Key(key)]))
-        elif key in (Qt.Key.Key_F2, Qt.Key.Key_Return, Qt.Key.Key_Enter):
-            at = self.canvas.drawn.anchor_of(selection[0])
-            px = None if at is None else self.canvas.frame_now.px(at)
-            self.edit(selection[0], px)
-        else:
-            return False
-        return True
+        """Its commands."""
+        return run_pressed(self._commands, event)
+
+    def _made_commands(self) -> tuple[Command, ...]:
+        def chosen() -> bool:
+            return self.canvas.tool is self and bool(self.canvas.document.selection)
+
+        nudges = [
+            Command(
+                f"Nudge {way}",
+                "Moves what is selected by a grid step.",
+                (way.capitalize(),),
+                partial(self._nudge, *step),
+                ready=chosen,
+            )
+            for way, step in STEPS.items()
+        ]
+        far = [
+            Command(
+                f"Nudge far {way}",
+                "Moves what is selected by ten grid steps.",
+                (f"Shift+{way.capitalize()}",),
+                partial(self._nudge, 10.0 * step[0], 10.0 * step[1]),
+                ready=chosen,
+            )
+            for way, step in STEPS.items()
+        ]
+        return (
+            Command("Select everything", "All corners, holes and probes.", ("Ctrl+A",), self._all),
+            Command(
+                "Next thing",
+                "Selects the thing after the selected one and says what it is.",
+                ("PgDown",),
+                partial(self._select_next, 1),
+            ),
+            Command(
+                "Thing before",
+                "Selects the thing before the selected one and says what it is.",
+                ("PgUp",),
+                partial(self._select_next, -1),
+            ),
+            Command(
+                "Edit what is selected",
+                "Opens the fields for exact values beside it.",
+                ("F2", "Return", "Enter"),
+                self._edit_selected,
+                ready=chosen,
+            ),
+            Command(
+                "Remove what is selected",
+                "Says what else goes with it; undo brings it back.",
+                ("Del", "Backspace"),
+                self._remove_selected,
+                ready=chosen,
+            ),
+            *nudges,
+            *far,
+        )
+
+    def _all(self) -> None:
+        self.canvas.document.select(*all_of(self.canvas.drawn))
+
+    def _edit_selected(self) -> None:
+        first = self.canvas.document.selection[0]
+        at = self.canvas.drawn.anchor_of(first)
+        self.edit(first, None if at is None else self.canvas.frame_now.px(at))
 
     # exact editor
 
@@ -289,15 +337,15 @@ class SelectTool(Tool):
         self.canvas.preview(None)
         self.canvas.entry.close_row()
 
-    def _remove(self, selection: tuple[str, ...]) -> None:
-        part = self.canvas.document.part
+    def _remove_selected(self) -> None:
+        part, selection = self.canvas.document.part, self.canvas.document.selection
         ids = tuple(i for i in selection if find(part, i) is not None)
         loose = tuple(i for i in ids if i not in edges_of(part))
         if self.apply("remove", lambda: edits.remove(part, *(loose or ids))):
             self.canvas.document.select()
 
-    def _nudge(self, selection: tuple[str, ...], dx: float, dy: float) -> None:
-        part = self.canvas.document.part
+    def _nudge(self, dx: float, dy: float) -> None:
+        part, selection = self.canvas.document.part, self.canvas.document.selection
         step = grid_step(self.canvas.frame_now.scale, part.display_units)
         if why := Drag(part, selection, (0.0, 0.0), (0.0, 0.0)).held_by():
             self.say(why)

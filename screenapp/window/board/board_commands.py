@@ -1,0 +1,50 @@
+"""The commands of the board: its tools, the view, and the gestures that no menu has."""
+
+from __future__ import annotations
+
+from functools import partial
+from typing import TYPE_CHECKING
+
+from screenapp.window.commands import Command
+
+if TYPE_CHECKING:
+    from screenapp.window.board.board import Board
+
+GESTURES = (
+    Command("Zoom about the cursor", "Turn the wheel.", ("wheel",)),
+    Command("Move the board", "Drag it.", ("Space, middle or right button, held",)),
+    Command("Hold snaps off", "While it is down, nothing snaps.", ("Ctrl, held",)),
+    Command(
+        "Type exact values",
+        "A figure or Tab opens the fields beside the cursor; = begins an expression.",
+        ("Tab, = or a figure",),
+    ),
+    Command("Accept", "Takes what is typed; closes the ring of a chain.", ("Enter",)),
+    Command(
+        "Select several",
+        "Shift and a click adds; a drag from empty board draws a box.",
+        ("Shift, held",),
+    ),
+    Command("Edit in place", "Opens the thing or number under the cursor.", ("double-click",)),
+)
+
+
+def board_commands(board: Board) -> tuple[Command, ...]:
+    """Tools first, then what they do, then the view."""
+    tools = [
+        Command(tool.name, tool.line, (tool.key,), partial(board.take_by_key, tool.name))
+        for tool in board.tools
+    ]
+    within = [command for tool in board.tools for command in tool.commands()]
+    view = [
+        Command("Zoom in", "Magnifies the board.", ("+", "Ctrl++", "Ctrl+="), board.zoom_in),
+        Command("Zoom out", "Shows more of the board.", ("-", "Ctrl+-"), board.zoom_out),
+        Command("Fit", "Shows the whole part.", ("Home",), board.fit),
+        Command(
+            "Step back",
+            "Drops what is half done, then the tool, then the selection.",
+            ("Esc",),
+            board.step_back,
+        ),
+    ]
+    return (*tools, *within, *view, *GESTURES)
