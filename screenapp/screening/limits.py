@@ -12,6 +12,7 @@ from collections.abc import Sequence
 from screenapp.model.allowables import allowable
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
 from screenapp.model.part import DisplacementLimit, Part, StressLimit
+from screenapp.model.place_words import point_words
 
 
 def limit_name(limit: StressLimit | DisplacementLimit) -> str:
@@ -122,9 +123,7 @@ def _why_undecided(peak: Peak, allowed: float, case: str) -> str:
 def _displacement(limit: DisplacementLimit, case: CaseFindings) -> LimitFindings:
     moved = case.displacement_max
     used = _scaled(moved, 1.0 / limit.most)
-    # six decimals: a node on an axis may lie beside it by a rounding
-    x, y = (round(v, 6) + 0.0 for v in case.displacement_at)
-    place = f"({x:.4g}, {y:.4g}) mm"
+    place = point_words(case.displacement_at)
     if moved.trust == "settled" and moved.high < limit.most:
         verdict: Verdict = "holds"
         reason = ""

@@ -16,6 +16,7 @@ from scipy.signal import find_peaks
 from screenapp.model.curves import Arc
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part, Point
+from screenapp.model.place_words import edge_words, point_words
 from screenapp.model.shape import BoundaryCurve, Shape
 from screenapp.model.solution import principal, von_mises
 
@@ -155,9 +156,9 @@ def feature_of(shape: Shape, piece: int) -> str:
 
 
 def place_in_words(shape: Shape, piece: int, at: Point) -> str:
-    """Where a point of the boundary lies, e.g. "hole h2, 344°", "fillet c3", "edge e5"."""
+    """Where a point of the boundary lies, e.g. "hole h2, 344°", "fillet c3", "edge e5 at c5"."""
     if piece < 0:
-        return f"inside, at ({at[0]:.4g}, {at[1]:.4g}) mm"
+        return f"inside, at {point_words(at)}"
     curve: BoundaryCurve = shape.curves[piece]
     for corner, point in shape.sharp_corners:
         if math.dist(point, at) < 1e-6 * shape.size:
@@ -168,7 +169,7 @@ def place_in_words(shape: Shape, piece: int, at: Point) -> str:
         centre = _hole_centre(shape, curve.loop)
         angle = math.degrees(math.atan2(at[1] - centre[1], at[0] - centre[0])) % 360.0
         return f"hole {curve.feature}, {angle:.0f}°"
-    return f"edge {curve.feature}"
+    return edge_words(shape, piece, at)
 
 
 def _hole_centre(shape: Shape, loop: int) -> Point:

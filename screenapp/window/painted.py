@@ -47,6 +47,8 @@ class Painting:
         values: scalars, (n_nodes,) or (n_elements, 9), stored units; None paints no field.
         title: what the values are.
         kind: their kind, which gives the unit; None for a plain share.
+        ends: the range that colours are shared out over where some values keep rising; None for
+            all of the values.
         deformation: the factor drawn; 0 where the part is drawn as it is.
         mesh: strength of the mesh lines, 0 to 1.
         zones, cards: as named.
@@ -64,6 +66,7 @@ class Painting:
     cards: tuple[Card, ...] = ()
     probes: tuple[tuple[Point, str], ...] = ()
     caption: str = ""
+    ends: tuple[float, float] | None = None
 
 
 @dataclass(frozen=True, eq=False)

@@ -20,7 +20,7 @@ from screenapp.window.cards import (
     with_history,
 )
 from screenapp.window.document import Lens, View
-from screenapp.window.painted import Card, Painting, Source, Zone
+from screenapp.window.painted import Card, Floats, Painting, Source, Zone
 
 MOST_CARDS = 4
 """Cards shown at once; more would hide the part."""
@@ -75,7 +75,29 @@ def _stress(view: View, source: Source) -> Painting:
         cards=cards,
         probes=probe_values(source, view.stress, "stress"),
         caption=caption,
+        ends=_trusted_ends(source, view.stress, values),
     )
+
+
+def _trusted_ends(source: Source, quantity: str, values: Floats) -> tuple[float, float] | None:
+    """The range of what does not keep rising; None where nothing does.
+
+    A rising value would take the colours from all the rest, and more so with each pass.  The upper
+    end is the largest peak that is not rising, or else the largest value outside rising zones.
+    """
+    rising = [zone.elements for zone in _zones(source) if zone.trust == "rising"]
+    if not rising:
+        return None
+    mesh = source.fields.mesh
+    steady = np.ones(mesh.n_nodes, dtype=bool)
+    steady[mesh.quads[np.concatenate(rising)]] = False
+    if not steady.any():
+        return None
+    low, high = float(values[steady].min()), float(values[steady].max())
+    known = [p for p in peaks_of(source, quantity) if p.estimate.trust != "rising"]
+    if known:
+        high = max(peak.estimate.value for peak in known)
+    return low, high
 
 
 def _utilisation(_view: View, source: Source) -> Painting:

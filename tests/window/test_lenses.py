@@ -7,14 +7,15 @@ from dataclasses import replace
 
 import numpy as np
 import pytest
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QColor, QImage
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
-from screenapp.model.findings import Trust
+from screenapp.model.findings import Estimate, Trust
 from screenapp.model.part import Part
+from screenapp.model.solution import von_mises
 from screenapp.window import theme
 from screenapp.window.board.board import Board
 from screenapp.window.board.lens_bar import LENSES, LensBar
@@ -421,3 +422,77 @@ def test_old_picture_stays_in_its_own_colours_until_the_new_one_is_there(bench: 
     bench.document.look(lens="Stress")
     assert close(bench.board.canvas.grab().toImage().pixelColor(px), before, 8)
     assert not close(bench.colour_at(-40.0, 22.0), before, 30)
+
+
+def test_a_rising_peak_does_not_take_the_colours_from_the_rest(bench: Bench) -> None:
+    """The bar ends at the largest value outside the rising zone and says what lies beyond."""
+    bench.document.look(lens="Stress")
+    bench.screen()
+    content = bench.painter.bar.content
+    assert content is not None
+    assert content.beyond == ""
+    whole = content.scale.high
+    assert whole == pytest.approx(3.0 * made.REMOTE, rel=0.01)  # Kirsch 1898: at the hole
+    bench.screen("rising")
+    content = bench.painter.bar.content
+    assert content is not None
+    assert content.beyond == "rising beyond"
+    zones = bench.painter._shown.painting.zones
+    steady = np.ones(MESH.n_nodes, dtype=bool)
+    steady[MESH.quads[zones[0].elements]] = False
+    fields = bench.document.findings.last
+    outside = von_mises(fields.stress.nodal[0])[steady].max()
+    assert content.scale.high == pytest.approx(float(outside), rel=1e-6)
+    assert "rising beyond" in bench.painter.bar.accessibleDescription()
+    assert not bench.painter.bar._ends[1].text().startswith("≥")
+    # a settled peak beside it sets the end
+    found = bench.document.findings
+    settled = replace(
+        found.cases[0].peaks[0],
+        estimate=Estimate(97.0, 96.0, 98.0, "settled"),
+        at=(60.0, 40.0),
+        place="edge e2 at c3",
+    )
+    first = replace(found.cases[0], peaks=(*found.cases[0].peaks, settled))
+    bench.document.set_findings(replace(found, cases=(first, *found.cases[1:])))
+    content = bench.painter.bar.content
+    assert content is not None
+    assert content.scale.high == pytest.approx(97.0)
+    # a typed range is the user's own
+    bench.painter._take_range(0.0, 200.0)
+    content = bench.painter.bar.content
+    assert content is not None
+    assert (content.scale.high, content.beyond) == (200.0, "")
+
+
+def test_few_elements_of_large_error_do_not_leave_the_map_white(bench: Bench) -> None:
+    bench.document.look(lens="Trust")
+    found = made.findings(bench.document.part, bench.document.key, MESH)
+    error = found.fields[0].stress.energy_error.copy()
+    error[:, 0] = 1.0
+    stress = replace(found.fields[0].stress, energy_error=error)
+    bench.document.set_findings(replace(found, fields=(replace(found.fields[0], stress=stress),)))
+    content = bench.painter.bar.content
+    assert content is not None
+    assert content.scale.high == 3.0
+    assert content.over
+
+
+@pytest.mark.parametrize("size", [(620, 420), (760, 560), (1150, 860)])
+def test_nothing_at_the_edges_covers_a_fitted_part(bench: Bench, size: tuple[int, int]) -> None:
+    """Colour bar, choosers and scale bar lie beside the part after a fit."""
+    bench.board.resize(*size)
+    bench.document.look(lens="Stress")
+    bench.screen()
+    QApplication.processEvents()
+    bench.board.fit()
+    QApplication.processEvents()
+    frame = bench.board.canvas.frame_now
+    x, y = made.HALF_LENGTH, made.HALF_WIDTH
+    part = QRectF(frame.px((-x, y)), frame.px((x, -y)))
+    canvas = bench.board.canvas.rect()
+    assert QRectF(canvas).contains(part)
+    bar, heading = bench.painter.bar, bench.painter.heading
+    assert part.right() < bar.x() + bar._bar().left()
+    assert part.top() > heading.geometry().bottom()
+    assert part.bottom() < canvas.bottom() - 44  # the scale bar with its figure

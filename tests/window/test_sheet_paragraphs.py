@@ -10,6 +10,7 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
+from screenapp.model.errors import Fault
 from screenapp.model.findings import PlainLoss, WallGauge
 from screenapp.model.part import (
     BearingLoad,
@@ -411,3 +412,41 @@ def _leave() -> object:
     from PySide6.QtCore import QEvent
 
     return QEvent(QEvent.Type.Leave)
+
+
+def test_a_reason_is_told_once_and_what_stands_above_is_counted(sheet: Sheet) -> None:
+    """The head tells it in full; Findings and Verdict do not tell it again."""
+    document = sheet.document
+    found = made_up(document.part, "undecided", "Undecided: the corner c4 is sharp: round it")
+    why = "the corner c4 is sharp"
+    peak = replace(
+        found.cases[0].peaks[0],
+        estimate=replace(found.cases[0].peaks[0].estimate, trust="rising"),
+        place="corner c4",
+        why=why,
+        mend="round it",
+    )
+    other = replace(peak, place="corner c1", why="a support ends at corner c1", feature="c1")
+    limit = replace(found.limits[0], verdict="undecided", reason=f"{why}: round it")
+    told = "a caution of the part that the wall's paragraph tells"
+    document._faults_of = (document.part, (Fault(told, "look", "wall", blocks=False),))
+    found = replace(
+        found,
+        reasons=(f"{why}: round it",),
+        cases=(replace(found.cases[0], peaks=(peak, other)), *found.cases[1:]),
+        limits=(limit,),
+        cautions=(told, "a caution of the screening alone"),
+    )
+    document.set_findings(found)
+    settle()
+    findings, verdict = the(sheet, FindingsParagraph), the(sheet, VerdictParagraph)
+    assert isinstance(findings, FindingsParagraph)
+    assert isinstance(verdict, VerdictParagraph)
+    said = " ".join(texts(findings))
+    assert "c4 is sharp" not in said
+    assert "A support ends at corner c1. Round it." in said
+    said = " ".join(texts(verdict))
+    assert "c4 is sharp" not in said
+    assert "A caution of the screening alone." in said
+    assert told not in said.lower()
+    assert "One caution stands in the paragraphs above." in said

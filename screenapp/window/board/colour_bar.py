@@ -22,6 +22,7 @@ from PySide6.QtWidgets import QLineEdit, QPushButton, QWidget
 
 from screenapp.report.colours import Scale
 from screenapp.window import theme
+from screenapp.window.board.hatching import hatch_brush
 from screenapp.window.board.overlay import Anchor
 from screenapp.window.board.ticks import end_text, ticks
 
@@ -32,6 +33,7 @@ TAKEN = LABELS + BAR + MARGIN + 8
 
 TALLEST, SHORTEST = 320, 140
 _HEAD = 36  # room for the title above the bar
+_CAP = 10  # height of the hatched cap over a bar that leaves rising values out
 
 
 @dataclass(frozen=True, eq=False)
@@ -47,6 +49,7 @@ class BarContent:
         marks: values [shown units] with texts that are always marked, in bold.
         over: whether values lie above the upper end.
         read: turns a typed text into a stored value; raises ValueError with words for the user.
+        beyond: said over a hatched cap where what lies above the upper end has no value; or "".
     """
 
     title: str
@@ -57,6 +60,7 @@ class BarContent:
     marks: tuple[tuple[float, str], ...]
     over: bool
     read: Callable[[str], float]
+    beyond: str = ""
 
 
 class ColourBar(QWidget):
@@ -108,7 +112,7 @@ class ColourBar(QWidget):
         unit = content.title.rpartition(", ")[2] if "," in content.title else ""
         for button, value, word in zip(self._ends, (low, high), ("Lower", "Upper"), strict=True):
             text = end_text(value, low, high)
-            if word == "Upper" and content.over:
+            if word == "Upper" and content.over and not content.beyond:
                 text = f"≥ {text}"
             button.setText(text)
             button.setEnabled(content.editable)
@@ -120,6 +124,7 @@ class ColourBar(QWidget):
         self._reset.setVisible(content.typed)
         self.setAccessibleDescription(
             f"{content.title}: colours from {self._ends[0].text()} to {self._ends[1].text()}"
+            + (f", {content.beyond}" if content.beyond else "")
         )
         self.settle()
         self.update()
@@ -139,7 +144,8 @@ class ColourBar(QWidget):
         for button, y in zip(self._ends, (bar.bottom(), bar.top()), strict=True):
             button.setGeometry(left, int(y) - 10, WIDTH - left, 20)
         beside = QRegion(int(bar.left()) - 6, 24, WIDTH, self.height() - 24)
-        self.setMask(beside.united(QRegion(0, 0, WIDTH, 26)))  # the rest is the board's
+        title = QRegion(0, 0, WIDTH, 26 + self._lowered())
+        self.setMask(beside.united(title))  # the rest is the board's
         self._reset.setGeometry(WIDTH - 80, int(bar.bottom()) + 12, 76, 20)
         self.raise_()
 
@@ -228,6 +234,7 @@ class ColourBar(QWidget):
         painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.setPen(theme.colour("quiet"))
         painter.drawText(head, Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter, title)
+        self._draw_beyond(painter, bar, content)
         painter.drawImage(bar, _strip(content.scale, max(2, round(bar.height() * 2))))
         painter.setPen(QPen(theme.colour("ink", 0.7), 1.0))
         painter.drawRect(bar)
@@ -259,8 +266,28 @@ class ColourBar(QWidget):
                 text,
             )
 
+    def _draw_beyond(self, painter: QPainter, bar: QRectF, content: BarContent) -> None:
+        """A hatched cap: the bar ends here, the values do not."""
+        if not content.beyond:
+            return
+        cap = QRectF(bar.left(), bar.top() - _CAP, bar.width(), _CAP)
+        colour = theme.colour("bad")
+        painter.fillRect(cap, hatch_brush(colour, self.devicePixelRatioF()))
+        painter.setPen(QPen(colour, 1.0))
+        painter.drawRect(cap)
+        painter.drawText(
+            QRectF(6, cap.top() - 16, WIDTH - 12, 15),
+            Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter,
+            content.beyond,
+        )
+
+    def _lowered(self) -> int:
+        """How far the bar begins lower, for the cap and its words [px]."""
+        return 28 if self._content is not None and self._content.beyond else 0
+
     def _bar(self) -> QRectF:
-        return QRectF(WIDTH - LABELS - BAR, _HEAD, BAR, self.height() - _HEAD - 40)
+        head = _HEAD + self._lowered()
+        return QRectF(WIDTH - LABELS - BAR, head, BAR, self.height() - head - 40)
 
     @staticmethod
     def _shown_range(content: BarContent) -> tuple[float, float]:

@@ -19,6 +19,12 @@ from screenapp.window.painted import Painting
 LEAST_SHARE_SHOWN = 1.5
 """The bar of the estimated error reaches at least this far, so that 1.0 is on it."""
 
+MOST_SHARE_SHOWN = 3.0
+"""... and at most this far: the few elements at a rising place would leave all others white."""
+
+BEYOND = "rising beyond"
+"""Said at the upper end of a bar that leaves rising values out."""
+
 EDITABLE: dict[Lens, KindName] = {"Stress": "stress", "Displacement": "length"}
 """Lenses whose range can be typed, and what is typed."""
 
@@ -31,7 +37,10 @@ def scale_of(lens: Lens, painting: Painting, typed: tuple[float, float] | None) 
         return colours.utilisation(high)
     if lens == "Trust":
         p = theme.current()
-        return colours.error_share(max(high, LEAST_SHARE_SHOWN), p.paper, p.ink)
+        high = min(max(high, LEAST_SHARE_SHOWN), MOST_SHARE_SHOWN)
+        return colours.error_share(high, p.paper, p.ink)
+    if painting.ends is not None:
+        low, high = painting.ends
     if typed is not None:
         low, high = typed
     elif low >= 0.0:
@@ -68,4 +77,5 @@ def bar_content(
         marks,
         float(np.max(painting.values)) > scale.high * (1 + 1e-9),
         read,
+        "" if painting.ends is None or typed else BEYOND,
     )

@@ -14,8 +14,12 @@ EMPTY_VIEW = QRectF(-20.0, -20.0, 240.0, 160.0)
 FARTHEST, NEAREST = 1e-2, 1e4
 """Bounds of the zoom [px/mm]."""
 
-ROOM = 0.16
-"""Room left round a fitted part, relative to its size."""
+LEFT, TOP, RIGHT, BOTTOM = 56.0, 88.0, 108.0, 64.0
+"""Room round a fitted part [px]: for symbols at its left, choosers and words above, the colour bar
+at the right, the scale bar below; none of them ever covers a fitted part."""
+
+LEAST_SHARE = 0.4
+"""The part has at least this share of the view, however small that is."""
 
 
 class ZoomView(pg.GraphicsView):  # type: ignore[misc]
@@ -53,14 +57,22 @@ class ZoomView(pg.GraphicsView):  # type: ignore[misc]
         return Frame(scene * self.viewportTransform())
 
     def show_box(self, bounds: tuple[float, float, float, float] | None) -> None:
-        """Show smallest x, y to largest x, y [mm] with some room; the empty board for None."""
+        """Show smallest x, y to largest x, y [mm] clear of what lies over the view's edges; the
+        empty board for None."""
         if bounds is None:
             self.view_box.setRange(EMPTY_VIEW, padding=0.0)
             return
         x0, y0, x1, y1 = bounds
-        room = ROOM * max(x1 - x0, y1 - y0, 1e-3)
-        box = QRectF(x0 - room, y0 - room, x1 - x0 + 2 * room, y1 - y0 + 2 * room)
-        self.view_box.setRange(box, padding=0.0)
+        wide, tall = max(float(self.width()), 1.0), max(float(self.height()), 1.0)
+        inner_wide = max(wide - LEFT - RIGHT, LEAST_SHARE * wide)
+        inner_tall = max(tall - TOP - BOTTOM, LEAST_SHARE * tall)
+        scale = min(inner_wide / max(x1 - x0, 1e-3), inner_tall / max(y1 - y0, 1e-3))
+        # the middle of the part goes to the middle of the room that is left
+        left = (wide - inner_wide) * LEFT / (LEFT + RIGHT)
+        top = (tall - inner_tall) * TOP / (TOP + BOTTOM)
+        x = 0.5 * (x0 + x1) - (left + 0.5 * inner_wide) / scale
+        y = 0.5 * (y0 + y1) + (top + 0.5 * inner_tall) / scale
+        self.view_box.setRange(QRectF(x, y - tall / scale, wide / scale, tall / scale), padding=0.0)
 
     def zoom(self, factor: float, about: QPointF | None = None) -> None:
         """Magnify by `factor`, keeping the place at `about` [px] where it is."""

@@ -9,12 +9,14 @@ from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
+from screenapp.model.place_words import NAUGHT
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.history_plot import HistoryPlot
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.reasons import head_says
 from screenapp.window.sheet.rows import RowOf
 from screenapp.window.traced import Traced, figure_of, traced_number
 
@@ -56,7 +58,7 @@ class FindingsParagraph(Paragraph):
             _columns(part), tuple(_line(part, c, p) for c, p in peaks), self.outdated()
         )
         self._show_history()
-        self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks))])
+        self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks, findings))])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
         self.reactions.set(self._reaction_rows(case) if case else [])
@@ -86,7 +88,7 @@ class FindingsParagraph(Paragraph):
         units = self.document.part.display_units
         moved = estimate_text(case.displacement_max, "displacement", units)
         q = Quantities(units)
-        x, y = case.displacement_at
+        x, y = (0.0 if abs(v) < NAUGHT else v for v in case.displacement_at)
         at = f"({q.bare(x, 'length')}, {q.show(y, 'length')})"
         text = f"{case.name}: moves by at most {moved} at {at}."
         return RowOf(case.case, (), (Words(text, quiet=self.outdated()),))
@@ -136,7 +138,8 @@ def _line(part: Part, case: CaseFindings, peak: Peak) -> Line:
         texts.append(use_text(part, peak))
     texts.append(peak.estimate.trust)
     q = Quantities(part.display_units)
-    at = f"at x {q.bare(peak.at[0], 'length')}, y {q.show(peak.at[1], 'length')}"
+    x, y = (0.0 if abs(v) < NAUGHT else v for v in peak.at)
+    at = f"at x {q.bare(x, 'length')}, y {q.show(y, 'length')}"
     tip = "\n".join(filter(None, (at, peak.why, peak.mend)))
     return Line(peak.feature or f"peak {case.case} {peak.at}", tuple(texts), tip)
 
@@ -165,8 +168,11 @@ def _shown_peaks(part: Part, findings: Findings) -> list[tuple[CaseFindings, Pea
     return peaks[:MOST_PEAKS]
 
 
-def _doubtful(peaks: list[tuple[CaseFindings, Peak]]) -> list[tuple[CaseFindings, Peak]]:
-    seen: set[str] = set()
+def _doubtful(
+    peaks: list[tuple[CaseFindings, Peak]], findings: Findings | None
+) -> list[tuple[CaseFindings, Peak]]:
+    """Peaks whose reason is still to be told: not those that the head of the sheet tells."""
+    seen: set[str] = {p.why for _, p in peaks if findings and head_says(findings, p.why)}
     kept = []
     for case, peak in peaks:
         if peak.why and peak.why not in seen:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from datetime import datetime
 
 from PySide6.QtCore import QRectF, Qt, Signal
@@ -17,6 +18,7 @@ from screenapp.window.sheet.field import sentence_of
 from screenapp.window.sheet.mark import Standing, StandingShape, colour_of
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.reasons import reasons_in_head
 from screenapp.window.sheet.rows import Cross
 from screenapp.window.sheet.sentence import Sentence
 
@@ -247,10 +249,10 @@ class Head(QWidget):
             again = Link("screen", "Screen it again", lambda _key: self.screen_wanted.emit())
             was = f"The part has changed since. It was: {findings.headline}. "
             return "out of date", "Out of date", (was, again, ".")
-        reasons = [r for r in findings.reasons if r.rstrip(".") not in findings.headline]
-        detail: tuple[Piece | str, ...] = (_sentences(reasons[:2]),) if reasons else ()
+        reasons = reasons_in_head(findings)
+        detail: tuple[Piece | str, ...] = (_sentences(reasons),) if reasons else ()
         return findings.verdict, findings.headline, detail
 
 
-def _sentences(texts: list[str]) -> str:
+def _sentences(texts: Sequence[str]) -> str:
     return " ".join(f"{t[:1].upper()}{t[1:].rstrip('.')}." for t in texts)

@@ -7,6 +7,7 @@ from screenapp.window.sheet.field import capital
 from screenapp.window.sheet.limits_table import LimitsTable
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
+from screenapp.window.sheet.reasons import head_says
 from screenapp.window.sheet.rows import RowOf
 
 ALWAYS = "A screening, not an approval: local codes and a licensed engineer decide."
@@ -38,7 +39,7 @@ class VerdictParagraph(Paragraph):
         self.reasons.set(
             [RowOf(f"reason {i}", (), (Words(t, quiet=quiet),)) for i, t in enumerate(texts)]
         )
-        cautions = [f"{capital(c)}." for c in findings.cautions] if findings else []
+        cautions = self._cautions(findings) if findings else []
         self.cautions.set(
             [RowOf(f"caution {i}", (), (Words(t, colour="doubt"),)) for i, t in enumerate(cautions)]
         )
@@ -46,15 +47,30 @@ class VerdictParagraph(Paragraph):
             return ("The part has not been screened.",)
         return ()
 
+    def _cautions(self, findings: Findings) -> list[str]:
+        """The cautions, those that the paragraphs above tell counted alone."""
+        told = {fault.cause for fault in self.document.faults}
+        new = [f"{capital(c)}." for c in findings.cautions if c not in told]
+        above = len(findings.cautions) - len(new)
+        if above:
+            things = "One caution stands" if above == 1 else f"{above} cautions stand"
+            new.append(f"{things} in the paragraphs above.")
+        return new
+
     def outdated(self) -> bool:
         """The verdict belongs to an older part."""
         return self.document.findings is not None and not self.document.current
 
 
 def _reasons(findings: Findings) -> list[str]:
-    said = [f"{capital(reason)}." for reason in findings.reasons]
+    """The reasons that the head of the sheet has no room for."""
+    said = [f"{capital(r)}." for r in findings.reasons if not head_says(findings, r)]
     for limit in findings.limits:
-        if limit.reason and not any(_same(limit, text) for text in said):
+        if (
+            limit.reason
+            and not head_says(findings, limit.reason)
+            and not any(_same(limit, text) for text in said)
+        ):
             said.append(f"{capital(limit.reason)}.")
     return said
 
