@@ -117,6 +117,84 @@ class Reading:
     allowed: float | None = None
 
 
+CUT_QUANTITIES = ("normal", "along", "shear", "von_mises")
+"""What is read along a cut [MPa]: stress across it (tension is positive), stress along it, shear
+(positive from start to end on the body left of the cut), von Mises stress."""
+
+
+@dataclass(frozen=True)
+class SectionForces:
+    """What the material beyond a cut does to the free body on its left.
+
+    Attributes:
+        normal: N [N], positive in tension.
+        shear: V [N], along the cut from start to end.
+        moment: M about the middle of the section [N·mm], positive where it stretches the end.
+    """
+
+    normal: float
+    shear: float
+    moment: float
+
+
+@dataclass(frozen=True)
+class CutSpan:
+    """One stretch of material on a cut.
+
+    Attributes:
+        distances: places along the cut, from its start [mm], rising.
+        values: of each of CUT_QUANTITIES there [MPa].
+        half_bands: of the same [MPa].
+        membrane: mean of the normal stress [MPa].
+        bending: linear part of it at the end of the span [MPa].
+        beam: stress of beam theory at begin and end, from the forces on the free body [MPa];
+            None where there is no free body.
+    """
+
+    distances: tuple[float, ...]
+    values: dict[str, tuple[float, ...]]
+    half_bands: dict[str, tuple[float, ...]]
+    membrane: Estimate
+    bending: Estimate
+    beam: tuple[float, float] | None = None
+
+
+@dataclass(frozen=True)
+class CutFindings:
+    """A cut read in one case.
+
+    Attributes:
+        start, end: of the cut when it was read [mm].
+        spans: the stretches of material; none if it misses the part.
+        normal, shear, moment: section forces by integrating the stress, signs as in
+            `SectionForces` [N, N, N·mm].
+        applied: the same from the loads and supports on the free body; None where the cut does not
+            divide the part.
+        largest: largest von Mises stress on the cut [MPa].
+        largest_at: its distance from the start [mm].
+        why: why it is not settled.
+    """
+
+    cut: str
+    name: str
+    case: str
+    start: Point
+    end: Point
+    spans: tuple[CutSpan, ...]
+    normal: Estimate
+    shear: Estimate
+    moment: Estimate
+    applied: SectionForces | None
+    largest: Estimate
+    largest_at: float
+    why: str = ""
+
+    @property
+    def trust(self) -> Trust:
+        """Of its largest stress."""
+        return self.largest.trust
+
+
 @dataclass(frozen=True)
 class LimitFindings:
     """One limit in one case: how much of it is used (1.0 is all), with band and verdict."""
@@ -233,6 +311,7 @@ class Findings:
         mass_kg: mass of the part [kg].
         area: of the part [mm²].
         cases, readings, limits: as named; readings list every probe for every case.
+        cuts: every cut for every case.
         mesh: the last mesh.
         timing: seconds by stage ("meshing", "solving", "recovery", "total").
         cautions: sentences that belong beside the verdict (a point load, a fallback mesh ...).
@@ -253,6 +332,7 @@ class Findings:
     timing: dict[str, float]
     cautions: tuple[str, ...] = ()
     fields: tuple[Fields, ...] = ()
+    cuts: tuple[CutFindings, ...] = ()
 
     @property
     def last(self) -> Fields | None:

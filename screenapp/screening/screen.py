@@ -41,6 +41,7 @@ from screenapp.model.shape import Shape
 from screenapp.model.validity import check, faults_of
 from screenapp.screening.adapt import targets, wanted_sizes
 from screenapp.screening.capacity import refuse_beyond_memory
+from screenapp.screening.cuts import cuts
 from screenapp.screening.limits import judge_limits, overall
 from screenapp.screening.passes import Pass
 from screenapp.screening.plain_quads import plain_losses
@@ -256,6 +257,7 @@ def _findings(
         area=area,
         cases=cases,
         readings=read,
+        cuts=cuts(part, shape, passes),
         limits=limits,
         mesh=MeshFindings(
             part.mesh.element,

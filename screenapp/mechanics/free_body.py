@@ -1,0 +1,146 @@
+"""What acts on one side of a cut: the free body that an engineer would draw.
+
+Loads are integrated along the sides that lie on the body (a side that the cut divides counts as far
+as it reaches), weight over its elements, and supports give their forces at its nodes.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+import shapely
+from numpy.typing import NDArray
+
+from screenapp.mechanics import shape_functions
+from screenapp.mechanics.equilibrium import resultant
+from screenapp.mechanics.loads import body_force, side_tractions
+from screenapp.mechanics.quadrature import gauss_line, gauss_square
+from screenapp.mechanics.straight_cut import StraightCut
+from screenapp.model.findings import SectionForces
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import Case, Part, PointLoad
+from screenapp.model.shape import Shape
+from screenapp.model.solution import Solution
+
+Floats = NDArray[np.float64]
+
+FLAT = 1e-5
+"""Arcs are flattened to this share of the part's size for the question what lies on the body."""
+
+
+def section_forces(
+    part: Part, shape: Shape, mesh: Mesh, solution: Solution, case: int, cut: StraightCut
+) -> SectionForces | None:
+    """Section forces that keep the body left of the cut in balance.
+
+    None where the cut does not divide the part in two, or the supports' forces were not kept.
+    """
+    body = body_left_of(shape, cut)
+    if body is None or solution.support_forces is None:
+        return None
+    total = _on_body(part, shape, mesh, solution.support_forces[case], part.cases[case], body)
+    middle = cut.start + centroid(cut) * cut.along
+    force = -total[:2]
+    about = total[2] - (middle[0] * total[1] - middle[1] * total[0])
+    return SectionForces(float(force @ cut.normal), float(force @ cut.along), float(about))
+
+
+def centroid(cut: StraightCut) -> float:
+    """Distance of the section's middle from the start of the cut [mm], one thickness taken."""
+    lengths = np.ptp(cut.spans, axis=1)
+    return float((lengths * cut.spans.mean(axis=1)).sum() / lengths.sum())
+
+
+def body_left_of(shape: Shape, cut: StraightCut) -> shapely.Geometry | None:
+    """The part of the material left of the cut, None if the cut leaves it in one piece."""
+    if not len(cut.spans):
+        return None
+    tolerance = FLAT * shape.size
+    rings = [shape.polyline(loop, tolerance) for loop in range(len(shape.loops))]
+    whole = shapely.Polygon(rings[0], rings[1:])
+    beyond = 10.0 * tolerance
+    blades = [
+        shapely.LineString(
+            [cut.start + (a - beyond) * cut.along, cut.start + (b + beyond) * cut.along]
+        )
+        for a, b in cut.spans
+    ]
+    lines = shapely.union_all([whole.boundary, *blades])
+    faces = [
+        face
+        for face in shapely.polygonize([lines]).geoms
+        if whole.contains(face.representative_point())
+    ]
+    if len(faces) < 2:
+        return None
+    middles = cut.start + cut.spans.mean(axis=1)[:, None] * cut.along
+    left = [_face_at(faces, p - beyond * cut.normal) for p in middles]
+    right = [_face_at(faces, p + beyond * cut.normal) for p in middles]
+    if set(left) & set(right):
+        return None
+    return shapely.union_all([faces[k] for k in sorted(set(left))])
+
+
+def _face_at(faces: list[shapely.Geometry], point: Floats) -> int:
+    at = shapely.Point(point)
+    return min(range(len(faces)), key=lambda k: float(faces[k].distance(at)))
+
+
+def _on_body(
+    part: Part,
+    shape: Shape,
+    mesh: Mesh,
+    support_forces: Floats,
+    case: Case,
+    body: shapely.Geometry,
+) -> Floats:
+    """Force [N] and moment about the origin [N·mm] of all that acts on the body, (3,)."""
+    shapely.prepare(body)
+    total = np.zeros(3)
+    at, force = _side_forces(part, shape, mesh, case)
+    total += _sum(body, at, force)
+    total += _sum(body, *_weight(part, mesh, case))
+    sharp = dict(shape.sharp_corners)
+    points = [load for load in case.loads if isinstance(load, PointLoad) and load.on in sharp]
+    if points:
+        places = np.array([sharp[load.on] for load in points])
+        total += _sum(body, places, np.array([(load.x, load.y) for load in points]))
+    held = np.flatnonzero(support_forces.any(axis=1))
+    total += _sum(body, mesh.nodes[held], support_forces[held])
+    return total
+
+
+def _side_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
+    """Places (n, 2) [mm] and forces (n, 2) [N] of a fine rule over all loaded sides."""
+    traction = side_tractions(part, shape, mesh, case)
+    loaded = np.flatnonzero(traction.any(axis=(1, 2)))
+    s, weights = gauss_line(16)
+    shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
+    slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    nodes = mesh.nodes[mesh.side_nodes[loaded]]
+    stretch = np.linalg.norm(slopes @ nodes, axis=2)
+    force = part.wall.thickness * (stretch * weights)[..., None] * (shapes @ traction[loaded])
+    return (shapes @ nodes).reshape(-1, 2), force.reshape(-1, 2)
+
+
+def _weight(part: Part, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
+    """Places and forces of the weight: a rule over each element."""
+    body = body_force(part, case)
+    if not body.any():
+        return np.zeros((0, 2)), np.zeros((0, 2))
+    xi, weights = gauss_square(3)
+    nodes = mesh.nodes[mesh.quads]
+    slopes = shape_functions.derivatives(9, xi)  # (points, 9, 2)
+    jacobian = np.einsum("pia,nib->npab", slopes, nodes)
+    det = np.linalg.det(jacobian)
+    at = shape_functions.values(9, xi) @ nodes
+    force = part.wall.thickness * (det * weights)[..., None] * body
+    return at.reshape(-1, 2), force.reshape(-1, 2)
+
+
+def _sum(body: shapely.Geometry, at: Floats, force: Floats) -> Floats:
+    """Resultant (3,) of the forces that stand on the body."""
+    if not len(at):
+        return np.zeros(3)
+    reach = 1e-6 * float(np.ptp(np.asarray(body.bounds).reshape(2, 2), axis=0).max())
+    mine = shapely.dwithin(body, shapely.points(at), 20.0 * reach)
+    return resultant(at[mine], force[mine])

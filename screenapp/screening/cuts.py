@@ -1,0 +1,246 @@
+"""Cuts across the part: stress along them with its band, section forces, and what balances them."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from screenapp.mechanics.free_body import centroid, section_forces
+from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.mechanics.straight_cut import StraightCut, straight_cut
+from screenapp.model.findings import (
+    CUT_QUANTITIES,
+    CutFindings,
+    CutSpan,
+    Estimate,
+    Findings,
+    SectionForces,
+)
+from screenapp.model.part import Cut, Part
+from screenapp.model.shape import Shape
+from screenapp.screening.passes import Pass, passes_of
+from screenapp.screening.peaks import ON_BOUNDARY, measure, on_boundary
+from screenapp.screening.spots import spot_at
+from screenapp.screening.trust import Sample, half_band, judge
+
+Floats = NDArray[np.float64]
+_Judge = Callable[[Sequence[float], float], Estimate]
+
+_LEAST_SCALE = 0.05
+"""A stress on the cut is judged against at least this share of the case's largest."""
+
+
+@dataclass(frozen=True, eq=False)
+class _Line:
+    """What one pass says along a cut in one case.
+
+    Attributes:
+        values: of CUT_QUANTITIES, (4, n_spans, n) [MPa].
+        doubt: (n_spans, n) [MPa].
+        size: size of the elements there [mm], (n_spans, n).
+    """
+
+    values: Floats
+    doubt: Floats
+    size: Floats
+
+
+def read_cuts(part: Part, shape: Shape, findings: Findings) -> Findings:
+    """The findings with the part's cuts as they now are; nothing is solved."""
+    if not findings.fields:
+        return findings
+    return replace(findings, cuts=cuts(part, shape, passes_of(part, shape, findings.fields)))
+
+
+def cuts(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[CutFindings, ...]:
+    """Every cut in every case; cuts that miss the part have no spans and are left out."""
+    if not part.cuts:
+        return ()
+    spots = singular_spots(part, shape)
+    found: list[CutFindings] = []
+    for cut in part.cuts:
+        line = straight_cut(shape, cut.start, cut.end)
+        if not len(line.spans):
+            continue
+        read = [_lines(part, shape, p, line) for p in passes]
+        for k in range(len(part.cases)):
+            found.append(_cut(part, shape, passes, line, cut, k, [r[k] for r in read], spots))
+    return tuple(found)
+
+
+def _lines(part: Part, shape: Shape, this: Pass, line: StraightCut) -> list[_Line]:
+    """A pass along the cut, for each case."""
+    places = line.points
+    for span in places:
+        for j in (0, -1):
+            span[j] = on_boundary(shape, (float(span[j, 0]), float(span[j, 1])))
+    points = places.reshape(-1, 2)
+    read = this.read(points)
+    grid = line.distances.shape
+    n, d = line.normal, line.along
+    out = []
+    for k in range(len(part.cases)):
+        s = read.stress[k]
+        across = np.stack([s[:, 0] * n[0] + s[:, 2] * n[1], s[:, 2] * n[0] + s[:, 1] * n[1]], -1)
+        lengthwise = np.stack(
+            [s[:, 0] * d[0] + s[:, 2] * d[1], s[:, 2] * d[0] + s[:, 1] * d[1]], -1
+        )
+        values = np.stack([across @ n, lengthwise @ d, across @ d, measure("von_mises", s, part)])
+        out.append(
+            _Line(values.reshape(4, *grid), read.doubt[k].reshape(grid), read.size.reshape(grid))
+        )
+    return out
+
+
+def _cut(
+    part: Part,
+    shape: Shape,
+    passes: Sequence[Pass],
+    line: StraightCut,
+    cut: Cut,
+    k: int,
+    read: Sequence[_Line],
+    spots: Sequence[SingularSpot],
+) -> CutFindings:
+    case = part.cases[k]
+    last = passes[-1].fields
+    largest_of_case = passes[-1].measure_max("von_mises", k)
+    applied = section_forces(part, shape, last.mesh, last.solution, k, line)
+    t = part.wall.thickness
+    middle = centroid(line)
+    arm = line.distances - middle
+    size = [float(r.size.mean()) for r in read]
+
+    def judged(numbers: Sequence[float], scale: float) -> Estimate:
+        samples = [Sample(v, h) for v, h in zip(numbers, size, strict=True)]
+        return judge(samples, part.mesh.tolerance, scale)
+
+    normal = [float((t * line.weights * r.values[0]).sum()) for r in read]
+    shear = [float((t * line.weights * r.values[2]).sum()) for r in read]
+    moment = [float((t * line.weights * arm * r.values[0]).sum()) for r in read]
+    force = max(float(np.hypot(normal[-1], shear[-1])), abs(moment[-1]) / line.length)
+    least = _LEAST_SCALE * largest_of_case * t * line.length
+    force = max(force, least)
+    largest, where, why = _largest(part, shape, line, read, spots, case.id, largest_of_case)
+    spans = tuple(
+        _span(part, line, read, i, judged, largest_of_case, _beam(part, line, applied, i))
+        for i in range(len(line.spans))
+    )
+    return CutFindings(
+        cut.id,
+        cut.name,
+        case.id,
+        cut.start,
+        cut.end,
+        spans,
+        judged(normal, force),
+        judged(shear, force),
+        judged(moment, force * line.length),
+        applied,
+        largest,
+        where,
+        why,
+    )
+
+
+def _largest(
+    part: Part,
+    shape: Shape,
+    line: StraightCut,
+    read: Sequence[_Line],
+    spots: Sequence[SingularSpot],
+    case: str,
+    largest_of_case: float,
+) -> tuple[Estimate, float, str]:
+    """Largest von Mises stress on the cut, its distance from the start, why it is not settled."""
+    last = read[-1]
+    i, j = np.unravel_index(int(np.nanargmax(last.values[3])), last.values[3].shape)
+    at = line.points[i, j]
+    spot = spot_at(spots, (float(at[0]), float(at[1])), case, ON_BOUNDARY * shape.size)
+    edge = j in (0, line.distances.shape[1] - 1)
+    samples = [
+        Sample(
+            float(np.nanmax(r.values[3])),
+            float(r.size[i, j]),
+            float(r.doubt[i, j]),
+            "edge" if edge else "inside",
+        )
+        for r in read
+    ]
+    scale = max(samples[-1].value, _LEAST_SCALE * largest_of_case)
+    estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
+    why = ""
+    if estimate.trust == "rising":
+        why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
+    elif estimate.trust == "unsettled":
+        why = "the mesh was not refined for this cut; put a probe there and screen again"
+    return estimate, float(line.distances[i, j]), why
+
+
+def _span(
+    part: Part,
+    line: StraightCut,
+    read: Sequence[_Line],
+    i: int,
+    judged: _Judge,
+    largest_of_case: float,
+    beam: tuple[float, float] | None,
+) -> CutSpan:
+    """One stretch of material: curves with bands, membrane and bending part."""
+    w, s = line.weights[i], line.distances[i]
+    long = float(np.ptp(line.spans[i]))
+    off = s - line.spans[i].mean()
+    membrane = [float((w * r.values[0, i]).sum() / long) for r in read]
+    bending = [float((w * off * r.values[0, i]).sum() * 6.0 / long**2) for r in read]
+    scale = max(abs(membrane[-1]), abs(bending[-1]), _LEAST_SCALE * largest_of_case)
+    least = _LEAST_SCALE * largest_of_case
+    n = len(s)
+    bands: dict[str, tuple[float, ...]] = {}
+    for q, name in enumerate(CUT_QUANTITIES):
+        bands[name] = tuple(
+            half_band(
+                [
+                    Sample(
+                        float(r.values[q, i, j]),
+                        float(r.size[i, j]),
+                        float(r.doubt[i, j]),
+                        "edge" if j in (0, n - 1) else "inside",
+                    )
+                    for r in read
+                ],
+                max(float(read[-1].values[3, i, j]), least),
+            )
+            for j in range(n)
+        )
+    values = {
+        name: tuple(float(v) for v in read[-1].values[q, i])
+        for q, name in enumerate(CUT_QUANTITIES)
+    }
+    return CutSpan(
+        tuple(float(d) for d in s),
+        values,
+        bands,
+        judged(membrane, scale),
+        judged(bending, scale),
+        beam,
+    )
+
+
+def _beam(
+    part: Part, line: StraightCut, applied: SectionForces | None, i: int
+) -> tuple[float, float] | None:
+    """Stress of beam theory at the begin and end of a span: N/A + M s/I of the whole section."""
+    if applied is None:
+        return None
+    t, middle = part.wall.thickness, centroid(line)
+    lengths = np.ptp(line.spans, axis=1)
+    offsets = line.spans.mean(axis=1) - middle
+    inertia = float(t * (lengths**3 / 12.0 + lengths * offsets**2).sum())
+    area = float(t * lengths.sum())
+    first, last = (
+        applied.normal / area + applied.moment * (end - middle) / inertia for end in line.spans[i]
+    )
+    return float(first), float(last)
