@@ -5,16 +5,15 @@ JSON has no infinity: an end of a band that has no bound is null in the record.
 
 from __future__ import annotations
 
-import math
 from pathlib import Path
 from typing import Any
 
 from screenapp import __version__
 from screenapp.model.atomic_write import write_atomically
+from screenapp.model.cut_json import cut_tree
 from screenapp.model.findings import (
     READING_QUANTITIES,
     CaseFindings,
-    Estimate,
     Findings,
     LimitFindings,
     MeshFindings,
@@ -23,8 +22,9 @@ from screenapp.model.findings import (
     WallGauge,
 )
 from screenapp.model.json_writer import json_text
-from screenapp.model.part import Part, Point
+from screenapp.model.part import Part
 from screenapp.model.result_reading import FORMAT, VERSION, findings_from_record
+from screenapp.model.result_values import estimate_tree, finite, point_tree
 
 __all__ = ["findings_from_record", "findings_to_record", "record_to_text", "write_record_json"]
 
@@ -44,14 +44,15 @@ def findings_to_record(findings: Findings, part: Part) -> Tree:
         "headline": findings.headline,
         "reasons": list(findings.reasons),
         "cautions": list(findings.cautions),
-        "mass_kg": _finite(findings.mass_kg),
-        "area_mm2": _finite(findings.area),
+        "mass_kg": finite(findings.mass_kg),
+        "area_mm2": finite(findings.area),
         "cases": [_case(case) for case in findings.cases],
         "readings": [_reading(reading) for reading in findings.readings],
+        "cuts": [cut_tree(cut) for cut in findings.cuts],
         "limits": [_limit(limit) for limit in findings.limits],
         "buckling": [],
         "mesh": _mesh(findings.mesh),
-        "timing": {stage: _finite(seconds) for stage, seconds in findings.timing.items()},
+        "timing": {stage: finite(seconds) for stage, seconds in findings.timing.items()},
     }
 
 
@@ -69,23 +70,6 @@ def write_record_json(record: Tree, path: Path) -> None:
     write_atomically(path, record_to_text(record).encode("utf-8"))
 
 
-def _finite(value: float) -> float | None:
-    return float(value) if math.isfinite(value) else None
-
-
-def _estimate(estimate: Estimate, value_key: str = "value") -> Tree:
-    return {
-        value_key: _finite(estimate.value),
-        "low": _finite(estimate.low),
-        "high": _finite(estimate.high),
-        "trust": estimate.trust,
-    }
-
-
-def _point(at: Point) -> list[float]:
-    return [float(at[0]), float(at[1])]
-
-
 def _case(case: CaseFindings) -> Tree:
     return {
         "id": case.case,
@@ -97,12 +81,12 @@ def _case(case: CaseFindings) -> Tree:
             for r in case.reactions
         ],
         "balance": {
-            "force": _finite(case.balance.force),
-            "moment": _finite(case.balance.moment),
+            "force": finite(case.balance.force),
+            "moment": finite(case.balance.moment),
         },
         "displacement_max": {
-            **_estimate(case.displacement_max),
-            "at": _point(case.displacement_at),
+            **estimate_tree(case.displacement_max),
+            "at": point_tree(case.displacement_at),
         },
     }
 
@@ -110,14 +94,14 @@ def _case(case: CaseFindings) -> Tree:
 def _peak(peak: Peak) -> Tree:
     return {
         "quantity": peak.quantity,
-        **_estimate(peak.estimate),
-        "at": _point(peak.at),
+        **estimate_tree(peak.estimate),
+        "at": point_tree(peak.at),
         "feature": peak.feature,
         "place": peak.place,
         "why": peak.why,
         "mend": peak.mend,
-        "history": [_finite(value) for value in peak.history],
-        "structural": None if peak.structural is None else _estimate(peak.structural),
+        "history": [finite(value) for value in peak.history],
+        "structural": None if peak.structural is None else estimate_tree(peak.structural),
         **_trace(peak),
     }
 
@@ -128,15 +112,15 @@ def _reading(reading: Reading) -> Tree:
         "probe": reading.probe,
         "name": reading.name,
         "case": reading.case,
-        "at": _point(reading.at),
+        "at": point_tree(reading.at),
         "feature": reading.feature,
         "place": reading.place,
-        "values": {name: _finite(e.value) for name, e in estimates.items()},
-        "band": {name: [_finite(e.low), _finite(e.high)] for name, e in estimates.items()},
+        "values": {name: finite(e.value) for name, e in estimates.items()},
+        "band": {name: [finite(e.low), finite(e.high)] for name, e in estimates.items()},
         "trusts": {name: e.trust for name, e in estimates.items()},
         "trust": reading.trust,
         "why": reading.why,
-        "history": [_finite(value) for value in reading.history],
+        "history": [finite(value) for value in reading.history],
         **_trace(reading),
     }
 
@@ -144,9 +128,9 @@ def _reading(reading: Reading) -> Tree:
 def _trace(number: Peak | Reading) -> Tree:
     """What goes with a history."""
     return {
-        "sizes": [_finite(size) for size in number.sizes],
-        "rate": None if number.rate is None else _finite(number.rate),
-        "allowed": None if number.allowed is None else _finite(number.allowed),
+        "sizes": [finite(size) for size in number.sizes],
+        "rate": None if number.rate is None else finite(number.rate),
+        "allowed": None if number.allowed is None else finite(number.allowed),
     }
 
 
@@ -155,9 +139,9 @@ def _limit(limit: LimitFindings) -> Tree:
         "limit": limit.limit,
         "name": limit.name,
         "case": limit.case,
-        **_estimate(limit.utilisation, "utilisation"),
+        **estimate_tree(limit.utilisation, "utilisation"),
         "verdict": limit.verdict,
-        "at": _point(limit.at),
+        "at": point_tree(limit.at),
         "place": limit.place,
         "reason": limit.reason,
     }
@@ -172,24 +156,24 @@ def _mesh(mesh: MeshFindings) -> Tree:
             {
                 "elements": int(p.elements),
                 "unknowns": int(p.unknowns),
-                "error": _finite(p.error),
-                "peak": _finite(p.peak),
-                "smallest": _finite(p.smallest),
+                "error": finite(p.error),
+                "peak": finite(p.peak),
+                "smallest": finite(p.smallest),
             }
             for p in mesh.passes
         ],
-        "error_estimate": _finite(mesh.error_estimate),
+        "error_estimate": finite(mesh.error_estimate),
         "worst_jacobian": float(mesh.worst_jacobian),
         "across": int(mesh.across),
-        "residual": _finite(mesh.residual),
+        "residual": finite(mesh.residual),
         "note": mesh.note,
         "walls": [_wall(wall) for wall in mesh.walls],
         "plain": [
             {
                 "case": loss.case,
-                "energy": _finite(loss.energy),
-                "displacement": _finite(loss.displacement),
-                "peak": None if loss.peak is None else _finite(loss.peak),
+                "energy": finite(loss.energy),
+                "displacement": finite(loss.displacement),
+                "peak": None if loss.peak is None else finite(loss.peak),
                 "place": loss.place,
             }
             for loss in mesh.plain
@@ -202,7 +186,7 @@ def _wall(wall: WallGauge) -> Tree:
         "between": list(wall.between),
         "place": wall.place,
         "width": float(wall.width),
-        "ends": [_point(end) for end in wall.ends],
+        "ends": [point_tree(end) for end in wall.ends],
         "layers": int(wall.layers),
         "aspect": float(wall.aspect),
         "stiffness": float(wall.stiffness),

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import Any
 
+from screenapp.model.cut_json import cut_of
 from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import (
     READING_QUANTITIES,
@@ -19,7 +20,7 @@ from screenapp.model.findings import (
     Reading,
     WallGauge,
 )
-from screenapp.model.part import Point
+from screenapp.model.result_values import estimate_of, number_of, point_of
 from screenapp.model.solution import Balance, Reaction
 
 FORMAT = "screenapp result"
@@ -44,36 +45,20 @@ def findings_from_record(record: Tree) -> Findings:
         verdict=record["verdict"],
         headline=record["headline"],
         reasons=tuple(record["reasons"]),
-        mass_kg=_number(record["mass_kg"]),
-        area=_number(record["area_mm2"]),
+        mass_kg=number_of(record["mass_kg"]),
+        area=number_of(record["area_mm2"]),
         cases=tuple(_case_of(case) for case in record["cases"]),
         readings=tuple(_reading_of(reading) for reading in record["readings"]),
+        cuts=tuple(cut_of(cut) for cut in record.get("cuts", ())),
         limits=tuple(_limit_of(limit) for limit in record["limits"]),
         mesh=_mesh_of(record["mesh"]),
-        timing={stage: _number(seconds) for stage, seconds in record["timing"].items()},
+        timing={stage: number_of(seconds) for stage, seconds in record["timing"].items()},
         cautions=tuple(record["cautions"]),
     )
 
 
-def _number(value: float | None, missing: float = math.nan) -> float:
-    return missing if value is None else float(value)
-
-
-def _estimate_of(tree: Tree, value_key: str = "value") -> Estimate:
-    return Estimate(
-        _number(tree[value_key]),
-        _number(tree["low"], -math.inf),
-        _number(tree["high"], math.inf),
-        tree["trust"],
-    )
-
-
-def _point_of(at: list[float]) -> Point:
-    return float(at[0]), float(at[1])
-
-
 def _history_of(values: list[float | None]) -> tuple[float, ...]:
-    return tuple(_number(value) for value in values)
+    return tuple(number_of(value) for value in values)
 
 
 def _case_of(tree: Tree) -> CaseFindings:
@@ -82,28 +67,28 @@ def _case_of(tree: Tree) -> CaseFindings:
         case=tree["id"],
         name=tree["name"],
         peaks=tuple(_peak_of(peak) for peak in tree["peaks"]),
-        displacement_max=_estimate_of(tree["displacement_max"]),
-        displacement_at=_point_of(tree["displacement_max"]["at"]),
+        displacement_max=estimate_of(tree["displacement_max"]),
+        displacement_at=point_of(tree["displacement_max"]["at"]),
         applied=(float(applied["x"]), float(applied["y"]), float(applied["moment"])),
         reactions=tuple(
             Reaction(r["support"], float(r["x"]), float(r["y"]), float(r["moment"]))
             for r in tree["reactions"]
         ),
-        balance=Balance(_number(balance["force"]), _number(balance["moment"])),
+        balance=Balance(number_of(balance["force"]), number_of(balance["moment"])),
     )
 
 
 def _peak_of(tree: Tree) -> Peak:
     return Peak(
         tree["quantity"],
-        _estimate_of(tree),
-        _point_of(tree["at"]),
+        estimate_of(tree),
+        point_of(tree["at"]),
         tree["feature"],
         tree["place"],
         tree["why"],
         tree["mend"],
         _history_of(tree["history"]),
-        _estimate_of(tree["structural"]) if tree.get("structural") is not None else None,
+        estimate_of(tree["structural"]) if tree.get("structural") is not None else None,
         *_trace_of(tree),
     )
 
@@ -117,9 +102,9 @@ def _reading_of(tree: Tree) -> Reading:
     sizes, rate, allowed = _trace_of(tree)
     values = {
         name: Estimate(
-            _number(tree["values"][name]),
-            _number(tree["band"][name][0], -math.inf),
-            _number(tree["band"][name][1], math.inf),
+            number_of(tree["values"][name]),
+            number_of(tree["band"][name][0], -math.inf),
+            number_of(tree["band"][name][1], math.inf),
             tree["trusts"][name],
         )
         for name in READING_QUANTITIES
@@ -128,7 +113,7 @@ def _reading_of(tree: Tree) -> Reading:
         probe=tree["probe"],
         name=tree["name"],
         case=tree["case"],
-        at=_point_of(tree["at"]),
+        at=point_of(tree["at"]),
         values=values,
         trust=tree["trust"],
         feature=tree["feature"],
@@ -146,9 +131,9 @@ def _limit_of(tree: Tree) -> LimitFindings:
         tree["limit"],
         tree["name"],
         tree["case"],
-        _estimate_of(tree, "utilisation"),
+        estimate_of(tree, "utilisation"),
         tree["verdict"],
-        _point_of(tree["at"]),
+        point_of(tree["at"]),
         tree["place"],
         tree["reason"],
     )
@@ -163,16 +148,16 @@ def _mesh_of(tree: Tree) -> MeshFindings:
             PassSummary(
                 p["elements"],
                 p["unknowns"],
-                _number(p["error"]),
-                _number(p["peak"]),
-                _number(p["smallest"]),
+                number_of(p["error"]),
+                number_of(p["peak"]),
+                number_of(p["smallest"]),
             )
             for p in tree["passes"]
         ),
-        error_estimate=_number(tree["error_estimate"]),
+        error_estimate=number_of(tree["error_estimate"]),
         worst_jacobian=float(tree["worst_jacobian"]),
         across=tree["across"],
-        residual=_number(tree["residual"]),
+        residual=number_of(tree["residual"]),
         note=tree["note"],
         walls=tuple(_wall_of(wall) for wall in tree.get("walls", [])),
         plain=tuple(_loss_of(loss) for loss in tree.get("plain", [])),
@@ -186,7 +171,7 @@ def _wall_of(tree: Tree) -> WallGauge:
         (one, two),
         tree["place"],
         float(tree["width"]),
-        (_point_of(begin), _point_of(end)),
+        (point_of(begin), point_of(end)),
         tree["layers"],
         float(tree["aspect"]),
         float(tree["stiffness"]),
@@ -196,8 +181,8 @@ def _wall_of(tree: Tree) -> WallGauge:
 def _loss_of(tree: Tree) -> PlainLoss:
     return PlainLoss(
         tree["case"],
-        _number(tree["energy"]),
-        _number(tree["displacement"]),
+        number_of(tree["energy"]),
+        number_of(tree["displacement"]),
         None if tree["peak"] is None else float(tree["peak"]),
         tree["place"],
     )

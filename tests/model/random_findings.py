@@ -6,8 +6,11 @@ import numpy as np
 from hypothesis import strategies as st
 
 from screenapp.model.findings import (
+    CUT_QUANTITIES,
     READING_QUANTITIES,
     CaseFindings,
+    CutFindings,
+    CutSpan,
     Estimate,
     Fields,
     Findings,
@@ -17,6 +20,7 @@ from screenapp.model.findings import (
     Peak,
     PlainLoss,
     Reading,
+    SectionForces,
     WallGauge,
 )
 from screenapp.model.mesh import Mesh
@@ -104,6 +108,33 @@ meshes = st.builds(
     st.lists(walls, max_size=2).map(tuple),
     st.lists(losses, max_size=2).map(tuple),
 )
+sections = st.builds(SectionForces, numbers, numbers, numbers)
+curves = st.fixed_dictionaries(dict.fromkeys(CUT_QUANTITIES, histories))
+spans = st.builds(
+    CutSpan,
+    histories,
+    curves,
+    curves,
+    estimates,
+    estimates,
+    st.none() | st.tuples(numbers, numbers),
+)
+cuts = st.builds(
+    CutFindings,
+    texts,
+    texts,
+    texts,
+    points,
+    points,
+    st.lists(spans, max_size=2).map(tuple),
+    estimates,
+    estimates,
+    estimates,
+    st.none() | sections,
+    estimates,
+    numbers,
+    texts,
+)
 findings = st.builds(
     Findings,
     part_sha256=hashes,
@@ -120,6 +151,7 @@ findings = st.builds(
     timing=st.dictionaries(texts, numbers, max_size=3),
     cautions=st.lists(texts, max_size=2).map(tuple),
     fields=st.just(()),
+    cuts=st.lists(cuts, max_size=2).map(tuple),
 )
 """Findings without arrays."""
 

@@ -93,7 +93,7 @@ def test_a_cut_may_end_inside_or_miss() -> None:
 def test_a_cut_along_an_edge_reads_the_edge(mesher: Mesher) -> None:
     """σ = M y / I falls to zero along the upper edge of a cantilever, away from its root."""
     part = beam(
-        ForceLoad("l1", "e2", 0.0, -500.0), cuts=(Cut("x1", "top", (30.0, 20.0), (95.0, 20.0)),)
+        ForceLoad("l1", "e2", 0.0, -500.0), cuts=(Cut("x1", "top", (30.0, 20.0), (80.0, 20.0)),)
     )
     found = only(part, mesher)
     assert found.applied is None
@@ -192,7 +192,7 @@ def test_both_ligaments_beside_a_hole_carry_the_pull(mesher: Mesher) -> None:
     assert found.largest.trust == "settled"
     assert found.trust == "settled"
     bands = [b for span in found.spans for b in span.half_bands["von_mises"]]
-    assert all(0.0 < b < 0.05 * found.largest.value for b in bands)
+    assert all(0.0 < b < 0.1 * found.largest.value for b in bands)
 
 
 def test_a_cut_that_does_not_divide_the_part_has_no_free_body(mesher: Mesher) -> None:
