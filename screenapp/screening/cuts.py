@@ -160,13 +160,11 @@ def _largest(
     i, j = np.unravel_index(int(np.nanargmax(last.values[3])), last.values[3].shape)
     at = line.points[i, j]
     spot = spot_at(spots, (float(at[0]), float(at[1])), case, ON_BOUNDARY * shape.size)
-    edge = j in (0, line.distances.shape[1] - 1)
     samples = [
         Sample(
             float(np.nanmax(r.values[3])),
             float(r.size[i, j]),
             float(r.doubt[i, j]),
-            "edge" if edge else "inside",
         )
         for r in read
     ]
@@ -207,7 +205,6 @@ def _span(
                         float(r.values[q, i, j]),
                         float(r.size[i, j]),
                         float(r.doubt[i, j]),
-                        "edge" if j in (0, n - 1) else "inside",
                     )
                     for r in read
                 ],
