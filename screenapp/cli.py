@@ -32,7 +32,7 @@ STATUS: dict[Verdict, int] = {
 
 CAUTION = "A screening, not an approval: local codes and a licensed engineer decide."
 
-COMMANDS = ("screen", "check")
+COMMANDS = ("screen", "check", "convert")
 
 
 def main(words: Sequence[str] | None = None) -> int:
@@ -40,9 +40,11 @@ def main(words: Sequence[str] | None = None) -> int:
     words = list(sys.argv[1:] if words is None else words)
     try:
         if words and words[0] in COMMANDS:
-            parser, run = {"screen": (_screen_parser, _screen), "check": (_check_parser, _check)}[
-                words[0]
-            ]
+            parser, run = {
+                "screen": (_screen_parser, _screen),
+                "check": (_check_parser, _check),
+                "convert": (_convert_parser, _convert),
+            }[words[0]]
             return run(parser().parse_intermixed_args(words[1:]))
         return _open_window(_window_parser().parse_args(words))
     except ScreenappError as error:
@@ -68,10 +70,11 @@ def _window_parser() -> argparse.ArgumentParser:
     parser = _Parser(
         prog="screenapp",
         description="Screens flat thin-walled parts for strength.  With no command it opens the "
-        "window; the commands are: screen FILE..., check FILE... (each with --help).",
+        "window; the commands are: screen FILE..., check FILE..., convert IN OUT (each with "
+        "--help).",
         epilog=CAUTION,
     )
-    parser.add_argument("file", nargs="?", type=Path, help="part file to open in the window")
+    parser.add_argument("file", nargs="?", type=Path, help="part file (or DXF drawing) to open")
     parser.add_argument("--version", action="version", version=f"screenapp {__version__}")
     return parser
 
@@ -101,6 +104,34 @@ def _check_parser() -> argparse.ArgumentParser:
         "Exit status: 0 no fault, 3 faults.",
     )
     parser.add_argument("files", nargs="+", type=Path, metavar="FILE")
+    return parser
+
+
+def _convert_parser() -> argparse.ArgumentParser:
+    parser = _Parser(
+        prog="screenapp convert",
+        description="Makes a part file of a DXF drawing, or a drawing of a part; the endings say "
+        "which way (*.dxf, *.part.json).  What was fitted, closed, taken once or left out is told "
+        "on standard error.  Exit status: 0 done, 3 bad input.",
+    )
+    parser.add_argument("source", type=Path, metavar="IN")
+    parser.add_argument("target", type=Path, metavar="OUT")
+    parser.add_argument(
+        "--layer",
+        action="append",
+        default=[],
+        metavar="NAME",
+        help="make the shape of this layer (may be repeated); else of all that are shown and "
+        "drawn in full lines",
+    )
+    parser.add_argument("--unit", help="unit of length of the drawing, e.g. mm or in")
+    parser.add_argument(
+        "--tolerance",
+        default="",
+        metavar="LENGTH",
+        help="gaps up to this are closed, splines fitted within it (0.01 mm)",
+    )
+    parser.add_argument("--outline", type=int, metavar="N", help="which of several outlines")
     return parser
 
 
@@ -143,6 +174,26 @@ def _located(faults: tuple[Fault, ...], path: Path) -> tuple[Fault, ...]:
         return with_lines(faults, path.read_text(encoding="utf-8"))
     except (OSError, UnicodeDecodeError):
         return faults
+
+
+def _convert(arguments: argparse.Namespace) -> int:
+    from screenapp.exchange.convert import Options, convert
+    from screenapp.model.progress import Progress
+    from screenapp.progress_bar import ProgressBar
+
+    options = Options(
+        tuple(arguments.layer), arguments.unit, arguments.tolerance, arguments.outline
+    )
+    said: list[str] = []
+    try:
+        with ProgressBar(arguments.source.name) as bar:
+            progress = Progress(report=bar.show)
+            convert(arguments.source, arguments.target, options, said.append, progress)
+    finally:
+        for sentence in said:
+            tell(sentence, stream=sys.stderr)
+    print(f"wrote {arguments.target}", file=sys.stderr)
+    return HOLDS
 
 
 def _fault_line(path: Path, fault: Fault) -> str:

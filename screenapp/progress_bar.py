@@ -26,7 +26,8 @@ class ProgressBar:
         if self._shown:
             full = round(_WIDTH * min(max(step.done, 0.0), 1.0))
             bar = self._full * full + self._empty * (_WIDTH - full)
-            text = f"{self._title} {bar} pass {step.number}, {step.stage}"
+            turn = f"pass {step.number}, " if step.number else ""
+            text = f"{self._title} {bar} {turn}{step.stage}"
             self._stream.write(f"\r\x1b[K{text}")
             self._stream.flush()
 
