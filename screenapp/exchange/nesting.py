@@ -7,8 +7,7 @@ from dataclasses import dataclass
 import numpy as np
 import shapely
 
-from screenapp.exchange.rings import Ring
-from screenapp.model.boundary_curve import extremes
+from screenapp.exchange.rings import Ring, boxes
 from screenapp.model.curves import Arc
 from screenapp.model.part import Point
 
@@ -73,8 +72,9 @@ def nests_of(rings: list[Ring], sagitta: float) -> list[Nest]:
 
 
 def _bounds(ring: Ring) -> tuple[float, float, float, float]:
-    xs, ys = zip(*(p for curve in ring for p in extremes(curve)), strict=True)
-    return min(xs), min(ys), max(xs), max(ys)
+    found = boxes(ring)
+    (x0, y0), (x1, y1) = found[:, :2].min(axis=0).tolist(), found[:, 2:].max(axis=0).tolist()
+    return x0, y0, x1, y1
 
 
 def meets(ring: Ring, other: Ring, sagitta: float) -> bool:

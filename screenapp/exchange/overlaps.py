@@ -7,7 +7,6 @@ are gaps between them.  Pieces that only touch end to end are left as they were 
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -17,7 +16,8 @@ from scipy.sparse import coo_array
 from scipy.sparse.csgraph import connected_components
 
 from screenapp.exchange.drawing import PlainCurve
-from screenapp.model.curves import Arc, Curve, Segment
+from screenapp.exchange.rings import boxes
+from screenapp.model.curves import Arc, Segment
 from screenapp.model.part import Point
 from screenapp.model.progress import SILENT, Progress
 
@@ -62,34 +62,14 @@ def without_overlaps(
 
 def _candidates(curves: list[PlainCurve], tolerance: float) -> tuple[Ints, Ints]:
     """Pairs whose boxes meet."""
-    low, high = boxes([c.curve for c in curves])
+    found = boxes(c.curve for c in curves)
+    low, high = found[:, :2], found[:, 2:]
     made = shapely.box(
         low[:, 0] - tolerance, low[:, 1] - tolerance, high[:, 0] + tolerance, high[:, 1] + tolerance
     )
     first, second = shapely.STRtree(made).query(made)
     half = first < second
     return first[half], second[half]
-
-
-def boxes(curves: Sequence[Curve]) -> tuple[Floats, Floats]:
-    """Lower left and upper right corners (n, 2) of boxes about curves; of arcs a little wide."""
-    t = np.linspace(0.0, 1.0, 9)
-    places = np.empty((len(curves), 9, 2))
-    bulge = np.zeros(len(curves))
-    arcs = [(k, c) for k, c in enumerate(curves) if isinstance(c, Arc)]
-    if arcs:
-        which = np.array([k for k, _ in arcs])
-        rows = [(*c.centre, c.radius, c.begin, c.sweep) for _, c in arcs]
-        x, y, r, begin, sweep = (column[:, None] for column in np.array(rows).T)
-        angle = begin + sweep * t
-        places[which] = np.stack([x + r * np.cos(angle), y + r * np.sin(angle)], axis=-1)
-        bulge[which] = (r * (1.0 - np.cos(sweep / 16.0)))[:, 0]  # between two of the places
-    lines = [(k, c) for k, c in enumerate(curves) if isinstance(c, Segment)]
-    if lines:
-        which = np.array([k for k, _ in lines])
-        ends = np.array([(c.start, c.end) for _, c in lines])
-        places[which] = ends[:, [0, 1, 1, 1, 1, 1, 1, 1, 1]]
-    return places.min(axis=1) - bulge[:, None], places.max(axis=1) + bulge[:, None]
 
 
 def _covering_segments(
