@@ -7,6 +7,7 @@ under 1; *does not hold* only when a settled number's whole band is over 1.  Eve
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 
 from screenapp.model.allowables import allowable
@@ -162,5 +163,7 @@ def overall(limits: Sequence[LimitFindings]) -> tuple[Verdict, str, tuple[str, .
         reasons = tuple(dict.fromkeys(f.reason for f in unsure))
         return "undecided", f"Undecided: {reasons[0]}", reasons
     used = max(f.utilisation.high for f in limits)
-    hand = f"{1.0 / used:.2f} in hand" if used > 1e-3 else "far from every limit"
-    return "holds", f"Holds, {hand}", ()
+    if used <= 1e-3:
+        return "holds", "Holds, far from every limit", ()
+    hand = math.floor(100.0 / used + 1e-9) / 100.0  # never more than there is
+    return "holds", f"Holds, {hand:.2f} in hand", ()
