@@ -15,6 +15,7 @@ from screenapp.model.part import FixedSupport, Part, Wall
 from screenapp.model.shape import Shape, shape_of
 from screenapp.screening.passes import Pass, PointValues
 from screenapp.screening.structural import reading_places, structural_stress
+from screenapp.screening.trust import Sample, judge
 from tests.model.plates import loop, plate
 
 Floats = np.ndarray
@@ -157,8 +158,10 @@ def test_the_doubt_is_weighted_like_the_stress() -> None:
 
     found = structural_stress(part, shape, passes(stress), spot, "von_mises", 0)
     assert found is not None
-    # no change between passes: 0.2 of the doubt (5/3 + 2/3) and the floor of 0.1 %
-    assert found[0].high - found[0].value == pytest.approx(0.2 * 7.0 / 3.0 + 0.05)
+    # each place doubts by 1 MPa: 5/3 + 2/3 of it
+    samples = [Sample(50.0, 4.0 / 2**i, 7.0 / 3.0) for i in range(4)]
+    want = judge(samples, part.mesh.tolerance, 50.0)
+    assert found[0].high - found[0].value == pytest.approx(want.high - want.value)
 
 
 # --- where there is none --------------------------------------------------------------------
