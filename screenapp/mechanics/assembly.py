@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from scipy import sparse
 
 from screenapp.mechanics import shape_functions
+from screenapp.mechanics.element_walls import hooke_of
 from screenapp.mechanics.kernels import CARRIED_NODES, ElementMatrices, element_matrices
 from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
 from screenapp.model.part import ElementName
@@ -63,7 +64,8 @@ def assemble(
 ) -> System:
     """Assemble the stiffness of a mesh.
 
-    `elastic` is (3, 3) [MPa]; `thickness` [mm] is one number or one for each element.
+    `elastic` [MPa] is (3, 3) or one for each element (n_elements, 3, 3); `thickness` [mm] is one
+    number or one for each element.
 
     Raises:
         SolvingError: the mesh has a folded element.
@@ -79,7 +81,9 @@ def assemble(
     for first in range(0, mesh.n_elements, CHUNK):
         progress.check()
         rows = slice(first, first + CHUNK)
-        made = element_matrices(element, mesh.nodes[mesh.quads[rows]], depth[rows], elastic)
+        made = element_matrices(
+            element, mesh.nodes[mesh.quads[rows]], depth[rows], hooke_of(elastic, rows)
+        )
         values[rows] = made.stiffness[:, upper[0], upper[1]]
         _keep(made, recovery, flexibility)
     progress.check()

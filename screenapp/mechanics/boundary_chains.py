@@ -39,6 +39,7 @@ class BoundaryChains:
         curvature: signed curvature of each side's curve [1/mm], positive where the material is
             convex, (n_sides,).
         tangents: exact unit tangents at start, middle and end of each side, (n_sides, 3, 2).
+        same_wall: whether the same zone goes on past each side's end, (n_sides,).
     """
 
     loops: tuple[tuple[int, int], ...]
@@ -48,11 +49,13 @@ class BoundaryChains:
     turn: Floats
     curvature: Floats
     tangents: Floats
+    same_wall: Bools
 
     @property
     def smooth(self) -> Bools:
-        """Whether the boundary goes on without a bend at each side's end, (n_sides,)."""
-        return np.asarray(np.abs(self.turn) < SMOOTH_TURN)
+        """Whether the boundary goes on without a bend or a change of the wall at each side's end,
+        (n_sides,)."""
+        return np.asarray((np.abs(self.turn) < SMOOTH_TURN) & self.same_wall)
 
     @property
     def normals(self) -> Floats:
@@ -82,7 +85,11 @@ def boundary_chains(shape: Shape, mesh: Mesh) -> BoundaryChains:
     lengths = side_lengths(mesh, np.array([1.0]))[:, 0]
     turn = _angle(tangents[:, 2], tangents[following, 0])
     curvature = _angle(tangents[:, 0], tangents[:, 2]) / lengths
-    return BoundaryChains(loops, following, preceding, lengths, turn, curvature, tangents)
+    zone = mesh.element_zones[mesh.sides[:, 0]]
+    same_wall = zone == zone[following]
+    return BoundaryChains(
+        loops, following, preceding, lengths, turn, curvature, tangents, same_wall
+    )
 
 
 def side_lengths(mesh: Mesh, places: Floats) -> Floats:
@@ -117,7 +124,8 @@ class BoundaryProfile:
         points: the same places [mm], (n, 3, 2).
         stress: σx, σy, τxy there [MPa], (n, 3, 3).
         piece: index into `Shape.curves` of each side, (n,).
-        smooth: whether the boundary goes on without a bend at the end of each side, (n,).
+        smooth: whether the boundary goes on without a bend or a change of the wall at the end of
+            each side, (n,).
     """
 
     loop: int

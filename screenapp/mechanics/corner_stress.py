@@ -47,7 +47,7 @@ def known_corners(
     after = chains.following
     turn = chains.turn
     open_ = (turn >= LEAST_TURN) & (turn <= math.pi - LEAST_TURN) & ~disturbed
-    open_ &= ~held.any(axis=1) & ~held[after].any(axis=1)
+    open_ &= chains.same_wall & ~held.any(axis=1) & ~held[after].any(axis=1)
     n1, n2 = chains.normals[:, 2], chains.normals[after, 0]
     t1, t2 = traction[:, :, 2], traction[:, after, 0]
     contradiction = np.abs((t1 * n2).sum(axis=-1) - (t2 * n1).sum(axis=-1))
@@ -77,6 +77,7 @@ def mirrored_ends(chains: BoundaryChains, traction: Floats, held: Bools) -> Bool
     plane = held[:, 0] & ~held[:, 1] & straight & smooth.all(axis=1)
     free = ~held.any(axis=1)
     right = np.abs(chains.turn - 0.5 * math.pi) < SMOOTH_TURN
+    right &= chains.same_wall
     before, after = chains.preceding, chains.following
     return np.stack(
         [

@@ -42,7 +42,7 @@ def recover_edge_stress(
         disturbed: sides that end at a corner with a force or support of its own, (n_sides,).
         inside: averaged stresses at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa]; they stand
             in for the traction of a support.
-        hooke: (3, 3) matrix that turns εx, εy, γxy into stresses [MPa].
+        hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
     """
     joined = joined_sides(chains, traction, held)
     mirrored = mirrored_ends(chains, traction, held)
@@ -53,7 +53,9 @@ def recover_edge_stress(
         (1, corner, known),
         (0, corner[:, chains.preceding], known[chains.preceding]),
     ):
-        stretch = _along(stress @ compliance, chains.tangents[:, 2 * end], 0.5)
+        stretch = _along(
+            (stress[..., None, :] @ compliance)[..., 0, :], chains.tangents[:, 2 * end], 0.5
+        )
         ends[:, :, end] = np.where(given, stretch, ends[:, :, end])
     strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
     normal, shear = edge_tractions(chains, traction, held, inside)
@@ -117,12 +119,15 @@ def edge_stress(
         strain: εt along the edge, (n_cases, n_sides, 3).
         normal: σn across it, the same shape [MPa].
         shear: τ between the outward normal and the forward tangent, the same shape [MPa].
-        hooke: (3, 3) matrix that turns εx, εy, γxy into stresses [MPa].
+        hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
 
     Returns:
         (n_cases, n_sides, 3, 3) [MPa].
     """
-    d11, d12 = hooke[0, 0], hooke[0, 1]  # isotropic: the same along any direction
+    d11, d12 = (
+        hooke[..., 0, 0, None],
+        hooke[..., 0, 1, None],
+    )  # isotropic: the same along any direction
     across = (normal - d12 * strain) / d11
     along = d11 * strain + d12 * across
     t, n = chains.tangents, chains.normals

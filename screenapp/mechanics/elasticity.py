@@ -57,3 +57,25 @@ def wall_material(part: Part) -> Material:
             f"the wall is {part.wall.thickness:g} mm thick", "give a thickness above zero"
         )
     return part.material
+
+
+def zone_material(part: Part, zone: int) -> Material:
+    """The material of a zone (by index; -1: of the wall itself).
+
+    Raises:
+        SolvingError: as `wall_material`, also for the zone.
+    """
+    if zone < 0:
+        return wall_material(part)
+    material, wall = part.material_of(zone), part.wall_of(zone)
+    name = part.zones[zone].id
+    if material is None:
+        raise SolvingError(
+            f"the material {wall.material!r} of zone {name} is not among the part's materials",
+            "choose a material for the zone",
+        )
+    if not (np.isfinite(wall.thickness) and wall.thickness > 0.0):
+        raise SolvingError(
+            f"zone {name} is {wall.thickness:g} mm thick", "give a thickness above zero"
+        )
+    return material

@@ -10,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics import shape_functions
+from screenapp.mechanics.element_walls import hooke_of
 from screenapp.mechanics.quadrature import gauss_square
 from screenapp.mechanics.strain_displacement import CHUNK, element_geometry, element_strains
 from screenapp.model.mesh import Mesh
@@ -24,7 +25,7 @@ def element_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> Floats:
 
     At a sharp corner each element takes the value of its own side.
     """
-    own = nodal[:, mesh.quads]
+    own = nodal[:, mesh.field_quads]
     rim, values = rim_nodal(mesh, nodal, side)
     own[:, rim] = values
     return own
@@ -43,7 +44,7 @@ def rim_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> tuple[Ints, Floats]:
     places = np.stack([local, 4 + local, (local + 1) % 4], axis=1)
     count = np.zeros((len(rim), 9))
     np.add.at(count, (row[:, None], places), 1.0)
-    own = nodal[:, mesh.quads[rim]]
+    own = nodal[:, mesh.field_quads[rim]]
     given = count > 0
     for case in range(len(own)):
         total = np.zeros((len(rim), 9, 3))
@@ -53,7 +54,12 @@ def rim_nodal(mesh: Mesh, nodal: Floats, side: Floats) -> tuple[Ints, Floats]:
 
 
 def energy_error(
-    mesh: Mesh, solution: Solution, hooke: Floats, nodal: Floats, side: Floats
+    mesh: Mesh,
+    solution: Solution,
+    hooke: Floats,
+    nodal: Floats,
+    side: Floats,
+    thickness: Floats | float = 1.0,
 ) -> Floats:
     """Energy error of each element relative to the whole strain energy, (n_cases, n_elements).
 
@@ -61,24 +67,26 @@ def energy_error(
     without any stress gives zeros.
 
     Args:
-        hooke: (3, 3) [MPa].
-        nodal: recovered stresses, (n_cases, n_nodes, 3) [MPa].
+        hooke: (3, 3) or one for each element (n_elements, 3, 3) [MPa].
+        nodal: recovered stresses, (n_cases, n_fields, 3) [MPa].
         side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
+        thickness: of each element [mm], (n_elements,), or one for all.
     """
     points, weights = gauss_square(3)
     linear = solution.element.startswith("quad4")
     shapes = shape_functions.values(4 if linear else 9, points)
-    compliance = np.linalg.inv(hooke)
+    compliance = np.asarray(np.linalg.inv(hooke), dtype=np.float64)
     recovered = element_nodal(mesh, nodal, side)[:, :, : shapes.shape[1]]
-    volume = element_geometry(mesh, solution, points) * weights  # per unit of wall
+    volume = element_geometry(mesh, solution, points) * weights
+    volume *= np.broadcast_to(thickness, (mesh.n_elements,))[:, None]
     missed = np.empty((len(nodal), mesh.n_elements))
     stored = np.empty_like(missed)
     for begin in range(0, mesh.n_elements, CHUNK):
         some = np.arange(begin, min(begin + CHUNK, mesh.n_elements))
-        own = element_strains(mesh, solution, points, some) @ hooke
-        gap = shapes @ recovered[:, some] - own
-        missed[:, some] = (((gap @ compliance) * gap).sum(axis=-1) * volume[some]).sum(axis=-1)
-        stored[:, some] = (((own @ compliance) * own).sum(axis=-1) * volume[some]).sum(axis=-1)
+        own = element_strains(mesh, solution, points, some) @ hooke_of(hooke, some)
+        gap, yielding = shapes @ recovered[:, some] - own, hooke_of(compliance, some)
+        missed[:, some] = (((gap @ yielding) * gap).sum(axis=-1) * volume[some]).sum(axis=-1)
+        stored[:, some] = (((own @ yielding) * own).sum(axis=-1) * volume[some]).sum(axis=-1)
     whole = stored.sum(axis=1, keepdims=True) + missed.sum(axis=1, keepdims=True)
     return np.sqrt(missed / np.where(whole > 0.0, whole, 1.0))
 
@@ -90,16 +98,16 @@ def pointwise_jump(
 
     Args:
         own: each element's stress carried to its nine nodes, (n_cases, n_elements, 9, 3) [MPa].
-        nodal: recovered stresses, (n_cases, n_nodes, 3) [MPa].
+        nodal: recovered stresses, (n_cases, n_fields, 3) [MPa].
         side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
         poisson: ν in plane strain, else 0.
 
     Returns:
-        (n_cases, n_nodes) [MPa].
+        (n_cases, n_fields) [MPa], in the numbers of `Mesh.field_quads`.
     """
     recovered = von_mises(element_nodal(mesh, nodal, side), poisson)
     gap = np.abs(von_mises(own, poisson) - recovered)
-    jump = np.zeros((len(nodal), mesh.n_nodes))
+    jump = np.zeros((len(nodal), len(mesh.field_nodes)))
     for case in range(len(nodal)):
-        np.maximum.at(jump[case], mesh.quads.ravel(), gap[case].ravel())
+        np.maximum.at(jump[case], mesh.field_quads.ravel(), gap[case].ravel())
     return jump

@@ -62,8 +62,8 @@ def element_matrices(
 ) -> ElementMatrices:
     """Stiffness of elements with nodes at `coordinates` (n, 9 or fewer, 2) [mm].
 
-    `thickness` (n,) [mm] is each element's own; `elastic` (3, 3) [MPa] must be isotropic (no
-    coupling of stretch and shear).
+    `thickness` (n,) [mm] is each element's own; `elastic` [MPa], (3, 3) or one for each element
+    (n, 3, 3), must be isotropic (no coupling of stretch and shear).
 
     Raises:
         SolvingError: an element is folded (its Jacobian is not positive at a Gauss point).
@@ -142,10 +142,10 @@ def _stiffness(scaled: Floats, elastic: Floats) -> Floats:
     yy = by_y.transpose(0, 2, 1) @ by_y
     xy = by_x.transpose(0, 2, 1) @ by_y
     stretch_x, stretch_y, poisson, shear = (
-        elastic[0, 0],
-        elastic[1, 1],
-        elastic[0, 1],
-        elastic[2, 2],
+        elastic[..., 0, 0, None, None],
+        elastic[..., 1, 1, None, None],
+        elastic[..., 0, 1, None, None],
+        elastic[..., 2, 2, None, None],
     )
     full = np.empty((len(by_x), 2 * m, 2 * m))
     full[:, :m, :m] = stretch_x * xx + shear * yy

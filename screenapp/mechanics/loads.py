@@ -12,7 +12,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.elasticity import wall_material
+from screenapp.mechanics.elasticity import zone_material
+from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.kernels import CARRIED_NODES, shape_integrals
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
@@ -22,7 +23,6 @@ from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
 from screenapp.model.part import (
     BearingLoad,
     Case,
-    ElementName,
     ForceLoad,
     GravityLoad,
     LineLoad,
@@ -54,6 +54,7 @@ class SidePoints:
         lengths: length that each point stands for [mm]; zero where the places are no rule.
         shapes: the sides' shape functions at the points, (points, nodes).
         nodes: mesh nodes of the sides, (n_sides, nodes).
+        thickness: of the wall behind each side [mm], (n_sides,).
     """
 
     at: Floats
@@ -61,6 +62,7 @@ class SidePoints:
     lengths: Floats
     shapes: Floats
     nodes: Ints
+    thickness: Floats
 
 
 def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
@@ -78,16 +80,17 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
         if isinstance(load, PointLoad):
             out[_corner_node(mesh, load)] += (load.x, load.y)
             continue
-        rule = _rule(mesh, sides_of(shape, mesh, load.on, load.id), element)
+        rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
         force = _per_length(part, shape, mesh, load, rule) * rule.lengths[..., None]
         np.add.at(out, rule.nodes, np.einsum("pi,spd->sid", rule.shapes, force))
-    body = body_force(part, case)
-    if body.any():
-        thickness = np.full(mesh.n_elements, part.wall.thickness)
+    weights = np.array([body_force(part, case, zone) for zone in range(-1, len(part.zones))])
+    if weights.any():
+        thickness = element_thickness(part, mesh)
         volumes = shape_integrals(element, mesh.nodes[mesh.quads], thickness)
         nodes = mesh.quads[:, : NODES_OF_ELEMENT[element]]
-        share = np.bincount(nodes.ravel(), volumes.ravel(), minlength=mesh.n_nodes)
-        out += share[:, None] * body
+        for k in (0, 1):
+            share = volumes * weights[mesh.element_zones + 1, k][:, None]
+            out[:, k] += np.bincount(nodes.ravel(), share.ravel(), minlength=mesh.n_nodes)
     return out
 
 
@@ -105,22 +108,23 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
             continue
         sides = sides_of(shape, mesh, load.on, load.id)
         nodes = mesh.side_nodes[sides]
+        thickness = side_thickness(part, mesh)[sides]
         ends = SidePoints(
-            mesh.nodes[nodes], tangents[sides], np.zeros(nodes.shape), np.eye(3), nodes
+            mesh.nodes[nodes], tangents[sides], np.zeros(nodes.shape), np.eye(3), nodes, thickness
         )
-        out[sides] += _per_length(part, shape, mesh, load, ends) / part.wall.thickness
+        out[sides] += _per_length(part, shape, mesh, load, ends) / thickness[:, None, None]
     return out
 
 
-def body_force(part: Part, case: Case) -> Floats:
-    """Weight per volume of the case, (2,) [N/mm³].
+def body_force(part: Part, case: Case, zone: int = -1) -> Floats:
+    """Weight per volume of the case in a zone (-1: in the wall itself), (2,) [N/mm³].
 
     Density in kg/m³ times acceleration in m/s² is N/m³; one N/m³ is 1e-9 N/mm³.
     """
     total = np.zeros(2)
     for load in case.loads:
         if isinstance(load, GravityLoad):
-            total += 1e-9 * wall_material(part).density * np.array([load.x, load.y])
+            total += 1e-9 * zone_material(part, zone).density * np.array([load.x, load.y])
     return total
 
 
@@ -130,8 +134,14 @@ def _corner_node(mesh: Mesh, load: PointLoad) -> int:
     return mesh.corner_nodes[load.on]
 
 
-def _rule(mesh: Mesh, sides: Ints, element: ElementName) -> SidePoints:
-    """Gauss points along sides, as the element interpolates them."""
+def side_thickness(part: Part, mesh: Mesh) -> Floats:
+    """Thickness of the wall behind each boundary side [mm], (n_sides,)."""
+    return np.asarray(element_thickness(part, mesh)[mesh.sides[:, 0]])
+
+
+def _rule(part: Part, mesh: Mesh, sides: Ints) -> SidePoints:
+    """Gauss points along sides, as the part's element interpolates them."""
+    element = part.mesh.element
     s, weights = gauss_line(POINTS)
     if CARRIED_NODES[element] == 4:
         nodes = mesh.side_nodes[sides][:, ::2]
@@ -150,20 +160,21 @@ def _rule(mesh: Mesh, sides: Ints, element: ElementName) -> SidePoints:
         stretch * weights,
         shapes,
         nodes,
+        side_thickness(part, mesh)[sides],
     )
 
 
 def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePoints) -> Floats:
     """Force per length [N/mm] of a load at some places, (n_sides, points, 2)."""
     if isinstance(load, PressureLoad):
-        return -load.pressure * part.wall.thickness * outward(places.tangents)
+        return -load.pressure * places.thickness[:, None, None] * outward(places.tangents)
     if isinstance(load, ShearLoad):
         return load.per_length * places.tangents
     if isinstance(load, LineLoad):
         return np.broadcast_to([load.x, load.y], places.at.shape).astype(float)
     if isinstance(load, ForceLoad):
         sides = sides_of(shape, mesh, load.on, load.id)
-        length = float(_rule(mesh, sides, part.mesh.element).lengths.sum())
+        length = float(_rule(part, mesh, sides).lengths.sum())
         return np.broadcast_to([load.x / length, load.y / length], places.at.shape).astype(float)
     if isinstance(load, BearingLoad):
         return _bearing(part, shape, mesh, load, places)
@@ -173,21 +184,23 @@ def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePo
 def _bearing(part: Part, shape: Shape, mesh: Mesh, load: BearingLoad, places: SidePoints) -> Floats:
     """Radial push of a pin, cosine over the half it bears on, (n_sides, points, 2) [N/mm].
 
-    At the angle θ from the force the push is a·e with the radial unit vector e; the vector `a` is
-    along the force but for the unevenness of the mesh, and is chosen so that the sum over the
-    mesh's own rule is exactly the force (the exact rim would give a = 2 F / (π r)).
+    At the angle θ from the force the pressure is a·e with the radial unit vector e, over whatever
+    thickness the wall has there; the vector `a` is along the force but for the unevenness of the
+    mesh and the wall, and is chosen so that the sum over the mesh's own rule is exactly the force
+    (the exact rim of one thickness t would give a = 2 F / (π r t)).
     """
     centre = _pin_centre(shape, load)
     force = np.array([load.x, load.y])
     size = math.hypot(load.x, load.y)
     if size == 0.0:
         return np.zeros(places.at.shape)
-    rule = _rule(mesh, sides_of(shape, mesh, load.on, load.id), part.mesh.element)
+    rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
     bearing, borne = _radial(rule.at, centre, force)
-    spread = np.einsum("sp,spa,spb->ab", rule.lengths * borne, bearing, bearing)
+    face = rule.lengths * rule.thickness[:, None]
+    spread = np.einsum("sp,spa,spb->ab", face * borne, bearing, bearing)
     push = np.linalg.solve(spread, force)
     radial, on = _radial(places.at, centre, force)
-    return radial * (on * (radial @ push))[..., None]
+    return radial * (on * (radial @ push) * places.thickness[:, None])[..., None]
 
 
 def _radial(at: Floats, centre: Floats, force: Floats) -> tuple[Floats, Floats]:

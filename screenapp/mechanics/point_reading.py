@@ -13,8 +13,10 @@ from numpy.typing import ArrayLike, NDArray
 
 from screenapp.mechanics import shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
-from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.elasticity import wall_material
+from screenapp.mechanics.element_walls import element_hooke
 from screenapp.mechanics.energy_error import rim_nodal
+from screenapp.mechanics.interface_reading import other_hands, zones_at
 from screenapp.mechanics.locate import PointLocator
 from screenapp.mechanics.strain_displacement import strains_at
 from screenapp.model.curves import Arc, Segment
@@ -51,7 +53,7 @@ class PointReader:
         self, part: Part, shape: Shape, mesh: Mesh, solution: Solution, stress: StressField
     ) -> None:
         material = wall_material(part)
-        self._hooke = constitutive_matrix(material, part.wall.state)
+        self._hooke = element_hooke(part, mesh)
         self._poisson = material.poissons_ratio if part.wall.state == "plane strain" else 0.0
         self._shape, self._mesh, self._solution, self.stress = shape, mesh, solution, stress
         self.locator = PointLocator(mesh)
@@ -64,8 +66,8 @@ class PointReader:
     def read(self, points: ArrayLike) -> tuple[Floats, Floats]:
         """Recovered stress σx, σy, τxy [MPa] and displacement [mm] of all cases.
 
-        Exactly at a sharp corner, where the two sides may differ, the side with the larger von
-        Mises stress speaks.
+        Exactly at a sharp corner or on a line between two zones, where the two sides may differ,
+        the side with the larger von Mises stress speaks.
 
         Args:
             points: (n, 2) [mm].
@@ -80,18 +82,30 @@ class PointReader:
         stress = np.full((n_cases, len(points), 3), np.nan)
         displacement = np.full((n_cases, len(points), 2), np.nan)
         hit = np.flatnonzero(element >= 0)
-        quads = self._mesh.quads[element[hit]]
+        quads, fields = self._mesh.quads[element[hit]], self._mesh.field_quads[element[hit]]
         shapes = shape_functions.values(9, local[hit])[:, None, :]
         row = self._rim_row[element[hit]]
         at_rim = row >= 0
         for case in range(n_cases):
-            nodal = self.stress.nodal[case][quads]
+            nodal = self.stress.nodal[case][fields]
             nodal[at_rim] = self._rim_nodal[case, row[at_rim]]
             stress[case, hit] = (shapes @ nodal)[:, 0]
             displacement[case, hit] = (shapes @ self._solution.displacements[case][quads])[:, 0]
+        for who, other, at in zip(
+            *other_hands(self._mesh, self.locator, points, element, self._near), strict=True
+        ):
+            nodal = self.stress.nodal[:, self._mesh.field_quads[other]]
+            rival = (shape_functions.values(9, at[None]) @ nodal)[:, 0]
+            stronger = self._size(rival) > self._size(stress[:, who])
+            stress[:, who] = np.where(stronger[:, None], rival, stress[:, who])
         on = np.flatnonzero((side >= 0) & (element >= 0))
         stress[:, on] = self._edge_values(side[on], place[on])
         return stress, displacement
+
+    def zones_at(self, points: ArrayLike) -> list[tuple[int, ...]]:
+        """The zones that meet at each point (-1 for the wall itself); none off the part."""
+        points = np.asarray(points, dtype=float).reshape(-1, 2)
+        return zones_at(self._mesh, self.locator, points, self._near)
 
     def raw(self, points: ArrayLike) -> Floats:
         """Stress [MPa] straight from the element's own strains, (n_cases, n, 3), for comparison."""
@@ -100,7 +114,8 @@ class PointReader:
         stress = np.full((len(self._solution.displacements), len(points), 3), np.nan)
         hit = np.flatnonzero(element >= 0)
         strains = strains_at(self._mesh, self._solution, element[hit], local[hit])
-        stress[:, hit] = strains @ self._hooke
+        stiff = self._hooke if self._hooke.ndim == 2 else self._hooke[element[hit]]
+        stress[:, hit] = (strains[..., None, :] @ stiff)[..., 0, :]
         return stress
 
     def on_boundary(self, points: ArrayLike) -> tuple[Ints, Floats]:
@@ -112,6 +127,9 @@ class PointReader:
         points = np.asarray(points, dtype=float).reshape(-1, 2)
         element, _ = self.locator.locate(points)
         return self._on_boundary(points, element)
+
+    def _size(self, stress: Floats) -> Floats:
+        return von_mises(stress, self._poisson)
 
     def _on_boundary(self, points: Floats, element: Ints) -> tuple[Ints, Floats]:
         """As `on_boundary`, looking only at points in elements at the rim."""
@@ -149,7 +167,7 @@ class PointReader:
         after, before = self._chains.following[side], self._chains.preceding[side]
         for here, other, k in ((at_end, after, 0), (at_start, before, 2)):
             rival = values[:, other[here], k]
-            stronger = von_mises(rival, self._poisson) > von_mises(found[:, here], self._poisson)
+            stronger = self._size(rival) > self._size(found[:, here])
             found[:, here] = np.where(stronger[..., None], rival, found[:, here])
         return np.asarray(found)
 

@@ -3,7 +3,8 @@
 Inside, `patch_recovery` fits the stresses round every inner corner node; where no patch reaches (a
 wall one element wide) the elements' stresses are carried to the nodes and averaged.  On the
 boundary both would lose an order of accuracy exactly where the peaks are, so `edge_recovery` takes
-over there.
+over there.  Where thickness or material changes the stress jumps: nothing is fitted or averaged
+over such a line, and its nodes have a value on each hand (`Mesh.field_quads`).
 """
 
 from __future__ import annotations
@@ -15,7 +16,7 @@ from screenapp.mechanics import constraints, loads, shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
 from screenapp.mechanics.corner_stress import disturbed_corners
 from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
-from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.element_walls import element_hooke, element_thickness, hooke_of
 from screenapp.mechanics.energy_error import energy_error
 from screenapp.mechanics.patch_recovery import recover_inside
 from screenapp.mechanics.quadrature import gauss_square
@@ -35,13 +36,15 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     Raises:
         SolvingError: the wall has no usable material.
     """
-    hooke = constitutive_matrix(wall_material(part), part.wall.state)
+    hooke = element_hooke(part, mesh)
     traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in part.cases])
     held = constraints.held_sides(part, shape, mesh)
     inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
     chains = boundary_chains(shape, mesh)
+    behind = mesh.sides[:, 0]
+    thickness = element_thickness(part, mesh)
     at_supports = supported_stress(
-        mesh, chains, solution, held, traction, part.wall.thickness, inside[:, mesh.side_nodes]
+        mesh, chains, solution, held, traction, thickness[behind], inside[:, mesh.side_fields]
     )
     samples = edge_strains(mesh, solution.displacements, solution.element.startswith("quad4"))
     side = recover_edge_stress(
@@ -52,16 +55,19 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
         held,
         disturbed_corners(part, mesh),
         at_supports,
-        hooke,
+        hooke_of(hooke, behind),
     )
     fitted, reached = recover_inside(mesh, solution, hooke)
     nodal = with_edges(mesh, np.where(reached[:, None], fitted, inside), side)
-    error = energy_error(mesh, solution, hooke, nodal, side)
+    error = energy_error(mesh, solution, hooke, nodal, side, thickness)
     return StressField(nodal, side, error)
 
 
 def extrapolated_stress(mesh: Mesh, solution: Solution, hooke: Floats) -> Floats:
     """Each element's own stress at its nine nodes, carried there from its 2 × 2 points.
+
+    Args:
+        hooke: (3, 3) or one for each element (n_elements, 3, 3) [MPa].
 
     Returns:
         (n_cases, n_elements, 9, 3) [MPa].
@@ -76,27 +82,27 @@ def extrapolated_stress(mesh: Mesh, solution: Solution, hooke: Floats) -> Floats
 
 
 def averaged_stress(mesh: Mesh, own: Floats) -> Floats:
-    """Mean over the elements that meet at each node, (n_cases, n_nodes, 3) [MPa].
+    """Mean over the elements of one zone that meet at each node, (n_cases, n_fields, 3) [MPa].
 
     Args:
         own: each element's stress at its nine nodes, (n_cases, n_elements, 9, 3).
     """
-    flat = mesh.quads.ravel()
-    count = np.bincount(flat, minlength=mesh.n_nodes)
+    flat, n = mesh.field_quads.ravel(), len(mesh.field_nodes)
+    count = np.bincount(flat, minlength=n)
     total = np.stack(
-        [[np.bincount(flat, case[..., k].ravel(), mesh.n_nodes) for k in range(3)] for case in own]
+        [[np.bincount(flat, case[..., k].ravel(), n) for k in range(3)] for case in own]
     )
     return np.asarray(np.swapaxes(total / np.maximum(count, 1), 1, 2))
 
 
 def with_edges(mesh: Mesh, inside: Floats, side: Floats) -> Floats:
     """The field inside with its boundary nodes replaced by the mean of their sides' values."""
-    flat = mesh.side_nodes.ravel()
-    count = np.bincount(flat, minlength=mesh.n_nodes)
+    flat, n = mesh.side_fields.ravel(), inside.shape[1]
+    count = np.bincount(flat, minlength=n)
     rim = count > 0
     nodal = inside.copy()
     for case in range(len(side)):
         for k in range(3):
-            total = np.bincount(flat, side[case, :, :, k].ravel(), mesh.n_nodes)
+            total = np.bincount(flat, side[case, :, :, k].ravel(), n)
             nodal[case, rim, k] = total[rim] / count[rim]
     return nodal

@@ -1,19 +1,21 @@
 """Places where the theory of elasticity itself gives no finite stress.
 
-A sharp re-entrant corner, the end of a support, a force or a support at a point: there the stress
-grows with every refinement, and the number on any one mesh means nothing.
+A sharp re-entrant corner, the end of a support, a corner or end of a change of thickness, a force
+or a support at a point: there the stress grows with every refinement, and the number on any one
+mesh means nothing.
 """
 
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
 from typing import Literal
 
 import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.corner_exponent import SLIDING, Face, growth_rate
+from screenapp.mechanics.singular_spot import SingularSpot
+from screenapp.mechanics.zone_spots import fans, zone_spots
 from screenapp.model.curves import Curve
 from screenapp.model.members import whole_id
 from screenapp.model.part import (
@@ -30,6 +32,8 @@ from screenapp.model.shape import Shape
 Held = Literal["free", "fixed", "normal"] | float
 """How a piece of the boundary is held; a number is the angle [rad] of the one held direction."""
 
+__all__ = ["SingularSpot", "faces", "singular_spots"]
+
 _LEAST_RATE = 0.02
 """Growth slower than this cannot be told from none in seven passes and is not counted."""
 
@@ -37,34 +41,19 @@ _SMOOTH = 1e-6  # the boundary is smooth where it turns by less [rad]
 _SAME_DIRECTION = 1e-6  # sine of the angle between directions that count as one
 
 
-@dataclass(frozen=True)
-class SingularSpot:
-    """One such place.
-
-    Attributes:
-        at: [mm].
-        ids: what meets there (corner, edges, support, load).
-        why: in words, e.g. "the stress at the sharp re-entrant corner c4 (270°) has no finite
-            value".
-        mend: what would settle it.
-        rate: growth rate α = 1 - λ; 1 under a point force (stress as 1/r).
-        place: where, in words, e.g. "corner c4".
-        case: id of the only case it belongs to; empty for all cases.
-    """
-
-    at: Point
-    ids: tuple[str, ...]
-    why: str
-    mend: str
-    rate: float
-    place: str
-    case: str = ""
-
-
 def singular_spots(part: Part, shape: Shape) -> tuple[SingularSpot, ...]:
     """Every singular place of a valid part."""
-    spots = [*_junctions(part, shape), *_points(part, shape)]
-    return tuple(spots)
+    kinds = faces(part, shape)
+    at_zones = zone_spots(
+        part, shape, lambda piece, along: _against(kinds[piece], along), _LEAST_RATE
+    )
+    ends = [fan.at for fan in fans(shape)]
+    spots = [
+        s
+        for s in _junctions(part, shape)
+        if all(math.dist(s.at, end) > 1e-6 * shape.size for end in ends)
+    ]  # at an interface the fan of walls says more
+    return (*spots, *at_zones, *_points(part, shape))
 
 
 def faces(part: Part, shape: Shape) -> list[Held]:

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics.assembly import System, assemble, condense_loads, internal_forces, spread
 from screenapp.mechanics.constraints import HeldDirections, held_directions, reduce
-from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.equilibrium import balance, reactions
 from screenapp.mechanics.linear_solve import solve_refined
 from screenapp.mechanics.loads import nodal_forces
@@ -33,12 +33,17 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
         SolvingError: no material, a motion that nothing holds, or equations that cannot be solved.
         Cancelled: the user asked to stop.
     """
-    elastic = constitutive_matrix(wall_material(part), part.wall.state)
     held = held_directions(part, shape, mesh)
     forces = np.zeros((len(part.cases), mesh.n_nodes, 2))
     for number, case in enumerate(part.cases):
         forces[number] = nodal_forces(part, shape, mesh, case)
-    system = assemble(mesh, part.mesh.element, elastic, part.wall.thickness, progress)
+    system = assemble(
+        mesh,
+        part.mesh.element,
+        element_hooke(part, mesh),
+        element_thickness(part, mesh),
+        progress,
+    )
     return solve_system(system, held, forces, progress)
 
 

@@ -35,7 +35,7 @@ def supported_stress(
     solution: Solution,
     held: Bools,
     traction: Floats,
-    thickness: float,
+    thickness: Floats,
     inside: Floats,
 ) -> Floats:
     """The averaged stress on the sides, brought to the traction of the supports where held.
@@ -43,7 +43,7 @@ def supported_stress(
     Args:
         held: sides held along their normal and tangent, (n_sides, 2).
         traction: of the loads, (n_cases, n_sides, 3, 2) [MPa].
-        thickness: of the wall [mm].
+        thickness: of the wall behind each side [mm], (n_sides,).
         inside: averaged stresses at the sides' nodes, (n_cases, n_sides, 3, 3) [MPa].
 
     Returns:
@@ -89,7 +89,7 @@ def support_tractions(
     chains: BoundaryChains,
     held: Bools,
     forces: Floats,
-    thickness: float,
+    thickness: Floats,
     inside: Floats,
     linear: bool,
 ) -> Floats:
@@ -98,7 +98,7 @@ def support_tractions(
     Args:
         held: sides held along their normal and tangent, (n_sides, 2).
         forces: what the supports give at each node, (n_cases, n_nodes, 2) [N].
-        thickness: of the wall [mm].
+        thickness: of the wall behind each side [mm], (n_sides,).
         inside: traction of the averaged field at the sides' nodes, (n_cases, n_sides, 3, 2) [MPa].
         linear: whether the element's sides are linear (their middle node carries nothing).
 
@@ -153,7 +153,7 @@ def _equations(
     ends: Ints,
     columns: list[int],
     forces: Floats,
-    thickness: float,
+    thickness: Floats,
     count: int,
 ) -> tuple[csr_matrix, Floats]:
     """Mass matrix of the held sides and the reactions on its right side."""
@@ -168,7 +168,7 @@ def _equations(
         shapes = np.stack(
             [0.5 * _POINTS * (_POINTS - 1), 1 - _POINTS**2, 0.5 * _POINTS * (_POINTS + 1)], axis=1
         )
-    block = thickness * np.einsum("g,ng,gi,gj->nij", _WEIGHTS, length, shapes, shapes)
+    block = np.einsum("n,g,ng,gi,gj->nij", thickness[own], _WEIGHTS, length, shapes, shapes)
     chosen = ends[:, columns]
     rows = np.broadcast_to(chosen[:, :, None], block.shape).ravel()
     across = np.broadcast_to(chosen[:, None, :], block.shape).ravel()

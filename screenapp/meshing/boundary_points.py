@@ -1,5 +1,7 @@
 """Where the boundary of the mesh has its nodes: an even number of sides on every piece.
 
+Interfaces between zones are divided likewise, once for both banks.
+
 The sides follow the wanted sizes: equal shares of the integral of ds / h.  Every second node is
 given to the triangulator, the nodes between them become the middles that its subdivision makes.
 """
@@ -13,8 +15,9 @@ import shapely
 from numpy.typing import NDArray
 
 from screenapp.meshing.size_field import GRADATION, SizeField
+from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import MeshingError
-from screenapp.model.shape import Shape
+from screenapp.model.shape import BoundaryCurve, Region, Shape
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -60,12 +63,16 @@ class BoundaryPoints:
 
 
 def count_sides(shape: Shape, sizes: SizeField) -> float:
-    """The integral of ds / h over the whole boundary: about how many sides it will have."""
-    return sum(float(running[-1]) for _, running in _integrals(shape, sizes))
+    """The integral of ds / h over the whole boundary and both banks of interfaces: about how many
+    sides they will have."""
+    found = [float(running[-1]) for _, running in _integrals(shape, sizes)]
+    return sum(found) + sum(found[len(shape.curves) :])
 
 
-def place_points(shape: Shape, sizes: SizeField) -> BoundaryPoints:
+def place_points(shape: Shape, sizes: SizeField) -> tuple[BoundaryPoints, ...]:
     """Divide every piece by the wanted sizes, more where the chords would cross.
+
+    Returns the points round each of `shape.parts`.
 
     Raises:
         MeshingError: more than `MOST_SIDES`, or the chords still cross after splitting: the shape
@@ -80,24 +87,46 @@ def place_points(shape: Shape, sizes: SizeField) -> BoundaryPoints:
         )
     parameters = [_equal_shares(t, running) for t, running in integrals]
     for _ in range(MENDS):
-        crossing = _crossing_pieces(shape, parameters)
+        own = [_own(part, parameters) for part in shape.parts]
+        crossing = {
+            part.pieces[k]
+            for part, mine in zip(shape.parts, own, strict=True)
+            for k in _crossing_pieces(part.shape, mine)
+        }
         if not crossing:
-            return _collect(shape, parameters)
+            return tuple(
+                _collect(part.shape, mine) for part, mine in zip(shape.parts, own, strict=True)
+            )
         for piece in crossing:
             parameters[piece] = _doubled(parameters[piece])
-    where = ", ".join(sorted({shape.curves[i].feature for i in crossing}))
+    where = ", ".join(sorted({_every_curve(shape)[i].feature for i in crossing}))
     raise MeshingError(
         f"the boundary crosses or touches itself at {where}",
         "move the outline and holes apart so that material is left between them",
     )
 
 
+def _every_curve(shape: Shape) -> tuple[BoundaryCurve, ...]:
+    """The pieces of the boundary, then the interfaces."""
+    inner = (BoundaryCurve(i.zone, "edge", i.curve, len(shape.loops)) for i in shape.interfaces)
+    return (*shape.curves, *inner)
+
+
+def _own(part: Region, parameters: list[Floats]) -> list[Floats]:
+    """The parameters on the curves of one region."""
+    return [
+        parameters[piece] if forward else 1.0 - parameters[piece][::-1]
+        for piece, forward in zip(part.pieces, part.forward, strict=True)
+    ]
+
+
 def _integrals(shape: Shape, sizes: SizeField) -> list[tuple[Floats, Floats]]:
-    """For every piece: parameters from 0 to 1, and the running integral of ds / h up to each.
+    """For every piece and interface: parameters from 0 to 1, and the running integral of ds / h up
+    to each.
 
     Parameters are added until the size is known closely enough between them.
     """
-    table = shape.table
+    table = CurveTable.of(_every_curve(shape)) if shape.interfaces else shape.table
     piece = np.repeat(np.arange(len(table)), FEWEST)
     t = np.tile(np.linspace(0.0, 1.0, FEWEST), len(table))
     h = sizes.at(table.points(piece, t))

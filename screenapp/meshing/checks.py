@@ -84,7 +84,7 @@ def find_faults(mesh: Mesh, shape: Shape, quality: Quality) -> list[str]:
         faults.append(
             f"the mesh covers {quality.area:.8g} mm² where the part has {expected:.8g} mm²"
         )
-    return faults + _boundary_faults(mesh, shape) + _connection_faults(mesh, len(shape.loops))
+    return faults + _boundary_faults(mesh, shape) + connection_faults(mesh, len(shape.loops))
 
 
 def parabola_excess(mesh: Mesh, shape: Shape) -> float:
@@ -128,7 +128,7 @@ def _boundary_faults(mesh: Mesh, shape: Shape) -> list[str]:
     return faults
 
 
-def _connection_faults(mesh: Mesh, n_loops: int) -> list[str]:
+def connection_faults(mesh: Mesh, n_loops: int) -> list[str]:
     """Sides belong to two elements inside and to one on the boundary; no node is loose; the
     number of corners, sides and elements fits a plate with that many loops (Euler)."""
     faults = []

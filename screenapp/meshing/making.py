@@ -15,9 +15,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.meshing.boundary_points import joint_angles, place_points
-from screenapp.meshing.checks import find_faults, measure_quality
+from screenapp.meshing.checks import connection_faults, find_faults, measure_quality
 from screenapp.meshing.gmsh_quads import Recipe, fill
 from screenapp.meshing.nine_nodes import build_mesh, side_middles
+from screenapp.meshing.sewing import sew
 from screenapp.meshing.size_field import SizeField, with_spots
 from screenapp.meshing.smoothing import smooth
 from screenapp.model.errors import MeshingError
@@ -115,7 +116,8 @@ def make_mesh(shape: Shape, sizes: SizeField, ways: tuple[Way, ...] = WAYS) -> M
 
 def good_enough(shape: Shape) -> float:
     """The worst scaled Jacobian that is good for a part: less than usual if a corner is sharp."""
-    sharpest = min(float(joint_angles(shape).min()), 0.5 * math.pi)
+    sharpest = min(float(joint_angles(part.shape).min()) for part in shape.parts)
+    sharpest = min(sharpest, 0.5 * math.pi)
     return min(GOOD, SHARE_OF_TIP * math.sin(sharpest))
 
 
@@ -127,12 +129,20 @@ def _attempt(shape: Shape, sizes: SizeField, recipe: Recipe, good: float) -> Att
         ValueError: what it made does not fit the boundary.
         MeshingError: the boundary cannot be divided.
     """
-    boundary = place_points(shape, sizes.scaled(recipe.size_factor))
-    linear = fill(boundary, sizes, recipe)
-    middles = side_middles(shape, boundary)
-    points = smooth(linear.points, linear.quads, boundary.following, middles)
-    mesh = build_mesh(shape, boundary, points, linear.quads)
-    quality = measure_quality(mesh)
-    mesh = replace(mesh, worst_jacobian=quality.worst)
-    poor = mesh.nodes[mesh.quads[quality.scaled < good, 8]]
-    return Attempt(mesh, find_faults(mesh, shape, quality), poor)
+    meshes: list[Mesh] = []
+    faults: list[str] = []
+    poor: list[Floats] = []
+    boundaries = place_points(shape, sizes.scaled(recipe.size_factor))
+    for part, boundary in zip(shape.parts, boundaries, strict=True):
+        linear = fill(boundary, sizes, recipe)
+        middles = side_middles(part.shape, boundary)
+        points = smooth(linear.points, linear.quads, boundary.following, middles)
+        mesh = build_mesh(part.shape, boundary, points, linear.quads)
+        quality = measure_quality(mesh)
+        meshes.append(replace(mesh, worst_jacobian=quality.worst))
+        poor.append(mesh.nodes[mesh.quads[quality.scaled < good, 8]])
+        faults += find_faults(mesh, part.shape, quality)
+    whole = sew(shape, meshes)
+    if len(meshes) > 1 and not faults:
+        faults += connection_faults(whole, len(shape.loops))
+    return Attempt(whole, faults, np.concatenate(poor))

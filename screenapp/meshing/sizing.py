@@ -113,20 +113,21 @@ def piece_limit(curve: Curve, angle: float) -> float:
 def _from_form(shape: Shape, largest: float, angle: float, across: int) -> SizeField:
     """A field from the form of the part: pieces, arcs and, if `across` > 0, walls."""
     spots, sizes = [], []
-    for piece in shape.curves:
-        limit = piece_limit(piece.curve, angle)
-        if limit >= largest:
-            continue
-        count = math.ceil(piece.curve.length / limit)
-        spots.append(piece.curve.point(np.linspace(0.0, 1.0, count + 1)))
-        sizes.append(np.full(count + 1, limit))
-    if across > 0:
-        walls = measure_walls(shape)
-        # Elements come from triangles twice as large, of which a whole number lies across.
-        layers = 2 * math.ceil(0.5 * across)
-        thin = walls.thickness < layers * largest
-        spots.append(walls.points[thin])
-        sizes.append(walls.thickness[thin] / layers)
+    for part in shape.parts:
+        for piece in part.shape.curves:
+            limit = piece_limit(piece.curve, angle)
+            if limit >= largest:
+                continue
+            count = math.ceil(piece.curve.length / limit)
+            spots.append(piece.curve.point(np.linspace(0.0, 1.0, count + 1)))
+            sizes.append(np.full(count + 1, limit))
+        if across > 0:
+            walls = measure_walls(part.shape)
+            # Elements come from triangles twice as large, of which a whole number lies across.
+            layers = 2 * math.ceil(0.5 * across)
+            thin = walls.thickness < layers * largest
+            spots.append(walls.points[thin])
+            sizes.append(walls.thickness[thin] / layers)
     points = np.concatenate(spots) if spots else np.empty((0, 2))
     limits = np.concatenate(sizes) if sizes else np.empty(0)
     return background(points, limits, shape.bounds, largest)

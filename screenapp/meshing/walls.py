@@ -56,7 +56,7 @@ class Walls:
         return float(self.thickness.min())
 
 
-@lru_cache(maxsize=16)
+@lru_cache(maxsize=64)
 def measure_walls(shape: Shape) -> Walls:
     """Sample the boundary and measure the wall at each sample."""
     table = shape.table

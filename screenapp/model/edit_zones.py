@@ -21,6 +21,8 @@ def add_zone(
     """
     id_ = new_id(part, "z")
     named: Form = LoopHole(id_, form) if isinstance(form, Loop) else replace(form, id=id_)
+    if isinstance(named, CircleHole | SlotHole) and named.pattern is not None:
+        raise EditError("a pattern cannot be a zone", "draw one zone, or several")
     if thickness is None and material is None:
         thickness = 2.0 * part.wall.thickness
     zone = Zone(named, None if thickness is None else float(thickness), material)
@@ -77,8 +79,7 @@ def remove_zone(part: Part, zone: str) -> Part:
 def hole_to_zone(part: Part, hole: str, thickness: float | None = None) -> Outcome:
     """Fill a hole with a zone of its form; supports and loads on the hole go with it."""
     record = must_find(part, hole, "hole").record
-    if not isinstance(record, CircleHole | SlotHole | LoopHole):
-        raise EditError(f"hole {hole} cannot become a zone", "choose a single hole")
+    assert isinstance(record, CircleHole | SlotHole | LoopHole)
     places = {hole}
     if isinstance(record, LoopHole):
         places |= {c.id for c in record.loop.corners} | {e.id for e in record.loop.edges}

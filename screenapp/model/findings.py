@@ -59,6 +59,7 @@ class Peak:
         sizes: size of the elements there on each pass [mm].
         rate: growth α = -d ln(value) / d ln(size) over the last passes; None where it is not known.
         allowed: half band within which it counts as settled [MPa]; None where it is not known.
+        zone: id of the zone whose wall it is in; "" for the wall itself.
         structural: for a rising peak beside a free edge, the structural stress drawn on from
             0.4 t and 1.0 t [MPa]; else None.
     """
@@ -75,6 +76,7 @@ class Peak:
     sizes: tuple[float, ...] = ()
     rate: float | None = None
     allowed: float | None = None
+    zone: str = ""
 
 
 @dataclass(frozen=True)

@@ -10,8 +10,12 @@ from screenapp.model.errors import Fault
 from screenapp.model.part import CircleHole, SlotHole
 
 
-def hole_curves(hole: CircleHole | SlotHole, faults: list[Fault]) -> list[BoundaryCurve]:
-    """A circle (four quarter arcs) or slot, counter-clockwise."""
+def hole_curves(
+    hole: CircleHole | SlotHole, faults: list[Fault], where: str = ""
+) -> list[BoundaryCurve]:
+    """A circle (four quarter arcs) or slot, counter-clockwise; fields of faults begin with
+    `where` (that of the hole where it is not given)."""
+    where = where or f"holes.{hole.id}"
     sizes = (
         {"diameter": hole.diameter}
         if isinstance(hole, CircleHole)
@@ -21,9 +25,9 @@ def hole_curves(hole: CircleHole | SlotHole, faults: list[Fault]) -> list[Bounda
         if not (math.isfinite(value) and value > 0.0):
             faults.append(
                 Fault(
-                    f"the {name} of hole {hole.id} is {value:g} mm",
+                    f"the {name} of {hole.id} is {value:g} mm",
                     f"give a {name} above zero",
-                    f"holes.{hole.id}.{name}",
+                    f"{where}.{name}",
                     (hole.id,),
                     hole.centre,
                 )
@@ -41,7 +45,7 @@ def hole_curves(hole: CircleHole | SlotHole, faults: list[Fault]) -> list[Bounda
             Fault(
                 f"slot {hole.id} is {hole.length:g} mm long but {hole.width:g} mm wide",
                 "make the overall length at least the width, or turn the slot by 90°",
-                f"holes.{hole.id}.length",
+                f"{where}.length",
                 (hole.id,),
                 hole.centre,
             )

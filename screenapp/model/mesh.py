@@ -9,13 +9,14 @@ Local numbering of a quad (counter-clockwise; ξ to the right, η upwards)::
         0 ---- 4 ---- 1
 
 The same mesh serves every element: the bilinear quads use columns 0..3, the 8-node quad 0..7.
-Interior sides are straight with their middle node at the middle; only boundary sides are curved;
-the centre node is the transfinite blend of the eight others.
+Interior sides are straight with their middle node at the middle; only sides on the boundary and on
+interfaces between zones are curved; the centre node is the transfinite blend of the eight others.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
@@ -47,6 +48,8 @@ class Mesh:
         corner_nodes: node index of each sharp corner, by corner id.
         worst_jacobian: the smallest scaled Jacobian at a corner or Gauss point.
         fallback: how a first attempt failed and what was done instead; empty if nothing failed.
+        zones: index in `Part.zones` of each element's zone, -1 for the wall itself,
+            (n_elements,); None where the part has no zones.
     """
 
     nodes: Floats
@@ -57,6 +60,52 @@ class Mesh:
     corner_nodes: dict[str, int]
     worst_jacobian: float
     fallback: str = ""
+    zones: Ints | None = None
+
+    @cached_property
+    def element_zones(self) -> Ints:
+        """The zone of each element, -1 for the wall itself, (n_elements,)."""
+        return np.full(len(self.quads), -1) if self.zones is None else self.zones
+
+    @cached_property
+    def field_quads(self) -> Ints:
+        """As `quads`, but for fields that jump between zones: a node where several zones meet has
+        a number in each; (n_elements, 9).
+
+        In the first of them (by index) it keeps its own number; the others follow `n_nodes`.
+        """
+        return self._fields[0]
+
+    @cached_property
+    def field_nodes(self) -> Ints:
+        """The node behind each number of `field_quads`, (n_fields,); the first are 0, 1, 2 ..."""
+        return self._fields[1]
+
+    @cached_property
+    def field_zones(self) -> Ints:
+        """The zone of each number of `field_quads`, -1 for the wall itself, (n_fields,)."""
+        zones = np.full(len(self.field_nodes), -1)
+        zones[self.field_quads] = self.element_zones[:, None]
+        return zones
+
+    def paintable(self, values: Floats) -> Floats:
+        """Values of a field (n_fields,) as they are drawn: at the nodes (n_nodes,), or where zones
+        meet at the nodes of each element (n_elements, 9)."""
+        return values if len(values) == self.n_nodes else np.asarray(values[self.field_quads])
+
+    @cached_property
+    def _fields(self) -> tuple[Ints, Ints]:
+        nodes = np.arange(self.n_nodes)
+        if self.zones is None or not np.ptp(self.zones):
+            return self.quads, nodes
+        n = self.n_nodes
+        key = (self.zones[:, None] + 1) * n + self.quads
+        pairs, number = np.unique(key, return_inverse=True)  # zone by zone
+        node = pairs % n
+        extra = np.ones(len(pairs), dtype=bool)
+        extra[np.unique(node, return_index=True)[1]] = False
+        field = np.where(extra, n - 1 + np.cumsum(extra), node)
+        return field[number].reshape(self.quads.shape), np.concatenate([nodes, node[extra]])
 
     @property
     def n_nodes(self) -> int:
@@ -80,6 +129,13 @@ class Mesh:
             ],
             axis=1,
         )
+
+    @property
+    def side_fields(self) -> Ints:
+        """As `side_nodes`, in the numbers of `field_quads`, (n_sides, 3)."""
+        element, side = self.sides.T
+        places = np.stack([side, 4 + side, (side + 1) % 4], axis=1)
+        return np.asarray(self.field_quads[element[:, None], places])
 
     def sides_on(self, pieces: tuple[int, ...]) -> Ints:
         """Indices of the boundary sides that lie on the given pieces of the shape."""

@@ -103,6 +103,7 @@ def _peak(peak: Peak) -> Tree:
         "history": [finite(value) for value in peak.history],
         "structural": None if peak.structural is None else estimate_tree(peak.structural),
         **_trace(peak),
+        "zone": peak.zone,
     }
 
 

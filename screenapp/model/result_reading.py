@@ -90,6 +90,7 @@ def _peak_of(tree: Tree) -> Peak:
         _history_of(tree["history"]),
         estimate_of(tree["structural"]) if tree.get("structural") is not None else None,
         *_trace_of(tree),
+        zone=tree.get("zone", ""),
     )
 
 

@@ -27,6 +27,40 @@ __all__ = ["BoundaryCurve", "Shape", "edge_curves", "loop_curves", "shape_of"]
 
 
 @dataclass(frozen=True)
+class Interface:
+    """A line inside the part on which thickness or material changes, between two junctions.
+
+    Attributes:
+        zone: id of the zone whose form it follows.
+        curve: the line itself.
+        left, right: index in `Part.zones` of what lies on either hand, -1 for the wall itself.
+    """
+
+    zone: str
+    curve: Curve
+    left: int
+    right: int
+
+
+@dataclass(frozen=True)
+class Region:
+    """A connected stretch of the part with one thickness and one material.
+
+    Attributes:
+        zone: index in `Part.zones`, -1 for the wall itself.
+        shape: its own boundary, interfaces included, material on the left.
+        pieces: for each curve of `shape`, the piece of the whole shape's `curves` that it is, or
+            their number plus the index of the interface.
+        forward: whether each of them runs the same way as there.
+    """
+
+    zone: int
+    shape: Shape
+    pieces: tuple[int, ...]
+    forward: tuple[bool, ...]
+
+
+@dataclass(frozen=True)
 class Shape:
     """The whole boundary.
 
@@ -36,12 +70,26 @@ class Shape:
         hole_ids: the hole's id for each loop, None for the outline; members of a pattern have
             derived ids ("h4.3").
         sharp_corners: id and place [mm] of each sharp point; a chamfer has two ("c4.1", "c4.2").
+        interfaces, regions: where thickness or material changes, and what lies between; both are
+            empty where the whole part is one (see `regions.shape_with_zones`).
     """
 
     curves: tuple[BoundaryCurve, ...]
     loops: tuple[tuple[int, int], ...]
     hole_ids: tuple[str | None, ...]
     sharp_corners: tuple[tuple[str, Point], ...]
+    interfaces: tuple[Interface, ...] = ()
+    regions: tuple[Region, ...] = ()
+
+    @property
+    def parts(self) -> tuple[Region, ...]:
+        """The regions; where there are no zones, the whole shape as one."""
+        every = range(len(self.curves))
+        return self.regions or (Region(-1, self, tuple(every), tuple(True for _ in every)),)
+
+    def zone_behind(self, piece: int) -> int:
+        """The zone that a piece of the boundary belongs to, -1 for the wall itself."""
+        return next((r.zone for r in self.regions if piece in r.pieces), -1)
 
     @property
     def area(self) -> float:

@@ -66,7 +66,9 @@ class StressField:
     """Recovered stresses of all cases.
 
     Attributes:
-        nodal: fitted inside, edge recovery on the boundary, (n_cases, n_nodes, 3) [MPa].
+        nodal: fitted inside, edge recovery on the boundary, (n_cases, n_fields, 3) [MPa], in the
+            numbers of `Mesh.field_quads`: those of the nodes, but that a node between zones has a
+            value in each.
         side: edge recovery at the start, middle and end of every boundary side,
             (n_cases, n_sides, 3, 3) [MPa]: axis 2 is the place, axis 3 the component.  Two sides
             that meet at a sharp corner keep different values.

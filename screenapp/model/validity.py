@@ -26,7 +26,8 @@ from screenapp.model.value_faults import (
     reading_faults,
     wall_faults,
 )
-from screenapp.model.zone_faults import zone_value_faults
+from screenapp.model.zone_faults import zone_cautions, zone_value_faults
+from screenapp.model.zone_shape_faults import divided_shape
 
 
 def faults_of(part: Part) -> tuple[Fault, ...]:
@@ -47,8 +48,6 @@ def check(part: Part) -> Shape:
     """
     faults, shape = _examine(part)
     blocking = tuple(f for f in faults if f.blocks)
-    if part.zones:  # until the mechanics knows them: never a wrong number
-        blocking += (Fault("zones are not screened yet", "remove the zones", "zones"),)
     if blocking or shape is None:
         raise InvalidPartError.of(blocking)
     return shape
@@ -63,6 +62,7 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *shape_faults,
         *wall_faults(part),
         *zone_value_faults(part),
+        *zone_cautions(part),
         *material_faults(part),
         *dimension_faults(part),
         *support_faults(part, places, shape),
@@ -90,4 +90,9 @@ def _sound_shape(part: Part) -> tuple[Shape | None, CurveTable | None, list[Faul
         return None, None, list(error.faults)
     table = shape.table
     faults = boundary_faults(shape, table)
-    return (None, None, faults) if faults else (shape, table, [])
+    if faults or not part.zones:
+        return (None, None, faults) if faults else (shape, table, [])
+    divided, faults = divided_shape(part, shape)
+    if divided is None:
+        return None, None, faults
+    return divided, CurveTable.of(divided.curves), faults

@@ -38,3 +38,18 @@ def zone_value_faults(part: Part) -> Iterator[Fault]:
             "wall.state",
             tuple(z.id for z in part.zones),
         )
+
+
+def zone_cautions(part: Part) -> Iterator[Fault]:
+    """What a screening with zones leaves out; nothing here blocks."""
+    own = [z.id for z in part.zones if z.thickness not in (None, part.wall.thickness)]
+    if own:
+        yield Fault(
+            f"the middle plane of {'zone' if len(own) == 1 else 'zones'} {', '.join(own)} is taken "
+            "to be the wall's: where thickness is added on one side only, the wall bends as well, "
+            "which is left out",
+            "add the thickness on both sides, or check the bending by hand",
+            f"zones.{own[0]}.thickness",
+            tuple(own),
+            blocks=False,
+        )

@@ -7,10 +7,10 @@ from xml.sax.saxutils import escape
 
 import numpy as np
 
-from screenapp.model.curves import Segment
+from screenapp.model.curves import Curve, Segment
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
-from screenapp.model.shape import BoundaryCurve, Shape
+from screenapp.model.shape import Shape
 
 WIDTH = 720.0
 MARGIN = 48.0
@@ -34,7 +34,7 @@ class _Paper:
 def part_svg(part: Part, shape: Shape, findings: Findings) -> str:
     """The part with its mesh in the background and its peaks numbered as in the tables."""
     paper = _Paper(shape)
-    body = [_mesh_path(findings, paper), _outline_path(shape, paper)]
+    body = [_mesh_path(findings, paper), *_interfaces(shape, paper), _outline_path(shape, paper)]
     body += _names(part, shape, paper)
     number = 0
     for case in findings.cases:
@@ -65,13 +65,21 @@ def _outline_path(shape: Shape, paper: _Paper) -> str:
     for first, last in shape.loops:
         start = paper.at(*shape.curves[first].curve.start)
         data.append(f"M{start[0]:.2f} {start[1]:.2f}")
-        data += [_piece(piece, paper) for piece in shape.curves[first:last]]
+        data += [_piece(piece.curve, paper) for piece in shape.curves[first:last]]
         data.append("Z")
     return f'<path class="outline" d="{"".join(data)}"/>'
 
 
-def _piece(piece: BoundaryCurve, paper: _Paper) -> str:
-    curve = piece.curve
+def _interfaces(shape: Shape, paper: _Paper) -> list[str]:
+    """Lines between zones."""
+    paths = []
+    for interface in shape.interfaces:
+        x, y = paper.at(*interface.curve.start)
+        paths.append(f'<path class="zone" d="M{x:.2f} {y:.2f}{_piece(interface.curve, paper)}"/>')
+    return paths
+
+
+def _piece(curve: Curve, paper: _Paper) -> str:
     x, y = paper.at(*curve.end)
     if isinstance(curve, Segment):
         return f"L{x:.2f} {y:.2f}"

@@ -14,7 +14,7 @@ from screenapp.model.findings import Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import DisplayUnits, GravityLoad, Load, Part
-from screenapp.model.shape import shape_of
+from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
 from screenapp.report.drawing import part_svg
 from screenapp.report.history_svg import history_svg
@@ -35,7 +35,7 @@ def record_page(part: Part, findings: Findings, when: datetime) -> str:
     def estimate(value: Estimate, kind: EstimateKind) -> str:
         return estimate_text(value, kind, units)
 
-    shape = shape_of(part)
+    shape = shape_with_zones(part)
     x0, y0, x1, y1 = shape.bounds
     return template.render(
         part=part,

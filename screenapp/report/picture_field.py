@@ -7,7 +7,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.model.allowables import allowable
+from screenapp.model.allowables import allowables
 from screenapp.model.estimate_text import estimate_text, unit_of, value_text
 from screenapp.model.findings import CaseFindings, Fields, Findings, LimitFindings
 from screenapp.model.part import DisplacementLimit, Part, Point, StressLimit
@@ -26,7 +26,8 @@ class PaintedField:
 
     Attributes:
         title: what is painted, with its unit.
-        values: at the nodes, in stored units, (n_nodes,).
+        values: in stored units, at the nodes (n_nodes,), or where zones meet at those of each
+            element (n_elements, 9).
         scale: its colours.
         factor: from a stored value to the one written at the colour bar.
         case: name of the case.
@@ -57,8 +58,8 @@ def governing_field(part: Part, findings: Findings) -> PaintedField:
         raise ValueError("findings without fields have nothing to paint")
     rests_on = findings.governing
     limit = next((x for x in part.limits if rests_on and x.id == rests_on.limit), None)
-    if rests_on is not None and isinstance(limit, StressLimit) and part.material is not None:
-        allowed = allowable(limit, part.material)
+    if rests_on is not None and isinstance(limit, StressLimit):
+        allowed = allowables(limit, part)
         if allowed is not None:
             return _utilisation(part, findings, fields, rests_on, limit, allowed)
     if rests_on is not None and isinstance(limit, DisplacementLimit):
@@ -67,7 +68,8 @@ def governing_field(part: Part, findings: Findings) -> PaintedField:
 
 
 def measured(part: Part, fields: Fields, case: int, measure: str) -> Floats:
-    """A stress measure at every node [MPa], (n_nodes,); tension alone of a principal stress."""
+    """A stress measure [MPa] in the numbers of `Mesh.field_quads`, (n_fields,); tension alone of a
+    principal stress."""
     stress = fields.stress.nodal[case]
     if measure == "von_mises":
         return von_mises(stress, out_of_plane_ratio(part))
@@ -87,10 +89,11 @@ def _utilisation(
     fields: Fields,
     rests_on: LimitFindings,
     limit: StressLimit,
-    allowed: float,
+    allowed: tuple[float, ...],
 ) -> PaintedField:
     index, case = _case_of(findings, rests_on)
-    values = measured(part, fields, index, limit.measure) / allowed
+    shares = measured(part, fields, index, limit.measure)
+    values = fields.mesh.paintable(shares / np.array(allowed)[fields.mesh.field_zones + 1])
     used = value_text(rests_on.utilisation, "factor", part.display_units)
     peak = next(
         (p for p in case.peaks if p.quantity == limit.measure and p.at == rests_on.at), None
@@ -106,7 +109,8 @@ def _utilisation(
         detail = f"{rests_on.place} · {beside} {used}"
     what = _WORDS[limit.measure]
     return PaintedField(
-        f"{what} over the allowable {value_text_of(allowed, part)}",
+        f"{what} over the allowable "
+        + ", ".join(value_text_of(a, part) for a in dict.fromkeys(allowed)),
         values,
         colours.utilisation(float(values.max(initial=0.0))),
         1.0,
@@ -153,7 +157,7 @@ def _stress(part: Part, findings: Findings, fields: Fields) -> PaintedField:
     ]
     index, top = max(peaks, key=lambda row: row[1].estimate.value, default=(0, None))
     case = findings.cases[index]
-    values = measured(part, fields, index, "von_mises")
+    values = fields.mesh.paintable(measured(part, fields, index, "von_mises"))
     factor, unit = unit_of("stress", part.display_units)
     return PaintedField(
         f"{_WORDS['von_mises']}, {unit}",

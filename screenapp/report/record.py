@@ -9,8 +9,8 @@ from screenapp.model.atomic_write import write_atomically
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import part_to_text
+from screenapp.model.regions import shape_with_zones
 from screenapp.model.result_json import findings_to_record, record_to_text
-from screenapp.model.shape import shape_of
 from screenapp.report.page import record_page
 from screenapp.report.picture import part_picture
 from screenapp.report.tables import peaks_csv, readings_csv
@@ -56,6 +56,6 @@ def write_record(part: Part, findings: Findings, folder: Path, source: Path) -> 
         write_vtu(part, findings.last, path)
         written.append(path)
         path = folder / f"{stem}.png"
-        write_atomically(path, part_picture(part, shape_of(part), findings))
+        write_atomically(path, part_picture(part, shape_with_zones(part), findings))
         written.append(path)
     return written

@@ -17,19 +17,24 @@ def write_vtu(part: Part, fields: Fields, path: Path) -> None:
     """Write displacements [mm], stresses [MPa] and energy error of every case.
 
     Arrays are named after the case's id: `displacement k1`, `stress k1` (σx, σy, τxy),
-    `von Mises k1`.  In plane strain the von Mises stress counts σz.
+    `von Mises k1`.  In plane strain the von Mises stress counts σz.  Nodes between zones are
+    written once for each zone, since the stress jumps there; the zone of each element, where there
+    are any, is `zone` (0 for the wall itself).
     """
     poisson = out_of_plane_ratio(part)
     mesh = fields.mesh
-    points = np.column_stack([mesh.nodes, np.zeros(mesh.n_nodes)])
+    nodes = mesh.field_nodes
+    points = np.column_stack([mesh.nodes[nodes], np.zeros(len(nodes))])
     at_nodes: dict[str, object] = {}
     in_cells: dict[str, list[object]] = {}
     for k, case in enumerate(part.cases):
-        moved = fields.solution.displacements[k]
+        moved = fields.solution.displacements[k, nodes]
         at_nodes[f"displacement {case.id}"] = np.column_stack([moved, np.zeros(len(moved))])
         at_nodes[f"stress {case.id}"] = fields.stress.nodal[k]
         at_nodes[f"von Mises {case.id}"] = von_mises(fields.stress.nodal[k], poisson)
         in_cells[f"energy error {case.id}"] = [fields.stress.energy_error[k]]
-    meshio.Mesh(points, [("quad9", mesh.quads)], point_data=at_nodes, cell_data=in_cells).write(
-        path, file_format="vtu"
-    )
+    if mesh.zones is not None:
+        in_cells["zone"] = [mesh.zones + 1]
+    meshio.Mesh(
+        points, [("quad9", mesh.field_quads)], point_data=at_nodes, cell_data=in_cells
+    ).write(path, file_format="vtu")

@@ -163,12 +163,12 @@ def _point_factor(part: Part, last: Pass) -> Floats:
     p = order(last.fields.solution.element)
     factor = np.full(mesh.n_nodes, np.inf)
     for k in range(len(part.cases)):
-        value = measure("von_mises", last.fields.stress.nodal[k], part)
+        value = measure("von_mises", last.fields.stress.nodal[k], part)  # (n_fields,)
         peak = last.measure_max("von_mises", k)
         if peak <= 0.0:
             continue
         high = value > HIGH_SHARE * peak
         goal = part.mesh.tolerance * peak
         doubt = np.maximum(last.doubt[k], 1e-3 * goal)
-        factor[high] = np.minimum(factor[high], (goal / doubt[high]) ** (1.0 / p))
+        np.minimum.at(factor, mesh.field_nodes[high], (goal / doubt[high]) ** (1.0 / p))
     return factor

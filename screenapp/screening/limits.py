@@ -9,8 +9,9 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from dataclasses import dataclass
 
-from screenapp.model.allowables import allowable
+from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
 from screenapp.model.part import DisplacementLimit, Part, StressLimit
 from screenapp.model.place_words import point_words
@@ -40,72 +41,79 @@ def judge_limits(part: Part, cases: Sequence[CaseFindings]) -> tuple[LimitFindin
 
 def _stress(limit: StressLimit, part: Part, case: CaseFindings) -> LimitFindings:
     name = limit_name(limit)
-    material = part.material
-    allowed = allowable(limit, material) if material else None
+    allowed = allowables(limit, part)
     peaks = [p for p in case.peaks if p.quantity == limit.measure]
     if allowed is None or not peaks:
         why = "the material has no such stress" if allowed is None else "the part is not stressed"
         trust: Estimate = Estimate(0.0, 0.0, 0.0, "settled" if allowed is not None else "unsettled")
         verdict: Verdict = "holds" if allowed is not None else "undecided"
         return LimitFindings(limit.id, name, case.case, trust, verdict, (0.0, 0.0), "", why)
-    over = [p for p in peaks if _settled_over(_counted(p, allowed, limit), allowed)]
+    number = {zone.id: k + 1 for k, zone in enumerate(part.zones)}
+    used = [_used(p, allowed[number.get(p.zone, 0)], limit) for p in peaks]
+    over = [u for u in used if u.share.trust == "settled" and u.share.low > 1.0]
     open_ = [
-        p
-        for p in peaks
-        if _counted(p, allowed, limit).trust == "rising"
-        or (p not in over and _counted(p, allowed, limit).high >= allowed)
+        u for u in used if u.share.trust == "rising" or (u not in over and u.share.high >= 1.0)
     ]
-    top = _counted(peaks[0], allowed, limit)
+    largest = max(used, key=_size)
     if over:
-        governing_peak = max(over, key=lambda p: _counted(p, allowed, limit).value)
-        used = _counted(governing_peak, allowed, limit)
+        governing = max(over, key=_size)
         verdict = "does not hold"
-        beside = "the structural stress beside " if used is governing_peak.structural else ""
+        beside = "the structural stress beside " if governing.structural else ""
         reason = (
-            f"{beside}{governing_peak.place} uses {used.value / allowed:.2f} of its allowable "
+            f"{beside}{governing.peak.place} uses {governing.share.value:.2f} of its allowable "
             f"under “{case.name}”"
         )
-    elif open_ or top.trust != "settled":
-        governing_peak = _most_doubtful(open_ or peaks[:1])
+    elif open_ or largest.share.trust != "settled":
+        # a rising peak first (it has no value at all), then the largest
+        governing = max(open_ or [largest], key=lambda u: (u.share.trust == "rising", _size(u)))
         verdict = "undecided"
-        reason = _why_undecided(governing_peak, allowed, case.name)
+        reason = _why_undecided(governing, case.name)
     else:
-        governing_peak = max(peaks, key=lambda p: _counted(p, allowed, limit).value)
+        governing = largest
         verdict = "holds"
         reason = ""
     return LimitFindings(
         limit.id,
         name,
         case.case,
-        _scaled(_counted(governing_peak, allowed, limit), 1.0 / allowed),
+        governing.share,
         verdict,
-        governing_peak.at,
-        governing_peak.place,
+        governing.peak.at,
+        governing.peak.place,
         reason,
     )
 
 
-def _counted(peak: Peak, allowed: float, limit: StressLimit) -> Estimate:
+@dataclass(frozen=True)
+class _Use:
+    """A peak with the share of its allowable that it uses; `structural` says whether that is by
+    the structural stress beside it."""
+
+    peak: Peak
+    share: Estimate
+    structural: bool
+
+
+def _used(peak: Peak, allowed: float, limit: StressLimit) -> _Use:
     """What counts of a peak: its value, or beside a rising one its structural stress, where the
     user accepts that or where it alone is already too much."""
     beside = peak.structural
-    if peak.estimate.trust != "rising" or beside is None or beside.trust != "settled":
-        return peak.estimate
-    if limit.at_rising == "structural" or beside.low > allowed:
-        return beside
-    return peak.estimate
+    structural = (
+        peak.estimate.trust == "rising"
+        and beside is not None
+        and beside.trust == "settled"
+        and (limit.at_rising == "structural" or beside.low > allowed)
+    )
+    counted = beside if structural and beside is not None else peak.estimate
+    return _Use(peak, _scaled(counted, 1.0 / allowed), structural)
 
 
-def _settled_over(estimate: Estimate, allowed: float) -> bool:
-    return estimate.trust == "settled" and estimate.low > allowed
+def _size(used: _Use) -> float:
+    return used.share.value
 
 
-def _most_doubtful(peaks: Sequence[Peak]) -> Peak:
-    """A rising peak first (it has no value at all), then the largest."""
-    return max(peaks, key=lambda p: (p.estimate.trust == "rising", p.estimate.value))
-
-
-def _why_undecided(peak: Peak, allowed: float, case: str) -> str:
+def _why_undecided(used: _Use, case: str) -> str:
+    peak = used.peak
     if peak.estimate.trust == "rising":
         return f"{peak.why}: {peak.mend}" if peak.mend else peak.why
     if peak.estimate.trust == "unsettled":
@@ -114,7 +122,7 @@ def _why_undecided(peak: Peak, allowed: float, case: str) -> str:
             if peak.why
             else f"the stress at {peak.place} under “{case}” is not settled"
         )
-    low, high = peak.estimate.low / allowed, peak.estimate.high / allowed
+    low, high = used.share.low, used.share.high
     return (
         f"{peak.place} uses between {low:.3f} and {high:.3f} of its allowable under “{case}”: "
         "ask for a closer tolerance, or change the part"

@@ -14,7 +14,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics import shape_functions
-from screenapp.mechanics.elasticity import constitutive_matrix, wall_material
+from screenapp.mechanics.elasticity import wall_material
+from screenapp.mechanics.element_walls import element_hooke
 from screenapp.mechanics.energy_error import pointwise_jump
 from screenapp.mechanics.point_reading import PointReader
 from screenapp.mechanics.recovery import extrapolated_stress
@@ -61,11 +62,10 @@ class Pass:
 
     @cached_property
     def doubt(self) -> Floats:
-        """Gap between recovered and own von Mises stress at each node, (n_cases, n_nodes)."""
+        """Gap between recovered and own von Mises stress, (n_cases, n_fields) as
+        `StressField.nodal`."""
         f, material = self.fields, wall_material(self.part)
-        own = extrapolated_stress(
-            f.mesh, f.solution, constitutive_matrix(material, self.part.wall.state)
-        )
+        own = extrapolated_stress(f.mesh, f.solution, element_hooke(self.part, f.mesh))
         poisson = material.poissons_ratio if self.part.wall.state == "plane strain" else 0.0
         return pointwise_jump(f.mesh, own, f.stress.nodal, f.stress.side, poisson)
 
@@ -95,7 +95,7 @@ class Pass:
         stress, displacement = self.reader.read(points)
         element, xi = self.reader.locator.locate(points)
         weights = shape_functions.values(4, xi)
-        corners = mesh.quads[element, :4]
+        corners = mesh.field_quads[element, :4]
         doubt = (self.doubt[:, corners] * weights).sum(axis=-1)
         return PointValues(stress, displacement, doubt, self.sizes[element])
 

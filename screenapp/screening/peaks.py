@@ -13,6 +13,7 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy.signal import find_peaks
 
+from screenapp.model.allowables import demands
 from screenapp.model.curves import Arc
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part, Point
@@ -40,6 +41,8 @@ class RawPeak:
         piece: index of the boundary piece, -1 inside.
         s: arc length along the loop [mm] (0 inside).
         size: size of the element there [mm].
+        zone: index of the zone it is in, -1 for the wall itself.
+        demand: how much more its value counts than elsewhere (`allowables.demands`).
     """
 
     value: float
@@ -47,6 +50,13 @@ class RawPeak:
     piece: int
     s: float
     size: float
+    zone: int = -1
+    demand: float = 1.0
+
+    @property
+    def counted(self) -> float:
+        """The value times its demand, by which peaks are compared [MPa]."""
+        return self.value * self.demand
 
 
 def measure(name: str, stress: Floats, part: Part) -> Floats:
@@ -65,11 +75,11 @@ def find(name: str, part: Part, shape: Shape, fields: Fields, case: int) -> list
     sizes = fields.mesh.element_sizes
     found = _on_boundary(name, part, shape, fields, case, sizes)
     found += _inside(name, part, fields, case, sizes)
-    found.sort(key=lambda peak: -peak.value)
+    found.sort(key=lambda peak: -peak.counted)
     if not found:
         return []
-    least = LEAST_SHARE * found[0].value
-    return [peak for peak in found if peak.value >= least and peak.value > 0.0][:MOST]
+    least = LEAST_SHARE * found[0].counted
+    return [peak for peak in found if peak.counted >= least and peak.value > 0.0][:MOST]
 
 
 def side_stress(stress: Floats, t: Floats) -> Floats:
@@ -86,7 +96,8 @@ def _on_boundary(
     loop_of = np.array([piece.loop for piece in shape.curves])[mesh.side_piece]
     # both ends of a side count: at a sharp corner the two sides differ there
     places = np.concatenate([_SAMPLES, [1.0]])
-    values = measure(name, side_stress(stress, places), part)
+    demand = np.array(demands(name, part))[mesh.element_zones[mesh.sides[:, 0]] + 1]
+    values = measure(name, side_stress(stress, places), part) * demand[:, None]
     lengths = np.array([shape.curves[i].curve.length for i in mesh.side_piece])
     lengths = lengths * (mesh.side_t[:, 1] - mesh.side_t[:, 0])
     highest = float(values.max(initial=0.0))
@@ -104,11 +115,13 @@ def _on_boundary(
             at = shape.curves[piece].curve.point(t0 + place * (t1 - t0))
             found.append(
                 RawPeak(
-                    float(line[k]),
+                    float(line[k] / demand[side]),
                     (float(at[0]), float(at[1])),
                     piece,
                     float(s[k]),
                     float(lengths[side]),
+                    int(mesh.element_zones[mesh.sides[side, 0]]),
+                    float(demand[side]),
                 )
             )
     return found
@@ -130,19 +143,29 @@ def _cyclic_peaks(line: Floats, prominence: float) -> list[int]:
 def _inside(name: str, part: Part, fields: Fields, case: int, sizes: Floats) -> list[RawPeak]:
     """Nodes inside whose value no neighbour exceeds, away from the boundary's elements."""
     mesh = fields.mesh
-    value = measure(name, fields.stress.nodal[case], part)
-    around = np.full(mesh.n_nodes, -np.inf)
-    np.maximum.at(around, mesh.quads, value[mesh.quads].max(axis=1, keepdims=True))
-    inner = np.ones(mesh.n_nodes, dtype=bool)
-    inner[mesh.quads[mesh.sides[:, 0]]] = False
-    inner[mesh.side_nodes] = False
+    demand = np.array(demands(name, part))[mesh.field_zones + 1]
+    value = measure(name, fields.stress.nodal[case], part) * demand
+    quads, n = mesh.field_quads, len(mesh.field_nodes)
+    around = np.full(n, -np.inf)
+    np.maximum.at(around, quads, value[quads].max(axis=1, keepdims=True))
+    inner = np.ones(n, dtype=bool)
+    inner[quads[mesh.sides[:, 0]]] = False
+    inner[mesh.side_fields] = False
     top = np.flatnonzero(inner & (value >= around) & (value > 0.5 * value.max()))
-    size = np.zeros(mesh.n_nodes)
-    np.maximum.at(size, mesh.quads, np.broadcast_to(sizes[:, None], mesh.quads.shape))
+    size = np.zeros(n)
+    np.maximum.at(size, quads, np.broadcast_to(sizes[:, None], quads.shape))
     return [
-        RawPeak(float(value[i]), (float(x), float(y)), -1, 0.0, float(size[i]))
+        RawPeak(
+            float(value[i] / demand[i]),
+            (float(x), float(y)),
+            -1,
+            0.0,
+            float(size[i]),
+            int(mesh.field_zones[i]),
+            float(demand[i]),
+        )
         for i in top
-        for x, y in [mesh.nodes[i]]
+        for x, y in [mesh.nodes[mesh.field_nodes[i]]]
     ]
 
 

@@ -47,6 +47,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     points = np.array([on_boundary(shape, probe.at) for probe in part.readings])
     read = [p.read(points) for p in passes]
     spots = singular_spots(part, shape)
+    zones = passes[-1].reader.zones_at(points)
     found: list[Reading] = []
     for k, case in enumerate(part.cases):
         largest = passes[-1].measure_max("von_mises", k)
@@ -57,7 +58,18 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
                 spot = spot_at(spots, probe.at, case.id, ON_BOUNDARY * shape.size)
                 found.append(
                     _reading(
-                        part, shape, read, k, i, probe, case.id, spot, creeping, largest, moved
+                        part,
+                        shape,
+                        read,
+                        k,
+                        i,
+                        probe,
+                        case.id,
+                        spot,
+                        creeping,
+                        largest,
+                        moved,
+                        zones[i],
                     )
                 )
     return tuple(found)
@@ -75,6 +87,7 @@ def _reading(
     creeping: Sequence[float] | None,
     largest: float,
     largest_moved: float,
+    zones: tuple[int, ...],
 ) -> Reading:
     rate = spot.rate if spot else 0.0
     piece = piece_at(shape, probe.at)
@@ -116,7 +129,7 @@ def _reading(
         values,
         trust,
         feature_of(shape, piece),
-        place_in_words(shape, piece, probe.at),
+        place_in_words(shape, piece, probe.at) + zone_words(part, zones),
         why,
         tuple(von_mises),
         tuple(float(v.size[i]) for v in read),
@@ -138,6 +151,16 @@ def _moved(
         return judge(samples, tolerance, scale)
     samples = [Sample(n, size) for n, size in zip(numbers, creeping, strict=True)]
     return judge_creeping(samples, tolerance, scale)
+
+
+def zone_words(part: Part, zones: tuple[int, ...]) -> str:
+    """The zones that meet at a place, in words to follow its name; "" in the wall itself."""
+    if zones in ((), (-1,)):
+        return ""
+    names = ["the wall" if zone < 0 else f"zone {part.zones[zone].id}" for zone in zones]
+    if len(names) == 1:
+        return f", in {names[0]}"
+    return f", between {' and '.join(names)} (the larger stress of the two sides is given)"
 
 
 def _quantities(part: Part, stress: Floats, displacement: Floats) -> dict[str, float]:

@@ -34,6 +34,7 @@ from screenapp.model.findings import (
     Reading,
 )
 from screenapp.model.gauge_text import loss_text
+from screenapp.model.mass import mass_of
 from screenapp.model.part import Part, Point, StressLimit
 from screenapp.model.part_json import part_sha256, screening_key
 from screenapp.model.progress import SILENT, Progress, Step
@@ -226,9 +227,7 @@ def _findings(
     walls = wall_gauges(part, shape, last.mesh)
     limits = judge_limits(part, cases)
     verdict, headline, reasons = overall(limits)
-    material = part.material
     area = shape.area
-    density = material.density if material else 0.0
     cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]
     if part.mesh.element == "quad4":
         said = loss_text(plain, {case.id: case.name for case in part.cases})
@@ -253,7 +252,7 @@ def _findings(
         verdict=verdict,
         headline=headline,
         reasons=reasons,
-        mass_kg=area * part.wall.thickness * density * 1e-9,
+        mass_kg=mass_of(part, shape),
         area=area,
         cases=cases,
         readings=read,

@@ -86,10 +86,11 @@ def _paths(
     """
     if spot.rate >= 1.0:  # a point force or support: no toe to draw a line to
         return []
-    t, slack = part.wall.thickness, 1e-9 * shape.size
+    slack = 1e-9 * shape.size
     kinds = faces(part, shape)
     found: list[tuple[str, tuple[Point, Point], Floats]] = []
-    for piece, kind in zip(shape.curves, kinds, strict=True):
+    for number, (piece, kind) in enumerate(zip(shape.curves, kinds, strict=True)):
+        t = part.wall_of(shape.zone_behind(number)).thickness
         if kind != "free" or piece.curve.length < (FAR + NEAR) * t:
             continue
         if math.dist(piece.curve.start, spot.at) < slack:

@@ -49,7 +49,7 @@ def track(
                 if spot.at in taken:
                     continue
                 taken.add(spot.at)
-            found.append(_peak(part, shape, passes, name, k, case, raw, spot, raws[0].value))
+            found.append(_peak(part, shape, passes, name, k, case, raw, spot, raws[0].counted))
     found.sort(key=lambda p: (p.quantity != "von_mises", -p.estimate.value))
     return tuple(found)
 
@@ -67,9 +67,11 @@ def _peak(
 ) -> Peak:
     samples = [_sample(part, earlier, name, k, raw, spot) for earlier in passes]
     # a peak below the largest one need not be known more closely than it matters
-    scale = max(abs(raw.value), 0.5 * largest)
+    scale = max(abs(raw.value), 0.5 * largest / raw.demand)
     estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
     at, place = raw.at, place_in_words(shape, raw.piece, raw.at)
+    zone = part.zones[raw.zone].id if raw.zone >= 0 else ""
+    place += _zone_words(part, raw, passes[-1])
     why = mend = ""
     structural: Estimate | None = None
     if estimate.trust == "rising":
@@ -102,7 +104,19 @@ def _peak(
         tuple(s.size for s in samples),
         growth(samples),
         part.mesh.tolerance * scale,
+        zone,
     )
+
+
+def _zone_words(part: Part, raw: RawPeak, last: Pass) -> str:
+    """The zone that a peak is in, and the step that it stands at; "" in the wall itself."""
+    if not part.zones:
+        return ""
+    (met,) = last.reader.zones_at([raw.at])
+    names = {z: "the wall" if z < 0 else f"zone {part.zones[z].id}" for z in (*met, raw.zone)}
+    words = f", in {names[raw.zone]}" if raw.zone >= 0 else ""
+    others = [name for z, name in sorted(names.items()) if z != raw.zone]
+    return words + (f", at the step to {' and '.join(others)}" if others else "")
 
 
 def _why_unsettled(estimate: Estimate, spot: SingularSpot | None) -> str:
@@ -128,6 +142,7 @@ def _sample(
         for p in earlier.peaks(name, k)
         if math.dist(p.at, raw.at) <= _REACH * max(p.size, raw.size)
         and (p.piece < 0) == (raw.piece < 0)
+        and p.zone == raw.zone
     ]
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))

@@ -8,7 +8,7 @@ from math import floor, log10
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.model.allowables import allowable
+from screenapp.model.allowables import allowables
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part, StressLimit
 from screenapp.model.solution import principal, von_mises
@@ -44,7 +44,13 @@ class NoField:
 
 
 def stress_of(fields: Fields, case: int, component: str, part: Part) -> Floats:
-    """One stress component at every node [MPa], (n_nodes,)."""
+    """One stress component [MPa] at every node, (n_nodes,), or where zones meet at the nodes of
+    each element, (n_elements, 9)."""
+    return fields.mesh.paintable(_component(fields, case, component, part))
+
+
+def _component(fields: Fields, case: int, component: str, part: Part) -> Floats:
+    """One stress component in the numbers of `Mesh.field_quads`, (n_fields,)."""
     stress = fields.stress.nodal[case]
     if component == "von_mises":
         return von_mises(stress, _poisson(part))
@@ -62,20 +68,20 @@ def displacement_of(fields: Fields, case: int, component: str) -> Floats:
 
 
 def utilisation_of(fields: Fields, case: int, part: Part) -> Floats | NoField:
-    """Share of the allowable stress used at every node, (n_nodes,): the worst stress limit's."""
+    """Share of the allowable stress used, shaped as by `stress_of`: the worst stress limit's."""
     limits = [limit for limit in part.limits if isinstance(limit, StressLimit)]
     if not limits:
         return NoField("No limit on stress is set: add one under 5 Limits to see how much is used")
     shares: list[Floats] = []
     for limit in limits:
-        allowed = allowable(limit, part.material) if part.material is not None else None
+        allowed = allowables(limit, part)
         if allowed is None:
             what = "proof stress" if limit.against == "proof_stress" else "strength"
             return NoField(f"The material has no {what}: give one under 2 Wall")
         # compression uses nothing of a limit on the largest principal stress
-        measured = np.maximum(stress_of(fields, case, limit.measure, part), 0.0)
-        shares.append(measured / allowed)
-    return np.asarray(np.max(shares, axis=0))
+        measured = np.maximum(_component(fields, case, limit.measure, part), 0.0)
+        shares.append(measured / np.array(allowed)[fields.mesh.field_zones + 1])
+    return fields.mesh.paintable(np.asarray(np.max(shares, axis=0)))
 
 
 def error_share_of(fields: Fields, case: int, tolerance: float) -> Floats:

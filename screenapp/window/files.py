@@ -15,7 +15,7 @@ from screenapp.model.errors import InvalidPartError, ScreenappError
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import read_part, write_part
-from screenapp.model.shape import shape_of
+from screenapp.model.regions import shape_with_zones
 from screenapp.screening.probes import read_probes
 from screenapp.window.ask import SUFFIX, Ask
 from screenapp.window.document import Document
@@ -133,7 +133,7 @@ class Files(QObject):
 def with_readings(part: Part, findings: Findings) -> Findings:
     """The findings with the readings of the part's present probes."""
     try:
-        return read_probes(part, shape_of(part), findings)
+        return read_probes(part, shape_with_zones(part), findings)
     except InvalidPartError as error:  # findings are only of sound parts: worth a line in the log
         log.warning("readings could not be renewed: %s", error.cause)
         return findings

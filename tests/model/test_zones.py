@@ -143,14 +143,14 @@ def test_faults_in_the_file_name_the_field_and_its_line(change: str, field: str)
 
 @pytest.mark.parametrize("thickness", [0.0, -2.0, math.nan, math.inf, 2e6])
 def test_a_thickness_that_is_none_is_a_fault(thickness: float) -> None:
-    part = zoned(Zone(CircleHole("z1", (50.0, 25.0), 10.0), thickness))
-    (fault,) = [f for f in faults_of(part) if f.field == "zones.z1.thickness"]
-    assert fault.blocks
+    part = zoned(Zone(CircleHole("z1", (25.0, 25.0), 10.0), thickness))
+    (fault,) = [f for f in faults_of(part) if f.field == "zones.z1.thickness" and f.blocks]
+
     assert fault.ids == ("z1",)
 
 
 def test_a_material_that_the_part_does_not_carry_is_a_fault() -> None:
-    part = zoned(Zone(CircleHole("z1", (50.0, 25.0), 10.0), None, "unobtainium"))
+    part = zoned(Zone(CircleHole("z1", (25.0, 25.0), 10.0), None, "unobtainium"))
     assert [f.field for f in faults_of(part) if f.blocks] == ["zones.z1.material"]
 
 
@@ -170,13 +170,13 @@ def test_a_form_that_is_no_form_is_a_fault(form: CircleHole | SlotHole, field: s
 
 
 def test_zones_and_plane_strain_do_not_go_together() -> None:
-    part = zoned(Zone(CircleHole("z1", (50.0, 25.0), 10.0), 5.0))
+    part = zoned(Zone(CircleHole("z1", (25.0, 25.0), 10.0), 5.0))
     strained = replace(part, wall=replace(part.wall, state="plane strain"))
     assert "wall.state" in [f.field for f in faults_of(strained) if f.blocks]
 
 
 def test_a_limit_needs_the_stress_of_every_material_used() -> None:
-    part = zoned(Zone(CircleHole("z1", (50.0, 25.0), 10.0), None, "resin"))
+    part = zoned(Zone(CircleHole("z1", (25.0, 25.0), 10.0), None, "resin"))
     resin = Material("resin", 3000.0, 0.35, 1200.0)
     part = replace(part, materials=(*part.materials, resin))
     limit = edits.add_limit(part, StressLimit("g9"))

@@ -153,8 +153,9 @@ class LensPainter(QObject):
         return (
             source.case,
             self._document.view,
-            part.material,
-            part.wall.state,
+            part.materials,
+            part.wall,
+            part.zones,
             part.limits,
             part.mesh.tolerance,
             part.display_units,

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 
-from screenapp.model.allowables import allowable
+from screenapp.model.allowables import allowables
 from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
@@ -148,10 +148,11 @@ def use_text(part: Part, peak: Peak) -> str:
     """Share of the allowable stress that the peak uses; a dash where no limit is on it."""
     uses = []
     for limit in part.limits:
-        if isinstance(limit, StressLimit) and limit.measure == peak.quantity and part.material:
-            allowed = allowable(limit, part.material)
+        if isinstance(limit, StressLimit) and limit.measure == peak.quantity:
+            allowed = allowables(limit, part)
             if allowed:
-                uses.append(peak.estimate.value / allowed)
+                number = {zone.id: k + 1 for k, zone in enumerate(part.zones)}
+                uses.append(peak.estimate.value / allowed[number.get(peak.zone, 0)])
     if not uses:
         return "–"
     text = plain(max(uses), 2)
