@@ -9,6 +9,7 @@ from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 from screenapp.window import theme
 from screenapp.window.board.board_commands import board_commands
 from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.dimension_marks import DimensionsShown
 from screenapp.window.board.elided_label import ElidedLabel
 from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
@@ -102,6 +103,14 @@ class Board(QWidget):
         """Show the whole part."""
         self.canvas.fit()
 
+    def show_dimensions(self, shown: DimensionsShown) -> None:
+        """Show all dimensions or none; if that is so already, overall and selected ones."""
+        canvas = self.canvas
+        canvas.dimensions_shown = "plain" if canvas.dimensions_shown == shown else shown
+        words = {"plain": "overall and selected", "all": "all", "none": "hidden"}
+        self.document.said.emit(f"Dimensions: {words[canvas.dimensions_shown]}.")
+        canvas.show_dimensions()
+
     def zoom_in(self) -> None:
         """Magnify about the middle."""
         self.canvas.zoom(1.25)
@@ -177,6 +186,7 @@ class Board(QWidget):
 
     def _part_changed(self) -> None:
         self.canvas.placing.drop()
+        self.canvas.number.close_editor()
         if self.canvas.tool is not None:
             self.canvas.tool.part_changed()
         self.canvas.preview(None)

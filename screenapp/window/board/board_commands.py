@@ -41,6 +41,24 @@ def board_commands(board: Board) -> tuple[Command, ...]:
         Command("Zoom out", "Shows more of the board.", ("-", "Ctrl+-"), board.zoom_out),
         Command("Fit", "Shows the whole part.", ("Home",), board.fit),
         Command(
+            "All dimensions",
+            "Shows every dimension, or only overall sizes and those of what is selected.",
+            ("D",),
+            partial(board.show_dimensions, "all"),
+        ),
+        Command(
+            "Hide dimensions",
+            "Hides the dimensions, or shows them again.",
+            ("Shift+D",),
+            partial(board.show_dimensions, "none"),
+        ),
+        Command(
+            "Edit a dimension",
+            "Edits the first number on the board; Tab goes on to the next.",
+            ("Ctrl+D",),
+            board.canvas.edit_first_dimension,
+        ),
+        Command(
             "Step back",
             "Drops what is half done, then the tool, then the selection.",
             ("Esc",),

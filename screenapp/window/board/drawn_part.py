@@ -72,6 +72,11 @@ class DrawnPart:
         x0, y0, x1, y1 = zip(*boxes, strict=True)
         return min(x0), min(y0), max(x1), max(y1)
 
+    @property
+    def exact_bounds(self) -> tuple[float, float, float, float] | None:
+        """Smallest x, y and largest x, y [mm] of the outline, to the last figure."""
+        return self.loops[0].exact_box if self.part.outline is not None else None
+
     def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
         """Pieces of an edge, fillet, hole of any kind or whole pattern."""
         if feature in self.hole_ids:

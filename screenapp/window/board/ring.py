@@ -8,6 +8,7 @@ from functools import cached_property, lru_cache
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.curve_table import CurveTable
 from screenapp.model.curves import Curve, Segment
 from screenapp.model.errors import InvalidPartError
 from screenapp.model.part import Corner, Edge, Hole, Loop, LoopHole, Part, Point
@@ -50,6 +51,17 @@ class Ring:
         if not np.isfinite(points).all():
             return None
         (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
+        return float(x0), float(y0), float(x1), float(y1)
+
+    @cached_property
+    def exact_box(self) -> tuple[float, float, float, float] | None:
+        """As `box`, to the last figure."""
+        if not self.pieces:
+            return None
+        boxes = CurveTable.of(tuple(self.pieces)).boxes
+        if not np.isfinite(boxes).all():
+            return None
+        (x0, y0), (x1, y1) = boxes[:, :2].min(axis=0), boxes[:, 2:].max(axis=0)
         return float(x0), float(y0), float(x1), float(y1)
 
     def polyline(self, tolerance: float) -> Floats:

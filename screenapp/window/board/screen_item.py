@@ -13,12 +13,13 @@ from screenapp.window.board.frame import Frame
 
 log = logging.getLogger(__name__)
 
-Z_GRID, Z_FILL, Z_FIELD, Z_MESH, Z_OUTLINE, Z_SYMBOLS, Z_PROBES, Z_PREVIEW = (
+Z_GRID, Z_FILL, Z_FIELD, Z_MESH, Z_OUTLINE, Z_DIMENSIONS, Z_SYMBOLS, Z_PROBES, Z_PREVIEW = (
     0,
     5,
     10,
     20,
     30,
+    35,
     40,
     50,
     60,

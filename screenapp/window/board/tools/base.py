@@ -49,7 +49,8 @@ class Tool:
     """A drawing tool; the canvas calls these and repaints after each.
 
     `name`, `key`, `line` and `icon` are what the tool strip shows; `snaps` says whether clicks land
-    on snaps, `passes_over` which kinds of snap it does not want.
+    on snaps, `passes_over` which kinds of snap it does not want, `edits_numbers` whether the
+    numbers of dimensions come before what lies under them.
     """
 
     name: ClassVar[str] = ""
@@ -58,6 +59,7 @@ class Tool:
     icon: ClassVar[str] = ""
     snaps: ClassVar[bool] = True
     passes_over: ClassVar[frozenset[SnapKind]] = frozenset()
+    edits_numbers: ClassVar[bool] = False
 
     def __init__(self, canvas: Canvas) -> None:
         self.canvas = canvas

@@ -42,6 +42,7 @@ class SelectTool(Tool):
     line: ClassVar[str] = "Click to select, drag to move, double-click to edit or to put a corner."
     icon: ClassVar[str] = "select"
     snaps: ClassVar[bool] = False
+    edits_numbers: ClassVar[bool] = True
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
