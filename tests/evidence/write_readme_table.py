@@ -11,20 +11,20 @@ from pathlib import Path
 
 from tests.evidence.table import markdown, read
 
-BEGIN, END = "<!-- evidence -->", "<!-- /evidence -->"
 README = Path(__file__).parents[2] / "README.md"
 
 
-def with_table(text: str, table: str) -> str:
-    """The text with the table between its markers.
+def with_table(text: str, table: str, mark: str = "evidence") -> str:
+    """The text with the table between its markers, `<!-- mark -->` and `<!-- /mark -->`.
 
     Raises:
         ValueError: the markers are missing or the wrong way round.
     """
-    first, last = text.find(BEGIN), text.find(END)
+    begin, end = f"<!-- {mark} -->", f"<!-- /{mark} -->"
+    first, last = text.find(begin), text.find(end)
     if first < 0 or last < first:
-        raise ValueError(f"no {BEGIN} ... {END} in the text")
-    return f"{text[: first + len(BEGIN)]}\n{table}\n{text[last:]}"
+        raise ValueError(f"no {begin} ... {end} in the text")
+    return f"{text[: first + len(begin)]}\n{table}\n{text[last:]}"
 
 
 def main() -> int:
