@@ -49,12 +49,16 @@ Index = QModelIndex | QPersistentModelIndex
 
 @dataclass(frozen=True)
 class Column:
-    """A column: its heading, whether it holds numbers or a pill, and its tooltip."""
+    """A column: its heading, whether it holds numbers or a pill, and its tooltip.
+
+    A `spare` column gives way where words would be cut; its texts stand in the tooltips too.
+    """
 
     title: str
     number: bool = False
     pill: bool = False
     tip: str = ""
+    spare: bool = False
 
 
 @dataclass(frozen=True)
@@ -327,18 +331,24 @@ class FigureTable(QTableView):
                 wide = max(wide, round(need))
             wants.append(wide + 2 * PADDING + 1)
         spare = self.viewport().width() - sum(wants)
+        for i, column in enumerate(columns):
+            gives_way = column.spare and spare < 0
+            self.setColumnHidden(i, gives_way)
+            if gives_way:
+                spare += wants[i]
+                wants[i] = 0
         words = [i for i, c in enumerate(columns) if not c.number and not c.pill]
         if spare >= 0 and self.grows:
             wants[0] += spare
         elif spare >= 0:  # let the columns breathe
             wants = [wide + min(spare // len(wants), 40) for wide in wants]
         least_words = LEAST_IN_SHEET if self.grows else LEAST_WORDS
-        for some, least in (([i for i in words if i > 0], least_words), ([0], LEAST_NAME)):
-            while spare < 0 and some:  # from the widest, a pixel at a time
-                widest = max(some, key=lambda i: wants[i])
-                if wants[widest] <= least:
-                    break
-                wants[widest] -= 1
-                spare += 1
+        least = {i: LEAST_NAME if i == 0 else least_words for i in words}
+        while spare < 0:  # from the widest, a pixel at a time
+            wider = [i for i in words if wants[i] > least[i]]
+            if not wider:
+                break
+            wants[max(wider, key=lambda i: wants[i])] -= 1
+            spare += 1
         for i, wide in enumerate(wants):
             self.setColumnWidth(i, wide)

@@ -54,6 +54,8 @@ class Painting:
         zones, cards: as named.
         probes: place and text of each probe's value.
         caption: a sentence or two; "" for none.
+        marks: every peak with its trust, where that is what is shown.
+        legend: what each trust means here, in words, with its count.
     """
 
     points: Floats
@@ -67,6 +69,8 @@ class Painting:
     probes: tuple[tuple[Point, str], ...] = ()
     caption: str = ""
     ends: tuple[float, float] | None = None
+    marks: tuple[tuple[Point, Trust], ...] = ()
+    legend: tuple[tuple[Trust, str], ...] = ()
 
 
 @dataclass(frozen=True, eq=False)

@@ -6,9 +6,12 @@ board.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 import numpy as np
 
 from screenapp.model.estimate_text import estimate_text
+from screenapp.model.findings import Peak, Trust
 from screenapp.window import fields as scalars
 from screenapp.window.cards import (
     apart,
@@ -24,6 +27,12 @@ from screenapp.window.painted import Card, Floats, Painting, Source, Zone
 
 MOST_CARDS = 4
 """Cards shown at once; more would hide the part."""
+
+_MEANINGS: dict[Trust, str] = {
+    "rising": "rising: no finite value",
+    "unsettled": "not settled yet",
+    "settled": "settled to ± {:g} %",
+}
 
 WAITING: dict[Lens, str] = {
     "Shape": "",
@@ -146,14 +155,8 @@ def _trust(_view: View, source: Source) -> Painting:
     tolerance = source.part.mesh.tolerance
     found = source.case_findings
     peaks = found.peaks if found is not None else ()
-    counts = {t: sum(p.estimate.trust == t for p in peaks) for t in ("settled", "rising")}
-    unsettled = len(peaks) - counts["settled"] - counts["rising"]
-    caption = (
-        f"Peaks: {counts['settled']} settled, {counts['rising']} rising, {unsettled} not settled"
-        if found is not None
-        else ""
-    )
-    doubtful = [p for p in apart(peaks) if p.estimate.trust != "settled"]
+    places = apart(peaks)
+    doubtful = [p for p in places if p.estimate.trust != "settled"]
     shown = doubtful or peaks_of(source, "von_mises")[:1]
     return Painting(
         fields.mesh.nodes,
@@ -166,7 +169,18 @@ def _trust(_view: View, source: Source) -> Painting:
             source, tuple(peak_card(p, source) for p in shown[:MOST_CARDS]), first=True
         ),
         probes=probe_values(source, "von_mises", "stress"),
-        caption=caption,
+        caption="" if found is not None else "Peaks are judged after the last pass",
+        marks=tuple((p.at, p.estimate.trust) for p in places),
+        legend=_legend(places, tolerance) if found is not None else (),
+    )
+
+
+def _legend(places: Sequence[Peak], tolerance: float) -> tuple[tuple[Trust, str], ...]:
+    """What hatches and marks mean, with the number of places of each."""
+    counts = {t: sum(p.estimate.trust == t for p in places) for t in _MEANINGS}
+    return tuple(
+        (trust, f"{counts[trust]} {words.format(100.0 * tolerance)}")
+        for trust, words in _MEANINGS.items()
     )
 
 

@@ -130,7 +130,7 @@ def _columns(part: Part) -> tuple[Column, ...]:
     columns = [
         Column("Reading"),
         Column("Case"),
-        Column(f"x, y {length}", number=True),
+        Column(f"x, y {length}", number=True, spare=True),
         Column(f"von Mises {stress}", number=True),
         Column("σ₁", number=True, tip="Largest principal stress"),
         Column("σ₂", number=True, tip="Smallest principal stress"),
@@ -148,6 +148,7 @@ def _lines(document: Document) -> tuple[Line, ...]:
     cases = [(case.id, case.name) for case in part.cases] or [("", DASH)]
     lines = []
     q = Quantities(part.display_units)
+    length = q.show(1.0, "length").split()[-1]
     for probe in part.readings:
         at = f"{q.bare(probe.at[0], 'length')}, {q.bare(probe.at[1], 'length')}"
         for id_, case_name in cases:
@@ -157,7 +158,7 @@ def _lines(document: Document) -> tuple[Line, ...]:
             texts = (probe.name, case_name, at, *_figures(part, reading))
             place = reading.place if reading else ""
             why = reading.why if reading else "Not read yet: screen the part"
-            tip = "\n".join(filter(None, (place, why)))
+            tip = "\n".join(filter(None, (place, f"at {at} {length}", why)))
             lines.append(Line(probe.id, texts, tip))
     return tuple(lines)
 

@@ -125,7 +125,7 @@ class Board(QWidget):
         self._foot.setStyleSheet(
             f"#boardFoot {{ background: {p.chrome}; border-top: 1px solid {p.faint}; }}"
         )
-        self._corner.setStyleSheet(f"color: {p.quiet}; font-size: {theme.TEXT_BODY}px;")
+        self._corner.setStyleSheet(f"color: {p.quiet};")
         self.strip.apply_theme()
         self.empty.apply_theme()
         self.canvas.apply_theme()
@@ -177,6 +177,7 @@ class Board(QWidget):
         document.selection_changed.connect(self._show_lit)
         document.hovered_changed.connect(self._show_lit)
         document.view_changed.connect(self.canvas.show_part)
+        document.findings_changed.connect(self.canvas.show_marked)
         self.canvas.pointed.connect(self._show_corner)
         self.canvas.tool_wanted.connect(self.take)
         self.strip.wanted.connect(self.take)

@@ -9,6 +9,7 @@ from PySide6.QtCore import QEvent, QPointF, Qt, Signal
 from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QWheelEvent
 from PySide6.QtWidgets import QWidget
 
+from screenapp.model.errors import Fault
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board.dimension_editor import DimensionEditor
@@ -118,7 +119,7 @@ class Canvas(ZoomView):
         self.outline.show_part(drawn)
         self.symbols.show_part(drawn, self.document.view.case)
         self.probes.show_part(drawn)
-        self.marked.show_faults(drawn, () if self.previewing else self.document.faults)
+        self.show_marked()
         self.show_dimensions()
         self.grid.update()
 
@@ -136,6 +137,17 @@ class Canvas(ZoomView):
                 self.number.open_on(mark)
                 return
         self.document.said.emit("No dimension is shown: draw something, or press D.")
+
+    def show_marked(self) -> None:
+        """Ring what is wrong."""
+        self.marked.show_faults(self.drawn, () if self.previewing else self._marked_faults())
+
+    def _marked_faults(self) -> tuple[Fault, ...]:
+        """The faults to be ringed: cautions are left out where a lens tells what is doubtful."""
+        faults = self.document.faults
+        if self.document.view.lens in ("Shape", "Mesh") or self.document.findings is None:
+            return faults
+        return tuple(fault for fault in faults if fault.blocks)
 
     def show_lit(self) -> None:
         """Light what is selected and hovered."""

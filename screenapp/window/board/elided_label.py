@@ -1,16 +1,20 @@
-"""A line of text that is cut short with an ellipsis where there is no room for it."""
+"""A line of text that goes on in a second, smaller line where there is no room for it."""
 
 from __future__ import annotations
 
 from PySide6.QtCore import QSize, Qt
-from PySide6.QtGui import QResizeEvent
+from PySide6.QtGui import QFontMetrics, QResizeEvent
 from PySide6.QtWidgets import QLabel, QSizePolicy
 
 from screenapp.window import theme
 
 
 class ElidedLabel(QLabel):
-    """Right-aligned; asks for little room and takes what it gets; the tooltip has it whole."""
+    """Right-aligned; asks for little room and takes what it gets.
+
+    What does not fit in one line stands in two small ones; what does not fit there either ends in
+    an ellipsis, and the tooltip has it whole.
+    """
 
     def __init__(self) -> None:
         super().__init__()
@@ -35,8 +39,25 @@ class ElidedLabel(QLabel):
         self._fit()
 
     def _fit(self) -> None:
-        shown = self.fontMetrics().elidedText(
-            self.full, Qt.TextElideMode.ElideRight, max(self.width() - 2, 0)
-        )
-        self.setText(shown)
-        self.setToolTip(self.full if shown != self.full else "")
+        room = max(self.width() - 2, 0)
+        body, small = theme.font(), theme.font(theme.TEXT_SMALL)
+        fits = QFontMetrics(body).horizontalAdvance(self.full) <= room
+        lines = [self.full] if fits else two_lines(self.full, QFontMetrics(small), room)
+        self.setFont(body if fits else small)
+        self.setText("\n".join(lines))
+        cut = " ".join(lines) != self.full
+        self.setToolTip(self.full if cut else "")
+
+
+def two_lines(text: str, metrics: QFontMetrics, room: int) -> list[str]:
+    """The text broken at a space so that its first line fits, the second one cut if need be."""
+    words = text.split(" ")
+    first = words[0]
+    count = 1
+    while count < len(words):
+        longer = f"{first} {words[count]}"
+        if metrics.horizontalAdvance(longer) > room:
+            break
+        first, count = longer, count + 1
+    lines = [first, " ".join(words[count:])]
+    return [metrics.elidedText(line, Qt.TextElideMode.ElideRight, room) for line in lines if line]

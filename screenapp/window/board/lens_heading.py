@@ -6,8 +6,11 @@ from __future__ import annotations
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
+from screenapp.model.findings import Trust
 from screenapp.window import theme
+from screenapp.window.board.colour_bar import TAKEN
 from screenapp.window.board.overlay import Anchor
+from screenapp.window.board.trust_marks import TrustLegend
 from screenapp.window.document import Document
 from screenapp.window.fields import DISPLACEMENT_NAMES, STRESS_NAMES
 
@@ -40,6 +43,7 @@ class LensHeading(QWidget):
         self._under = QLabel("under")
         self.caption = QLabel()
         self.caption.setAccessibleName("What is painted")
+        self.legend = TrustLegend()
         self.warning = QLabel()
         self.warning.setAccessibleName("Caution about what is painted")
         for label in (self._times, self._under, self.caption, self.warning):
@@ -64,6 +68,7 @@ class LensHeading(QWidget):
         column.addWidget(self._row)
         column.addWidget(self.warning, 0, Qt.AlignmentFlag.AlignLeft)
         column.addWidget(self.caption, 0, Qt.AlignmentFlag.AlignLeft)
+        column.addWidget(self.legend, 0, Qt.AlignmentFlag.AlignLeft)
         self._connect()
         Anchor(host, self.settle, self)
         theme.notifier.changed.connect(self.apply_theme)
@@ -72,8 +77,11 @@ class LensHeading(QWidget):
 
     # --- for others -----------------------------------------------------------------------
 
-    def say(self, caption: str, warning: str = "") -> None:
-        """Show these words."""
+    def say(
+        self, caption: str, warning: str = "", legend: tuple[tuple[Trust, str], ...] = ()
+    ) -> None:
+        """Show these words, and what marks mean."""
+        self.legend.show_entries(legend)
         for label, text in ((self.caption, caption), (self.warning, warning)):
             label.setText(text)
             label.setVisible(bool(text))
@@ -111,6 +119,7 @@ class LensHeading(QWidget):
 
     def settle(self) -> None:
         """Take the place at the host's upper left corner, no larger than what is shown."""
+        self.legend.keep_within(max(160, self._host.width() - 2 * MARGIN - TAKEN))
         self._column.activate()
         size = self.sizeHint()
         width = min(size.width(), max(80, self._host.width() - 2 * MARGIN))

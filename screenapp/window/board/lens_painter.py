@@ -21,6 +21,7 @@ from screenapp.window.board.lens_heading import LensHeading
 from screenapp.window.board.mesh_item import MeshItem
 from screenapp.window.board.outline_path import mesh_path, region_path
 from screenapp.window.board.rim_item import RimItem
+from screenapp.window.board.trust_marks import TrustMarkItem
 from screenapp.window.document import Document
 from screenapp.window.fields import moved
 from screenapp.window.painted import Painting, Source
@@ -68,7 +69,8 @@ class LensPainter(QObject):
         self._path = QPainterPath()
         self.field, self.mesh = FieldItem(), MeshItem()
         self.hatch, self.rim, self.callouts = HatchItem(), RimItem(), CalloutItem()
-        for item in (self.field, self.mesh, self.hatch, self.rim, self.callouts):
+        self.marks = TrustMarkItem()
+        for item in (self.field, self.mesh, self.hatch, self.rim, self.marks, self.callouts):
             board.canvas.view_box.addItem(item, ignoreBounds=True)
         self.bar = ColourBar(board.canvas)
         self.heading = LensHeading(document, board.canvas)
@@ -190,6 +192,7 @@ class LensPainter(QObject):
         self.mesh.clear()
         self.hatch.show_zones(())
         self.rim.show_path(None)
+        self.marks.show_marks(())
         self.callouts.show_callouts((), (), QPainterPath())
         self.bar.show_content(None)
         self._board.set_outline_faint(False)
@@ -236,6 +239,7 @@ class LensPainter(QObject):
             )
             for card in painting.cards
         )
+        self.marks.show_marks(painting.marks)
         values = tuple(PointValue(at, text) for at, text in painting.probes)
         self.callouts.right_margin = float(TAKEN) if self.bar.content else 0.0
         self.callouts.show_callouts(callouts, values, self._path)
@@ -247,10 +251,11 @@ class LensPainter(QObject):
             warning = "Out of date: the part has changed since it was screened"
         elif self._pass is not None:
             warning = f"Pass {self._pass[1]}: nothing is settled yet"
-        for item in (self.field, self.mesh, self.hatch, self.rim):
+        for item in (self.field, self.mesh, self.hatch, self.rim, self.marks):
             item.setOpacity(FADED if old else 1.0)
         self.callouts.setOpacity(FADED_WORDS if old else 1.0)
-        self.heading.say(painting.caption, warning)
+        # numbers that are out of date need no legend, and the warning takes its place
+        self.heading.say(painting.caption, warning, () if old else painting.legend)
 
     # --- colours and their range ----------------------------------------------------------
 
