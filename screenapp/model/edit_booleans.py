@@ -31,9 +31,9 @@ from screenapp.model.part import (
 
 def ring_meets(part: Part, ring: Loop) -> bool:
     """Whether a ring crosses or touches the outline or a hole, so that it can be cut or joined."""
-    if part.outline is None:
-        return False
     curves = edge_curves(ring)
+    if part.outline is None or not all(c.length > 0.0 for c in curves):
+        return False
     return any(meets(edge_curves(loop), curves) for _, _, loop in _material_loops(part))
 
 
@@ -73,6 +73,9 @@ class _Source:
 def _combined(part: Part, ring: Loop, operation: Operation) -> Outcome:
     if part.outline is None:
         raise EditError("there is no outline to work on", "draw an outline first")
+    for loop in (part.outline, ring, *(h.loop for h in part.holes if isinstance(h, LoopHole))):
+        if not all(math.isfinite(c.length) and c.length > 0.0 for c in edge_curves(loop)):
+            raise EditError("an edge has no length", "move one of its corners or remove it")
     part = _ready(part, ring)
     assert part.outline is not None
     every = [c for _, _, loop in _material_loops(part) for c in edge_curves(loop)]

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, Loop, LoopHole, Point
 
@@ -45,3 +46,11 @@ def slot_loop(centre: Point, length: float, width: float, angle: float) -> Loop:
 def reversed_loop(loop: Loop) -> Loop:
     """The same loop run the other way round; it begins in the same corner."""
     return Loop((loop.corners[0], *loop.corners[:0:-1]), loop.edges[::-1])
+
+
+def ring_loop(
+    points: Sequence[Point], through: Sequence[Point | None] | None = None, round_: float = 0.0
+) -> Loop:
+    """A loop without ids: corners, the arc point of the edge after each, one round for all."""
+    arcs = through if through is not None else [None] * len(points)
+    return Loop(tuple(Corner("", p, round_) for p in points), tuple(Edge("", arc) for arc in arcs))

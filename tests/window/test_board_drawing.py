@@ -142,8 +142,8 @@ def test_a_ring_inside_is_a_hole_and_one_outside_is_refused(on_plate: Hand) -> N
     assert [c.at for c in hole.loop.corners] == [(10, 10), (24, 10), (24, 24)]
     on_plate.type("R")
     before = on_plate.part
-    on_plate.click(80.0, 40.0)
-    on_plate.click(110.0, 55.0)
+    on_plate.click(104.0, 10.0)
+    on_plate.click(112.0, 20.0)
     assert on_plate.part is before
     assert "not inside" in on_plate.said[-1]
 

@@ -197,6 +197,8 @@ def test_every_tool_has_a_key_a_tooltip_and_a_name(hand: Hand) -> None:
     assert len(set(keys)) == len(keys)
     for tool in hand.board.tools:
         button = hand.board.strip.button(tool.name)
+        hand.board.take(tool.name)
+        hand.board.take(tool.name)
         assert button.accessibleName() == tool.name
         assert f"({tool.key})" in button.toolTip()
         assert tool.line in button.toolTip()

@@ -188,6 +188,7 @@ class Board(QWidget):
     def _part_changed(self) -> None:
         self.canvas.placing.drop()
         self.canvas.number.close_editor()
+        self.canvas.ring_choice.drop()
         if self.canvas.tool is not None:
             self.canvas.tool.part_changed()
         self.canvas.preview(None)

@@ -22,6 +22,7 @@ from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
 from screenapp.window.board.preview_item import PreviewItem
+from screenapp.window.board.ring_choice import RingChoice
 from screenapp.window.board.snapping import Snap, snap
 from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
@@ -86,6 +87,7 @@ class Canvas(ZoomView):
         self.entry = EntryRow(self)
         self.placing = Placing(self)
         self.number = DimensionEditor(self)
+        self.ring_choice = RingChoice(self)
         self.apply_theme()
 
     # what is shown
@@ -188,6 +190,7 @@ class Canvas(ZoomView):
         if tool is self.tool:
             return
         if self.tool is not None:
+            self.ring_choice.drop()
             self.tool.stop(tool)
         self.entry.close_row()
         self.tool = tool
@@ -253,7 +256,8 @@ class Canvas(ZoomView):
         self._last_px, self._modifiers = px, modifiers
         self.place = self.place_at(px, modifiers)
         hit = self.place.hit
-        self.document.hover(hit.id if hit is not None else None)
+        tool = self.tool
+        self.document.hover(None if hit is None else tool.lights(hit) if tool else hit.id)
         faults = self.marked.at(px, self.frame_now)
         number = self._number_at(px)
         tip = name_at(self.document, hit, faults)

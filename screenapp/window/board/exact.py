@@ -2,13 +2,20 @@
 
 from __future__ import annotations
 
+import dataclasses
+
 from screenapp.model import edits
 from screenapp.model.features import Found, find
+from screenapp.model.kinds import KindName
 from screenapp.model.part import CircleHole, Corner, LoopHole, Part, Point, Probe, SlotHole
+from screenapp.model.pattern_faults import COUNTS
 from screenapp.window.board.typed_entry import EntryField
 
 PLACE = (EntryField("x", "x"), EntryField("y", "y"))
-ROUND = EntryField("round", "round")
+CUTS = (
+    EntryField("round", "round", "length", ("chamfer",)),
+    EntryField("chamfer", "chamfer", "length", ("round",)),
+)
 DIAMETER = EntryField("diameter", "diameter")
 SLOT = (
     EntryField("length", "length"),
@@ -21,19 +28,60 @@ def exact_fields(found: Found) -> tuple[EntryField, ...]:
     """What may be typed for a thing; nothing for edges and the like."""
     record = found.record
     if isinstance(record, Corner):
-        return (*PLACE, ROUND)
-    if isinstance(record, CircleHole):
-        return (*PLACE, DIAMETER)
-    if isinstance(record, SlotHole):
-        return (*PLACE, *SLOT)
+        return (*PLACE, *CUTS)
+    if isinstance(record, CircleHole | SlotHole):
+        sizes = (DIAMETER,) if isinstance(record, CircleHole) else SLOT
+        return (*PLACE, *sizes, *pattern_fields(record))
     return PLACE if isinstance(record, LoopHole | Probe) else ()
+
+
+def pattern_fields(hole: CircleHole | SlotHole) -> tuple[EntryField, ...]:
+    """What may be typed for the pattern of a hole."""
+    if hole.pattern is None:
+        return ()
+    names = [f.name for f in dataclasses.fields(hole.pattern)]
+    return tuple(
+        EntryField(PATTERN_KEYS.get(n, n), PATTERN_WORDS[n], PATTERN_KINDS.get(n, "length"))
+        for n in names
+    )
+
+
+PATTERN_WORDS = {
+    "count": "holes",
+    "columns": "columns",
+    "rows": "rows",
+    "pitch": "pitch",
+    "pitch_x": "pitch x",
+    "pitch_y": "pitch y",
+    "radius": "circle radius",
+    "angle": "turned",
+    "start": "first at",
+}
+PATTERN_KINDS: dict[str, KindName] = {
+    "count": "number",
+    "columns": "number",
+    "rows": "number",
+    "angle": "angle",
+    "start": "angle",
+}
+PATTERN_KEYS = {"angle": "pattern angle"}
+"""Where a pattern's value has the name of one of the hole's own."""
+
+
+def pattern_values(hole: CircleHole | SlotHole) -> dict[str, float]:
+    """The values of a hole's pattern by the names of their fields."""
+    if hole.pattern is None:
+        return {}
+    names = [f.name for f in dataclasses.fields(hole.pattern)]
+    return {PATTERN_KEYS.get(n, n): float(getattr(hole.pattern, n)) for n in names}
 
 
 def exact_values(found: Found) -> dict[str, float]:
     """The present values [mm, deg] of those fields."""
     record = found.record
     if isinstance(record, Corner):
-        return {"x": record.at[0], "y": record.at[1], "round": record.round}
+        cuts = {"round": record.round, "chamfer": record.chamfer}
+        return {"x": record.at[0], "y": record.at[1], **cuts}
     if isinstance(record, Probe):
         return {"x": record.at[0], "y": record.at[1]}
     if not isinstance(record, CircleHole | SlotHole | LoopHole):
@@ -44,7 +92,7 @@ def exact_values(found: Found) -> dict[str, float]:
         values["diameter"] = record.diameter
     elif isinstance(record, SlotHole):
         values |= {"length": record.length, "width": record.width, "angle": record.angle}
-    return values
+    return values if isinstance(record, LoopHole) else values | pattern_values(record)
 
 
 def exact_paths(found: Found) -> dict[str, str]:
@@ -54,7 +102,14 @@ def exact_paths(found: Found) -> dict[str, str]:
         return {}
     place = "centre" if isinstance(record, CircleHole | SlotHole) else "at"
     places = {"x": f"{place}.0", "y": f"{place}.1"}
-    return {f.name: f"{found.field}.{places.get(f.name, f.name)}" for f in exact_fields(found)}
+    paths = {f.name: f"{found.field}.{places.get(f.name, f.name)}" for f in exact_fields(found)}
+    if isinstance(record, CircleHole | SlotHole) and record.pattern is not None:
+        for field in dataclasses.fields(record.pattern):
+            key = PATTERN_KEYS.get(field.name, field.name)
+            paths[key] = f"{found.field}.pattern.{field.name}"
+            if field.name in COUNTS:
+                del paths[key]  # a count is never an expression
+    return paths
 
 
 def with_exact(part: Part, id_: str, typed: dict[str, float]) -> Part:
@@ -73,10 +128,18 @@ def with_exact(part: Part, id_: str, typed: dict[str, float]) -> Part:
     if isinstance(record, Corner):
         if moves:
             part = edits.move_corner(part, id_, to)
+        if "chamfer" in typed:
+            return edits.set_chamfer(part, id_, values["chamfer"])
         return edits.set_round(part, id_, values["round"]) if "round" in typed else part
     if isinstance(record, Probe):
         return edits.move_probe(part, id_, to)
     if moves:
         part = edits.move_hole(part, id_, to)
-    sizes = {k: v for k, v in typed.items() if k not in ("x", "y")}
-    return edits.resize_hole(part, id_, **sizes) if sizes else part
+    assert isinstance(record, CircleHole | SlotHole | LoopHole)
+    repeated = {} if isinstance(record, LoopHole) else pattern_values(record)
+    fields = {v: k for k, v in PATTERN_KEYS.items()}
+    pattern = {fields.get(k, k): v for k, v in typed.items() if k in repeated}
+    sizes = {k: v for k, v in typed.items() if k not in ("x", "y") and k not in repeated}
+    if sizes:
+        part = edits.resize_hole(part, id_, **sizes)
+    return edits.change_pattern(part, id_, **pattern).part if pattern else part

@@ -34,6 +34,7 @@ class ArcTool(LinesTool):
     key: ClassVar[str] = "A"
     line: ClassVar[str] = "Click both ends, then a place it passes; or click an edge to bend it."
     icon: ClassVar[str] = "arc"
+    group: ClassVar[str] = "arcs"
 
     def __init__(self, canvas: Canvas, draft: Draft) -> None:
         super().__init__(canvas, draft)

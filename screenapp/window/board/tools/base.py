@@ -48,15 +48,16 @@ class Place:
 class Tool:
     """A drawing tool; the canvas calls these and repaints after each.
 
-    `name`, `key`, `line` and `icon` are what the tool strip shows; `snaps` says whether clicks land
-    on snaps, `passes_over` which kinds of snap it does not want, `edits_numbers` whether the
-    numbers of dimensions come before what lies under them.
+    `name`, `key`, `line` and `icon` are what the tool strip shows, tools of one `group` behind one
+    button; `snaps` says whether clicks land on snaps, `passes_over` which kinds of snap it does not
+    want, `edits_numbers` whether the numbers of dimensions come before what lies under them.
     """
 
     name: ClassVar[str] = ""
     key: ClassVar[str] = ""
     line: ClassVar[str] = ""
     icon: ClassVar[str] = ""
+    group: ClassVar[str] = ""
     snaps: ClassVar[bool] = True
     passes_over: ClassVar[frozenset[SnapKind]] = frozenset()
     edits_numbers: ClassVar[bool] = False
@@ -114,6 +115,10 @@ class Tool:
     def point_from(self) -> Point | None:
         """The place that a line is being drawn from [mm]; None if none is."""
         return None
+
+    def lights(self, hit: Hit) -> str:
+        """The id that lights up while the cursor is on something."""
+        return hit.id
 
     def unsnapped(self) -> frozenset[str]:
         """Ids that must not draw the cursor."""

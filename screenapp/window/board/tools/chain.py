@@ -11,6 +11,7 @@ from PySide6.QtGui import QPainter
 from screenapp.model import edits
 from screenapp.model.curves import Curve, Segment, arc_through
 from screenapp.model.features import loops_of
+from screenapp.model.hole_loops import ring_loop
 from screenapp.model.part import Loop, Part, Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
@@ -75,6 +76,11 @@ class Draft:
         """Whether a straight edge back to the start would close a ring."""
         n = len(self.points)
         return n >= 3 or (n == 2 and self.throughs[0] is not None)
+
+    @property
+    def can_close_by_arc(self) -> bool:
+        """Whether an arc back to the start would close a ring."""
+        return len(self.points) >= 2
 
     def edges(self) -> list[Curve]:
         """The edges set so far."""
@@ -163,18 +169,23 @@ class LinesTool(DrawTool):
                 lambda: edits.set_outline(part, points, throughs),
                 self._expressions,
             )
-        elif all(self.canvas.drawn.inside(p) for p in points):
+        elif self.fits_inside(ring := ring_loop(points, throughs)):
             done = self.apply(
                 "draw a hole",
                 lambda: edits.add_loop_hole(part, points, throughs),
                 self._expressions,
             )
+        elif self.ask_ring(ring, points[-1], self._closed):
+            return
         else:
             self.say(OUTSIDE)
             return
         if done:
-            self.draft.clear()
-            self.canvas.tool_wanted.emit("Select")
+            self._closed()
+
+    def _closed(self) -> None:
+        self.draft.clear()
+        self.canvas.tool_wanted.emit("Select")
 
     def paint(self, painter: QPainter, frame: Frame) -> None:
         """The chain, and the edge that a click would add."""

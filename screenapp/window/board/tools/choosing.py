@@ -5,24 +5,38 @@ from __future__ import annotations
 from PySide6.QtCore import QRectF
 
 from screenapp.model.features import Found, everything
+from screenapp.model.members import whole_id
 from screenapp.model.part import Part
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
+from screenapp.window.board.hit_test import Hit
 
 KINDS = ("corner", "edge", "hole", "support", "load", "probe")
 
 
 def in_box(drawn: DrawnPart, frame: Frame, box: QRectF) -> list[str]:
-    """Corners, holes and probes whose place stands in a box [px]."""
-    spots = [(id_, c.at) for id_, c in drawn.corners.items()]
-    spots += [(id_, drawn.centre_of(h)) for id_, h in drawn.holes.items()]
-    spots += [(id_, p.at) for id_, p in drawn.probes.items()]
-    return [id_ for id_, at in spots if box.contains(frame.px(at))]
+    """Corners, holes and probes whose place stands in a box [px]; patterns that do so whole."""
+    spots = [(id_, [c.at]) for id_, c in drawn.corners.items()]
+    for hole in drawn.part.holes:
+        every = [drawn.holes[id_] for id_ in drawn.members_of(hole.id) or (hole.id,)]
+        spots.append((hole.id, [drawn.centre_of(one) for one in every]))
+    spots += [(id_, [p.at]) for id_, p in drawn.probes.items()]
+    return [id_ for id_, places in spots if all(box.contains(frame.px(at)) for at in places)]
 
 
 def all_of(drawn: DrawnPart) -> list[str]:
     """Every corner, hole and probe."""
-    return [*drawn.corners, *drawn.holes, *drawn.probes]
+    return [*drawn.corners, *(h.id for h in drawn.part.holes), *drawn.probes]
+
+
+def meant(hit: Hit, selection: tuple[str, ...]) -> str:
+    """The id that a click on something selects: of a pattern the whole.
+
+    A member counts by itself once it is selected.
+    """
+    if hit.kind != "hole" or hit.id in selection:
+        return hit.id
+    return whole_id(hit.id)
 
 
 def next_after(part: Part, case: int, selection: tuple[str, ...], step: int) -> Found | None:

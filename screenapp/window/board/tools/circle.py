@@ -9,6 +9,7 @@ from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
+from screenapp.model.hole_loops import circle_loop
 from screenapp.model.part import Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
@@ -33,6 +34,7 @@ class CircleTool(DrawTool):
     key: ClassVar[str] = "C"
     line: ClassVar[str] = "Click the centre, then the rim; or type the diameter."
     icon: ClassVar[str] = "circle"
+    group: ClassVar[str] = "holes"
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
@@ -98,6 +100,8 @@ class CircleTool(DrawTool):
             return
         part, centre = self.canvas.document.part, self.centre
         diameter = self._exact if self._exact is not None else 2.0 * (at[0] - centre[0])
+        if diameter > 0.0 and self.ask_ring(circle_loop(centre, diameter), at, self._drawn):
+            return
         radius = taken.get("radius")
         texts = {
             "centre.0": self._given.get("x"),
@@ -109,7 +113,10 @@ class CircleTool(DrawTool):
             lambda: edits.add_circle_hole(part, centre, diameter),
             lambda made: {f"holes.{made.holes[-1].id}.{k}": text for k, text in texts.items()},
         ):
-            self.centre = None
+            self._drawn()
+
+    def _drawn(self) -> None:
+        self.centre = None
 
     def press(self, place: Place) -> None:
         """A second click on the centre itself is no size."""

@@ -9,6 +9,7 @@ from screenapp.model.edit_dimensions import formulas_lost
 from screenapp.model.expressions import names_in
 from screenapp.model.features import find, loops_of, place_name
 from screenapp.model.field_names import field_words
+from screenapp.model.members import member_ids, whole_id
 from screenapp.model.part import Part, Point
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.snapping import neighbours
@@ -80,6 +81,9 @@ class Drag:
     def unsnapped(self) -> frozenset[str]:
         """What moves or bends along, which must not draw the cursor."""
         out = set(self.ids)
+        for hole in self.part.holes:
+            if any(whole_id(id_) == hole.id for id_ in self.ids):
+                out |= {hole.id, *member_ids(hole)}
         for _, owner, loop in loops_of(self.part):
             if owner in self.ids:
                 out |= {c.id for c in loop.corners} | {e.id for e in loop.edges}

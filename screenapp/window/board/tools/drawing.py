@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 from typing import TYPE_CHECKING
 
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QKeyEvent
 
-from screenapp.model.part import Point
+from screenapp.model import edits
+from screenapp.model.part import Loop, Point
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryField
 
@@ -75,6 +77,16 @@ class DrawTool(Tool):
             self.enter()
             return True
         return super().key_press(event)
+
+    def fits_inside(self, ring: Loop) -> bool:
+        """Whether a ring lies inside the outline and crosses nothing, so that it makes a hole."""
+        drawn, part = self.canvas.drawn, self.canvas.document.part
+        return drawn.inside(ring.corners[0].at) and not edits.ring_meets(part, ring)
+
+    def ask_ring(self, ring: Loop, at: Point, then: Callable[[], None]) -> bool:
+        """Ask whether a ring that crosses the part is cut out or joined; False if it does not."""
+        near = self.canvas.frame_now.px(at).toPoint()
+        return self.canvas.ring_choice.offer(self, ring, near, then)
 
     def enter(self) -> None:
         """Enter with nothing typed."""

@@ -9,7 +9,7 @@ from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
 from screenapp.model.errors import InvalidPartError
-from screenapp.model.part import Part
+from screenapp.model.part import Corner, Part
 from screenapp.model.shape import shape_of
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
@@ -20,8 +20,6 @@ from screenapp.window.board.typed_entry import EntryField
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
 
-FIELDS = (EntryField("radius", "radius"),)
-
 
 class FilletTool(Tool):
     """Click a corner, type the radius."""
@@ -30,7 +28,13 @@ class FilletTool(Tool):
     key: ClassVar[str] = "F"
     line: ClassVar[str] = "Click a corner and type its radius; 0 makes it sharp."
     icon: ClassVar[str] = "fillet"
+    group: ClassVar[str] = "corners"
     snaps: ClassVar[bool] = False
+    step: ClassVar[str] = "round a corner"
+    field: ClassVar[str] = "round"
+    fields: ClassVar[tuple[EntryField, ...]] = (EntryField("radius", "radius"),)
+    sign: ClassVar[str] = "R"
+    typing: ClassVar[str] = "Type the radius; Enter accepts."
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
@@ -68,7 +72,7 @@ class FilletTool(Tool):
 
     def hint(self) -> str:
         """What comes next."""
-        return "Click a corner." if self.corner is None else "Type the radius; Enter accepts."
+        return "Click a corner." if self.corner is None else self.typing
 
     def press(self, place: Place) -> None:
         """Take up a corner; what was typed for the one before is accepted."""
@@ -81,29 +85,37 @@ class FilletTool(Tool):
         self.canvas.document.select(corner)
         self._take_up(corner, None)
 
+    def size_of(self, corner: Corner) -> float:
+        """The radius that a corner has."""
+        return corner.round
+
+    def with_size(self, part: Part, corner: str, size: float) -> Part:
+        """The part with another radius there."""
+        return edits.set_round(part, corner, size)
+
     def _take_up(self, corner: str, near: QPoint | None) -> None:
         """Show the corner with the radius it has, or the one last given."""
         self.corner = corner
-        self._try(self.canvas.drawn.corners[corner].round or self._last)
+        self._try(self.size_of(self.canvas.drawn.corners[corner]) or self._last)
         self.canvas.entry.open_row(None, near)
 
     def entry_fields(self) -> tuple[EntryField, ...]:
         """The radius."""
-        return FIELDS if self.corner is not None else ()
+        return self.fields if self.corner is not None else ()
 
     def entry_live(self) -> dict[str, float]:
         """The radius shown."""
-        return {"radius": self.radius}
+        return {self.fields[0].name: self.radius}
 
     def entry_typed(self, values: dict[str, float]) -> None:
         """Show it."""
-        if self.corner is not None and "radius" in values:
-            self._try(values["radius"])
+        if self.corner is not None and self.fields[0].name in values:
+            self._try(values[self.fields[0].name])
 
     def entry_accept(self, values: dict[str, float]) -> None:
         """Make it."""
-        if "radius" in values:
-            self.radius = values["radius"]
+        if self.fields[0].name in values:
+            self.radius = values[self.fields[0].name]
         self._accept()
 
     def paint(self, painter: QPainter, frame: Frame) -> None:
@@ -111,7 +123,7 @@ class FilletTool(Tool):
         if self.corner is None or self.corner not in self.canvas.drawn.corners:
             return
         at = frame.px(self.canvas.drawn.corners[self.corner].at)
-        text = f"R {written(self.radius, 'length', self.canvas.part.display_units)}"
+        text = f"{self.sign} {written(self.radius, 'length', self.canvas.part.display_units)}"
         at.setY(at.y() - 18.0)
         sketch.label(painter, text, at)
 
@@ -120,7 +132,7 @@ class FilletTool(Tool):
         assert self.corner is not None
         self.radius = radius
         try:
-            part = edits.set_round(self.canvas.document.part, self.corner, radius)
+            part = self.with_size(self.canvas.document.part, self.corner, radius)
         except edits.EditError as fault:
             self.say(f"{fault.cause}: {fault.mend}.")
             return
@@ -132,11 +144,12 @@ class FilletTool(Tool):
         corner, radius = self.corner, self.radius
         assert corner is not None
         part = self.canvas.document.part
-        found, text = edits.find(part, corner), self.canvas.entry.taken.get("radius")
+        found = edits.find(part, corner)
+        text = self.canvas.entry.taken.get(self.fields[0].name)
         if self.apply(
-            "round a corner",
-            lambda: edits.set_round(part, corner, radius),
-            lambda _made: {} if found is None else {f"{found.field}.round": text},
+            self.step,
+            lambda: self.with_size(part, corner, radius),
+            lambda _made: {} if found is None else {f"{found.field}.{self.field}": text},
         ):
             self._last = radius or self._last
             self._drop()
@@ -148,8 +161,8 @@ class FilletTool(Tool):
 
 
 def corner_of(place: Place) -> str | None:
-    """The corner or fillet under the cursor."""
-    if place.hit is not None and place.hit.kind in ("corner", "fillet"):
+    """The corner, fillet or chamfer under the cursor."""
+    if place.hit is not None and place.hit.kind in ("corner", "fillet", "chamfer"):
         return place.hit.id
     return None
 

@@ -7,6 +7,7 @@ from typing import ClassVar
 from PySide6.QtCore import QPoint, Qt
 
 from screenapp.model.features import find
+from screenapp.model.members import whole_id
 from screenapp.window.board.tools.base import Place, Tool
 
 
@@ -67,7 +68,9 @@ class HoldTool(PlaceTool):
 
     name: ClassVar[str] = "Hold"
     key: ClassVar[str] = "H"
-    line: ClassVar[str] = "Click an edge, hole or corner to hold it."
+    line: ClassVar[str] = (
+        "Click an edge, hole or corner to hold it; with Shift all holes of a pattern."
+    )
     icon: ClassVar[str] = "hold"
 
     def open_at(self, on: str, near: QPoint) -> None:
@@ -80,7 +83,9 @@ class LoadTool(PlaceTool):
 
     name: ClassVar[str] = "Load"
     key: ClassVar[str] = "W"
-    line: ClassVar[str] = "Click an edge, hole or corner to load it in the present case."
+    line: ClassVar[str] = (
+        "Click an edge, hole or corner to load it; with Shift all holes of a pattern."
+    )
     icon: ClassVar[str] = "load"
 
     def open_at(self, on: str, near: QPoint) -> None:
@@ -89,7 +94,7 @@ class LoadTool(PlaceTool):
 
 
 def target_of(place: Place) -> str | None:
-    """The edge, hole or sharp corner under the cursor."""
+    """The edge, hole or sharp corner under the cursor; with Shift all holes of a pattern."""
     if place.hit is not None and place.hit.kind in ("edge", "hole", "corner"):
-        return place.hit.id
+        return whole_id(place.hit.id) if place.shift else place.hit.id
     return None

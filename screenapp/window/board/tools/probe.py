@@ -20,6 +20,7 @@ class ProbeTool(DrawTool):
     key: ClassVar[str] = "P"
     line: ClassVar[str] = "Click a place of the part to read its stress and displacement."
     icon: ClassVar[str] = "probe"
+    group: ClassVar[str] = "readings"
     passes_over: ClassVar[frozenset[SnapKind]] = frozenset({"centre"})
 
     def entry_fields(self) -> tuple[EntryField, ...]:

@@ -11,6 +11,7 @@ from PySide6.QtGui import QPainter
 from screenapp.model import edits
 from screenapp.model.expressions import plain_number
 from screenapp.model.features import loops_of
+from screenapp.model.hole_loops import ring_loop
 from screenapp.model.part import Loop, Part, Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
@@ -33,6 +34,7 @@ class RectangleTool(DrawTool):
     key: ClassVar[str] = "R"
     line: ClassVar[str] = "Click two opposite corners, or type width and height."
     icon: ClassVar[str] = "rectangle"
+    group: ClassVar[str] = "rectangles"
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
@@ -120,18 +122,26 @@ class RectangleTool(DrawTool):
             done = self.apply(
                 "draw the outline", lambda: edits.outline_from_rectangle(part, first, at), keep
             )
-        elif self.canvas.drawn.inside(first) and self.canvas.drawn.inside(at):
+        elif first[0] == at[0] or first[1] == at[1]:
+            self.say("The rectangle has no area: choose a corner away from the first one.")
+            return
+        elif self.fits_inside(ring := ring_loop(edits.rectangle_corners(first, at))):
             done = self.apply(
                 "draw a hole",
                 lambda: edits.add_loop_hole(part, edits.rectangle_corners(first, at)),
                 keep,
             )
+        elif self.ask_ring(ring, at, self._drawn):
+            return
         else:
             self.say(OUTSIDE)
             return
         if done:
-            self.first = None
-            self.canvas.tool_wanted.emit("Select")
+            self._drawn()
+
+    def _drawn(self) -> None:
+        self.first = None
+        self.canvas.tool_wanted.emit("Select")
 
     def enter(self) -> None:
         """Take the corner under the cursor."""

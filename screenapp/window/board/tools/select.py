@@ -16,10 +16,11 @@ from screenapp.window.board import sketch
 from screenapp.window.board.exact import exact_fields, exact_paths, exact_values, with_exact
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import grid_step
+from screenapp.window.board.hit_test import Hit
 from screenapp.window.board.naming import described
 from screenapp.window.board.quantity import written
 from screenapp.window.board.tools.base import Place, Tool
-from screenapp.window.board.tools.choosing import all_of, in_box, next_after
+from screenapp.window.board.tools.choosing import all_of, in_box, meant, next_after
 from screenapp.window.board.tools.drag import Drag, grip_of
 from screenapp.window.board.typed_entry import EntryField
 from screenapp.window.commands import Command, run_pressed
@@ -50,6 +51,7 @@ class SelectTool(Tool):
         self._drag: Drag | None = None
         self._at: Point | None = None
         self._box: QPointF | None = None
+        self._again = False
         self.editing: str | None = None
         self._commands = self._made_commands()
 
@@ -86,6 +88,10 @@ class SelectTool(Tool):
         self._drop()
         return busy
 
+    def lights(self, hit: Hit) -> str:
+        """Of a pattern the whole."""
+        return meant(hit, self.canvas.document.selection)
+
     def unsnapped(self) -> frozenset[str]:
         """What is dragged must not draw the cursor to itself."""
         return frozenset() if self._drag is None else self._drag.unsnapped()
@@ -108,12 +114,14 @@ class SelectTool(Tool):
             if not place.shift:
                 document.select()
             return
+        id_ = meant(hit, document.selection)
         if place.shift:
-            rest = tuple(i for i in document.selection if i != hit.id)
-            document.select(*(rest if hit.id in document.selection else (*rest, hit.id)))
+            rest = tuple(i for i in document.selection if i != id_)
+            document.select(*(rest if id_ in document.selection else (*rest, id_)))
             return
-        if hit.id not in document.selection:
-            document.select(hit.id)
+        self._again = id_ in document.selection
+        if not self._again:
+            document.select(id_)
         self._pressed = place
 
     def move(self, place: Place) -> None:
@@ -121,7 +129,7 @@ class SelectTool(Tool):
         pressed = self._pressed
         if pressed is not None and pressed.hit is not None and self._drag is None:
             gap = place.px - pressed.px
-            grip = grip_of(self.canvas.drawn, pressed.hit.id)
+            grip = grip_of(self.canvas.drawn, meant(pressed.hit, self.canvas.document.selection))
             if grip is not None and gap.manhattanLength() >= DRAG_FROM:
                 document = self.canvas.document
                 drag = Drag(document.part, document.selection, grip, pressed.raw)
@@ -144,7 +152,9 @@ class SelectTool(Tool):
         elif box is not None:
             self._select_box(QRectF(box, place.px).normalized(), place.shift)
         elif pressed is not None and pressed.hit is not None:
-            self.canvas.document.select(pressed.hit.id)
+            selection = self.canvas.document.selection
+            alone = self._again and selection == (meant(pressed.hit, selection),)
+            self.canvas.document.select(pressed.hit.id if alone else meant(pressed.hit, selection))
 
     def double(self, place: Place) -> None:
         """Edit exactly what is there; on an edge, put a corner there and edit that."""

@@ -10,6 +10,7 @@ from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
+from screenapp.model.hole_loops import slot_loop
 from screenapp.model.part import Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Floats, Frame, polygon
@@ -113,12 +114,17 @@ class SlotTool(DrawTool):
         length = math.dist(a, b) + width
         angle = math.degrees(math.atan2(b[1] - a[1], b[0] - a[0]))
         text = self.canvas.entry.taken.get("width")
+        if self.ask_ring(slot_loop(centre, length, width, angle), b, self._drawn):
+            return
         if self.apply(
             "draw a slot",
             lambda: edits.add_slot_hole(part, centre, length, width, angle),
             lambda made: {f"holes.{made.holes[-1].id}.width": text},
         ):
-            self.ends = []
+            self._drawn()
+
+    def _drawn(self) -> None:
+        self.ends = []
 
     def paint(self, painter: QPainter, frame: Frame) -> None:
         """The slot as far as it is known."""
