@@ -1,7 +1,8 @@
 """One factorisation of the stiffness matrix for all load cases, with the residual checked.
 
-SuperLU is run in its symmetric setting (minimum degree on A + Aᵀ, diagonal pivots), which a
-positive definite matrix allows; where pypardiso is installed it is used instead.
+SuperLU is run in its symmetric setting (diagonal pivots), which a positive definite matrix allows,
+in an order of elimination that comes from the mesh (`dissection`) or else by minimum degree on
+A + Aᵀ; where pypardiso is installed it is used instead.
 """
 
 from __future__ import annotations
@@ -20,12 +21,16 @@ from scipy.sparse.linalg import splu
 from screenapp.model.errors import SolvingError
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 Solve = Callable[[Floats], Floats]
 
 _log = logging.getLogger(__name__)
 
 PARDISO_NO_MEMORY = -2
 """The library's error number for memory that does not suffice."""
+
+LEAST_ORDERED = 10_000
+"""Unknowns below which working out an order takes longer than it saves."""
 
 ENOUGH = 1e-12
 """Relative residual at which refinement stops."""
@@ -37,9 +42,13 @@ TOO_MUCH = 1e-8
 """Relative residual above which the answer is refused: reactions would no longer balance."""
 
 
-def factorise(matrix: sparse.csc_array) -> Solve:
+def factorise(matrix: sparse.csc_array, order: Callable[[], Ints] | None = None) -> Solve:
     """Factor a symmetric positive definite matrix; returns a function that takes right-hand
     sides (n, k) to solutions (n, k).
+
+    Args:
+        order: gives the unknowns in a good order of elimination, (n,); asked only where the
+            library in use has none as good of its own and the matrix is large.
 
     Raises:
         SolvingError: the matrix is singular (a mechanism), or the memory does not suffice.
@@ -50,15 +59,19 @@ def factorise(matrix: sparse.csc_array) -> Solve:
             "look for sizes, thickness or material values that are far too large or too small",
         )
     solver = _pardiso_solver()
-    return superlu(matrix) if solver is None else _pardiso(solver, matrix)
+    if solver is not None:
+        return _pardiso(solver, matrix)
+    if order is None or matrix.shape[0] < LEAST_ORDERED:
+        return superlu(matrix)
+    return superlu(matrix, order())
 
 
-def superlu(matrix: sparse.csc_array) -> Solve:
-    """The same by SuperLU in its symmetric setting."""
+def superlu(matrix: sparse.csc_array, order: Ints | None = None) -> Solve:
+    """The same by SuperLU in its symmetric setting; minimum degree unless an order is given."""
     try:
         factor = splu(
-            matrix,
-            permc_spec="MMD_AT_PLUS_A",
+            matrix if order is None else sparse.csc_array(matrix[order][:, order]),
+            permc_spec="MMD_AT_PLUS_A" if order is None else "NATURAL",
             diag_pivot_thresh=0.0,
             options={"SymmetricMode": True},
         )
@@ -70,7 +83,11 @@ def superlu(matrix: sparse.csc_array) -> Solve:
         raise _no_memory(matrix) from error
 
     def solve(right: Floats) -> Floats:
-        return np.asarray(factor.solve(np.ascontiguousarray(right)))
+        if order is None:
+            return np.asarray(factor.solve(np.ascontiguousarray(right)))
+        out = np.empty(right.shape)
+        out[order] = factor.solve(np.ascontiguousarray(right[order]))
+        return out
 
     return solve
 

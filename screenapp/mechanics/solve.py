@@ -7,12 +7,14 @@ from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
+from scipy import sparse
 
 from screenapp.mechanics.assembly import System, assemble, condense_loads, internal_forces, spread
 from screenapp.mechanics.constraints import HeldDirections, held_directions, reduce
+from screenapp.mechanics.dissection import elimination_order
 from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.equilibrium import balance, reactions
-from screenapp.mechanics.linear_solve import solve_refined
+from screenapp.mechanics.linear_solve import factorise, solve_refined
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import ElementName, Part
@@ -21,6 +23,7 @@ from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 
 
 def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> Solution:
@@ -71,7 +74,9 @@ def solve_system(
         return np.asarray(basis.T @ (loads - internal_forces(system, in_full(terms))).T)
 
     progress.check()
-    terms, residual = solve_refined(reduced, right, gap_of)
+    terms, residual = solve_refined(
+        reduced, right, gap_of, lambda matrix: factorise(matrix, lambda: _order(system, basis))
+    )
     progress.check()
     parts = in_full(terms)
     unknowns = np.sum(parts, axis=0)
@@ -92,6 +97,14 @@ def solve_system(
         unknowns=reduced.shape[0],
         internal_modes=modes,
         support_forces=support_forces,
+    )
+
+
+def _order(system: System, basis: sparse.csc_array) -> Ints:
+    """Unknowns of the reduced system in the order in which to eliminate them."""
+    node = basis.indices[basis.indptr[:-1]] // 2  # of the first displacement that each moves
+    return elimination_order(
+        system.element_nodes, system.mesh.nodes[system.carried], node.astype(np.int64)
     )
 
 
