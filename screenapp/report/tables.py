@@ -4,12 +4,13 @@ from __future__ import annotations
 
 import csv
 import io
+import math
 
 from screenapp.model.findings import READING_QUANTITIES, Findings
 
 
 def peaks_csv(findings: Findings) -> str:
-    """Every peak of every case; stresses in MPa, lengths in mm; an empty high has no bound."""
+    """Every peak of every case (MPa, mm); an empty end of a band has no bound."""
     text = io.StringIO()
     writer = csv.writer(text, lineterminator="\n")
     writer.writerow(
@@ -18,8 +19,8 @@ def peaks_csv(findings: Findings) -> str:
     for case in findings.cases:
         for p in case.peaks:
             e = p.estimate
-            high = "" if e.trust == "rising" else e.high
-            writer.writerow([case.name, p.quantity, e.value, e.low, high, e.trust, *p.at, p.place])
+            low, high = _bound(e.low), _bound(e.high)
+            writer.writerow([case.name, p.quantity, e.value, low, high, e.trust, *p.at, p.place])
     return text.getvalue()
 
 
@@ -34,6 +35,11 @@ def readings_csv(findings: Findings) -> str:
         numbers: list[float | str] = []
         for q in READING_QUANTITIES:
             e = r.values[q]
-            numbers += [e.value, e.low, "" if e.trust == "rising" else e.high]
+            numbers += [e.value, _bound(e.low), _bound(e.high)]
         writer.writerow([r.name, names.get(r.case, r.case), *r.at, r.trust, *numbers])
     return text.getvalue()
+
+
+def _bound(value: float) -> float | str:
+    """An end of a band; empty where it has no bound."""
+    return value if math.isfinite(value) else ""

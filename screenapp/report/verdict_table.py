@@ -20,8 +20,10 @@ def verdict_table(
     """
     cases = {case.case: case.name for case in findings.cases}
     units = part.display_units
-    lines = [one_line(part.title), findings.headline]
-    lines += [f"  {reason}" for reason in findings.reasons if reason not in findings.headline]
+    lines = [one_line(part.title), one_line(findings.headline)]
+    lines += [
+        f"  {one_line(reason)}" for reason in findings.reasons if reason not in findings.headline
+    ]
     rows = [("limit", "case", "use", "trust", "verdict", "where")]
     rows += [
         (
@@ -66,7 +68,7 @@ def verdict_table(
     ]
     if mesh.walls:
         lines.append(wall_text(mesh.walls[0], units))
-    lines += [f"caution: {caution}" for caution in findings.cautions]
+    lines += [f"caution: {one_line(caution)}" for caution in findings.cautions]
     return "\n".join(spell(line) for line in lines)
 
 

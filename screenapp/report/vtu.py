@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
+import tempfile
 from pathlib import Path
 
 import meshio
 import numpy as np
 
+from screenapp.model.atomic_write import write_atomically
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part
 from screenapp.model.solution import von_mises
@@ -35,6 +37,10 @@ def write_vtu(part: Part, fields: Fields, path: Path) -> None:
         in_cells[f"energy error {case.id}"] = [fields.stress.energy_error[k]]
     if mesh.zones is not None:
         in_cells["zone"] = [mesh.zones + 1]
-    meshio.Mesh(
+    whole = meshio.Mesh(
         points, [("quad9", mesh.field_quads)], point_data=at_nodes, cell_data=in_cells
-    ).write(path, file_format="vtu")
+    )
+    with tempfile.TemporaryDirectory() as folder:  # the writer wants a path
+        draft = Path(folder) / "fields.vtu"
+        whole.write(draft, file_format="vtu")
+        write_atomically(path, draft.read_bytes())
