@@ -11,6 +11,7 @@ from screenapp.window.board.tools.chain import Draft, LinesTool
 from screenapp.window.board.tools.chamfer import ChamferTool
 from screenapp.window.board.tools.circle import CircleTool
 from screenapp.window.board.tools.fillet import FilletTool
+from screenapp.window.board.tools.measure import MeasureTool
 from screenapp.window.board.tools.mirror import MirrorTool
 from screenapp.window.board.tools.offset import OffsetTool
 from screenapp.window.board.tools.pattern import BoltCircleTool, GridTool, RowTool
@@ -49,4 +50,5 @@ def every_tool(canvas: Canvas) -> tuple[Tool, ...]:
         HoldTool(canvas),
         LoadTool(canvas),
         ProbeTool(canvas),
+        MeasureTool(canvas),
     )
