@@ -159,22 +159,19 @@ angles = st.floats(-math.pi, math.pi)
 places = st.floats(-50.0, 50.0)
 
 
+points = st.tuples(places, places)
+
+
 @settings(max_examples=60, deadline=None)
-@given(
-    places,
-    places,
-    st.floats(1.0, 30.0),
-    angles,
-    st.floats(0.2, 6.0),
-    places,
-    places,
-    places,
-    places,
-)
+@given(points, st.floats(1.0, 30.0), angles, st.floats(0.2, 6.0), points, points)
 def test_least_distance_against_shapely(
-    x: float, y: float, r: float, begin: float, sweep: float,
-    ax: float, ay: float, bx: float, by: float,
-) -> None:  # fmt: skip
+    centre: tuple[float, float],
+    r: float,
+    begin: float,
+    sweep: float,
+    start: tuple[float, float],
+    end: tuple[float, float],
+) -> None:
     if math.dist(start, end) < 1e-3:
         return
     arc, line = Arc(centre, r, begin, sweep), Segment(start, end)
