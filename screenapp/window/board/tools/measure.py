@@ -43,13 +43,6 @@ class MeasureTool(Tool):
                 self.copy,
                 ready=lambda: self.canvas.tool is self and self.result is not None,
             ),
-            Command(
-                "Measure what is selected",
-                "Measures one or two selected things.",
-                ("Return", "Enter"),
-                self._measure_selected,
-                ready=lambda: self.canvas.tool is self and bool(canvas.document.selection),
-            ),
         )
 
     @property
@@ -104,7 +97,7 @@ class MeasureTool(Tool):
         return "Click another thing or place for what is between them; Ctrl+C copies."
 
     def commands(self) -> tuple[Command, ...]:
-        """Copy, and measure what is selected."""
+        """Copy."""
         return self._commands
 
     def press(self, place: Place) -> None:
