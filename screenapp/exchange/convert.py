@@ -12,7 +12,7 @@ from screenapp.exchange.choosing import TOLERANCE, Wishes, unit_factor
 from screenapp.exchange.drawing import DrawingError, Role
 from screenapp.exchange.dxf_reading import read_drawing
 from screenapp.exchange.dxf_writing import write_dxf
-from screenapp.model.errors import InvalidPartError
+from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.part import Part
 from screenapp.model.part_json import SUFFIX, read_part, write_part
 from screenapp.model.progress import SILENT, Progress
@@ -95,14 +95,16 @@ def part_of_file(
         say(remark.text)
     if brought.part is None:
         raise brought.error or DrawingError(f"{source.name} shows no part", "look at its layers")
-    faults = tuple(f for f in faults_of(brought.part) if f.blocks and _of_shape(f.field))
+    faults = shape_faults(brought.part)
     if faults:
         raise InvalidPartError.of(faults)
     return brought.part
 
 
-def _of_shape(field_: str) -> bool:
-    return field_.split(".")[0] in ("outline", "holes", "zones")
+def shape_faults(part: Part) -> tuple[Fault, ...]:
+    """What is wrong with the lines of a part, whatever else it still lacks."""
+    lines = ("outline", "holes", "zones")
+    return tuple(f for f in faults_of(part) if f.blocks and f.field.split(".")[0] in lines)
 
 
 def _is_drawing(path: Path) -> bool:

@@ -132,6 +132,27 @@ class Actions:
         self._add(
             menu,
             Item(
+                "bring in",
+                "&Bring in a drawing…",
+                files.choose_drawing,
+                ("Ctrl+Shift+B",),
+                line="Makes a part of a DXF drawing: layers, unit and tolerance are chosen there.",
+            ),
+        )
+        self._add(
+            menu,
+            Item(
+                "export drawing",
+                "&Export drawing…",
+                files.export_drawing,
+                ("Ctrl+Shift+E",),
+                line="Writes outline, holes and zones as a DXF drawing.",
+            ),
+        )
+        menu.addSeparator()
+        self._add(
+            menu,
+            Item(
                 "quit",
                 "&Quit",
                 self._window.close,

@@ -12,6 +12,8 @@ from PySide6.QtWidgets import QFileDialog, QMessageBox, QWidget
 
 PART_FILES = "Parts (*.part.json);;All files (*)"
 SUFFIX = ".part.json"
+DRAWING_FILES = "Drawings (*.dxf *.DXF);;All files (*)"
+DRAWING_SUFFIX = ".dxf"
 
 Unsaved = Literal["save", "discard", "stay"]
 
@@ -28,6 +30,23 @@ class Ask:
         """Where to save; the ending is added where it is missing."""
         name, _ = QFileDialog.getSaveFileName(parent, "Save the part", str(suggested), PART_FILES)
         return with_suffix(Path(name)) if name else None
+
+    def drawing_to_open(self, parent: QWidget, folder: Path) -> Path | None:
+        """The drawing to bring in, None if the user thought better of it."""
+        name, _ = QFileDialog.getOpenFileName(
+            parent, "Bring in a drawing", str(folder), DRAWING_FILES
+        )
+        return Path(name) if name else None
+
+    def drawing_to_save(self, parent: QWidget, suggested: Path) -> Path | None:
+        """Where to write a drawing; the ending is added where it is missing."""
+        name, _ = QFileDialog.getSaveFileName(
+            parent, "Export a drawing", str(suggested), DRAWING_FILES
+        )
+        path = Path(name) if name else None
+        if path is None or path.suffix.lower() == DRAWING_SUFFIX:
+            return path
+        return path.with_name(path.name + DRAWING_SUFFIX)
 
     def unsaved(self, parent: QWidget, title: str) -> Unsaved:
         """What to do with changes that are not saved."""

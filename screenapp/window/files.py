@@ -4,12 +4,14 @@ from __future__ import annotations
 
 import logging
 from collections.abc import Callable
+from dataclasses import replace
 from datetime import datetime
 from pathlib import Path
 
 from PySide6.QtCore import QObject, Signal
 from PySide6.QtWidgets import QWidget
 
+from screenapp.exchange.dxf_writing import write_dxf
 from screenapp.model import findings_cache
 from screenapp.model.errors import InvalidPartError, ScreenappError
 from screenapp.model.findings import Findings
@@ -17,7 +19,7 @@ from screenapp.model.part import Part
 from screenapp.model.part_json import read_part, write_part
 from screenapp.model.regions import shape_with_zones
 from screenapp.screening.probes import read_probes
-from screenapp.window.ask import SUFFIX, Ask
+from screenapp.window.ask import DRAWING_SUFFIX, SUFFIX, Ask
 from screenapp.window.document import Document
 from screenapp.window.settings import Settings
 
@@ -32,12 +34,14 @@ class Files(QObject):
         saved: the part stands in its file, since this time.
         opened: another part is shown.
         restored: its findings were kept and are shown.
+        drawing_wanted: path of a drawing to bring in.
     """
 
     failed = Signal(str, object)
     saved = Signal(object)
     opened = Signal()
     restored = Signal()
+    drawing_wanted = Signal(object)
 
     def __init__(self, document: Document, settings: Settings, ask: Ask, window: QWidget) -> None:
         super().__init__(window)
@@ -61,7 +65,13 @@ class Files(QObject):
         return path is not None and self.open(path)
 
     def open(self, path: Path) -> bool:
-        """Open a part file; the present part stays if it cannot be read."""
+        """Open a part file, or begin to bring a drawing in.
+
+        The present part stays if the file cannot be read.
+        """
+        if path.suffix.lower() == DRAWING_SUFFIX:
+            self.drawing_wanted.emit(path)
+            return True
         return self._open(path, lambda part: (part, path))
 
     def open_sample(self, path: Path) -> bool:
@@ -83,6 +93,56 @@ class Files(QObject):
         self.opened.emit()
         self._restore()
         self._document.said.emit(f"Opened {path.name}")
+        return True
+
+    def choose_drawing(self) -> bool:
+        """Ask for a drawing and bring it in."""
+        path = self._ask.drawing_to_open(self._window, self._settings.folder)
+        if path is not None:
+            self._settings.note_folder(path.parent)
+            self.drawing_wanted.emit(path)
+        return path is not None
+
+    def take_drawing(self, drawn: Part, name: str) -> bool:
+        """Make a brought-in part the present one: as one step if nothing is drawn yet, else anew.
+
+        On an empty board wall, limits and whatever else is there stay.
+        """
+        document = self._document
+        now = document.part
+        step = f"bringing in {name}"
+        if now.outline is None and not now.holes and not now.zones:
+            self.take_typing()
+            now = document.part
+            title = drawn.title if now.title == Part().title else now.title
+            lines = replace(
+                now, title=title, outline=drawn.outline, holes=drawn.holes, zones=drawn.zones
+            )
+            document.apply(step, lines)
+        else:
+            if not self.may_leave():
+                return False
+            document.open(Part(display_units=drawn.display_units), None)
+            self.opened.emit()
+            document.apply(step, drawn)
+        document.said.emit(f"Brought in {name}")
+        return True
+
+    def export_drawing(self) -> bool:
+        """Ask where to write the part's boundary as a drawing."""
+        self.take_typing()
+        part, path = self._document.part, self._document.path
+        stem = path.name.removesuffix(SUFFIX) if path is not None else _file_name(part)
+        folder = path.parent if path is not None else self._settings.folder
+        target = self._ask.drawing_to_save(self._window, folder / (stem + DRAWING_SUFFIX))
+        if target is None:
+            return False
+        try:
+            write_dxf(part, target)
+        except ScreenappError as error:
+            self.failed.emit("The drawing was not written", error)
+            return False
+        self._document.said.emit(f"Wrote {target.name}")
         return True
 
     def save(self) -> bool:

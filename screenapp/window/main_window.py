@@ -23,7 +23,7 @@ from screenapp.model.part import DisplayUnits, Part, Probe, StressLimit
 from screenapp.model.part_json import screening_key
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
-from screenapp.window.ask import Ask
+from screenapp.window.ask import DRAWING_SUFFIX, Ask
 from screenapp.window.board.board import Board
 from screenapp.window.board.lens_bar import LensBar
 from screenapp.window.board.lens_painter import LensPainter
@@ -31,6 +31,7 @@ from screenapp.window.commands import Command
 from screenapp.window.commands_panel import READINGS, SHEET, CommandsPanel
 from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
+from screenapp.window.drawing_panel import DrawingPanel
 from screenapp.window.files import Files, with_readings
 from screenapp.window.help_panels import about_panel
 from screenapp.window.jobs import MakeMesher, Screener, ScreenFunction
@@ -149,6 +150,22 @@ class MainWindow(QMainWindow):
         units: DisplayUnits = "mm-N-MPa" if part.display_units != "mm-N-MPa" else "in-lbf-ksi"
         changes.set_units(self.document, units)
 
+    def bring_in(self, path: Path) -> None:
+        """Read a drawing and show what would come in; another one that is shown goes."""
+        shown = self._panels.get("drawing")
+        if shown is not None:
+            shown.close()
+            self._panels.pop("drawing", None)
+        panel = DrawingPanel(path, self.document.part.display_units, self)
+
+        def take(part: Part, name: str) -> None:
+            if self.files.take_drawing(part, name):
+                panel.close()
+                self.board.fit()
+
+        panel.wanted.connect(take)
+        self._show_panel("drawing", lambda: panel)
+
     def show_about(self) -> None:
         """Say what this is, with the cautions."""
         self._show_panel("about", lambda: about_panel(self))
@@ -204,6 +221,7 @@ class MainWindow(QMainWindow):
         self.files.failed.connect(sheet.head.notice.tell)
         self.files.saved.connect(self._saved)
         self.files.opened.connect(self._opened)
+        self.files.drawing_wanted.connect(self.bring_in)
         self.files.restored.connect(self._show_results)
         sheet.head.screen_wanted.connect(self.screen_part)
         sheet.foot.screen_wanted.connect(self.screen_part)
@@ -340,7 +358,7 @@ class MainWindow(QMainWindow):
         super().closeEvent(event)
 
     def dragEnterEvent(self, event: QDragEnterEvent) -> None:
-        """A part file may be dropped."""
+        """A part file or a drawing may be dropped."""
         if _dropped(event) is not None:
             event.acceptProposedAction()
 
@@ -357,7 +375,7 @@ def _dropped(event: QDropEvent) -> Path | None:
     if len(urls) != 1 or not urls[0].isLocalFile():
         return None
     path = Path(urls[0].toLocalFile())
-    return path if path.suffix == ".json" else None
+    return path if path.suffix.lower() in (".json", DRAWING_SUFFIX) else None
 
 
 def _judges_stress(part: Part) -> bool:

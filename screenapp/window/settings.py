@@ -65,6 +65,10 @@ class Settings:
         self._store.setValue("recent", [str(p) for p in [path, *others][:RECENT]])
         self._store.setValue("folder", str(path.parent))
 
+    def note_folder(self, folder: Path) -> None:
+        """File choosers begin here next time."""
+        self._store.setValue("folder", str(folder.resolve()))
+
     def forget_recent(self) -> None:
         """Empty the list of recent files."""
         self._store.setValue("recent", [])
