@@ -1,7 +1,7 @@
 """Fits ellipses and splines by circular arcs that leave no kink, within a tolerance.
 
-Each span is halved until the biarc over it (two arcs that meet tangentially; Bolton 1975, Computer
-Aided Design 7, equal tangent lengths, from memory) stays within the tolerance of the curve.
+Each span is covered by biarcs (two arcs that meet tangentially; Bolton 1975, Computer Aided Design
+7, equal tangent lengths, from memory), each as long as it can be within the tolerance.
 """
 
 from __future__ import annotations
@@ -22,8 +22,11 @@ SAMPLES = 17
 SHARE = 0.8
 """The fit is held to this share of the tolerance at the samples: between them it may be worse."""
 
-DEEPEST = 24
-"""Halvings of one span; a cusp would go on for ever."""
+SHORTEST = 2.0**24
+"""No stretch is shorter than a span over this; a cusp would go on for ever."""
+
+REFINEMENTS = 4
+"""Halvings of the doubt about how long a stretch may be."""
 
 FLATTEST = 1e-9
 """An arc whose sagitta is below this share of its chord is drawn straight."""
@@ -44,27 +47,51 @@ def arcs_of(free: EllipseArc | Spline, tolerance: float) -> list[Curve]:
     found: list[Curve] = []
     breaks = free.breaks
     for t0, t1 in pairwise(breaks):
-        _fit(free, t0, t1, tolerance * SHARE, DEEPEST, found)
+        _fit(free, t0, t1, tolerance * SHARE, found)
     return merged_arcs(found, 1e-3 * tolerance)
 
 
 def _fit(
-    free: EllipseArc | Spline, t0: float, t1: float, tolerance: float, depth: int, out: list[Curve]
+    free: EllipseArc | Spline, t0: float, t1: float, tolerance: float, out: list[Curve]
 ) -> None:
-    t = np.linspace(t0, t1, SAMPLES)
-    points = free.point(t)
-    reach = float(np.max(np.hypot(*(points - points[0]).T)))
-    if not reach > 0.0:  # a span of no extent: all its control points in one place
-        return
-    begin, end = _tangent(free, t0, t1), _tangent(free, t1, t0)
-    pieces = _biarc(points[0], begin, points[-1], -end)
-    if depth == 0 or (pieces and _deviation(pieces, points) <= tolerance):
-        start, stop = (float(points[0, 0]), float(points[0, 1])), tuple(points[-1].tolist())
-        out.extend(pieces or [Segment(start, (stop[0], stop[1]))])
-        return
-    middle = 0.5 * (t0 + t1)
-    _fit(free, t0, middle, tolerance, depth - 1, out)
-    _fit(free, middle, t1, tolerance, depth - 1, out)
+    """Cover a span by biarcs, each as long as the tolerance lets it be."""
+    least = (t1 - t0) / SHORTEST
+    at, step = t0, t1 - t0
+    while at < t1:
+        step = min(2.0 * step, t1 - at)
+        found = _pieces(free, at, at + step, tolerance)
+        while found is None and step > least:  # too long: halve
+            step *= 0.5
+            found = _pieces(free, at, at + step, tolerance)
+        low, high = step, min(2.0 * step, t1 - at)
+        for _ in range(REFINEMENTS if high > low else 0):  # then as long as it may be
+            middle = 0.5 * (low + high)
+            longer = _pieces(free, at, at + middle, tolerance)
+            if longer is None:
+                high = middle
+            else:
+                low, found = middle, longer
+        stop = at + low if t1 - at - low > least else t1
+        if found is None or stop != at + low:
+            found = _pieces(free, at, stop, tolerance) or [_chord(free, at, stop)]
+        out.extend(piece for piece in found if piece.length > 0.0)
+        at, step = stop, low
+
+
+def _pieces(
+    free: EllipseArc | Spline, t0: float, t1: float, tolerance: float
+) -> list[Curve] | None:
+    """The biarc over a stretch, or None if it is farther from the curve than the tolerance."""
+    points = free.point(np.linspace(t0, t1, SAMPLES))
+    if not float(np.max(np.hypot(*(points - points[0]).T))) > 0.0:
+        return [_chord(free, t0, t1)]  # all its control points are in one place
+    pieces = _biarc(points[0], _tangent(free, t0, t1), points[-1], -_tangent(free, t1, t0))
+    return pieces if pieces and _deviation(pieces, points) <= tolerance else None
+
+
+def _chord(free: EllipseArc | Spline, t0: float, t1: float) -> Segment:
+    (ax, ay), (bx, by) = free.point(t0).tolist(), free.point(t1).tolist()
+    return Segment((ax, ay), (bx, by))
 
 
 def _tangent(free: EllipseArc | Spline, t: float, towards: float) -> Floats:

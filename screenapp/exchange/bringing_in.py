@@ -31,7 +31,7 @@ from screenapp.exchange.joining import Joined, OpenChain, join
 from screenapp.exchange.nesting import Nest, meets, nests_of
 from screenapp.exchange.overlaps import without_overlaps
 from screenapp.exchange.recognition import Ids, hole_of, loop_of
-from screenapp.exchange.rings import Ring, enclosed
+from screenapp.exchange.rings import Ring, boxes, enclosed
 from screenapp.model.curves import Arc, Curve, Segment
 from screenapp.model.part import Part, Point, Zone
 from screenapp.model.progress import SILENT, Progress, Step
@@ -87,6 +87,8 @@ def bring_in(drawing: Drawing, wishes: Wishes, progress: Progress = SILENT) -> B
         scale = scale_of(drawing, wishes)
         groups = chosen_curves(drawing, wishes)
     except DrawingError as error:
+        if wishes.unit is None and drawing.unit is None:
+            remarks.insert(0, report.of_extent(*_extent(drawing)))
         return Brought(None, error, tuple(remarks))
     left_out = [name for name, role in roles_of(drawing, wishes) if role == "left out"]
     remarks += report.of_layers(drawing, left_out)
@@ -109,6 +111,18 @@ def bring_in(drawing: Drawing, wishes: Wishes, progress: Progress = SILENT) -> B
     brought = _part_of(drawing, wishes, joined["shape"], joined["zone"], remarks, progress)
     lines = tuple(c.curve for listed in curves.values() for c in listed)
     return replace(brought, lines=lines, remarks=tuple(remarks))
+
+
+def _extent(drawing: Drawing) -> Point:
+    """Width and height of all lines, about, in units of the drawing."""
+    places = [
+        c.curve.point(np.asarray(c.curve.breaks))
+        if isinstance(c.curve, EllipseArc | Spline)
+        else c.curve.point(np.linspace(0.0, 1.0, 5))
+        for c in drawing.curves
+    ]
+    wide, tall = np.ptp(np.concatenate(places), axis=0)
+    return float(wide), float(tall)
 
 
 def _joined(
@@ -202,6 +216,8 @@ def _part_of(
     size = _size(rings)
     nests = nests_of(rings, 1e-4 * size)
     progress.check()
+    if wishes.outline is None and (chain := _open_round(nests, joined)) is not None:
+        return Brought(None, _stays_open(chain, drawing.name), open_chains=joined.open_chains)
     candidates = tuple(Candidate(n.bounds, len(n.holes), n.depth > 0) for n in nests)
     open_chains = (*joined.open_chains, *zones.open_chains)
     try:
@@ -225,6 +241,27 @@ def _part_of(
     )
     remarks += report.of_part(part, len(nests) - 1)
     return Brought(part, None, candidates=candidates, open_chains=open_chains)
+
+
+def _open_round(nests: list[Nest], joined: Joined) -> OpenChain | None:
+    """An open chain round an outline, which then is a hole in a part that is not closed."""
+    if not nests:
+        return None
+    inner = np.array([nest.bounds for nest in nests])
+    for chain in joined.open_chains:
+        found = boxes(chain.curves)
+        low, high = found[:, :2].min(axis=0), found[:, 2:].max(axis=0)
+        if np.any(np.all((low < inner[:, :2]) & (inner[:, 2:] < high), axis=1)):
+            return chain
+    return None
+
+
+def _stays_open(chain: OpenChain, name: str) -> DrawingError:
+    begin, end = (report.place(p) for p in chain.ends)
+    return DrawingError(
+        f"the lines round the closed ones in {name} are open at {begin} and {end}",
+        "allow a larger gap, close them in the drawing, or leave their layer out",
+    )
 
 
 def _the_nest(nests: list[Nest], wanted: int | None, name: str, joined: Joined) -> Nest:

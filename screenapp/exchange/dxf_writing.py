@@ -16,13 +16,11 @@ from ezdxf import units as dxf_units
 
 from screenapp.exchange.choosing import unit_factor
 from screenapp.exchange.drawing import ZONES, DrawingError
-from screenapp.exchange.recognition import Form
 from screenapp.model.curves import Arc, Curve
 from screenapp.model.errors import Fault, InvalidPartError
-from screenapp.model.hole_curves import hole_curves
-from screenapp.model.loop_curves import loop_curves
 from screenapp.model.members import all_holes
-from screenapp.model.part import CircleHole, LoopHole, Part
+from screenapp.model.part import CircleHole, Part
+from screenapp.model.regions import zone_curves
 from screenapp.model.shape import BoundaryCurve, shape_of
 
 OUTLINE, HOLES = "OUTLINE", "HOLES"
@@ -58,7 +56,10 @@ def write_dxf(part: Part, path: Path, unit: str | None = None) -> None:
 
 def _document(part: Part, unit: str) -> Any:
     shape = shape_of(part)
-    zones = _zone_rims(part)
+    faults: list[Fault] = []
+    zones = zone_curves(part, faults)
+    if faults:
+        raise InvalidPartError.of(tuple(faults))
     document = ezdxf.new("R2010", units=UNIT_CODES[unit])
     for name, colour in ((OUTLINE, 7), (HOLES, 5), *([(ZONES, 3)] if zones else [])):
         document.layers.add(name, color=colour)
@@ -69,25 +70,9 @@ def _document(part: Part, unit: str) -> Any:
         hole = holes.get(shape.hole_ids[number] or "")
         layer = OUTLINE if hole is None else HOLES
         _add(space, hole, shape.curves[first:last], layer, scale)
-    for form, pieces in zones:
-        _add(space, form, pieces, ZONES, scale)
+    for zone, pieces in zip(part.zones, zones, strict=True):
+        _add(space, zone.form, pieces, ZONES, scale)
     return document
-
-
-def _zone_rims(part: Part) -> list[tuple[Form, list[BoundaryCurve]]]:
-    faults: list[Fault] = []
-    rims = [
-        (
-            zone.form,
-            loop_curves(zone.form.loop, f"zones.{zone.form.id}", faults)
-            if isinstance(zone.form, LoopHole)
-            else hole_curves(zone.form, faults),
-        )
-        for zone in part.zones
-    ]
-    if faults:
-        raise InvalidPartError.of(tuple(faults))
-    return rims
 
 
 def _add(

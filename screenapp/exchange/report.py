@@ -34,6 +34,11 @@ def of_reading(drawing: Drawing) -> list[Remark]:
     return remarks
 
 
+def of_extent(wide: float, tall: float) -> Remark:
+    """How large the drawing is in its own unit, to tell which that is."""
+    return Remark("note", f"The lines cover {wide:.4g} × {tall:.4g} of the drawing's own units.")
+
+
 def of_layers(drawing: Drawing, left_out: list[str]) -> list[Remark]:
     """The layers that are not used."""
     if not left_out:
@@ -116,8 +121,8 @@ def of_part(part: Part, others: int) -> list[Remark]:
     loops = [h.loop for h in part.holes if isinstance(h, LoopHole)]
     loops += [part.outline] if part.outline is not None else []
     rounds = sum(corner.round > 0.0 for loop in loops for corner in loop.corners)
-    edges = sum(len(loop.edges) for loop in loops)
-    listed = [_count(edges, "edge")]
+    edges = len(part.outline.edges) if part.outline is not None else 0
+    listed = [f"an outline of {_count(edges, 'edge')}"]
     listed += [_count(rounds, "rounded corner")] if rounds else []
     listed += [_count(n, word) for word, n in kinds.items() if n]
     listed += [_count(len(part.zones), "zone")] if part.zones else []

@@ -10,7 +10,7 @@ import threading
 import traceback
 from collections.abc import Callable
 
-from PySide6.QtCore import QObject, QThread, Signal, Slot
+from PySide6.QtCore import QCoreApplication, QObject, QThread, Signal, Slot
 
 from screenapp.model.errors import Cancelled, ScreenappError
 from screenapp.model.progress import Progress, Step
@@ -73,7 +73,9 @@ class DrawingJobs(QObject):
         self._worker.progress.connect(self._progressed)
         self._worker.finished.connect(self._finished)
         self._worker.failed.connect(self._failed)
-        self._thread.start()
+        app = QCoreApplication.instance()
+        if app is not None:
+            app.aboutToQuit.connect(self.shut_down)
 
     @property
     def busy(self) -> bool:
@@ -85,6 +87,8 @@ class DrawingJobs(QObject):
         self.cancel()
         self._number += 1
         self._stop = threading.Event()
+        if not self._thread.isRunning():
+            self._thread.start()
         self._run.emit(self._number, work, self._stop)
 
     def cancel(self) -> None:
@@ -94,7 +98,7 @@ class DrawingJobs(QObject):
             self._stop = None
 
     def shut_down(self) -> None:
-        """Stop, and wait for the thread to end."""
+        """Stop, and wait for the thread to end; what ezdxf has begun to bind it binds first."""
         self.cancel()
         self._thread.quit()
         self._thread.wait()

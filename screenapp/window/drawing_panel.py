@@ -9,7 +9,7 @@ from dataclasses import replace
 from pathlib import Path
 
 from PySide6.QtCore import Qt, QTimer, Signal
-from PySide6.QtGui import QCloseEvent, QFont
+from PySide6.QtGui import QFont, QHideEvent
 from PySide6.QtWidgets import (
     QDialog,
     QHBoxLayout,
@@ -42,7 +42,7 @@ from screenapp.window.drawing_words import (
     tolerance_sentence,
     unit_sentence,
 )
-from screenapp.window.sheet.field import sentence_of
+from screenapp.window.sheet.field import PAD, sentence_of
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.sentence import Sentence
 
@@ -63,7 +63,7 @@ class DrawingPanel(QDialog):
 
     wanted = Signal(object, str)
 
-    def __init__(self, path: Path, units: DisplayUnits, parent: QWidget) -> None:
+    def __init__(self, path: Path, units: DisplayUnits, jobs: DrawingJobs, parent: QWidget) -> None:
         super().__init__(parent)
         self.setWindowTitle(f"Bring in a drawing: {path.name}")
         self.setModal(False)
@@ -73,11 +73,12 @@ class DrawingPanel(QDialog):
         self.wishes = Wishes()
         self.painted: Painted | None = None
         self._units = units
-        self.jobs = DrawingJobs(self)
+        self.jobs = jobs
         self._lay_out()
-        self.jobs.progress.connect(self._show_step)
-        self.jobs.finished.connect(self._finished)
-        self.jobs.failed.connect(self._failed)
+        jobs.progress.connect(self._show_step)
+        jobs.finished.connect(self._finished)
+        jobs.failed.connect(self._failed)
+        self._listens = True
         self._late = QTimer(self)
         self._late.setSingleShot(True)
         self._late.setInterval(PATIENCE_MS)
@@ -89,9 +90,8 @@ class DrawingPanel(QDialog):
 
     def _lay_out(self) -> None:
         self.preview = DrawingPreview(self)
-        self.title = CutLabel(self)
-        self.title.setFont(theme.font(theme.TEXT_BODY, QFont.Weight.DemiBold))
-        self.title.setText(self.path.name)
+        self.title = _heading(self.path.name, above=0)
+        self.title.setWordWrap(True)
         self.unit, self.tolerance, self.outline = Sentence(self), Sentence(self), Sentence(self)
         self.layers = LayerList(self)
         self.layers.changed.connect(self._layers_changed)
@@ -204,6 +204,9 @@ class DrawingPanel(QDialog):
             self._renew()
             return
         assert isinstance(result, Painted)
+        if self.wishes.outline is None and len(result.brought.candidates) > 1:
+            self._wish(replace(self.wishes, outline=1))  # the largest, until another is chosen
+            return
         self._show_busy(False)
         self.painted = result
         self.preview.show_drawing(result, self._units)
@@ -213,7 +216,7 @@ class DrawingPanel(QDialog):
         self.take.setToolTip(
             "Make it the part on the board (Enter)"
             if result.brought.part is not None
-            else "First: " + sentence_of(result.brought.error or _NONE)
+            else sentence_of(result.brought.error or _NONE)
         )
 
     def _failed(self, error: ScreenappError) -> None:
@@ -264,7 +267,8 @@ class DrawingPanel(QDialog):
             row.hide()
             row.deleteLater()
         self.rows = []
-        if brought.error is not None:
+        asked_above = self.drawing is not None and self.wishes.unit is None
+        if brought.error is not None and not asked_above:
             self._say(Words(f"{sentence_of(brought.error)}", colour="bad"))
         for fault in faults:
             self._say(*self._fault_pieces(fault))
@@ -299,22 +303,23 @@ class DrawingPanel(QDialog):
         if part is not None and not self.jobs.busy:
             self.wanted.emit(part, self.path.name)
 
-    def done(self, result: int) -> None:
-        """Escape: stop the work."""
-        self.jobs.shut_down()
-        super().done(result)
-
-    def closeEvent(self, event: QCloseEvent) -> None:
-        """Stop the work."""
-        self.jobs.shut_down()
-        super().closeEvent(event)
+    def hideEvent(self, event: QHideEvent) -> None:
+        """Put away: the work is wanted no more, and what it still says is not heard."""
+        self.jobs.cancel()
+        self._late.stop()
+        if self._listens:
+            self._listens = False
+            self.jobs.progress.disconnect(self._show_step)
+            self.jobs.finished.disconnect(self._finished)
+            self.jobs.failed.disconnect(self._failed)
+        super().hideEvent(event)
 
 
 _NONE = DrawingError("there is no part in it", "choose other layers")
 
 
-def _heading(text: str) -> QLabel:
+def _heading(text: str, above: int = 12) -> QLabel:
     label = QLabel(text)
     label.setFont(theme.font(theme.TEXT_BODY, QFont.Weight.DemiBold))
-    label.setContentsMargins(0, 12, 0, 0)
+    label.setContentsMargins(PAD, above, 0, 0)
     return label

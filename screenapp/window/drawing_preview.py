@@ -15,12 +15,14 @@ from screenapp.exchange.bringing_in import Brought
 from screenapp.model.curves import Arc, Curve
 from screenapp.model.errors import Fault
 from screenapp.model.part import DisplayUnits, Part, Point
+from screenapp.model.regions import zone_curves
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import drawn_part
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.screen_item import Z_MESH, Z_PREVIEW, ScreenItem
+from screenapp.window.board.symbols import FaultsItem
 from screenapp.window.board.zoom_view import ZoomView
 
 Floats = NDArray[np.float64]
@@ -84,14 +86,14 @@ class LinesItem(ScreenItem):
 
 
 class MarksItem(ScreenItem):
-    """Open chains with rings at their ends, gaps closed, faults, and the place that is shown."""
+    """Zones, open chains with rings at their ends, gaps closed, and the place that is shown."""
 
     def __init__(self) -> None:
         super().__init__(Z_PREVIEW)
         self.chains: list[Floats] = []
         self.ends: list[Point] = []
         self.gaps: list[Point] = []
-        self.faults: list[Point] = []
+        self.zones: list[Floats] = []
         self.shown: Point | None = None
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
@@ -99,18 +101,16 @@ class MarksItem(ScreenItem):
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         bad, doubt = theme.colour("bad"), theme.colour("doubt")
         painter.setBrush(Qt.BrushStyle.NoBrush)
+        painter.setPen(QPen(theme.colour("accent"), 2.0))
+        for rim in self.zones:
+            painter.drawLines(_px_lines(rim, frame))
         painter.setPen(QPen(bad, 2.0, Qt.PenStyle.DashLine))
         for chain in self.chains:
-            painter.drawLines([QLineF(*row) for row in frame.pxs(chain).reshape(-1, 4).tolist()])
+            painter.drawLines(_px_lines(chain, frame))
         for at in self.ends:
             _ring(painter, frame.px(at), 5.0, bad)
         for at in self.gaps:
             _ring(painter, frame.px(at), 4.0, doubt)
-        painter.setPen(QPen(bad, 2.0))
-        for at in self.faults:
-            p = frame.px(at)
-            painter.drawLine(p + QPointF(-5, -5), p + QPointF(5, 5))
-            painter.drawLine(p + QPointF(-5, 5), p + QPointF(5, -5))
         if self.shown is not None:
             _ring(painter, frame.px(self.shown), 14.0, theme.colour("accent"))
 
@@ -126,13 +126,14 @@ class DrawingPreview(ZoomView):
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
         paths = PartPaths()
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
-        self.lines, self.marks = LinesItem(), MarksItem()
+        self.lines, self.marks, self.faults = LinesItem(), MarksItem(), FaultsItem()
         for item in (
             self.grid,
             self.fill,
             self.lines,
             self.outline,
             self.marks,
+            self.faults,
             self.scale_bar,
         ):
             self.view_box.addItem(item, ignoreBounds=True)
@@ -155,7 +156,9 @@ class DrawingPreview(ZoomView):
         marks.chains = [straight_pieces(chain.curves) for chain in brought.open_chains]
         marks.ends = [p for chain in brought.open_chains for p in chain.ends]
         marks.gaps = [p for r in brought.remarks if r.kind == "gap" for p in r.at]
-        marks.faults = [f.at for f in painted.faults if f.at is not None]
+        rims = zone_curves(drawn.part, [])
+        marks.zones = [straight_pieces(tuple(c.curve for c in rim)) for rim in rims]
+        self.faults.show_faults(drawn, painted.faults)
         marks.shown = None
         self.grid.units = self.scale_bar.units = units
         if painted.bounds != self.bounds:
@@ -209,6 +212,10 @@ class DrawingPreview(ZoomView):
             self.fit()
         else:
             event.ignore()  # Escape puts the panel away
+
+
+def _px_lines(pieces: Floats, frame: Frame) -> list[QLineF]:
+    return [QLineF(*row) for row in frame.pxs(pieces).reshape(-1, 4).tolist()]
 
 
 def _ring(painter: QPainter, at: QPointF, radius: float, colour: QColor) -> None:

@@ -31,6 +31,7 @@ from screenapp.window.commands import Command
 from screenapp.window.commands_panel import READINGS, SHEET, CommandsPanel
 from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
+from screenapp.window.drawing_jobs import DrawingJobs
 from screenapp.window.drawing_panel import DrawingPanel
 from screenapp.window.files import Files, with_readings
 from screenapp.window.help_panels import about_panel
@@ -60,6 +61,7 @@ class MainWindow(QMainWindow):
         self.settings = settings or Settings()
         self.document = Document(parent=self)
         self.screener = Screener(screen, make_mesher, self)
+        self.drawing_jobs = DrawingJobs(self)
         self.files = Files(self.document, self.settings, ask or Ask(), self)
         self.board = Board(self.document)
         self.lens_bar = LensBar(self.document)
@@ -156,7 +158,7 @@ class MainWindow(QMainWindow):
         if shown is not None:
             shown.close()
             self._panels.pop("drawing", None)
-        panel = DrawingPanel(path, self.document.part.display_units, self)
+        panel = DrawingPanel(path, self.document.part.display_units, self.drawing_jobs, self)
 
         def take(part: Part, name: str) -> None:
             if self.files.take_drawing(part, name):
@@ -353,6 +355,7 @@ class MainWindow(QMainWindow):
         self.settings.keep_bytes("rows", self.left.saveState())
         self.settings.sync()
         self.screener.shut_down()
+        self.drawing_jobs.shut_down()
         for panel in list(self._panels.values()):
             panel.close()
         super().closeEvent(event)

@@ -164,6 +164,20 @@ def test_open_chains_are_left_out_and_their_ends_told(tmp_path: Path) -> None:
     assert shape_of(part_from(path)).area == pytest.approx(3200)
 
 
+def test_a_hole_is_not_taken_for_the_part_when_the_outline_is_open(tmp_path: Path) -> None:
+    def draw(space: Any) -> None:
+        space.add_lwpolyline([(0, 0), (80, 0), (80, 40), (0, 40), (0, 2)])
+        space.add_circle((40, 20), 6)
+
+    path = write(tmp_path / "hole.dxf", draw)
+    brought = bring(path)
+    assert brought.part is None
+    assert brought.error is not None
+    assert "open at (" in brought.error.cause
+    assert shape_of(part_from(path, tolerance=2.5)).area > 3000
+    assert shape_of(part_from(path, outline=1)).area == pytest.approx(36 * math.pi), "if asked to"
+
+
 def test_a_line_that_divides_the_part_is_left_out_at_its_branches(tmp_path: Path) -> None:
     """The outline is cut where the bend line meets it, so three lines meet at both ends."""
 
