@@ -15,6 +15,7 @@ from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import body_force, side_tractions
 from screenapp.mechanics.quadrature import gauss_line, gauss_square
 from screenapp.mechanics.straight_cut import StraightCut
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import SectionForces
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Case, Part, PointLoad
@@ -37,7 +38,7 @@ def section_forces(
     body = body_left_of(shape, cut)
     if body is None or solution.support_forces is None:
         return None
-    total = _on_body(part, shape, mesh, solution.support_forces[case], part.cases[case], body)
+    total = _on_body(part, shape, mesh, solution.support_forces[case], loadings(part)[case], body)
     middle = cut.start + centroid(cut) * cut.along
     force = -total[:2]
     about = total[2] - (middle[0] * total[1] - middle[1] * total[0])

@@ -22,6 +22,7 @@ from screenapp.mechanics.patch_recovery import recover_inside
 from screenapp.mechanics.quadrature import gauss_square
 from screenapp.mechanics.strain_displacement import element_strains
 from screenapp.mechanics.support_tractions import supported_stress
+from screenapp.model.combinations import loadings
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape
@@ -37,7 +38,7 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
         SolvingError: the wall has no usable material.
     """
     hooke = element_hooke(part, mesh)
-    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in part.cases])
+    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in loadings(part)])
     held = constraints.held_sides(part, shape, mesh)
     inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
     chains = boundary_chains(shape, mesh)

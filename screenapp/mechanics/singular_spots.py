@@ -16,6 +16,7 @@ from numpy.typing import NDArray
 from screenapp.mechanics.corner_exponent import SLIDING, Face, growth_rate
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.zone_spots import fans, zone_spots
+from screenapp.model.combinations import loadings
 from screenapp.model.curves import Curve
 from screenapp.model.members import whole_id
 from screenapp.model.part import (
@@ -206,7 +207,7 @@ def _points(part: Part, shape: Shape) -> list[SingularSpot]:
                     f"corner {support.on}",
                 )
             )
-    for case in part.cases:
+    for case in loadings(part):
         spots += _point_loads(case, corners)
     return spots
 

@@ -16,6 +16,7 @@ from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.equilibrium import balance, reactions
 from screenapp.mechanics.linear_solve import factorise, solve_refined
 from screenapp.mechanics.loads import nodal_forces
+from screenapp.model.combinations import loadings
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import ElementName, Part
 from screenapp.model.progress import SILENT, Progress
@@ -37,8 +38,8 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
         Cancelled: the user asked to stop.
     """
     held = held_directions(part, shape, mesh)
-    forces = np.zeros((len(part.cases), mesh.n_nodes, 2))
-    for number, case in enumerate(part.cases):
+    forces = np.zeros((len(loadings(part)), mesh.n_nodes, 2))
+    for number, case in enumerate(loadings(part)):
         forces[number] = nodal_forces(part, shape, mesh, case)
     system = assemble(
         mesh,

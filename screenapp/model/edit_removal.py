@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from screenapp.model.edit_combinations import without_case
 from screenapp.model.edit_loops import remove_corner
 from screenapp.model.edit_patterns import must_be_whole
 from screenapp.model.edit_places import remove_hole, remove_outline
@@ -70,6 +71,12 @@ def _remove_one(part: Part, id_: str) -> Outcome:
             replace(c, loads=tuple(x for x in c.loads if x.id != id_)) for c in part.cases
         )
         return Outcome(replace(part, cases=cases))
+    if kind == "combination":
+        return Outcome(
+            replace(part, combinations=tuple(c for c in part.combinations if c.id != id_))
+        )
     gone = next(c for c in part.cases if c.id == id_)
+    part, combined = without_case(part, id_)
     lost = tuple(f"load {x.id} of case “{gone.name}”" for x in gone.loads)
-    return Outcome(replace(part, cases=tuple(c for c in part.cases if c.id != id_)), lost)
+    left = replace(part, cases=tuple(c for c in part.cases if c.id != id_))
+    return Outcome(left, lost + combined)

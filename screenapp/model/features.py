@@ -16,6 +16,7 @@ from screenapp.model.members import member_ids, members, whole_id
 from screenapp.model.part import (
     Case,
     CircleHole,
+    Combination,
     Corner,
     Cut,
     Edge,
@@ -33,8 +34,20 @@ from screenapp.model.part import (
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 
-Kind = Literal["corner", "edge", "hole", "zone", "support", "case", "load", "limit", "probe", "cut"]
-Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe | Cut
+Kind = Literal[
+    "corner",
+    "edge",
+    "hole",
+    "zone",
+    "support",
+    "case",
+    "combination",
+    "load",
+    "limit",
+    "probe",
+    "cut",
+]
+Record = Corner | Edge | Hole | Zone | Support | Case | Load | Limit | Probe | Cut | Combination
 
 PREFIXES: dict[Kind, str] = {
     "corner": "c",
@@ -47,6 +60,7 @@ PREFIXES: dict[Kind, str] = {
     "limit": "g",
     "probe": "p",
     "cut": "x",
+    "combination": "m",
 }
 """The letter that ids made by this program begin with."""
 
@@ -108,6 +122,8 @@ def everything(part: Part) -> Iterator[Found]:
         yield Found("case", case, "", "cases")
         for load in case.loads:
             yield Found("load", load, case.id, f"cases.{case.id}.loads")
+    for combination in part.combinations:
+        yield Found("combination", combination, "", "combinations")
     for limit in part.limits:
         yield Found("limit", limit, "", "limits")
     for probe in part.readings:
@@ -122,7 +138,17 @@ def ids_of(part: Part) -> Iterator[str]:
         yield from (c.id for c in loop.corners)
         yield from (e.id for e in loop.edges)
     cases = part.cases
-    for group in (part.holes, part.zones, part.supports, cases, part.limits, part.readings):
+    groups = (
+        part.holes,
+        part.zones,
+        part.supports,
+        cases,
+        part.combinations,
+        part.limits,
+        part.readings,
+        part.cuts,
+    )
+    for group in groups:
         yield from (one.id for one in group)
     yield from (load.id for case in cases for load in case.loads)
 

@@ -315,6 +315,23 @@ class Case:
     loads: tuple[Load, ...] = ()
 
 
+@dataclass(frozen=True)
+class Term:
+    """A case's share in a combination: all its loads times `factor`."""
+
+    case: str
+    factor: float
+
+
+@dataclass(frozen=True)
+class Combination:
+    """Cases that act together, each with its factor."""
+
+    id: str
+    name: str
+    terms: tuple[Term, ...] = ()
+
+
 # --- limits, mesh, readings -----------------------------------------------------------------
 
 
@@ -422,6 +439,7 @@ class Part:
     materials: tuple[Material, ...] = ()
     supports: tuple[Support, ...] = ()
     cases: tuple[Case, ...] = ()
+    combinations: tuple[Combination, ...] = ()
     limits: tuple[Limit, ...] = ()
     mesh: MeshWishes = MeshWishes()
     readings: tuple[Probe, ...] = ()

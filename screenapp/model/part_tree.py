@@ -16,6 +16,7 @@ from screenapp.model.part import (
     BearingLoad,
     Case,
     CircleHole,
+    Combination,
     Corner,
     Cut,
     Dimension,
@@ -40,6 +41,7 @@ from screenapp.model.part import (
     ShearLoad,
     SlotHole,
     StressLimit,
+    Term,
     Wall,
     Zone,
 )
@@ -96,7 +98,7 @@ def _forms(cls: Any) -> dict[str, str]:
 
 FORMS: dict[type, dict[str, str]] = {
     cls: _forms(cls)
-    for cls in (Corner, Edge, Wall, Material, MeshWishes, Dimension, *KIND_OF)
+    for cls in (Corner, Edge, Wall, Material, MeshWishes, Dimension, Term, *KIND_OF)
     if cls is not LoopHole
 }
 """The form of each field of the plain records: "number", "point", "whole" or "text"."""
@@ -135,6 +137,11 @@ def tree_of_part(part: Part) -> Tree:
             {"id": c.id, "name": c.name, "loads": [_tree(load) for load in c.loads]}
             for c in part.cases
         ],
+        "combinations": [
+            {"id": c.id, "name": c.name, "terms": [_tree(t) for t in c.terms]}
+            for c in part.combinations
+        ]
+        or None,
         "limits": [_tree(limit) for limit in part.limits],
         "mesh": _tree(part.mesh),
         "readings": [_tree(r) for r in (*part.readings, *part.cuts)],
@@ -214,6 +221,10 @@ def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
         cases=tuple(
             Case(c["id"], c["name"], tuple(_record(LOADS[x["kind"]], x) for x in c["loads"]))
             for c in tree.get("cases", ())
+        ),
+        combinations=tuple(
+            Combination(c["id"], c["name"], tuple(_record(Term, t) for t in c["terms"]))
+            for c in tree.get("combinations", ())
         ),
         limits=tuple(_record(LIMITS[x["kind"]], x) for x in tree.get("limits", ())),
         mesh=_record(MeshWishes, tree.get("mesh", {})),

@@ -1,6 +1,7 @@
 """What the equations gave: displacements, reactions and the checks on them, for every case.
 
-Cases keep the order of `Part.cases`.  Stress arrays hold σx, σy, τxy [MPa] on their last axis.
+Cases keep the order of `combinations.loadings`.  Stress arrays hold σx, σy, τxy [MPa] on their last
+axis.
 """
 
 from __future__ import annotations

@@ -7,6 +7,7 @@ screening goes through.
 from __future__ import annotations
 
 from screenapp.model.cautions import cautions_of
+from screenapp.model.combinations import combination_faults
 from screenapp.model.crossings import boundary_faults
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault, InvalidPartError
@@ -68,6 +69,7 @@ def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
         *support_faults(part, places, shape),
         *load_faults(part, places, shape),
         *limit_faults(part),
+        *combination_faults(part),
         *limit_material_faults(part),
         *mesh_faults(part.mesh),
         *reading_faults(part),

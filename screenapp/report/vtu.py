@@ -9,6 +9,7 @@ import meshio
 import numpy as np
 
 from screenapp.model.atomic_write import write_atomically
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part
 from screenapp.model.solution import von_mises
@@ -29,7 +30,7 @@ def write_vtu(part: Part, fields: Fields, path: Path) -> None:
     points = np.column_stack([mesh.nodes[nodes], np.zeros(len(nodes))])
     at_nodes: dict[str, object] = {}
     in_cells: dict[str, list[object]] = {}
-    for k, case in enumerate(part.cases):
+    for k, case in enumerate(loadings(part)):
         moved = fields.solution.displacements[k, nodes]
         at_nodes[f"displacement {case.id}"] = np.column_stack([moved, np.zeros(len(moved))])
         at_nodes[f"stress {case.id}"] = fields.stress.nodal[k]

@@ -16,6 +16,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.singular_spots import SingularSpot
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import CaseFindings, Estimate, Reading
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
@@ -162,7 +163,7 @@ def _point_factor(part: Part, last: Pass) -> Floats:
     mesh = last.fields.mesh
     p = order(last.fields.solution.element)
     factor = np.full(mesh.n_nodes, np.inf)
-    for k in range(len(part.cases)):
+    for k in range(len(loadings(part))):
         value = measure("von_mises", last.fields.stress.nodal[k], part)  # (n_fields,)
         peak = last.measure_max("von_mises", k)
         if peak <= 0.0:

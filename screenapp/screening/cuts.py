@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 from screenapp.mechanics.free_body import centroid, section_forces
 from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
 from screenapp.mechanics.straight_cut import StraightCut, straight_cut
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import (
     CUT_QUANTITIES,
     CutFindings,
@@ -66,7 +67,7 @@ def cuts(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[CutFindings,
         if not len(line.spans):
             continue
         read = [_lines(part, shape, p, line) for p in passes]
-        for k in range(len(part.cases)):
+        for k in range(len(loadings(part))):
             found.append(_cut(part, shape, passes, line, cut, k, [r[k] for r in read], spots))
     return tuple(found)
 
@@ -82,7 +83,7 @@ def _lines(part: Part, shape: Shape, this: Pass, line: StraightCut) -> list[_Lin
     grid = line.distances.shape
     n, d = line.normal, line.along
     out = []
-    for k in range(len(part.cases)):
+    for k in range(len(loadings(part))):
         s = read.stress[k]
         across = np.stack([s[:, 0] * n[0] + s[:, 2] * n[1], s[:, 2] * n[0] + s[:, 1] * n[1]], -1)
         lengthwise = np.stack(
@@ -105,7 +106,7 @@ def _cut(
     read: Sequence[_Line],
     spots: Sequence[SingularSpot],
 ) -> CutFindings:
-    case = part.cases[k]
+    case = loadings(part)[k]
     last = passes[-1].fields
     largest_of_case = passes[-1].measure_max("von_mises", k)
     applied = section_forces(part, shape, last.mesh, last.solution, k, line)

@@ -16,6 +16,7 @@ import numpy as np
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import recover
 from screenapp.mechanics.solve import solve
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import CaseFindings, Fields, Peak, PlainLoss
 from screenapp.model.part import ElementName, Part
 from screenapp.model.progress import SILENT, Progress
@@ -82,7 +83,7 @@ def _lost(plain: float, good: float) -> float:
 def _energy(part: Part, shape: Shape, this: Pass, k: int) -> float:
     """Strain energy of a case [N·mm]: half the work of loads and of supports that are moved."""
     solution = this.fields.solution
-    forces = nodal_forces(this.part, shape, this.fields.mesh, part.cases[k])
+    forces = nodal_forces(this.part, shape, this.fields.mesh, loadings(part)[k])
     if solution.support_forces is not None:
         forces = forces + solution.support_forces[k]
     return 0.5 * float(np.sum(forces * solution.displacements[k]))

@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Reading
 from screenapp.model.part import Part, Probe
 from screenapp.model.shape import Shape
@@ -49,7 +50,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     spots = singular_spots(part, shape)
     zones = passes[-1].reader.zones_at(points)
     found: list[Reading] = []
-    for k, case in enumerate(part.cases):
+    for k, case in enumerate(loadings(part)):
         largest = passes[-1].measure_max("von_mises", k)
         moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
         creeping = sizes_at_points(spots, case.id, passes)

@@ -22,6 +22,7 @@ from screenapp.meshing.sizing import (
     estimate_elements,
     initial_sizes,
 )
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import (
     CaseFindings,
     Estimate,
@@ -160,7 +161,7 @@ def _done(cases: Sequence[CaseFindings], read: Sequence[Reading]) -> bool:
 def _summary(part: Part, this: Pass) -> PassSummary:
     f = this.fields
     error = np.sqrt((f.stress.energy_error**2).sum(axis=1)).max(initial=0.0)
-    peak = max(this.measure_max("von_mises", k) for k in range(len(part.cases)))
+    peak = max(this.measure_max("von_mises", k) for k in range(len(loadings(part))))
     return PassSummary(
         f.mesh.n_elements, f.solution.unknowns, float(error), peak, float(this.sizes.min())
     )
@@ -171,7 +172,7 @@ def _cases(
 ) -> tuple[CaseFindings, ...]:
     found: list[CaseFindings] = []
     last = passes[-1].fields
-    for k, case in enumerate(part.cases):
+    for k, case in enumerate(loadings(part)):
         peaks: tuple[Peak, ...] = track(part, shape, passes, spots, k)
         moved, at = _displacement(part, passes, k, sizes_at_points(spots, case.id, passes))
         total = resultant(last.mesh.nodes, nodal_forces(part, shape, last.mesh, case))
@@ -230,7 +231,7 @@ def _findings(
     area = shape.area
     cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]
     if part.mesh.element == "quad4":
-        said = loss_text(plain, {case.id: case.name for case in part.cases})
+        said = loss_text(plain, {case.id: case.name for case in loadings(part)})
         cautions.append(
             f"{said[:1].lower()}{said[1:]}"
             if said

@@ -8,6 +8,7 @@ from collections.abc import Sequence
 import numpy as np
 
 from screenapp.mechanics.singular_spots import SingularSpot
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import Estimate, Peak
 from screenapp.model.part import Case, Part, StressLimit
 from screenapp.model.shape import Shape
@@ -38,7 +39,7 @@ def track(
 
     Peaks that rise to the same singular place count as one.
     """
-    case = part.cases[k]
+    case = loadings(part)[k]
     found: list[Peak] = []
     for name in measures(part):
         raws = passes[-1].peaks(name, k)

@@ -14,6 +14,7 @@ from typing import Literal
 
 from PySide6.QtCore import QObject, Signal
 
+from screenapp.model.combinations import loadings
 from screenapp.model.edit_dimensions import with_formulas
 from screenapp.model.errors import Fault
 from screenapp.model.field_names import field_words
@@ -182,7 +183,7 @@ class Document(QObject):
         """Show the history of this number, under its case, or of none."""
         if traced != self.traced:
             self.traced = traced
-            cases = [case.id for case in self.part.cases]
+            cases = [case.id for case in loadings(self.part)]
             if traced is not None and traced.case in cases:
                 self.look(case=cases.index(traced.case))
             self.traced_changed.emit()
@@ -201,7 +202,7 @@ class Document(QObject):
             self.view_changed.emit()
 
     def _told_part(self) -> None:
-        if self.view.case >= max(1, len(self.part.cases)):
+        if self.view.case >= max(1, len(loadings(self.part))):
             self.look(case=0)
         self.part_changed.emit()
         self.findings_changed.emit()

@@ -16,6 +16,7 @@ from PySide6.QtGui import (
 from PySide6.QtWidgets import QDialog, QMainWindow, QSplitter
 
 from screenapp.model import findings_cache
+from screenapp.model.combinations import loadings
 from screenapp.model.edits import EditError
 from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
@@ -247,7 +248,7 @@ class MainWindow(QMainWindow):
         findings = self.document.findings
         if findings is not None and self.document.view.lens in ("Shape", "Mesh"):
             worst = findings.governing
-            cases = [case.id for case in self.document.part.cases]
+            cases = [case.id for case in loadings(self.document.part)]
             self.document.look(
                 lens="Utilisation" if _judges_stress(self.document.part) else "Stress",
                 case=cases.index(worst.case) if worst is not None and worst.case in cases else 0,

@@ -6,6 +6,7 @@ from PySide6.QtCore import Qt
 from PySide6.QtGui import QContextMenuEvent, QKeyEvent, QKeySequence
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QStackedLayout, QToolButton, QWidget
 
+from screenapp.model.combinations import loadings
 from screenapp.model.edits import rename_probe
 from screenapp.model.errors import ScreenappError
 from screenapp.model.estimate_text import value_text
@@ -85,7 +86,7 @@ class _Table(FigureTable):
         self.document.apply("rename a reading", rename_probe(self.document.part, probe, name))
 
     def _trace(self, row: int) -> None:
-        cases = self.document.part.cases
+        cases = loadings(self.document.part)
         if cases:  # every probe has one line for each case
             self.document.trace(Traced(cases[row % len(cases)].id, self.line_at(row).id))
 
@@ -145,7 +146,7 @@ def _lines(document: Document) -> tuple[Line, ...]:
     found: dict[tuple[str, str], Reading] = {}
     if document.findings is not None:
         found = {(r.probe, r.case): r for r in document.findings.readings}
-    cases = [(case.id, case.name) for case in part.cases] or [("", DASH)]
+    cases = [(case.id, case.name) for case in loadings(part)] or [("", DASH)]
     lines = []
     q = Quantities(part.display_units)
     length = q.show(1.0, "length").split()[-1]

@@ -11,6 +11,7 @@ from screenapp.model.part import (
     BearingLoad,
     Case,
     CircleHole,
+    Combination,
     Corner,
     Cut,
     Dimension,
@@ -35,6 +36,7 @@ from screenapp.model.part import (
     ShearLoad,
     SlotHole,
     StressLimit,
+    Term,
     Wall,
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
@@ -148,6 +150,14 @@ parts = st.builds(
     limits=_listed(_limits),
     mesh=st.builds(MeshWishes, elements, numbers, maybe, st.integers(0, 9)),
     readings=_listed(lambda i: st.builds(Probe, st.just(f"p{i}"), texts, points)),
+    combinations=_listed(
+        lambda i: st.builds(
+            Combination,
+            st.just(f"combination{i}"),
+            texts,
+            _listed(lambda j: st.builds(Term, st.just(f"k{j}"), numbers)),
+        )
+    ),
     cuts=_listed(lambda i: st.builds(Cut, st.just(f"x{i}"), texts, points, points)),
 )
 """Parts without formulas."""

@@ -6,6 +6,7 @@ from __future__ import annotations
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QComboBox, QHBoxLayout, QLabel, QLineEdit, QVBoxLayout, QWidget
 
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import Trust
 from screenapp.window import theme
 from screenapp.window.board.colour_bar import TAKEN
@@ -92,10 +93,10 @@ class LensHeading(QWidget):
         view, part = self._document.view, self._document.part
         self._filling = True
         stress, displacement = view.lens == "Stress", view.lens == "Displacement"
-        cases = len(part.cases) > 1 and view.lens not in ("Shape", "Mesh")
+        cases = len(loadings(part)) > 1 and view.lens not in ("Shape", "Mesh")
         self.stress.setCurrentIndex(self.stress.findData(view.stress))
         self.displacement.setCurrentIndex(self.displacement.findData(view.displacement))
-        names = [case.name or case.id for case in part.cases]
+        names = [case.name or case.id for case in loadings(part)]
         if names != [self.case.itemText(i) for i in range(self.case.count())]:
             self.case.clear()
             self.case.addItems(names)

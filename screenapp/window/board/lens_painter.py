@@ -8,6 +8,7 @@ from typing import Protocol
 from PySide6.QtCore import QObject, QPointF
 from PySide6.QtGui import QPainterPath
 
+from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields, Findings
 from screenapp.report.colours import Scale
 from screenapp.window import theme
@@ -180,7 +181,7 @@ class LensPainter(QObject):
             return None, WAITING[view.lens] and (
                 "Only the numbers of this screening were kept: screen the part again to paint it"
             )
-        wanted = part.cases[view.case].id if view.case < len(part.cases) else ""
+        wanted = loadings(part)[view.case].id if view.case < len(loadings(part)) else ""
         ids = [case.case for case in findings.cases]
         if wanted not in ids:
             return None, WAITING[view.lens] and "This case has not been screened yet"

@@ -8,6 +8,7 @@ import numpy as np
 from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QPainter, QPen
 
+from screenapp.model.combinations import loadings
 from screenapp.model.errors import Fault
 from screenapp.model.part import BearingLoad, ForceLoad, GravityLoad, Load, Support
 from screenapp.window import theme
@@ -72,8 +73,8 @@ class SymbolsItem(ScreenItem):
             self._for = self.drawn, self.case, frame
             part = self.drawn.part
             self._marks = [m for s in part.supports for m in support_marks(self.drawn, frame, s)]
-            if self.case < len(part.cases):
-                loads = part.cases[self.case].loads
+            if self.case < len(loadings(part)):
+                loads = loadings(part)[self.case].loads
                 self._marks += [m for load in loads for m in load_marks(self.drawn, frame, load)]
             self._strokes = None
         return self._marks

@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 
 from screenapp.model.allowables import allowables
+from screenapp.model.combinations import loadings
 from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
@@ -80,7 +81,7 @@ class FindingsParagraph(Paragraph):
         document = self.document
         traced = document.traced
         number = traced_number(document.findings, traced)
-        names = {case.id: case.name for case in document.part.cases}
+        names = {case.id: case.name for case in loadings(document.part)}
         case = names.get(traced.case, "") if traced is not None and len(names) > 1 else ""
         self.history.show_figure(figure_of(number, document.part.display_units), case)
 
@@ -118,7 +119,7 @@ class FindingsParagraph(Paragraph):
 def _columns(part: Part) -> tuple[Column, ...]:
     unit = Quantities(part.display_units).show(1.0, "stress").split()[-1]
     columns = [Column("where")]
-    if len(part.cases) > 1:
+    if len(loadings(part)) > 1:
         columns.append(Column("case"))
     columns.append(Column(f"von Mises {unit}", number=True))
     if any(isinstance(limit, StressLimit) for limit in part.limits):
@@ -131,7 +132,7 @@ def _columns(part: Part) -> tuple[Column, ...]:
 
 def _line(part: Part, case: CaseFindings, peak: Peak) -> Line:
     texts = [QUANTITIES.get(peak.quantity, "") + peak.place]
-    if len(part.cases) > 1:
+    if len(loadings(part)) > 1:
         texts.append(case.name)
     texts.append(value_text(peak.estimate, "stress", part.display_units, unit=False))
     if any(isinstance(limit, StressLimit) for limit in part.limits):

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from PySide6.QtWidgets import QWidget
 
+from screenapp.model.combinations import loadings
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
 from screenapp.model.part import DisplacementLimit, Part, StressLimit
@@ -28,7 +29,7 @@ class LimitsTable(FigureTable):
     def show_limits(self, limits: tuple[LimitFindings, ...]) -> None:
         """Show what was found of each limit."""
         document = self.document
-        names = {case.id: case.name for case in document.part.cases}
+        names = {case.id: case.name for case in loadings(document.part)}
         several = len({found.case for found in limits}) > 1
         columns = COLUMNS if several else (COLUMNS[0], *COLUMNS[2:])
         lines = []
