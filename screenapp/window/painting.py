@@ -100,6 +100,7 @@ def _trusted_ends(source: Source, quantity: str, values: Floats) -> tuple[float,
     mesh = source.fields.mesh
     steady = np.ones(mesh.n_nodes, dtype=bool)
     steady[mesh.quads[np.concatenate(rising)]] = False
+    steady = steady if values.ndim == 1 else steady[mesh.quads]
     if not steady.any():
         return None
     low, high = float(values[steady].min()), float(values[steady].max())

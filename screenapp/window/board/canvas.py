@@ -27,6 +27,7 @@ from screenapp.window.board.snapping import Snap, snap
 from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryRow
+from screenapp.window.board.zone_items import ZoneFillItem, ZoneLineItem
 from screenapp.window.board.zoom_view import ZoomView
 from screenapp.window.document import Document
 
@@ -68,6 +69,7 @@ class Canvas(ZoomView):
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
         paths = PartPaths()
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
+        self.zone_fill, self.zone_lines = ZoneFillItem(paths), ZoneLineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
         self.dimensions = DimensionsItem()
         self.dimensions_shown: DimensionsShown = "plain"
@@ -75,6 +77,8 @@ class Canvas(ZoomView):
         for item in (
             self.grid,
             self.fill,
+            self.zone_fill,
+            self.zone_lines,
             self.outline,
             self.dimensions,
             self.symbols,
@@ -119,6 +123,9 @@ class Canvas(ZoomView):
         self.grid.units = self.scale_bar.units = self.part.display_units
         self.fill.show_part(drawn)
         self.outline.show_part(drawn)
+        self.zone_fill.show_part(drawn)
+        self.zone_lines.labels = self.document.view.lens == "Shape"
+        self.zone_lines.show_part(drawn)
         self.symbols.show_part(drawn, self.document.view.case)
         self.probes.show_part(drawn)
         self.show_marked()
@@ -154,7 +161,7 @@ class Canvas(ZoomView):
     def show_lit(self) -> None:
         """Light what is selected and hovered."""
         self.show_dimensions()
-        for item in (self.outline, self.symbols, self.probes):
+        for item in (self.outline, self.zone_lines, self.symbols, self.probes):
             item.selected, item.hovered = self.document.selection, self.document.hovered
             item.update()
 

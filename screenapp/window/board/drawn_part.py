@@ -9,8 +9,9 @@ from functools import cached_property, lru_cache
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.edits import hole_centre
 from screenapp.model.members import all_holes, member_ids
-from screenapp.model.part import Corner, Hole, Loop, LoopHole, Part, Point, Probe
+from screenapp.model.part import Corner, Hole, Loop, LoopHole, Part, Point, Probe, Zone
 from screenapp.model.shape import BoundaryCurve
 from screenapp.window.board.boundary_index import BoundaryIndex
 from screenapp.window.board.ring import Ring, hole_ring, outline_ring
@@ -25,11 +26,13 @@ class DrawnPart:
         loops: the rings; one at fault may be open or empty.
         hole_ids: the hole's id for each ring, None for the outline; members of a pattern have
             their own.
+        zone_rings: the ring of each zone, in the order of the part.
     """
 
     part: Part
     loops: tuple[Ring, ...]
     hole_ids: tuple[str | None, ...]
+    zone_rings: tuple[Ring, ...] = ()
 
     @cached_property
     def pieces(self) -> tuple[BoundaryCurve, ...]:
@@ -43,7 +46,7 @@ class DrawnPart:
 
     @cached_property
     def corners(self) -> dict[str, Corner]:
-        """Every corner of outline and loop holes by id."""
+        """Every corner of outline, loop holes and zones by id."""
         return {c.id: c for loop in loops_of(self.part) for c in loop.corners}
 
     @cached_property
@@ -57,6 +60,26 @@ class DrawnPart:
     def cut_holes(self) -> tuple[Hole, ...]:
         """Every hole that is cut, patterns unfolded."""
         return all_holes(self.part)
+
+    @cached_property
+    def zones(self) -> dict[str, Zone]:
+        """Every zone by id."""
+        return {z.id: z for z in self.part.zones}
+
+    @cached_property
+    def zone_index(self) -> BoundaryIndex:
+        """Finds the nearest line of a zone."""
+        return BoundaryIndex.joined([ring.index for ring in self.zone_rings])
+
+    def zone_of(self, feature: str) -> str:
+        """The zone that a corner or edge belongs to; "" for none."""
+        for zone in self.part.zones:
+            form = zone.form
+            if isinstance(form, LoopHole):
+                ids = {c.id for c in form.loop.corners} | {e.id for e in form.loop.edges}
+                if feature in ids:
+                    return zone.id
+        return feature if feature in self.zones else ""
 
     @cached_property
     def probes(self) -> dict[str, Probe]:
@@ -79,9 +102,13 @@ class DrawnPart:
 
     def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
         """Pieces of an edge, fillet, hole of any kind or whole pattern."""
+        if feature in self.zones:
+            return self.zone_rings[list(self.zones).index(feature)].pieces
         if feature in self.hole_ids:
             return self.loops[self.hole_ids.index(feature)].pieces
         mine = tuple(p for p in self.pieces if p.feature == feature)
+        if not mine and self.zone_rings:
+            mine = tuple(p for ring in self.zone_rings for p in ring.pieces if p.feature == feature)
         if mine or feature not in self.holes:
             return mine
         return tuple(p for p in self.pieces if p.feature.startswith(f"{feature}."))
@@ -117,6 +144,8 @@ class DrawnPart:
             return self.corners[feature].at
         if feature in self.holes:
             return self.centre_of(self.holes[feature])
+        if feature in self.zones:
+            return hole_centre(self.zones[feature].form)
         if feature in self.probes:
             return self.probes[feature].at
         if pieces := self.pieces_of(feature):
@@ -146,7 +175,8 @@ def _drawn(keeper: _ById) -> DrawnPart:
     ids: list[str | None] = [hole.id for hole in holes]
     if part.outline is not None:
         rings, ids = [outline_ring(part.outline), *rings], [None, *ids]
-    return DrawnPart(part, tuple(rings), tuple(ids))
+    zones = tuple(hole_ring(zone.form) for zone in part.zones)
+    return DrawnPart(part, tuple(rings), tuple(ids), zones)
 
 
 def drawn_part(part: Part) -> DrawnPart:
@@ -155,6 +185,7 @@ def drawn_part(part: Part) -> DrawnPart:
 
 
 def loops_of(part: Part) -> list[Loop]:
-    """The outline and every loop hole's ring."""
+    """The outline and the ring of every loop hole and zone."""
     loops = [part.outline] if part.outline is not None else []
-    return loops + [h.loop for h in part.holes if isinstance(h, LoopHole)]
+    forms = [*part.holes, *(z.form for z in part.zones)]
+    return loops + [form.loop for form in forms if isinstance(form, LoopHole)]

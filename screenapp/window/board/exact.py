@@ -1,17 +1,19 @@
-"""The numbers of a corner, hole or probe that can be typed exactly."""
+"""The numbers of a corner, hole, zone or probe that can be typed exactly."""
 
 from __future__ import annotations
 
 import dataclasses
+from dataclasses import replace
 
 from screenapp.model import edits
-from screenapp.model.features import Found, find
+from screenapp.model.features import Found, Record, find
 from screenapp.model.kinds import KindName
-from screenapp.model.part import CircleHole, Corner, LoopHole, Part, Point, Probe, SlotHole
+from screenapp.model.part import CircleHole, Corner, LoopHole, Part, Point, Probe, SlotHole, Zone
 from screenapp.model.pattern_faults import COUNTS
 from screenapp.window.board.typed_entry import EntryField
 
 PLACE = (EntryField("x", "x"), EntryField("y", "y"))
+THICKNESS = EntryField("thickness", "thickness")
 CUTS = (
     EntryField("round", "round", "length", ("chamfer",)),
     EntryField("chamfer", "chamfer", "length", ("round",)),
@@ -26,7 +28,9 @@ SLOT = (
 
 def exact_fields(found: Found) -> tuple[EntryField, ...]:
     """What may be typed for a thing; nothing for edges and the like."""
-    record = found.record
+    record = _formed(found)
+    if isinstance(found.record, Zone):
+        return (*exact_fields(replace(found, record=record)), THICKNESS)
     if isinstance(record, Corner):
         return (*PLACE, *CUTS)
     if isinstance(record, CircleHole | SlotHole):
@@ -78,7 +82,7 @@ def pattern_values(hole: CircleHole | SlotHole) -> dict[str, float]:
 
 def exact_values(found: Found) -> dict[str, float]:
     """The present values [mm, deg] of those fields."""
-    record = found.record
+    record = _formed(found)
     if isinstance(record, Corner):
         cuts = {"round": record.round, "chamfer": record.chamfer}
         return {"x": record.at[0], "y": record.at[1], **cuts}
@@ -92,14 +96,21 @@ def exact_values(found: Found) -> dict[str, float]:
         values["diameter"] = record.diameter
     elif isinstance(record, SlotHole):
         values |= {"length": record.length, "width": record.width, "angle": record.angle}
+    if isinstance(found.record, Zone) and found.record.thickness is not None:
+        values["thickness"] = found.record.thickness
     return values if isinstance(record, LoopHole) else values | pattern_values(record)
+
+
+def _formed(found: Found) -> Record:
+    """The record, or the form of a zone."""
+    return found.record.form if isinstance(found.record, Zone) else found.record
 
 
 def exact_paths(found: Found) -> dict[str, str]:
     """The dotted path in the part file of each of those fields, where an expression is kept."""
-    record = found.record
+    record = _formed(found)
     if isinstance(record, LoopHole):
-        return {}
+        return {"thickness": f"{found.field}.thickness"} if found.kind == "zone" else {}
     place = "centre" if isinstance(record, CircleHole | SlotHole) else "at"
     places = {"x": f"{place}.0", "y": f"{place}.1"}
     paths = {f.name: f"{found.field}.{places.get(f.name, f.name)}" for f in exact_fields(found)}
@@ -133,8 +144,16 @@ def with_exact(part: Part, id_: str, typed: dict[str, float]) -> Part:
         return edits.set_round(part, id_, values["round"]) if "round" in typed else part
     if isinstance(record, Probe):
         return edits.move_probe(part, id_, to)
-    if moves:
+    if moves and isinstance(record, Zone):
+        x, y = edits.hole_centre(record.form)
+        part = edits.move(part, [id_], to[0] - x, to[1] - y)
+    elif moves:
         part = edits.move_hole(part, id_, to)
+    if isinstance(record, Zone):
+        sizes = {k: v for k, v in typed.items() if k not in ("x", "y", "thickness")}
+        if "thickness" in typed:
+            part = edits.set_zone(part, id_, thickness=typed["thickness"])
+        return edits.reshape_zone(part, id_, **sizes) if sizes else part
     assert isinstance(record, CircleHole | SlotHole | LoopHole)
     repeated = {} if isinstance(record, LoopHole) else pattern_values(record)
     fields = {v: k for k, v in PATTERN_KEYS.items()}

@@ -12,7 +12,7 @@ from screenapp.model.part import Point
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 
-HitKind = Literal["corner", "edge", "fillet", "chamfer", "hole", "support", "load", "probe"]
+HitKind = Literal["corner", "edge", "fillet", "chamfer", "hole", "zone", "support", "load", "probe"]
 
 POINT_PX, LINE_PX = 9.0, 7.0
 """How near the cursor must be to a point and to a line [px]."""
@@ -46,8 +46,8 @@ def hit_test(
 ) -> Hit | None:
     """The thing under the cursor at `px`, None if there is none.
 
-    Points come before lines and symbols, the nearer of which counts, and these before the inside
-    of a hole.
+    Points come before lines and symbols, the nearer of which counts, these before lines of zones,
+    and these before the inside of a hole or zone.
     """
     at = frame.mm(px)
     if (point := _nearest_probe(drawn, frame, at) or _nearest_corner(drawn, frame, at)) is not None:
@@ -56,7 +56,8 @@ def hit_test(
     near = math.inf if piece is None else math.dist(piece.at, at) * frame.scale
     if symbols is not None and (symbol := symbols.nearest(px, frame, min(near, LINE_PX - 2.0))):
         return Hit(*symbol, at)
-    return piece or _hole_around(drawn, at)
+    line = piece or _zone_line(drawn, frame, at)
+    return line or _hole_around(drawn, at) or zone_around(drawn, at)
 
 
 def nearest_piece(drawn: DrawnPart, at: Point, reach: float) -> Hit | None:
@@ -83,6 +84,22 @@ def _nearest_corner(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
         return None
     corner = min(near, key=lambda c: math.dist(c.at, at))
     return Hit("corner", corner.id, corner.at)
+
+
+def _zone_line(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
+    foot = drawn.zone_index.nearest(at) if drawn.zone_rings else None
+    if foot is None or foot.far > LINE_PX / frame.scale:
+        return None
+    return Hit("zone", drawn.zone_of(foot.piece.feature), foot.at)
+
+
+def zone_around(drawn: DrawnPart, at: Point) -> Hit | None:
+    """The zone at a place of the wall: the last one that holds it."""
+    if drawn.zone_rings and drawn.inside(at):
+        for zone, ring in zip(drawn.part.zones[::-1], drawn.zone_rings[::-1], strict=True):
+            if ring.inside(at):
+                return Hit("zone", zone.id, at)
+    return None
 
 
 def _hole_around(drawn: DrawnPart, at: Point) -> Hit | None:

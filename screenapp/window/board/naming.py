@@ -24,6 +24,7 @@ from screenapp.model.part import (
     RollerSupport,
     ShearLoad,
     SlotHole,
+    Zone,
 )
 from screenapp.model.units import format_quantity
 from screenapp.window.board.hit_test import Hit
@@ -49,6 +50,8 @@ def described(part: Part, found: Found) -> str:
         return f"{words}, ⌀ {_length(record.diameter, units)}"
     if isinstance(record, SlotHole):
         return f"slot {record.id}, {_length(record.length, units)} × {_length(record.width, units)}"
+    if isinstance(record, Zone):
+        return f"{words}{f' ({record.name})' if record.name else ''}, {zone_words(record, part)}"
     if isinstance(record, Corner) and record.round:
         return f"{words}, R {_length(record.round, units)}"
     if isinstance(record, Probe):
@@ -61,6 +64,17 @@ def described(part: Part, found: Found) -> str:
     if found.kind == "load":
         return f"{_loaded(record, units)} on {place_name(part, record.on)}"  # type: ignore
     return words
+
+
+def zone_words(zone: Zone, part: Part) -> str:
+    """What a zone is, in the words that stand on the board: "8 mm, brass"."""
+    words = []
+    if zone.thickness is not None or zone.material is None:
+        own = part.wall.thickness if zone.thickness is None else zone.thickness
+        words.append(_length(own, part.display_units))
+    if zone.material is not None:
+        words.append(zone.material)
+    return ", ".join(words)
 
 
 def _held(record: FixedSupport | RollerSupport | PrescribedSupport, units: DisplayUnits) -> str:

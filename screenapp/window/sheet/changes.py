@@ -82,7 +82,8 @@ def choose_material(document: Document, material: Material) -> None:
     if material in part.materials:
         materials = part.materials
     else:
-        replaced = (part.wall.material, material.name)
+        named = {zone.material for zone in part.zones}  # zones keep what they are made of
+        replaced = ({part.wall.material} - named) | {material.name}
         materials = (*(m for m in part.materials if m.name not in replaced), material)
     wall = replace(part.wall, material=material.name)
     apply(document, f"material {material.name}", replace(part, materials=materials, wall=wall))
@@ -126,8 +127,14 @@ class MaterialChange:
         materials = tuple(
             replace(m, name=name) if m.name == self._name else m for m in part.materials
         )
-        wall = replace(part.wall, material=name)
-        apply(self._document, f"material {name}", replace(part, materials=materials, wall=wall))
+        wall = part.wall
+        if wall.material == self._name:
+            wall = replace(wall, material=name)
+        zones = tuple(
+            replace(z, material=name) if z.material == self._name else z for z in part.zones
+        )
+        changed = replace(part, materials=materials, wall=wall, zones=zones)
+        apply(self._document, f"material {name}", changed)
 
     def _set(self, field: str, value: Any) -> None:
         part = self._document.part

@@ -5,7 +5,9 @@ from __future__ import annotations
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import find, hole_word, place_name
 from screenapp.model.ligaments import Ligament, ligaments
+from screenapp.model.mass import mass_of
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole
+from screenapp.model.regions import shape_with_zones
 from screenapp.model.shape import Shape, shape_of
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.dimension_rows import add_link, dimension_rows
@@ -70,8 +72,12 @@ class PartParagraph(Paragraph):
             return ("Shown in ", units, ".")
         holes = _count(len(part.holes), "hole")
         text = f"Outline of {_count(len(part.outline.edges), 'edge')}, {holes}"
+        if part.zones:
+            text += f", {_count(len(part.zones), 'zone')}"
+        drawn = ("outline", "holes", "zones")
+        sound = not any(f.blocks and f.field.startswith(drawn) for f in self.document.faults)
         try:
-            shape = shape_of(part)
+            shape = shape_with_zones(part) if sound else shape_of(part)
         except InvalidPartError:
             return (f"{text}.", *shown)
         return (f"{text}; {_size(part, shape, q)}.", *self._ligament(part, shape, q), *shown)
@@ -193,9 +199,8 @@ def _size(part: Part, shape: Shape, q: Quantities) -> str:
     text = (
         f"{q.bare(x1 - x0, 'length')} × {q.show(y1 - y0, 'length')}, {q.show(shape.area, 'area')}"
     )
-    if part.material is not None:
-        mass = shape.area * part.wall.thickness * 1e-9 * part.material.density
-        text += f", {q.show(mass, 'mass')}"
+    if part.material is not None and (shape.regions or not part.zones):
+        text += f", {q.show(mass_of(part, shape), 'mass')}"
     return text
 
 

@@ -11,6 +11,7 @@ from screenapp.window.sheet import changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.zone_rows import zone_rows
 
 OWN = "own"
 STATES = {
@@ -24,17 +25,19 @@ class WallParagraph(Paragraph):
 
     number = 2
     title = "Wall"
-    fields = ("wall", "materials")
+    fields = ("wall", "materials", "zones")
 
     def build(self) -> None:
         """One sentence for the wall, one for the material's figures."""
         self.wall = self.sentence()
         self.figures = self.sentence()
+        self.zones = self.rows(64)
 
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the wall."""
         part = self.document.part
         q = Quantities.of(self.document)
+        self.zones.set(zone_rows(self.document, q, self._offered))
         thickness = q.value(
             "thickness",
             part.wall.thickness,
@@ -136,6 +139,9 @@ class WallParagraph(Paragraph):
         )
 
     def _choices(self) -> tuple[Choice, ...]:
+        return (*self._offered(), Choice("-", ""), Choice(OWN, "Own material…", "give its figures"))
+
+    def _offered(self) -> tuple[Choice, ...]:
         part = self.document.part
         own = {m.name for m in part.materials}
         lines = [Choice(m.name, m.name, self._remark(m)) for m in part.materials]
@@ -148,7 +154,6 @@ class WallParagraph(Paragraph):
             grades = tuple(Choice(m.name, m.name, self._remark(m)) for m in kin)
             if grades:
                 lines.append(Choice(family, f"{family.capitalize()} grades", children=grades))
-        lines += [Choice("-", ""), Choice(OWN, "Own material…", "give its figures")]
         return tuple(lines)
 
     def _remark(self, m: Material) -> str:

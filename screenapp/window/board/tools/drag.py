@@ -1,4 +1,4 @@
-"""Dragging corners, edges, holes and probes: one of them, or all that are selected together."""
+"""Dragging corners, edges, holes, zones and probes: one of them, or all selected ones together."""
 
 from __future__ import annotations
 
@@ -103,6 +103,8 @@ def grip_of(drawn: DrawnPart, id_: str) -> Point | None:
         return drawn.corners[id_].at
     if id_ in drawn.holes:
         return edits.hole_centre(drawn.holes[id_])
+    if id_ in drawn.zones:
+        return edits.hole_centre(drawn.zones[id_].form)
     if id_ in drawn.probes:
         return drawn.probes[id_].at
     for _, _, loop in loops_of(drawn.part):

@@ -22,6 +22,7 @@ from screenapp.window.board.tools.rounded_rectangle import RoundedRectangleTool
 from screenapp.window.board.tools.select import SelectTool
 from screenapp.window.board.tools.slot import SlotTool
 from screenapp.window.board.tools.tangent_arc import TangentArcTool
+from screenapp.window.board.tools.zone import ZoneTool
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -43,6 +44,7 @@ def every_tool(canvas: Canvas) -> tuple[Tool, ...]:
         GridTool(canvas),
         BoltCircleTool(canvas),
         SlotTool(canvas),
+        ZoneTool(canvas),
         FilletTool(canvas),
         ChamferTool(canvas),
         OffsetTool(canvas),

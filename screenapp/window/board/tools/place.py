@@ -8,6 +8,7 @@ from PySide6.QtCore import QPoint, Qt
 
 from screenapp.model.features import find
 from screenapp.model.members import whole_id
+from screenapp.model.part import Part
 from screenapp.window.board.tools.base import Place, Tool
 
 
@@ -20,7 +21,7 @@ class PlaceTool(Tool):
     def cursor(self) -> Qt.CursorShape:
         """A hand over what can be taken."""
         place = self.canvas.place
-        over = place is not None and target_of(place) is not None
+        over = place is not None and target_of(place, self.canvas.document.part) is not None
         return Qt.CursorShape.PointingHandCursor if over else Qt.CursorShape.ArrowCursor
 
     def open_at(self, on: str, near: QPoint) -> None:
@@ -55,7 +56,7 @@ class PlaceTool(Tool):
             self.canvas.document.select(hit.id)
             self.canvas.placing.change(hit.id, place.px.toPoint())
             return
-        on = target_of(place)
+        on = target_of(place, self.canvas.document.part)
         if on is None:
             self.say("Click an edge, a hole or a sharp corner.")
             return
@@ -93,8 +94,12 @@ class LoadTool(PlaceTool):
         self.canvas.placing.load(on, near)
 
 
-def target_of(place: Place) -> str | None:
-    """The edge, hole or sharp corner under the cursor; with Shift all holes of a pattern."""
-    if place.hit is not None and place.hit.kind in ("edge", "hole", "corner"):
-        return whole_id(place.hit.id) if place.shift else place.hit.id
-    return None
+def target_of(place: Place, part: Part) -> str | None:
+    """The edge, hole or sharp corner of the boundary under the cursor; with Shift all holes of a
+    pattern."""
+    if place.hit is None or place.hit.kind not in ("edge", "hole", "corner"):
+        return None
+    found = find(part, whole_id(place.hit.id))
+    if found is None or found.inside:
+        return None
+    return whole_id(place.hit.id) if place.shift else place.hit.id

@@ -1,0 +1,79 @@
+"""Rows of the zones in the Wall paragraph: "zone z1: 8 mm thick, of the wall's material"."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import replace
+
+from screenapp.model import edits
+from screenapp.model.materials import library
+from screenapp.model.part import Part, Zone
+from screenapp.window.document import Document
+from screenapp.window.sheet import changes
+from screenapp.window.sheet.pieces import Choice, Value
+from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.rows import RowOf
+
+SAME = "the wall's material"
+
+
+def zone_rows(
+    document: Document, q: Quantities, library_choices: Callable[[], tuple[Choice, ...]]
+) -> list[RowOf]:
+    """One row for each zone; `library_choices` are the materials that the wall may have."""
+    return [_row(document, zone, q, library_choices) for zone in document.part.zones]
+
+
+def _row(
+    document: Document,
+    zone: Zone,
+    q: Quantities,
+    library_choices: Callable[[], tuple[Choice, ...]],
+) -> RowOf:
+    part, where = document.part, f"zone {zone.id}"
+    thickness = q.value(
+        "thickness",
+        part.wall.thickness if zone.thickness is None else zone.thickness,
+        "length",
+        f"Thickness of {where}",
+        lambda value: document.apply(
+            f"thickness of {where}", edits.set_zone(document.part, zone.id, thickness=value)
+        ),
+        field=f"zones.{zone.id}.thickness",
+    )
+    material = Value(
+        "material",
+        SAME if zone.material is None else zone.material,
+        f"Material of {where}",
+        lambda key: _choose(document, zone.id, key),
+        lambda: (Choice("", SAME), *library_choices()),
+    )
+    named = f" “{zone.name}”" if zone.name else ""
+    return RowOf(
+        zone.id,
+        (where,),
+        (f"{named.strip()} " if named else "", thickness, " thick, of ", material),
+        lambda: changes.remove(document, zone.id),
+        f"Remove {where}",
+    )
+
+
+def _choose(document: Document, zone: str, key: str) -> None:
+    """Make a zone of a material of the part or of the library; "" is the wall's."""
+    part = document.part
+    changed = edits.set_zone(with_material(part, key, _thickness(part, zone)), zone, material=key)
+    document.apply(f"material of zone {zone}", changed)
+
+
+def _thickness(part: Part, zone: str) -> float:
+    index = next(k for k, z in enumerate(part.zones) if z.id == zone)
+    return part.wall_of(index).thickness
+
+
+def with_material(part: Part, name: str, thickness: float) -> Part:
+    """The part with a material of the library among its own, as the standard has it for a
+    thickness [mm]; the part itself if it has it, or for ""."""
+    if not name or any(m.name == name for m in part.materials):
+        return part
+    grade = next(g for g in library() if g.name == name)
+    return replace(part, materials=(*part.materials, grade.at(thickness)))
