@@ -15,14 +15,12 @@ KINDS = ("corner", "edge", "hole", "zone", "support", "load", "probe")
 
 
 def in_box(drawn: DrawnPart, frame: Frame, box: QRectF) -> list[str]:
-    """Corners, holes, zones and probes whose place stands in a box [px]; patterns that do so whole."""
+    """Corners, holes, zones and probes that stand in a box [px]; patterns that do so whole."""
     spots = [(id_, [c.at]) for id_, c in drawn.corners.items()]
     for hole in drawn.part.holes:
         every = [drawn.holes[id_] for id_ in drawn.members_of(hole.id) or (hole.id,)]
         spots.append((hole.id, [drawn.centre_of(one) for one in every]))
-    spots += [
-        (id_, [at]) for id_ in drawn.zones if (at := drawn.anchor_of(id_)) is not None
-    ]
+    spots += [(id_, [at]) for id_ in drawn.zones if (at := drawn.anchor_of(id_)) is not None]
     spots += [(id_, [p.at]) for id_, p in drawn.probes.items()]
     return [id_ for id_, places in spots if all(box.contains(frame.px(at)) for at in places)]
 
