@@ -155,7 +155,7 @@ class Document(QObject):
         self.selection = ()
         self.hovered = None
         self.trace(None)
-        self.view = View()
+        self.view = View(lens=self.view.lens)
         self._told_part()
         self.findings_changed.emit()
         self.selection_changed.emit()

@@ -55,7 +55,7 @@ class Files(QObject):
         """Show an empty part."""
         if not self.may_leave():
             return False
-        self._document.open(Part(), None)
+        self._document.open(Part(display_units=self._settings.units), None)
         self.opened.emit()
         return True
 

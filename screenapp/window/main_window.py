@@ -60,11 +60,13 @@ class MainWindow(QMainWindow):
     ) -> None:
         super().__init__()
         self.settings = settings or Settings()
-        self.document = Document(parent=self)
+        self.document = Document(Part(display_units=self.settings.units), parent=self)
+        self.document.look(lens=self.settings.lens)
         self.screener = Screener(screen, make_mesher, self)
         self.drawing_jobs = DrawingJobs(self)
         self.files = Files(self.document, self.settings, ask or Ask(), self)
         self.board = Board(self.document)
+        self.board.canvas.dimensions_shown = self.settings.dimensions
         self.lens_bar = LensBar(self.document)
         self.board.set_lens_bar(self.lens_bar)
         self.painter = LensPainter(self.document, self.board)
@@ -72,6 +74,7 @@ class MainWindow(QMainWindow):
         self.sheet = Sheet(self.document)
         self.files.take_typing = self.sheet.take_typing
         self._read_last: tuple[Probe, ...] = ()
+        self._part_before = (self.document.history, self.document.part.display_units)
         self._panels: dict[str, QDialog] = {}
         self._warmed = False
         self._lay_out()
@@ -169,6 +172,14 @@ class MainWindow(QMainWindow):
         panel.wanted.connect(take)
         self._show_panel("drawing", lambda: panel)
 
+    def _note_units(self) -> None:
+        """The units that are chosen for a part are those that new ones begin in."""
+        document = self.document
+        history, units = self._part_before
+        self._part_before = (document.history, document.part.display_units)
+        if document.history is history and document.part.display_units != units:
+            self.settings.units = document.part.display_units
+
     def show_about(self) -> None:
         """Say what this is, with the cautions."""
         self._show_panel("about", lambda: about_panel(self))
@@ -220,6 +231,7 @@ class MainWindow(QMainWindow):
         document.said.connect(self._say)
         document.path_changed.connect(self._show_title)
         document.part_changed.connect(self._renew_readings)
+        document.part_changed.connect(self._note_units)
         self.board.sample_wanted.connect(lambda path: self.files.open_sample(Path(path)))
         self.files.failed.connect(sheet.head.notice.tell)
         self.files.saved.connect(self._saved)
@@ -354,6 +366,8 @@ class MainWindow(QMainWindow):
         self.settings.keep_bytes("geometry", self.saveGeometry())
         self.settings.keep_bytes("columns", self.whole.saveState())
         self.settings.keep_bytes("rows", self.left.saveState())
+        self.settings.lens = self.document.view.lens
+        self.settings.dimensions = self.board.canvas.dimensions_shown
         self.settings.sync()
         self.screener.shut_down()
         self.drawing_jobs.shut_down()

@@ -4,11 +4,15 @@ from __future__ import annotations
 
 import os
 from pathlib import Path
+from typing import get_args
 
 from platformdirs import user_config_path
 from PySide6.QtCore import QByteArray, QSettings
 
+from screenapp.model.part import DisplayUnits
 from screenapp.window import theme
+from screenapp.window.board.dimension_marks import DimensionsShown
+from screenapp.window.document import Lens
 
 PLACE = "SCREENAPP_SETTINGS"
 """Environment variable that names another ini file (tests use it)."""
@@ -18,7 +22,7 @@ RECENT = 8
 
 
 class Settings:
-    """Window geometry, theme and recent files."""
+    """Window geometry, theme, lens, dimensions shown, units of new parts, and recent files."""
 
     def __init__(self, path: Path | None = None) -> None:
         named = os.environ.get(PLACE)
@@ -35,6 +39,36 @@ class Settings:
     @theme.setter
     def theme(self, choice: theme.Choice) -> None:
         self._store.setValue("theme", choice)
+
+    @property
+    def lens(self) -> Lens:
+        """The lens last chosen."""
+        kept = str(self._store.value("lens", "Shape"))
+        return next((lens for lens in get_args(Lens) if lens == kept), "Shape")
+
+    @lens.setter
+    def lens(self, lens: Lens) -> None:
+        self._store.setValue("lens", lens)
+
+    @property
+    def units(self) -> DisplayUnits:
+        """The units that new parts are shown in: those last chosen."""
+        kept = str(self._store.value("units", ""))
+        return next((u for u in get_args(DisplayUnits) if u == kept), "mm-N-MPa")
+
+    @units.setter
+    def units(self, units: DisplayUnits) -> None:
+        self._store.setValue("units", units)
+
+    @property
+    def dimensions(self) -> DimensionsShown:
+        """Which dimensions the board shows."""
+        kept = str(self._store.value("dimensions", ""))
+        return next((d for d in get_args(DimensionsShown) if d == kept), "plain")
+
+    @dimensions.setter
+    def dimensions(self, shown: DimensionsShown) -> None:
+        self._store.setValue("dimensions", shown)
 
     def bytes_of(self, name: str) -> QByteArray | None:
         """Kept geometry or splitter state, None if there is none."""

@@ -404,6 +404,23 @@ def test_theme_geometry_and_columns_are_kept(tmp_path: Path, qtbot: QtBot) -> No
     theme.choose("system")
 
 
+def test_lens_dimensions_and_units_are_kept(tmp_path: Path, qtbot: QtBot) -> None:
+    first = window(tmp_path)
+    first.document.look(lens="Stress")
+    first.board.show_dimensions("all")
+    QTest.keyClick(first, Qt.Key.Key_U, CONTROL)
+    first.close()
+    second = window(tmp_path)
+    qtbot.addWidget(second)
+    assert second.document.view.lens == "Stress"
+    assert second.board.canvas.dimensions_shown == "all"
+    assert second.document.part.display_units == "in-lbf-ksi"
+    second.document.open(plate(), None)  # a part of other units is shown in its own
+    assert second.document.part.display_units == "mm-N-MPa"
+    second.files.new()
+    assert second.document.part.display_units == "in-lbf-ksi"
+
+
 @pytest.mark.parametrize("size", [(1280, 720), (1920, 1080)])
 def test_board_and_sheet_share_the_width(main: MainWindow, size: tuple[int, int]) -> None:
     main.resize(*size)

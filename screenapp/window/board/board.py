@@ -9,8 +9,8 @@ from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 from screenapp.window import theme
 from screenapp.window.board.board_commands import board_commands
 from screenapp.window.board.canvas import Canvas
+from screenapp.window.board.corner_label import CornerLabel
 from screenapp.window.board.dimension_marks import DimensionsShown
-from screenapp.window.board.elided_label import ElidedLabel
 from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
 from screenapp.window.board.quantity import warm_up
@@ -43,7 +43,7 @@ class Board(QWidget):
         self.strip = ToolStrip(self.tools)
         self._history = document.history
         self._fitted = False
-        self._corner = ElidedLabel()
+        self._corner = CornerLabel()
         self._corner.setAccessibleName("Cursor and snap")
         self._foot = QWidget()
         self._foot.setObjectName("boardFoot")
@@ -211,7 +211,8 @@ class Board(QWidget):
         unit = unit_length(units)
         x, y = place.at if tool is not None and tool.snapping else place.raw
         digits, word = (3, "in") if units == "in-lbf-ksi" else (2, "mm")
-        text = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
+        at = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
         if tool is not None and tool.snapping:
-            text += f"  ·  snap: {place.snap.words}"
-        self._corner.say(text)
+            self._corner.say(at, f"snap: {place.snap.words}")
+        else:
+            self._corner.say(at)
