@@ -11,8 +11,9 @@ import shapely
 from numpy.typing import NDArray
 
 from screenapp.mechanics import shape_functions
+from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.equilibrium import resultant
-from screenapp.mechanics.loads import body_force, side_tractions
+from screenapp.mechanics.loads import body_force, side_thickness, side_tractions
 from screenapp.mechanics.quadrature import gauss_line, gauss_square
 from screenapp.mechanics.straight_cut import StraightCut
 from screenapp.model.combinations import loadings
@@ -39,16 +40,21 @@ def section_forces(
     if body is None or solution.support_forces is None:
         return None
     total = _on_body(part, shape, mesh, solution.support_forces[case], loadings(part)[case], body)
-    middle = cut.start + centroid(cut) * cut.along
+    middle = cut.start + centroid(part, cut) * cut.along
     force = -total[:2]
     about = total[2] - (middle[0] * total[1] - middle[1] * total[0])
     return SectionForces(float(force @ cut.normal), float(force @ cut.along), float(about))
 
 
-def centroid(cut: StraightCut) -> float:
-    """Distance of the section's middle from the start of the cut [mm], one thickness taken."""
-    lengths = np.ptp(cut.spans, axis=1)
-    return float((lengths * cut.spans.mean(axis=1)).sum() / lengths.sum())
+def centroid(part: Part, cut: StraightCut) -> float:
+    """Distance of the section's middle from the start of the cut [mm]."""
+    areas = span_thickness(part, cut) * np.ptp(cut.spans, axis=1)
+    return float((areas * cut.spans.mean(axis=1)).sum() / areas.sum())
+
+
+def span_thickness(part: Part, cut: StraightCut) -> Floats:
+    """Thickness of the wall along each span [mm], (n_spans,)."""
+    return np.array([part.wall_of(int(zone)).thickness for zone in cut.zones])
 
 
 def body_left_of(shape: Shape, cut: StraightCut) -> shapely.Geometry | None:
@@ -119,23 +125,24 @@ def _side_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> tuple[Floa
     slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
     nodes = mesh.nodes[mesh.side_nodes[loaded]]
     stretch = np.linalg.norm(slopes @ nodes, axis=2)
-    force = part.wall.thickness * (stretch * weights)[..., None] * (shapes @ traction[loaded])
+    thickness = side_thickness(part, mesh)[loaded, None]
+    force = (thickness * stretch * weights)[..., None] * (shapes @ traction[loaded])
     return (shapes @ nodes).reshape(-1, 2), force.reshape(-1, 2)
 
 
 def _weight(part: Part, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
     """Places and forces of the weight: a rule over each element."""
-    body = body_force(part, case)
+    zones = mesh.element_zones
+    body = np.array([body_force(part, case, int(z)) for z in range(-1, len(part.zones))])[zones + 1]
     if not body.any():
         return np.zeros((0, 2)), np.zeros((0, 2))
     xi, weights = gauss_square(3)
     nodes = mesh.nodes[mesh.quads]
     slopes = shape_functions.derivatives(9, xi)  # (points, 9, 2)
     jacobian = np.einsum("pia,nib->npab", slopes, nodes)
-    det = np.linalg.det(jacobian)
+    volume = np.linalg.det(jacobian) * weights * element_thickness(part, mesh)[:, None]
     at = shape_functions.values(9, xi) @ nodes
-    force = part.wall.thickness * (det * weights)[..., None] * body
-    return at.reshape(-1, 2), force.reshape(-1, 2)
+    return at.reshape(-1, 2), (volume[..., None] * body[:, None]).reshape(-1, 2)
 
 
 def _sum(body: shapely.Geometry, at: Floats, force: Floats) -> Floats:

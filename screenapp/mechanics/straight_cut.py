@@ -30,7 +30,9 @@ class StraightCut:
         start: where it begins [mm].
         along: unit vector from start to end.
         normal: unit vector to the right of it, out of the body on its left.
-        spans: distances from the start at which material begins and ends [mm], (n, 2).
+        spans: distances from the start at which material begins and ends [mm], (n, 2); where
+            thickness or material changes, one span ends and the next begins.
+        zones: index in `Part.zones` of each span, -1 for the wall itself, (n,).
         distances: of the places along the cut [mm], (n, POINTS), rising, ends included.
         weights: of an integral over the cut at these places [mm], (n, POINTS).
     """
@@ -39,6 +41,7 @@ class StraightCut:
     along: Floats
     normal: Floats
     spans: Floats
+    zones: NDArray[np.int64]
     distances: Floats
     weights: Floats
 
@@ -60,12 +63,15 @@ def straight_cut(shape: Shape, start: Point, end: Point) -> StraightCut:
     """
     begin, reach = np.asarray(start), math.dist(start, end)
     along = (np.asarray(end) - begin) / reach
-    marks = _crossings(shape, begin, along, reach)
-    middles = 0.5 * (marks[1:] + marks[:-1])
-    within = _inside(shape, begin + middles[:, None] * along)
-    spans = np.array(
-        [(a, b) for a, b, ok in zip(marks, marks[1:], within, strict=False) if ok]
-    ).reshape(-1, 2)
+    found: list[tuple[float, float, int]] = []
+    for region in shape.parts:
+        marks = _crossings(region.shape, begin, along, reach)
+        middles = 0.5 * (marks[1:] + marks[:-1])
+        within = _inside(region.shape, begin + middles[:, None] * along)
+        ends = zip(marks, marks[1:], within, strict=False)
+        found += [(float(a), float(b), region.zone) for a, b, ok in ends if ok]
+    found = _without_doubles(sorted(found))
+    spans = np.array([(a, b) for a, b, _ in found]).reshape(-1, 2)
     unit, weights = clenshaw_curtis(POINTS)
     half, middle = 0.5 * (spans[:, 1] - spans[:, 0]), spans.mean(axis=1)
     return StraightCut(
@@ -73,9 +79,19 @@ def straight_cut(shape: Shape, start: Point, end: Point) -> StraightCut:
         along,
         np.array([along[1], -along[0]]),
         spans,
+        np.array([zone for _, _, zone in found], dtype=np.int64),
         middle[:, None] + half[:, None] * unit,
         half[:, None] * weights,
     )
+
+
+def _without_doubles(found: list[tuple[float, float, int]]) -> list[tuple[float, float, int]]:
+    """A cut along an interface lies in two regions: the first of them speaks."""
+    kept: list[tuple[float, float, int]] = []
+    for a, b, zone in found:
+        if not kept or a >= kept[-1][1] - 1e-9 * max(abs(b), 1.0):
+            kept.append((a, b, zone))
+    return kept
 
 
 def clenshaw_curtis(n: int) -> tuple[Floats, Floats]:

@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.free_body import centroid, section_forces
+from screenapp.mechanics.free_body import centroid, section_forces, span_thickness
 from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
 from screenapp.mechanics.straight_cut import StraightCut, straight_cut
 from screenapp.model.combinations import loadings
@@ -32,6 +32,10 @@ _Judge = Callable[[Sequence[float], float], Estimate]
 
 _LEAST_SCALE = 0.05
 """A stress on the cut is judged against at least this share of the case's largest."""
+
+
+NEAR_INTERFACE = 1e-7
+"""Where the thickness changes the stress jumps: each side is read so near to it [part's size]."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -75,9 +79,15 @@ def cuts(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[CutFindings,
 def _lines(part: Part, shape: Shape, this: Pass, line: StraightCut) -> list[_Line]:
     """A pass along the cut, for each case."""
     places = line.points
-    for span in places:
-        for j in (0, -1):
-            span[j] = on_boundary(shape, (float(span[j, 0]), float(span[j, 1])))
+    near = NEAR_INTERFACE * shape.size
+    gaps = line.spans[1:, 0] - line.spans[:-1, 1]
+    touching = np.concatenate([[False], gaps <= near, [False]])  # the span before each, and after
+    for i, span in enumerate(places):
+        for j, inward, met in ((0, near, touching[i]), (-1, -near, touching[i + 1])):
+            if met:  # an interface: this span speaks for its own side
+                span[j] += inward * line.along
+            else:
+                span[j] = on_boundary(shape, (float(span[j, 0]), float(span[j, 1])))
     points = places.reshape(-1, 2)
     read = this.read(points)
     grid = line.distances.shape
@@ -110,8 +120,8 @@ def _cut(
     last = passes[-1].fields
     largest_of_case = passes[-1].measure_max("von_mises", k)
     applied = section_forces(part, shape, last.mesh, last.solution, k, line)
-    t = part.wall.thickness
-    middle = centroid(line)
+    t = span_thickness(part, line)[:, None]
+    middle = centroid(part, line)
     arm = line.distances - middle
     size = [float(r.size.mean()) for r in read]
 
@@ -123,7 +133,7 @@ def _cut(
     shear = [float((t * line.weights * r.values[2]).sum()) for r in read]
     moment = [float((t * line.weights * arm * r.values[0]).sum()) for r in read]
     force = max(float(np.hypot(normal[-1], shear[-1])), abs(moment[-1]) / line.length)
-    least = _LEAST_SCALE * largest_of_case * t * line.length
+    least = _LEAST_SCALE * largest_of_case * float((t * line.weights).sum())
     force = max(force, least)
     largest, where, why = _largest(part, shape, line, read, spots, case.id, largest_of_case)
     spans = tuple(
@@ -230,14 +240,17 @@ def _span(
 def _beam(
     part: Part, line: StraightCut, applied: SectionForces | None, i: int
 ) -> tuple[float, float] | None:
-    """Stress of beam theory at the begin and end of a span: N/A + M s/I of the whole section."""
-    if applied is None:
+    """Stress of beam theory at the begin and end of a span: N/A + M s/I of the whole section.
+
+    None without a free body, or where the section is of several materials.
+    """
+    if applied is None or len({part.wall_of(int(zone)).material for zone in line.zones}) > 1:
         return None
-    t, middle = part.wall.thickness, centroid(line)
+    t, middle = span_thickness(part, line), centroid(part, line)
     lengths = np.ptp(line.spans, axis=1)
     offsets = line.spans.mean(axis=1) - middle
-    inertia = float(t * (lengths**3 / 12.0 + lengths * offsets**2).sum())
-    area = float(t * lengths.sum())
+    inertia = float((t * (lengths**3 / 12.0 + lengths * offsets**2)).sum())
+    area = float((t * lengths).sum())
     first, last = (
         applied.normal / area + applied.moment * (end - middle) / inertia for end in line.spans[i]
     )

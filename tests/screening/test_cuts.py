@@ -19,9 +19,11 @@ from screenapp.model.part import (
     FixedSupport,
     ForceLoad,
     GravityLoad,
+    LoopHole,
     Part,
     PressureLoad,
     RollerSupport,
+    Zone,
 )
 from screenapp.model.shape import shape_of
 from screenapp.screening.cuts import read_cuts
@@ -230,3 +232,24 @@ def test_cuts_that_miss_are_left_out_and_later_ones_are_read_from_the_fields(
     found = read_cuts(later, shape_of(later), findings).cuts
     assert len(found) == 1
     assert found[0] == screen(later, mesher).cuts[0]
+
+
+def test_a_cut_across_a_pad_has_a_span_for_each_thickness(mesher: Mesher) -> None:
+    """A strip whose middle third is twice as thick, pulled by the same stress everywhere: the force
+    is that stress on two strips of 20/3 x 3 mm and one of 20/3 x 6 mm."""
+    low, high = HEIGHT / 3.0, 2.0 * HEIGHT / 3.0
+    middle = loop([(0.0, low), (LENGTH, low), (LENGTH, high), (0.0, high)], prefix="z")
+    pad = Zone(LoopHole("z1", middle), 6.0)
+    part = beam(PressureLoad("l1", "e2", -100.0), cuts=(upright(50.0),))
+    part = replace(
+        part, zones=(pad,), supports=(RollerSupport("s1", "e4"), RollerSupport("s2", "e1"))
+    )
+    found = only(part, mesher)
+    assert [len(found.spans), found.applied is not None] == [3, True]
+    force = 100.0 * (HEIGHT * 2 / 3 * T + HEIGHT / 3 * 6.0)
+    assert found.applied is not None
+    assert found.applied.normal == pytest.approx(force, rel=1e-6)
+    assert found.normal.value == pytest.approx(force, rel=1e-6)
+    for span in found.spans:
+        assert np.array(span.values["normal"]) == pytest.approx(100.0, rel=1e-6)
+        assert span.beam == pytest.approx((100.0, 100.0), rel=1e-6)
