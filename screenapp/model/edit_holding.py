@@ -9,7 +9,16 @@ from screenapp.model.edit_rules import EditError, must_find, new_id, settle
 from screenapp.model.errors import Fault
 from screenapp.model.features import places_of
 from screenapp.model.load_faults import one_load_faults
-from screenapp.model.part import Case, Load, Part, Support
+from screenapp.model.part import (
+    Case,
+    FixedSupport,
+    Load,
+    Part,
+    PlacedLoad,
+    PrescribedSupport,
+    RollerSupport,
+    Support,
+)
 from screenapp.model.support_faults import one_support_faults
 
 
@@ -36,6 +45,20 @@ def _with_supports(part: Part, supports: tuple[Support, ...]) -> Part:
             yield from one_support_faults(p, support, places, None)
 
     return settle(part, replace(part, supports=supports), check)
+
+
+def put_on(part: Part, id_: str, on: str) -> Part:
+    """Put a support or load on another place.
+
+    Raises:
+        EditError: it cannot stand there, or is the part's own weight.
+    """
+    record = must_find(part, id_, "support", "load").record
+    if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
+        return replace_support(part, replace(record, on=on))
+    if not isinstance(record, PlacedLoad):
+        raise EditError(f"load {id_} is the part's own weight", "it acts everywhere")
+    return replace_load(part, replace(record, on=on))
 
 
 def add_case(part: Part, name: str = "") -> Part:

@@ -10,11 +10,12 @@ for `validity.faults_of` to tell, since they come and go while something is drag
 """
 
 from screenapp.model.edit_booleans import cut, join, ring_meets
-from screenapp.model.edit_copies import add_holes, copy_text, pasted_holes
+from screenapp.model.edit_copies import add_holes, copy_text, holes_of, pasted_holes
 from screenapp.model.edit_holding import (
     add_case,
     add_load,
     add_support,
+    put_on,
     rename_case,
     replace_load,
     replace_support,
@@ -105,6 +106,7 @@ __all__ = [
     "find",
     "hole_centre",
     "hole_to_zone",
+    "holes_of",
     "insert_corner",
     "join",
     "mirror_half",
@@ -122,6 +124,7 @@ __all__ = [
     "outline_from_rectangle",
     "pasted_holes",
     "place_name",
+    "put_on",
     "rectangle_corners",
     "remove",
     "remove_corner",

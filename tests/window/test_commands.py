@@ -114,6 +114,7 @@ def test_tooltips_tell_name_key_and_one_line(main: MainWindow) -> None:
         main.board.take(tool.name)  # a button that stands for several shows the one in hand
         button = main.board.strip.button(tool.name)
         assert isinstance(button, QToolButton)
+        main.board.take(tool.name)
         assert button.toolTip().startswith(f"{tool.name} ({tool.key})\n{tool.line}")
     save = main.actions_.by_name["save"]
     assert save.toolTip() == "Save (Ctrl+S)\nWrites the part into its file."

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt, Signal
+from PySide6.QtCore import QPointF, Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 
@@ -16,6 +16,7 @@ from screenapp.window.board.grid import unit_length
 from screenapp.window.board.quantity import warm_up
 from screenapp.window.board.tool_strip import ToolStrip
 from screenapp.window.board.tools.every import every_tool
+from screenapp.window.board.tools.select import SelectTool
 from screenapp.window.commands import run_pressed
 from screenapp.window.document import Document
 
@@ -180,6 +181,7 @@ class Board(QWidget):
         document.findings_changed.connect(self.canvas.show_marked)
         self.canvas.pointed.connect(self._show_corner)
         self.canvas.tool_wanted.connect(self.take)
+        self.canvas.edit_wanted.connect(self._edit)
         self.strip.wanted.connect(self.take)
         self.strip.fit_wanted.connect(self.fit)
         self.empty.sample_wanted.connect(self.sample_wanted)
@@ -198,6 +200,13 @@ class Board(QWidget):
             self.canvas.fit()
         self._show_empty()
         self.canvas.refresh()
+
+    def _edit(self, id_: str, px: QPointF) -> None:
+        """Open the exact editor on a thing, whatever tool is in hand."""
+        select = self.tools[0]
+        assert isinstance(select, SelectTool)
+        self.take(select.name)
+        select.edit(id_, px)
 
     def _show_lit(self) -> None:
         self.canvas.show_lit()

@@ -6,12 +6,13 @@ from collections.abc import Callable
 from dataclasses import replace
 
 from PySide6.QtCore import QEvent, QPointF, Qt, Signal
-from PySide6.QtGui import QFocusEvent, QKeyEvent, QMouseEvent, QWheelEvent
+from PySide6.QtGui import QContextMenuEvent, QFocusEvent, QKeyEvent, QMouseEvent, QWheelEvent
 from PySide6.QtWidgets import QWidget
 
 from screenapp.model.errors import Fault
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
+from screenapp.window.board.context import ContextMenu
 from screenapp.window.board.dimension_editor import DimensionEditor
 from screenapp.window.board.dimension_item import ROW_PX, DimensionsItem
 from screenapp.window.board.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
@@ -30,6 +31,9 @@ from screenapp.window.board.typed_entry import EntryRow
 from screenapp.window.board.zone_items import ZoneFillItem, ZoneLineItem
 from screenapp.window.board.zoom_view import ZoomView
 from screenapp.window.document import Document
+
+CLICK_PX = 4.0
+"""The right button that moves less than this is a click, not a drag of the board."""
 
 FREE_ROWS = 2
 """Rows of dimensions that stand in the room that is left round the part anyway."""
@@ -50,10 +54,12 @@ class Canvas(ZoomView):
     Signals:
         pointed: `place` or the tool's state changed.
         tool_wanted: a tool asks for another one, by name.
+        edit_wanted: the exact editor is wanted on an id, at a viewport position.
     """
 
     pointed = Signal()
     tool_wanted = Signal(str)
+    edit_wanted = Signal(str, QPointF)
 
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -92,6 +98,8 @@ class Canvas(ZoomView):
         self.placing = Placing(self)
         self.number = DimensionEditor(self)
         self.ring_choice = RingChoice(self)
+        self.context = ContextMenu(self)
+        self._right: QPointF | None = None
         self.apply_theme()
 
     # what is shown
@@ -280,6 +288,7 @@ class Canvas(ZoomView):
         self.setFocus(Qt.FocusReason.MouseFocusReason)
         button = event.button()
         pans = button in (Qt.MouseButton.MiddleButton, Qt.MouseButton.RightButton)
+        self._right = event.position() if button == Qt.MouseButton.RightButton else None
         if pans or (button == Qt.MouseButton.LeftButton and self._space):
             self.begin_pan(event.position())
         elif button == Qt.MouseButton.LeftButton and self.pressed_first(event.position()):
@@ -309,9 +318,16 @@ class Canvas(ZoomView):
         if self.panning:
             self.end_pan()
             self._set_place(event.position(), event.modifiers())
+            right, self._right = self._right, None
+            if right is not None and (event.position() - right).manhattanLength() < CLICK_PX:
+                self.context.open(event.position())
         elif event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.release(self._set_place(event.position(), event.modifiers()))
         self.refresh()
+        event.accept()
+
+    def contextMenuEvent(self, event: QContextMenuEvent) -> None:
+        """The right button opens when it comes up, for it drags the board too."""
         event.accept()
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:

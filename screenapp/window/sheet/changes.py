@@ -8,19 +8,24 @@ from dataclasses import replace
 from typing import Any, TypeVar
 
 from screenapp.model.curves import arc_through
-from screenapp.model.edit_loops import move_corner, set_round
+from screenapp.model.edit_loops import move_corner, set_chamfer, set_round
+from screenapp.model.edit_patterns import break_pattern as broken_pattern
+from screenapp.model.edit_patterns import change_pattern, set_pattern
 from screenapp.model.edit_removal import remove as removed
-from screenapp.model.edit_rules import settle
+from screenapp.model.edit_rules import Outcome, settle
 from screenapp.model.errors import ScreenappError
 from screenapp.model.features import find, loops_of
 from screenapp.model.part import (
+    CircleHole,
     Corner,
     Edge,
     Hole,
     LoopHole,
     Material,
     Part,
+    SlotHole,
 )
+from screenapp.model.pattern import BoltCircle, GridPattern, Pattern, RowPattern
 from screenapp.window.document import Document
 
 Record = TypeVar("Record")
@@ -184,6 +189,48 @@ def _with(hole: Hole, field: str, value: float) -> Hole:
     return with_field(hole, field, value)
 
 
+def pattern_setter(document: Document, hole: str, field: str) -> Callable[[float], None]:
+    """A function that sets a count, pitch, radius or angle of a hole's pattern."""
+
+    def set_(value: float) -> None:
+        words = field.replace("_", " ")
+        _apply_outcome(
+            document,
+            f"{words} of pattern {hole}",
+            change_pattern(document.part, hole, **{field: value}),
+        )
+
+    return set_
+
+
+def repeat_hole(document: Document, hole: str, kind: str) -> None:
+    """Repeat a hole, spaced by three times its own size."""
+    found = find(document.part, hole)
+    if found is None or not isinstance(found.record, CircleHole | SlotHole):
+        return
+    record = found.record
+    far = 3.0 * (record.diameter if isinstance(record, CircleHole) else record.length)
+    patterns: dict[str, Pattern] = {
+        "row": RowPattern(3, far),
+        "grid": GridPattern(2, 2, far, far),
+        "bolt circle": BoltCircle(6, far),
+    }
+    _apply_outcome(
+        document, f"repeat hole {hole}", set_pattern(document.part, hole, patterns[kind])
+    )
+
+
+def break_pattern(document: Document, hole: str) -> None:
+    """Make the members of a pattern holes of their own."""
+    document.apply(f"break up pattern {hole}", broken_pattern(document.part, hole))
+
+
+def _apply_outcome(document: Document, name: str, outcome: Outcome) -> None:
+    document.apply(name, outcome.part)
+    if outcome.lost:
+        document.said.emit(f"Removed with it: {'; '.join(outcome.lost)}")
+
+
 class CornerChange:
     """Changes the place or the round of a corner."""
 
@@ -192,7 +239,7 @@ class CornerChange:
         self._corner = corner
 
     def setter(self, field: str) -> Callable[[float], None]:
-        """A function that sets "x", "y" or "round"."""
+        """A function that sets "x", "y", "round" or "chamfer"."""
         return lambda value: self._set(field, value)
 
     def _set(self, field: str, value: float) -> None:
@@ -203,6 +250,8 @@ class CornerChange:
         x, y = found.record.at
         if field == "round":
             self._document.apply(f"round of {corner}", set_round(part, corner, value))
+        elif field == "chamfer":
+            self._document.apply(f"chamfer of {corner}", set_chamfer(part, corner, value))
         else:
             to = (value, y) if field == "x" else (x, value)
             self._document.apply(f"move corner {corner}", move_corner(part, corner, to))

@@ -3,14 +3,17 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault, InvalidPartError
-from screenapp.model.features import find, hole_word, place_name
+from screenapp.model.features import find, place_name
 from screenapp.model.ligaments import Ligament, ligaments
 from screenapp.model.mass import mass_of
-from screenapp.model.part import CircleHole, Corner, Edge, Hole, LoopHole, Part, SlotHole
+from screenapp.model.members import all_holes, whole_id
+from screenapp.model.part import Corner, Edge, Part
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.shape import Shape, shape_of
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.dimension_rows import add_link, dimension_rows
+from screenapp.window.sheet.hole_rows import count_of, hole_row
+from screenapp.window.sheet.notes import NotesEdit
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value, Words
 from screenapp.window.sheet.quantities import Quantities
@@ -35,6 +38,8 @@ class PartParagraph(Paragraph):
         self.picked = self.rows(64)
         self.dimensions = self.rows(64)
         self.add = self.sentence()
+        self.notes = NotesEdit(self.document, self)
+        self.body.addWidget(self.notes)
         self._narrowest: tuple[Part, Ligament | None] | None = None
         self.document.selection_changed.connect(self.refresh)
 
@@ -43,7 +48,7 @@ class PartParagraph(Paragraph):
         part = self.document.part
         q = Quantities.of(self.document)
         self.summary.set(*self._summary(part, q))
-        self.holes.set([self._hole_row(h, q) for h in part.holes[:SHOWN_HOLES]])
+        self.holes.set([hole_row(self.document, h, q) for h in part.holes[:SHOWN_HOLES]])
         rest = len(part.holes) - SHOWN_HOLES
         self.more.set(f"And {rest} more holes: select one to see it." if rest > 0 else "")
         self.more.setVisible(rest > 0)
@@ -70,10 +75,10 @@ class PartParagraph(Paragraph):
         shown: tuple[Piece | str, ...] = (" Shown in ", units, ".")
         if part.outline is None:
             return ("Shown in ", units, ".")
-        holes = _count(len(part.holes), "hole")
-        text = f"Outline of {_count(len(part.outline.edges), 'edge')}, {holes}"
+        holes = count_of(len(all_holes(part)), "hole")
+        text = f"Outline of {count_of(len(part.outline.edges), 'edge')}, {holes}"
         if part.zones:
-            text += f", {_count(len(part.zones), 'zone')}"
+            text += f", {count_of(len(part.zones), 'zone')}"
         drawn = ("outline", "holes", "zones")
         sound = not any(f.blocks and f.field.startswith(drawn) for f in self.document.faults)
         try:
@@ -100,65 +105,19 @@ class PartParagraph(Paragraph):
         )
         return (f" Narrowest ligament {q.show(narrowest.width, 'length')}, between ", place, ".")
 
-    def _hole_row(self, hole: Hole, q: Quantities) -> RowOf:
-        change = changes.HoleChange(self.document, hole.id)
-        pieces: tuple[Piece | str, ...]
-        where = f"hole {hole.id}"
-
-        def length(key: str, value: float, what: str) -> Value:
-            at = {"x": "centre.0", "y": "centre.1"}.get(key, key)
-            field = f"holes.{hole.id}.{at}"
-            name = f"{what} of {where}"
-            return q.value(key, value, "length", name, change.setter(key), field=field)
-
-        if isinstance(hole, CircleHole):
-            pieces = (
-                "round, Ø ",
-                length("diameter", hole.diameter, "Diameter"),
-                " at ",
-                length("x", hole.centre[0], "Centre x"),
-                ", ",
-                length("y", hole.centre[1], "Centre y"),
-            )
-        elif isinstance(hole, SlotHole):
-            pieces = (
-                "slot ",
-                length("length", hole.length, "Length"),
-                " × ",
-                length("width", hole.width, "Width"),
-                " at ",
-                length("x", hole.centre[0], "Centre x"),
-                ", ",
-                length("y", hole.centre[1], "Centre y"),
-                ", turned ",
-                q.value(
-                    "angle",
-                    hole.angle,
-                    "angle",
-                    f"Angle of {where}",
-                    change.setter("angle"),
-                    field=f"holes.{hole.id}.angle",
-                ),
-            )
-        else:
-            edges = len(hole.loop.edges) if isinstance(hole, LoopHole) else 0
-            pieces = (f"{hole_word(hole)} of {_count(edges, 'edge')}",)
-        return RowOf(
-            hole.id,
-            (where,),
-            pieces,
-            lambda: changes.remove(self.document, hole.id),
-            f"Remove {where}",
-        )
-
     def _picked_rows(self, part: Part, q: Quantities) -> list[RowOf]:
         rows = []
+        beyond = {h.id for h in part.holes[SHOWN_HOLES:]}
         for id_ in self.document.selection[:6]:
             found = find(part, id_)
             if found is None:
                 continue
             record = found.record
-            if isinstance(record, Corner):
+            if found.kind == "hole" and whole_id(id_) in beyond:
+                hole = next(h for h in part.holes if h.id == whole_id(id_))
+                rows.append(hole_row(self.document, hole, q))
+                beyond.discard(hole.id)
+            elif isinstance(record, Corner):
                 rows.append(self._corner_row(record, found.field, q))
             elif isinstance(record, Edge):
                 rows.append(self._edge_row(part, record, q))
@@ -180,8 +139,11 @@ class PartParagraph(Paragraph):
                 length("x", corner.at[0], "x", "at.0"),
                 ", ",
                 length("y", corner.at[1], "y", "at.1"),
-                ", rounded by ",
-                length("round", corner.round, "Round", "round"),
+                *(
+                    (", chamfered by ", length("chamfer", corner.chamfer, "Chamfer", "chamfer"))
+                    if corner.chamfer
+                    else (", rounded by ", length("round", corner.round, "Round", "round"))
+                ),
             ),
             lambda: changes.remove(self.document, corner.id),
             f"Remove {name}",
@@ -202,7 +164,3 @@ def _size(part: Part, shape: Shape, q: Quantities) -> str:
     if part.material is not None and (shape.regions or not part.zones):
         text += f", {q.show(mass_of(part, shape), 'mass')}"
     return text
-
-
-def _count(n: int, word: str) -> str:
-    return f"{n or 'no'} {word}{'' if n == 1 else 's'}"

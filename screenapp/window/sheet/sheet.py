@@ -18,6 +18,7 @@ from screenapp.window.sheet.held_paragraph import HeldParagraph
 from screenapp.window.sheet.limits_paragraph import LimitsParagraph
 from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
 from screenapp.window.sheet.mesh_paragraph import MeshParagraph
+from screenapp.window.sheet.notes import NotesEdit
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.part_paragraph import PartParagraph
 from screenapp.window.sheet.sentence import Sentence
@@ -97,6 +98,8 @@ class Sheet(QWidget):
         self.head.title.accept()
         for field in self.findChildren(Field):
             field.accept()
+        for notes in self.findChildren(NotesEdit):
+            notes.accept()
 
     # --- keyboard -----------------------------------------------------------------------------
 

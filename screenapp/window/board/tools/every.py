@@ -14,7 +14,7 @@ from screenapp.window.board.tools.fillet import FilletTool
 from screenapp.window.board.tools.measure import MeasureTool
 from screenapp.window.board.tools.mirror import MirrorTool
 from screenapp.window.board.tools.offset import OffsetTool
-from screenapp.window.board.tools.pattern import BoltCircleTool, GridTool, RowTool
+from screenapp.window.board.tools.pattern_kinds import BoltCircleTool, GridTool, RowTool
 from screenapp.window.board.tools.place import HoldTool, LoadTool
 from screenapp.window.board.tools.probe import ProbeTool
 from screenapp.window.board.tools.rectangle import RectangleTool

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from functools import partial
 from typing import TYPE_CHECKING, ClassVar
 
 from PySide6.QtCore import QPointF, QRectF, Qt
@@ -20,8 +19,10 @@ from screenapp.window.board.hit_test import Hit
 from screenapp.window.board.naming import described
 from screenapp.window.board.quantity import written
 from screenapp.window.board.tools.base import Place, Tool
+from screenapp.window.board.tools.carry import Carry
 from screenapp.window.board.tools.choosing import all_of, in_box, meant, next_after
 from screenapp.window.board.tools.drag import Drag, grip_of
+from screenapp.window.board.tools.select_commands import select_commands
 from screenapp.window.board.typed_entry import EntryField
 from screenapp.window.commands import Command, run_pressed
 
@@ -30,9 +31,6 @@ if TYPE_CHECKING:
 
 DRAG_FROM = 4.0
 """How far the cursor must go with the button down before it drags [px]."""
-
-STEPS = {"left": (-1.0, 0.0), "right": (1.0, 0.0), "up": (0.0, 1.0), "down": (0.0, -1.0)}
-"""Ways to nudge, in grid steps."""
 
 
 class SelectTool(Tool):
@@ -51,14 +49,15 @@ class SelectTool(Tool):
         self._drag: Drag | None = None
         self._at: Point | None = None
         self._box: QPointF | None = None
+        self._carry: Carry | None = None
         self._again = False
         self.editing: str | None = None
-        self._commands = self._made_commands()
+        self._commands = select_commands(self)
 
     @property
     def cursor(self) -> Qt.CursorShape:
         """A hand over what can be dragged."""
-        if self._drag is not None:
+        if self._drag is not None or self._carry is not None:
             return Qt.CursorShape.ClosedHandCursor
         place = self.canvas.place
         if place is None or place.hit is None:
@@ -77,13 +76,14 @@ class SelectTool(Tool):
 
     def part_changed(self) -> None:
         """Whatever was dragged or edited may be gone."""
-        self._pressed = self._drag = self._at = self._box = None
+        self._pressed = self._drag = self._at = self._box = self._carry = None
         self.editing = None
 
     def step_back(self) -> bool:
         """Drop the drag, the box or the exact editor."""
         busy = self.canvas.placing.busy or self._box is not None
         busy = busy or self._drag is not None or self.editing is not None
+        busy = busy or self._carry is not None
         self.canvas.placing.drop()
         self._drop()
         return busy
@@ -127,6 +127,8 @@ class SelectTool(Tool):
     def move(self, place: Place) -> None:
         """Drag live."""
         pressed = self._pressed
+        if self._carried(place):
+            return
         if pressed is not None and pressed.hit is not None and self._drag is None:
             gap = place.px - pressed.px
             grip = grip_of(self.canvas.drawn, meant(pressed.hit, self.canvas.document.selection))
@@ -144,9 +146,11 @@ class SelectTool(Tool):
     def release(self, place: Place) -> None:
         """End of a drag: one undoable step; a click on one of several selects it alone."""
         drag, at, pressed = self._drag, self._at, self._pressed
-        box = self._box
-        self._pressed = self._drag = self._at = self._box = None
-        if drag is not None and at is not None:
+        box, carry = self._box, self._carry
+        self._pressed = self._drag = self._at = self._box = self._carry = None
+        if carry is not None:
+            self._put_down(carry)
+        elif drag is not None and at is not None:
             self.apply(drag.name, lambda: drag.moved(at))
             self.canvas.preview(None)
         elif box is not None:
@@ -155,6 +159,25 @@ class SelectTool(Tool):
             selection = self.canvas.document.selection
             alone = self._again and selection == (meant(pressed.hit, selection),)
             self.canvas.document.select(pressed.hit.id if alone else meant(pressed.hit, selection))
+
+    def _carried(self, place: Place) -> bool:
+        """Carry a support or load that was taken by its symbol."""
+        pressed = self._pressed
+        if self._carry is None and pressed is not None and pressed.hit is not None:
+            far = (place.px - pressed.px).manhattanLength()
+            if pressed.hit.kind in ("support", "load") and far >= DRAG_FROM:
+                self._carry = Carry.of(self.canvas, pressed.hit.id)
+        if self._carry is None:
+            return False
+        self._carry.move(place)
+        return True
+
+    def _put_down(self, carry: Carry) -> None:
+        self.canvas.preview(None)
+        if carry.on:
+            self.apply(carry.name, carry.made)
+        else:
+            self.say(f"{carry.why or 'Let it go on an edge, a hole or a sharp corner'}.")
 
     def double(self, place: Place) -> None:
         """Edit exactly what is there; on an edge, put a corner there and edit that."""
@@ -165,8 +188,9 @@ class SelectTool(Tool):
             at = place.snap.at if place.snap.id == hit.id else hit.at
             self._split(hit.id, at, place.px)
             return
-        self.canvas.document.select(hit.id)
-        self.edit(hit.id, place.px)
+        id_ = meant(hit, self.canvas.document.selection)
+        self.canvas.document.select(id_)
+        self.edit(id_, place.px)
 
     # keys
 
@@ -178,66 +202,12 @@ class SelectTool(Tool):
         """Its commands."""
         return run_pressed(self._commands, event)
 
-    def _made_commands(self) -> tuple[Command, ...]:
-        def chosen() -> bool:
-            return self.canvas.tool is self and bool(self.canvas.document.selection)
-
-        nudges = [
-            Command(
-                f"Nudge {way}",
-                "Moves what is selected by a grid step.",
-                (way.capitalize(),),
-                partial(self._nudge, *step),
-                ready=chosen,
-            )
-            for way, step in STEPS.items()
-        ]
-        far = [
-            Command(
-                f"Nudge far {way}",
-                "Moves what is selected by ten grid steps.",
-                (f"Shift+{way.capitalize()}",),
-                partial(self._nudge, 10.0 * step[0], 10.0 * step[1]),
-                ready=chosen,
-            )
-            for way, step in STEPS.items()
-        ]
-        return (
-            Command("Select everything", "All corners, holes and probes.", ("Ctrl+A",), self._all),
-            Command(
-                "Next thing",
-                "Selects the thing after the selected one and says what it is.",
-                ("PgDown",),
-                partial(self._select_next, 1),
-            ),
-            Command(
-                "Thing before",
-                "Selects the thing before the selected one and says what it is.",
-                ("PgUp",),
-                partial(self._select_next, -1),
-            ),
-            Command(
-                "Edit what is selected",
-                "Opens the fields for exact values beside it.",
-                ("F2", "Return", "Enter"),
-                self._edit_selected,
-                ready=chosen,
-            ),
-            Command(
-                "Remove what is selected",
-                "Says what else goes with it; undo brings it back.",
-                ("Del", "Backspace"),
-                self._remove_selected,
-                ready=chosen,
-            ),
-            *nudges,
-            *far,
-        )
-
-    def _all(self) -> None:
+    def select_all(self) -> None:
+        """Select every corner, hole and probe."""
         self.canvas.document.select(*all_of(self.canvas.drawn))
 
-    def _edit_selected(self) -> None:
+    def edit_selected(self) -> None:
+        """Open the exact editor on the first thing selected."""
         first = self.canvas.document.selection[0]
         at = self.canvas.drawn.anchor_of(first)
         self.edit(first, None if at is None else self.canvas.frame_now.px(at))
@@ -343,19 +313,32 @@ class SelectTool(Tool):
             self.edit(corner, px)
 
     def _drop(self) -> None:
-        self._pressed = self._drag = self._at = self._box = None
+        self._pressed = self._drag = self._at = self._box = self._carry = None
         self.editing = None
         self.canvas.preview(None)
         self.canvas.entry.close_row()
 
-    def _remove_selected(self) -> None:
+    def paste(self) -> None:
+        """Add the holes of the clipboard under the cursor."""
+        place = self.canvas.place
+        # Control is down for the key itself, so the place is snapped anew
+        at = self.canvas.snap_at(place.raw).at if place is not None else None
+        self.canvas.context.paste(at)
+
+    def open_context(self) -> None:
+        """Open the menu of the selected thing."""
+        self.canvas.context.open_for_selection()
+
+    def remove_selected(self) -> None:
+        """Take out what is selected and say what went with it."""
         part, selection = self.canvas.document.part, self.canvas.document.selection
         ids = tuple(i for i in selection if find(part, i) is not None)
         loose = tuple(i for i in ids if i not in edges_of(part))
         if self.apply("remove", lambda: edits.remove(part, *(loose or ids))):
             self.canvas.document.select()
 
-    def _nudge(self, dx: float, dy: float) -> None:
+    def nudge(self, dx: float, dy: float) -> None:
+        """Move what is selected by so many grid steps."""
         part, selection = self.canvas.document.part, self.canvas.document.selection
         step = grid_step(self.canvas.frame_now.scale, part.display_units)
         if why := Drag(part, selection, (0.0, 0.0), (0.0, 0.0)).held_by():
@@ -363,7 +346,7 @@ class SelectTool(Tool):
             return
         self.apply("nudge", lambda: edits.move(part, selection, dx * step, dy * step))
 
-    def _select_next(self, step: int) -> None:
+    def select_next(self, step: int) -> None:
         """Select the thing after or before the selected one, and say what it is."""
         document = self.canvas.document
         chosen = next_after(document.part, document.view.case, document.selection, step)
