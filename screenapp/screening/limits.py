@@ -142,6 +142,11 @@ def _displacement(limit: DisplacementLimit, case: CaseFindings) -> LimitFindings
     else:
         verdict = "undecided"
         reason = f"the largest displacement under “{case.name}” is not settled enough to tell"
+        if moved.trust == "rising":
+            reason = (
+                f"the largest displacement under “{case.name}” has no finite value: a force or a "
+                "support acts at a point; spread it over an edge or a hole"
+            )
     return LimitFindings(
         limit.id, limit_name(limit), case.case, used, verdict, case.displacement_at, place, reason
     )

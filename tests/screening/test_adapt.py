@@ -11,7 +11,14 @@ from screenapp.mechanics.recovery import recover
 from screenapp.mechanics.solve import solve
 from screenapp.meshing.service import Mesher
 from screenapp.model.findings import Fields
-from screenapp.model.part import Case, FixedSupport, ForceLoad, PointLoad, Probe
+from screenapp.model.part import (
+    Case,
+    DisplacementLimit,
+    FixedSupport,
+    ForceLoad,
+    PointLoad,
+    Probe,
+)
 from screenapp.screening.adapt import Target, nodal_sizes, wanted_sizes
 from screenapp.screening.passes import Pass
 from screenapp.screening.screen import screen
@@ -65,10 +72,13 @@ def test_the_way_of_a_point_under_a_force_has_no_end() -> None:
                 base.part,
                 supports=(FixedSupport("s", "e4"),),
                 cases=(Case("k1", "down", (load,)),),
+                limits=(DisplacementLimit("g1", 1.0),),
                 readings=(Probe("p1", "far", (15.0, 30.0)),),
             )
             findings = screen(part, mesher)
             trust = findings.cases[0].displacement_max.trust
             assert trust == ("rising" if at_point else "settled")
+            assert findings.limits[0].verdict == ("undecided" if at_point else "holds")
+            assert ("acts at a point" in findings.limits[0].reason) == at_point
             far = findings.readings[0].values
             assert far["u_x"].trust == far["u_y"].trust == "settled"
