@@ -450,3 +450,28 @@ def test_a_reason_is_told_once_and_what_stands_above_is_counted(sheet: Sheet) ->
     assert "A caution of the screening alone." in said
     assert told not in said.lower()
     assert "One caution stands in the paragraphs above." in said
+
+
+def test_combinations_are_added_weighted_renamed_and_removed(sheet: Sheet) -> None:
+    document = sheet.document
+    paragraph = loaded(sheet)
+    QTest.mouseClick(paragraph.add.field("add combination"), Qt.MouseButton.LeftButton)
+    settle()
+    made = document.part.combinations[0]
+    assert [(t.case, t.factor) for t in made.terms] == [(c.id, 1.0) for c in document.part.cases]
+    row = paragraph.combinations.row(made.id)
+    first, second = (c.id for c in document.part.cases)
+    type_into(row.sentence.field(f"factor {first}"), "1.35")
+    type_into(row.sentence.field(f"factor {second}"), "0")
+    assert [(t.case, t.factor) for t in document.part.combinations[0].terms] == [(first, 1.35)]
+    assert document.history.undo_name == f"factor in combination {made.id}"
+    assert "1.35 × Pull + 0 × Push" in row.sentence.text
+    type_into(row.sentence.field(f"factor {first}"), "0")  # refused: nothing would be left
+    assert [(t.case, t.factor) for t in document.part.combinations[0].terms] == [(first, 1.35)]
+    type_into(row.where.field("name"), "Full pull")
+    assert document.part.combinations[0].name == "Full pull"
+    document.undo()
+    document.undo()
+    document.undo()
+    document.undo()
+    assert document.part.combinations == ()

@@ -24,6 +24,7 @@ from screenapp.model.part import (
 )
 from screenapp.window.document import Document
 from screenapp.window.sheet import load_changes
+from screenapp.window.sheet.combination_rows import add_link, combination_row
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
@@ -84,7 +85,7 @@ class LoadedParagraph(Paragraph):
 
     number = 4
     title = "Loaded"
-    fields = ("cases",)
+    fields = ("cases", "combinations")
 
     def build(self) -> None:
         """A column of case blocks, kept by id."""
@@ -93,6 +94,8 @@ class LoadedParagraph(Paragraph):
         self._column.setContentsMargins(0, 0, 0, 0)
         self._column.setSpacing(4)
         self.body.addLayout(self._column)
+        self.together = self.sentence()
+        self.combinations = self.rows()
         self.add = self.sentence()
         self.document.view_changed.connect(self.refresh)
 
@@ -117,14 +120,18 @@ class LoadedParagraph(Paragraph):
                 self._column.removeWidget(block)
                 self._column.insertWidget(number, block, 0, Qt.AlignmentFlag(0))
             block.show_case(case, number)
-        self.add.set(
-            Link(
-                "add",
-                "+ case",
-                lambda _key: load_changes.add_case(self.document),
-                "Add a load case",
-            )
+        self.together.set("Together:")
+        self.together.setVisible(bool(part.combinations))
+        self.combinations.set([combination_row(self.document, c) for c in part.combinations])
+        new_case = Link(
+            "add",
+            "+ case",
+            lambda _key: load_changes.add_case(self.document),
+            "Add a load case",
         )
+        self.add.set(new_case)
+        if len(part.cases) > 1 or part.combinations:
+            self.add.set(new_case, SEPARATOR, add_link(self.document))
         self.add.setVisible(bool(part.cases))
         if part.cases:
             return ()
