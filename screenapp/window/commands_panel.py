@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 
 from PySide6.QtCore import QEvent, QModelIndex, QObject, QPersistentModelIndex, QRect, QSize, Qt
-from PySide6.QtGui import QFont, QKeyEvent, QPainter
+from PySide6.QtGui import QColor, QFont, QKeyEvent, QPainter
 from PySide6.QtWidgets import (
     QApplication,
     QDialog,
@@ -37,7 +37,7 @@ READINGS = (
     Command("Remove a reading", "Takes its probe away.", ("Del",), None, "readings"),
     Command("Copy the table", "As text.", ("Ctrl+C",), None, "readings"),
 )
-ROW, MARGIN = 40, 12
+ROW, MARGIN = 42, 12
 _COMMAND = Qt.ItemDataRole.UserRole
 _ENABLED = Qt.ItemFlag.ItemIsEnabled
 _MOVES = (Qt.Key.Key_Up, Qt.Key.Key_Down, Qt.Key.Key_PageUp, Qt.Key.Key_PageDown)
@@ -81,7 +81,7 @@ class CommandsPanel(QDialog):
         self.search.textChanged.connect(self._fill)
         self.search.installEventFilter(self)
         self.list.itemActivated.connect(self._run)
-        self.resize(560, 620)
+        self.resize(640, 620)
         self._fill()
 
     @property
@@ -146,21 +146,31 @@ class _Delegate(QStyledItemDelegate):
             painter.drawRoundedRect(box.adjusted(0, 1, 0, -1), 4, 4)
         runs = bool(index.flags() & _ENABLED)
         inner = box.adjusted(MARGIN, 3, -MARGIN, -3)
-        small, elide = theme.font(theme.TEXT_SMALL), Qt.TextElideMode.ElideRight
-        painter.setFont(small)
-        keys = command.shown_keys
-        width = painter.fontMetrics().horizontalAdvance(keys) + 16 if keys else 0
-        ink = theme.colour("ink" if runs else "quiet")
-        painter.setPen(ink)
-        right = Qt.AlignmentFlag.AlignRight | Qt.AlignmentFlag.AlignVCenter
-        painter.drawText(inner, int(right), keys)
-        left = inner.adjusted(0, 0, -width, 0)
-        painter.setFont(theme.font(theme.TEXT_BODY, QFont.Weight.Medium))
-        name = painter.fontMetrics().elidedText(command.name, elide, left.width())
-        painter.drawText(left, int(Qt.AlignmentFlag.AlignTop), name)
-        painter.setFont(small)
-        painter.setPen(theme.colour("quiet"))
-        line = f"{command.line.rstrip('.')}, {WORDS[command.where]}"
-        line = painter.fontMetrics().elidedText(line, elide, left.width())
-        painter.drawText(left, int(Qt.AlignmentFlag.AlignBottom), line)
+        small = theme.font(theme.TEXT_SMALL)
+        ink, quiet = theme.colour("ink" if runs else "quiet"), theme.colour("quiet")
+        body = theme.font(theme.TEXT_BODY, QFont.Weight.Medium)
+        where = WORDS[command.where]
+        _write(painter, inner, (command.name, command.shown_keys), (body, small), ink, top=True)
+        _write(painter, inner, (command.line, where), (small, small), quiet, top=False)
         painter.restore()
+
+
+def _write(
+    painter: QPainter,
+    box: QRect,
+    texts: tuple[str, str],
+    fonts: tuple[QFont, QFont],
+    colour: QColor,
+    top: bool,
+) -> None:
+    """A text at the left, cut if it must be, and one at the right that never is."""
+    vertical = Qt.AlignmentFlag.AlignTop if top else Qt.AlignmentFlag.AlignBottom
+    painter.setPen(colour)
+    painter.setFont(fonts[1])
+    room = painter.fontMetrics().horizontalAdvance(texts[1]) + 16 if texts[1] else 0
+    painter.drawText(box, int(Qt.AlignmentFlag.AlignRight | vertical), texts[1])
+    painter.setFont(fonts[0])
+    left = box.adjusted(0, 0, -room, 0)
+    elide = Qt.TextElideMode.ElideRight
+    shown = painter.fontMetrics().elidedText(texts[0], elide, left.width())
+    painter.drawText(left, int(Qt.AlignmentFlag.AlignLeft | vertical), shown)

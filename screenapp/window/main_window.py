@@ -66,7 +66,7 @@ class MainWindow(QMainWindow):
         self.drawing_jobs = DrawingJobs(self)
         self.files = Files(self.document, self.settings, ask or Ask(), self)
         self.board = Board(self.document)
-        self.board.canvas.dimensions_shown = self.settings.dimensions
+        self.board.canvas.dimensions.shown = self.settings.dimensions
         self.lens_bar = LensBar(self.document)
         self.board.set_lens_bar(self.lens_bar)
         self.painter = LensPainter(self.document, self.board)
@@ -367,7 +367,7 @@ class MainWindow(QMainWindow):
         self.settings.keep_bytes("columns", self.whole.saveState())
         self.settings.keep_bytes("rows", self.left.saveState())
         self.settings.lens = self.document.view.lens
-        self.settings.dimensions = self.board.canvas.dimensions_shown
+        self.settings.dimensions = self.board.canvas.dimensions.shown
         self.settings.sync()
         self.screener.shut_down()
         self.drawing_jobs.shut_down()

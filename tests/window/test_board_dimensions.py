@@ -39,7 +39,7 @@ def paint(hand: Hand) -> None:
 
 def where(hand: Hand, key: Key) -> QPoint:
     paint(hand)
-    placed = hand.canvas.dimensions.placed(key)
+    placed = hand.canvas.dimensions.item.placed(key)
     assert placed is not None, key
     return placed.middle.toPoint()
 
@@ -52,7 +52,7 @@ def edit(hand: Hand, key: Key, text: str, last: Qt.Key = Qt.Key.Key_Return) -> N
     QTest.mouseClick(view, LEFT, NONE, at)
     QTest.mouseDClick(view, LEFT, NONE, at)
     QApplication.processEvents()
-    assert hand.canvas.number.isVisible()
+    assert hand.canvas.dimensions.editor.isVisible()
     hand.type(text)
     hand.key(last)
     paint(hand)
@@ -60,7 +60,7 @@ def edit(hand: Hand, key: Key, text: str, last: Qt.Key = Qt.Key.Key_Return) -> N
 
 def keys(hand: Hand) -> set[Key]:
     paint(hand)
-    return {m.key for m in hand.canvas.dimensions.marks}
+    return {m.key for m in hand.canvas.dimensions.item.marks}
 
 
 def hole(part: Part) -> CircleHole:
@@ -113,7 +113,9 @@ def test_alike_holes_and_rounds_are_told_once(qtbot: QtBot) -> None:
     hand = shown(qtbot, part)
     hand.key(Qt.Key.Key_D)
     paint(hand)
-    texts = {m.key: hand.canvas.dimensions.text_of(m) for m in hand.canvas.dimensions.marks}
+    texts = {
+        m.key: hand.canvas.dimensions.item.text_of(m) for m in hand.canvas.dimensions.item.marks
+    }
     assert texts[("diameter", "h2", "diameter")] == "2 × ⌀\u20096"
     assert ("diameter", "h3", "diameter") not in texts
     assert texts[("radius", "c1", "radius")] == "2 × R\u20095"
@@ -124,7 +126,7 @@ def test_the_overall_width_is_edited_where_it_stands(hand: Hand) -> None:
     edit(hand, WIDTH, "5 in")
     assert places(hand.part) == [(0, 0), (127, 0), (127, 60), (0, 60)]
     assert hand.canvas.hasFocus()
-    assert not hand.canvas.number.isVisible()
+    assert not hand.canvas.dimensions.editor.isVisible()
     hand.document.undo()
     assert places(hand.part)[1] == (100, 0)
 
@@ -168,8 +170,8 @@ def test_expressions_are_kept_and_followed(qtbot: QtBot) -> None:
     hand.click(50.0, 30.0)
     edit(hand, ("place", "h1", "x"), "w/2")
     assert formula_at(hand.part, "holes.h1.centre.0") == "w/2"
-    mark = next(m for m in hand.canvas.dimensions.marks if m.key == ("place", "h1", "x"))
-    assert hand.canvas.dimensions.text_of(mark) == "=\u200950"
+    mark = next(m for m in hand.canvas.dimensions.item.marks if m.key == ("place", "h1", "x"))
+    assert hand.canvas.dimensions.item.text_of(mark) == "=\u200950"
 
 
 def test_an_edit_that_would_move_what_an_expression_gives_is_refused(qtbot: QtBot) -> None:
@@ -179,16 +181,16 @@ def test_an_edit_that_would_move_what_an_expression_gives_is_refused(qtbot: QtBo
     edit(hand, ("length", "e1", "length"), "90")
     assert hand.part == part
     assert hand.said[-1].startswith("the x of corner c3 is w: change its dimension")
-    assert hand.canvas.number.isVisible()
+    assert hand.canvas.dimensions.editor.isVisible()
     hand.key(Qt.Key.Key_Escape)
-    assert not hand.canvas.number.isVisible()
+    assert not hand.canvas.dimensions.editor.isVisible()
     assert hand.canvas.hasFocus()
 
 
 def test_nonsense_is_marked_and_changes_nothing(hand: Hand) -> None:
     before = hand.part
     edit(hand, WIDTH, "12 kN")
-    assert "kN is a force" in hand.canvas.number.toolTip()
+    assert "kN is a force" in hand.canvas.dimensions.editor.toolTip()
     hand.key(Qt.Key.Key_Escape)
     edit(hand, WIDTH, "-3")
     assert hand.part == before
@@ -198,11 +200,11 @@ def test_nonsense_is_marked_and_changes_nothing(hand: Hand) -> None:
 def test_by_keys_alone_from_number_to_number(hand: Hand) -> None:
     paint(hand)
     hand.key(Qt.Key.Key_D, CONTROL)
-    assert hand.canvas.number.accessibleName() == "Overall width"
+    assert hand.canvas.dimensions.editor.accessibleName() == "Overall width"
     hand.type("120")
     hand.key(Qt.Key.Key_Tab)
     paint(hand)
-    assert hand.canvas.number.accessibleName() == "Overall height"
+    assert hand.canvas.dimensions.editor.accessibleName() == "Overall height"
     hand.type("50")
     hand.enter()
     assert places(hand.part) == [(0, 0), (120, 0), (120, 50), (0, 50)]
@@ -213,7 +215,7 @@ def test_a_dragged_corner_shows_its_edges_live(hand: Hand) -> None:
     hand.press(100.0, 60.0)
     hand.go(90.0, 60.0)
     hand.go(80.0, 60.0)
-    lengths = {m.key: m.value for m in hand.canvas.dimensions.marks if m.what == "length"}
+    lengths = {m.key: m.value for m in hand.canvas.dimensions.item.marks if m.what == "length"}
     assert lengths[("length", "e3", "length")] == 80.0
     hand.release(80.0, 60.0)
 
@@ -221,7 +223,7 @@ def test_a_dragged_corner_shows_its_edges_live(hand: Hand) -> None:
 def test_numbers_follow_the_units(hand: Hand) -> None:
     hand.document.apply("units", edits.set_units(hand.part, "in-lbf-ksi"))
     paint(hand)
-    texts = {hand.canvas.dimensions.text_of(m) for m in hand.canvas.dimensions.marks}
+    texts = {hand.canvas.dimensions.item.text_of(m) for m in hand.canvas.dimensions.item.marks}
     assert texts == {"3.937", "2.362"}
     edit(hand, WIDTH, "4")
     assert places(hand.part)[1] == (pytest.approx(101.6), 0.0)

@@ -413,7 +413,7 @@ def test_lens_dimensions_and_units_are_kept(tmp_path: Path, qtbot: QtBot) -> Non
     second = window(tmp_path)
     qtbot.addWidget(second)
     assert second.document.view.lens == "Stress"
-    assert second.board.canvas.dimensions_shown == "all"
+    assert second.board.canvas.dimensions.shown == "all"
     assert second.document.part.display_units == "in-lbf-ksi"
     second.document.open(plate(), None)  # a part of other units is shown in its own
     assert second.document.part.display_units == "mm-N-MPa"

@@ -106,11 +106,12 @@ class Board(QWidget):
 
     def show_dimensions(self, shown: DimensionsShown) -> None:
         """Show all dimensions or none; if that is so already, overall and selected ones."""
-        canvas = self.canvas
-        canvas.dimensions_shown = "plain" if canvas.dimensions_shown == shown else shown
+        dimensions = self.canvas.dimensions
+        dimensions.shown = "plain" if dimensions.shown == shown else shown
         words = {"plain": "overall and selected", "all": "all", "none": "hidden"}
-        self.document.said.emit(f"Dimensions: {words[canvas.dimensions_shown]}.")
-        canvas.show_dimensions()
+        self.document.said.emit(f"Dimensions: {words[dimensions.shown]}.")
+        dimensions.refresh()
+        dimensions.make_room()
 
     def zoom_in(self) -> None:
         """Magnify about the middle."""
@@ -147,6 +148,7 @@ class Board(QWidget):
         if not self._fitted:
             self._fitted = True
             self.canvas.fit()
+            self.canvas.setFocus(Qt.FocusReason.OtherFocusReason)  # keys draw at once
             warm_up()
 
     def resizeEvent(self, event: QResizeEvent) -> None:
@@ -189,7 +191,7 @@ class Board(QWidget):
 
     def _part_changed(self) -> None:
         self.canvas.placing.drop()
-        self.canvas.number.close_editor()
+        self.canvas.dimensions.editor.close_editor()
         self.canvas.ring_choice.drop()
         if self.canvas.tool is not None:
             self.canvas.tool.part_changed()

@@ -56,7 +56,7 @@ def board_commands(board: Board) -> tuple[Command, ...]:
             "Edit a dimension",
             "Edits the first number on the board; Tab goes on to the next.",
             ("Ctrl+D",),
-            board.canvas.edit_first_dimension,
+            board.canvas.dimensions.edit_first,
         ),
         Command(
             "Step back",

@@ -13,9 +13,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board.context import ContextMenu
-from screenapp.window.board.dimension_editor import DimensionEditor
-from screenapp.window.board.dimension_item import ROW_PX, DimensionsItem
-from screenapp.window.board.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
+from screenapp.window.board.dimensions import Dimensions
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.hit_test import hit_test
@@ -35,9 +33,6 @@ from screenapp.window.document import Document
 CLICK_PX = 4.0
 """The right button that moves less than this is a click, not a drag of the board."""
 
-FREE_ROWS = 2
-"""Rows of dimensions that stand in the room that is left round the part anyway."""
-
 HOLD_OFF = Qt.KeyboardModifier.ControlModifier
 """Held down, nothing snaps."""
 
@@ -49,6 +44,7 @@ class Canvas(ZoomView):
         document: what is shown.
         tool: the tool in hand.
         place: where the cursor is, None while it is elsewhere.
+        dimensions: those that are shown, as on a drawing.
         pressed_first: asked about a press [px] before the tool; answers whether it was taken.
 
     Signals:
@@ -77,8 +73,7 @@ class Canvas(ZoomView):
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
         self.zone_fill, self.zone_lines = ZoneFillItem(paths), ZoneLineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
-        self.dimensions = DimensionsItem()
-        self.dimensions_shown: DimensionsShown = "plain"
+        self.dimensions = Dimensions(self)
         self.preview_item = PreviewItem(self)
         for item in (
             self.grid,
@@ -86,7 +81,7 @@ class Canvas(ZoomView):
             self.zone_fill,
             self.zone_lines,
             self.outline,
-            self.dimensions,
+            self.dimensions.item,
             self.symbols,
             self.probes,
             self.marked,
@@ -96,7 +91,6 @@ class Canvas(ZoomView):
             self.view_box.addItem(item, ignoreBounds=True)
         self.entry = EntryRow(self)
         self.placing = Placing(self)
-        self.number = DimensionEditor(self)
         self.ring_choice = RingChoice(self)
         self.context = ContextMenu(self)
         self._right: QPointF | None = None
@@ -137,23 +131,8 @@ class Canvas(ZoomView):
         self.symbols.show_part(drawn, self.document.view.case)
         self.probes.show_part(drawn)
         self.show_marked()
-        self.show_dimensions()
+        self.dimensions.refresh()
         self.grid.update()
-
-    def show_dimensions(self) -> None:
-        """Paint the dimensions that are wanted: where results are painted, only all of them."""
-        shown = self.dimensions_shown
-        drawing = shown == "all" or (shown == "plain" and self.document.view.lens == "Shape")
-        marks = marks_of(self.drawn, self.document.selection, shown == "all") if drawing else ()
-        self.dimensions.show_marks(marks, self.part.display_units)
-
-    def edit_first_dimension(self) -> None:
-        """Edit the first number that stands on the screen; Tab goes on from there."""
-        for mark in self.dimensions.marks:
-            if self.dimensions.placed(mark.key) is not None:
-                self.number.open_on(mark)
-                return
-        self.document.said.emit("No dimension is shown: draw something, or press D.")
 
     def show_marked(self) -> None:
         """Ring what is wrong."""
@@ -168,7 +147,7 @@ class Canvas(ZoomView):
 
     def show_lit(self) -> None:
         """Light what is selected and hovered."""
-        self.show_dimensions()
+        self.dimensions.refresh()
         for item in (self.outline, self.zone_lines, self.symbols, self.probes):
             item.selected, item.hovered = self.document.selection, self.document.hovered
             item.update()
@@ -181,17 +160,8 @@ class Canvas(ZoomView):
     # view
 
     def fit(self) -> None:
-        """Show the whole part with room for its symbols, and for rows of dimensions."""
-        bounds = self.drawn.bounds
-        self.show_box(bounds)
-        below, beside = rows_of(self.dimensions.marks)
-        if bounds is None or max(below, beside) <= FREE_ROWS:
-            return
-        for _ in range(3):  # room in pixels is worth more millimetres the farther off one stands
-            row = ROW_PX / self.frame_now.scale
-            x0, y0, x1, y1 = bounds
-            down, left = (max(0, n - FREE_ROWS) * row for n in (below, beside))
-            self.show_box((x0 - left, y0 - down, x1, y1))
+        """Show the whole part with room for what stands round it."""
+        self.dimensions.fit()
 
     def zoom(self, factor: float, about: QPointF | None = None) -> None:
         """Magnify by `factor`, keeping the place at `about` [px] where it is."""
@@ -217,7 +187,7 @@ class Canvas(ZoomView):
         """Repaint the preview and bring the cursor, the entry row and the corner up to date."""
         self.preview_item.update()
         if self.tool is not None and not self.panning:
-            number = self._last_px is not None and self._number_at(self._last_px) is not None
+            number = self._last_px is not None and self.dimensions.at(self._last_px) is not None
             beam = Qt.CursorShape.IBeamCursor
             self.viewport().setCursor(beam if number else self.tool.cursor)
         self.entry.sync()
@@ -274,7 +244,7 @@ class Canvas(ZoomView):
         tool = self.tool
         self.document.hover(None if hit is None else tool.lights(hit) if tool else hit.id)
         faults = self.marked.at(px, self.frame_now)
-        number = self._number_at(px)
+        number = self.dimensions.at(px)
         tip = name_at(self.document, hit, faults)
         if number is not None:
             tip = f"{number.words}: double-click to change it"
@@ -293,7 +263,9 @@ class Canvas(ZoomView):
             self.begin_pan(event.position())
         elif button == Qt.MouseButton.LeftButton and self.pressed_first(event.position()):
             self.refresh()
-        elif button == Qt.MouseButton.LeftButton and self._number_at(event.position()) is not None:
+        elif (
+            button == Qt.MouseButton.LeftButton and self.dimensions.at(event.position()) is not None
+        ):
             pass  # a number is edited by a double-click; a click on it selects nothing else
         elif button == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.press(self._set_place(event.position(), event.modifiers()))
@@ -332,22 +304,17 @@ class Canvas(ZoomView):
 
     def mouseDoubleClickEvent(self, event: QMouseEvent) -> None:
         """Edit the number there, or tell the tool."""
-        mark = self._number_at(event.position())
+        mark = self.dimensions.at(event.position())
         if event.button() == Qt.MouseButton.LeftButton and mark is not None:
-            self.number.open_on(mark)
+            self.dimensions.editor.open_on(mark)
         elif event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.double(self._set_place(event.position(), event.modifiers()))
             self.refresh()
         event.accept()
 
-    def _number_at(self, px: QPointF) -> Mark | None:
-        """The number under the cursor, for a tool that lets numbers be edited."""
-        edits_numbers = self.tool is not None and self.tool.edits_numbers and not self.panning
-        return self.dimensions.at(px) if edits_numbers else None
-
     def wheelEvent(self, event: QWheelEvent) -> None:
         """Zoom about the cursor."""
-        self.number.close_editor()
+        self.dimensions.editor.close_editor()
         self.zoom(1.0015 ** event.angleDelta().y(), event.position())
         self.refresh()
         event.accept()

@@ -17,6 +17,7 @@ from screenapp.model.field_names import field_words
 from screenapp.model.part import CircleHole, Part, SlotHole
 from screenapp.model.typed_values import Typed, shown_formula
 from screenapp.window import theme
+from screenapp.window.board.dimension_item import DimensionsItem
 from screenapp.window.board.dimension_marks import Mark
 from screenapp.window.board.exact import exact_paths
 from screenapp.window.board.quantity import parse, written
@@ -28,9 +29,10 @@ if TYPE_CHECKING:
 class DimensionEditor(QLineEdit):
     """Enter accepts and hands the keyboard back, Tab goes to the next number, Escape leaves."""
 
-    def __init__(self, canvas: Canvas) -> None:
+    def __init__(self, canvas: Canvas, item: DimensionsItem) -> None:
         super().__init__(canvas)
         self._canvas = canvas
+        self._item = item
         self._mark: Mark | None = None
         self.setAlignment(Qt.AlignmentFlag.AlignCenter)
         self.setFont(theme.font(theme.TEXT_SMALL))
@@ -43,7 +45,7 @@ class DimensionEditor(QLineEdit):
 
     def open_on(self, mark: Mark) -> None:
         """Edit a mark that is shown."""
-        placed = self._canvas.dimensions.placed(mark.key)
+        placed = self._item.placed(mark.key)
         if placed is None:
             return
         part = self._canvas.document.part
@@ -63,7 +65,7 @@ class DimensionEditor(QLineEdit):
         x = min(max(round(placed.middle.x()) - wide // 2, 4), canvas.width() - wide - 4)
         y = min(max(round(placed.middle.y()) - 12, 4), canvas.height() - 28)
         self.move(x, y)
-        canvas.dimensions.hide_number(mark.key)
+        self._item.hide_number(mark.key)
         self.show()
         self.raise_()
         self.setFocus(Qt.FocusReason.OtherFocusReason)
@@ -72,7 +74,7 @@ class DimensionEditor(QLineEdit):
     def close_editor(self) -> None:
         """Leave the number as it is."""
         self._mark = None
-        self._canvas.dimensions.hide_number(None)
+        self._item.hide_number(None)
         if self.isVisible():
             had = self.hasFocus()
             self.hide()
@@ -115,12 +117,12 @@ class DimensionEditor(QLineEdit):
         mark = self._mark
         if mark is None or not self._accept():
             return
-        self._canvas.dimensions.hide_number(None)
-        keys = [m.key for m in self._canvas.dimensions.marks]
+        self._item.hide_number(None)
+        keys = [m.key for m in self._item.marks]
         here = keys.index(mark.key) if mark.key in keys else 0
         for further in range(1, len(keys) + 1):
-            following = self._canvas.dimensions.marks[(here + step * further) % len(keys)]
-            if self._canvas.dimensions.placed(following.key) is not None:
+            following = self._item.marks[(here + step * further) % len(keys)]
+            if self._item.placed(following.key) is not None:
                 self.open_on(following)
                 return
 

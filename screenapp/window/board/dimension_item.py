@@ -36,6 +36,11 @@ LEAST_PX = 12.0
 """A thing that is smaller on the screen has no dimension of its own [px]."""
 
 
+def reach_of(rows: int) -> float:
+    """How far so many rows of dimensions reach from the part [px], with their text."""
+    return FIRST_PX + ROW_PX * max(0, rows - 1) + 12.0
+
+
 @dataclass(frozen=True)
 class Placed:
     """A number as it stands on the screen [px]."""
@@ -195,16 +200,20 @@ class DimensionsItem(ScreenItem):
         self._placed.append(Placed(mark, middle, area))
         if mark.key == self.hidden:
             return
-        path = QPainterPath()
-        path.addText(QPointF(-wide / 2.0, (metrics.ascent() - metrics.descent()) / 2.0), font, text)
+        foot = QPointF(-wide / 2.0, (metrics.ascent() - metrics.descent()) / 2.0)
         painter.save()
         painter.setWorldTransform(turn, True)
-        seam = QColor(theme.current().paper)
-        seam.setAlphaF(0.9)
-        pen = QPen(seam, 4.0)
-        pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
-        painter.strokePath(path, pen)
-        painter.fillPath(path, QColor(theme.current().ink))
+        if mark.row < 0:  # it may stand over lines of the part: a seam keeps it readable
+            path = QPainterPath()
+            path.addText(foot, font, text)
+            seam = QColor(theme.current().paper)
+            seam.setAlphaF(0.9)
+            pen = QPen(seam, 4.0)
+            pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
+            painter.strokePath(path, pen)
+        painter.setFont(font)
+        painter.setPen(QColor(theme.current().ink))
+        painter.drawText(foot, text)
         painter.restore()
 
 
