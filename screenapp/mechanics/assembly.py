@@ -227,6 +227,7 @@ def _symmetric(
     """Sum the elements' upper triangles into the whole symmetric matrix."""
     a, b = places[:, upper[0]], places[:, upper[1]]
     rows, columns = np.minimum(a, b).ravel(), np.maximum(a, b).ravel()
-    half = sparse.coo_array((values.ravel(), (rows, columns)), shape=(size, size)).tocsr()
-    other = sparse.triu(half, k=1, format="csr").T.tocsr()
-    return sparse.csr_array(half + other)
+    # half of the diagonal here and half from the transpose: nothing has to be cut out
+    share = np.where(upper[0] == upper[1], 0.5, 1.0)
+    half = sparse.coo_array(((values * share).ravel(), (rows, columns)), shape=(size, size)).tocsr()
+    return sparse.csr_array(half + half.T.tocsr())
