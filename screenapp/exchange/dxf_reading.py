@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import gc
 from collections import Counter
 from collections.abc import Iterator
+from contextlib import contextmanager
 from pathlib import Path
 
 from ezdxf.document import Drawing as Document
@@ -49,6 +51,24 @@ def read_drawing(path: Path, progress: Progress = SILENT) -> Drawing:
         DrawingError: it cannot be read, holds no line, or far too many.
         Cancelled: the user wanted to stop.
     """
+    with without_collection():
+        return _read(path, progress)
+
+
+@contextmanager
+def without_collection() -> Iterator[None]:
+    """No search for unused cycles meanwhile: millions of new objects would be gone over and over,
+    and the window would stand still each time."""
+    was_on = gc.isenabled()
+    gc.disable()
+    try:
+        yield
+    finally:
+        if was_on:
+            gc.enable()
+
+
+def _read(path: Path, progress: Progress) -> Drawing:
     document, repaired = open_dxf(path, progress)
     walk = _Walk(document, path.name, progress)
     try:

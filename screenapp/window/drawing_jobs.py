@@ -98,7 +98,7 @@ class DrawingJobs(QObject):
             self._stop = None
 
     def shut_down(self) -> None:
-        """Stop, and wait for the thread to end; what ezdxf has begun to bind it binds first."""
+        """Stop, and wait for the thread to end."""
         self.cancel()
         self._thread.quit()
         self._thread.wait()

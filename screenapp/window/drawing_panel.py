@@ -26,7 +26,7 @@ from screenapp.exchange.bringing_in import Brought, bring_in
 from screenapp.exchange.choosing import Wishes, unit_factor
 from screenapp.exchange.convert import shape_faults
 from screenapp.exchange.drawing import Drawing, DrawingError, Remark
-from screenapp.exchange.dxf_reading import read_drawing
+from screenapp.exchange.reading_apart import read_apart
 from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.part import DisplayUnits, Part, Point
 from screenapp.model.progress import Progress, Step
@@ -35,13 +35,14 @@ from screenapp.window import theme
 from screenapp.window.cut_label import CutLabel
 from screenapp.window.drawing_jobs import DrawingJobs
 from screenapp.window.drawing_layers import LayerList
-from screenapp.window.drawing_preview import DrawingPreview, Painted, straight_pieces
+from screenapp.window.drawing_preview import DrawingPreview, Painted
 from screenapp.window.drawing_words import (
     outline_sentence,
     remark_pieces,
     tolerance_sentence,
     unit_sentence,
 )
+from screenapp.window.many_lines import straight_pieces
 from screenapp.window.sheet.field import PAD, sentence_of
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.sentence import Sentence
@@ -84,7 +85,7 @@ class DrawingPanel(QDialog):
         self._late.setInterval(PATIENCE_MS)
         self._late.timeout.connect(lambda: self._show_busy(True))
         self._begin("Reading the drawing")
-        self.jobs.start(lambda progress: read_drawing(path, progress))
+        self.jobs.start(lambda progress: read_apart(path, progress))
 
     # --- laying out -----------------------------------------------------------------------------
 
@@ -181,7 +182,9 @@ class DrawingPanel(QDialog):
         def work(progress: Progress) -> Painted:
             brought = bring_in(drawing, wishes, progress)
             faults = shape_faults(brought.part) if brought.part is not None else ()
-            return Painted(brought, straight_pieces(brought.lines), faults)
+            chains = tuple(curve for chain in brought.open_chains for curve in chain.curves)
+            lines = straight_pieces(brought.lines)
+            return Painted(brought, lines, straight_pieces(chains), faults)
 
         self._begin("Making a part of it")
         self.jobs.start(work)

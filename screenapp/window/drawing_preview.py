@@ -7,12 +7,11 @@ from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
-from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
+from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QKeyEvent, QMouseEvent, QPainter, QPen, QWheelEvent
 from PySide6.QtWidgets import QWidget
 
 from screenapp.exchange.bringing_in import Brought
-from screenapp.model.curves import Arc, Curve
 from screenapp.model.errors import Fault
 from screenapp.model.part import DisplayUnits, Part, Point
 from screenapp.model.regions import zone_curves
@@ -24,28 +23,31 @@ from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.screen_item import Z_MESH, Z_PREVIEW, ScreenItem
 from screenapp.window.board.symbols import FaultsItem
 from screenapp.window.board.zoom_view import ZoomView
+from screenapp.window.many_lines import paint_pieces, straight_pieces
 
 Floats = NDArray[np.float64]
 
-STEPS = 24
-"""Straight pieces of a full turn of an arc that is left out."""
+FEW = 2000
+"""So many pieces, ends or gaps are painted with care; more could not be told apart."""
 
 SHOWN_SHARE = 0.06
 """How much of the drawing is seen round a place that is shown."""
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Painted:
     """What the preview paints.
 
     Attributes:
         brought: what became of the drawing.
         lines: all lines as straight pieces [mm], (n, 2, 2).
+        chains: those of the open chains, likewise.
         faults: what is wrong with the part's shape.
     """
 
     brought: Brought
     lines: Floats
+    chains: Floats
     faults: tuple[Fault, ...] = ()
 
     @property
@@ -57,16 +59,6 @@ class Painted:
         return float(low[0]), float(low[1]), float(high[0]), float(high[1])
 
 
-def straight_pieces(curves: tuple[Curve, ...]) -> Floats:
-    """Curves as straight pieces, (n, 2, 2) [mm]."""
-    rows: list[Floats] = []
-    for curve in curves:
-        n = max(2, math.ceil(STEPS * abs(curve.sweep) / 6.28)) if isinstance(curve, Arc) else 1
-        points = curve.point(np.linspace(0.0, 1.0, n + 1))
-        rows.append(np.stack([points[:-1], points[1:]], axis=1))
-    return np.concatenate(rows) if rows else np.empty((0, 2, 2))
-
-
 class LinesItem(ScreenItem):
     """Every line of the layers used, faint: what is not under the part's ink is left out."""
 
@@ -75,14 +67,9 @@ class LinesItem(ScreenItem):
         self.lines: Floats = np.empty((0, 2, 2))
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Paint each pixel's worth once: a drawing may have hundreds of thousands of lines."""
-        px = np.round(frame.pxs(self.lines) * 2.0) / 2.0
-        view = frame.pxs(np.asarray(_corners(self.boundingRect())))
-        low, high = view.min(axis=0), view.max(axis=0)
-        seen = np.all((px.max(axis=1) >= low) & (px.min(axis=1) <= high), axis=1)
-        flat = np.unique(px[seen].reshape(-1, 4), axis=0)
-        painter.setPen(QPen(theme.colour("quiet"), 1.0))
-        painter.drawLines([QLineF(*row) for row in flat.tolist()])
+        """Paint the lines."""
+        pen = QPen(theme.colour("quiet"), 1.0)
+        paint_pieces(painter, frame, self.lines, _view_size(self), pen)
 
 
 class MarksItem(ScreenItem):
@@ -90,26 +77,25 @@ class MarksItem(ScreenItem):
 
     def __init__(self) -> None:
         super().__init__(Z_PREVIEW)
-        self.chains: list[Floats] = []
+        self.chains: Floats = np.empty((0, 2, 2))
+        self.zones: Floats = np.empty((0, 2, 2))
         self.ends: list[Point] = []
         self.gaps: list[Point] = []
-        self.zones: list[Floats] = []
         self.shown: Point | None = None
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Paint all marks."""
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing, len(self.chains) < FEW)
         bad, doubt = theme.colour("bad"), theme.colour("doubt")
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        painter.setPen(QPen(theme.colour("accent"), 2.0))
-        for rim in self.zones:
-            painter.drawLines(_px_lines(rim, frame))
-        painter.setPen(QPen(bad, 2.0, Qt.PenStyle.DashLine))
-        for chain in self.chains:
-            painter.drawLines(_px_lines(chain, frame))
-        for at in self.ends:
+        size = _view_size(self)
+        paint_pieces(painter, frame, self.zones, size, QPen(theme.colour("accent"), 2.0))
+        dashed = QPen(bad, 2.0, Qt.PenStyle.DashLine)
+        pen = dashed if len(self.chains) < FEW else QPen(bad, 1.0)
+        paint_pieces(painter, frame, self.chains, size, pen)
+        for at in self.ends[:FEW]:
             _ring(painter, frame.px(at), 5.0, bad)
-        for at in self.gaps:
+        for at in self.gaps[:FEW]:
             _ring(painter, frame.px(at), 4.0, doubt)
         if self.shown is not None:
             _ring(painter, frame.px(self.shown), 14.0, theme.colour("accent"))
@@ -153,11 +139,11 @@ class DrawingPreview(ZoomView):
         self.outline.show_part(drawn)
         self.lines.lines = painted.lines
         marks = self.marks
-        marks.chains = [straight_pieces(chain.curves) for chain in brought.open_chains]
+        marks.chains = painted.chains
         marks.ends = [p for chain in brought.open_chains for p in chain.ends]
         marks.gaps = [p for r in brought.remarks if r.kind == "gap" for p in r.at]
         rims = zone_curves(drawn.part, [])
-        marks.zones = [straight_pieces(tuple(c.curve for c in rim)) for rim in rims]
+        marks.zones = straight_pieces(tuple(c.curve for rim in rims for c in rim))
         self.faults.show_faults(drawn, painted.faults)
         marks.shown = None
         self.grid.units = self.scale_bar.units = units
@@ -214,14 +200,12 @@ class DrawingPreview(ZoomView):
             event.ignore()  # Escape puts the panel away
 
 
-def _px_lines(pieces: Floats, frame: Frame) -> list[QLineF]:
-    return [QLineF(*row) for row in frame.pxs(pieces).reshape(-1, 4).tolist()]
-
-
 def _ring(painter: QPainter, at: QPointF, radius: float, colour: QColor) -> None:
     painter.setPen(QPen(colour, 2.0))
     painter.drawEllipse(at, radius, radius)
 
 
-def _corners(rect: QRectF) -> list[tuple[float, float]]:
-    return [(rect.left(), rect.top()), (rect.right(), rect.bottom())]
+def _view_size(item: ScreenItem) -> tuple[int, int]:
+    """Width and height of the view [px]."""
+    rect = item.getViewBox().rect()
+    return math.ceil(rect.width()), math.ceil(rect.height())

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import multiprocessing
 import random
 import time
 from pathlib import Path
@@ -15,6 +16,7 @@ from screenapp.exchange.bringing_in import bring_in
 from screenapp.exchange.choosing import Wishes
 from screenapp.exchange.drawing import Drawing, DrawingError
 from screenapp.exchange.dxf_reading import read_drawing
+from screenapp.exchange.reading_apart import read_apart
 from screenapp.model.errors import Cancelled
 from screenapp.model.progress import Progress, Step
 from screenapp.model.shape import shape_of
@@ -249,3 +251,46 @@ def test_making_a_part_stops_when_asked(huge: Path) -> None:
 
     with pytest.raises(Cancelled):
         bring_in(drawing, Wishes(), Progress(cancelled=cancelled))
+
+
+# --- in a process of its own --------------------------------------------------------------------
+
+
+def test_read_apart_is_the_same_drawing(huge: Path, sound: Path) -> None:
+    steps: list[Step] = []
+    assert read_apart(huge, Progress(report=steps.append)) == read_drawing(huge)
+    assert steps
+    assert [step.done for step in steps] == sorted(step.done for step in steps)
+    assert read_apart(sound, large=0) == read_drawing(sound)
+
+
+def test_read_apart_says_the_same_errors(tmp_path: Path) -> None:
+    path = tmp_path / "letter.dxf"
+    path.write_text("Dear all,\n" * 30)
+    with pytest.raises(DrawingError, match="no DXF file") as caught:
+        read_apart(path, large=0)
+    assert caught.value.mend
+    with pytest.raises(DrawingError, match="cannot be opened"):
+        read_apart(tmp_path / "gone.dxf", large=0)
+
+
+def test_read_apart_is_ended_when_asked(huge: Path) -> None:
+    with pytest.raises(Cancelled):
+        read_apart(huge, Progress(cancelled=lambda: bool(running())))
+    assert running() == []
+
+
+def test_a_process_that_dies_is_an_error(huge: Path) -> None:
+    """As when the system ends it for want of memory."""
+
+    def end(_step: Step) -> None:
+        for process in running():
+            process.kill()
+
+    with pytest.raises(DrawingError, match="ended unexpectedly"):
+        read_apart(huge, Progress(report=end))
+
+
+def running() -> list[Any]:
+    """The processes that read drawings now."""
+    return [p for p in multiprocessing.active_children() if p.name == "drawing"]

@@ -273,7 +273,7 @@ def test_reading_shows_its_progress_and_is_cancelled(
         finally:
             left.set()
 
-    monkeypatch.setattr(drawing_panel, "read_drawing", slow)
+    monkeypatch.setattr(drawing_panel, "read_apart", slow)
     main.files.open(tmp_path / "any.dxf")
     panel = main.findChildren(DrawingPanel)[-1]
     qtbot.waitUntil(lambda: panel.bar.isVisible() and panel.bar.value() == 400, timeout=5000)
