@@ -98,7 +98,7 @@ def test_a_reading_unfolds_where_it_was_read(main: MainWindow) -> None:
     cards = [c for c in main.painter.callouts.callouts if c.history is not None]
     assert [c.head for c in cards] == ["61.3 ± 0.4 MPa"]
     assert cards[0].at == (20.0, 20.0)
-    assert main.painter.callouts.values == ()  # its value stands in the card
+    assert main.board.canvas.labels.values == ()  # its value stands in the card
     figure = findings_of(main).history.figure
     assert figure is not None
     assert figure.name == "P1"

@@ -4,6 +4,7 @@ probes beside their marks."""
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 from dataclasses import dataclass
 
 from PySide6.QtCore import QPointF, QRectF, QSizeF, Qt
@@ -20,8 +21,17 @@ from screenapp.window.traced import Traced
 
 RING = 4.5
 _PAD_X, _PAD_Y, _LINE = 10.0, 7.0, 16.0
+_AROUND_PROBE = QPointF(12.0, 12.0)
 _DIRECTIONS = 16
-_DISTANCES = (44.0, 72.0, 108.0, 156.0, 216.0)  # of the card's nearest point from the ring [px]
+_DISTANCES = (
+    44.0,
+    72.0,
+    108.0,
+    156.0,
+    216.0,
+    300.0,
+    400.0,
+)  # of the card's nearest point from the ring [px]
 
 
 @dataclass(frozen=True)
@@ -45,37 +55,30 @@ class Callout:
     number: Traced | None = None
 
 
-@dataclass(frozen=True)
-class PointValue:
-    """A short text under the mark of a probe at `at` [mm]."""
-
-    at: Point
-    text: str
-
-
 class CalloutItem(ScreenItem):
     """Paints callouts, each card where it hides least of the part."""
 
     def __init__(self) -> None:
-        super().__init__(Z_PROBES + 1)
+        super().__init__(Z_PROBES + 2)
         self._callouts: tuple[Callout, ...] = ()
-        self._values: tuple[PointValue, ...] = ()
+        self._probes: tuple[Point, ...] = ()
         self._outline = QPainterPath()
         self._kept: list[QPointF] = []  # offsets of the cards from their places [px]
-        self._kept_for: tuple[float, QRectF] | None = None
+        self._kept_for: object = None
         self._cards: list[QRectF] = []  # as last painted [px]
+        self.overlays: Callable[[], list[QRectF]] = list  # where widgets lie over the canvas [px]
         self.right_margin = 0.0  # px at the right edge that the colour bar takes
 
     def show_callouts(
         self,
         callouts: tuple[Callout, ...],
-        values: tuple[PointValue, ...],
+        probes: tuple[Point, ...],
         outline: QPainterPath,
     ) -> None:
-        """Show these; `outline` [mm] is the part as drawn, which cards avoid."""
+        """Show these; cards avoid `probes` and the part as drawn, `outline` [mm]."""
         if callouts != self._callouts or outline is not self._outline:
             self._kept_for = None
-        self._callouts, self._values, self._outline = callouts, values, outline
+        self._callouts, self._probes, self._outline = callouts, probes, outline
         self.update()
 
     @property
@@ -83,16 +86,9 @@ class CalloutItem(ScreenItem):
         """What is shown."""
         return self._callouts
 
-    @property
-    def values(self) -> tuple[PointValue, ...]:
-        """The values shown under probes."""
-        return self._values
-
     def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Paint values of probes, then rings, leaders and cards."""
+        """Paint rings, leaders and cards."""
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        for value in self._values:
-            _paint_value(painter, frame.px(value.at), value.text)
         area = QRectF(self.getViewBox().sceneBoundingRect())
         area.adjust(8.0, 8.0, -8.0 - self.right_margin, -8.0)
         offsets = self._offsets(frame, area)
@@ -120,7 +116,7 @@ class CalloutItem(ScreenItem):
 
     def _offsets(self, frame: Frame, area: QRectF) -> list[QPointF]:
         """Places of the cards; kept while the view only pans and they stay in it."""
-        key = (round(frame.scale, 9), area)
+        key = (round(frame.scale, 9), area, tuple(map(_corners, self.overlays())))
         if self._kept_for == key and all(
             area.contains(QRectF(frame.px(c.at) + offset, _size(c)))
             or not area.contains(frame.px(c.at))
@@ -132,8 +128,10 @@ class CalloutItem(ScreenItem):
             QRectF(frame.px(c.at) - QPointF(8, 8), frame.px(c.at) + QPointF(8, 8))
             for c in self._callouts
         ]
-        # marks, names and values of probes
-        taken += [QRectF(frame.px(v.at) + QPointF(-60, -8), QSizeF(120, 48)) for v in self._values]
+        taken += [
+            QRectF(frame.px(p) - _AROUND_PROBE, frame.px(p) + _AROUND_PROBE) for p in self._probes
+        ]
+        taken += self.overlays()
         offsets: list[QPointF] = []
         for callout in self._callouts:
             at = frame.px(callout.at)
@@ -144,6 +142,10 @@ class CalloutItem(ScreenItem):
             offsets.append(best.topLeft() - at)
         self._kept, self._kept_for = offsets, key
         return offsets
+
+
+def _corners(box: QRectF) -> tuple[float, float, float, float]:
+    return box.left(), box.top(), box.right(), box.bottom()
 
 
 def _choices(at: QPointF, size: QSizeF) -> list[QPointF]:
@@ -176,7 +178,7 @@ def _cost(
         min(max(at.x(), card.left()), card.right()), min(max(at.y(), card.top()), card.bottom())
     )
     leader = math.hypot(nearest.x() - at.x(), nearest.y() - at.y())
-    return 20.0 * lost + 8.0 * clashes + 4.0 * covers + 0.3 * crosses + leader / 100.0
+    return 60.0 * lost + 8.0 * clashes + 4.0 * covers + 0.3 * crosses + leader / 100.0
 
 
 def _colour(trust: Trust) -> QColor:
@@ -239,16 +241,3 @@ def _paint_card(painter: QPainter, card: QRectF, callout: Callout) -> None:
         box = QRectF(line.left(), line.top(), card.width() - 2 * _PAD_X, TALL)
         paint_history(painter, box, callout.history)
         painter.drawText(line.translated(0.0, TALL), flags, callout.history.note)
-
-
-def _paint_value(painter: QPainter, at: QPointF, text: str) -> None:
-    """The text under the probe's name, on a pale ground."""
-    font = theme.font(theme.TEXT_SMALL)
-    width = QFontMetricsF(font).horizontalAdvance(text) + 8.0
-    box = QRectF(at.x() - width / 2.0, at.y() + 23.0, width, 16.0)
-    painter.setPen(Qt.PenStyle.NoPen)
-    painter.setBrush(theme.colour("paper", 0.85))
-    painter.drawRoundedRect(box, 3.0, 3.0)
-    painter.setFont(font)
-    painter.setPen(theme.colour("ink"))
-    painter.drawText(box, Qt.AlignmentFlag.AlignCenter, text)

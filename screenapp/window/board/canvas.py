@@ -17,6 +17,7 @@ from screenapp.window.board.dimensions import Dimensions
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.hit_test import hit_test
+from screenapp.window.board.labels import LabelsItem
 from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
@@ -74,6 +75,7 @@ class Canvas(ZoomView):
         self.zone_fill, self.zone_lines = ZoneFillItem(paths), ZoneLineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
         self.dimensions = Dimensions(self)
+        self.labels = LabelsItem(self)
         self.preview_item = PreviewItem(self)
         for item in (
             self.grid,
@@ -84,6 +86,7 @@ class Canvas(ZoomView):
             self.dimensions.item,
             self.symbols,
             self.probes,
+            self.labels,
             self.marked,
             self.preview_item,
             self.scale_bar,
@@ -130,6 +133,7 @@ class Canvas(ZoomView):
         self.zone_lines.show_part(drawn)
         self.symbols.show_part(drawn, self.document.view.case)
         self.probes.show_part(drawn)
+        self.labels.update()
         self.show_marked()
         self.dimensions.refresh()
         self.grid.update()
@@ -151,6 +155,7 @@ class Canvas(ZoomView):
         for item in (self.outline, self.zone_lines, self.symbols, self.probes):
             item.selected, item.hovered = self.document.selection, self.document.hovered
             item.update()
+        self.labels.update()
 
     def apply_theme(self) -> None:
         """Take the colours of the present theme."""

@@ -134,6 +134,12 @@ class ColourBar(QWidget):
         """What is shown."""
         return self._content
 
+    def covered(self) -> QRectF:
+        """What the bar with its figures and title covers of the host [px]."""
+        return QRectF(self.geometry()).intersected(
+            QRectF(self.x() + self._bar().left() - 6.0, self.y(), WIDTH, self.height())
+        )
+
     def settle(self) -> None:
         """Take the place at the host's right edge."""
         room = self._host.height() - 2 * MARGIN - 96  # the scale of lengths stands below

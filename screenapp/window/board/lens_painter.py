@@ -5,18 +5,19 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Protocol
 
-from PySide6.QtCore import QObject, QPointF
+from PySide6.QtCore import QObject, QPointF, QRectF
 from PySide6.QtGui import QPainterPath
 
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields, Findings
 from screenapp.report.colours import Scale
 from screenapp.window import theme
-from screenapp.window.board.callouts import Callout, CalloutItem, PointValue
+from screenapp.window.board.callouts import Callout, CalloutItem
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.colour_bar import TAKEN, ColourBar
 from screenapp.window.board.field_item import FieldItem
 from screenapp.window.board.hatching import HatchItem, Zone
+from screenapp.window.board.labels import PointValue
 from screenapp.window.board.lens_colours import bar_content, scale_of
 from screenapp.window.board.lens_heading import LensHeading
 from screenapp.window.board.mesh_item import MeshItem
@@ -33,6 +34,9 @@ FADED = 0.35
 
 FADED_WORDS = 0.6
 """Strength of their numbers, which have to stay readable."""
+
+SCALE_WIDE, SCALE_TALL = 224.0, 46.0
+"""What the scale bar takes of the lower left corner [px]."""
 
 Range = tuple[float, float]
 
@@ -76,6 +80,8 @@ class LensPainter(QObject):
         self.bar = ColourBar(board.canvas)
         self.heading = LensHeading(document, board.canvas)
         board.canvas.pressed_first = self._press
+        board.canvas.labels.cards = self.callouts.cards
+        board.canvas.labels.overlays = self.callouts.overlays = self._overlays
         self.bar.range_wanted.connect(self._take_range)
         self.bar.said.connect(document.said)
         for picture in (self.field, self.mesh):
@@ -119,6 +125,16 @@ class LensPainter(QObject):
         self._document.select(*filter(None, (number.probe or number.feature,)))
         self._document.trace(number)
         return True
+
+    def _overlays(self) -> list[QRectF]:
+        """Where choosers, words, the colour bar and the scale bar lie over the canvas [px]."""
+        canvas = self._board.canvas
+        boxes = [QRectF(0.0, canvas.height() - SCALE_TALL, SCALE_WIDE, SCALE_TALL)]
+        if self.heading.isVisible():
+            boxes.append(QRectF(self.heading.geometry()))
+        if self.bar.isVisible():
+            boxes.append(self.bar.covered())
+        return boxes
 
     # --- painting -------------------------------------------------------------------------
 
@@ -195,6 +211,7 @@ class LensPainter(QObject):
         self.rim.show_path(None)
         self.marks.show_marks(())
         self.callouts.show_callouts((), (), QPainterPath())
+        self._board.canvas.labels.show_values(())
         self.bar.show_content(None)
         self._board.set_outline_faint(False)
 
@@ -243,7 +260,9 @@ class LensPainter(QObject):
         self.marks.show_marks(painting.marks)
         values = tuple(PointValue(at, text) for at, text in painting.probes)
         self.callouts.right_margin = float(TAKEN) if self.bar.content else 0.0
-        self.callouts.show_callouts(callouts, values, self._path)
+        probes = tuple(probe.at for probe in self._document.part.readings)
+        self.callouts.show_callouts(callouts, probes, self._path)
+        self._board.canvas.labels.show_values(values)
 
     def _put_strength(self, source: Source, painting: Painting) -> None:
         old = source.findings is not None and not self._document.current

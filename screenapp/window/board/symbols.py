@@ -18,7 +18,6 @@ from screenapp.window.board.hit_test import HitKind
 from screenapp.window.board.load_marks import load_mark
 from screenapp.window.board.marks import Mark
 from screenapp.window.board.screen_item import Z_PROBES, Z_SYMBOLS, ScreenItem
-from screenapp.window.board.sketch import label
 from screenapp.window.board.support_marks import support_mark
 
 FARTHEST_PAN = 2000.0
@@ -101,7 +100,7 @@ class SymbolsItem(ScreenItem):
         return had[2].pans_to(frame, FARTHEST_PAN)
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Paint all symbols, labels last."""
+        """Paint all symbols; their texts are `LabelsItem`'s."""
         palette = theme.current()
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         marks = self.marks(frame)
@@ -112,10 +111,6 @@ class SymbolsItem(ScreenItem):
             colour = QColor(palette.accent if chosen else name)
             width = 2.6 if mark.id == self.hovered else 1.6
             _paint(painter, mark, colour, width)
-        for mark in marks:
-            if mark.label:
-                name = palette.support if mark.kind == "support" else palette.load
-                label(painter, mark.label, mark.label_at, name)
 
 
 class ProbesItem(ScreenItem):
@@ -133,7 +128,7 @@ class ProbesItem(ScreenItem):
         self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
-        """A ring with a dot, and the name beside it."""
+        """A ring with a dot."""
         if self.drawn is None:
             return
         palette = theme.current()
@@ -147,7 +142,6 @@ class ProbesItem(ScreenItem):
             painter.setBrush(colour)
             painter.setPen(Qt.PenStyle.NoPen)
             painter.drawEllipse(p, 1.4, 1.4)
-            label(painter, probe.name, p + QPointF(0.0, 15.0), colour.name())
 
 
 class FaultsItem(ScreenItem):
