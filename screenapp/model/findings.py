@@ -167,7 +167,8 @@ class CutFindings:
 
     Attributes:
         start, end: of the cut when it was read [mm].
-        spans: the stretches of material; none if it misses the part.
+        spans: the stretches of material, a new one where thickness or material changes; none if
+            it misses the part.
         normal, shear, moment: section forces by integrating the stress, signs as in
             `SectionForces` [N, N, N·mm].
         applied: the same from the loads and supports on the free body; None where the cut does not

@@ -6,6 +6,7 @@ import math
 from collections.abc import Iterator
 from dataclasses import replace
 
+import numpy as np
 import pytest
 
 from screenapp.meshing.service import Mesher
@@ -13,10 +14,14 @@ from screenapp.model.findings import Findings
 from screenapp.model.part import (
     Case,
     CircleHole,
+    Cut,
+    FixedSupport,
     ForceLoad,
+    GravityLoad,
     Limit,
     Material,
     Part,
+    PrescribedSupport,
     PressureLoad,
     Probe,
     RollerSupport,
@@ -137,3 +142,52 @@ def test_a_sharp_step_in_a_weak_place_stays_undecided_or_says_why(mesher: Mesher
     assert top.estimate.trust != "settled"
     assert "zone z1" in top.place + top.why
     assert found.verdict == "undecided"
+
+
+def test_a_cut_is_read_wall_by_wall(mesher: Mesher) -> None:
+    """Two strips of different thickness and modulus under one strain: every stress on the cut and
+    every section force is known, and beam theory of the stiffer and softer parts is exact."""
+    soft = replace(STRONG, name="soft", youngs_modulus=70_000.0)
+    part = strip(
+        60.0,
+        20.0,
+        (pad([(-5.0, 12.0), (70.0, 12.0), (70.0, 30.0), (-5.0, 30.0)], 5.0, "soft"),),
+        (*UPRIGHT, PrescribedSupport("s3", "e2", x=0.06)),
+        (Case("k", "stretch"),),
+        (STRONG, soft),
+    )
+    part = replace(part, cuts=(Cut("x1", "across", (30.0, -5.0), (30.0, 25.0)),))
+    (cut,) = screen(part, mesher).cuts
+    lower, upper = cut.spans
+    np.testing.assert_allclose(lower.values["normal"], 210.0, rtol=1e-6)
+    np.testing.assert_allclose(upper.values["normal"], 70.0, rtol=1e-6)
+    force = 210.0 * 12.0 * 2.0 + 70.0 * 8.0 * 5.0
+    assert cut.applied is not None
+    assert cut.normal.value == pytest.approx(force, rel=1e-6)
+    assert cut.applied.normal == pytest.approx(force, rel=1e-6)
+    assert abs(cut.applied.moment) < 1e-6 * force
+    assert abs(cut.moment.value) < 1e-6 * force
+    np.testing.assert_allclose(lower.beam, [210.0, 210.0], rtol=1e-6)
+    np.testing.assert_allclose(upper.beam, [70.0, 70.0], rtol=1e-6)
+
+
+def test_section_forces_take_weight_and_pressure_by_the_walls_they_act_on(mesher: Mesher) -> None:
+    part = strip(
+        60.0,
+        20.0,
+        (pad([(40.0, -5.0), (70.0, -5.0), (70.0, 30.0), (40.0, 30.0)], 6.0),),
+        (FixedSupport("s1", "e4"),),
+        (
+            Case("k1", "weight", (GravityLoad("l1", 0.0, -9810.0),)),
+            Case("k2", "pressure", (PressureLoad("l2", "e3", 2.0),)),
+        ),
+        (STRONG,),
+    )
+    part = replace(part, cuts=(Cut("x1", "root", (10.0, 25.0), (10.0, -5.0)),))
+    weight, pressure = (c.applied for c in screen(part, mesher).cuts)
+    assert weight is not None
+    assert pressure is not None
+    volume = 30.0 * 20.0 * 2.0 + 20.0 * 20.0 * 6.0
+    # elements and sides that the cut divides count by their Gauss points
+    assert abs(weight.shear) == pytest.approx(7850e-9 * volume * 9810.0, rel=2e-3)
+    assert abs(pressure.shear) == pytest.approx(2.0 * (30.0 * 2.0 + 20.0 * 6.0), rel=2e-3)
