@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.free_body import centroid, section_forces, span_thickness
+from screenapp.mechanics.point_reading import ON_CURVE
 from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
 from screenapp.mechanics.straight_cut import StraightCut, straight_cut
 from screenapp.model.combinations import loadings
@@ -34,8 +35,9 @@ _LEAST_SCALE = 0.05
 """A stress on the cut is judged against at least this share of the case's largest."""
 
 
-NEAR_INTERFACE = 1e-7
-"""Where the thickness changes the stress jumps: each side is read so near to it [part's size]."""
+NEAR_INTERFACE = 3.0 * ON_CURVE
+"""Share of the part's size within which a place is read on its own side of an interface: farther
+from it than where a reading takes the larger stress of the two sides."""
 
 
 @dataclass(frozen=True, eq=False)

