@@ -137,6 +137,21 @@ def _piece_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
         )
 
 
+def _zone_range_cautions(part: Part) -> Iterator[Fault]:
+    """Zones so thick or thin that the figures of their material do not stand for them."""
+    for number, zone in enumerate(part.zones):
+        material, thickness = part.material_of(number), part.wall_of(number).thickness
+        if material is not None and not material.stands_for(thickness):
+            yield Fault(
+                f"the figures of “{material.name}” stand for walls {_range_words(material)}, "
+                f"zone {zone.id} has {thickness:g} mm",
+                "choose a material of its own for the zone, or give figures of your own",
+                f"zones.{zone.id}.thickness",
+                (zone.id,),
+                blocks=False,
+            )
+
+
 def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
     if part.wall.thickness > shape.size / 3.0:
         yield Fault(
@@ -146,6 +161,7 @@ def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
             "wall.thickness",
             blocks=False,
         )
+    yield from _zone_range_cautions(part)
     material = part.material
     if material is None:
         return

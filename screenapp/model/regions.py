@@ -83,7 +83,7 @@ def divide(part: Part, shape: Shape) -> Shape:
     near, n = TOUCH * shape.size, len(shape.curves)
     cuts = without_doubles(cut_at_junctions(curves, n, near), n, near)
     ask = _Asker(shape, CurveTable.of(tuple(curves)), len(part.zones))
-    left, right = ask.beside(cuts, BESIDE * near)
+    left, right = ask.beside(cuts, n, BESIDE * near)
     edges = [
         k for k, cut in enumerate(cuts) if cut.source < n or left[k] != right[k]
     ]  # the others lie outside the part or under a later zone
@@ -105,24 +105,44 @@ class _Asker:
     table: CurveTable
     n_zones: int
 
-    def at(self, points: Floats) -> Ints:
-        """The last zone that holds each point, -1 for the wall itself, `OUTSIDE` beside it."""
+    def beside(self, cuts: Sequence[Cut], n_boundary: int, gap: float) -> tuple[Ints, Ints]:
+        """What lies to the left and right of the middle of each cut: the last zone there, -1 for
+        the wall itself, `OUTSIDE` beside the part."""
+        middles, along = _middles(cuts)
+        across = np.stack([-along[:, 1], along[:, 0]], axis=1)
+        left = self._zones(middles + gap * across)
+        right = np.full(len(cuts), OUTSIDE)
+        drawn = np.flatnonzero([cut.source >= n_boundary for cut in cuts])
+        for side, points in ((left, middles + gap * across), (right, middles - gap * across)):
+            zones = self._zones(points[drawn])
+            zones[self._outside(points[drawn])] = OUTSIDE
+            side[drawn] = zones
+        return left, right
+
+    def _zones(self, points: Floats) -> Ints:
         first = len(self.shape.loops)
         found = np.full(len(points), -1, dtype=np.int64)
         for zone in range(self.n_zones):
             found[self.table.inside(first + zone, points)] = zone
-        out = ~self.table.inside(0, points)
-        for loop in range(1, first):
-            out |= self.table.inside(loop, points)
-        found[out] = OUTSIDE
         return found
 
-    def beside(self, cuts: Sequence[Cut], gap: float) -> tuple[Ints, Ints]:
-        """What lies to the left and right of the middle of each cut."""
-        middles = np.array([cut.curve.point(0.5) for cut in cuts])
-        along = np.array([cut.curve.tangent(0.5) for cut in cuts])
-        across = np.stack([-along[:, 1], along[:, 0]], axis=1)
-        return self.at(middles + gap * across), self.at(middles - gap * across)
+    def _outside(self, points: Floats) -> NDArray[np.bool_]:
+        own = self.shape.table
+        out = np.asarray(~own.inside(0, points))
+        boxes = own.loop_boxes(self.shape)
+        for loop in range(1, len(self.shape.loops)):
+            low, high = boxes[loop, :2], boxes[loop, 2:]
+            near = np.flatnonzero(np.all((points > low) & (points < high), axis=1))
+            if len(near):
+                out[near] |= own.inside(loop, points[near])
+        return out
+
+
+def _middles(cuts: Sequence[Cut]) -> tuple[Floats, Floats]:
+    """Middle points and tangents of cuts, (n, 2) each."""
+    table = CurveTable.of(tuple(BoundaryCurve("", "edge", cut.curve, 0) for cut in cuts))
+    every, half = np.arange(len(cuts)), np.full(len(cuts), 0.5)
+    return table.points(every, half), table.tangents(every, half)
 
 
 def _assembled(
@@ -211,15 +231,20 @@ def _nested(
         for k in outer
     }
     holes: dict[int, list[tuple[Step, ...]]] = {k: [] for k in outer}
-    for k, walk in enumerate(loops):
-        if area[k] > 0.0:
-            continue
-        curve = _run(cuts[walk[0].cut], walk[0].forward)
-        middle, along = curve.point(0.5), curve.tangent(0.5)
-        beside = middle + 1e-6 * curve.length * np.array([-along[1], along[0]])
-        around = [m for m in outer if tables[m].inside(0, beside[None])[0]]
+    inner = [k for k in range(len(loops)) if area[k] <= 0.0]
+    if not inner:
+        return [(loops[k], []) for k in outer]
+    firsts = [cuts[loops[k][0].cut] for k in inner]
+    middles, along = _middles(firsts)
+    forward = np.array([1.0 if loops[k][0].forward else -1.0 for k in inner])[:, None]
+    lengths = np.array([cut.curve.length for cut in firsts])[:, None]
+    across = np.stack([-along[:, 1], along[:, 0]], axis=1)
+    beside = middles + 1e-6 * lengths * forward * across
+    held = {k: tables[k].inside(0, beside) for k in outer}
+    for row, k in enumerate(inner):
+        around = [m for m in outer if held[m][row]]
         if around:
-            holes[min(around, key=lambda m: area[m])].append(walk)
+            holes[min(around, key=lambda m: area[m])].append(loops[k])
     return [(loops[k], holes[k]) for k in outer]
 
 

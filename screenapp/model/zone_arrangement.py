@@ -156,12 +156,13 @@ def trace_loops(cuts: Sequence[Cut], one_way: Sequence[bool]) -> list[tuple[Step
     """
     steps = [Step(k, True) for k in range(len(cuts))]
     steps += [Step(k, False) for k in range(len(cuts)) if not one_way[k]]
-    reach = _reach(cuts)
+    forward, backward = _headings(cuts)
     leaving: dict[int, list[tuple[float, Step]]] = {}
     for step in steps:
         cut = cuts[step.cut]
         at = cut.start if step.forward else cut.end
-        leaving.setdefault(at, []).append((_heading(cut.curve, step.forward, reach[at]), step))
+        heading = (forward if step.forward else backward)[step.cut]
+        leaving.setdefault(at, []).append((heading, step))
     loops: list[tuple[Step, ...]] = []
     open_ = set(steps)
     for first in steps:
@@ -174,7 +175,7 @@ def trace_loops(cuts: Sequence[Cut], one_way: Sequence[bool]) -> list[tuple[Step
             walk.append(step)
             cut = cuts[step.cut]
             at = cut.end if step.forward else cut.start
-            back = _heading(cut.curve, not step.forward, reach[at])
+            back = (backward if step.forward else forward)[step.cut]
             # the first way out clockwise from where we came; straight back only if there is none
             step = min(
                 leaving.get(at, [(back, first)]),
@@ -194,8 +195,16 @@ def _reach(cuts: Sequence[Cut]) -> dict[int, float]:
     return reach
 
 
-def _heading(curve: Curve, forward: bool, reach: float) -> float:
-    """The direction [rad] in which a curve leaves its start, or its end run backwards."""
-    t = reach / curve.length
-    origin, (x, y) = (curve.start, curve.point(t)) if forward else (curve.end, curve.point(1.0 - t))
-    return math.atan2(float(y) - origin[1], float(x) - origin[0])
+def _headings(cuts: Sequence[Cut]) -> tuple[list[float], list[float]]:
+    """The direction [rad] in which each cut leaves its start, and its end run backwards."""
+    table = CurveTable.of(tuple(BoundaryCurve("", "edge", cut.curve, 0) for cut in cuts))
+    reach, lengths, every = _reach(cuts), table.lengths, np.arange(len(cuts))
+    found: list[list[float]] = []
+    for ends, origin, way in (
+        ([cut.start for cut in cuts], table.start, 1.0),
+        ([cut.end for cut in cuts], table.end, -1.0),
+    ):
+        t = np.array([reach[at] for at in ends]) / lengths
+        away = table.points(every, t if way > 0.0 else 1.0 - t) - origin
+        found.append([float(a) for a in np.arctan2(away[:, 1], away[:, 0])])
+    return found[0], found[1]

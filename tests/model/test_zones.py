@@ -238,3 +238,11 @@ def test_what_was_on_a_hole_goes_when_it_is_filled() -> None:
     outcome = edits.hole_to_zone(part, hole)
     assert outcome.part.supports == ()
     assert outcome.lost == (f"support s9 on {hole}",)
+
+
+def test_a_thickness_beyond_what_the_figures_stand_for_is_pointed_out() -> None:
+    part = zoned(Zone(CircleHole("z1", (25.0, 25.0), 10.0), 25.0))
+    ranged = replace(part.materials[0], thickness_from=0.0, thickness_upto=16.0)
+    part = replace(part, materials=(ranged,))
+    told = [f for f in faults_of(part) if "zone z1 has 25 mm" in f.cause]
+    assert [f.blocks for f in told] == [False]
