@@ -124,6 +124,13 @@ def _convert_parser() -> argparse.ArgumentParser:
         help="make the shape of this layer (may be repeated); else of all that are shown and "
         "drawn in full lines",
     )
+    parser.add_argument(
+        "--zone",
+        action="append",
+        default=[],
+        metavar="NAME",
+        help="make zones of the closed lines on this layer (may be repeated)",
+    )
     parser.add_argument("--unit", help="unit of length of the drawing, e.g. mm or in")
     parser.add_argument(
         "--tolerance",
@@ -182,7 +189,11 @@ def _convert(arguments: argparse.Namespace) -> int:
     from screenapp.progress_bar import ProgressBar
 
     options = Options(
-        tuple(arguments.layer), arguments.unit, arguments.tolerance, arguments.outline
+        tuple(arguments.layer),
+        tuple(arguments.zone),
+        arguments.unit,
+        arguments.tolerance,
+        arguments.outline,
     )
     said: list[str] = []
     try:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Callable
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -28,12 +28,14 @@ class Options:
 
     Attributes:
         layers: layers that the shape is made of; empty takes all that are shown and not dashed.
+        zones: layers whose closed lines are zones.
         unit: unit of length of the drawing; None takes what the file says.
         tolerance: a length like "0.01 mm".
         outline: which of several outlines.
     """
 
     layers: tuple[str, ...] = ()
+    zones: tuple[str, ...] = ()
     unit: str | None = None
     tolerance: str = ""
     outline: int | None = None
@@ -56,9 +58,9 @@ def convert(
     if ways[0] and parts[1]:
         write_part(part_of_file(source, options, say, progress), target)
     elif parts[0] and ways[1]:
-        if options.layers or options.tolerance or options.outline is not None:
+        if options != Options(unit=options.unit):
             raise DrawingError(
-                "layers, tolerance and outline are for reading a drawing",
+                "layers, zones, tolerance and outline are for reading a drawing",
                 "give only --unit when a part is written as a drawing",
             )
         write_dxf(read_part(source), target, options.unit)
@@ -85,11 +87,12 @@ def part_of_file(
     if options.unit is not None:
         unit_factor(options.unit)  # a wrong unit is told before a long reading
     drawing = read_drawing(source, progress)
-    roles: Mapping[str, Role] = {}
+    roles: dict[str, Role] = {}
     if options.layers:
         wanted = set(options.layers)
         roles = {layer.name: "left out" for layer in drawing.layers if layer.name not in wanted}
         roles |= dict.fromkeys(options.layers, "shape")
+    roles |= dict.fromkeys(options.zones, "zone")
     brought = bring_in(drawing, Wishes(roles, options.unit, tolerance, options.outline), progress)
     for remark in brought.remarks:
         say(remark.text)

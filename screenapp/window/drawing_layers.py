@@ -2,14 +2,41 @@
 
 from __future__ import annotations
 
-from PySide6.QtCore import Qt, Signal
-from PySide6.QtWidgets import QCheckBox, QComboBox, QGridLayout, QLabel, QWidget
+from PySide6.QtCore import QSize, Qt, Signal
+from PySide6.QtGui import QResizeEvent
+from PySide6.QtWidgets import QCheckBox, QComboBox, QGridLayout, QLabel, QSizePolicy, QWidget
 
 from screenapp.exchange.drawing import Layer, Role
 
-ROLES: tuple[tuple[Role, str], ...] = (("shape", "outline and holes"), ("zone", "zones"))
+ROLES: tuple[tuple[Role, str], ...] = (("shape", "outline, holes"), ("zone", "zones"))
 
-LONGEST_NAME = 28
+BESIDE_TEXT = 28
+"""What the square of a tick and the gap behind it take [px]."""
+
+
+class LayerTick(QCheckBox):
+    """A tick with the name of a layer, shortened to the room there is."""
+
+    def __init__(self, name: str) -> None:
+        super().__init__()
+        self._name = name
+        self.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Fixed)
+        self.setText(name.replace("&", "&&"))
+
+    def minimumSizeHint(self) -> QSize:
+        """Some letters of the name."""
+        return QSize(72, super().minimumSizeHint().height())
+
+    def sizeHint(self) -> QSize:
+        """Any width will do."""
+        return QSize(72, super().sizeHint().height())
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """Shorten the name in its middle: layers often differ in their ends only."""
+        super().resizeEvent(event)
+        room = self.width() - BESIDE_TEXT
+        shown = self.fontMetrics().elidedText(self._name, Qt.TextElideMode.ElideMiddle, room)
+        self.setText(shown.replace("&", "&&"))
 
 
 class LayerList(QWidget):
@@ -57,7 +84,7 @@ class LayerList(QWidget):
             self._add(number, layer)
 
     def _add(self, number: int, layer: Layer) -> None:
-        tick = QCheckBox(_shortened(layer.name).replace("&", "&&"))
+        tick = LayerTick(layer.name)
         tick.setChecked(layer.role != "left out")
         tick.setToolTip(f"Layer “{layer.name}”{_why(layer)}")
         tick.setAccessibleName(f"Use layer {layer.name}")
@@ -85,7 +112,3 @@ def _why(layer: Layer) -> str:
     if not layer.shown:
         return ": switched off, frozen or never printed in the drawing"
     return ": drawn in dashed lines" if layer.dashed else ""
-
-
-def _shortened(name: str) -> str:
-    return name if len(name) <= LONGEST_NAME else name[: LONGEST_NAME - 1] + "…"

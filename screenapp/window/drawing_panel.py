@@ -47,8 +47,11 @@ from screenapp.window.sheet.field import PAD, sentence_of
 from screenapp.window.sheet.pieces import Link, Piece, Words
 from screenapp.window.sheet.sentence import Sentence
 
-FIRST_SIZE = (1040, 620)
-SIDE_WIDTH = 372
+FIRST_SIZE = (1088, 620)
+SIDE_WIDTH = 420
+LAYERS_HEIGHT = 6 * 30
+"""More layers than fit in here are scrolled [px]."""
+
 PATIENCE_MS = 250
 """Work that takes longer than this shows its progress [ms]."""
 
@@ -109,17 +112,14 @@ class DrawingPanel(QDialog):
         column.addWidget(self.outline)
         self.layers_heading = _heading("Layers")
         column.addWidget(self.layers_heading)
-        column.addWidget(self.layers)
+        self.layer_area = _scrolled(self.layers, self)
+        column.addWidget(self.layer_area)
         self.report_heading = _heading("What was found")
         column.addWidget(self.report_heading)
         column.addLayout(self.said)
         column.addStretch(1)
-        scroll = QScrollArea(self)
-        scroll.setWidget(page)
-        scroll.setWidgetResizable(True)
-        scroll.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+        scroll = _scrolled(page, self)
         scroll.setFixedWidth(SIDE_WIDTH)
-        scroll.setFocusPolicy(Qt.FocusPolicy.NoFocus)
         body = QHBoxLayout()
         body.setSpacing(0)
         body.addWidget(self.preview, 1)
@@ -204,6 +204,8 @@ class DrawingPanel(QDialog):
             self.drawing = result
             self.wishes = Wishes(unit=result.unit)
             self.layers.fill(result.layers)
+            tall = self.layers.sizeHint().height()
+            self.layer_area.setFixedHeight(min(tall, LAYERS_HEIGHT))
             self._renew()
             return
         assert isinstance(result, Painted)
@@ -219,6 +221,8 @@ class DrawingPanel(QDialog):
         self.take.setToolTip(
             "Make it the part on the board (Enter)"
             if result.brought.part is not None
+            else "First choose the unit of the drawing"
+            if self.wishes.unit is None
             else sentence_of(result.brought.error or _NONE)
         )
 
@@ -231,7 +235,7 @@ class DrawingPanel(QDialog):
 
     def _show_wishes(self) -> None:
         drawing = self.drawing
-        for widget in (self.unit, self.tolerance, self.layers_heading, self.layers):
+        for widget in (self.unit, self.tolerance, self.layers_heading, self.layer_area):
             widget.setVisible(drawing is not None)
         candidates = self.painted.brought.candidates if self.painted is not None else ()
         pieces = outline_sentence(candidates, self.wishes.outline, self._outline_chosen)
@@ -319,6 +323,15 @@ class DrawingPanel(QDialog):
 
 
 _NONE = DrawingError("there is no part in it", "choose other layers")
+
+
+def _scrolled(page: QWidget, parent: QWidget) -> QScrollArea:
+    area = QScrollArea(parent)
+    area.setWidget(page)
+    area.setWidgetResizable(True)
+    area.setHorizontalScrollBarPolicy(Qt.ScrollBarPolicy.ScrollBarAlwaysOff)
+    area.setFocusPolicy(Qt.FocusPolicy.NoFocus)
+    return area
 
 
 def _heading(text: str, above: int = 12) -> QLabel:

@@ -59,6 +59,21 @@ def test_options_choose_layer_unit_tolerance_and_outline(tmp_path: Path, capsys:
     assert area == pytest.approx(8 - math.pi / 4, rel=1e-3)
 
 
+def test_a_layer_of_zones(tmp_path: Path, capsys: Captured) -> None:
+    def draw(space: Any) -> None:
+        rectangle(space, 0, 0, 40, 20)
+        space.add_circle((10, 10), 3, dxfattribs={"layer": "POCKETS"})
+        space.add_circle((30, 10), 3)
+
+    source, target = write(tmp_path / "z.dxf", draw), tmp_path / "z.part.json"
+    assert main(["convert", str(source), str(target), "--zone", "POCKETS"]) == 0
+    part = read_part(target)
+    assert len(part.holes) == len(part.zones) == 1
+    assert "give it its own thickness" in capsys.readouterr().err
+    assert main(["convert", str(source), str(target), "--zone", "PADS"]) == 3
+    assert "no lines on a layer “PADS”" in capsys.readouterr().err
+
+
 @pytest.mark.parametrize("tolerance", ["0", "-1 mm", "3 kg", "much"])
 def test_a_wrong_tolerance_is_bad_input(tolerance: str, tmp_path: Path, capsys: Captured) -> None:
     source = write(tmp_path / "s.dxf", lambda space: rectangle(space, 0, 0, 4, 2))
