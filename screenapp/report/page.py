@@ -9,13 +9,15 @@ from markupsafe import Markup
 
 from screenapp import __version__
 from screenapp.model.assets import resource
+from screenapp.model.cut_figure import cut_figure
 from screenapp.model.estimate_text import EstimateKind, estimate_text
-from screenapp.model.findings import Estimate, Findings, Peak
+from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import DisplayUnits, GravityLoad, Load, Part
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
+from screenapp.report.cut_svg import cut_svg
 from screenapp.report.drawing import part_svg
 from screenapp.report.history_svg import history_svg
 
@@ -42,6 +44,7 @@ def record_page(part: Part, findings: Findings, when: datetime) -> str:
         findings=findings,
         names={case.case: case.name for case in findings.cases},
         numbered=_numbered(findings),
+        cut_drawing=lambda cut: _cut(cut, units),
         history=lambda peak: _history(peak, findings, units),
         estimate=estimate,
         length=lambda v: format_quantity(v, "length", units),
@@ -69,6 +72,12 @@ def _numbered(findings: Findings) -> list[tuple[int, str, object]]:
     """Every peak with its number in the drawing and the name of its case."""
     rows = [(case.name, peak) for case in findings.cases for peak in case.peaks]
     return [(i + 1, name, peak) for i, (name, peak) in enumerate(rows)]
+
+
+def _cut(cut: CutFindings, units: DisplayUnits) -> tuple[Markup, tuple[str, ...]]:
+    """Drawing and sentences of a cut."""
+    figure = cut_figure(cut, units)
+    return Markup(cut_svg(figure)), figure.sentences  # a drawing, its texts escaped there
 
 
 def _history(peak: Peak, findings: Findings, units: DisplayUnits) -> tuple[Markup, str] | None:

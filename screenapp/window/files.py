@@ -18,6 +18,7 @@ from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import read_part, write_part
 from screenapp.model.regions import shape_with_zones
+from screenapp.screening.cuts import read_cuts
 from screenapp.screening.probes import read_probes
 from screenapp.window.ask import DRAWING_SUFFIX, SUFFIX, Ask
 from screenapp.window.document import Document
@@ -191,9 +192,10 @@ class Files(QObject):
 
 
 def with_readings(part: Part, findings: Findings) -> Findings:
-    """The findings with the readings of the part's present probes."""
+    """The findings with the readings of the part's present probes and cuts."""
     try:
-        return read_probes(part, shape_with_zones(part), findings)
+        shape = shape_with_zones(part)
+        return read_cuts(part, shape, read_probes(part, shape, findings))
     except InvalidPartError as error:  # findings are only of sound parts: worth a line in the log
         log.warning("readings could not be renewed: %s", error.cause)
         return findings

@@ -20,7 +20,7 @@ from screenapp.model.combinations import loadings
 from screenapp.model.edits import EditError
 from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
-from screenapp.model.part import DisplayUnits, Part, Probe, StressLimit
+from screenapp.model.part import DisplayUnits, Part, StressLimit
 from screenapp.model.part_json import screening_key
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
@@ -73,7 +73,7 @@ class MainWindow(QMainWindow):
         self.readings = Readings(self.document)
         self.sheet = Sheet(self.document)
         self.files.take_typing = self.sheet.take_typing
-        self._read_last: tuple[Probe, ...] = ()
+        self._read_last: tuple[object, ...] = ()
         self._part_before = (self.document.history, self.document.part.display_units)
         self._panels: dict[str, QDialog] = {}
         self._warmed = False
@@ -280,7 +280,7 @@ class MainWindow(QMainWindow):
             if screening_key(part) == findings.key:
                 self.document.set_findings(findings)  # shown, and marked out of date
             return
-        self._read_last = self.document.part.readings
+        self._read_last = _read_places(self.document.part)
         self.document.set_findings(with_readings(self.document.part, findings))
         self._show_results()
 
@@ -302,8 +302,8 @@ class MainWindow(QMainWindow):
         document, findings = self.document, self.document.findings
         if findings is None or not document.current or not findings.fields:
             return
-        if self._read_last != document.part.readings:
-            self._read_last = document.part.readings
+        if self._read_last != _read_places(document.part):
+            self._read_last = _read_places(document.part)
             document.set_findings(with_readings(document.part, findings))
 
     # --- saying ---------------------------------------------------------------------------------
@@ -326,7 +326,7 @@ class MainWindow(QMainWindow):
         if self.screener.busy:
             self.screener.cancel()
         self.painter.show_pass(None)
-        self._read_last = self.document.part.readings
+        self._read_last = _read_places(self.document.part)
         self.sheet.head.notice.hide()
         self.sheet.foot.end("")
         self.sheet.scroll_area.verticalScrollBar().setValue(0)
@@ -394,6 +394,11 @@ def _dropped(event: QDropEvent) -> Path | None:
         return None
     path = Path(urls[0].toLocalFile())
     return path if path.suffix.lower() in (".json", DRAWING_SUFFIX) else None
+
+
+def _read_places(part: Part) -> tuple[object, ...]:
+    """Everything that is read off the findings."""
+    return (*part.readings, *part.cuts)
 
 
 def _judges_stress(part: Part) -> bool:

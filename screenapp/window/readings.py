@@ -7,7 +7,8 @@ from PySide6.QtGui import QContextMenuEvent, QKeyEvent, QKeySequence
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QMenu, QStackedLayout, QToolButton, QWidget
 
 from screenapp.model.combinations import loadings
-from screenapp.model.edits import rename_probe
+from screenapp.model.cut_figure import cut_figure
+from screenapp.model.edits import rename_cut, rename_probe
 from screenapp.model.errors import ScreenappError
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import Estimate, Reading
@@ -83,12 +84,20 @@ class _Table(FigureTable):
         self.line_picked.connect(self._trace)
 
     def _rename(self, probe: str, name: str) -> None:
-        self.document.apply("rename a reading", rename_probe(self.document.part, probe, name))
+        part = self.document.part
+        renamed = rename_cut if any(cut.id == probe for cut in part.cuts) else rename_probe
+        self.document.apply("rename a reading", renamed(part, probe, name))
 
     def _trace(self, row: int) -> None:
         cases = loadings(self.document.part)
-        if cases:  # every probe has one line for each case
-            self.document.trace(Traced(cases[row % len(cases)].id, self.line_at(row).id))
+        if not cases:
+            return
+        number, id_ = row % len(cases), self.line_at(row).id  # each has a line for every case
+        if any(cut.id == id_ for cut in self.document.part.cuts):
+            self.document.look(case=number)
+            self.document.select(id_)
+        else:
+            self.document.trace(Traced(cases[number].id, id_))
 
     def _refused(self, error: ScreenappError) -> None:
         self.document.said.emit(sentence_of(error))
@@ -161,7 +170,28 @@ def _lines(document: Document) -> tuple[Line, ...]:
             why = reading.why if reading else "Not read yet: screen the part"
             tip = "\n".join(filter(None, (place, f"at {at} {length}", why)))
             lines.append(Line(probe.id, texts, tip))
+    lines += _cut_lines(document, cases)
     return tuple(lines)
+
+
+def _cut_lines(document: Document, cases: list[tuple[str, str]]) -> list[Line]:
+    """A line for each cut under each case: its largest stress; the sheet has the rest."""
+    part = document.part
+    read = document.findings.cuts if document.findings is not None else ()
+    found = {(c.cut, c.case, c.start, c.end): c for c in read}
+    lines = []
+    for cut in part.cuts:
+        for id_, case_name in cases:
+            here = found.get((cut.id, id_, cut.start, cut.end))
+            if here is None:
+                texts = (cut.name, case_name, "cut", *(DASH,) * 5)
+                tip = "Not read yet: screen the part, or draw the cut across it"
+            else:
+                largest = value_text(here.largest, "stress", part.display_units, unit=False)
+                texts = (cut.name, case_name, "cut", largest, *(DASH,) * 3, here.trust)
+                tip = cut_figure(here, part.display_units).words
+            lines.append(Line(cut.id, texts, tip))
+    return lines
 
 
 def _figures(part: Part, reading: Reading | None) -> tuple[str, ...]:

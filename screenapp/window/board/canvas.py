@@ -13,6 +13,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.part import Part, Point
 from screenapp.window import theme
 from screenapp.window.board.context import ContextMenu
+from screenapp.window.board.cut_item import CutsItem
 from screenapp.window.board.dimensions import Dimensions
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
 from screenapp.window.board.grid import GridItem, ScaleBarItem
@@ -74,6 +75,7 @@ class Canvas(ZoomView):
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
         self.zone_fill, self.zone_lines = ZoneFillItem(paths), ZoneLineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
+        self.cuts = CutsItem()
         self.dimensions = Dimensions(self)
         self.labels = LabelsItem(self)
         self.preview_item = PreviewItem(self)
@@ -85,6 +87,7 @@ class Canvas(ZoomView):
             self.outline,
             self.dimensions.item,
             self.symbols,
+            self.cuts,
             self.probes,
             self.labels,
             self.marked,
@@ -132,6 +135,7 @@ class Canvas(ZoomView):
         self.zone_lines.labels = self.document.view.lens == "Shape"
         self.zone_lines.show_part(drawn)
         self.symbols.show_part(drawn, self.document.view.case)
+        self.cuts.show_part(drawn)
         self.probes.show_part(drawn)
         self.labels.update()
         self.show_marked()
@@ -152,7 +156,7 @@ class Canvas(ZoomView):
     def show_lit(self) -> None:
         """Light what is selected and hovered."""
         self.dimensions.refresh()
-        for item in (self.outline, self.zone_lines, self.symbols, self.probes):
+        for item in (self.outline, self.zone_lines, self.symbols, self.cuts, self.probes):
             item.selected, item.hovered = self.document.selection, self.document.hovered
             item.update()
         self.labels.update()

@@ -148,6 +148,9 @@ class DrawnPart:
             return hole_centre(self.zones[feature].form)
         if feature in self.probes:
             return self.probes[feature].at
+        for cut in self.part.cuts:
+            if cut.id == feature:
+                return cut.start
         if pieces := self.pieces_of(feature):
             x, y = pieces[len(pieces) // 2].curve.point(0.5)
             return float(x), float(y)

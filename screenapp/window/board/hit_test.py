@@ -9,10 +9,22 @@ from typing import Literal, Protocol
 from PySide6.QtCore import QPointF
 
 from screenapp.model.part import Point
+from screenapp.window.board.cut_item import nearest_cut
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 
-HitKind = Literal["corner", "edge", "fillet", "chamfer", "hole", "zone", "support", "load", "probe"]
+HitKind = Literal[
+    "corner",
+    "edge",
+    "fillet",
+    "chamfer",
+    "hole",
+    "zone",
+    "support",
+    "load",
+    "probe",
+    "cut",
+]
 
 POINT_PX, LINE_PX = 9.0, 7.0
 """How near the cursor must be to a point and to a line [px]."""
@@ -56,7 +68,7 @@ def hit_test(
     near = math.inf if piece is None else math.dist(piece.at, at) * frame.scale
     if symbols is not None and (symbol := symbols.nearest(px, frame, min(near, LINE_PX - 2.0))):
         return Hit(*symbol, at)
-    line = piece or _zone_line(drawn, frame, at)
+    line = piece or _zone_line(drawn, frame, at) or _cut_at(drawn, frame, at)
     return line or _hole_around(drawn, at) or zone_around(drawn, at)
 
 
@@ -66,6 +78,11 @@ def nearest_piece(drawn: DrawnPart, at: Point, reach: float) -> Hit | None:
     if foot is None or foot.far > reach:
         return None
     return Hit(foot.piece.kind, foot.piece.feature, foot.at)
+
+
+def _cut_at(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
+    found = nearest_cut(drawn.part, at, LINE_PX / frame.scale)
+    return None if found is None else Hit("cut", found[0].id, found[1])
 
 
 def _nearest_probe(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:

@@ -6,11 +6,13 @@ import math
 
 from screenapp.model.allowables import allowables
 from screenapp.model.combinations import loadings
+from screenapp.model.cut_figure import cut_figure
 from screenapp.model.estimate_text import estimate_text, plain, value_text
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
 from screenapp.model.place_words import NAUGHT
+from screenapp.window.cut_plot import CutPlot
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.history_plot import HistoryPlot
 from screenapp.window.sheet.direction import direction_text
@@ -41,12 +43,15 @@ class FindingsParagraph(Paragraph):
         self.body.addWidget(self.table)
         self.history = HistoryPlot(self)
         self.body.addWidget(self.history)
+        self.cut = CutPlot(self)
+        self.body.addWidget(self.cut)
         self._peaks: list[tuple[CaseFindings, Peak]] = []
         self.table.line_picked.connect(self._trace)
         self.why = self.rows(0)
         self.cases = self.rows(0)
         self.reactions = self.rows(92)
         self.document.view_changed.connect(self.refresh)
+        self.document.selection_changed.connect(self._show_cut)
         self.document.traced_changed.connect(self._show_history)
 
     def fill(self) -> tuple[Piece | str, ...]:
@@ -59,6 +64,7 @@ class FindingsParagraph(Paragraph):
             _columns(part), tuple(_line(part, c, p) for c, p in peaks), self.outdated()
         )
         self._show_history()
+        self._show_cut()
         self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks, findings))])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
@@ -84,6 +90,23 @@ class FindingsParagraph(Paragraph):
         names = {case.id: case.name for case in loadings(document.part)}
         case = names.get(traced.case, "") if traced is not None and len(names) > 1 else ""
         self.history.show_figure(figure_of(number, document.part.display_units), case)
+
+    def _show_cut(self) -> None:
+        """The selected cut, or the first one, under the case that is viewed."""
+        document = self.document
+        findings = document.findings
+        cases = loadings(document.part)
+        viewed = cases[document.view.case].id if document.view.case < len(cases) else ""
+        present = {cut.id: (cut.start, cut.end) for cut in document.part.cuts}
+        read = [
+            cut
+            for cut in (findings.cuts if findings is not None else ())
+            if cut.case == viewed and present.get(cut.cut) == (cut.start, cut.end)
+        ]
+        chosen = [cut for cut in read if cut.cut in document.selection] or read
+        figure = cut_figure(chosen[0], document.part.display_units) if chosen else None
+        names = {case.id: case.name for case in cases} if len(cases) > 1 else {}
+        self.cut.show_figure(figure, names.get(viewed, ""))
 
     def _case_row(self, case: CaseFindings) -> RowOf:
         units = self.document.part.display_units

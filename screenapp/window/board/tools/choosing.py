@@ -11,7 +11,7 @@ from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.hit_test import Hit
 
-KINDS = ("corner", "edge", "hole", "zone", "support", "load", "probe")
+KINDS = ("corner", "edge", "hole", "zone", "support", "load", "probe", "cut")
 
 
 def in_box(drawn: DrawnPart, frame: Frame, box: QRectF) -> list[str]:

@@ -107,6 +107,9 @@ def grip_of(drawn: DrawnPart, id_: str) -> Point | None:
         return edits.hole_centre(drawn.zones[id_].form)
     if id_ in drawn.probes:
         return drawn.probes[id_].at
+    for cut in drawn.part.cuts:
+        if cut.id == id_:
+            return cut.start
     for _, _, loop in loops_of(drawn.part):
         for corner, edge in zip(loop.corners, loop.edges, strict=False):
             if edge.id == id_:

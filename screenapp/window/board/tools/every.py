@@ -10,6 +10,7 @@ from screenapp.window.board.tools.centre_arc import CentreArcTool
 from screenapp.window.board.tools.chain import Draft, LinesTool
 from screenapp.window.board.tools.chamfer import ChamferTool
 from screenapp.window.board.tools.circle import CircleTool
+from screenapp.window.board.tools.cut import CutTool
 from screenapp.window.board.tools.fillet import FilletTool
 from screenapp.window.board.tools.measure import MeasureTool
 from screenapp.window.board.tools.mirror import MirrorTool
@@ -52,5 +53,6 @@ def every_tool(canvas: Canvas) -> tuple[Tool, ...]:
         HoldTool(canvas),
         LoadTool(canvas),
         ProbeTool(canvas),
+        CutTool(canvas),
         MeasureTool(canvas),
     )
