@@ -6,7 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 import pytest
-from PySide6.QtCore import Qt
+from PySide6.QtCore import QPoint, Qt
 from PySide6.QtGui import QColor
 from pytestqt.qtbot import QtBot
 
@@ -200,3 +200,31 @@ def test_another_material_for_the_wall_leaves_that_of_a_zone(qtbot: QtBot) -> No
     changes.MaterialChange(document, "Steel").rename("Mild steel")
     assert document.part.zones[0].material == "Mild steel"
     assert document.part.wall.material == "Brass"
+
+
+def test_the_strip_has_a_button_for_zones(hand: Hand) -> None:
+    button = hand.board.strip.button("Zone")
+    assert button.isVisible()
+    assert "Zone" in button.toolTip()
+
+
+def test_a_double_click_on_its_edge_puts_a_corner_there(hand: Hand) -> None:
+    hand.key(Qt.Key.Key_Z)
+    hand.click(70.0, 10.0)
+    hand.click(90.0, 20.0)
+    hand.click(30.0, 5.0)
+    hand.double(80.0, 10.0)
+    assert len(corners_of(hand.part.zones[0])) == 5
+    assert corners_of(hand.part.zones[0])[1] == pytest.approx((80.0, 10.0), abs=0.3)
+
+
+def test_the_menu_fills_a_hole_and_cuts_a_zone_out(hand: Hand) -> None:
+    menu = hand.canvas.context.actions_for("h1", (50.0, 30.0), QPoint(10, 10))
+    next(a for a in menu.actions() if a.text() == "Fill it with a zone").trigger()
+    assert [z.id for z in hand.part.zones] == ["z1"]
+    menu = hand.canvas.context.actions_for("z1", (50.0, 30.0), QPoint(10, 10))
+    texts_of = [a.text().split("\t")[0] for a in menu.actions()]
+    assert not {"Hold it", "Load it"} & set(texts_of)
+    next(a for a in menu.actions() if a.text() == "Cut it out as a hole").trigger()
+    assert hand.part.zones == ()
+    assert [h.id for h in hand.part.holes] == ["h1"]

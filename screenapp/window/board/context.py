@@ -16,6 +16,7 @@ from screenapp.model.members import patterned, whole_id
 from screenapp.model.part import Corner, Edge, LoopHole, Part, Point
 from screenapp.window.board import clipboard
 from screenapp.window.board.grid import grid_step
+from screenapp.window.board.hit_test import zone_edge
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -68,6 +69,8 @@ class ContextMenu:
             self._edge(menu, found, at)
         elif found.kind == "hole":
             self._hole(menu, found)
+        elif found.kind == "zone":
+            self._zone(menu, found.record.id, at)
         if found.kind in ("edge", "hole", "corner") and not found.inside:
             self._placing(menu, found, px)
         self._always(menu, found, px)
@@ -135,10 +138,21 @@ class ContextMenu:
                 ("Repeat it on a bolt circle", "Bolt circle"),
             ):
                 self._tool(menu, text, tool, whole)
+        if not patterned(hole):
+            self._change(menu, "Fill it with a zone", lambda: edits.hole_to_zone(self._part, whole))
         self._tool(menu, "Mirror it", "Mirror", whole)
         document = self._canvas.document
         menu.addAction("Copy\tCtrl+C", lambda: self._with(whole, clipboard.copy, document))
         menu.addAction("Cut\tCtrl+X", lambda: self._with(whole, clipboard.cut, document))
+
+    def _zone(self, menu: QMenu, zone: str, at: Point) -> None:
+        canvas = self._canvas
+        edge = zone_edge(canvas.drawn, canvas.frame_now, at)
+        if edge:
+            self._change(
+                menu, "Put a corner here", lambda: edits.insert_corner(self._part, edge, at)
+            )
+        self._change(menu, "Cut it out as a hole", lambda: edits.zone_to_hole(self._part, zone))
 
     def _placing(self, menu: QMenu, found: Found, px: QPoint) -> None:
         record = found.record

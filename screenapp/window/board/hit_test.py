@@ -110,6 +110,14 @@ def _zone_line(drawn: DrawnPart, frame: Frame, at: Point) -> Hit | None:
     return Hit("zone", drawn.zone_of(foot.piece.feature), foot.at)
 
 
+def zone_edge(drawn: DrawnPart, frame: Frame, at: Point) -> str:
+    """The edge of a zone drawn as a loop that is near a place; "" for none."""
+    foot = drawn.zone_index.nearest(at) if drawn.zone_rings else None
+    if foot is None or foot.far > LINE_PX / frame.scale or foot.piece.kind != "edge":
+        return ""
+    return foot.piece.feature
+
+
 def zone_around(drawn: DrawnPart, at: Point) -> Hit | None:
     """The zone at a place of the wall: the last one that holds it."""
     if drawn.zone_rings and drawn.inside(at):

@@ -15,7 +15,7 @@ from screenapp.window.board import sketch
 from screenapp.window.board.exact import exact_fields, exact_paths, exact_values, with_exact
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import grid_step
-from screenapp.window.board.hit_test import Hit
+from screenapp.window.board.hit_test import Hit, zone_edge
 from screenapp.window.board.naming import described
 from screenapp.window.board.quantity import written
 from screenapp.window.board.tools.base import Place, Tool
@@ -187,6 +187,11 @@ class SelectTool(Tool):
         if hit.kind == "edge":
             at = place.snap.at if place.snap.id == hit.id else hit.at
             self._split(hit.id, at, place.px)
+            return
+        if hit.kind == "zone" and (
+            edge := zone_edge(self.canvas.drawn, self.canvas.frame_now, hit.at)
+        ):
+            self._split(edge, hit.at, place.px)
             return
         id_ = meant(hit, self.canvas.document.selection)
         self.canvas.document.select(id_)

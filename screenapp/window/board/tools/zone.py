@@ -26,6 +26,7 @@ class ZoneTool(RectangleTool):
         "Click two opposite corners of a pad, pocket or rib; it may reach over the edge."
     )
     icon: ClassVar[str] = "zone"
+    group: ClassVar[str] = ""
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
