@@ -8,7 +8,7 @@ same id the first one is found.
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from screenapp.model.loop_curves import loop_curves, sharp_places
@@ -201,7 +201,22 @@ def find(part: Part, id_: str) -> Found | None:
 
     The two ends of a chamfer ("c4.1", "c4.2") are found as sharp corners.
     """
-    found = next((found for found in everything(part) if found.record.id == id_), None)
+    for where, owner, loop in loops_of(part):  # thousands of corners: looked through plainly
+        for corner in loop.corners:
+            if corner.id == id_:
+                return Found("corner", corner, owner, f"{where}.corners")
+        for edge in loop.edges:
+            if edge.id == id_:
+                return Found("edge", edge, owner, f"{where}.edges")
+    for hole in part.holes:
+        if hole.id == id_:
+            return Found("hole", hole, "", "holes")
+        if hole.id == whole_id(id_):
+            for member in members(hole):
+                if member.id == id_:
+                    return Found("hole", member, hole.id, "holes")
+    bare = replace(part, outline=None, holes=())
+    found = next((found for found in everything(bare) if found.record.id == id_), None)
     return found if found is not None or "." not in id_ else _chamfer_end(part, id_)
 
 

@@ -13,6 +13,9 @@ from screenapp.model.carriers import circle_circle, line_circle
 from screenapp.model.curves import Arc, Curve, Segment, arc_through
 from screenapp.model.errors import Fault
 from screenapp.model.part import Corner, Loop, Point
+from screenapp.model.recent_loops import Group, RecentLoops
+
+_RECENT = RecentLoops()
 
 Cut = tuple[Curve, float, float]
 """What takes a corner's place, and the parameters at which it meets the edges before and after."""
@@ -32,6 +35,17 @@ def edge_curves(loop: Loop) -> list[Curve]:
 
 def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCurve]:
     """Edges, fillets and chamfers in drawing order; what does not fit is added to `faults`."""
+    found = _RECENT.pieces_of(loop, _by_edge)
+    if found is None:
+        before = len(faults)
+        found = _by_edge(loop, where, faults)
+        if len(faults) == before:
+            _RECENT.keep(loop, found)
+    return [piece for group in found for piece in group]
+
+
+def _by_edge(loop: Loop, where: str, faults: list[Fault]) -> list[Group]:
+    """For each edge the fillet or chamfer of the corner before it, then what is left of it."""
     n = len(loop.corners)
     curves = edge_curves(loop)
     lengths = [curve.length for curve in curves]
@@ -56,8 +70,10 @@ def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCur
         if cut is not None:
             cuts[i], end[i - 1], begin[i] = cut
     _faults_of_used_edges(loop, lengths, begin, end, where, faults)
-    pieces: list[BoundaryCurve] = []
+    groups: list[Group] = []
     for i, edge in enumerate(loop.edges):
+        pieces: Group = []
+        groups.append(pieces)
         if (made := cuts[i]) is not None:
             corner = loop.corners[i]
             kind: Literal["fillet", "chamfer"] = "fillet" if corner.round > 0.0 else "chamfer"
@@ -67,7 +83,7 @@ def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCur
         elif end[i] - begin[i] > 1e-9:  # an edge may vanish between two full rounds
             rest = curves[i].part(begin[i], end[i])
             pieces.append(BoundaryCurve(edge.id, "edge", rest, 0))
-    return pieces
+    return groups
 
 
 def runs_clockwise(loop: Loop) -> bool:

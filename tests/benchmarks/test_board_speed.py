@@ -18,6 +18,7 @@ from PySide6.QtWidgets import QApplication
 from pytest_benchmark.fixture import BenchmarkFixture
 from pytestqt.qtbot import QtBot
 
+from screenapp.model import edits
 from screenapp.model.part import (
     BearingLoad,
     Case,
@@ -31,6 +32,7 @@ from screenapp.model.part import (
     PressureLoad,
     Wall,
 )
+from tests.benchmarks.test_validity_speed import large_part
 from tests.window.board_kit import Hand
 
 N = 60
@@ -131,3 +133,34 @@ def test_drawing_a_chain(hand: Hand, benchmark: BenchmarkFixture) -> None:
     hand.click(0.0, 0.0)
     hand.click(20.0, 0.0)
     benchmark(frames(hand, lambda i: move_to(hand, QPoint(900 + 3 * i % 300, 400 + i % 9))))
+
+
+@pytest.fixture(params=["hole", "corner"])
+def large(qtbot: QtBot, request: pytest.FixtureRequest) -> tuple[Hand, str]:
+    """A part of 2,000 rounded corners and 500 holes, and what of it is dragged."""
+    made = Hand(large_part(0.8))
+    qtbot.addWidget(made.board)
+    made.board.resize(1920, 1080)
+    QApplication.processEvents()
+    made.canvas.fit()
+    QApplication.processEvents()
+    return made, request.param
+
+
+def test_dragging_in_a_large_part(large: tuple[Hand, str], benchmark: BenchmarkFixture) -> None:
+    """The aim is 16 ms a frame with a hole, and with a corner, of a very large part."""
+    hand, what = large
+    hand.canvas.zoom(8.0, QPointF(hand.px(1000.0, 0.0)))
+    QApplication.processEvents()
+    if what == "hole":
+        hole = hand.part.holes[480]
+        assert isinstance(hole, CircleHole)
+        grip = hole.centre
+    else:
+        assert hand.part.outline is not None
+        grip = hand.part.outline.corners[6].at
+        hand.document.apply("sharp", edits.set_round(hand.part, "c6", 0.0))
+    hand.press(*grip)
+    spot = hand.px(*grip)
+    benchmark(frames(hand, lambda i: move_to(hand, spot + QPoint(5 + i % 3, 4 + i % 2))))
+    assert hand.canvas.previewing

@@ -3,17 +3,30 @@ of it as can be drawn."""
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
-from functools import cached_property, lru_cache
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.model.edits import hole_centre
 from screenapp.model.members import all_holes, member_ids
-from screenapp.model.part import Corner, Hole, Loop, LoopHole, Part, Point, Probe, Zone
+from screenapp.model.part import (
+    CircleHole,
+    Corner,
+    Hole,
+    Loop,
+    LoopHole,
+    Part,
+    Point,
+    Probe,
+    SlotHole,
+    Zone,
+)
 from screenapp.model.shape import BoundaryCurve
 from screenapp.window.board.boundary_index import BoundaryIndex
+from screenapp.window.board.identity import kept_by_identity
 from screenapp.window.board.ring import Ring, hole_ring, outline_ring
 
 
@@ -60,6 +73,19 @@ class DrawnPart:
     def cut_holes(self) -> tuple[Hole, ...]:
         """Every hole that is cut, patterns unfolded."""
         return all_holes(self.part)
+
+    @cached_property
+    def crosses(self) -> NDArray[np.float64]:
+        """Centre x, y, half length, half width [mm] and angle [rad] of round holes and slots."""
+        rows = []
+        for hole in self.cut_holes:
+            if isinstance(hole, CircleHole):
+                half = hole.diameter / 2.0
+                rows.append((*hole.centre, half, half, 0.0))
+            elif isinstance(hole, SlotHole):
+                angle = math.radians(hole.angle) if math.isfinite(hole.angle) else 0.0
+                rows.append((*hole.centre, hole.length / 2.0, hole.width / 2.0, angle))
+        return np.array(rows, dtype=float).reshape(-1, 5)
 
     @cached_property
     def zones(self) -> dict[str, Zone]:
@@ -157,22 +183,9 @@ class DrawnPart:
         return None
 
 
-class _ById:
-    """Lets the cache compare parts by identity: comparing whole parts would cost more."""
-
-    def __init__(self, part: Part) -> None:
-        self.part = part
-
-    def __hash__(self) -> int:
-        return id(self.part)
-
-    def __eq__(self, other: object) -> bool:
-        return isinstance(other, _ById) and other.part is self.part
-
-
-@lru_cache(maxsize=4)
-def _drawn(keeper: _ById) -> DrawnPart:
-    part = keeper.part
+@kept_by_identity(4)
+def drawn_part(part: Part) -> DrawnPart:
+    """The boundary to draw, kept for the parts last asked for."""
     holes = all_holes(part)
     rings = [hole_ring(hole) for hole in holes]
     ids: list[str | None] = [hole.id for hole in holes]
@@ -180,11 +193,6 @@ def _drawn(keeper: _ById) -> DrawnPart:
         rings, ids = [outline_ring(part.outline), *rings], [None, *ids]
     zones = tuple(hole_ring(zone.form) for zone in part.zones)
     return DrawnPart(part, tuple(rings), tuple(ids), zones)
-
-
-def drawn_part(part: Part) -> DrawnPart:
-    """The boundary to draw, kept for the parts last asked for."""
-    return _drawn(_ById(part))
 
 
 def loops_of(part: Part) -> list[Loop]:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -22,7 +23,7 @@ class Frame:
 
     transform: QTransform
 
-    @property
+    @cached_property
     def scale(self) -> float:
         """Pixels for each millimetre."""
         t = self.transform

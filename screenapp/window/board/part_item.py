@@ -4,14 +4,14 @@ from __future__ import annotations
 
 import math
 
-from PySide6.QtCore import QPointF, QRectF, Qt
+import numpy as np
+from PySide6.QtCore import QLineF, QPointF, QRect, QRectF, Qt
 from PySide6.QtGui import QColor, QPainter, QPainterPath, QPen, QPolygonF
 
-from screenapp.model.part import CircleHole, Point, SlotHole
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
-from screenapp.window.board.frame import Frame, polygon
-from screenapp.window.board.ring import flatten
+from screenapp.window.board.frame import Floats, Frame, polygon
+from screenapp.window.board.ring import Ring, flatten
 from screenapp.window.board.screen_item import Z_FILL, Z_OUTLINE, ScreenItem
 
 SAGITTA_PX = 0.15
@@ -19,6 +19,9 @@ SAGITTA_PX = 0.15
 
 FARTHEST_PAN = 2000.0
 """Lines are worked out afresh after a pan of this length [px]."""
+
+FARTHEST_SEEN = 8000.0
+"""Rings wholly farther out than this [px] are not drawn: no view and pan reaches them."""
 
 
 def mixed(a: str, b: str, share: float) -> QColor:
@@ -35,6 +38,8 @@ class PartPaths:
     def __init__(self) -> None:
         self._for: tuple[DrawnPart, Frame] | None = None
         self._features: dict[str, list[QPolygonF]] = {}
+        self._frame: Frame | None = None
+        self._kept: dict[int, tuple[Ring, QPolygonF | None]] = {}
         self.rings: list[QPolygonF] = []
         self.whole = QPainterPath()
 
@@ -45,16 +50,20 @@ class PartPaths:
             self._for = had = drawn, frame
             tolerance = 2.0 ** math.floor(math.log2(SAGITTA_PX / frame.scale))  # kept over zooms
             self._features = {}
+            if self._frame is None or not self._frame.same_as(frame):
+                self._frame, self._kept = frame, {}
+            kept: dict[int, tuple[Ring, QPolygonF | None]] = {}
             self.rings = []
             self.whole = QPainterPath()
             self.whole.setFillRule(Qt.FillRule.OddEvenFill)
-            for loop in range(len(drawn.loops)):
-                points = drawn.polyline(loop, tolerance)
-                if len(points):
-                    ring = polygon(frame.pxs(points))
-                    self.rings.append(ring)
-                    self.whole.addPolygon(ring)
+            for ring in drawn.loops:  # in a drag all rings but one stay as they are
+                one = self._kept.get(id(ring)) or (ring, _seen(ring, frame, tolerance))
+                kept[id(ring)] = one
+                if one[1] is not None:
+                    self.rings.append(one[1])
+                    self.whole.addPolygon(one[1])
                     self.whole.closeSubpath()
+            self._kept = kept
         return had[1].shift_to(frame)
 
     def feature(self, id_: str) -> list[QPolygonF]:
@@ -120,8 +129,10 @@ class OutlineItem(ScreenItem):
         painter.setBrush(Qt.BrushStyle.NoBrush)
         painter.setPen(_pen(ink, width))
         painter.translate(shift)
+        view = QRectF(painter.viewport()).translated(-shift).adjusted(-4.0, -4.0, 4.0, 4.0)
         for ring in self._paths.rings:  # one by one: a path of many rings is slow to stroke
-            painter.drawPolygon(ring)
+            if ring.boundingRect().intersects(view):
+                painter.drawPolygon(ring)
         painter.translate(-shift)
         if not self.faint:
             self._draw_centre_lines(painter, frame)
@@ -157,30 +168,46 @@ class OutlineItem(ScreenItem):
         pen = QPen(colour, 1.0)
         pen.setDashPattern([12.0, 3.0, 2.0, 3.0])
         painter.setPen(pen)
-        for hole in self.drawn.cut_holes:
-            if isinstance(hole, CircleHole):
-                half = hole.diameter / 2.0
-                _cross(painter, frame, hole.centre, half, half, 0.0)
-            elif isinstance(hole, SlotHole):
-                _cross(painter, frame, hole.centre, hole.length / 2.0, hole.width / 2.0, hole.angle)
+        painter.drawLines(_crosses(self.drawn.crosses, frame, painter.viewport()))
 
 
-def _cross(
-    painter: QPainter, frame: Frame, centre: Point, along: float, across: float, angle: float
-) -> None:
-    """Two centre lines that stand out of the hole by a third, at least 5 px."""
-    if not all(math.isfinite(v) for v in (*centre, along, across)):
-        return
-    if min(along, across) * frame.scale < 3.0:
-        return
-    middle = frame.px(centre)
-    c, s = math.cos(math.radians(angle)), math.sin(math.radians(angle))
-    for half, (dx, dy) in ((along, (c, -s)), (across, (-s, -c))):
-        reach = half * frame.scale + max(5.0, min(12.0, half * frame.scale / 3.0))
-        step = QPointF(dx * reach, dy * reach)
-        # from the middle outwards, so that both dashes cross there
-        painter.drawLine(middle, middle + step)
-        painter.drawLine(middle, middle - step)
+def _seen(ring: Ring, frame: Frame, tolerance: float) -> QPolygonF | None:
+    """A ring in pixels; None if it is empty, or too far away to come into view by a pan."""
+    box = ring.box
+    if box is not None:
+        far = np.abs(frame.pxs([(box[0], box[1]), (box[2], box[3])]))
+        outside = np.sign(frame.pxs([(box[0], box[1]), (box[2], box[3])]))
+        if np.any((far.min(axis=0) > FARTHEST_SEEN) & (outside[0] == outside[1])):
+            return None
+    points = ring.polyline(tolerance)
+    return polygon(frame.pxs(points)) if len(points) else None
+
+
+def _crosses(rows: Floats, frame: Frame, view: QRect) -> list[QLineF]:
+    """Two centre lines for each hole that stand out of it by a third, at least 5 px.
+
+    Holes out of view, or so small that the lines would fill them, have none.
+    """
+    rows = rows[np.isfinite(rows).all(axis=1)]
+    if not len(rows):
+        return []
+    middle = frame.pxs(rows[:, :2])
+    halves = rows[:, 2:4] * frame.scale
+    reach = halves + np.clip(halves / 3.0, 5.0, 12.0)
+    far = reach.max(axis=1)
+    seen = halves.min(axis=1) >= 3.0
+    for axis, (low, high) in enumerate(((view.left(), view.right()), (view.top(), view.bottom()))):
+        seen &= (middle[:, axis] + far >= low) & (middle[:, axis] - far <= high)
+    lines: list[QLineF] = []
+    for (x, y), (along, across), angle in zip(
+        middle[seen].tolist(), reach[seen].tolist(), rows[seen, 4].tolist(), strict=True
+    ):
+        c, s = math.cos(angle), math.sin(angle)
+        for far_out, dx, dy in ((along, c, -s), (across, -s, -c)):
+            # from the middle outwards, so that both dashes cross there
+            lines.append(QLineF(x, y, x + far_out * dx, y + far_out * dy))
+            lines.append(QLineF(x, y, x - far_out * dx, y - far_out * dy))
+    return lines
 
 
 def _pen(colour: QColor, width: float) -> QPen:

@@ -14,6 +14,7 @@ from screenapp.model.errors import InvalidPartError
 from screenapp.model.part import Corner, Edge, Hole, Loop, LoopHole, Part, Point
 from screenapp.model.shape import BoundaryCurve, edge_curves, shape_of
 from screenapp.window.board.boundary_index import BoundaryIndex
+from screenapp.window.board.identity import kept_by_identity
 
 Floats = NDArray[np.float64]
 
@@ -47,18 +48,37 @@ class Ring:
         """Smallest x, y and largest x, y [mm]; None if the ring is empty."""
         if not self.pieces:
             return None
-        points = np.concatenate([flatten(p.curve, 0.01 * p.curve.length) for p in self.pieces])
+        points = self._flattened(0.01 * self.table.lengths)
         if not np.isfinite(points).all():
             return None
         (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
         return float(x0), float(y0), float(x1), float(y1)
 
     @cached_property
+    def table(self) -> CurveTable:
+        """The pieces as arrays."""
+        return CurveTable.of(tuple(self.pieces))
+
+    def _flattened(self, tolerances: Floats) -> Floats:
+        """All pieces as `flatten` gives them, each to its own sagitta [mm]."""
+        if not self.pieces:
+            return np.empty((0, 2))
+        table = self.table
+        ratio = np.clip(1.0 - tolerances / table.radius, -1.0, 1.0)
+        step = np.maximum(2.0 * np.arccos(ratio), 1e-4)
+        parts = np.clip(np.ceil(np.abs(table.sweep) / step), 4, 2000)
+        counts = np.where(table.arc, parts, 1.0).astype(int) + 1
+        which = np.repeat(np.arange(len(counts)), counts)
+        first = np.repeat(np.cumsum(counts) - counts, counts)
+        t = (np.arange(len(which)) - first) / (counts[which] - 1)
+        return table.points(which, t)
+
+    @cached_property
     def exact_box(self) -> tuple[float, float, float, float] | None:
         """As `box`, to the last figure."""
         if not self.pieces:
             return None
-        boxes = CurveTable.of(tuple(self.pieces)).boxes
+        boxes = self.table.boxes
         if not np.isfinite(boxes).all():
             return None
         (x0, y0), (x1, y1) = boxes[:, :2].min(axis=0), boxes[:, 2:].max(axis=0)
@@ -72,8 +92,7 @@ class Ring:
         if tolerance not in self._lines:
             if len(self._lines) > 4:
                 self._lines.clear()
-            parts = [flatten(p.curve, tolerance) for p in self.pieces]
-            self._lines[tolerance] = np.concatenate(parts) if parts else np.empty((0, 2))
+            self._lines[tolerance] = self._flattened(np.full(len(self.pieces), tolerance))
         return self._lines[tolerance]
 
     def inside(self, at: Point) -> bool:
@@ -89,7 +108,7 @@ class Ring:
         return point_in_ring(at, self.polyline(FINE * size))
 
 
-@lru_cache(maxsize=1024)
+@kept_by_identity(64)
 def outline_ring(outline: Loop) -> Ring:
     """The ring of an outline; if its rounds do not fit, without them."""
     try:

@@ -3,16 +3,17 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable
 from functools import lru_cache
 
 import numpy as np
 
-from screenapp.model.curves import Arc
+from screenapp.model.curves import Arc, Segment
 from screenapp.model.part import DisplayUnits, Hole, Loop, LoopHole, Point, SlotHole
-from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.drawn_part import DrawnPart, loops_of
 from screenapp.window.board.frame import Floats, Frame
 from screenapp.window.board.grid import grid_step
+from screenapp.window.board.identity import kept_by_identity
 from screenapp.window.board.ring import Ring
 from screenapp.window.board.snap_lines import from_origin, level, level_on_edge, meetings
 from screenapp.window.board.snap_record import Snap, SnapKind
@@ -102,45 +103,72 @@ def snap_to_grid(frame: Frame, at: Point, units: DisplayUnits) -> Snap:
 @lru_cache(maxsize=4)
 def anchor_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
     """The corners and centres among the points of a part, and the same as places (n, 2) [mm]."""
-    points, places = snap_points(drawn)
-    keep = [i for i, point in enumerate(points) if point.kind != "middle"]
-    return tuple(points[i] for i in keep), places[keep]
+    return _joined(
+        [
+            *(_corners_of(loop) for loop in loops_of(drawn.part)),
+            *(_centres_of(hole) for hole in drawn.cut_holes),
+            *(_points_of(ring)[0] for ring in drawn.loops),
+        ]
+    )
 
 
 @lru_cache(maxsize=4)
 def snap_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
     """Corners, centres and middles of a part, and the same as places (n, 2) [mm]."""
-    points = [Snap("corner", corner.at, corner.id) for corner in drawn.corners.values()]
-    for hole in drawn.cut_holes:
-        points += [Snap("centre", at, hole.id) for at in _centres_of(hole)]
-    for ring in drawn.loops:
-        points += _points_of(ring)
+    return _joined([anchor_points(drawn), *(_points_of(ring)[1] for ring in drawn.loops)])
+
+
+Points = tuple[tuple[Snap, ...], Floats]
+"""Places to snap to, also as an array (n, 2) [mm]."""
+
+
+def _joined(groups: list[Points]) -> Points:
+    filled = [group for group in groups if group[0]]
+    points = tuple(point for group in filled for point in group[0])
+    places = [group[1] for group in filled]
+    return points, np.concatenate(places) if places else np.empty((0, 2))
+
+
+def _group(points: list[Snap]) -> Points:
     return tuple(points), np.array([p.at for p in points], dtype=float).reshape(-1, 2)
 
 
-def _centres_of(hole: Hole) -> Iterator[Point]:
+@kept_by_identity(64)
+def _corners_of(loop: Loop) -> Points:
+    return _group([Snap("corner", corner.at, corner.id) for corner in loop.corners])
+
+
+@kept_by_identity(8192)
+def _centres_of(hole: Hole) -> Points:
+    """The centre of a round hole; of a slot those of its ends too."""
     if isinstance(hole, LoopHole):
-        return
-    yield hole.centre
+        return _group([])
+    places = [hole.centre]
     if isinstance(hole, SlotHole):
         half = (hole.length - hole.width) / 2.0
         c, s = math.cos(math.radians(hole.angle)), math.sin(math.radians(hole.angle))
         for sign in (-1.0, 1.0):
-            yield hole.centre[0] + sign * half * c, hole.centre[1] + sign * half * s
+            places.append((hole.centre[0] + sign * half * c, hole.centre[1] + sign * half * s))
+    return _group([Snap("centre", at, hole.id) for at in places])
 
 
-@lru_cache(maxsize=1024)
-def _points_of(ring: Ring) -> list[Snap]:
-    """Middles of a ring's edges and centres of its arcs."""
-    points: list[Snap] = []
+@kept_by_identity(8192)
+def _points_of(ring: Ring) -> tuple[Points, Points]:
+    """Centres of a ring's arcs, and middles of its edges."""
+    centres: list[Snap] = []
+    middles: list[Snap] = []
     for piece in ring.pieces:
-        if piece.kind == "edge":
+        if piece.kind == "edge" and isinstance(piece.curve, Segment):
+            (ax, ay), (bx, by) = piece.curve.start, piece.curve.end
+            middle = (ax + bx) / 2.0, (ay + by) / 2.0
+            middles.append(Snap("middle", middle, piece.feature, math.atan2(by - ay, bx - ax)))
+        elif piece.kind == "edge":
             x, y = piece.curve.point(0.5)
             dx, dy = piece.curve.tangent(0.5)
-            points.append(Snap("middle", (float(x), float(y)), piece.feature, math.atan2(dy, dx)))
+            middles.append(Snap("middle", (float(x), float(y)), piece.feature, math.atan2(dy, dx)))
         if piece.kind != "hole" and isinstance(piece.curve, Arc):
-            points.append(Snap("centre", piece.curve.centre, piece.feature))
-    return points
+            centres.append(Snap("centre", piece.curve.centre, piece.feature))
+    return _group(centres), _group(middles)
 
 
 def neighbours(loop: Loop, corner: str) -> frozenset[str]:
