@@ -200,7 +200,7 @@ def _places(part: Part) -> set[str]:
     ids = {h.id for h in (*part.holes, *all_holes(part))}
     for where, _, loop in loops_of(part):
         if not where.startswith("zones"):
-            ids |= {c.id for c in loop.corners if c.sharp} | {e.id for e in loop.edges}
+            ids |= {c.id for c in loop.corners} | {e.id for e in loop.edges}
     return ids
 
 

@@ -196,6 +196,14 @@ def test_a_pattern_that_is_cut_into_is_broken_up() -> None:
     assert [h.id for h in gone.holes] == ["h1", "h2", "h3"]
 
 
+def test_a_support_on_a_corner_rounded_since_goes_with_it() -> None:
+    """Found by the state machine: the corner was no place any more, but the support was there."""
+    part = edits.set_round(edits.add_support(BARE, FixedSupport("", "c2")), "c2", 4.0)
+    made = edits.cut(part, box(80.0, -10.0, 120.0, 20.0))
+    assert made.lost == ("support s2 on c2",)
+    assert [s.on for s in made.part.supports] == ["e4"]
+
+
 def test_what_makes_no_part_is_refused() -> None:
     with pytest.raises(edits.EditError, match="fall into 2 pieces"):
         edits.cut(BARE, box(20.0, -10.0, 30.0, 60.0))

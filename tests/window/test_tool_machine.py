@@ -7,6 +7,7 @@ from __future__ import annotations
 
 import os
 
+import pytest
 from hypothesis import HealthCheck, settings
 from hypothesis import strategies as st
 from hypothesis.stateful import RuleBasedStateMachine, initialize, invariant, rule
@@ -173,6 +174,7 @@ class Drawing(RuleBasedStateMachine):
         QApplication.processEvents()
 
 
+@pytest.mark.timeout(max(300, STEPS // 4))
 def test_random_gestures_never_break_a_record(qtbot: QtBot) -> None:
     Drawing.changes = Drawing.gestures = 0
     with qtbot.captureExceptions() as exceptions:
