@@ -112,6 +112,7 @@ def _ligament_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[
             ligament.between,
             ligament.at,
             blocks=False,
+            span=ligament.ends,
         )
 
 
@@ -134,6 +135,7 @@ def _piece_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
             (piece.feature,),
             (float(x), float(y)),
             blocks=False,
+            span=(piece.curve.start, piece.curve.end),
         )
 
 

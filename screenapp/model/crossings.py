@@ -65,6 +65,7 @@ def _short_pieces(shape: Shape, table: CurveTable, touch: float) -> list[Fault]:
                 _field(shape, piece),
                 (piece.feature,),
                 (float(x), float(y)),
+                span=(piece.curve.start, piece.curve.end),
             )
         )
     return faults

@@ -23,6 +23,8 @@ class Fault:
         at: a point [mm] to mark, or None.
         blocks: True if the part cannot be screened with it; False for a caution.
         line: line in the part file, where it is known.
+        span: two points [mm] whose distance is what is wrong: across a thin ligament, the ends of
+            a tiny edge; None if it is nothing of that kind.
     """
 
     cause: str
@@ -32,6 +34,7 @@ class Fault:
     at: tuple[float, float] | None = None
     blocks: bool = True
     line: int | None = None
+    span: tuple[tuple[float, float], tuple[float, float]] | None = None
 
     def __str__(self) -> str:
         return f"{self.cause}: {self.mend}"

@@ -57,6 +57,7 @@ class Document(QObject):
         view_changed: another lens, component, case or deformation.
         path_changed: saved, saved as, opened; also when "unsaved" turns.
         said: a sentence for the status line.
+        live_faults_changed: other faults of a change under way.
     """
 
     part_changed = Signal()
@@ -67,6 +68,7 @@ class Document(QObject):
     view_changed = Signal()
     path_changed = Signal()
     said = Signal(str)
+    live_faults_changed = Signal()
 
     def __init__(self, part: Part | None = None, parent: QObject | None = None) -> None:
         super().__init__(parent)
@@ -77,6 +79,7 @@ class Document(QObject):
         self.hovered: str | None = None
         self.traced: Traced | None = None
         self.view = View()
+        self.live_faults: tuple[Fault, ...] = ()
         self._saved = self.history.part
         self._key_of: tuple[Part, str] | None = None
         self._faults_of: tuple[Part, tuple[Fault, ...]] | None = None
@@ -187,6 +190,12 @@ class Document(QObject):
             if traced is not None and traced.case in cases:
                 self.look(case=cases.index(traced.case))
             self.traced_changed.emit()
+
+    def tell_live_faults(self, faults: tuple[Fault, ...]) -> None:
+        """What is wrong with a change that is under way on the board; nothing once it is made."""
+        if faults != self.live_faults:
+            self.live_faults = faults
+            self.live_faults_changed.emit()
 
     def hover(self, id_: str | None) -> None:
         """Light one id on the board and in the sheet, or none."""

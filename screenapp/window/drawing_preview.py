@@ -17,11 +17,11 @@ from screenapp.model.part import DisplayUnits, Part, Point
 from screenapp.model.regions import zone_curves
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import drawn_part
+from screenapp.window.board.faults_item import FaultsItem
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.screen_item import Z_MESH, Z_PREVIEW, ScreenItem
-from screenapp.window.board.symbols import FaultsItem
 from screenapp.window.board.zoom_view import ZoomView
 from screenapp.window.many_lines import paint_pieces, straight_pieces
 

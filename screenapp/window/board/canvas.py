@@ -16,16 +16,18 @@ from screenapp.window.board.context import ContextMenu
 from screenapp.window.board.cut_item import CutsItem
 from screenapp.window.board.dimensions import Dimensions
 from screenapp.window.board.drawn_part import DrawnPart, drawn_part
+from screenapp.window.board.faults_item import FaultsItem
 from screenapp.window.board.grid import GridItem, ScaleBarItem
 from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.labels import LabelsItem
+from screenapp.window.board.live_faults import LiveFaults
 from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
 from screenapp.window.board.preview_item import PreviewItem
 from screenapp.window.board.ring_choice import RingChoice
 from screenapp.window.board.snapping import Snap, snap
-from screenapp.window.board.symbols import FaultsItem, ProbesItem, SymbolsItem
+from screenapp.window.board.symbols import ProbesItem, SymbolsItem
 from screenapp.window.board.tools.base import Place, Tool
 from screenapp.window.board.typed_entry import EntryRow
 from screenapp.window.board.zone_items import ZoneFillItem, ZoneLineItem
@@ -99,6 +101,7 @@ class Canvas(ZoomView):
         self.placing = Placing(self)
         self.ring_choice = RingChoice(self)
         self.context = ContextMenu(self)
+        self.live = LiveFaults(self)
         self._right: QPointF | None = None
         self.apply_theme()
 
@@ -144,7 +147,14 @@ class Canvas(ZoomView):
 
     def show_marked(self) -> None:
         """Ring what is wrong."""
-        self.marked.show_faults(self.drawn, () if self.previewing else self._marked_faults())
+        if not self.previewing:  # else the marks of the look before stay until the next one
+            self.marked.show_faults(self.drawn, self._marked_faults())
+        self.live.poke()
+
+    def show_live(self, faults: tuple[Fault, ...]) -> None:
+        """Ring what is wrong with a change under way; without faults what is wrong anyway."""
+        shown = faults if faults or self.previewing else self._marked_faults()
+        self.marked.show_faults(self.drawn, shown, live=bool(faults))
 
     def _marked_faults(self) -> tuple[Fault, ...]:
         """The faults to be ringed: cautions are left out where a lens tells what is doubtful."""
@@ -195,6 +205,7 @@ class Canvas(ZoomView):
     def refresh(self) -> None:
         """Repaint the preview and bring the cursor, the entry row and the corner up to date."""
         self.preview_item.update()
+        self.live.poke()
         if self.tool is not None and not self.panning:
             number = self._last_px is not None and self.dimensions.at(self._last_px) is not None
             beam = Qt.CursorShape.IBeamCursor

@@ -1,4 +1,4 @@
-"""Supports, loads, probes and faults on the board, at constant screen size."""
+"""Supports, loads and probes on the board, at constant screen size."""
 
 from __future__ import annotations
 
@@ -9,7 +9,6 @@ from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.combinations import loadings
-from screenapp.model.errors import Fault
 from screenapp.model.part import BearingLoad, ForceLoad, GravityLoad, Load, Support
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
@@ -142,49 +141,6 @@ class ProbesItem(ScreenItem):
             painter.setBrush(colour)
             painter.setPen(Qt.PenStyle.NoPen)
             painter.drawEllipse(p, 1.4, 1.4)
-
-
-class FaultsItem(ScreenItem):
-    """A ring round every place where something is wrong; the sentence comes on hover."""
-
-    RADIUS = 13.0
-
-    def __init__(self) -> None:
-        super().__init__(Z_PROBES + 2)
-        self.spots: list[tuple[tuple[float, float], Fault]] = []
-
-    def show_faults(self, drawn: DrawnPart, faults: tuple[Fault, ...]) -> None:
-        """Mark these faults from now on."""
-        self.spots = []
-        for fault in faults:
-            if fault.at is not None:
-                self.spots.append((fault.at, fault))
-                continue
-            for id_ in fault.ids:
-                if (at := drawn.anchor_of(id_)) is not None:
-                    self.spots.append((at, fault))
-                    break
-        self.update()
-
-    def at(self, px: QPointF, frame: Frame) -> list[Fault]:
-        """The faults whose ring is under the cursor."""
-        return [
-            fault
-            for at, fault in self.spots
-            if np.hypot(*(frame.pxs(at) - (px.x(), px.y()))) <= self.RADIUS + 2.0
-        ]
-
-    def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Paint the rings: whole for what stops a screening, dashed for a caution."""
-        palette = theme.current()
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        painter.setBrush(Qt.BrushStyle.NoBrush)
-        for at, fault in self.spots:
-            pen = QPen(QColor(palette.bad if fault.blocks else palette.doubt), 2.0)
-            if not fault.blocks:
-                pen.setDashPattern([3.0, 2.5])
-            painter.setPen(pen)
-            painter.drawEllipse(frame.px(at), self.RADIUS, self.RADIUS)
 
 
 def _paint(painter: QPainter, mark: Mark, colour: QColor, width: float) -> None:

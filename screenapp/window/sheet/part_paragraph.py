@@ -22,6 +22,9 @@ from screenapp.window.sheet.rows import RowOf
 UNITS = {"mm-N-MPa": "mm, N, MPa", "in-lbf-ksi": "in, lbf, ksi"}
 SHOWN_HOLES = 12
 
+MOST_LIVE = 3
+"""Sentences about a change under way."""
+
 
 class PartParagraph(Paragraph):
     """Outline and holes."""
@@ -33,6 +36,7 @@ class PartParagraph(Paragraph):
     def build(self) -> None:
         """A summary, the holes, and what is selected."""
         self.summary = self.sentence()
+        self.live = self.rows(0)
         self.holes = self.rows(64)
         self.more = self.sentence()
         self.picked = self.rows(76)
@@ -42,6 +46,7 @@ class PartParagraph(Paragraph):
         self.body.addWidget(self.notes)
         self._narrowest: tuple[Part, Ligament | None] | None = None
         self.document.selection_changed.connect(self.refresh)
+        self.document.live_faults_changed.connect(self._show_live)
 
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the part."""
@@ -58,6 +63,23 @@ class PartParagraph(Paragraph):
         if part.outline is None:
             return ("Nothing is drawn yet: draw a closed outline on the board.",)
         return ()
+
+    def _show_live(self) -> None:
+        """The sentences of what is wrong with a change under way on the board."""
+        self.live.set(
+            [
+                RowOf(
+                    f"live {i}",
+                    (),
+                    (
+                        Words(
+                            f"As drawn now: {fault.cause}; {fault.mend.rstrip('.')}.", colour="bad"
+                        ),
+                    ),
+                )
+                for i, fault in enumerate(self.document.live_faults[:MOST_LIVE])
+            ]
+        )
 
     def says_already(self, fault: Fault) -> bool:
         """The missing outline is told once."""

@@ -124,6 +124,10 @@ class Tool:
         """Ids that must not draw the cursor."""
         return frozenset()
 
+    def drafted(self) -> Part | None:
+        """The part as it would be with what is half drawn; None if that is nothing yet."""
+        return None
+
     def hint(self) -> str:
         """What to do next, one short sentence for the corner of the board."""
         return self.line

@@ -101,6 +101,7 @@ class LinesTool(DrawTool):
     def __init__(self, canvas: Canvas, draft: Draft) -> None:
         super().__init__(canvas)
         self.draft = draft
+        self._drafted: tuple[object, Part] | None = None
 
     def stop(self, following: Tool | None) -> None:
         """The draft goes on if the following tool draws chains too."""
@@ -153,6 +154,25 @@ class LinesTool(DrawTool):
             self.close(None)
         elif self.draft.points:
             self.say("A ring needs at least three corners, or two with an arc.")
+
+    def drafted(self) -> Part | None:
+        """With the ring closed straight, so that it is seen where it would cross itself."""
+        draft, part = self.draft, self.canvas.document.part
+        if not draft.can_close or draft.end is not None:
+            return None
+        key = part, tuple(draft.points), tuple(draft.throughs)
+        if self._drafted is None or self._drafted[0] != key:
+            throughs = [*draft.throughs, None]
+            try:
+                made = (
+                    edits.set_outline(part, draft.points, throughs).part
+                    if part.outline is None
+                    else edits.add_loop_hole(part, draft.points, throughs)
+                )
+            except edits.EditError:
+                made = part
+            self._drafted = key, made
+        return self._drafted[1]
 
     def _expressions(self, made: Part) -> dict[str, str | None]:
         """Those typed for the corners of the loop that was just drawn."""
