@@ -30,6 +30,10 @@ Ints = NDArray[np.int64]
 
 ON_CURVE = 1e-6  # share of the part's size within which a point counts as on the boundary
 
+_ASIDE = 0.1
+"""A side drawn through three points of its curve runs nearer to it than this share of its length
+(an arc of 45°, the coarsest: 0.001)."""
+
 
 class AnyCurve(Protocol):
     """A curve that knows its parameter nearest to a point."""
@@ -139,16 +143,18 @@ class PointReader:
         if not len(near):
             return side, place
         closest = np.full(len(near), np.inf)
-        mesh = self._mesh
+        mesh, side_nodes = self._mesh, self._mesh.side_nodes
         for piece in np.unique(mesh.side_piece):
             curve = self._shape.curves[piece].curve
             t = nearest_parameters(curve, points[near])
             own = np.flatnonzero(mesh.side_piece == piece)
             k = np.searchsorted(mesh.side_t[own, 1], t).clip(0, len(own) - 1)
             begin, end = mesh.side_t[own[k]].T
-            along = ((t - begin) / (end - begin)).clip(0.0, 1.0)
             far = np.hypot(*(curve.point(t) - points[near]).T)
-            drawn, off = _nearest_on_side(mesh.nodes[mesh.side_nodes[own[k]]], points[near], along)
+            if (far > self._near + _ASIDE * self._chains.lengths[own[k]]).all():
+                continue
+            along = ((t - begin) / (end - begin)).clip(0.0, 1.0)
+            drawn, off = _nearest_on_side(mesh.nodes[side_nodes[own[k]]], points[near], along)
             along = np.where((far > self._near) & (off <= self._near), drawn, along)
             far = np.minimum(far, off)
             better = (far <= self._near) & (far < closest)

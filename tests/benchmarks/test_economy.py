@@ -19,6 +19,7 @@ def test_needed_is_the_first_step_after_which_none_is_off() -> None:
 
 
 @pytest.mark.slow
+@pytest.mark.timeout(900)
 @pytest.mark.parametrize("name", PARTS)
 def test_a_tenth_of_the_unknowns(name: str) -> None:
     """For 0.2 % of the peak: nine times the unknowns do not suffice an even mesh of quad4."""

@@ -2,14 +2,17 @@
 
 Run from the repository, with one thread for the linear algebra:
 `OMP_NUM_THREADS=1 OPENBLAS_NUM_THREADS=1 python -m tests.benchmarks.write_table`
-(takes about five minutes on an idle machine).
+(about five minutes on an idle machine); names of blocks (`samples`, `economy`, `rivals`, `growth`)
+measure those only and keep the others from `results.json`.
 """
 
 from __future__ import annotations
 
+import json
 import os
 import platform
 import sys
+from collections.abc import Callable
 from pathlib import Path
 
 from scipy.sparse.linalg import splu
@@ -27,6 +30,7 @@ from tests.benchmarks.test_factorisation_speed import Held, meshed_lug, square_p
 from tests.evidence.write_readme_table import with_table
 from tests.mechanics.structured import STEEL
 
+RESULTS = Path(__file__).with_name("results.json")
 DEVELOPERS = Path(__file__).parents[2] / "DEVELOPERS.md"
 REPEATS = 5
 MOST_EVEN = 100_000
@@ -134,18 +138,29 @@ def growth() -> str:
     return table(("lug, unknowns", *(f"{c.unknowns:,}" for c in costs), "exponent"), rows)
 
 
-def main() -> int:
-    """Rewrite DEVELOPERS.md; 1 if that cannot be done."""
-    said = (
+BLOCKS: dict[str, Callable[[], str]] = {
+    "samples": samples,
+    "economy": economy,
+    "rivals": rivals,
+    "growth": growth,
+}
+
+
+def main(names: list[str]) -> int:
+    """Measure some blocks (all without a name) and rewrite DEVELOPERS.md; 1 if that cannot be."""
+    texts = json.loads(RESULTS.read_text(encoding="utf-8")) if RESULTS.exists() else {}
+    for name in names or list(BLOCKS):
+        texts[name] = BLOCKS[name]()
+        print(texts[name], flush=True)
+    texts["said"] = (
         f"Measured on {machine()}, one thread. Times are processor seconds, the least of "
         f"{REPEATS} runs (factorisation of 3, growth of 1); only *passed* is by the clock on the "
         "wall, with whatever else the machine did."
     )
-    texts = [said]
-    for made in (samples, rivals, growth, economy):
-        texts.append(made())
-        print(texts[-1], flush=True)
-    text = "\n\n".join(texts)
+    RESULTS.write_text(
+        json.dumps(texts, indent=1, sort_keys=True, ensure_ascii=False) + "\n", encoding="utf-8"
+    )
+    text = "\n\n".join(texts[name] for name in ("said", *BLOCKS) if name in texts)
     try:
         whole = with_table(DEVELOPERS.read_text(encoding="utf-8"), text, "speed")
     except (OSError, ValueError) as error:
@@ -156,4 +171,4 @@ def main() -> int:
 
 
 if __name__ == "__main__":
-    sys.exit(main())
+    sys.exit(main(sys.argv[1:]))

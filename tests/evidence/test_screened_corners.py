@@ -71,6 +71,7 @@ SLITS = [
 
 
 @pytest.mark.slow
+@pytest.mark.timeout(900)
 @pytest.mark.parametrize(
     ("degrees", "parts", "corner", "published"),
     [(270, ANGLES, "c4", 0.4555), (360, SLITS, "c6", 0.5)],
