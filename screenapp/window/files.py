@@ -51,6 +51,8 @@ class Files(QObject):
         self._ask = ask
         self._window = window
         self.take_typing: Callable[[], None] = lambda: None
+        self._before = (document.history, document.part.display_units)
+        document.part_changed.connect(self._note_units)
 
     def new(self) -> bool:
         """Show an empty part."""
@@ -59,6 +61,14 @@ class Files(QObject):
         self._document.open(Part(display_units=self._settings.units), None)
         self.opened.emit()
         return True
+
+    def _note_units(self) -> None:
+        """The units that are chosen for a part are those that new ones begin in."""
+        document = self._document
+        history, units = self._before
+        self._before = (document.history, document.part.display_units)
+        if document.history is history and document.part.display_units != units:
+            self._settings.units = document.part.display_units
 
     def choose_and_open(self) -> bool:
         """Ask for a file and open it."""

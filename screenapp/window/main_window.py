@@ -22,6 +22,7 @@ from screenapp.model.errors import ScreenappError
 from screenapp.model.findings import Fields, Findings, PassSummary
 from screenapp.model.part import DisplayUnits, Part, StressLimit
 from screenapp.model.part_json import screening_key
+from screenapp.model.restated import restated
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
 from screenapp.window.ask import DRAWING_SUFFIX, Ask
@@ -74,7 +75,6 @@ class MainWindow(QMainWindow):
         self.sheet = Sheet(self.document)
         self.files.take_typing = self.sheet.take_typing
         self._read_last: tuple[object, ...] = ()
-        self._part_before = (self.document.history, self.document.part.display_units)
         self._panels: dict[str, QDialog] = {}
         self._warmed = False
         self._lay_out()
@@ -172,14 +172,6 @@ class MainWindow(QMainWindow):
         panel.wanted.connect(take)
         self._show_panel("drawing", lambda: panel)
 
-    def _note_units(self) -> None:
-        """The units that are chosen for a part are those that new ones begin in."""
-        document = self.document
-        history, units = self._part_before
-        self._part_before = (document.history, document.part.display_units)
-        if document.history is history and document.part.display_units != units:
-            self.settings.units = document.part.display_units
-
     def show_about(self) -> None:
         """Say what this is, with the cautions."""
         self._show_panel("about", lambda: about_panel(self))
@@ -231,7 +223,6 @@ class MainWindow(QMainWindow):
         document.said.connect(self._say)
         document.path_changed.connect(self._show_title)
         document.part_changed.connect(self._renew_readings)
-        document.part_changed.connect(self._note_units)
         self.board.sample_wanted.connect(lambda path: self.files.open_sample(Path(path)))
         self.files.failed.connect(sheet.head.notice.tell)
         self.files.saved.connect(self._saved)
@@ -309,7 +300,7 @@ class MainWindow(QMainWindow):
     # --- saying ---------------------------------------------------------------------------------
 
     def _say(self, text: str) -> None:
-        self.said.setText(text)
+        self.said.setText(restated(text, self.document.part.display_units))
         self._unsay.start()
 
     def _show_title(self) -> None:

@@ -72,6 +72,7 @@ class Canvas(ZoomView):
         self._last_px: QPointF | None = None
         self._modifiers = Qt.KeyboardModifier.NoModifier
         self.setAccessibleName("Drawing board")
+        self.viewport().setAccessibleName("Drawing board")
         self.grid, self.scale_bar = GridItem(), ScaleBarItem()
         paths = PartPaths()
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)

@@ -30,11 +30,16 @@ class Dimensions:
         self._canvas = canvas
         self.shown: DimensionsShown = "plain"
         self.item = DimensionsItem()
+        self._state: tuple[object, ...] | None = None
         self.editor = DimensionEditor(canvas, self.item)
 
     def refresh(self) -> None:
         """Show what is wanted of the part; results are covered by all dimensions only."""
         canvas, shown = self._canvas, self.shown
+        state = (canvas.drawn, canvas.document.selection, shown, canvas.document.view.lens)
+        if self._state is not None and all(a is b for a, b in zip(state, self._state, strict=True)):
+            return  # asked for whenever something else lights up
+        self._state = state
         drawing = shown == "all" or (shown == "plain" and canvas.document.view.lens == "Shape")
         selection = canvas.document.selection
         marks = marks_of(canvas.drawn, selection, shown == "all") if drawing else ()

@@ -26,6 +26,7 @@ from screenapp.model.part import (
     SlotHole,
     Zone,
 )
+from screenapp.model.restated import restated
 from screenapp.model.units import format_quantity
 from screenapp.window.board.hit_test import Hit
 from screenapp.window.document import Document
@@ -38,7 +39,8 @@ def name_at(document: Document, hit: Hit | None, faults: Sequence[Fault] = ()) -
     if found is not None:
         lines.append(described(document.part, found))
         faults = (*faults, *(f for f in document.faults if found.record.id in f.ids))
-    told = [str(fault) for fault in faults]
+    units = document.part.display_units
+    told = [restated(str(fault), units) for fault in faults]
     return "\n".join([*lines, *dict.fromkeys(told)])
 
 

@@ -7,6 +7,8 @@ from PySide6.QtGui import QFont, QPainter, QPaintEvent, QPen
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 
 from screenapp.model.errors import Fault
+from screenapp.model.part import DisplayUnits
+from screenapp.model.restated import restated
 from screenapp.window import theme
 from screenapp.window.document import Document
 from screenapp.window.sheet.field import LINE, PAD, capital
@@ -81,7 +83,8 @@ class Paragraph(QWidget):
         shown = [f for f in faults if not self.says_already(f)]
         self.missing.set(*missing)
         self.missing.setVisible(bool(missing))
-        self._faults.set([_fault_row(i, f, self._mend(f)) for i, f in enumerate(shown)])
+        units = self.document.part.display_units
+        self._faults.set([_fault_row(i, f, self._mend(f), units) for i, f in enumerate(shown)])
         blocked = any(f.blocks for f in faults)
         self.state = "open" if missing or blocked else "set"
         if self.state == "set" and self.outdated():
@@ -123,7 +126,9 @@ class Paragraph(QWidget):
         painter.drawLine(0, self.height() - 1, self.width(), self.height() - 1)
 
 
-def _fault_row(number: int, fault: Fault, mend: tuple[Piece | str, ...]) -> RowOf:
+def _fault_row(
+    number: int, fault: Fault, mend: tuple[Piece | str, ...], units: DisplayUnits
+) -> RowOf:
     colour = "bad" if fault.blocks else "doubt"
-    said = f"{capital(fault.cause)}: {fault.mend.rstrip('.')}."
+    said = restated(f"{capital(fault.cause)}: {fault.mend.rstrip('.')}.", units)
     return RowOf(f"fault {number}", (), (Words(said, colour=colour), *mend))

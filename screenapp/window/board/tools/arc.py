@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING, ClassVar
 
+from PySide6.QtCore import Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
@@ -39,6 +40,14 @@ class ArcTool(LinesTool):
     def __init__(self, canvas: Canvas, draft: Draft) -> None:
         super().__init__(canvas, draft)
         self.bending: str | None = None
+
+    @property
+    def cursor(self) -> Qt.CursorShape:
+        """A hand over an edge that a click would take up to bend."""
+        place = self.canvas.place
+        over = place is not None and place.hit is not None and place.hit.kind == "edge"
+        free = self.bending is None and not self.draft.points
+        return Qt.CursorShape.PointingHandCursor if over and free else Qt.CursorShape.CrossCursor
 
     def stop(self, following: Tool | None) -> None:
         """Drop a bend half done."""

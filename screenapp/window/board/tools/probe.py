@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import ClassVar
 
+from PySide6.QtCore import Qt
+
 from screenapp.model import edits
 from screenapp.model.part import Point
 from screenapp.window.board.drawn_part import DrawnPart
@@ -22,6 +24,17 @@ class ProbeTool(DrawTool):
     icon: ClassVar[str] = "probe"
     group: ClassVar[str] = "readings"
     passes_over: ClassVar[frozenset[SnapKind]] = frozenset({"centre"})
+
+    @property
+    def cursor(self) -> Qt.CursorShape:
+        """A hand over a probe that would be taken up; a sign where nothing can be read."""
+        place = self.canvas.place
+        if place is None:
+            return Qt.CursorShape.CrossCursor
+        if place.hit is not None and place.hit.kind == "probe":
+            return Qt.CursorShape.PointingHandCursor
+        reads = on_material(self.canvas.drawn, place.at)
+        return Qt.CursorShape.CrossCursor if reads else Qt.CursorShape.ForbiddenCursor
 
     def entry_fields(self) -> tuple[EntryField, ...]:
         """A place."""
