@@ -229,11 +229,6 @@ _MAKERS: dict[str, Callable[[DXFGraphic], list[Found] | None]] = {
 # --- places -------------------------------------------------------------------------------------
 
 
-def whole_circle(curve: AnyCurve) -> bool:
-    """Whether a curve is a full circle."""
-    return isinstance(curve, Arc) and abs(curve.sweep) >= TWO_PI - 1e-12
-
-
 def _plane(ocs: OCS, place: Vec3) -> tuple[Vec3, bool, bool]:
     """A place in world coordinates, whether its plane is turned over, and whether it is flat."""
     up = ocs.uz

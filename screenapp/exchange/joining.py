@@ -27,6 +27,9 @@ from screenapp.model.progress import SILENT, Progress
 NOISE = 1e-7
 """Ends nearer than this share of the drawing's size are one place, not a gap."""
 
+FULL_TURN = 2.0 * math.pi * (1.0 - 1e-9)
+"""An arc that turns further is a full circle and closes by itself [rad]."""
+
 Step = tuple[int, bool]
 """A curve's number, and whether it is run backwards."""
 
@@ -65,8 +68,9 @@ class Joined:
 
 def join(curves: list[Curve], tolerance: float, progress: Progress = SILENT) -> Joined:
     """Rings and open chains of curves; gaps up to `tolerance` [mm] are closed."""
-    whole = [k for k, c in enumerate(curves) if isinstance(c, Arc) and abs(c.sweep) > 6.2831853]
-    pieces = [k for k in range(len(curves)) if k not in set(whole)]
+    circles = [isinstance(c, Arc) and abs(c.sweep) >= FULL_TURN for c in curves]
+    whole = [k for k, circle in enumerate(circles) if circle]
+    pieces = [k for k, circle in enumerate(circles) if not circle]
     graph = _Graph([curves[k] for k in pieces], tolerance)
     progress.check()
     ways, open_ways, branches, inner = graph.ways(progress)
