@@ -1,4 +1,4 @@
-"""Time to read a drawing of 3,000 forms, to make a part of it, and to paint 200,000 lines of one."""
+"""Time to read a drawing of 3,000 forms, make a part of it, and paint 200,000 lines."""
 
 from __future__ import annotations
 
