@@ -69,4 +69,5 @@ def test_random_use_breaks_nothing_and_can_be_undone(qtbot: QtBot, seed: int) ->
     while hand.document.history.can_undo:
         hand.document.undo()
     assert hand.part == start
-    assert not hand.canvas.previewing or hand.canvas.placing.busy
+    asking = hand.canvas.placing.busy or hand.canvas.ring_choice.busy
+    assert not hand.canvas.previewing or asking

@@ -13,6 +13,7 @@ from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QLabel
 from pytestqt.qtbot import QtBot
 
+from screenapp.model import edits
 from screenapp.model.errors import MeshingError
 from screenapp.model.part import Part
 from screenapp.model.part_json import read_part, write_part
@@ -94,6 +95,31 @@ def test_a_change_marks_the_title_and_saving_takes_the_mark_away(
     QTest.keyClick(main, Qt.Key.Key_S, CONTROL)
     assert not main.isWindowModified()
     assert read_part(file).wall.thickness == 6.0
+
+
+def test_undo_goes_back_over_saving_and_every_step_has_a_name(main: MainWindow, file: Path) -> None:
+    main.files.open(file)
+    first = file.read_bytes()
+    main.files.save()
+    before = file.read_bytes()
+    part = main.document.part
+    steps = [
+        ("round a corner", edits.set_round(part, "c1", 2.0)),
+        ("notes", edits.set_notes(part, "x")),
+        ("thickness of the wall", edits.set_thickness(part, 7.0)),
+    ]
+    for name, changed in steps:
+        main.document.apply(name, changed)
+        main.files.save()
+        assert not main.document.unsaved
+        assert main.actions_.by_name["undo"].isEnabled()
+    for name, _ in reversed(steps):
+        assert main.document.history.undo_name == name
+        main.actions_.by_name["undo"].trigger()
+    assert main.document.unsaved
+    main.files.save()
+    assert file.read_bytes() == before
+    assert first
 
 
 def test_a_new_part_asks_where_to_be_saved(main: MainWindow, tmp_path: Path, ask: Answers) -> None:

@@ -104,4 +104,5 @@ class FaultsItem(ScreenItem):
         across = QPointF(-way.y(), way.x())
         if across.y() > 0.0:
             across = -across
-        label(painter, size, (one + two) / 2.0 + across * 24.0, colour.name())
+        beside = self.RADIUS + 10.0 + 22.0 * abs(across.x())  # text is wider than it is high
+        label(painter, size, (one + two) / 2.0 + across * beside, colour.name())
