@@ -32,7 +32,7 @@ STATUS: dict[Verdict, int] = {
 
 CAUTION = "A screening, not an approval: local codes and a licensed engineer decide."
 
-COMMANDS = ("screen", "check", "convert")
+COMMANDS = ("screen", "check", "convert", "compare")
 
 
 def main(words: Sequence[str] | None = None) -> int:
@@ -44,6 +44,7 @@ def main(words: Sequence[str] | None = None) -> int:
                 "screen": (_screen_parser, _screen),
                 "check": (_check_parser, _check),
                 "convert": (_convert_parser, _convert),
+                "compare": (_compare_parser, _compare),
             }[words[0]]
             return run(parser().parse_intermixed_args(words[1:]))
         return _open_window(_window_parser().parse_args(words))
@@ -70,8 +71,8 @@ def _window_parser() -> argparse.ArgumentParser:
     parser = _Parser(
         prog="screenapp",
         description="Screens flat thin-walled parts for strength.  With no command it opens the "
-        "window; the commands are: screen FILE..., check FILE..., convert IN OUT (each with "
-        "--help).",
+        "window; the commands are: screen FILE..., check FILE..., convert IN OUT, "
+        "compare BEFORE AFTER (each with --help).",
         epilog=CAUTION,
     )
     parser.add_argument("file", nargs="?", type=Path, help="part file (or DXF drawing) to open")
@@ -142,6 +143,19 @@ def _convert_parser() -> argparse.ArgumentParser:
     return parser
 
 
+def _compare_parser() -> argparse.ArgumentParser:
+    parser = _Parser(
+        prog="screenapp compare",
+        description="Says what differs between two parts, and what that did to each utilisation.  "
+        "Part files are screened; result records (*.result.json) are taken as they are, with the "
+        "part beside them.  Exit status: that of the second one's verdict.",
+        epilog=CAUTION,
+    )
+    parser.add_argument("before", type=Path, metavar="BEFORE")
+    parser.add_argument("after", type=Path, metavar="AFTER")
+    return parser
+
+
 def _open_window(arguments: argparse.Namespace) -> int:
     from screenapp.app import run  # Qt is loaded only when a window is wanted
 
@@ -205,6 +219,14 @@ def _convert(arguments: argparse.Namespace) -> int:
             tell(sentence, stream=sys.stderr)
     print(f"wrote {arguments.target}", file=sys.stderr)
     return HOLDS
+
+
+def _compare(arguments: argparse.Namespace) -> int:
+    from screenapp.compare_command import run_comparison
+
+    verdict = run_comparison(arguments.before, arguments.after)
+    tell(CAUTION)
+    return STATUS[verdict]
 
 
 def _fault_line(path: Path, fault: Fault) -> str:

@@ -2,13 +2,14 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable
 
 from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Findings
 from screenapp.model.gauge_text import wall_text
 from screenapp.model.part import Part
-from screenapp.report.one_line import columns_of, one_line
+from screenapp.report.one_line import one_line
+from screenapp.report.text_columns import lined_up
 
 
 def verdict_table(
@@ -36,7 +37,7 @@ def verdict_table(
         )
         for limit in findings.limits
     ]
-    lines += ["", *_columns(rows, spell)]
+    lines += ["", *lined_up(rows, spell)]
     peaks = [("von Mises peak", "case", "value", "trust")]
     for case in findings.cases:
         peaks += [
@@ -44,7 +45,7 @@ def verdict_table(
             for p in case.peaks
             if p.quantity == "von_mises"
         ]
-    lines += ["", *_columns(peaks, spell)]
+    lines += ["", *lined_up(peaks, spell)]
     if findings.readings:
         read = [("reading", "case", "von Mises", "trust", "where")]
         read += [
@@ -57,7 +58,7 @@ def verdict_table(
             )
             for r in findings.readings
         ]
-        lines += ["", *_columns(read, spell)]
+        lines += ["", *lined_up(read, spell)]
     mesh = findings.mesh
     balance = max(max(c.balance.force, c.balance.moment) for c in findings.cases)
     lines += [
@@ -70,14 +71,3 @@ def verdict_table(
         lines.append(wall_text(mesh.walls[0], units))
     lines += [f"caution: {one_line(caution)}" for caution in findings.cautions]
     return "\n".join(spell(line) for line in lines)
-
-
-def _columns(rows: Sequence[Sequence[str]], spell: Callable[[str], str]) -> list[str]:
-    """Rows with their columns lined up."""
-    cells = [[spell(one_line(cell)) for cell in row] for row in rows]
-    widths = [max(columns_of(row[i]) for row in cells) for i in range(len(cells[0]))]
-    lines: list[str] = []
-    for row in cells:
-        padded = (c + " " * (w - columns_of(c)) for c, w in zip(row, widths, strict=True))
-        lines.append("  " + "  ".join(padded).rstrip())
-    return lines
