@@ -150,13 +150,19 @@ def value_at(part: Part, field: str) -> float | None:
         if isinstance(node, tuple) and node and not isinstance(node[0], float):
             names = [(str(getattr(x, "id", "") or getattr(x, "name", "")), x) for x in node]
             hit = [(n, x) for n, x in names if n and (rest == n or rest.startswith(n + "."))]
+            if not hit and not any(name for name, _ in names):  # told by their places
+                word, _, rest = rest.partition(".")
+                node = node[int(word)] if word.isdecimal() and int(word) < len(node) else None
+                continue
             if not hit:
                 return None
             name, node = max(hit, key=lambda pair: len(pair[0]))
             rest = rest[len(name) + 1 :]
             continue
         word, _, rest = rest.partition(".")
-        if isinstance(node, tuple):
+        if node is part and word == "readings":  # the file lists probes and cuts together
+            node = (*part.readings, *part.cuts)
+        elif isinstance(node, tuple):
             node = node[int(word)] if word.isdecimal() and int(word) < len(node) else None
         else:
             node = getattr(node, word, None)

@@ -5,14 +5,18 @@ from __future__ import annotations
 from dataclasses import replace
 
 import pytest
+from hypothesis import HealthCheck, given, settings
 
 from screenapp.model import edit_dimensions as dims
-from screenapp.model.edit_rules import EditError
+from screenapp.model.edit_rules import EditError, value_at
 from screenapp.model.errors import PartFileError
 from screenapp.model.field_names import field_words
+from screenapp.model.formulas import number_slots, written_tree
+from screenapp.model.json_reader import dotted
 from screenapp.model.part import CircleHole, Dimension, Formula, Part
 from screenapp.model.part_json import part_from_text, part_to_text
 from screenapp.model.validity import faults_of
+from tests.model.random_parts import parts
 from tests.window.board_kit import plate
 
 
@@ -180,3 +184,12 @@ def test_a_file_whose_dimensions_go_in_a_circle_says_where() -> None:
 )
 def test_fields_in_words(field: str, words: str) -> None:
     assert field_words(field) == words
+
+
+@settings(max_examples=40, deadline=None, suppress_health_check=list(HealthCheck))
+@given(parts)
+def test_every_number_of_the_file_is_found_by_its_field(part: Part) -> None:
+    tree = written_tree(part)
+    for holder, key, path in number_slots(tree):
+        if not isinstance(holder[key], str):
+            assert value_at(part, dotted(tree, path)) == holder[key], dotted(tree, path)
