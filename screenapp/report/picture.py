@@ -114,6 +114,9 @@ def _paint(
     axes.set_ylim(bottom, view.top)
     outline = PathPatch(_path(shape, 0.2 * view.per_pixel_x), fill=False, ec=INK, lw=1.1)
     axes.add_patch(outline)
+    for interface in shape.interfaces:  # where thickness or material changes
+        line = interface.curve.point(np.linspace(0.0, 1.0, 64))
+        axes.plot(*line.T, color=INK, lw=0.7, ls=(0, (6, 3)))
     for at in field.doubtful:
         zone = Circle(
             at, 26.0 * view.per_pixel_x, fill=False, ec=INK, lw=0.0, hatch="//////", alpha=0.75
