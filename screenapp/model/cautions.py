@@ -13,7 +13,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST
 from screenapp.model.features import place_name
 from screenapp.model.ligaments import Ligament, ligaments
-from screenapp.model.part import Material, Part, PointLoad
+from screenapp.model.part import DisplacementLimit, Material, Part, PointLoad
 from screenapp.model.shape import Shape
 
 RE_ENTERS = 185.0
@@ -42,7 +42,7 @@ def cautions_of(part: Part, shape: Shape, table: CurveTable) -> list[Fault]:
         *_wall_cautions(part, shape),
         *_point_cautions(part, shape),
         *_limit_cautions(part),
-        *_probe_cautions(part, shape, table),
+        *_place_cautions(part, shape, table),
     ]
 
 
@@ -236,11 +236,18 @@ def _limit_cautions(part: Part) -> Iterator[Fault]:
         )
 
 
-def _probe_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fault]:
-    probes = [p for p in part.readings if np.abs(p.at).max() <= FARTHEST]  # NaN compares false
-    if not probes:
+def _place_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fault]:
+    """Probes, and limits at a place, that lie outside the part."""
+    places = [("probe", p.id, p.at, f"readings.{p.id}.at") for p in part.readings]
+    places += [
+        ("the place of limit", limit.id, limit.at, f"limits.{limit.id}.at")
+        for limit in part.limits
+        if isinstance(limit, DisplacementLimit) and limit.at is not None
+    ]
+    places = [p for p in places if np.abs(p[2]).max() <= FARTHEST]  # NaN compares false
+    if not places:
         return
-    points = np.array([p.at for p in probes], dtype=float)
+    points = np.array([at for _, _, at, _ in places], dtype=float)
     inside = table.inside(0, points)
     boxes = table.loop_boxes(shape)
     for loop in range(1, len(shape.loops)):
@@ -250,17 +257,17 @@ def _probe_cautions(part: Part, shape: Shape, table: CurveTable) -> Iterator[Fau
         if len(near):
             inside[near] &= ~table.inside(loop, points[near])
     everyone = np.arange(len(table))
-    for probe, point, ok in zip(probes, points, inside, strict=True):
+    for (what, id_, at, field), point, ok in zip(places, points, inside, strict=True):
         if ok:
             continue
         t = table.nearest(everyone, np.broadcast_to(point, (len(table), 2)))
         gap = float(np.hypot(*(table.points(everyone, t) - point).T).min())
         if gap > 1e-3 * shape.size:
             yield Fault(
-                f"probe {probe.id} lies outside the part, {gap:.3g} mm from its boundary",
+                f"{what} {id_} lies outside the part, {gap:.3g} mm from its boundary",
                 "move it onto the part or remove it",
-                f"readings.{probe.id}.at",
-                (probe.id,),
-                probe.at,
+                field,
+                (id_,),
+                at,
                 blocks=False,
             )

@@ -9,11 +9,11 @@ from dataclasses import dataclass, replace
 from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.extents import FARTHEST
 from screenapp.model.features import Found, everything, find
+from screenapp.model.limit_faults import limit_faults
 from screenapp.model.material_faults import material_faults
 from screenapp.model.part import Loop, LoopHole, Part, Point, Zone
 from screenapp.model.size_faults import id_faults, size_faults
 from screenapp.model.value_faults import (
-    limit_faults,
     mesh_faults,
     reading_faults,
     wall_faults,

@@ -48,7 +48,8 @@ class Peak:
     """A separate maximum of one quantity in one case.
 
     Attributes:
-        quantity: "von_mises", "sigma_1" (largest tension) or "sigma_2" (largest compression).
+        quantity: "von_mises", "tresca", "sigma_1" (largest tension) or "sigma_2" (largest
+            compression).
         estimate: value and band [MPa].
         at: place [mm].
         feature: id of the edge, fillet corner or hole, or "" inside the part.

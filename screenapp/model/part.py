@@ -34,6 +34,7 @@ DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
 MaterialFamily = Literal[
     "steel", "cast iron", "aluminium", "magnesium", "titanium", "copper", "zinc", "plastic"
 ]
+StressMeasure = Literal["von_mises", "tresca", "sigma_1"]
 Measures = Literal["length", "angle", "number"]
 
 
@@ -339,12 +340,15 @@ class Combination:
 class StressLimit:
     """Everywhere: `measure` times `factor` stays under the material's `against` stress.
 
+    `measure` "von_mises" or "tresca" (both with the principal stress across the wall) is for what
+    yields, "sigma_1", the largest tension, for what is brittle.
+
     `at_rising` says what counts where the stress has no finite value: nothing (the verdict stays
     undecided) or the structural stress, drawn on from 0.4 and 1.0 wall thicknesses.
     """
 
     id: str
-    measure: Literal["von_mises", "sigma_1"] = "von_mises"
+    measure: StressMeasure = "von_mises"
     against: Literal["proof_stress", "strength"] = "proof_stress"
     factor: float = 1.5
     at_rising: Literal["undecided", "structural"] = "undecided"
@@ -352,10 +356,17 @@ class StressLimit:
 
 @dataclass(frozen=True)
 class DisplacementLimit:
-    """Nowhere does the part move by more than `most` [mm]."""
+    """Nowhere, or at one place, the part moves by no more than `most` [mm].
+
+    Attributes:
+        at: the place [mm], None for everywhere.
+        angle: direction [deg] in which the movement counts, either way; None for its whole length.
+    """
 
     id: str
     most: float
+    at: Point | None = None
+    angle: float | None = None
 
 
 Limit = StressLimit | DisplacementLimit

@@ -93,6 +93,17 @@ def von_mises(stress: Floats, poisson: float = 0.0) -> Floats:
     return np.asarray(np.sqrt(0.5 * squares + 3.0 * txy**2))
 
 
+def tresca(stress: Floats, poisson: float = 0.0) -> Floats:
+    """Tresca stress [MPa] of (..., 3) stresses: the largest principal stress less the smallest.
+
+    The one across the wall counts: zero in plane stress, ν (σx + σy) in plane strain, for which
+    `poisson` is ν.
+    """
+    first, second, _ = principal(stress)
+    third = poisson * (first + second)
+    return np.asarray(np.maximum(first, third) - np.minimum(second, third))
+
+
 def principal(stress: Floats) -> tuple[Floats, Floats, Floats]:
     """In-plane principal stresses σ1 >= σ2 [MPa] and the angle of σ1 [rad] from +x."""
     sx, sy, txy = stress[..., 0], stress[..., 1], stress[..., 2]

@@ -12,6 +12,7 @@ from screenapp.model.crossings import boundary_faults
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import places_of
+from screenapp.model.limit_faults import limit_faults, limit_material_faults
 from screenapp.model.load_faults import load_faults
 from screenapp.model.material_faults import material_faults
 from screenapp.model.part import Part
@@ -21,8 +22,6 @@ from screenapp.model.support_faults import support_faults
 from screenapp.model.value_faults import (
     dimension_faults,
     element_count_faults,
-    limit_faults,
-    limit_material_faults,
     mesh_faults,
     reading_faults,
     wall_faults,

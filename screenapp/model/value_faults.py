@@ -1,4 +1,4 @@
-"""Wall, limits, mesh wishes and probes whose numbers cannot be worked with."""
+"""Wall, mesh wishes and probes whose numbers cannot be worked with."""
 
 from __future__ import annotations
 
@@ -8,14 +8,11 @@ from typing import get_args
 
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST, SMALLEST
-from screenapp.model.material_faults import positive
 from screenapp.model.part import (
-    DisplacementLimit,
     DisplayUnits,
     ElementName,
     MeshWishes,
     Part,
-    StressLimit,
     WallState,
 )
 from screenapp.model.shape import Shape
@@ -81,64 +78,6 @@ def dimension_faults(part: Part) -> Iterator[Fault]:
                 "change the value or the bound",
                 f"{where}.value",
                 blocks=False,
-            )
-
-
-def limit_faults(part: Part) -> Iterator[Fault]:
-    """Limits that cannot be judged."""
-    for limit in part.limits:
-        where = f"limits.{limit.id}"
-        if isinstance(limit, StressLimit):
-            yield from _stress_limit_faults(limit, where)
-        elif isinstance(limit, DisplacementLimit) and not positive(limit.most):
-            yield Fault(
-                f"the displacement limit {limit.id} is {limit.most:g} mm",
-                "give a displacement above zero",
-                f"{where}.most",
-                (limit.id,),
-            )
-
-
-def _stress_limit_faults(limit: StressLimit, where: str) -> Iterator[Fault]:
-    if not positive(limit.factor):
-        yield Fault(
-            f"the factor of limit {limit.id} is {limit.factor:g}",
-            "give a factor above zero, e.g. 1.5",
-            f"{where}.factor",
-            (limit.id,),
-        )
-    if limit.measure not in ("von_mises", "sigma_1"):
-        yield Fault(
-            f"limit {limit.id} is on “{limit.measure}”",
-            "choose von_mises or sigma_1",
-            f"{where}.measure",
-            (limit.id,),
-        )
-    if limit.against not in ("proof_stress", "strength"):
-        yield Fault(
-            f"limit {limit.id} is against “{limit.against}”",
-            "choose proof_stress or strength",
-            f"{where}.against",
-            (limit.id,),
-        )
-
-
-def limit_material_faults(part: Part) -> Iterator[Fault]:
-    """Limits that need a stress which the material of the wall or of a zone has not."""
-    used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
-    materials = {m.name: m for m in used if m is not None}
-    for limit in part.limits:
-        if not isinstance(limit, StressLimit):
-            continue
-        for material in materials.values():
-            if getattr(material, limit.against, 0.0) is not None:
-                continue
-            words = limit.against.replace("_", " ")
-            yield Fault(
-                f"limit {limit.id} asks for the {words}, which “{material.name}” has not",
-                f"give the material a {words}, or change the limit",
-                f"limits.{limit.id}.against",
-                (limit.id,),
             )
 
 

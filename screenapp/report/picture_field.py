@@ -11,13 +11,17 @@ from screenapp.model.allowables import allowables
 from screenapp.model.estimate_text import estimate_text, unit_of, value_text
 from screenapp.model.findings import CaseFindings, Fields, Findings, LimitFindings
 from screenapp.model.part import DisplacementLimit, Part, Point, StressLimit
-from screenapp.model.solution import principal, von_mises
+from screenapp.model.solution import principal, tresca, von_mises
 from screenapp.report import colours
 from screenapp.report.colours import Scale
 
 Floats = NDArray[np.float64]
 
-_WORDS = {"von_mises": "von Mises stress", "sigma_1": "Largest principal stress"}
+_WORDS = {
+    "von_mises": "von Mises stress",
+    "tresca": "Tresca stress",
+    "sigma_1": "Largest principal stress",
+}
 
 
 @dataclass(frozen=True, eq=False)
@@ -73,6 +77,8 @@ def measured(part: Part, fields: Fields, case: int, measure: str) -> Floats:
     stress = fields.stress.nodal[case]
     if measure == "von_mises":
         return von_mises(stress, out_of_plane_ratio(part))
+    if measure == "tresca":
+        return tresca(stress, out_of_plane_ratio(part))
     return np.maximum(principal(stress)[0], 0.0)
 
 

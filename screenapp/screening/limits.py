@@ -14,28 +14,42 @@ from dataclasses import dataclass
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
 from screenapp.model.part import DisplacementLimit, Part, StressLimit
-from screenapp.model.place_words import point_words
+from screenapp.model.shape import Shape
+from screenapp.screening.displacement_limits import displacement_limit_name, judge_displacement
+from screenapp.screening.passes import Pass
+from screenapp.screening.use import scaled
+
+MEASURE_WORDS = {
+    "von_mises": "von Mises",
+    "tresca": "Tresca",
+    "sigma_1": "largest principal (brittle)",
+}
 
 
 def limit_name(limit: StressLimit | DisplacementLimit) -> str:
     """The limit in a few words."""
     if isinstance(limit, DisplacementLimit):
-        return f"displacement under {limit.most:g} mm"
-    what = "von Mises" if limit.measure == "von_mises" else "largest principal"
+        return displacement_limit_name(limit)
+    what = MEASURE_WORDS[limit.measure]
     against = "proof stress" if limit.against == "proof_stress" else "strength"
     rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
     return f"{what} under {against} with {limit.factor:g} in hand{rising}"
 
 
-def judge_limits(part: Part, cases: Sequence[CaseFindings]) -> tuple[LimitFindings, ...]:
-    """Every limit in every case."""
+def judge_limits(
+    part: Part,
+    cases: Sequence[CaseFindings],
+    shape: Shape | None = None,
+    passes: Sequence[Pass] = (),
+) -> tuple[LimitFindings, ...]:
+    """Every limit in every case; limits at a place read the passes of the screening."""
     found: list[LimitFindings] = []
     for limit in part.limits:
-        for case in cases:
+        for k, case in enumerate(cases):
             if isinstance(limit, StressLimit):
                 found.append(_stress(limit, part, case))
             else:
-                found.append(_displacement(limit, case))
+                found.append(judge_displacement(limit, part, case, k, shape, passes))
     return tuple(found)
 
 
@@ -105,7 +119,7 @@ def _used(peak: Peak, allowed: float, limit: StressLimit) -> _Use:
         and (limit.at_rising == "structural" or beside.low > allowed)
     )
     counted = beside if structural and beside is not None else peak.estimate
-    return _Use(peak, _scaled(counted, 1.0 / allowed), structural)
+    return _Use(peak, scaled(counted, 1.0 / allowed), structural)
 
 
 def _size(used: _Use) -> float:
@@ -126,35 +140,6 @@ def _why_undecided(used: _Use, case: str) -> str:
     return (
         f"{peak.place} uses between {low:.3f} and {high:.3f} of its allowable under “{case}”: "
         "ask for a closer tolerance, or change the part"
-    )
-
-
-def _displacement(limit: DisplacementLimit, case: CaseFindings) -> LimitFindings:
-    moved = case.displacement_max
-    used = _scaled(moved, 1.0 / limit.most)
-    place = point_words(case.displacement_at)
-    if moved.trust == "settled" and moved.high < limit.most:
-        verdict: Verdict = "holds"
-        reason = ""
-    elif moved.trust == "settled" and moved.low > limit.most:
-        verdict = "does not hold"
-        reason = f"the part moves by {moved.value:.4g} mm at {place} under “{case.name}”"
-    else:
-        verdict = "undecided"
-        reason = f"the largest displacement under “{case.name}” is not settled enough to tell"
-        if moved.trust == "rising":
-            reason = (
-                f"the largest displacement under “{case.name}” has no finite value: a force or a "
-                "support acts at a point; spread it over an edge or a hole"
-            )
-    return LimitFindings(
-        limit.id, limit_name(limit), case.case, used, verdict, case.displacement_at, place, reason
-    )
-
-
-def _scaled(estimate: Estimate, factor: float) -> Estimate:
-    return Estimate(
-        estimate.value * factor, estimate.low * factor, estimate.high * factor, estimate.trust
     )
 
 

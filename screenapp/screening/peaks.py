@@ -19,7 +19,7 @@ from screenapp.model.findings import Fields
 from screenapp.model.part import Part, Point
 from screenapp.model.place_words import edge_words, point_words
 from screenapp.model.shape import BoundaryCurve, Shape
-from screenapp.model.solution import principal, von_mises
+from screenapp.model.solution import principal, tresca, von_mises
 
 Floats = NDArray[np.float64]
 
@@ -60,12 +60,13 @@ class RawPeak:
 
 
 def measure(name: str, stress: Floats, part: Part) -> Floats:
-    """A stress measure [MPa] of (..., 3) stresses: "von_mises", "sigma_1", or "sigma_2" turned
-    positive for compression."""
-    if name == "von_mises":
+    """A stress measure [MPa] of (..., 3) stresses: "von_mises", "tresca", "sigma_1", or
+    "sigma_2" turned positive for compression."""
+    if name in ("von_mises", "tresca"):
         material = part.material
         strain = part.wall.state == "plane strain" and material is not None
-        return von_mises(stress, material.poissons_ratio if strain and material else 0.0)
+        by = von_mises if name == "von_mises" else tresca
+        return by(stress, material.poissons_ratio if strain and material else 0.0)
     first, second, _ = principal(stress)
     return first if name == "sigma_1" else np.negative(second)
 

@@ -103,7 +103,7 @@ def _reading(
     for name in READING_QUANTITIES:
         numbers = [column[name] for column in columns]
         if name.startswith("u_"):
-            values[name] = _moved(numbers, read, creeping, part.mesh.tolerance, moved_scale)
+            values[name] = judge_movement(numbers, read, creeping, part.mesh.tolerance, moved_scale)
             continue
         samples = [
             Sample(abs(n) if spot else n, float(v.size[i]), float(v.doubt[k, i]))
@@ -139,7 +139,7 @@ def _reading(
     )
 
 
-def _moved(
+def judge_movement(
     numbers: Sequence[float],
     read: Sequence[PointValues],
     creeping: Sequence[float] | None,

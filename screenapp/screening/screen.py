@@ -28,6 +28,7 @@ from screenapp.model.findings import (
     Estimate,
     Fields,
     Findings,
+    LimitFindings,
     MeshFindings,
     PassSummary,
     Peak,
@@ -130,7 +131,8 @@ def screen(
         with clock.stage("judging"):
             cases = _cases(part, shape, passes, spots)
             read = readings(part, shape, passes)
-        if number >= most or (number >= LEAST_PASSES and _done(cases, read)):
+            limits = judge_limits(part, cases, shape, passes)
+        if number >= most or (number >= LEAST_PASSES and _done(part, cases, read, limits)):
             break
         with clock.stage("adapting"):
             wanted = wanted_sizes(
@@ -145,12 +147,20 @@ def screen(
         with clock.stage("comparing"):
             plain = plain_losses(part, shape, passes[-1], cases, progress)
     clock.spent["total"] = time.perf_counter() - begin
-    return _findings(part, shape, passes, summaries, cases, read, plain, clock)
+    return _findings(part, shape, passes, summaries, cases, read, limits, plain, clock)
 
 
-def _done(cases: Sequence[CaseFindings], read: Sequence[Reading]) -> bool:
+def _done(
+    part: Part,
+    cases: Sequence[CaseFindings],
+    read: Sequence[Reading],
+    limits: Sequence[LimitFindings],
+) -> bool:
     """Whether every number is known: settled, or rising and never to be settled."""
-    numbers = [p.estimate for c in cases for p in c.peaks]
+    stress = {limit.id for limit in part.limits if isinstance(limit, StressLimit)}
+    others = [f.utilisation for f in limits if f.limit not in stress]  # of those, the peaks
+    numbers = [n for n in others if np.isfinite(n.high)]  # what could not be read never settles
+    numbers += [p.estimate for c in cases for p in c.peaks]
     numbers += [c.displacement_max for c in cases]
     numbers += [p.structural for c in cases for p in c.peaks if p.structural is not None]
     return all(n.trust != "unsettled" for n in numbers) and all(
@@ -221,12 +231,12 @@ def _findings(
     summaries: Sequence[PassSummary],
     cases: tuple[CaseFindings, ...],
     read: tuple[Reading, ...],
+    limits: tuple[LimitFindings, ...],
     plain: tuple[PlainLoss, ...],
     clock: Clock,
 ) -> Findings:
     last, summary = passes[-1].fields, summaries[-1]
     walls = wall_gauges(part, shape, last.mesh)
-    limits = judge_limits(part, cases)
     verdict, headline, reasons = overall(limits)
     area = shape.area
     cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]

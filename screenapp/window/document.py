@@ -26,7 +26,9 @@ from screenapp.model.validity import faults_of
 from screenapp.window.traced import Traced
 
 Lens = Literal["Shape", "Mesh", "Utilisation", "Stress", "Displacement", "Trust"]
-StressComponent = Literal["von_mises", "sigma_1", "sigma_2", "sigma_x", "sigma_y", "tau_xy"]
+StressComponent = Literal[
+    "von_mises", "tresca", "sigma_1", "sigma_2", "sigma_x", "sigma_y", "tau_xy"
+]
 DisplacementComponent = Literal["u", "u_x", "u_y"]
 
 

@@ -11,13 +11,14 @@ from numpy.typing import NDArray
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import Fields
 from screenapp.model.part import Part, StressLimit
-from screenapp.model.solution import principal, von_mises
+from screenapp.model.solution import principal, tresca, von_mises
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
 
 STRESS_NAMES = {
     "von_mises": "von Mises",
+    "tresca": "Tresca",
     "sigma_1": "σ₁ largest principal",
     "sigma_2": "σ₂ smallest principal",
     "sigma_x": "σx",
@@ -54,6 +55,8 @@ def _component(fields: Fields, case: int, component: str, part: Part) -> Floats:
     stress = fields.stress.nodal[case]
     if component == "von_mises":
         return von_mises(stress, _poisson(part))
+    if component == "tresca":
+        return tresca(stress, _poisson(part))
     if component in ("sigma_1", "sigma_2"):
         return principal(stress)[0 if component == "sigma_1" else 1]
     return np.asarray(stress[:, ("sigma_x", "sigma_y", "tau_xy").index(component)])

@@ -72,7 +72,8 @@ def _stress(view: View, source: Source) -> Painting:
     peaks = peaks_of(source, view.stress)
     cards = with_history(source, tuple(peak_card(peak, source) for peak in peaks[:1]))
     caption = ""
-    if source.findings is not None and not peaks and view.stress not in ("von_mises", "sigma_1"):
+    judged = ("von_mises", "tresca", "sigma_1")
+    if source.findings is not None and not peaks and view.stress not in judged:
         caption = "Largest values of this component are not judged: put a probe where you need one"
     return Painting(
         source.fields.mesh.nodes,

@@ -123,10 +123,10 @@ def _materials(i: int) -> st.SearchStrategy[Material]:
 
 def _limits(i: int) -> st.SearchStrategy[object]:
     name = st.just(f"m{i}")
-    measures, bounds = ["von_mises", "sigma_1"], ["proof_stress", "strength"]
+    measures, bounds = ["von_mises", "tresca", "sigma_1"], ["proof_stress", "strength"]
     return st.one_of(
         st.builds(StressLimit, name, st.sampled_from(measures), st.sampled_from(bounds), numbers),
-        st.builds(DisplacementLimit, name, numbers),
+        st.builds(DisplacementLimit, name, numbers, st.none() | points, maybe),
     )
 
 

@@ -244,6 +244,17 @@ def test_limits_say_what_they_allow(sheet: Sheet) -> None:
     assert isinstance(new, DisplacementLimit)
     type_into(paragraph.list.row(new.id).sentence.field("most"), "0.5")
     assert sheet.document.part.limits[1] == DisplacementLimit(new.id, 0.5)
+    sentence = paragraph.list.row(new.id).sentence
+    assert sentence.text == "Nothing moves by more than 0.5 mm in any direction."
+    pick(sentence.field("where"), "a point")
+    type_into(sentence.field("x"), "12")
+    type_into(sentence.field("angle"), "90")
+    changed = sheet.document.part.limits[1]
+    assert isinstance(changed, DisplacementLimit)
+    assert changed.at is not None
+    assert changed == DisplacementLimit(new.id, 0.5, (12.0, changed.at[1]), 90.0)
+    pick(row.sentence.field("measure"), "Tresca stress")
+    assert sheet.document.part.limits[0] == replace(wanted, measure="tresca")
     pick(row.sentence.field("against"), "tensile strength")
     told = [*texts(paragraph), row.sentence.complaint]
     assert any("strength, which “Steel” has not" in text for text in told)

@@ -27,7 +27,7 @@ MOST_PEAKS = 8
 ROUNDING = 1e-7
 """A reaction below this share of the force that a millimetre of the most stressed wall carries is
 rounding."""
-QUANTITIES = {"von_mises": "", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
+QUANTITIES = {"von_mises": "", "tresca": "Tresca at ", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
 
 
 class FindingsParagraph(Paragraph):

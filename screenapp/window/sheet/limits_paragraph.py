@@ -5,12 +5,18 @@ from __future__ import annotations
 from screenapp.model.errors import Fault
 from screenapp.model.part import DisplacementLimit, Limit, Part, StressLimit
 from screenapp.window.sheet import changes, limit_changes
+from screenapp.window.sheet.limit_sentences import displacement_pieces
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
 
-MEASURES = {"von_mises": "von Mises stress", "sigma_1": "largest tension"}
+MEASURES = {
+    "von_mises": "von Mises stress",
+    "tresca": "Tresca stress",
+    "sigma_1": "largest tension",
+}
+REMARKS = {"von_mises": "what yields", "tresca": "what yields, cautious", "sigma_1": "brittle"}
 AGAINST = {"proof_stress": "proof stress", "strength": "tensile strength"}
 AT_RISING = {
     "undecided": "the verdict is undecided",
@@ -73,15 +79,7 @@ class LimitsParagraph(Paragraph):
         change = limit_changes.LimitChange(self.document, limit.id)
         pieces: tuple[Piece | str, ...]
         if isinstance(limit, DisplacementLimit):
-            most = q.value(
-                "most",
-                limit.most,
-                "displacement",
-                "Most displacement",
-                change.setter("most"),
-                field=f"limits.{limit.id}.most",
-            )
-            pieces = ("Nothing moves by more than ", most, ".")
+            pieces = displacement_pieces(part, limit, change, q)
         else:
             pieces = self._stress(part, limit, change, q)
         return RowOf(
@@ -100,7 +98,7 @@ class LimitsParagraph(Paragraph):
             MEASURES.get(limit.measure, limit.measure),
             "Which stress",
             lambda key: change.set("measure", key),
-            lambda: tuple(Choice(k, t) for k, t in MEASURES.items()),
+            lambda: tuple(Choice(k, t, REMARKS[k]) for k, t in MEASURES.items()),
         )
         against = Value(
             "against",

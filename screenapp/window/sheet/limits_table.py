@@ -20,6 +20,9 @@ COLUMNS = (
 )
 
 
+SHORT = {"von_mises": "von Mises", "tresca": "Tresca", "sigma_1": "tension"}
+
+
 class LimitsTable(FigureTable):
     """The limits with their verdicts."""
 
@@ -52,9 +55,10 @@ def _short_name(part: Part, found: LimitFindings) -> str:
     """The limit in a few words; its full name stands in the tooltip."""
     limit = next((g for g in part.limits if g.id == found.limit), None)
     if isinstance(limit, StressLimit):
-        measure = "von Mises" if limit.measure == "von_mises" else "tension"
+        measure = SHORT[limit.measure]
         against = "proof" if limit.against == "proof_stress" else "strength"
         return f"{measure} × {limit.factor:.4g} ≤ {against}"
     if isinstance(limit, DisplacementLimit):
-        return f"moves ≤ {Quantities(part.display_units).show(limit.most, 'length')}"
+        where = "" if limit.at is None else " there"
+        return f"moves{where} ≤ {Quantities(part.display_units).show(limit.most, 'length')}"
     return found.name

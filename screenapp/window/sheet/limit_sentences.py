@@ -1,0 +1,83 @@
+"""The sentences of the kinds of limit, with their values to be changed in place."""
+
+from __future__ import annotations
+
+from screenapp.model.errors import ScreenappError
+from screenapp.model.part import DisplacementLimit, Part
+from screenapp.window.sheet.limit_changes import LimitChange
+from screenapp.window.sheet.pieces import Choice, Piece, Value
+from screenapp.window.sheet.quantities import Quantities
+
+ANYWHERE, AT_POINT = "anywhere", "point"
+
+
+def displacement_pieces(
+    part: Part, limit: DisplacementLimit, change: LimitChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    """Nothing, or one point, moves by more than so much."""
+    most = q.value(
+        "most",
+        limit.most,
+        "displacement",
+        "Most displacement",
+        change.setter("most"),
+        field=f"limits.{limit.id}.most",
+    )
+    where = Value(
+        "where",
+        "Nothing" if limit.at is None else "The point",
+        "What must not move by more",
+        lambda key: change.set("at", _place(part, limit, key)),
+        lambda: _places(part),
+    )
+    along = q.optional_value(
+        "angle",
+        limit.angle,
+        "angle",
+        "Direction in which the movement counts",
+        change.setter("angle"),
+        "any direction",
+        f"limits.{limit.id}.angle",
+    )
+    said: tuple[Piece | str, ...] = (" moves by more than ", most, " in ", along, ".")
+    if limit.angle is not None:
+        said = (" moves by more than ", most, " along ", along, ".")
+    if limit.at is None:
+        return (where, *said)
+    x, y = limit.at
+    numbers = [
+        q.value(
+            axis,
+            value,
+            "length",
+            f"{axis} of the point",
+            lambda to, i=i: change.set("at", (to, y) if i == 0 else (x, to)),  # type: ignore[misc]
+            field=f"limits.{limit.id}.at.{i}",
+        )
+        for i, (axis, value) in enumerate((("x", x), ("y", y)))
+    ]
+    return (where, " x ", numbers[0], ", y ", numbers[1], " never", *said)
+
+
+def _places(part: Part) -> tuple[Choice, ...]:
+    """Everywhere, a point, or where a probe stands."""
+    probes = tuple(Choice(p.id, p.name, "where this probe stands") for p in part.readings)
+    return (
+        Choice(ANYWHERE, "nothing", "the whole part"),
+        Choice(AT_POINT, "a point", "given by x and y"),
+        *((Choice("-", "Probes"), *probes) if probes else ()),
+    )
+
+
+def _place(part: Part, limit: DisplacementLimit, key: str) -> tuple[float, float] | None:
+    """The place that a line of the chooser stands for."""
+    if key == ANYWHERE:
+        return None
+    for probe in part.readings:
+        if probe.id == key:
+            return probe.at
+    if limit.at is not None:
+        return limit.at
+    if part.outline is None:
+        raise ScreenappError("the part has no outline yet", "draw it first")
+    return part.outline.corners[0].at
