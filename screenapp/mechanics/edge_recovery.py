@@ -16,7 +16,9 @@ from numpy.typing import NDArray
 from screenapp.mechanics.boundary_chains import BoundaryChains
 from screenapp.mechanics.corner_stress import known_corners, mirrored_ends
 from screenapp.mechanics.edge_fit import fit_at_ends, fit_at_middles, sample_places
+from screenapp.mechanics.thermal import side_free_strains
 from screenapp.model.mesh import Mesh
+from screenapp.model.solution import Solution
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -91,15 +93,20 @@ def joined_sides(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools
     return np.asarray(chains.smooth & steady & (held == held[after]).all(axis=1))
 
 
-def edge_strains(mesh: Mesh, displacements: Floats, linear: bool) -> Floats:
-    """Stretching along each side at its sample places, (n_cases, n_sides, n_samples).
+def edge_strains(mesh: Mesh, solution: Solution) -> Floats:
+    """Elastic stretching along each side at its sample places, (n_cases, n_sides, n_samples).
 
     Two samples at the Gauss points of a quadratic side; one at the middle of a `linear` one.
     """
+    linear = solution.element.startswith("quad4")
     slopes = _sample_slopes(linear)
     along = np.einsum("pn,snk->spk", slopes, mesh.nodes[mesh.side_nodes])
-    moved = np.einsum("pn,csnk->cspk", slopes, displacements[:, mesh.side_nodes])
-    return np.asarray((moved * along).sum(axis=-1) / (along**2).sum(axis=-1))
+    moved = np.einsum("pn,csnk->cspk", slopes, solution.displacements[:, mesh.side_nodes])
+    stretch = (moved * along).sum(axis=-1) / (along**2).sum(axis=-1)
+    if solution.free_strains is not None:
+        at = _sample_shapes(linear) @ mesh.nodes[mesh.side_nodes]
+        stretch -= side_free_strains(mesh, solution.free_strains, at)
+    return np.asarray(stretch)
 
 
 def _sample_slopes(linear: bool) -> Floats:
@@ -108,6 +115,14 @@ def _sample_slopes(linear: bool) -> Floats:
         return np.array([[-0.5, 0.0, 0.5]])
     xi = sample_places(2)
     return np.stack([xi - 0.5, -2.0 * xi, xi + 0.5], axis=1)
+
+
+def _sample_shapes(linear: bool) -> Floats:
+    """A side's three shape functions at the sample places, (n_samples, 3)."""
+    if linear:
+        return np.array([[0.5, 0.0, 0.5]])
+    xi = sample_places(2)
+    return np.stack([0.5 * xi * (xi - 1.0), 1.0 - xi * xi, 0.5 * xi * (xi + 1.0)], axis=1)
 
 
 def edge_stress(

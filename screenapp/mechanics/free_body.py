@@ -1,7 +1,7 @@
 """What acts on one side of a cut: the free body that an engineer would draw.
 
 Loads are integrated along the sides that lie on the body (a side that the cut divides counts as far
-as it reaches), weight over its elements, and supports give their forces at its nodes.
+as it reaches), weight and spin over its elements, and supports give their forces at its nodes.
 """
 
 from __future__ import annotations
@@ -10,11 +10,10 @@ import numpy as np
 import shapely
 from numpy.typing import NDArray
 
-from screenapp.mechanics import shape_functions
-from screenapp.mechanics.element_walls import element_thickness
+from screenapp.mechanics.body_forces import body_rule, force_density, has_body_forces
 from screenapp.mechanics.equilibrium import resultant
-from screenapp.mechanics.loads import body_force, side_thickness, side_tractions
-from screenapp.mechanics.quadrature import gauss_line, gauss_square
+from screenapp.mechanics.loads import side_thickness, side_tractions
+from screenapp.mechanics.quadrature import gauss_line
 from screenapp.mechanics.straight_cut import StraightCut
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import SectionForces
@@ -105,7 +104,7 @@ def _on_body(
     total = np.zeros(3)
     at, force = _side_forces(part, shape, mesh, case)
     total += _sum(body, at, force)
-    total += _sum(body, *_weight(part, mesh, case))
+    total += _sum(body, *_throughout(part, mesh, case))
     sharp = dict(shape.sharp_corners)
     points = [load for load in case.loads if isinstance(load, PointLoad) and load.on in sharp]
     if points:
@@ -130,19 +129,13 @@ def _side_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> tuple[Floa
     return (shapes @ nodes).reshape(-1, 2), force.reshape(-1, 2)
 
 
-def _weight(part: Part, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
-    """Places and forces of the weight: a rule over each element."""
-    zones = mesh.element_zones
-    body = np.array([body_force(part, case, int(z)) for z in range(-1, len(part.zones))])[zones + 1]
-    if not body.any():
+def _throughout(part: Part, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
+    """Places and forces of weight and spin: a rule over each element."""
+    if not has_body_forces(case):
         return np.zeros((0, 2)), np.zeros((0, 2))
-    xi, weights = gauss_square(3)
-    nodes = mesh.nodes[mesh.quads]
-    slopes = shape_functions.derivatives(9, xi)  # (points, 9, 2)
-    jacobian = np.einsum("pia,nib->npab", slopes, nodes)
-    volume = np.linalg.det(jacobian) * weights * element_thickness(part, mesh)[:, None]
-    at = shape_functions.values(9, xi) @ nodes
-    return at.reshape(-1, 2), (volume[..., None] * body[:, None]).reshape(-1, 2)
+    at, volumes, _ = body_rule(part, mesh, "quad9")
+    force = force_density(part, mesh, case, at) * volumes[..., None]
+    return at.reshape(-1, 2), force.reshape(-1, 2)
 
 
 def _sum(body: shapely.Geometry, at: Floats, force: Floats) -> Floats:

@@ -84,17 +84,6 @@ def element_matrices(
     return ElementMatrices(full)
 
 
-def shape_integrals(element: ElementName, coordinates: Floats, thickness: Floats) -> Floats:
-    """Integral of each shape function over the volume [mm³], (n, n_nodes): the nodal loads of a
-    unit force per volume."""
-    n_nodes = NODES_OF_ELEMENT[element]
-    points, weights = gauss_square(RULE_OF_ELEMENT[element])
-    local = shape_functions.derivatives(n_nodes, points)
-    _, det = _slopes(local, coordinates[:, :n_nodes])
-    shapes = shape_functions.values(n_nodes, points)
-    return np.asarray((det * weights * thickness[:, None]) @ shapes)
-
-
 def _slopes(local: Floats, coordinates: Floats) -> tuple[Floats, Floats]:
     """∂N/∂x, ∂N/∂y (n, 2, p, m) and det J (n, p) from ∂N/∂ξ, ∂N/∂η (p, m, 2)."""
     by_xi, by_eta = local[..., 0], local[..., 1]

@@ -12,21 +12,22 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.elasticity import zone_material
+from screenapp.mechanics.body_forces import body_nodal_forces
 from screenapp.mechanics.element_walls import element_thickness
-from screenapp.mechanics.kernels import CARRIED_NODES, shape_integrals
+from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.model.curves import Arc
 from screenapp.model.members import spread_loads
-from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
+from screenapp.model.mesh import Mesh
 from screenapp.model.part import (
     BearingLoad,
+    BodyLoad,
     Case,
     ForceLoad,
-    GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
     Part,
     PointLoad,
     PressureLoad,
@@ -41,7 +42,7 @@ POINTS = 5
 """Gauss points along a side: exact for every even load on a parabola but for the root in its
 length; a bearing load's cosine is smooth but for its two ends."""
 
-EdgeLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad
+EdgeLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | MomentLoad
 
 
 @dataclass(frozen=True, eq=False)
@@ -70,12 +71,11 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
 
     Raises:
         InvalidPartError: a load stands on a feature that cannot carry it.
-        SolvingError: the part has weight but no material.
+        SolvingError: the part has weight or spins but has no material.
     """
-    element = part.mesh.element
-    out = np.zeros((mesh.n_nodes, 2))
+    out = body_nodal_forces(part, mesh, case)
     for load in spread_loads(part, case):
-        if isinstance(load, GravityLoad):
+        if isinstance(load, BodyLoad):
             continue
         if isinstance(load, PointLoad):
             out[_corner_node(mesh, load)] += (load.x, load.y)
@@ -83,14 +83,6 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
         rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
         force = _per_length(part, shape, mesh, load, rule) * rule.lengths[..., None]
         np.add.at(out, rule.nodes, np.einsum("pi,spd->sid", rule.shapes, force))
-    weights = np.array([body_force(part, case, zone) for zone in range(-1, len(part.zones))])
-    if weights.any():
-        thickness = element_thickness(part, mesh)
-        volumes = shape_integrals(element, mesh.nodes[mesh.quads], thickness)
-        nodes = mesh.quads[:, : NODES_OF_ELEMENT[element]]
-        for k in (0, 1):
-            share = volumes * weights[mesh.element_zones + 1, k][:, None]
-            out[:, k] += np.bincount(nodes.ravel(), share.ravel(), minlength=mesh.n_nodes)
     return out
 
 
@@ -104,7 +96,7 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
     out = np.zeros((len(mesh.sides), 3, 2))
     tangents = side_tangents(shape, mesh)
     for load in spread_loads(part, case):
-        if isinstance(load, GravityLoad | PointLoad):
+        if isinstance(load, BodyLoad | PointLoad):
             continue
         sides = sides_of(shape, mesh, load.on, load.id)
         nodes = mesh.side_nodes[sides]
@@ -114,18 +106,6 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
         )
         out[sides] += _per_length(part, shape, mesh, load, ends) / thickness[:, None, None]
     return out
-
-
-def body_force(part: Part, case: Case, zone: int = -1) -> Floats:
-    """Weight per volume of the case in a zone (-1: in the wall itself), (2,) [N/mm³].
-
-    Density in kg/m³ times acceleration in m/s² is N/m³; one N/m³ is 1e-9 N/mm³.
-    """
-    total = np.zeros(2)
-    for load in case.loads:
-        if isinstance(load, GravityLoad):
-            total += 1e-9 * zone_material(part, zone).density * np.array([load.x, load.y])
-    return total
 
 
 def _corner_node(mesh: Mesh, load: PointLoad) -> int:
@@ -178,6 +158,8 @@ def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePo
         return np.broadcast_to([load.x / length, load.y / length], places.at.shape).astype(float)
     if isinstance(load, BearingLoad):
         return _bearing(part, shape, mesh, load, places)
+    if isinstance(load, MomentLoad):
+        return _turning(part, shape, mesh, load, places)
     raise TypeError(f"{type(load).__name__} does not act along sides")
 
 
@@ -210,7 +192,21 @@ def _radial(at: Floats, centre: Floats, force: Floats) -> tuple[Floats, Floats]:
     return radial, (radial @ force > 0.0).astype(float)
 
 
-def _pin_centre(shape: Shape, load: BearingLoad) -> Floats:
+def _turning(part: Part, shape: Shape, mesh: Mesh, load: MomentLoad, places: SidePoints) -> Floats:
+    """An even shear round a hole, (n_sides, points, 2) [N/mm]: M / (2 π r²) on the exact rim.
+
+    Its size is chosen so that the moment of the mesh's own rule is exactly the load's.
+    """
+    centre = _pin_centre(shape, load)
+    rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
+    reach = float((rule.lengths * np.linalg.norm(rule.at - centre, axis=-1)).sum())
+    arm = places.at - centre
+    around = np.stack([-arm[..., 1], arm[..., 0]], axis=-1)
+    around /= np.linalg.norm(arm, axis=-1, keepdims=True)
+    return np.asarray(load.moment / reach * around)
+
+
+def _pin_centre(shape: Shape, load: BearingLoad | MomentLoad) -> Floats:
     """Centre of the round hole that a pin sits in."""
     curves = [shape.curves[i].curve for i in shape.pieces_of(load.on)]
     arcs = [c for c in curves if isinstance(c, Arc)]
@@ -219,4 +215,4 @@ def _pin_centre(shape: Shape, load: BearingLoad) -> Floats:
         turned = abs(sum(a.sweep for a in arcs))
         if spread <= 1e-6 * arcs[0].radius and abs(turned - 2.0 * math.pi) < 1e-6:
             return np.asarray(arcs[0].centre)
-    raise misplaced(load.id, load.on, "put the bearing load on a round hole")
+    raise misplaced(load.id, load.on, "put it on a round hole")

@@ -47,7 +47,7 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     at_supports = supported_stress(
         mesh, chains, solution, held, traction, thickness[behind], inside[:, mesh.side_fields]
     )
-    samples = edge_strains(mesh, solution.displacements, solution.element.startswith("quad4"))
+    samples = edge_strains(mesh, solution)
     side = recover_edge_stress(
         mesh,
         chains,

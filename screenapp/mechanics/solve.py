@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from dataclasses import replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -16,6 +17,7 @@ from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.equilibrium import balance, reactions
 from screenapp.mechanics.linear_solve import factorise, solve_refined
 from screenapp.mechanics.loads import nodal_forces
+from screenapp.mechanics.thermal import free_strains, thermal_forces
 from screenapp.model.combinations import loadings
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import ElementName, Part
@@ -41,6 +43,9 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
     forces = np.zeros((len(loadings(part)), mesh.n_nodes, 2))
     for number, case in enumerate(loadings(part)):
         forces[number] = nodal_forces(part, shape, mesh, case)
+    free = free_strains(part, mesh)
+    if free is not None:
+        forces += thermal_forces(part, mesh, free)
     system = assemble(
         mesh,
         part.mesh.element,
@@ -48,7 +53,7 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
         element_thickness(part, mesh),
         progress,
     )
-    return solve_system(system, held, forces, progress)
+    return replace(solve_system(system, held, forces, progress), free_strains=free)
 
 
 def solve_system(

@@ -1,6 +1,7 @@
-"""Strains straight from an element's own displacements, at any local points.
+"""Elastic strains straight from an element's own displacements, at any local points.
 
-No averaging and no recovery: what the strain-displacement matrix of the element gives.
+No averaging and no recovery: what the strain-displacement matrix of the element gives, less what
+the temperature would give it if it were free, so that Hooke's law makes stresses of it.
 """
 
 from __future__ import annotations
@@ -9,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics import shape_functions
+from screenapp.mechanics.thermal import strains_from
 from screenapp.model.mesh import NODES_OF_ELEMENT, Mesh
 from screenapp.model.solution import Solution
 
@@ -78,6 +80,10 @@ def _strains(
             [gradient[..., 0, 0], gradient[..., 1, 1], gradient[..., 0, 1] + gradient[..., 1, 0]],
             axis=-1,
         )
+    if solution.free_strains is not None:
+        shapes = shape_functions.values(slopes.shape[2], points.reshape(-1, 2))
+        at = shapes.reshape(*points.shape[:2], -1) @ mesh.nodes[quads]
+        found -= strains_from(solution.free_strains[:, elements], at)
     return found
 
 

@@ -13,7 +13,7 @@ from typing import Any
 
 from screenapp.model.errors import Fault
 from screenapp.model.load_faults import components
-from screenapp.model.part import Case, Combination, Load, Part
+from screenapp.model.part import Case, Combination, Load, Part, SpinLoad
 
 
 def loadings(part: Part) -> tuple[Case, ...]:
@@ -26,7 +26,9 @@ def loadings(part: Part) -> tuple[Case, ...]:
 
 
 def scaled(load: Load, factor: float) -> Load:
-    """A load with all its components times a factor."""
+    """A load that does `factor` times as much."""
+    if isinstance(load, SpinLoad):
+        return replace(load, factor=factor * load.factor)  # forces go with the square of the speed
     changes: dict[str, Any] = {name: factor * value for name, value in components(load).items()}
     return replace(load, **changes)
 

@@ -25,6 +25,7 @@ from screenapp.model.part import (
     Hole,
     Loop,
     LoopHole,
+    MomentLoad,
     Part,
 )
 
@@ -190,7 +191,9 @@ def _without_loose_pins(part: Part) -> Outcome:
     lost: list[str] = []
     cases = []
     for case in part.cases:
-        loose = [x for x in case.loads if isinstance(x, BearingLoad) and x.on not in round_]
+        loose = [
+            x for x in case.loads if isinstance(x, BearingLoad | MomentLoad) and x.on not in round_
+        ]
         lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in loose]
         cases.append(replace(case, loads=tuple(x for x in case.loads if x not in loose)))
     return Outcome(replace(part, cases=tuple(cases)) if lost else part, tuple(lost))

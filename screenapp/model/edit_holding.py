@@ -57,7 +57,7 @@ def put_on(part: Part, id_: str, on: str) -> Part:
     if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
         return replace_support(part, replace(record, on=on))
     if not isinstance(record, PlacedLoad):
-        raise EditError(f"load {id_} is the part's own weight", "it acts everywhere")
+        raise EditError(f"load {id_} acts throughout the part", "put another load on the place")
     return replace_load(part, replace(record, on=on))
 
 

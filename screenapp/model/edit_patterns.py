@@ -8,13 +8,11 @@ from typing import Any
 
 from screenapp.model.edit_places import drop_from_places, moved_references
 from screenapp.model.edit_rules import EditError, Outcome, must_find, new_ids, settle
-from screenapp.model.members import member_ids, members, patterned, shared, whole_id
+from screenapp.model.members import Shareable, member_ids, members, patterned, shared, whole_id
 from screenapp.model.part import (
-    BearingLoad,
+    BodyLoad,
     Case,
     CircleHole,
-    ForceLoad,
-    GravityLoad,
     Hole,
     Load,
     Part,
@@ -100,12 +98,12 @@ def _spread(part: Part, hole: Hole, ids: list[str]) -> Part:
     for number, case in enumerate(part.cases):
         loads: list[Load] = []
         for load in case.loads:
-            if isinstance(load, GravityLoad) or load.on != hole.id:
+            if isinstance(load, BodyLoad) or load.on != hole.id:
                 loads.append(load)
                 continue
             used = [x.id for c in cases for x in c.loads] + [x.id for x in loads]
             names = [load.id, *_fresh(part, "l", len(ids) - 1, used)]
-            total = isinstance(load, BearingLoad | ForceLoad)
+            total = isinstance(load, Shareable)
             shares = shared(load, hole) if total else [load] * len(ids)  # type: ignore[arg-type]
             loads += [
                 replace(share, id=n, on=on) for share, n, on in zip(shares, names, ids, strict=True)

@@ -7,7 +7,7 @@ from dataclasses import replace
 
 from screenapp.model.edit_rules import Outcome, must_find
 from screenapp.model.members import member_ids
-from screenapp.model.part import GravityLoad, LoopHole, Part
+from screenapp.model.part import BodyLoad, LoopHole, Part
 
 
 def moved_references(part: Part, to: Mapping[str, str]) -> Part:
@@ -17,7 +17,7 @@ def moved_references(part: Part, to: Mapping[str, str]) -> Part:
         replace(
             case,
             loads=tuple(
-                replace(x, on=to[x.on]) if not isinstance(x, GravityLoad) and x.on in to else x
+                replace(x, on=to[x.on]) if not isinstance(x, BodyLoad) and x.on in to else x
                 for x in case.loads
             ),
         )
@@ -37,7 +37,7 @@ def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
             supports.append(support)
     cases = []
     for case in part.cases:
-        gone = [x for x in case.loads if not isinstance(x, GravityLoad) and x.on in places]
+        gone = [x for x in case.loads if not isinstance(x, BodyLoad) and x.on in places]
         lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in gone]
         loads = tuple(x for x in case.loads if x not in gone)
         cases.append(replace(case, loads=loads) if gone else case)

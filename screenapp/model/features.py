@@ -14,13 +14,13 @@ from typing import Literal
 from screenapp.model.loop_curves import loop_curves, sharp_places
 from screenapp.model.members import member_ids, members, whole_id
 from screenapp.model.part import (
+    BodyLoad,
     Case,
     CircleHole,
     Combination,
     Corner,
     Cut,
     Edge,
-    GravityLoad,
     Hole,
     Limit,
     Load,
@@ -176,7 +176,7 @@ def places_of(part: Part) -> Places:
     Of two things with one id the first counts; those of a zone are not on the boundary.
     """
     wanted = {s.on for s in part.supports}
-    wanted |= {x.on for c in part.cases for x in c.loads if not isinstance(x, GravityLoad)}
+    wanted |= {x.on for c in part.cases for x in c.loads if not isinstance(x, BodyLoad)}
     places: Places = {}
     if not wanted:
         return places

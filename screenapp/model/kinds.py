@@ -24,6 +24,10 @@ KindName = Literal[
     "density",
     "mass",
     "expansion",
+    "speed",
+    "temperature",
+    "temperature_change",
+    "temperature_gradient",
     "ratio",
     "number",
 ]
@@ -113,6 +117,15 @@ KINDS: dict[KindName, Kind] = {
         ("µin/(in·°F)", Fraction(9, 5 * 10**6)),
         "12 µm/(m·K)",
         ("ppm",),
+    ),
+    "speed": Kind("a speed of rotation", "1/min", ("rpm", _ONE), ("rpm", _ONE), "3000 rpm"),
+    # °F has another zero than °C, so a temperature is taken in °C only; a change may be in °F
+    "temperature": Kind("a temperature in °C", "", ("°C", _ONE), ("°C", _ONE), "20 °C"),
+    "temperature_change": Kind(
+        "a change of temperature", "kelvin", ("K", _ONE), ("K", _ONE), "40 K or 72 °F"
+    ),
+    "temperature_gradient": Kind(
+        "a temperature gradient", "kelvin/mm", ("K/mm", _ONE), ("K/mm", _ONE), "0.5 K/mm"
     ),
     "ratio": Kind(
         "a ratio",

@@ -5,21 +5,27 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 
+from screenapp.model.body_load_faults import body_load_faults, temperature_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places
 from screenapp.model.part import (
     BearingLoad,
+    BodyLoad,
     Case,
     CircleHole,
     ForceLoad,
     GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
     Part,
+    PlacedLoad,
     PointLoad,
     PrescribedSupport,
     PressureLoad,
     ShearLoad,
+    SpinLoad,
+    TemperatureLoad,
 )
 from screenapp.model.shape import Shape
 from screenapp.model.support_faults import place_fault
@@ -37,7 +43,10 @@ WORDS: dict[type, str] = {
     ForceLoad: "force",
     BearingLoad: "bearing force",
     PointLoad: "point load",
+    MomentLoad: "moment",
     GravityLoad: "gravity",
+    SpinLoad: "spin",
+    TemperatureLoad: "temperature change",
 }
 """What each load is called."""
 
@@ -72,6 +81,7 @@ def load_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fau
                 )
             continue
         yield from one_load_faults(part, case, places, shape)
+        yield from temperature_faults(part, case, shape)
         if not pushed and all(not any(components(load).values()) for load in case.loads):
             yield Fault(
                 f"all loads of case “{case.name}” are zero",
@@ -82,11 +92,20 @@ def load_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fau
 
 
 def components(load: Load) -> dict[str, float]:
-    """The numbers of a load by the names of their fields."""
+    """The numbers by which a load is large or small, by the names of their fields.
+
+    All but the speed of a spin are proportional to what the load does.
+    """
     if isinstance(load, PressureLoad):
         return {"pressure": load.pressure}
     if isinstance(load, ShearLoad):
         return {"per_length": load.per_length}
+    if isinstance(load, MomentLoad):
+        return {"moment": load.moment}
+    if isinstance(load, SpinLoad):
+        return {"speed": load.speed}
+    if isinstance(load, TemperatureLoad):
+        return {"change": load.change, "x": load.x, "y": load.y}
     return {"x": load.x, "y": load.y}
 
 
@@ -113,13 +132,15 @@ def one_load_faults(part: Part, case: Case, places: Places, shape: Shape | None)
                     (load.id,),
                     blocks=False,
                 )
+        elif isinstance(load, BodyLoad):
+            yield from body_load_faults(part, load, name, where)
         else:
             yield from _place_faults(part, load, name, where, places, shape)
 
 
 def _place_faults(
     part: Part,
-    load: PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad,
+    load: PlacedLoad,
     name: str,
     where: str,
     places: Places,
@@ -128,7 +149,8 @@ def _place_faults(
     found = places.get(load.on)
     ids = (load.id, load.on)
     if found is not None and not isinstance(load, PointLoad) and found.kind == "corner":
-        wanted = "a round hole" if isinstance(load, BearingLoad) else "an edge or hole"
+        round_ = isinstance(load, BearingLoad | MomentLoad)
+        wanted = "a round hole" if round_ else "an edge or hole"
         yield Fault(
             f"{name} cannot act on corner {load.on}",
             f"put it on {wanted}, or use a point load",
@@ -141,7 +163,7 @@ def _place_faults(
         yield Fault(fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at)
         return
     assert found is not None
-    if isinstance(load, BearingLoad) and not isinstance(found.record, CircleHole):
+    if isinstance(load, BearingLoad | MomentLoad) and not isinstance(found.record, CircleHole):
         yield Fault(
             f"{name} cannot act on {found.kind} {load.on}: a pin needs a round hole",
             "put it on a round hole, or use a force",

@@ -17,6 +17,7 @@ from screenapp.model.part import (
     Hole,
     Load,
     LoopHole,
+    MomentLoad,
     Part,
     SlotHole,
 )
@@ -66,19 +67,26 @@ def member_ids(hole: Hole) -> tuple[str, ...]:
 
 
 def spread_loads(part: Part, case: Case) -> tuple[Load, ...]:
-    """The loads of a case; a pin's force on a whole pattern is shared evenly by its members."""
+    """The loads of a case; a pin's force or moment on a whole pattern is shared evenly by its
+    members."""
     wholes = {h.id: h for h in part.holes if patterned(h)}
     loads: list[Load] = []
     for load in case.loads:
-        if isinstance(load, BearingLoad) and load.on in wholes:
+        if isinstance(load, BearingLoad | MomentLoad) and load.on in wholes:
             loads += shared(load, wholes[load.on])
         else:
             loads.append(load)
     return tuple(loads)
 
 
-def shared(load: BearingLoad | ForceLoad, hole: Hole) -> list[BearingLoad | ForceLoad]:
+Shareable = BearingLoad | ForceLoad | MomentLoad
+"""Loads of which the holes of a pattern take equal shares."""
+
+
+def shared(load: Shareable, hole: Hole) -> list[Shareable]:
     """The load's equal shares, one on each member; their ids are the load's."""
     ids = member_ids(hole)
     n = len(ids)
+    if isinstance(load, MomentLoad):
+        return [replace(load, on=id_, moment=load.moment / n) for id_ in ids]
     return [replace(load, on=id_, x=load.x / n, y=load.y / n) for id_ in ids]

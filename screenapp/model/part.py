@@ -24,7 +24,58 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
+from screenapp.model.load_records import (
+    BearingLoad as BearingLoad,
+)
+from screenapp.model.load_records import (
+    BodyLoad as BodyLoad,
+)
+from screenapp.model.load_records import (
+    ForceLoad as ForceLoad,
+)
+from screenapp.model.load_records import (
+    GravityLoad as GravityLoad,
+)
+from screenapp.model.load_records import (
+    LineLoad as LineLoad,
+)
+from screenapp.model.load_records import (
+    Load as Load,
+)
+from screenapp.model.load_records import (
+    MomentLoad as MomentLoad,
+)
+from screenapp.model.load_records import (
+    PlacedLoad as PlacedLoad,
+)
+from screenapp.model.load_records import (
+    PointLoad as PointLoad,
+)
+from screenapp.model.load_records import (
+    PressureLoad as PressureLoad,
+)
+from screenapp.model.load_records import (
+    ShearLoad as ShearLoad,
+)
+from screenapp.model.load_records import (
+    SpinLoad as SpinLoad,
+)
+from screenapp.model.load_records import (
+    TemperatureLoad as TemperatureLoad,
+)
 from screenapp.model.pattern import Pattern
+from screenapp.model.support_records import (
+    FixedSupport as FixedSupport,
+)
+from screenapp.model.support_records import (
+    PrescribedSupport as PrescribedSupport,
+)
+from screenapp.model.support_records import (
+    RollerSupport as RollerSupport,
+)
+from screenapp.model.support_records import (
+    Support as Support,
+)
 
 Point = tuple[float, float]
 
@@ -189,122 +240,7 @@ class Material:
         return over and (self.thickness_upto is None or thickness <= self.thickness_upto)
 
 
-# --- supports -------------------------------------------------------------------------------
-
-
-@dataclass(frozen=True)
-class FixedSupport:
-    """Holds an edge, a hole's rim or a sharp corner in both directions."""
-
-    id: str
-    on: str
-
-
-@dataclass(frozen=True)
-class RollerSupport:
-    """Holds the displacement along one direction and lets the place slide across it.
-
-    `angle` [deg] is the held direction; None means the boundary's own normal (so on a hole it is
-    the radial direction: a pin on which the part can turn).  A corner needs an angle.
-    """
-
-    id: str
-    on: str
-    angle: float | None = None
-
-
-@dataclass(frozen=True)
-class PrescribedSupport:
-    """Moves a place by a given displacement [mm]; None leaves that direction free."""
-
-    id: str
-    on: str
-    x: float | None = None
-    y: float | None = None
-
-
-Support = FixedSupport | RollerSupport | PrescribedSupport
-
-# --- loads ----------------------------------------------------------------------------------
-
-
-@dataclass(frozen=True)
-class PressureLoad:
-    """A pressure [MPa] on the wall's face along an edge or hole; positive pushes on the material.
-
-    The force per length is pressure x thickness.
-    """
-
-    id: str
-    on: str
-    pressure: float
-
-
-@dataclass(frozen=True)
-class ShearLoad:
-    """A shear force per length [N/mm] along an edge or hole.
-
-    Positive acts with the material on its left (counter-clockwise round the outline, clockwise
-    round a hole).
-    """
-
-    id: str
-    on: str
-    per_length: float
-
-
-@dataclass(frozen=True)
-class LineLoad:
-    """A force per length with components `x`, `y` [N/mm] along an edge or hole."""
-
-    id: str
-    on: str
-    x: float
-    y: float
-
-
-@dataclass(frozen=True)
-class ForceLoad:
-    """A total force `x`, `y` [N] spread evenly along an edge or round a hole."""
-
-    id: str
-    on: str
-    x: float
-    y: float
-
-
-@dataclass(frozen=True)
-class BearingLoad:
-    """A pin's force `x`, `y` [N] on a circular hole: radial pressure, cosine over the half it
-    bears on (common practice, no source)."""
-
-    id: str
-    on: str
-    x: float
-    y: float
-
-
-@dataclass(frozen=True)
-class PointLoad:
-    """A force `x`, `y` [N] at a sharp corner; the stress under it has no finite value."""
-
-    id: str
-    on: str
-    x: float
-    y: float
-
-
-@dataclass(frozen=True)
-class GravityLoad:
-    """The part's own weight under the free-fall acceleration `x`, `y` [m/s²], e.g. (0, -9.81)."""
-
-    id: str
-    x: float
-    y: float
-
-
-PlacedLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad
-Load = PlacedLoad | GravityLoad
+# --- cases ---------------------------------------------------------------------------------
 
 
 @dataclass(frozen=True)

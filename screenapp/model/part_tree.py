@@ -31,6 +31,7 @@ from screenapp.model.part import (
     LoopHole,
     Material,
     MeshWishes,
+    MomentLoad,
     Part,
     Point,
     PointLoad,
@@ -40,7 +41,9 @@ from screenapp.model.part import (
     RollerSupport,
     ShearLoad,
     SlotHole,
+    SpinLoad,
     StressLimit,
+    TemperatureLoad,
     Term,
     Wall,
     Zone,
@@ -67,7 +70,10 @@ LOADS: dict[str, type] = {
     "force": ForceLoad,
     "bearing": BearingLoad,
     "point": PointLoad,
+    "moment": MomentLoad,
     "gravity": GravityLoad,
+    "spin": SpinLoad,
+    "temperature": TemperatureLoad,
 }
 LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLimit}
 READINGS: dict[str, type] = {"probe": Probe, "cut": Cut}

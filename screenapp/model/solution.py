@@ -50,6 +50,9 @@ class Solution:
             (n_cases, n_elements, 4), only for "quad4-incompatible"; else None.
         support_forces: what the supports give at each node, (n_cases, n_nodes, 2) [N]; None where
             it was not kept.
+        free_strains: strain that the temperature would give each element if it were free, the same
+            along x and y: a + b x + c y with (a, b, c) in (n_cases, n_elements, 3); None where no
+            case changes the temperature.
     """
 
     element: ElementName
@@ -60,6 +63,7 @@ class Solution:
     unknowns: int
     internal_modes: Floats | None = None
     support_forces: Floats | None = None
+    free_strains: Floats | None = None
 
 
 @dataclass(frozen=True, eq=False)

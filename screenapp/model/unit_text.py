@@ -53,6 +53,8 @@ def stored_per_unit(text: str, kind: Kind) -> Fraction:
     Raises:
         QuantityError: an unknown unit, or one of another kind.
     """
+    if kind is KINDS["speed"]:  # to pint a turn is 2π; here it counts as one
+        text = text.replace("rpm", "1/min")
     unit = _product(text, kind)
     wanted = _registry().Quantity(Fraction(1), kind.stored)
     if unit.dimensionality != wanted.dimensionality:

@@ -14,7 +14,7 @@ from screenapp.model.estimate_text import EstimateKind, estimate_text
 from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
-from screenapp.model.part import DisplayUnits, GravityLoad, Load, Part
+from screenapp.model.part import BodyLoad, DisplayUnits, Load, Part, SpinLoad, TemperatureLoad
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
 from screenapp.report.cut_svg import cut_svg
@@ -93,13 +93,24 @@ def _history(peak: Peak, findings: Findings, units: DisplayUnits) -> tuple[Marku
 
 def load_words(load: Load) -> str:
     """A load in words with stored units."""
-    if isinstance(load, GravityLoad):
+    if isinstance(load, SpinLoad):
+        more = "" if load.factor == 1.0 else f", its forces times {load.factor:g}"
+        return f"spin at {load.speed:g} rpm about ({load.x:g}, {load.y:g}) mm{more}"
+    if isinstance(load, TemperatureLoad):
+        what = "the whole part" if load.zone is None else f"zone {load.zone}"
+        graded = ""
+        if load.x or load.y:
+            graded = f", at the origin; gradient ({load.x:g}, {load.y:g}) K/mm"
+        return f"{what} warms by {load.change:g} K from {load.start:g} °C{graded}"
+    if isinstance(load, BodyLoad):
         return f"own weight under ({load.x:g}, {load.y:g}) m/s²"
     kind = type(load).__name__
     if kind == "PressureLoad":
         return f"pressure {load.pressure:g} MPa on {load.on}"  # type: ignore[union-attr]
     if kind == "ShearLoad":
         return f"shear {load.per_length:g} N/mm along {load.on}"  # type: ignore[union-attr]
+    if kind == "MomentLoad":
+        return f"moment {load.moment / 1000.0:g} N·m on {load.on}"  # type: ignore[union-attr]
     words = {
         "LineLoad": "({x:g}, {y:g}) N/mm along {on}",
         "ForceLoad": "({x:g}, {y:g}) N spread evenly over {on}",

@@ -16,6 +16,7 @@ import numpy as np
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import recover
 from screenapp.mechanics.solve import solve
+from screenapp.mechanics.thermal import thermal_forces
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import CaseFindings, Fields, Peak, PlainLoss
 from screenapp.model.part import ElementName, Part
@@ -84,6 +85,8 @@ def _energy(part: Part, shape: Shape, this: Pass, k: int) -> float:
     """Strain energy of a case [N·mm]: half the work of loads and of supports that are moved."""
     solution = this.fields.solution
     forces = nodal_forces(this.part, shape, this.fields.mesh, loadings(part)[k])
+    if solution.free_strains is not None:
+        forces = forces + thermal_forces(this.part, this.fields.mesh, solution.free_strains)[k]
     if solution.support_forces is not None:
         forces = forces + solution.support_forces[k]
     return 0.5 * float(np.sum(forces * solution.displacements[k]))

@@ -53,7 +53,7 @@ def edge_stress_of(
     return recover_edge_stress(
         mesh,
         boundary_chains(shape, mesh),
-        edge_strains(mesh, solution.displacements, solution.element.startswith("quad4")),
+        edge_strains(mesh, solution),
         tractions(shape, mesh, stress),
         np.zeros((sides, 2), dtype=bool),
         np.zeros(sides, dtype=bool),

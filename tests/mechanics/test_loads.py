@@ -9,8 +9,9 @@ from typing import get_args
 import numpy as np
 import pytest
 
+from screenapp.mechanics.body_forces import body_force
 from screenapp.mechanics.equilibrium import resultant
-from screenapp.mechanics.loads import body_force, nodal_forces, side_tractions
+from screenapp.mechanics.loads import nodal_forces, side_tractions
 from screenapp.model.errors import InvalidPartError, SolvingError
 from screenapp.model.part import (
     BearingLoad,

@@ -27,6 +27,7 @@ from screenapp.model.part import (
     Material,
     MaterialFamily,
     MeshWishes,
+    MomentLoad,
     Part,
     PointLoad,
     PrescribedSupport,
@@ -35,7 +36,9 @@ from screenapp.model.part import (
     RollerSupport,
     ShearLoad,
     SlotHole,
+    SpinLoad,
     StressLimit,
+    TemperatureLoad,
     Term,
     Wall,
 )
@@ -106,7 +109,18 @@ def _loads(case: int):  # type: ignore[no-untyped-def]
             st.builds(PressureLoad, name, on, numbers),
             st.builds(ShearLoad, name, on, numbers),
             *(st.builds(cls, name, on, numbers, numbers) for cls in vectors),
+            st.builds(MomentLoad, name, on, numbers),
             st.builds(GravityLoad, name, numbers, numbers),
+            st.builds(SpinLoad, name, numbers, numbers, numbers, numbers),
+            st.builds(
+                TemperatureLoad,
+                name,
+                numbers,
+                numbers,
+                numbers,
+                numbers,
+                st.none() | st.sampled_from(["z1", "gone"]),
+            ),
         )
 
     return make

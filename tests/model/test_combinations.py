@@ -17,9 +17,12 @@ from screenapp.model.part import (
     ForceLoad,
     GravityLoad,
     Load,
+    MomentLoad,
     Part,
     PressureLoad,
     ShearLoad,
+    SpinLoad,
+    TemperatureLoad,
     Term,
 )
 from screenapp.model.part_json import part_from_text, part_to_text
@@ -44,6 +47,12 @@ def combined(*terms: Term) -> Part:
         (ShearLoad("l", "e1", 2.0), ShearLoad("l", "e1", -3.0)),
         (BearingLoad("l", "h1", 2.0, -4.0), BearingLoad("l", "h1", -3.0, 6.0)),
         (GravityLoad("l", 0.0, -9.0), GravityLoad("l", 0.0, 13.5)),
+        (MomentLoad("l", "h1", 8.0), MomentLoad("l", "h1", -12.0)),
+        (SpinLoad("l", 1.0, 2.0, 300.0, 2.0), SpinLoad("l", 1.0, 2.0, 300.0, -3.0)),
+        (
+            TemperatureLoad("l", 40.0, 2.0, -4.0, 25.0, "z1"),
+            TemperatureLoad("l", -60.0, -3.0, 6.0, 25.0, "z1"),
+        ),
     ],
 )
 def test_every_component_of_a_load_is_scaled(load: Load, want: Load) -> None:

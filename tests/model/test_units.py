@@ -117,7 +117,7 @@ def test_a_bare_number_is_in_the_display_unit() -> None:
         ("5 rad", "number", "does not belong", "1.5"),
         ("5 mil", "length", "does not belong", "thou"),
         ("5 mm", "number", "mm is a length", "1.5"),
-        ("5 degC", "length", "another kind", "12 mm"),
+        ("5 degC", "length", "a change of temperature", "12 mm"),
         ("12,500", "force", "read in two ways", "12.500 or 12500"),
         ("-1,250 N", "force", "read in two ways", "1.250 or 1250"),
         ("1..2", "length", "not one number", "1234.5"),
@@ -200,12 +200,41 @@ def test_what_is_shown_is_near_enough(value: float, kind: KindName, digits: int)
     assert back == pytest.approx(value, rel=0.5001 * 10.0 ** (1 - digits))
 
 
-@pytest.mark.parametrize("kind", sorted(set(KINDS) - {"number"}))
+@pytest.mark.parametrize("kind", sorted(set(KINDS) - {"number", "temperature"}))
 @pytest.mark.parametrize("system", [METRIC, INCH])
 def test_every_display_unit_is_what_pint_says_it_is(kind: KindName, system: DisplayUnits) -> None:
     label, factor = KINDS[kind].shown(system)
     assert unit_label(kind, system) == label
     assert stored_per_unit(label, KINDS[kind]) == factor
+
+
+@pytest.mark.parametrize(
+    ("text", "kind", "value"),
+    [
+        ("3000", "speed", 3000.0),
+        ("3000 rpm", "speed", 3000.0),
+        ("3000 1/min", "speed", 3000.0),
+        ("50 Hz", "speed", 3000.0),
+        ("50 1/s", "speed", 3000.0),
+        ("20 °C", "temperature", 20.0),
+        ("40 °C", "temperature_change", 40.0),
+        ("72 °F", "temperature_change", 40.0),
+        ("40 K", "temperature_change", 40.0),
+    ],
+)
+def test_turns_and_temperatures(text: str, kind: KindName, value: float) -> None:
+    assert parse_quantity(text, kind) == pytest.approx(value)
+
+
+@pytest.mark.parametrize(
+    ("text", "kind"),
+    [("300 rad/s", "speed"), ("70 °F", "temperature"), ("300 K", "temperature")],
+)
+def test_turns_in_radians_and_temperatures_with_another_zero_are_refused(
+    text: str, kind: KindName
+) -> None:
+    with pytest.raises(QuantityError):
+        parse_quantity(text, kind)
 
 
 @settings(deadline=None)

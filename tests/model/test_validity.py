@@ -19,6 +19,7 @@ from screenapp.model.part import (
     GravityLoad,
     LoopHole,
     MeshWishes,
+    MomentLoad,
     Part,
     PointLoad,
     PrescribedSupport,
@@ -26,7 +27,9 @@ from screenapp.model.part import (
     Probe,
     RollerSupport,
     SlotHole,
+    SpinLoad,
     StressLimit,
+    TemperatureLoad,
     Wall,
 )
 from screenapp.model.shape import shape_of
@@ -130,6 +133,21 @@ def test_sizes_must_be_positive_and_sensible(field, change, bad: float) -> None:
         ("cases", replace(plate(), cases=())),
         ("cases.k1.loads", replace(plate(), cases=(Case("k1", "pull"),))),
         ("cases.k1.loads", with_loads(ForceLoad("l1", "e2", 0.0, 0.0))),
+        ("cases.k1.loads.l1.on", with_loads(MomentLoad("l1", "e2", 1.0))),
+        ("cases.k1.loads.l1.on", with_loads(MomentLoad("l1", "c2", 1.0))),
+        ("cases.k1.loads.l1.moment", with_loads(MomentLoad("l1", "h1", math.inf))),
+        ("cases.k1.loads.l1.speed", with_loads(SpinLoad("l1", 0.0, 0.0, math.nan))),
+        ("cases.k1.loads.l1.x", with_loads(SpinLoad("l1", math.nan, 0.0, 100.0))),
+        ("cases.k1.loads.l1.zone", with_loads(TemperatureLoad("l1", 9.0, zone="z9"))),
+        ("cases.k1.loads.l1.change", with_loads(TemperatureLoad("l1", math.nan))),
+        ("cases.k1.loads.l1.start", with_loads(TemperatureLoad("l1", 9.0, start=math.nan))),
+        ("materials.steel.expansion", with_loads(TemperatureLoad("l1", 9.0))),
+        (
+            "wall.state",
+            replace(
+                with_loads(TemperatureLoad("l1", 9.0)), wall=Wall(3.0, "steel", "plane strain")
+            ),
+        ),
         ("cases.k1.loads.l1.x", with_loads(ForceLoad("l1", "e2", math.nan, 1.0))),
         ("cases.k1.loads.l1.on", with_loads(ForceLoad("l1", "e9", 1.0, 1.0))),
         ("cases.k1.loads.l1.on", with_loads(BearingLoad("l1", "e2", 1.0, 1.0))),
@@ -237,3 +255,16 @@ def test_thousands_of_faults_are_not_all_listed() -> None:
     n = 500
     points = [(i * 1.0, 10.0 * (i % 2)) for i in range(n)] + [(n * 1.0, 30.0), (0.0, 30.0)]
     assert len(faults_of(plate(loop(points)))) < 60
+
+
+def test_a_temperature_above_what_the_material_stands_is_pointed_out() -> None:
+    warm = replace(STEEL, expansion=12e-6, temperature_max=100.0)
+    part = replace(with_loads(TemperatureLoad("l1", 70.0, 0.2)), materials=(warm,))
+    fault = only(part)  # 20 + 70 + 0.2 · 100 at the right end
+    assert not fault.blocks
+    assert "to 110 °C" in fault.cause
+    assert "100 °C" in fault.cause
+    assert faults_of(replace(part, cases=(Case("k", "", (TemperatureLoad("l", 70.0),)),))) == ()
+    cold = only(replace(part, cases=(Case("k", "", (TemperatureLoad("l", -300.0),)),)))
+    assert cold.blocks
+    assert "below absolute zero" in cold.cause

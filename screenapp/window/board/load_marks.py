@@ -12,11 +12,15 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
     PointLoad,
     PressureLoad,
     ShearLoad,
+    SpinLoad,
+    TemperatureLoad,
 )
 from screenapp.model.units import format_quantity
+from screenapp.window.board.body_load_marks import moment_mark, spin_mark, temperature_mark
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
 from screenapp.window.board.marks import Mark, middle, radius_px, stations, to_px
@@ -31,6 +35,15 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
     if isinstance(load, GravityLoad):
         _own_weight(mark, drawn, frame, load)
         return mark
+    if isinstance(load, SpinLoad):
+        spin_mark(mark, drawn, frame, load)
+        return mark
+    if isinstance(load, TemperatureLoad):
+        centre = drawn.anchor_of(load.zone) if load.zone is not None else centroid(drawn)
+        if centre is not None:
+            aside = np.array([-26.0, -20.0]) if load.zone is None else np.zeros(2)
+            temperature_mark(mark, drawn, load, frame.pxs(centre) + aside)
+        return mark
     place = middle(drawn, frame, load.on)
     if place is None:
         return mark
@@ -44,6 +57,9 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
     elif isinstance(load, LineLoad):
         _spread(mark, drawn, frame, load)
         text = format_quantity(math.hypot(load.x, load.y), "line_load", units)
+    elif isinstance(load, MomentLoad):
+        moment_mark(mark, drawn, frame, load, place[0])
+        text = format_quantity(load.moment, "moment", units)
     else:
         _single(mark, drawn, frame, load, *place)
         text = format_quantity(math.hypot(load.x, load.y), "force", units)

@@ -16,6 +16,7 @@ from screenapp.model.part import (
     ForceLoad,
     GravityLoad,
     LineLoad,
+    MomentLoad,
     Part,
     PointLoad,
     PrescribedSupport,
@@ -24,6 +25,8 @@ from screenapp.model.part import (
     RollerSupport,
     ShearLoad,
     SlotHole,
+    SpinLoad,
+    TemperatureLoad,
     Zone,
 )
 from screenapp.model.restated import restated
@@ -63,6 +66,15 @@ def described(part: Part, found: Found) -> str:
     if isinstance(record, GravityLoad):
         pull = format_quantity(math.hypot(record.x, record.y), "acceleration", units)
         return f"load {record.id}, the part's own weight at {pull}"
+    if isinstance(record, SpinLoad):
+        speed = format_quantity(record.speed, "speed", units)
+        about = f"{_length(record.x, units)}, {_length(record.y, units)}"
+        return f"load {record.id}, spin at {speed} about {about}"
+    if isinstance(record, TemperatureLoad):
+        change = format_quantity(record.change, "temperature_change", units)
+        start = format_quantity(record.start, "temperature", units)
+        where = "" if record.zone is None else f" of zone {record.zone}"
+        return f"load {record.id}, change of temperature{where} by {change} from {start}"
     if found.kind == "load":
         return f"{_loaded(record, units)} on {place_name(part, record.on)}"  # type: ignore
     return words
@@ -99,6 +111,8 @@ def _loaded(record: object, units: DisplayUnits) -> str:
         return f"pressure of {format_quantity(record.pressure, 'stress', units)}"
     if isinstance(record, ShearLoad):
         return f"shear of {format_quantity(record.per_length, 'line_load', units)}"
+    if isinstance(record, MomentLoad):
+        return f"moment of {format_quantity(record.moment, 'moment', units)}"
     if isinstance(record, LineLoad):
         x, y = (format_quantity(v, "line_load", units) for v in (record.x, record.y))
         return f"line load of {x}, {y}"

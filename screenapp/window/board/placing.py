@@ -10,16 +10,16 @@ from screenapp.model import edits
 from screenapp.model.edits import EditError
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
+    BodyLoad,
     FixedSupport,
-    GravityLoad,
     Part,
     PrescribedSupport,
     RollerSupport,
 )
 from screenapp.window.board.placing_kinds import (
-    OWN_WEIGHT,
     Record,
     Way,
+    body_ways,
     holding_ways,
     loading_ways,
     read_back,
@@ -66,15 +66,16 @@ class Placing:
         if found is None or found.kind not in ("support", "load"):
             return
         record = found.record
-        if isinstance(record, GravityLoad):
-            ways: tuple[Way, ...] = (OWN_WEIGHT,)
+        title = ""
+        if isinstance(record, BodyLoad):
+            title, ways = body_ways(record)
         elif found.kind == "support":
             ways = holding_ways(part, record.on)  # type: ignore[union-attr]
         else:
             ways = loading_ways(part, record.on)  # type: ignore[union-attr]
-        on = getattr(record, "on", "")
+        on = getattr(record, "on", "") or getattr(record, "zone", None) or ""
         verb = "Hold" if found.kind == "support" else "Load"
-        title = f"{verb} {place_name(part, on)}" if on else "Own weight"
+        title = title or f"{verb} {place_name(part, on)}"
         self._open(title, ways, on, near, record)  # type: ignore[arg-type]
 
     def accept(self) -> bool:

@@ -10,19 +10,23 @@ from screenapp.model.features import find
 from screenapp.model.kinds import KindName
 from screenapp.model.part import (
     BearingLoad,
+    BodyLoad,
     CircleHole,
     FixedSupport,
     ForceLoad,
     GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
     Part,
     PointLoad,
     PrescribedSupport,
     PressureLoad,
     RollerSupport,
     ShearLoad,
+    SpinLoad,
     Support,
+    TemperatureLoad,
 )
 from screenapp.window.board.typed_entry import EntryField
 
@@ -102,6 +106,25 @@ def _pressure(id_: str, on: str, values: Values) -> Load | None:
 
 def _shear(id_: str, on: str, values: Values) -> Load | None:
     return ShearLoad(id_, on, values["shear"]) if "shear" in values else None
+
+
+def _moment(id_: str, on: str, values: Values) -> Load | None:
+    return MomentLoad(id_, on, values["moment"]) if "moment" in values else None
+
+
+def _spin(id_: str, _on: str, values: Values) -> Load | None:
+    if "speed" not in values:
+        return None
+    x, y = values.get("x", 0.0), values.get("y", 0.0)
+    return SpinLoad(id_, x, y, values["speed"], values.get("factor", 1.0))
+
+
+def _temperature(id_: str, on: str, values: Values) -> Load | None:
+    """`on` is the zone that it is of, "" for the whole part."""
+    if "change" not in values:
+        return None
+    x, y, start = values.get("x", 0.0), values.get("y", 0.0), values.get("start", 20.0)
+    return TemperatureLoad(id_, values["change"], x, y, start, on or None)
 
 
 DOWN = (("angle", -90.0),)
@@ -196,6 +219,48 @@ OWN_WEIGHT = Way(
 )
 
 
+MOMENT = Way(
+    "moment",
+    "Moment",
+    "An even shear round the hole; positive turns counter-clockwise.",
+    (EntryField("moment", "moment", "moment"),),
+    _moment,
+)
+SPIN = Way(
+    "spin",
+    "Spin",
+    "The part turns steadily about this point and its mass pulls outwards.",
+    (
+        EntryField("speed", "speed", "speed"),
+        EntryField("x", "about x", "length"),
+        EntryField("y", "y", "length"),
+        EntryField("factor", "forces times", "number", (), "1"),
+    ),
+    _spin,
+)
+TEMPERATURE = Way(
+    "temperature",
+    "Temperature",
+    "A change of temperature; a gradient makes it vary from place to place.",
+    (
+        EntryField("change", "change", "temperature_change"),
+        EntryField("start", "from", "temperature", (), "20 °C"),
+        EntryField("x", "and along x", "temperature_gradient", (), "even"),
+        EntryField("y", "along y", "temperature_gradient", (), "even"),
+    ),
+    _temperature,
+)
+
+
+def body_ways(load: BodyLoad) -> tuple[str, tuple[Way, ...]]:
+    """What a load that acts throughout the part is called, and how it is given."""
+    if isinstance(load, SpinLoad):
+        return "Spin", (SPIN,)
+    if isinstance(load, TemperatureLoad):
+        return "Change of temperature", (TEMPERATURE,)
+    return "Own weight", (OWN_WEIGHT,)
+
+
 def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     """The ways in which a place may be held, the most likely first."""
     found = find(part, on)
@@ -214,7 +279,7 @@ def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
     if found.kind == "corner":
         return (POINT,)
     if isinstance(found.record, CircleHole):
-        return BEARING, FORCE, PRESSURE, SHEAR
+        return BEARING, FORCE, PRESSURE, SHEAR, MOMENT
     return FORCE, PRESSURE, SHEAR, LINE
 
 
@@ -231,6 +296,14 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         return "pressure", {"pressure": record.pressure}
     if isinstance(record, ShearLoad):
         return "shear", {"shear": record.per_length}
+    if isinstance(record, MomentLoad):
+        return "moment", {"moment": record.moment}
+    if isinstance(record, SpinLoad):
+        names: tuple[str, ...] = ("speed", "x", "y", "factor")
+        return "spin", {name: getattr(record, name) for name in names}
+    if isinstance(record, TemperatureLoad):
+        names = ("change", "start", "x", "y")
+        return "temperature", {name: getattr(record, name) for name in names}
     keys: dict[type, str] = {
         ForceLoad: "force",
         BearingLoad: "bearing",

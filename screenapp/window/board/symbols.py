@@ -9,7 +9,7 @@ from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.combinations import loadings
-from screenapp.model.part import BearingLoad, ForceLoad, GravityLoad, Load, Support
+from screenapp.model.part import BearingLoad, BodyLoad, ForceLoad, Load, Support
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
@@ -34,8 +34,8 @@ def support_marks(drawn: DrawnPart, frame: Frame, support: Support) -> list[Mark
 
 def load_marks(drawn: DrawnPart, frame: Frame, load: Load) -> list[Mark]:
     """The symbol of a load, or one on each hole of a pattern; the value stands once."""
-    places = () if isinstance(load, GravityLoad) else drawn.members_of(load.on)
-    if isinstance(load, GravityLoad) or not places:
+    places = () if isinstance(load, BodyLoad) else drawn.members_of(load.on)
+    if isinstance(load, BodyLoad) or not places:
         return [load_mark(drawn, frame, load)]
     marks = [load_mark(drawn, frame, replace(load, on=on)) for on in places]
     if marks[0].label and isinstance(load, ForceLoad | BearingLoad):

@@ -5,17 +5,23 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 from dataclasses import replace
+from typing import Any
 
 from screenapp.model import edits
 from screenapp.model.part import (
     BearingLoad,
+    CircleHole,
     ForceLoad,
     GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
+    Part,
     PointLoad,
     PressureLoad,
     ShearLoad,
+    SpinLoad,
+    TemperatureLoad,
 )
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import remove, with_field
@@ -23,6 +29,12 @@ from screenapp.window.sheet.direction import components, read_direction
 
 FIRST_FORCE, FIRST_LINE, FIRST_PRESSURE = 100.0, 1.0, 1.0
 """What a new load begins with [N, N/mm, MPa]: never nothing, so that it is seen on the board."""
+
+FIRST_MOMENT, FIRST_SPEED, FIRST_CHANGE = 10_000.0, 1000.0, 20.0
+"""[N·mm, 1/min, K]."""
+
+Directed = LineLoad | ForceLoad | BearingLoad | PointLoad | GravityLoad
+"""Loads with a size and a direction."""
 
 FREE_FALL = 9.80665
 """Standard gravity [m/s²] (3rd CGPM, 1901; from memory)."""
@@ -42,12 +54,18 @@ def add_load(document: Document, case: str | None, key: str) -> None:
         part = edits.add_case(part)
         case = part.cases[-1].id
     kind, _, on = key.partition(" ")
-    load = _first_load(kind, edits.new_id(part, "l"), on)
+    load = _first_load(part, kind, edits.new_id(part, "l"), on)
     document.apply(f"load {on}".strip(), edits.add_load(part, case, load))
     document.select(load.id)
 
 
-def _first_load(kind: str, id_: str, on: str) -> Load:
+def _first_load(part: Part, kind: str, id_: str, on: str) -> Load:
+    if kind == "spin":
+        return SpinLoad(id_, *_middle(part), FIRST_SPEED)
+    if kind == "temperature":
+        return TemperatureLoad(id_, FIRST_CHANGE)
+    if kind == "moment":
+        return MomentLoad(id_, on, FIRST_MOMENT)
     if kind == "gravity":
         return GravityLoad(id_, 0.0, -FREE_FALL)
     if kind == "pressure":
@@ -61,6 +79,11 @@ def _first_load(kind: str, id_: str, on: str) -> Load:
     if kind == "force":
         return ForceLoad(id_, on, 0.0, -FIRST_FORCE)
     return PointLoad(id_, on, 0.0, -FIRST_FORCE)
+
+
+def _middle(part: Part) -> tuple[float, float]:
+    """The centre of the first round hole, else the origin: what a part most likely turns about."""
+    return next((h.centre for h in part.holes if isinstance(h, CircleHole)), (0.0, 0.0))
 
 
 class CaseChange:
@@ -91,14 +114,14 @@ class LoadChange:
         self._document = document
         self._load = load
 
-    def setter(self, field: str) -> Callable[[float], None]:
+    def setter(self, field: str) -> Callable[[Any], None]:
         """A function that sets a field."""
         return lambda value: self._put(with_field(self._find(), field, value))
 
     def resize(self, size: float) -> None:
         """Another size in the same direction; a negative one turns it round."""
         load = self._find()
-        assert not isinstance(load, PressureLoad | ShearLoad)
+        assert isinstance(load, Directed)
         x, y = load.x, load.y
         old = math.hypot(x, y)
         ux, uy = (x / old, y / old) if old > 0.0 else (0.0, -1.0)
@@ -107,7 +130,7 @@ class LoadChange:
     def direct(self, text: str) -> None:
         """Another direction, the same size."""
         load = self._find()
-        assert not isinstance(load, PressureLoad | ShearLoad)
+        assert isinstance(load, Directed)
         x, y = components(math.hypot(load.x, load.y), read_direction(text))
         self._put(replace(load, x=x, y=y))
 

@@ -11,6 +11,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.features import everything, name_of, place_name
 from screenapp.model.part import (
     BearingLoad,
+    BodyLoad,
     Case,
     CircleHole,
     Corner,
@@ -18,12 +19,17 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MomentLoad,
+    Part,
     PointLoad,
     PressureLoad,
     ShearLoad,
+    SpinLoad,
+    TemperatureLoad,
 )
 from screenapp.window.document import Document
 from screenapp.window.sheet import load_changes
+from screenapp.window.sheet.body_load_rows import spin_pieces, temperature_pieces
 from screenapp.window.sheet.combination_rows import add_link, combination_row
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
@@ -39,6 +45,14 @@ KIND_WORDS = {
     "pressure": "a pressure",
     "shear": "a shear along it",
     "point": "a force at the point",
+    "moment": "a moment, sheared round it",
+}
+
+
+BODY_NAMES: dict[type, str] = {
+    GravityLoad: "own weight",
+    SpinLoad: "spin",
+    TemperatureLoad: "change of temperature",
 }
 
 
@@ -162,7 +176,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
         if found.kind == "hole":
             kinds = ("force", "line", "pressure", "shear")
             if isinstance(record, CircleHole):
-                kinds = ("bearing", *kinds)
+                kinds = ("bearing", *kinds, "moment")
             title = "Holes"
         elif found.kind == "edge":
             kinds, title = ("force", "line", "pressure", "shear"), "Edges"
@@ -179,21 +193,29 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
     for title, lines_of in groups.items():
         if lines_of:
             made += [Choice("-", title), *lines_of]
-    return (*made, Choice("-", ""), Choice("gravity", "the part's own weight"))
+    return (
+        *made,
+        Choice("-", ""),
+        Choice("gravity", "the part's own weight", "or any acceleration"),
+        Choice("spin", "spin about a point"),
+        Choice("temperature", "a change of temperature"),
+    )
 
 
 def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowOf:
     change = load_changes.LoadChange(document, load.id)
     also: tuple[str, ...]
-    if isinstance(load, GravityLoad):
-        where, also, name = "everywhere", (), "own weight"
+    if isinstance(load, BodyLoad):
+        where, also, name = "everywhere", (), BODY_NAMES[type(load)]
+        if isinstance(load, TemperatureLoad) and load.zone is not None:
+            where, also = f"zone {load.zone}", (load.zone,)
     else:
         where, also = place_name(document.part, load.on), (load.on,)
         name = f"load at {where}"
     return RowOf(
         load.id,
         (where,),
-        _load_pieces(load, name, change, q, f"cases.{case.id}.loads.{load.id}"),
+        _load_pieces(document.part, load, name, change, q, f"cases.{case.id}.loads.{load.id}"),
         change.remove,
         f"Remove the {name} from {case.name}",
         also,
@@ -201,7 +223,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
 
 
 def _load_pieces(
-    load: Load, name: str, change: load_changes.LoadChange, q: Quantities, field: str
+    part: Part, load: Load, name: str, change: load_changes.LoadChange, q: Quantities, field: str
 ) -> tuple[Piece | str, ...]:
     if isinstance(load, PressureLoad):
         value = q.value(
@@ -225,6 +247,21 @@ def _load_pieces(
             f"{field}.per_length",
         )
         return ("sheared along by ", value)
+    if isinstance(load, MomentLoad):
+        value = q.value(
+            "m",
+            load.moment,
+            "moment",
+            f"Moment of {name}",
+            change.setter("moment"),
+            "positive turns counter-clockwise",
+            f"{field}.moment",
+        )
+        return ("turned by ", value)
+    if isinstance(load, SpinLoad):
+        return spin_pieces(load, change, q, field)
+    if isinstance(load, TemperatureLoad):
+        return temperature_pieces(part, load, change, q, field)
     kinds = {
         BearingLoad: ("a pin bears with ", "force"),
         ForceLoad: ("pulled by ", "force"),

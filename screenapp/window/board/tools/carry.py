@@ -8,7 +8,7 @@ from screenapp.model import edits
 from screenapp.model.edits import EditError
 from screenapp.model.features import find, place_name
 from screenapp.model.members import whole_id
-from screenapp.model.part import GravityLoad, Part
+from screenapp.model.part import BodyLoad, Part
 from screenapp.window.board.drawn_part import drawn_part
 from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.tools.base import Place
@@ -39,7 +39,7 @@ class Carry:
         found = find(canvas.document.part, id_)
         if found is None or found.kind not in ("support", "load"):
             return None
-        return None if isinstance(found.record, GravityLoad) else cls(canvas, id_)
+        return None if isinstance(found.record, BodyLoad) else cls(canvas, id_)
 
     def move(self, place: Place) -> None:
         """Light the place under the cursor and show the symbol there."""

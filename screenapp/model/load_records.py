@@ -1,0 +1,139 @@
+"""How a part may be loaded: one frozen record for each kind of load.
+
+Units are those of `part.py`.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class PressureLoad:
+    """A pressure [MPa] on the wall's face along an edge or hole; positive pushes on the material.
+
+    The force per length is pressure x thickness.
+    """
+
+    id: str
+    on: str
+    pressure: float
+
+
+@dataclass(frozen=True)
+class ShearLoad:
+    """A shear force per length [N/mm] along an edge or hole.
+
+    Positive acts with the material on its left (counter-clockwise round the outline, clockwise
+    round a hole).
+    """
+
+    id: str
+    on: str
+    per_length: float
+
+
+@dataclass(frozen=True)
+class LineLoad:
+    """A force per length with components `x`, `y` [N/mm] along an edge or hole."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class ForceLoad:
+    """A total force `x`, `y` [N] spread evenly along an edge or round a hole."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class BearingLoad:
+    """A pin's force `x`, `y` [N] on a circular hole: radial pressure, cosine over the half it
+    bears on (common practice, no source)."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class PointLoad:
+    """A force `x`, `y` [N] at a sharp corner; the stress under it has no finite value."""
+
+    id: str
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class GravityLoad:
+    """The part's own weight under the free-fall acceleration `x`, `y` [m/s²], e.g. (0, -9.81)."""
+
+    id: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
+class MomentLoad:
+    """A moment [N·mm] on a circular hole, positive counter-clockwise.
+
+    It acts as an even shear all round the rim; on a pattern each hole takes an equal share.
+    """
+
+    id: str
+    on: str
+    moment: float
+
+
+@dataclass(frozen=True)
+class SpinLoad:
+    """The part turns steadily about a point: each bit of it pulls outwards with ρ ω² r.
+
+    Attributes:
+        x, y: the point [mm].
+        speed: [1/min]; its sign does not matter.
+        factor: all forces count so many times.
+    """
+
+    id: str
+    x: float
+    y: float
+    speed: float
+    factor: float = 1.0
+
+
+@dataclass(frozen=True)
+class TemperatureLoad:
+    """A change of temperature: the material would like to grow by α ΔT in every direction.
+
+    The change at a place is `change` + `x`·(its x) + `y`·(its y).
+
+    Attributes:
+        change: at the origin; everywhere where there is no gradient [K].
+        x, y: gradient [K/mm].
+        start: temperature at which nothing is strained [°C].
+        zone: id of the only zone that changes; None for the whole part.
+    """
+
+    id: str
+    change: float
+    x: float = 0.0
+    y: float = 0.0
+    start: float = 20.0
+    zone: str | None = None
+
+
+PlacedLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad | MomentLoad
+BodyLoad = GravityLoad | SpinLoad | TemperatureLoad
+"""Loads that act throughout the part, not on a place of its boundary."""
+Load = PlacedLoad | BodyLoad

@@ -1,0 +1,42 @@
+"""How a part may be held: one frozen record for each kind of support.
+
+Units are those of `part.py`.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+@dataclass(frozen=True)
+class FixedSupport:
+    """Holds an edge, a hole's rim or a sharp corner in both directions."""
+
+    id: str
+    on: str
+
+
+@dataclass(frozen=True)
+class RollerSupport:
+    """Holds the displacement along one direction and lets the place slide across it.
+
+    `angle` [deg] is the held direction; None means the boundary's own normal (so on a hole it is
+    the radial direction: a pin on which the part can turn).  A corner needs an angle.
+    """
+
+    id: str
+    on: str
+    angle: float | None = None
+
+
+@dataclass(frozen=True)
+class PrescribedSupport:
+    """Moves a place by a given displacement [mm]; None leaves that direction free."""
+
+    id: str
+    on: str
+    x: float | None = None
+    y: float | None = None
+
+
+Support = FixedSupport | RollerSupport | PrescribedSupport

@@ -1,0 +1,90 @@
+"""Loads that act throughout a part, and a moment on a hole, by the user's path."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import replace
+
+import pytest
+
+from screenapp.model.part import (
+    Case,
+    CircleHole,
+    FixedSupport,
+    Material,
+    MeshWishes,
+    MomentLoad,
+    Part,
+    Probe,
+    RollerSupport,
+    SpinLoad,
+    TemperatureLoad,
+    Wall,
+    Zone,
+)
+from tests.evidence.screened import Screened, chain
+from tests.evidence.table import record
+from tests.evidence.test_screened_ring import quarter_ring
+
+NU, DENSITY = 0.3, 7850.0
+
+
+def test_hot_spot_membrane(screened: Screened) -> None:
+    """A round spot is warmed: 50 MPa along its rim, just outside (NAFEMS T1, from memory)."""
+    part = Part(
+        outline=chain([(0.0, 0.0), (10.0, 0.0), (10.0, 10.0), (0.0, 10.0)]),
+        zones=(Zone(CircleHole("z1", (0.0, 0.0), 2.0), 1.0),),
+        wall=Wall(1.0, "plate"),
+        materials=(Material("plate", 100_000.0, NU, DENSITY, expansion=1e-5),),
+        supports=(RollerSupport("s1", "e1"), RollerSupport("s2", "e4")),
+        cases=(Case("k1", "spot", (TemperatureLoad("l1", 100.0, zone="z1"),)),),
+        readings=(Probe("p1", "rim", (1.0, 0.0)),),
+        mesh=MeshWishes(tolerance=0.005),
+    )
+    found = screened(part).reading("rim", "sigma_y")
+    error = 100.0 * (found.value / 50.0 - 1.0)
+    record("hot spot in a membrane: stress beside it [MPa]", "NAFEMS T1, from memory", 50.0,
+           found.value, error, "1 %")  # fmt: skip
+    assert abs(error) < 1.0  # the plate is finite: (1/10)² of the stress
+    assert found.trust == "settled"
+
+
+def test_spinning_ring(screened: Screened) -> None:
+    """Hoop stress at the bore of a ring that spins (Timoshenko & Goodier, art. 32, from memory):
+    (3 + ν)/4 ρ ω² (b² + (1 - ν)/(3 + ν) a²) with the inner and outer radius a and b."""
+    inner, outer, speed = 20.0, 40.0, 12_000.0
+    part = quarter_ring("plane stress")
+    part = replace(part, cases=(Case("k1", "spin", (SpinLoad("l1", 0.0, 0.0, speed),)),))
+    pull = 1e-12 * DENSITY * (speed * 2.0 * math.pi / 60.0) ** 2
+    hoop = 0.25 * (3 + NU) * pull * (outer**2 + (1 - NU) / (3 + NU) * inner**2)
+    moved = hoop / 210_000.0 * inner  # free of radial stress there
+    case = screened(part)
+    for quantity, wanted in (("sigma_y", hoop), ("u_x", moved)):
+        found = case.reading("bore", quantity)
+        error = 100.0 * (found.value / wanted - 1.0)
+        record(f"spinning ring: {quantity} at the bore", "Timoshenko & Goodier, from memory",
+               wanted, found.value, error, "0.1 %")  # fmt: skip
+        assert abs(error) < 0.1
+        assert found.trust == "settled"
+
+
+@pytest.mark.parametrize("moment", [12_000.0, -5_000.0])
+def test_moment_on_a_hole(moment: float, screened: Screened) -> None:
+    """A disc held at its rim and turned at its hole is in pure shear, M / (2 π r² t)."""
+    size, thick = 30.0, 2.0
+    part = Part(
+        outline=chain([(size, 0.0), (-size, 0.0)], {0: (0.0, size), 1: (0.0, -size)}),
+        holes=(CircleHole("h1", (0.0, 0.0), 20.0),),
+        wall=Wall(thick, "steel"),
+        materials=(Material("steel", 210_000.0, NU, DENSITY),),
+        supports=(FixedSupport("s1", "e1"), FixedSupport("s2", "e2")),
+        cases=(Case("k1", "turn", (MomentLoad("l1", "h1", moment),)),),
+        readings=(Probe("p1", "between", (18.0, 0.0)), Probe("p2", "hole", (10.0, 0.0))),
+        mesh=MeshWishes(tolerance=0.005),
+    )
+    case = screened(part)
+    for name, r in (("between", 18.0), ("hole", 10.0)):
+        wanted = -moment / (2.0 * math.pi * r**2 * thick)
+        assert case.reading(name, "tau_xy").value == pytest.approx(wanted, rel=2e-3)
+    given = sum(r["moment"] for r in case.tree["cases"][0]["reactions"])
+    assert given == pytest.approx(-moment, rel=1e-6)
