@@ -10,6 +10,7 @@ from pytestqt.qtbot import QtBot
 
 from screenapp.model.part import CircleHole, FixedSupport, SlotHole
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
+from screenapp.window.board.dimension_marks import marks_of
 from tests.window.board_kit import Hand, plate
 
 SHIFT = Qt.KeyboardModifier.ShiftModifier
@@ -174,3 +175,22 @@ def test_f2_changes_count_and_pitch(row: Hand) -> None:
     row.type("40")
     row.enter()
     assert only(row).pattern == RowPattern(2, 40.0)
+
+
+def test_the_diameter_of_a_bolt_circle_stands_at_a_hole(hand: Hand) -> None:
+    circle = CircleHole("h1", (50.0, 30.0), 6.0, BoltCircle(6, 20.0, 0.0))
+    hand.document.apply("circle", replace(hand.part, holes=(circle,)))
+    hand.document.select("h1")
+    marks = marks_of(hand.canvas.drawn, ("h1",), False)
+    mark = next(m for m in marks if m.what == "diameter")
+    middle = (mark.a[0] + mark.b[0]) / 2.0, (mark.a[1] + mark.b[1]) / 2.0
+    assert middle == pytest.approx((70.0, 30.0))
+
+
+def test_the_cursor_tells_pattern_and_member(row: Hand) -> None:
+    row.go(50.0, 20.0)
+    assert row.canvas.viewport().toolTip() == "hole h1.2, ⌀ 8 mm, one of row of holes h1"
+    row.key(Qt.Key.Key_PageDown)
+    while row.document.selection != ("h1",):
+        row.key(Qt.Key.Key_PageDown)
+    assert row.said[-1] == "Selected: row of holes h1, 3 holes, each ⌀ 8 mm."

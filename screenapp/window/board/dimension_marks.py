@@ -154,7 +154,8 @@ def _sizes(
         told.add(hole.diameter)
         count = alike[hole.diameter] if everything else len(members(hole))
         lead = f"{count} × ⌀\u2009" if count > 1 else "⌀\u2009"
-        (x, y), r = hole.centre, hole.diameter / 2.0
+        one = next(iter(members(hole)), hole)  # a bolt circle's own centre is no hole
+        (x, y), r = one.centre if isinstance(one, CircleHole) else hole.centre, hole.diameter / 2.0
         slant = (math.cos(math.radians(40.0)), math.sin(math.radians(40.0)))
         a, b = (x - r * slant[0], y - r * slant[1]), (x + r * slant[0], y + r * slant[1])
         given = formula_at(part, f"holes.{hole.id}.diameter") is not None

@@ -29,6 +29,7 @@ from screenapp.model.part import (
     TemperatureLoad,
     Zone,
 )
+from screenapp.model.pattern import size_of
 from screenapp.model.restated import restated
 from screenapp.model.units import format_quantity
 from screenapp.window.board.hit_test import Hit
@@ -51,14 +52,22 @@ def described(part: Part, found: Found) -> str:
     """The name of something with its size, or what it does: "hole h1, ⌀ 12 mm"."""
     record, units = found.record, part.display_units
     words = name_of(found)
-    if isinstance(record, CircleHole):
-        return f"{words}, ⌀ {_length(record.diameter, units)}"
-    if isinstance(record, SlotHole):
-        return f"slot {record.id}, {_length(record.length, units)} × {_length(record.width, units)}"
+    if isinstance(record, CircleHole | SlotHole):
+        if isinstance(record, CircleHole):
+            size = f"⌀ {_length(record.diameter, units)}"
+        else:
+            size = f"{_length(record.length, units)} × {_length(record.width, units)}"
+        if record.pattern is not None:
+            return f"{words}, {size_of(record.pattern)} holes, each {size}"
+        one = words if isinstance(record, CircleHole) else f"slot {record.id}"
+        whole = f", one of {place_name(part, found.owner)}" if found.owner else ""
+        return f"{one}, {size}{whole}"
     if isinstance(record, Zone):
         return f"{words}{f' ({record.name})' if record.name else ''}, {zone_words(record, part)}"
     if isinstance(record, Corner) and record.round:
         return f"{words}, R {_length(record.round, units)}"
+    if isinstance(record, Corner) and record.chamfer:
+        return f"{words}, {_length(record.chamfer, units)} off both edges"
     if isinstance(record, Probe):
         return f"probe {record.name}"
     if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
