@@ -293,4 +293,4 @@ def test_random_edits_never_break_a_record() -> None:
             suppress_health_check=list(HealthCheck),
         ),
     )
-    assert Editing.total > STEPS // 2  # changes made, not only refused
+    assert Editing.total > STEPS // 3  # changes made; the rest was refused, undone or no change

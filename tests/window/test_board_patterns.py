@@ -188,6 +188,7 @@ def test_the_diameter_of_a_bolt_circle_stands_at_a_hole(hand: Hand) -> None:
 
 
 def test_the_cursor_tells_pattern_and_member(row: Hand) -> None:
+    row.go(34.0, 44.0)
     row.go(50.0, 20.0)
     assert row.canvas.viewport().toolTip() == "hole h1.2, ⌀ 8 mm, one of row of holes h1"
     row.key(Qt.Key.Key_PageDown)
