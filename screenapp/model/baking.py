@@ -36,7 +36,19 @@ def baked(loop: Loop, others: Sequence[Curve], part: Part | None = None) -> Loop
         made = cut[0]
         corners += [Corner(corner.id, made.start), Corner(next(corner_ids), made.end)]
         edges += [Edge(next(edge_ids), _middle(made)), edge]
-    return _arcs_kept(Loop(tuple(corners), tuple(edges)), loop, curves, cuts, set(hit))
+    whole = _arcs_kept(Loop(tuple(corners), tuple(edges)), loop, curves, cuts, set(hit))
+    return _without_used_up(whole)
+
+
+def _without_used_up(loop: Loop) -> Loop:
+    """The loop without edges that two full rounds leave no length."""
+    curves = edge_curves(loop)
+    least = 1e-9 * max(curve.length for curve in curves)
+    gone = {i for i, curve in enumerate(curves) if curve.length <= least}
+    if not gone:
+        return loop
+    corners = tuple(c for i, c in enumerate(loop.corners) if i not in gone)
+    return Loop(corners, tuple(e for i, e in enumerate(loop.edges) if i not in gone))
 
 
 def _met(

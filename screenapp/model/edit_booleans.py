@@ -19,6 +19,7 @@ from screenapp.model.loop_curves import edge_curves
 from screenapp.model.members import all_holes, members, patterned
 from screenapp.model.part import (
     BearingLoad,
+    BodyLoad,
     CircleHole,
     Corner,
     Edge,
@@ -180,7 +181,7 @@ def _rebuilt(part: Part, sources: list[_Source], outer: Ring, inner: list[Ring])
     ids = new_ids(part, "h", len(fresh))
     holes += [LoopHole(id_, builder.loop(r)) for id_, r in zip(ids, fresh, strict=True)]
     after = replace(part, outline=outline, holes=tuple(holes))
-    bare = drop_from_places(after, _places(part) - _places(after))
+    bare = drop_from_places(after, _stood_on(after) - _places(after))
     loose = _without_loose_pins(bare.part)
     return Outcome(settle(part, loose.part), (*bare.lost, *loose.lost))
 
@@ -197,6 +198,11 @@ def _without_loose_pins(part: Part) -> Outcome:
         lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in loose]
         cases.append(replace(case, loads=tuple(x for x in case.loads if x not in loose)))
     return Outcome(replace(part, cases=tuple(cases)) if lost else part, tuple(lost))
+
+
+def _stood_on(part: Part) -> set[str]:
+    loads = (x for c in part.cases for x in c.loads if not isinstance(x, BodyLoad))
+    return {s.on for s in part.supports} | {load.on for load in loads}
 
 
 def _places(part: Part) -> set[str]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from screenapp.model.features import everything, place_name, places_of
-from screenapp.model.part import GravityLoad, Part
+from screenapp.model.part import BodyLoad, Part
 from screenapp.model.part_json import part_from_text, part_to_text
 from screenapp.model.size_faults import id_faults
 from screenapp.model.validity import faults_of
@@ -22,7 +22,7 @@ def check_record(part: Part) -> str:
     assert id_faults(part) == []
     places = places_of(part)
     for on in [s.on for s in part.supports] + [
-        x.on for c in part.cases for x in c.loads if not isinstance(x, GravityLoad)
+        x.on for c in part.cases for x in c.loads if not isinstance(x, BodyLoad)
     ]:
         assert on in places, on
     for found in everything(part):

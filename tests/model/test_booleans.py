@@ -17,7 +17,7 @@ from hypothesis import strategies as st
 
 from screenapp.model import edits
 from screenapp.model.curves import Arc
-from screenapp.model.hole_loops import circle_loop, slot_loop
+from screenapp.model.hole_loops import circle_loop, ring_loop, slot_loop
 from screenapp.model.part import (
     BearingLoad,
     CircleHole,
@@ -202,6 +202,18 @@ def test_a_support_on_a_corner_rounded_since_goes_with_it() -> None:
     made = edits.cut(part, box(80.0, -10.0, 120.0, 20.0))
     assert made.lost == ("support s2 on c2",)
     assert [s.on for s in made.part.supports] == ["e4"]
+
+
+def test_an_edge_used_up_by_full_rounds_is_no_hindrance() -> None:
+    """Found by the state machine: the ring's short sides have no length beside their rounds."""
+    ring = ring_loop(edits.rectangle_corners((90.0, 20.0), (110.0, 30.0)), None, 5.0)
+    made = edits.cut(BARE, ring)
+    assert sound(made.part).area == pytest.approx(5000.0 - HOLE - 50.0 - 12.5 * math.pi)
+    full = plate(rectangle(100.0, 50.0, 25.0), CircleHole("h1", (50.0, 25.0), 10.0))
+    full = edits.add_support(full, FixedSupport("", "e1"))
+    other = edits.cut(full, box(-5.0, 20.0, 5.0, 30.0)).part
+    assert sound(other).area < shape_of(full).area
+    assert [s.on for s in other.supports] == ["e1"]
 
 
 def test_what_makes_no_part_is_refused() -> None:
