@@ -114,8 +114,8 @@ def _flatten(value: Any, path: str, into: dict[str, str]) -> None:
 def _uses(before: Findings, after: Findings) -> tuple[UseChange, ...]:
     """Limits by id and case; the words are those of the later screening where it has them."""
     names = {c.case: c.name for f in (before, after) for c in f.cases}
-    one = {(g.limit, g.case): g for g in before.limits}
-    other = {(g.limit, g.case): g for g in after.limits}
+    one = {(g.limit, g.case, g.rule): g for g in before.limits}
+    other = {(g.limit, g.case, g.rule): g for g in after.limits}
     rows = []
     for key in dict.fromkeys((*one, *other)):
         was, now = one.get(key), other.get(key)

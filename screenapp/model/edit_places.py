@@ -7,11 +7,11 @@ from dataclasses import replace
 
 from screenapp.model.edit_rules import Outcome, must_find
 from screenapp.model.members import member_ids
-from screenapp.model.part import BodyLoad, LoopHole, Part
+from screenapp.model.part import BodyLoad, JointLimit, LoopHole, Part
 
 
 def moved_references(part: Part, to: Mapping[str, str]) -> Part:
-    """Supports and loads on the keys of `to` put on its values (the places stay as they are)."""
+    """Supports, loads and limits on the keys of `to` put on its values; the places stay."""
     supports = tuple(replace(s, on=to[s.on]) if s.on in to else s for s in part.supports)
     cases = tuple(
         replace(
@@ -23,11 +23,15 @@ def moved_references(part: Part, to: Mapping[str, str]) -> Part:
         )
         for case in part.cases
     )
-    return replace(part, supports=supports, cases=cases)
+    limits = tuple(
+        replace(g, on=to[g.on]) if isinstance(g, JointLimit) and g.on in to else g
+        for g in part.limits
+    )
+    return replace(part, supports=supports, cases=cases, limits=limits)
 
 
 def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
-    """Remove the supports and loads that are on any of the places (not the places themselves)."""
+    """Remove the supports, loads and limits on any of the places, not the places themselves."""
     lost: list[str] = []
     supports = []
     for support in part.supports:
@@ -41,9 +45,14 @@ def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
         lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in gone]
         loads = tuple(x for x in case.loads if x not in gone)
         cases.append(replace(case, loads=loads) if gone else case)
+    gone_limits = [g for g in part.limits if isinstance(g, JointLimit) and g.on in places]
+    lost += [f"limit {g.id} on {g.on}" for g in gone_limits]
+    limits = tuple(g for g in part.limits if g not in gone_limits)
     if not lost:
         return Outcome(part)
-    return Outcome(replace(part, supports=tuple(supports), cases=tuple(cases)), tuple(lost))
+    return Outcome(
+        replace(part, supports=tuple(supports), cases=tuple(cases), limits=limits), tuple(lost)
+    )
 
 
 def remove_outline(part: Part) -> Outcome:

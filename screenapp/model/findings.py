@@ -201,7 +201,11 @@ class CutFindings:
 
 @dataclass(frozen=True)
 class LimitFindings:
-    """One limit in one case: how much of it is used (1.0 is all), with band and verdict."""
+    """One limit in one case: how much of it is used (1.0 is all), with band and verdict.
+
+    A limit of several rules has one of these for each: `rule` tells them apart by words that stay
+    when numbers change, e.g. "h1 bearing".  `assumed` says what the number takes for granted.
+    """
 
     limit: str
     name: str
@@ -211,6 +215,8 @@ class LimitFindings:
     at: Point
     place: str
     reason: str
+    assumed: str = ""
+    rule: str = ""
 
 
 @dataclass(frozen=True)

@@ -8,14 +8,27 @@ from typing import get_args
 
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST
+from screenapp.model.features import find
+from screenapp.model.joint_rules import joint_rules
 from screenapp.model.material_faults import positive
-from screenapp.model.part import DisplacementLimit, Part, StressLimit, StressMeasure
+from screenapp.model.part import (
+    CircleHole,
+    DisplacementLimit,
+    JointLimit,
+    Limit,
+    Material,
+    Part,
+    StressLimit,
+    StressMeasure,
+)
 
 
 def limit_faults(part: Part) -> Iterator[Fault]:
     """Limits that cannot be judged."""
     for limit in part.limits:
         where = f"limits.{limit.id}"
+        if isinstance(limit, JointLimit):
+            yield from _joint_limit_faults(limit, part, where)
         if isinstance(limit, StressLimit):
             yield from _stress_limit_faults(limit, where)
         elif isinstance(limit, DisplacementLimit):
@@ -43,6 +56,47 @@ def _displacement_limit_faults(limit: DisplacementLimit, where: str) -> Iterator
             "give a direction in degrees from +x, or leave it out",
             f"{where}.angle",
             (limit.id,),
+        )
+
+
+def _joint_limit_faults(limit: JointLimit, part: Part, where: str) -> Iterator[Fault]:
+    about = (limit.id,)
+    found = find(part, limit.on)
+    hole = found.record if found is not None else None
+    if not isinstance(hole, CircleHole):
+        what = "is not there" if found is None else "is no round hole"
+        yield Fault(
+            f"limit {limit.id} is on {limit.on}, which {what}",
+            "choose a round hole that carries a pin",
+            f"{where}.on",
+            about,
+        )
+    if limit.rules not in joint_rules():
+        yield Fault(
+            f"limit {limit.id} asks for the rules “{limit.rules}”",
+            f"choose one of: {', '.join(joint_rules())}",
+            f"{where}.rules",
+            about,
+        )
+    for name, words, example in (
+        ("factor", "the factor", "1"),
+        ("pin", "the pin", "12"),
+        ("pin_strength", "the pin's strength", "800"),
+    ):
+        value = getattr(limit, name)
+        if value is not None and not positive(value):
+            yield Fault(
+                f"{words} of limit {limit.id} is {value:g}",
+                f"give a number above zero, e.g. {example}",
+                f"{where}.{name}",
+                about,
+            )
+    if isinstance(hole, CircleHole) and limit.pin is not None and limit.pin > hole.diameter:
+        yield Fault(
+            f"the pin of limit {limit.id} has {limit.pin:g} mm, its hole {hole.diameter:g} mm",
+            "give a pin that goes into the hole",
+            f"{where}.pin",
+            about,
         )
 
 
@@ -75,15 +129,42 @@ def limit_material_faults(part: Part) -> Iterator[Fault]:
     used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
     materials = {m.name: m for m in used if m is not None}
     for limit in part.limits:
-        if not isinstance(limit, StressLimit):
-            continue
+        field = "against" if isinstance(limit, StressLimit) else "rules"
         for material in materials.values():
-            if getattr(material, limit.against, 0.0) is not None:
-                continue
-            words = limit.against.replace("_", " ")
-            yield Fault(
-                f"limit {limit.id} asks for the {words}, which “{material.name}” has not",
-                f"give the material a {words}, or change the limit",
-                f"limits.{limit.id}.against",
-                (limit.id,),
-            )
+            for stress in _asked(limit):
+                if getattr(material, stress, 0.0) is not None:
+                    continue
+                words = stress.replace("_", " ")
+                yield Fault(
+                    f"limit {limit.id} asks for the {words}, which “{material.name}” has not",
+                    f"give the material a {words}, or change the limit",
+                    f"limits.{limit.id}.{field}",
+                    (limit.id,),
+                )
+            if isinstance(limit, JointLimit):
+                yield from _foreign_material(limit, material)
+
+
+def _asked(limit: Limit) -> tuple[str, ...]:
+    """The stresses that a limit asks of a material, by their fields."""
+    if isinstance(limit, StressLimit):
+        return (limit.against,)
+    if isinstance(limit, JointLimit) and limit.rules in joint_rules():
+        return tuple(
+            dict.fromkeys(s for c in joint_rules()[limit.rules].checks for s in c.stresses)
+        )
+    return ()
+
+
+def _foreign_material(limit: JointLimit, material: Material) -> Iterator[Fault]:
+    rules = joint_rules().get(limit.rules)
+    if rules is None or material.family is None or material.family in rules.families:
+        return
+    yield Fault(
+        f"the rules {rules.name} of limit {limit.id} are written for "
+        f"{' and '.join(rules.families)}, not for the {material.family} “{material.name}”",
+        "take what they say as a first guess only",
+        f"limits.{limit.id}.rules",
+        (limit.id,),
+        blocks=False,
+    )

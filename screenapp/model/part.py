@@ -305,7 +305,27 @@ class DisplacementLimit:
     angle: float | None = None
 
 
-Limit = StressLimit | DisplacementLimit
+@dataclass(frozen=True)
+class JointLimit:
+    """A round hole that carries a pin or bolt keeps to a handbook's rules.
+
+    Attributes:
+        on: id of the hole; of a pattern, every hole of it.
+        rules: name of the set in `resources/joint_rules.json`.
+        factor: times the force.
+        pin: diameter of the pin [mm], None for that of the hole.
+        pin_strength: tensile strength of the pin [MPa], None for at least that of the wall.
+    """
+
+    id: str
+    on: str
+    rules: str = "EN 1993-1-8"
+    factor: float = 1.0
+    pin: float | None = None
+    pin_strength: float | None = None
+
+
+Limit = StressLimit | DisplacementLimit | JointLimit
 
 
 @dataclass(frozen=True)

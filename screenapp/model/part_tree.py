@@ -26,6 +26,7 @@ from screenapp.model.part import (
     ForceLoad,
     Formula,
     GravityLoad,
+    JointLimit,
     LineLoad,
     Loop,
     LoopHole,
@@ -75,7 +76,11 @@ LOADS: dict[str, type] = {
     "spin": SpinLoad,
     "temperature": TemperatureLoad,
 }
-LIMITS: dict[str, type] = {"stress": StressLimit, "displacement": DisplacementLimit}
+LIMITS: dict[str, type] = {
+    "stress": StressLimit,
+    "displacement": DisplacementLimit,
+    "joint": JointLimit,
+}
 READINGS: dict[str, type] = {"probe": Probe, "cut": Cut}
 PATTERNS: dict[str, type] = {"row": RowPattern, "grid": GridPattern, "bolt circle": BoltCircle}
 

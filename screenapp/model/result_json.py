@@ -145,6 +145,8 @@ def _limit(limit: LimitFindings) -> Tree:
         "at": point_tree(limit.at),
         "place": limit.place,
         "reason": limit.reason,
+        "assumed": limit.assumed,
+        "rule": limit.rule,
     }
 
 

@@ -137,6 +137,8 @@ def _limit_of(tree: Tree) -> LimitFindings:
         point_of(tree["at"]),
         tree["place"],
         tree["reason"],
+        tree.get("assumed", ""),
+        tree.get("rule", ""),
     )
 
 

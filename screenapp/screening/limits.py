@@ -13,9 +13,10 @@ from dataclasses import dataclass
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
-from screenapp.model.part import DisplacementLimit, Part, StressLimit
+from screenapp.model.part import DisplacementLimit, JointLimit, Limit, Part, StressLimit
 from screenapp.model.shape import Shape
 from screenapp.screening.displacement_limits import displacement_limit_name, judge_displacement
+from screenapp.screening.joint_limits import judge_joint
 from screenapp.screening.passes import Pass
 from screenapp.screening.use import scaled
 
@@ -26,10 +27,12 @@ MEASURE_WORDS = {
 }
 
 
-def limit_name(limit: StressLimit | DisplacementLimit) -> str:
+def limit_name(limit: Limit) -> str:
     """The limit in a few words."""
     if isinstance(limit, DisplacementLimit):
         return displacement_limit_name(limit)
+    if isinstance(limit, JointLimit):
+        return f"hole {limit.on} by {limit.rules}"
     what = MEASURE_WORDS[limit.measure]
     against = "proof stress" if limit.against == "proof_stress" else "strength"
     rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
@@ -48,6 +51,8 @@ def judge_limits(
         for k, case in enumerate(cases):
             if isinstance(limit, StressLimit):
                 found.append(_stress(limit, part, case))
+            elif isinstance(limit, JointLimit):
+                found += judge_joint(limit, part, case, k, shape, passes)
             else:
                 found.append(judge_displacement(limit, part, case, k, shape, passes))
     return tuple(found)

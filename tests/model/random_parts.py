@@ -21,6 +21,7 @@ from screenapp.model.part import (
     ForceLoad,
     Formula,
     GravityLoad,
+    JointLimit,
     LineLoad,
     Loop,
     LoopHole,
@@ -140,6 +141,7 @@ def _limits(i: int) -> st.SearchStrategy[object]:
     measures, bounds = ["von_mises", "tresca", "sigma_1"], ["proof_stress", "strength"]
     return st.one_of(
         st.builds(StressLimit, name, st.sampled_from(measures), st.sampled_from(bounds), numbers),
+        st.builds(JointLimit, name, st.sampled_from(["h1", "h4.2"]), texts, numbers, maybe, maybe),
         st.builds(DisplacementLimit, name, numbers, st.none() | points, maybe),
     )
 

@@ -263,7 +263,7 @@ def test_the_governing_limit_is_the_worst_verdict_then_the_most_used() -> None:
 
 def test_names_of_limits() -> None:
     assert limit_name(STRESS) == "von Mises under proof stress with 1.5 in hand"
-    assert "largest principal under strength" in limit_name(
+    assert "largest principal (brittle) under strength" in limit_name(
         StressLimit("g1", "sigma_1", "strength", 2.0, "structural")
     )
     assert "structural stress" in limit_name(replace(STRESS, at_rising="structural"))

@@ -19,6 +19,7 @@ from screenapp.model.part import (
     FixedSupport,
     ForceLoad,
     GravityLoad,
+    JointLimit,
     Part,
     PrescribedSupport,
     RollerSupport,
@@ -253,6 +254,17 @@ def test_limits_say_what_they_allow(sheet: Sheet) -> None:
     assert isinstance(changed, DisplacementLimit)
     assert changed.at is not None
     assert changed == DisplacementLimit(new.id, 0.5, (12.0, changed.at[1]), 90.0)
+    pick(paragraph.add.field("joint"), "hole h1")
+    joint = sheet.document.part.limits[2]
+    assert joint == JointLimit(joint.id, "h1")
+    sentence = paragraph.list.row(joint.id).sentence
+    assert sentence.text == (
+        "The pin in hole h1 keeps to EN 1993-1-8 under its force times 1; pin as large as the "
+        "hole, its strength at least the wall's."
+    )
+    type_into(sentence.field("factor"), "1.35")
+    type_into(sentence.field("pin"), "8")
+    assert sheet.document.part.limits[2] == JointLimit(joint.id, "h1", factor=1.35, pin=8.0)
     pick(row.sentence.field("measure"), "Tresca stress")
     assert sheet.document.part.limits[0] == replace(wanted, measure="tresca")
     pick(row.sentence.field("against"), "tensile strength")

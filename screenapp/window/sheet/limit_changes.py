@@ -6,7 +6,7 @@ from collections.abc import Callable
 from typing import Any
 
 from screenapp.model import edits
-from screenapp.model.part import DisplacementLimit, Limit, StressLimit
+from screenapp.model.part import DisplacementLimit, JointLimit, Limit, StressLimit
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
 
@@ -22,6 +22,11 @@ def add_stress_limit(document: Document) -> None:
 def add_displacement_limit(document: Document) -> None:
     """At most one millimetre."""
     _add(document, "displacement limit", DisplacementLimit("", 1.0))
+
+
+def add_joint_limit(document: Document, on: str) -> None:
+    """The rules of a handbook for a hole with a pin."""
+    _add(document, "joint limit", JointLimit("", on))
 
 
 def _add(document: Document, name: str, limit: Limit) -> None:

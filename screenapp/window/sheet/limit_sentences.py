@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 from screenapp.model.errors import ScreenappError
-from screenapp.model.part import DisplacementLimit, Part
+from screenapp.model.features import place_name
+from screenapp.model.joint_rules import joint_rules
+from screenapp.model.part import CircleHole, DisplacementLimit, JointLimit, Part
 from screenapp.window.sheet.limit_changes import LimitChange
 from screenapp.window.sheet.pieces import Choice, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -57,6 +59,54 @@ def displacement_pieces(
         for i, (axis, value) in enumerate((("x", x), ("y", y)))
     ]
     return (where, " x ", numbers[0], ", y ", numbers[1], " never", *said)
+
+
+def joint_pieces(
+    part: Part, limit: JointLimit, change: LimitChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    """A hole keeps to the rules of a handbook for its pin."""
+    where = f"limits.{limit.id}"
+    on = Value(
+        "on",
+        place_name(part, limit.on),
+        "Hole that carries a pin",
+        change.setter("on"),
+        lambda: round_holes(part),
+        about=limit.on,
+    )
+    rules = Value(
+        "rules",
+        limit.rules,
+        "Which rules",
+        change.setter("rules"),
+        lambda: tuple(Choice(r.name, r.name, r.title) for r in joint_rules().values()),
+    )
+    factor = q.value(
+        "factor", limit.factor, "number", "Factor on the force", change.setter("factor"),
+        field=f"{where}.factor",
+    )  # fmt: skip
+    pin = q.optional_value(
+        "pin", limit.pin, "length", "Diameter of the pin", change.setter("pin"),
+        "as large as the hole", f"{where}.pin",
+    )  # fmt: skip
+    strength = q.optional_value(
+        "pin_strength", limit.pin_strength, "stress", "Tensile strength of the pin",
+        change.setter("pin_strength"), "at least the wall's", f"{where}.pin_strength",
+    )  # fmt: skip
+    return (
+        *("The pin in ", on, " keeps to ", rules, " under its force times ", factor),
+        *("; pin ", pin, ", its strength ", strength, "."),
+    )
+
+
+def round_holes(part: Part) -> tuple[Choice, ...]:
+    """The round holes and their patterns."""
+    found = []
+    for hole in part.holes:
+        if isinstance(hole, CircleHole):
+            remark = f"Ø {hole.diameter:.4g}"
+            found.append(Choice(hole.id, place_name(part, hole.id), remark))
+    return tuple(found)
 
 
 def _places(part: Part) -> tuple[Choice, ...]:

@@ -3,9 +3,9 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault
-from screenapp.model.part import DisplacementLimit, Limit, Part, StressLimit
+from screenapp.model.part import DisplacementLimit, JointLimit, Limit, Part, StressLimit
 from screenapp.window.sheet import changes, limit_changes
-from screenapp.window.sheet.limit_sentences import displacement_pieces
+from screenapp.window.sheet.limit_sentences import displacement_pieces, joint_pieces, round_holes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -41,6 +41,13 @@ class LimitsParagraph(Paragraph):
         part = self.document.part
         q = Quantities.of(self.document)
         self.list.set([self._row(part, limit, q) for limit in part.limits])
+        joint = Link(
+            "joint",
+            "+ pin or bolt",
+            lambda key: limit_changes.add_joint_limit(self.document, key),
+            "Bearing, net section, shear-out and edge distances of a hole",
+            lambda: round_holes(self.document.part),
+        )
         self.add.set(
             Link(
                 "stress",
@@ -53,6 +60,7 @@ class LimitsParagraph(Paragraph):
                 "+ displacement limit",
                 lambda _key: limit_changes.add_displacement_limit(self.document),
             ),
+            *((SEPARATOR, joint) if round_holes(part) else ()),
         )
         self.add.setVisible(bool(part.limits))
         if part.limits:
@@ -80,6 +88,8 @@ class LimitsParagraph(Paragraph):
         pieces: tuple[Piece | str, ...]
         if isinstance(limit, DisplacementLimit):
             pieces = displacement_pieces(part, limit, change, q)
+        elif isinstance(limit, JointLimit):
+            pieces = joint_pieces(part, limit, change, q)
         else:
             pieces = self._stress(part, limit, change, q)
         return RowOf(

@@ -7,7 +7,7 @@ from PySide6.QtWidgets import QWidget
 from screenapp.model.combinations import loadings
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
-from screenapp.model.part import DisplacementLimit, Part, StressLimit
+from screenapp.model.part import DisplacementLimit, JointLimit, Part, StressLimit
 from screenapp.window.document import Document
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.sheet.quantities import Quantities
@@ -45,7 +45,7 @@ class LimitsTable(FigureTable):
             ]
             if not several:
                 del texts[1]
-            tip = "\n".join(filter(None, (found.name, found.place, found.reason)))
+            tip = "\n".join(filter(None, (found.name, found.place, found.reason, found.assumed)))
             lines.append(Line(found.limit, tuple(texts), tip))
         stale = document.findings is not None and not document.current
         self.show_lines(columns, tuple(lines), stale)
@@ -61,4 +61,6 @@ def _short_name(part: Part, found: LimitFindings) -> str:
     if isinstance(limit, DisplacementLimit):
         where = "" if limit.at is None else " there"
         return f"moves{where} ≤ {Quantities(part.display_units).show(limit.most, 'length')}"
+    if isinstance(limit, JointLimit):
+        return found.rule or f"{limit.on} pin"
     return found.name
