@@ -72,6 +72,7 @@ def test_screen_answers_with_its_status_and_writes_the_record(
     assert schema_faults(record, "result.schema.json") == ()
     written = {path.name for path in tmp_path.iterdir()}
     endings = ("html", "result.json", "part.json", "peaks.csv", "readings.csv", "vtu", "png")
+    endings += ("pdf", "cuts.csv")
     assert written == {f"{name}.{ending}" for ending in endings}
     # the record on the screen and the one in the folder are the same
     assert json.loads((tmp_path / f"{name}.result.json").read_text()) == record

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from base64 import b64encode
+from collections.abc import Sequence
 from datetime import datetime
 
 from jinja2 import Environment, StrictUndefined
@@ -20,6 +22,7 @@ from screenapp.model.units import format_quantity
 from screenapp.report.cut_svg import cut_svg
 from screenapp.report.drawing import part_svg
 from screenapp.report.history_svg import history_svg
+from screenapp.report.picture import RecordPicture
 
 CAUTION = (
     "A screening, not an approval: it covers only what is written here, with supports and loads as "
@@ -27,7 +30,9 @@ CAUTION = (
 )
 
 
-def record_page(part: Part, findings: Findings, when: datetime) -> str:
+def record_page(
+    part: Part, findings: Findings, when: datetime, pictures: Sequence[RecordPicture] = ()
+) -> str:
     """The page for a screened part; `when` is printed as its date."""
     template = _environment().from_string(
         resource("report/record.html").read_text(encoding="utf-8")
@@ -56,6 +61,7 @@ def record_page(part: Part, findings: Findings, when: datetime) -> str:
         support_words=support_words,
         size=(x1 - x0, y1 - y0),
         drawing=Markup(part_svg(part, shape, findings)),  # made here, its texts escaped there
+        pictures=[(p.words, b64encode(p.png).decode()) for p in pictures],
         version=__version__,
         when=when.strftime("%Y-%m-%d %H:%M %Z"),
         caution=CAUTION,

@@ -10,6 +10,7 @@ import io
 import logging
 import math
 import warnings
+from dataclasses import dataclass, replace
 
 import numpy as np
 from matplotlib.axes import Axes
@@ -23,6 +24,7 @@ from numpy.typing import NDArray
 
 from screenapp.model.findings import Fields, Findings
 from screenapp.model.part import Part, Point
+from screenapp.model.progress import SILENT, Progress, Step
 from screenapp.model.shape import Shape
 from screenapp.report.colours import Scale
 from screenapp.report.one_line import one_line
@@ -38,6 +40,8 @@ MOST_HEIGHT = 1100
 LEAST_HEIGHT = 420
 """Of the drawing alone [px]."""
 DPI = 160
+MOST_PICTURES = 12
+"""Of one record: the case that governs, and others in their order."""
 
 PAPER, INK, QUIET = "#fefefb", "#1c222b", "#5c6470"
 VERDICTS = {"holds": ("●", "#2f7d4f"), "does not hold": ("■", "#b3360f")}
@@ -50,6 +54,40 @@ _LABEL_GAP = 34.0
 _RING = 11.0  # radius of the ring at the largest value [px]
 
 logging.getLogger("matplotlib.font_manager").setLevel(logging.ERROR)
+
+
+@dataclass(frozen=True)
+class RecordPicture:
+    """A picture of the record: what it shows, in words, and the bytes of its PNG file."""
+
+    words: str
+    png: bytes
+
+
+def record_pictures(
+    part: Part, shape: Shape, findings: Findings, progress: Progress = SILENT
+) -> tuple[RecordPicture, ...]:
+    """The field that the verdict rests on, then for every other case the one of its limit that is
+    used most; none where only the record of the findings was kept."""
+    if findings.last is None:
+        return ()
+    first = findings.governing
+    shown = [findings]
+    for case in findings.cases:
+        limits = tuple(limit for limit in findings.limits if limit.case == case.case)
+        if limits and first is not None and case.case != first.case:
+            own = replace(findings, limits=limits).governing
+            assert own is not None
+            words = f"{own.name}: {own.verdict}"
+            shown.append(replace(findings, limits=limits, verdict=own.verdict, headline=words))
+    pictures: list[RecordPicture] = []
+    for number, one in enumerate(shown[:MOST_PICTURES]):
+        progress.check()
+        progress.report(Step("pictures", 0, 0.7 * number / len(shown)))
+        field = governing_field(part, one)
+        words = f"{field.title}, case “{field.case}”"
+        pictures.append(RecordPicture(words, part_picture(part, shape, one)))
+    return tuple(pictures)
 
 
 def part_picture(part: Part, shape: Shape, findings: Findings) -> bytes:

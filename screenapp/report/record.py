@@ -9,11 +9,13 @@ from screenapp.model.atomic_write import write_atomically
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import part_to_text
+from screenapp.model.progress import SILENT, Progress, Step
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.result_json import findings_to_record, record_to_text
 from screenapp.report.page import record_page
-from screenapp.report.picture import part_picture
-from screenapp.report.tables import peaks_csv, readings_csv
+from screenapp.report.pdf import record_pdf
+from screenapp.report.picture import record_pictures
+from screenapp.report.tables import cuts_csv, peaks_csv, readings_csv
 from screenapp.report.vtu import write_vtu
 
 PART_ENDING = ".part.json"
@@ -25,37 +27,56 @@ def record_stem(source: Path) -> str:
     return name[: -len(PART_ENDING)] if name.endswith(PART_ENDING) else source.stem
 
 
-def write_record(part: Part, findings: Findings, folder: Path, source: Path) -> list[Path]:
+def write_record(
+    part: Part,
+    findings: Findings,
+    folder: Path,
+    source: Path,
+    progress: Progress = SILENT,
+) -> list[Path]:
     """Write everything about a screening into `folder` and return the files written.
 
-    Files: NAME.html (to read and print), NAME.result.json (the result record), NAME.part.json (the
-    part as screened), NAME.peaks.csv, NAME.readings.csv, NAME.vtu (the fields of the last pass),
-    NAME.png (the part with the field its verdict rests on).
+    Files: NAME.html (to read), NAME.pdf (the same to print and file), NAME.result.json (the
+    result record), NAME.part.json (the part as screened), NAME.peaks.csv, NAME.readings.csv,
+    NAME.cuts.csv, NAME.vtu (the fields of the last pass), NAME.png (the part with the field its
+    verdict rests on).
 
     Raises:
         OSError: the folder cannot be made or written to.
+        Cancelled: `progress` was asked to stop; what was written by then stays.
     """
     folder.mkdir(parents=True, exist_ok=True)
     stem = record_stem(source)
-    texts = {
-        "html": record_page(part, findings, datetime.now().astimezone()),
-        "result.json": record_to_text(findings_to_record(findings, part)),
-        "part.json": part_to_text(part),
-        "peaks.csv": peaks_csv(findings),
-        "readings.csv": readings_csv(findings),
+    when = datetime.now().astimezone()
+    pictures = record_pictures(part, shape_with_zones(part), findings, progress)
+    page = record_page(part, findings, when, pictures)
+    _step(progress, 0.7)
+    contents = {
+        "html": page.encode(),
+        "pdf": record_pdf(part, findings.part_sha256, page, when),
+        "result.json": record_to_text(findings_to_record(findings, part)).encode(),
+        "part.json": part_to_text(part).encode(),
+        "peaks.csv": peaks_csv(findings).encode(),
+        "readings.csv": readings_csv(findings).encode(),
+        "cuts.csv": cuts_csv(findings).encode(),
     }
+    if pictures:
+        contents["png"] = pictures[0].png
+    _step(progress, 0.9)
     written: list[Path] = []
-    for ending, text in texts.items():
+    for ending, content in contents.items():
         path = folder / f"{stem}.{ending}"
         if path.resolve() == source.resolve():
             continue  # the record may stand beside its part
-        write_atomically(path, text.encode())
+        write_atomically(path, content)
         written.append(path)
     if findings.last is not None:
         path = folder / f"{stem}.vtu"
         write_vtu(part, findings.last, path)
         written.append(path)
-        path = folder / f"{stem}.png"
-        write_atomically(path, part_picture(part, shape_with_zones(part), findings))
-        written.append(path)
     return written
+
+
+def _step(progress: Progress, done: float) -> None:
+    progress.check()
+    progress.report(Step("record", 0, done))
