@@ -15,6 +15,7 @@ from numpy.typing import NDArray
 from scipy import sparse
 
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
+from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError, SolvingError
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import FixedSupport, Part, PrescribedSupport, RollerSupport, Support
@@ -69,7 +70,7 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
     tangents = side_tangents(shape, mesh)
     parts: list[tuple[Ints, Floats, Floats, Ints]] = []
     for owner, support in enumerate(part.supports):
-        nodes, normals = _places_of(support, shape, mesh, tangents)
+        nodes, normals = _places_of(part, support, shape, mesh, tangents)
         for direction, value in _holds_of(support, normals):
             parts.append(
                 (
@@ -148,7 +149,7 @@ def held_sides(part: Part, shape: Shape, mesh: Mesh) -> NDArray[np.bool_]:
     normals = outward(tangents)
     out = np.zeros((len(mesh.sides), 2), dtype=bool)
     for support in part.supports:
-        sides = mesh.sides_on(shape.pieces_of(support.on))
+        sides = mesh.sides_on(pieces_under(part, shape, support))
         for direction, _ in _holds_of(support, normals[sides]):
             for column, frame in enumerate((normals, tangents)):
                 share = np.einsum("spd,spd->sp", np.broadcast_to(direction, normals[sides].shape),
@@ -198,13 +199,15 @@ def _motion_words(motion: Floats, centre: Floats, size: float, left: int) -> str
     return f"turning about ({pivot[0]:.4g}, {pivot[1]:.4g}) mm"
 
 
-def _places_of(support: Support, shape: Shape, mesh: Mesh, tangents: Floats) -> tuple[Ints, Floats]:
+def _places_of(
+    part: Part, support: Support, shape: Shape, mesh: Mesh, tangents: Floats
+) -> tuple[Ints, Floats]:
     """Nodes (k,) of a support, repeated where sides meet, and outward normals there (k, 2)."""
     if support.on in mesh.corner_nodes:
         if isinstance(support, RollerSupport) and support.angle is None:
             raise misplaced(support.id, support.on, "give the roller on a corner an angle")
         return np.array([mesh.corner_nodes[support.on]]), np.zeros((1, 2))
-    sides = sides_of(shape, mesh, support.on, support.id)
+    sides = sides_of(part, shape, mesh, support)
     return mesh.side_nodes[sides].ravel(), outward(tangents[sides]).reshape(-1, 2)
 
 

@@ -18,6 +18,7 @@ from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.model.curves import Arc
+from screenapp.model.edge_parts import pieces_under, runs_backward
 from screenapp.model.members import spread_loads
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import (
@@ -42,6 +43,8 @@ POINTS = 5
 """Gauss points along a side: exact for every even load on a parabola but for the root in its
 length; a bearing load's cosine is smooth but for its two ends."""
 
+_ENDS = np.array([0.0, 0.5, 1.0])
+
 EdgeLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | MomentLoad
 
 
@@ -50,6 +53,8 @@ class SidePoints:
     """Places along some boundary sides: (n_sides, points, ...).
 
     Attributes:
+        sides: the sides, (n_sides,).
+        along: where on their side they are, 0 to 1, (points,).
         at: coordinates [mm].
         tangents: unit, material on the left.
         lengths: length that each point stands for [mm]; zero where the places are no rule.
@@ -58,6 +63,8 @@ class SidePoints:
         thickness: of the wall behind each side [mm], (n_sides,).
     """
 
+    sides: Ints
+    along: Floats
     at: Floats
     tangents: Floats
     lengths: Floats
@@ -80,7 +87,7 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
         if isinstance(load, PointLoad):
             out[_corner_node(mesh, load)] += (load.x, load.y)
             continue
-        rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
+        rule = _rule(part, mesh, sides_of(part, shape, mesh, load))
         force = _per_length(part, shape, mesh, load, rule) * rule.lengths[..., None]
         np.add.at(out, rule.nodes, np.einsum("pi,spd->sid", rule.shapes, force))
     return out
@@ -98,11 +105,18 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
     for load in spread_loads(part, case):
         if isinstance(load, BodyLoad | PointLoad):
             continue
-        sides = sides_of(shape, mesh, load.on, load.id)
+        sides = sides_of(part, shape, mesh, load)
         nodes = mesh.side_nodes[sides]
         thickness = side_thickness(part, mesh)[sides]
         ends = SidePoints(
-            mesh.nodes[nodes], tangents[sides], np.zeros(nodes.shape), np.eye(3), nodes, thickness
+            sides,
+            _ENDS,
+            mesh.nodes[nodes],
+            tangents[sides],
+            np.zeros(nodes.shape),
+            np.eye(3),
+            nodes,
+            thickness,
         )
         out[sides] += _per_length(part, shape, mesh, load, ends) / thickness[:, None, None]
     return out
@@ -135,6 +149,8 @@ def _rule(part: Part, mesh: Mesh, sides: Ints) -> SidePoints:
     run = np.einsum("pi,sid->spd", slopes, corners)
     stretch = np.linalg.norm(run, axis=2)
     return SidePoints(
+        sides,
+        0.5 * (1.0 + s),
         np.einsum("pi,sid->spd", shapes, corners),
         run / stretch[..., None],
         stretch * weights,
@@ -147,13 +163,25 @@ def _rule(part: Part, mesh: Mesh, sides: Ints) -> SidePoints:
 def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePoints) -> Floats:
     """Force per length [N/mm] of a load at some places, (n_sides, points, 2)."""
     if isinstance(load, PressureLoad):
-        return -load.pressure * places.thickness[:, None, None] * outward(places.tangents)
+        size: Floats = np.full(places.at.shape[:2], load.pressure)
+        if load.end_pressure is not None:
+            share = _shares(part, shape, mesh, load, places)
+            size = (1.0 - share) * load.pressure + share * load.end_pressure
+        face = size * places.thickness[:, None]
+        return np.asarray(-face[..., None] * outward(places.tangents))
     if isinstance(load, ShearLoad):
         return load.per_length * places.tangents
     if isinstance(load, LineLoad):
-        return np.broadcast_to([load.x, load.y], places.at.shape).astype(float)
+        if load.end_x is None and load.end_y is None:
+            return np.broadcast_to([load.x, load.y], places.at.shape).astype(float)
+        share = _shares(part, shape, mesh, load, places)[..., None]
+        last = [
+            load.x if load.end_x is None else load.end_x,
+            load.y if load.end_y is None else load.end_y,
+        ]
+        return np.asarray((1.0 - share) * [load.x, load.y] + share * last)
     if isinstance(load, ForceLoad):
-        sides = sides_of(shape, mesh, load.on, load.id)
+        sides = sides_of(part, shape, mesh, load)
         length = float(_rule(part, mesh, sides).lengths.sum())
         return np.broadcast_to([load.x / length, load.y / length], places.at.shape).astype(float)
     if isinstance(load, BearingLoad):
@@ -161,6 +189,22 @@ def _per_length(part: Part, shape: Shape, mesh: Mesh, load: Load, places: SidePo
     if isinstance(load, MomentLoad):
         return _turning(part, shape, mesh, load, places)
     raise TypeError(f"{type(load).__name__} does not act along sides")
+
+
+def _shares(
+    part: Part, shape: Shape, mesh: Mesh, load: PressureLoad | LineLoad, places: SidePoints
+) -> Floats:
+    """How far along its edge, as drawn, from 0 to 1 each place of a load is, (n_sides, points)."""
+    pieces = pieces_under(part, shape, load)
+    backward = runs_backward(part, load.on)
+    lengths = np.array([shape.curves[k].curve.length for k in pieces])
+    before = np.cumsum(lengths) - lengths
+    order = {piece: number for number, piece in enumerate(pieces)}
+    number = np.array([order[int(p)] for p in mesh.side_piece[places.sides]])
+    begin, end = mesh.side_t[places.sides].T
+    t = begin[:, None] + (end - begin)[:, None] * places.along
+    own = (1.0 - t if backward else t) * lengths[number][:, None]
+    return np.asarray((before[number][:, None] + own) / lengths.sum())
 
 
 def _bearing(part: Part, shape: Shape, mesh: Mesh, load: BearingLoad, places: SidePoints) -> Floats:
@@ -176,7 +220,7 @@ def _bearing(part: Part, shape: Shape, mesh: Mesh, load: BearingLoad, places: Si
     size = math.hypot(load.x, load.y)
     if size == 0.0:
         return np.zeros(places.at.shape)
-    rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
+    rule = _rule(part, mesh, sides_of(part, shape, mesh, load))
     bearing, borne = _radial(rule.at, centre, force)
     face = rule.lengths * rule.thickness[:, None]
     spread = np.einsum("sp,spa,spb->ab", face * borne, bearing, bearing)
@@ -198,7 +242,7 @@ def _turning(part: Part, shape: Shape, mesh: Mesh, load: MomentLoad, places: Sid
     Its size is chosen so that the moment of the mesh's own rule is exactly the load's.
     """
     centre = _pin_centre(shape, load)
-    rule = _rule(part, mesh, sides_of(shape, mesh, load.on, load.id))
+    rule = _rule(part, mesh, sides_of(part, shape, mesh, load))
     reach = float((rule.lengths * np.linalg.norm(rule.at - centre, axis=-1)).sum())
     arm = places.at - centre
     around = np.stack([-arm[..., 1], arm[..., 0]], axis=-1)

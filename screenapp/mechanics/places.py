@@ -5,23 +5,25 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.mesh import Mesh
+from screenapp.model.part import Part, PlacedLoad, Support
 from screenapp.model.shape import Shape
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
 
 
-def sides_of(shape: Shape, mesh: Mesh, feature: str, by: str) -> Ints:
-    """Boundary sides on an edge, fillet or hole; `by` is the id of what asks, for the error.
+def sides_of(part: Part, shape: Shape, mesh: Mesh, record: Support | PlacedLoad) -> Ints:
+    """Boundary sides that a support or load on an edge, fillet or hole stands on.
 
     Raises:
         InvalidPartError: the shape has no such feature, or no mesh side lies on it.
     """
-    sides = mesh.sides_on(shape.pieces_of(feature))
+    sides = mesh.sides_on(pieces_under(part, shape, record))
     if len(sides) == 0:
-        raise misplaced(by, feature, "put it on an edge, a fillet or a hole of the part")
+        raise misplaced(record.id, record.on, "put it on an edge, a fillet or a hole of the part")
     return sides
 
 

@@ -14,10 +14,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.corner_exponent import SLIDING, Face, growth_rate
+from screenapp.mechanics.shear_ends import shear_ends
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.zone_spots import fans, zone_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.curves import Curve
+from screenapp.model.edge_parts import pieces_under
 from screenapp.model.members import whole_id
 from screenapp.model.part import (
     Case,
@@ -61,7 +63,7 @@ def faces(part: Part, shape: Shape) -> list[Held]:
     """How each piece of the boundary is held."""
     kinds: list[Held] = ["free"] * len(shape.curves)
     for support in part.supports:
-        for i in shape.pieces_of(support.on):
+        for i in pieces_under(part, shape, support):
             kinds[i] = _both(kinds[i], _held(support), shape.curves[i].curve)
     return kinds
 
@@ -161,7 +163,8 @@ def _junction_spot(
             rate,
             f"corner {corner}",
         )
-    where = f"corner {corner}" if corner else "the junction of " + " and ".join(ids)
+    within = f"a place within {ids[0]}" if len(ids) == 1 else ""
+    where = f"corner {corner}" if corner else within or "the junction of " + " and ".join(ids)
     mend = (
         "hold the part as it is really held (a bolt hole, a longer edge), or judge it by a "
         "reading at a stated distance"
@@ -179,7 +182,11 @@ def _junction_spot(
         f"{why}, where a rigid hold gives no finite stress",
         mend,
         rate,
-        where if corner else "the end of a support between " + " and ".join(ids),
+        where
+        if corner
+        else f"the end of a support within {ids[0]}"
+        if within
+        else "the end of a support between " + " and ".join(ids),
     )
 
 
@@ -207,8 +214,10 @@ def _points(part: Part, shape: Shape) -> list[SingularSpot]:
                     f"corner {support.on}",
                 )
             )
+    free = [held == "free" for held in faces(part, shape)]
     for case in loadings(part):
         spots += _point_loads(case, corners)
+        spots += shear_ends(part, shape, case, free)
     return spots
 
 

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import replace
 
+from screenapp.model.edge_parts import without_span
 from screenapp.model.edit_rules import EditError, must_find, new_id, settle
 from screenapp.model.errors import Fault
 from screenapp.model.features import places_of
@@ -55,10 +56,10 @@ def put_on(part: Part, id_: str, on: str) -> Part:
     """
     record = must_find(part, id_, "support", "load").record
     if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
-        return replace_support(part, replace(record, on=on))
+        return replace_support(part, without_span(replace(record, on=on)))
     if not isinstance(record, PlacedLoad):
         raise EditError(f"load {id_} acts throughout the part", "put another load on the place")
-    return replace_load(part, replace(record, on=on))
+    return replace_load(part, without_span(replace(record, on=on)))
 
 
 def add_case(part: Part, name: str = "") -> Part:

@@ -6,6 +6,7 @@ import math
 from collections.abc import Iterator
 
 from screenapp.model.body_load_faults import body_load_faults, temperature_faults
+from screenapp.model.edge_parts import span_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places
 from screenapp.model.part import (
@@ -97,7 +98,7 @@ def components(load: Load) -> dict[str, float]:
     All but the speed of a spin are proportional to what the load does.
     """
     if isinstance(load, PressureLoad):
-        return {"pressure": load.pressure}
+        return _given(pressure=load.pressure, end_pressure=load.end_pressure)
     if isinstance(load, ShearLoad):
         return {"per_length": load.per_length}
     if isinstance(load, MomentLoad):
@@ -106,7 +107,14 @@ def components(load: Load) -> dict[str, float]:
         return {"speed": load.speed}
     if isinstance(load, TemperatureLoad):
         return {"change": load.change, "x": load.x, "y": load.y}
+    if isinstance(load, LineLoad):
+        return _given(x=load.x, y=load.y, end_x=load.end_x, end_y=load.end_y)
     return {"x": load.x, "y": load.y}
+
+
+def _given(**values: float | None) -> dict[str, float]:
+    """Those that are given."""
+    return {name: value for name, value in values.items() if value is not None}
 
 
 def one_load_faults(part: Part, case: Case, places: Places, shape: Shape | None) -> Iterator[Fault]:
@@ -163,6 +171,15 @@ def _place_faults(
         yield Fault(fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at)
         return
     assert found is not None
+    yield from span_faults(load, name, where, places, shape)
+    varies = any(axis.startswith("end_") for axis in components(load))
+    if varies and found.kind != "edge":
+        yield Fault(
+            f"{name} varies along {found.kind} {load.on}, which has no start and end",
+            "leave out its values at the end, or put it on an edge",
+            f"{where}.{next(axis for axis in components(load) if axis.startswith('end_'))}",
+            ids,
+        )
     if isinstance(load, BearingLoad | MomentLoad) and not isinstance(found.record, CircleHole):
         yield Fault(
             f"{name} cannot act on {found.kind} {load.on}: a pin needs a round hole",

@@ -1,6 +1,8 @@
 """How a part may be loaded: one frozen record for each kind of load.
 
-Units are those of `part.py`.
+Units are those of `part.py`.  Where a record has `start` and `end` beside `on` it may stand on part
+of an edge only: these are lengths [mm] along it from its first corner (see `edge_parts`), None the
+edge's own start and end.
 """
 
 from __future__ import annotations
@@ -12,12 +14,16 @@ from dataclasses import dataclass
 class PressureLoad:
     """A pressure [MPa] on the wall's face along an edge or hole; positive pushes on the material.
 
-    The force per length is pressure x thickness.
+    The force per length is pressure x thickness.  With `end_pressure` it varies evenly along the
+    edge and reaches that at the end.
     """
 
     id: str
     on: str
     pressure: float
+    end_pressure: float | None = None
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)
@@ -31,16 +37,25 @@ class ShearLoad:
     id: str
     on: str
     per_length: float
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)
 class LineLoad:
-    """A force per length with components `x`, `y` [N/mm] along an edge or hole."""
+    """A force per length with components `x`, `y` [N/mm] along an edge or hole.
+
+    With `end_x` or `end_y` that component varies evenly along the edge and reaches that at the end.
+    """
 
     id: str
     on: str
     x: float
     y: float
+    end_x: float | None = None
+    end_y: float | None = None
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)
@@ -51,6 +66,8 @@ class ForceLoad:
     on: str
     x: float
     y: float
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)

@@ -13,6 +13,7 @@ from screenapp.model.boundary_curve import BoundaryCurve, area_under, turned
 from screenapp.model.crossings import TOUCH
 from screenapp.model.curve_table import CurveTable
 from screenapp.model.curves import Curve
+from screenapp.model.edge_parts import with_span_ends
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.hole_curves import hole_curves
 from screenapp.model.loop_curves import loop_curves
@@ -50,7 +51,7 @@ def shape_with_zones(part: Part) -> Shape:
         InvalidPartError: as `shape_of`, or a zone runs so nearly along another line that what lies
             between cannot be told.
     """
-    shape = shape_of(part)
+    shape = with_span_ends(part, shape_of(part))
     return divide(part, shape) if part.zones else shape
 
 

@@ -14,6 +14,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.model.edge_parts import pieces_under
 from screenapp.model.part import (
     FixedSupport,
     Part,
@@ -71,9 +72,9 @@ class Held:
     values: Floats
 
 
-def held_by(support: Support, shape: Shape) -> Held:
+def held_by(part: Part, support: Support, shape: Shape) -> Held:
     """What a support holds, at sample points of the place it is on; empty if there is none."""
-    points, normals = _places(support.on, shape)
+    points, normals = _places(part, support, shape)
     n = len(points)
     x, y = np.tile([1.0, 0.0], (n, 1)), np.tile([0.0, 1.0], (n, 1))
     parts: list[tuple[Floats, float]] = []
@@ -102,7 +103,7 @@ def free_motions(part: Part, shape: Shape) -> tuple[FreeMotion, ...]:
 
     None are left if the part is held; all three (two slidings, one turning) if nothing holds it.
     """
-    held = [held_by(support, shape) for support in part.supports]
+    held = [held_by(part, support, shape) for support in part.supports]
     points = np.concatenate([np.empty((0, 2)), *(h.points for h in held)])
     directions = np.concatenate([np.empty((0, 2)), *(h.directions for h in held)])
     return motions_left(points, directions, shape)
@@ -158,12 +159,12 @@ def _named(motion: Floats, middle: Floats, size: float, weak: bool = False) -> F
     return FreeMotion("turn", (0.0, 0.0), centre, weak)
 
 
-def _places(on: str, shape: Shape) -> tuple[Floats, Floats]:
+def _places(part: Part, support: Support, shape: Shape) -> tuple[Floats, Floats]:
     """Sample points of a place and the boundary's outward unit normals there."""
-    corner = next((at for id_, at in shape.sharp_corners if id_ == on), None)
+    corner = next((at for id_, at in shape.sharp_corners if id_ == support.on), None)
     if corner is not None:
         return np.array([corner]), np.zeros((1, 2))
-    curves = [shape.curves[k].curve for k in shape.pieces_of(on)]
+    curves = [shape.curves[k].curve for k in pieces_under(part, shape, support)]
     if not curves:
         return np.empty((0, 2)), np.empty((0, 2))
     points = np.concatenate([c.point(SAMPLES) for c in curves])

@@ -7,6 +7,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
+from screenapp.model.edge_parts import span_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places, edges_at, loops_of
 from screenapp.model.part import (
@@ -96,6 +97,7 @@ def one_support_faults(
     if fault is not None:
         yield _with_ids(fault, support.id, support.on)
         return
+    yield from span_faults(support, name, where, places, shape)
     on_corner = places[support.on].kind == "corner"
     if isinstance(support, RollerSupport):
         if support.angle is None and on_corner:
@@ -148,7 +150,7 @@ def _contradictions(part: Part, shape: Shape) -> Iterator[Fault]:
     """Supports that ask one point to be in two places."""
     if not any(isinstance(s, PrescribedSupport) for s in part.supports):
         return  # all other supports ask for zero
-    held = [held_by(s, shape) for s in part.supports]
+    held = [held_by(part, s, shape) for s in part.supports]
     moving = [k for k, s in enumerate(part.supports) if isinstance(s, PrescribedSupport)]
     for a in moving:
         for b in range(len(held)):

@@ -1,6 +1,8 @@
 """How a part may be held: one frozen record for each kind of support.
 
-Units are those of `part.py`.
+Units are those of `part.py`.  Where a record has `start` and `end` it may stand on part of an edge
+only: these are lengths [mm] along it from its first corner (see `edge_parts`), None the edge's own
+start and end.
 """
 
 from __future__ import annotations
@@ -14,6 +16,8 @@ class FixedSupport:
 
     id: str
     on: str
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)
@@ -27,6 +31,8 @@ class RollerSupport:
     id: str
     on: str
     angle: float | None = None
+    start: float | None = None
+    end: float | None = None
 
 
 @dataclass(frozen=True)
@@ -37,6 +43,8 @@ class PrescribedSupport:
     on: str
     x: float | None = None
     y: float | None = None
+    start: float | None = None
+    end: float | None = None
 
 
 Support = FixedSupport | RollerSupport | PrescribedSupport

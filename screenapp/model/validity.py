@@ -10,6 +10,7 @@ from screenapp.model.cautions import cautions_of
 from screenapp.model.combinations import combination_faults
 from screenapp.model.crossings import boundary_faults
 from screenapp.model.curve_table import CurveTable
+from screenapp.model.edge_parts import with_span_ends
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import places_of
 from screenapp.model.limit_faults import limit_faults, limit_material_faults
@@ -91,6 +92,8 @@ def _sound_shape(part: Part) -> tuple[Shape | None, CurveTable | None, list[Faul
         return None, None, list(error.faults)
     table = shape.table
     faults = boundary_faults(shape, table)
+    if not faults and (whole := with_span_ends(part, shape)) is not shape:
+        shape, table = whole, whole.table
     if faults or not part.zones:
         return (None, None, faults) if faults else (shape, table, [])
     divided, faults = divided_shape(part, shape)

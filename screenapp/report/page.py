@@ -12,11 +12,21 @@ from markupsafe import Markup
 from screenapp import __version__
 from screenapp.model.assets import resource
 from screenapp.model.cut_figure import cut_figure
+from screenapp.model.edge_parts import span_of
 from screenapp.model.estimate_text import EstimateKind, estimate_text
 from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
-from screenapp.model.part import BodyLoad, DisplayUnits, Load, Part, SpinLoad, TemperatureLoad
+from screenapp.model.part import (
+    BodyLoad,
+    DisplayUnits,
+    LineLoad,
+    Load,
+    Part,
+    SpinLoad,
+    Support,
+    TemperatureLoad,
+)
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
 from screenapp.report.cut_svg import cut_svg
@@ -112,9 +122,10 @@ def load_words(load: Load) -> str:
         return f"own weight under ({load.x:g}, {load.y:g}) m/s²"
     kind = type(load).__name__
     if kind == "PressureLoad":
-        return f"pressure {load.pressure:g} MPa on {load.on}"  # type: ignore[union-attr]
+        more = "" if load.end_pressure is None else f" to {load.end_pressure:g}"  # type: ignore
+        return f"pressure {load.pressure:g}{more} MPa on {load.on}{_span(load)}"  # type: ignore
     if kind == "ShearLoad":
-        return f"shear {load.per_length:g} N/mm along {load.on}"  # type: ignore[union-attr]
+        return f"shear {load.per_length:g} N/mm along {load.on}{_span(load)}"  # type: ignore[union-attr]
     if kind == "MomentLoad":
         return f"moment {load.moment / 1000.0:g} N·m on {load.on}"  # type: ignore[union-attr]
     words = {
@@ -123,13 +134,30 @@ def load_words(load: Load) -> str:
         "BearingLoad": "a pin bears on {on} with ({x:g}, {y:g}) N",
         "PointLoad": "({x:g}, {y:g}) N at the point {on}",
     }[kind]
-    return words.format(x=load.x, y=load.y, on=load.on)  # type: ignore[union-attr]
+    text = words.format(x=load.x, y=load.y, on=load.on)  # type: ignore[union-attr]
+    if isinstance(load, LineLoad) and (load.end_x is not None or load.end_y is not None):
+        x = load.x if load.end_x is None else load.end_x
+        y = load.y if load.end_y is None else load.end_y
+        text += f", varying to ({x:g}, {y:g}) N/mm at its end"
+    return text + _span(load)
 
 
-def support_words(support: object) -> str:
+def _span(record: Load | Support) -> str:
+    """Which part of its edge it is on, in words to follow the edge."""
+    start, end = span_of(record)
+    if (start, end) == (None, None):
+        return ""
+    first = "its start" if start is None else f"{start:g} mm"
+    last = "its end" if end is None else f"{end:g} mm"
+    return f", from {first} to {last}"
+
+
+def support_words(support: Support) -> str:
     """A support in words."""
     kind = type(support).__name__
-    on = getattr(support, "on", "")
+    on = f"{support.on}{_span(support)}"
+    if on != support.on:
+        on += ","
     if kind == "FixedSupport":
         return f"{on} is fixed in both directions"
     if kind == "RollerSupport":

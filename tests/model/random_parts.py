@@ -96,19 +96,21 @@ def _listed(make, size: int = 3):  # type: ignore[no-untyped-def]
 def _supports(i: int) -> st.SearchStrategy[object]:
     name = st.just(f"s{i}")
     return st.one_of(
-        st.builds(FixedSupport, name, on),
-        st.builds(RollerSupport, name, on, maybe),
-        st.builds(PrescribedSupport, name, on, maybe, maybe),
+        st.builds(FixedSupport, name, on, maybe, maybe),
+        st.builds(RollerSupport, name, on, maybe, maybe, maybe),
+        st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )
 
 
 def _loads(case: int):  # type: ignore[no-untyped-def]
     def make(i: int) -> st.SearchStrategy[object]:
         name = st.just(f"l{case}-{i}")
-        vectors = (LineLoad, ForceLoad, BearingLoad, PointLoad)
+        vectors = (BearingLoad, PointLoad)
         return st.one_of(
-            st.builds(PressureLoad, name, on, numbers),
-            st.builds(ShearLoad, name, on, numbers),
+            st.builds(PressureLoad, name, on, numbers, maybe, maybe, maybe),
+            st.builds(ShearLoad, name, on, numbers, maybe, maybe),
+            st.builds(LineLoad, name, on, numbers, numbers, maybe, maybe, maybe, maybe),
+            st.builds(ForceLoad, name, on, numbers, numbers, maybe, maybe),
             *(st.builds(cls, name, on, numbers, numbers) for cls in vectors),
             st.builds(MomentLoad, name, on, numbers),
             st.builds(GravityLoad, name, numbers, numbers),

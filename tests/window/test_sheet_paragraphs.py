@@ -170,7 +170,7 @@ def loaded(sheet: Sheet) -> LoadedParagraph:
 
 def test_loads_are_read_and_changed_by_size_and_direction(sheet: Sheet) -> None:
     row = loaded(sheet).block("case1").loads.row("l1")
-    assert row.sentence.text == "pulled by 16000 N, right"
+    assert row.sentence.text == "pulled by 16000 N, right · on part of it"
     type_into(row.sentence.field("way"), "down")
     type_into(row.sentence.field("size"), "2 kN")
     load = sheet.document.part.cases[0].loads[0]

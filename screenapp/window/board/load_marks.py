@@ -6,6 +6,7 @@ import math
 
 import numpy as np
 
+from screenapp.model.edge_parts import runs_backward, span_of
 from screenapp.model.part import (
     BearingLoad,
     ForceLoad,
@@ -44,19 +45,25 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
             aside = np.array([-26.0, -20.0]) if load.zone is None else np.zeros(2)
             temperature_mark(mark, drawn, load, frame.pxs(centre) + aside)
         return mark
-    place = middle(drawn, frame, load.on)
+    place = middle(drawn, frame, load.on, span_of(load))
     if place is None:
         return mark
     units = drawn.part.display_units
     if isinstance(load, PressureLoad):
         _pressed(mark, drawn, frame, load)
         text = format_quantity(load.pressure, "stress", units)
+        if load.end_pressure is not None:
+            text += f" to {format_quantity(load.end_pressure, 'stress', units)}"
     elif isinstance(load, ShearLoad):
         _sheared(mark, drawn, frame, load)
         text = format_quantity(load.per_length, "line_load", units)
     elif isinstance(load, LineLoad):
         _spread(mark, drawn, frame, load)
         text = format_quantity(math.hypot(load.x, load.y), "line_load", units)
+        if load.end_x is not None or load.end_y is not None:
+            x = load.x if load.end_x is None else load.end_x
+            y = load.y if load.end_y is None else load.end_y
+            text += f" to {format_quantity(math.hypot(x, y), 'line_load', units)}"
     elif isinstance(load, MomentLoad):
         moment_mark(mark, drawn, frame, load, place[0])
         text = format_quantity(load.moment, "moment", units)
@@ -88,15 +95,21 @@ def _row(mark: Mark, tails: Floats, closed: bool) -> None:
 
 
 def _pressed(mark: Mark, drawn: DrawnPart, frame: Frame, load: PressureLoad) -> None:
-    if load.pressure == 0.0:
+    last = load.pressure if load.end_pressure is None else load.end_pressure
+    most = max(abs(load.pressure), abs(last))
+    if most == 0.0:
         return
     hole = load.on in drawn.holes
     long = min(ROW, 0.6 * radius_px(drawn, frame, load.on))
-    line = stations(drawn, frame, load.on, ROW_GAP, ends=True)
-    sign = -1.0 if load.pressure > 0.0 else 1.0
+    line = stations(drawn, frame, load.on, ROW_GAP, ends=True, span=span_of(load))
     far = []
-    for p, out in zip(line.at, line.out, strict=True):
-        tail, tip = _push(mark, (p, out), sign * out, long)
+    sizes = _varying(drawn, load.on, load.pressure, last, len(line))
+    for p, out, size in zip(line.at, line.out, sizes, strict=True):
+        sign = -1.0 if size > 0.0 else 1.0
+        if abs(size) < 0.12 * most:  # too short for an arrow
+            far.append(p + 3.0 * out)
+            continue
+        tail, tip = _push(mark, (p, out), sign * out, long * abs(size) / most)
         far.append(tail if sign < 0.0 else tip)
     if far:
         _row(mark, np.array(far), hole)
@@ -104,10 +117,16 @@ def _pressed(mark: Mark, drawn: DrawnPart, frame: Frame, load: PressureLoad) -> 
         mark.say("", far[i] + (0.0 if hole else label_gap(line.out[i])))
 
 
+def _varying(drawn: DrawnPart, on: str, first: float, last: float, count: int) -> Floats:
+    """Sizes at stations along a boundary whose load varies evenly along the edge as drawn."""
+    sizes = np.linspace(first, last, max(count, 2))[:count]
+    return sizes[::-1] if runs_backward(drawn.part, on) else sizes
+
+
 def _sheared(mark: Mark, drawn: DrawnPart, frame: Frame, load: ShearLoad) -> None:
     if load.per_length == 0.0:
         return
-    line = stations(drawn, frame, load.on, 30.0)
+    line = stations(drawn, frame, load.on, 30.0, span=span_of(load))
     sign = math.copysign(1.0, load.per_length)
     off = min(7.0, 0.4 * radius_px(drawn, frame, load.on))
     for p, out, along in zip(line.at, line.out, line.along, strict=True):
@@ -119,13 +138,21 @@ def _sheared(mark: Mark, drawn: DrawnPart, frame: Frame, load: ShearLoad) -> Non
 
 
 def _spread(mark: Mark, drawn: DrawnPart, frame: Frame, load: LineLoad) -> None:
-    way = to_px(load.x, load.y)
-    if way is None:
+    last_x = load.x if load.end_x is None else load.end_x
+    last_y = load.y if load.end_y is None else load.end_y
+    most = max(math.hypot(load.x, load.y), math.hypot(last_x, last_y))
+    if most == 0.0:
         return
-    line = stations(drawn, frame, load.on, ROW_GAP, ends=True)
+    line = stations(drawn, frame, load.on, ROW_GAP, ends=True, span=span_of(load))
     far = []
-    for p, out in zip(line.at, line.out, strict=True):
-        tail, tip = _push(mark, (p, out), way, ROW)
+    x = _varying(drawn, load.on, load.x, last_x, len(line))
+    y = _varying(drawn, load.on, load.y, last_y, len(line))
+    for p, out, own_x, own_y in zip(line.at, line.out, x, y, strict=True):
+        size, way = math.hypot(own_x, own_y), to_px(own_x, own_y)
+        if way is None or size < 0.12 * most:
+            far.append(p + 3.0 * out)
+            continue
+        tail, tip = _push(mark, (p, out), way, ROW * size / most)
         far.append(tip if way @ out > 1e-9 else tail)
     if far:
         _row(mark, np.array(far), load.on in drawn.holes)
@@ -160,7 +187,7 @@ def _single(
     away = tip if way @ out > 1e-9 else tail
     mark.say("", away + label_gap((away - at) / max(float(np.hypot(*(away - at))), 1e-9)))
     if isinstance(load, ForceLoad):  # the length over which it is spread
-        line = stations(drawn, frame, load.on, 10.0, ends=True)
+        line = stations(drawn, frame, load.on, 10.0, ends=True, span=span_of(load))
         if len(line) > 1:
             rail = line.at + 5.0 * line.out
             mark.lines.append(rail)

@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Literal
 
 import numpy as np
 from PySide6.QtCore import QPointF
 
+from screenapp.model.boundary_curve import BoundaryCurve
+from screenapp.model.edge_parts import WHOLE, Span, runs_backward
 from screenapp.model.part import Point
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
@@ -83,17 +85,23 @@ class Stations:
 
 
 def stations(
-    drawn: DrawnPart, frame: Frame, feature: str, gap: float, ends: bool = False
+    drawn: DrawnPart,
+    frame: Frame,
+    feature: str,
+    gap: float,
+    ends: bool = False,
+    span: Span = WHOLE,
 ) -> Stations:
-    """Places about `gap` px apart along an edge or rim; with `ends`, also at both ends."""
+    """Places about `gap` px apart along an edge or rim, or the `span` of an edge; with `ends`, also
+    at both ends."""
     at: list[Floats] = []
     out: list[Floats] = []
     along: list[Floats] = []
-    pieces = drawn.pieces_of(feature)
+    pieces = spanned(drawn, feature, span)
     for i, piece in enumerate(pieces):
         n = max(1, min(MOST_SIGNS, round(piece.curve.length * frame.scale / gap)))
         if ends:
-            closed = len(pieces) > 1
+            closed = len(pieces) > 1 and span == WHOLE
             t = np.linspace(0.0, 1.0, n + 1)[: n if closed or i < len(pieces) - 1 else n + 1]
         else:
             t = (np.arange(n) + 0.5) / n
@@ -109,7 +117,25 @@ def stations(
     return Stations(found.at[seen], found.out[seen], found.along[seen])
 
 
-def middle(drawn: DrawnPart, frame: Frame, feature: str) -> tuple[Floats, Floats] | None:
+def spanned(drawn: DrawnPart, feature: str, span: Span) -> tuple[BoundaryCurve, ...]:
+    """The pieces of a feature, cut off where a span of it begins and ends."""
+    pieces = drawn.pieces_of(feature)
+    if span == WHOLE or len(pieces) != 1:
+        return pieces
+    (piece,) = pieces
+    whole = piece.curve.length
+    start = min(max(span[0] or 0.0, 0.0), whole)
+    end = whole if span[1] is None else min(max(span[1], 0.0), whole)
+    if end - start < 1e-9 * whole:
+        return pieces
+    if runs_backward(drawn.part, feature):
+        start, end = whole - end, whole - start
+    return (replace(piece, curve=piece.curve.part(start / whole, end / whole)),)
+
+
+def middle(
+    drawn: DrawnPart, frame: Frame, feature: str, span: Span = WHOLE
+) -> tuple[Floats, Floats] | None:
     """Position and outward direction [px] of the one place that stands for a feature.
 
     An edge's middle; a hole's centre (outward is down); a corner with the direction away from the
@@ -121,7 +147,7 @@ def middle(drawn: DrawnPart, frame: Frame, feature: str) -> tuple[Floats, Floats
     if feature in drawn.corners:
         at = drawn.corners[feature].at
         return frame.pxs(at), corner_outward(drawn, at)
-    pieces = drawn.pieces_of(feature)
+    pieces = spanned(drawn, feature, span)
     if not pieces:
         return None
     curve = pieces[len(pieces) // 2].curve

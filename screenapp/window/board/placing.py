@@ -23,6 +23,7 @@ from screenapp.window.board.placing_kinds import (
     holding_ways,
     loading_ways,
     read_back,
+    with_rest,
 )
 from screenapp.window.board.popover import Popover
 
@@ -39,6 +40,7 @@ class Placing:
         self._canvas = canvas
         self._on = ""
         self._id = ""
+        self._now: Record | None = None
         self.popover = Popover(canvas)
         self.popover.changed.connect(self._show)
         self.popover.accepted.connect(self.accept)
@@ -115,7 +117,7 @@ class Placing:
     ) -> None:
         if not ways:
             return
-        self._on, self._id = on, now.id if now is not None else ""
+        self._on, self._id, self._now = on, now.id if now is not None else "", now
         part = self._canvas.document.part
         before = None if now is None else read_back(now)
         self.popover.open(title, ways, part.display_units, near, before, part.dimensions)
@@ -123,7 +125,8 @@ class Placing:
 
     def _record(self) -> Record | None:
         way = self.popover.way
-        return None if way is None else way.make(self._id, self._on, self.popover.values)
+        made = None if way is None else way.make(self._id, self._on, self.popover.values)
+        return made if made is None or self._now is None else with_rest(made, self._now)
 
     def _made(self, record: Record) -> Part:
         document = self._canvas.document

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from screenapp.model.features import find
 from screenapp.model.kinds import KindName
@@ -312,3 +312,15 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         GravityLoad: "gravity",
     }
     return keys[type(record)], {"x": record.x, "y": record.y}
+
+
+REST = ("start", "end", "end_pressure", "end_x", "end_y")
+"""Fields that the popover does not show: the sheet has them."""
+
+
+def with_rest(made: Record, old: Record) -> Record:
+    """What the popover made of a record, with what of the old one it does not show."""
+    if isinstance(made, BodyLoad):
+        return made
+    kept = {name: getattr(old, name) for name in REST if hasattr(old, name) and hasattr(made, name)}
+    return replace(made, **kept)

@@ -6,6 +6,7 @@ import math
 
 import numpy as np
 
+from screenapp.model.edge_parts import Span, span_of
 from screenapp.model.part import (
     FixedSupport,
     PrescribedSupport,
@@ -14,7 +15,7 @@ from screenapp.model.part import (
 )
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
-from screenapp.window.board.marks import Mark, middle, radius_px, stations, to_px
+from screenapp.window.board.marks import Mark, middle, radius_px, spanned, stations, to_px
 from screenapp.window.board.quantity import written
 
 DOWN = np.array([0.0, 1.0])
@@ -26,7 +27,7 @@ HIGH, HALF = 14.0, 9.0
 def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
     """The symbol of one support; empty if what it is on is gone."""
     mark = Mark(support.id, "support")
-    place = middle(drawn, frame, support.on)
+    place = middle(drawn, frame, support.on, span_of(support))
     if place is None:
         return mark
     at, out = place
@@ -34,7 +35,7 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
         if support.on in drawn.corners:
             _footed(mark, at, squared(out))
         else:
-            _clamped(mark, drawn, frame, support.on)
+            _clamped(mark, drawn, frame, support.on, span_of(support))
     elif isinstance(support, RollerSupport):
         _rolling(mark, drawn, frame, support, at, out)
     else:
@@ -49,16 +50,16 @@ def squared(direction: Floats) -> Floats:
     return np.array([0.0, math.copysign(1.0, direction[1])])
 
 
-def _clamped(mark: Mark, drawn: DrawnPart, frame: Frame, on: str) -> None:
+def _clamped(mark: Mark, drawn: DrawnPart, frame: Frame, on: str, span: Span) -> None:
     """Hatched ground all along."""
     deep = min(HATCH, 0.6 * radius_px(drawn, frame, on))
-    line = stations(drawn, frame, on, 6.0, ends=True)
+    line = stations(drawn, frame, on, 6.0, ends=True, span=span)
     if len(line) > 1:
         ground = line.at + 3.0 * line.out
         if on in drawn.holes:
             ground = np.vstack([ground, ground[:1]])
         mark.lines.append(ground)
-    hatch = stations(drawn, frame, on, HATCH_GAP)
+    hatch = stations(drawn, frame, on, HATCH_GAP, span=span)
     for p, out, along in zip(hatch.at, hatch.out, hatch.along, strict=True):
         foot = p + 3.0 * out
         mark.line(foot, foot + deep * (out - 0.8 * along) / 1.28)
@@ -108,9 +109,10 @@ def _rolling(
         held = out if held is None else held
         _wheeled(mark, at, held if held @ out >= 0.0 else -held)
         return
-    long = sum(p.curve.length for p in drawn.pieces_of(support.on)) * frame.scale
+    span = span_of(support)
+    long = sum(p.curve.length for p in spanned(drawn, support.on, span)) * frame.scale
     gap = long if long < 70.0 else long / 2.0 if long < 200.0 else long / 3.0
-    places = stations(drawn, frame, support.on, max(gap, 1.0))
+    places = stations(drawn, frame, support.on, max(gap, 1.0), span=span)
     for p, normal in zip(places.at, places.out, strict=True):
         way = normal if held is None else held if held @ normal >= 0.0 else -held
         _wheeled(mark, p, way)

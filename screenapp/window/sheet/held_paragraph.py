@@ -11,6 +11,7 @@ from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
 from screenapp.window.sheet.places import place_choices
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
+from screenapp.window.sheet.span_pieces import span_pieces
 
 KINDS = (
     Choice("fixed", "fixed", "held in both directions"),
@@ -59,10 +60,15 @@ class HeldParagraph(Paragraph):
 
     def _row(self, support: Support, q: Quantities) -> RowOf:
         where = place_name(self.document.part, support.on)
+        change = support_changes.SupportChange(self.document, support.id)
+        field = f"supports.{support.id}"
         return RowOf(
             support.id,
             (where,),
-            self._pieces(support, where, q),
+            (
+                *self._pieces(support, where, q),
+                *span_pieces(self.document.part, support, where, change.put, q, field),
+            ),
             lambda: changes.remove(self.document, support.id),
             f"Remove the support at {where}",
             (support.on,),

@@ -118,6 +118,10 @@ class LoadChange:
         """A function that sets a field."""
         return lambda value: self._put(with_field(self._find(), field, value))
 
+    def put(self, fields: dict[str, Any]) -> None:
+        """Set several fields at once."""
+        self._put(replace(self._find(), **fields))
+
     def resize(self, size: float) -> None:
         """Another size in the same direction; a negative one turns it round."""
         load = self._find()

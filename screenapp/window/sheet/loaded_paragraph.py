@@ -37,6 +37,7 @@ from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf, Rows
 from screenapp.window.sheet.sentence import Sentence
+from screenapp.window.sheet.span_pieces import span_pieces, varying_pieces
 
 KIND_WORDS = {
     "bearing": "a pin bears on it",
@@ -212,10 +213,15 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
     else:
         where, also = place_name(document.part, load.on), (load.on,)
         name = f"load at {where}"
+    field = f"cases.{case.id}.loads.{load.id}"
     return RowOf(
         load.id,
         (where,),
-        _load_pieces(document.part, load, name, change, q, f"cases.{case.id}.loads.{load.id}"),
+        (
+            *_load_pieces(document.part, load, name, change, q, field),
+            *varying_pieces(document.part, load, where, change.put, q, field),
+            *span_pieces(document.part, load, where, change.put, q, field),
+        ),
         change.remove,
         f"Remove the {name} from {case.name}",
         also,

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from dataclasses import replace
 from typing import Any
 
 from screenapp.model import edits
@@ -37,11 +38,17 @@ class SupportChange:
             new = RollerSupport(old.id, old.on, 90.0)
         else:
             new = PrescribedSupport(old.id, old.on, 0.0, 0.0)
+        new = replace(new, start=old.start, end=old.end)
         self._put(f"how {old.on} is held", new)
 
     def setter(self, field: str) -> Callable[[Any], None]:
         """A function that sets "angle", "x" or "y"."""
         return lambda value: self._set(field, value)
+
+    def put(self, fields: dict[str, Any]) -> None:
+        """Set several fields at once."""
+        old = next(s for s in self._document.part.supports if s.id == self._support)
+        self._put(f"where {old.on} is held", replace(old, **fields))
 
     def _set(self, field: str, value: float | None) -> None:
         old = next(s for s in self._document.part.supports if s.id == self._support)
