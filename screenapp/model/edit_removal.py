@@ -11,7 +11,7 @@ from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_rules import EditError, Outcome, must_find, without_stale_formulas
 from screenapp.model.edit_zones import remove_zone
 from screenapp.model.features import find, loops_of
-from screenapp.model.part import Part
+from screenapp.model.part import FatigueLimit, Part
 
 
 def remove(part: Part, *ids: str) -> Outcome:
@@ -72,11 +72,19 @@ def _remove_one(part: Part, id_: str) -> Outcome:
         )
         return Outcome(replace(part, cases=cases))
     if kind == "combination":
-        return Outcome(
-            replace(part, combinations=tuple(c for c in part.combinations if c.id != id_))
-        )
+        part, judged = _without_fatigue(part, id_)
+        left = replace(part, combinations=tuple(c for c in part.combinations if c.id != id_))
+        return Outcome(left, judged)
     gone = next(c for c in part.cases if c.id == id_)
     part, combined = without_case(part, id_)
     lost = tuple(f"load {x.id} of case “{gone.name}”" for x in gone.loads)
+    part, judged = _without_fatigue(part, id_)
     left = replace(part, cases=tuple(c for c in part.cases if c.id != id_))
-    return Outcome(left, lost + combined)
+    return Outcome(left, lost + combined + judged)
+
+
+def _without_fatigue(part: Part, case: str) -> tuple[Part, tuple[str, ...]]:
+    """The part without the fatigue limits that a case or combination is an end of."""
+    gone = [g for g in part.limits if isinstance(g, FatigueLimit) and case in (g.case, g.other)]
+    kept = tuple(g for g in part.limits if g not in gone)
+    return replace(part, limits=kept), tuple(f"limit {g.id} on case {case}" for g in gone)

@@ -8,12 +8,14 @@ from typing import get_args
 
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST
+from screenapp.model.fatigue_faults import fatigue_limit_faults, fatigue_material_faults
 from screenapp.model.features import find
 from screenapp.model.joint_rules import joint_rules
 from screenapp.model.material_faults import positive
 from screenapp.model.part import (
     CircleHole,
     DisplacementLimit,
+    FatigueLimit,
     JointLimit,
     Limit,
     Material,
@@ -29,6 +31,8 @@ def limit_faults(part: Part) -> Iterator[Fault]:
         where = f"limits.{limit.id}"
         if isinstance(limit, JointLimit):
             yield from _joint_limit_faults(limit, part, where)
+        elif isinstance(limit, FatigueLimit):
+            yield from fatigue_limit_faults(limit, part, where)
         if isinstance(limit, StressLimit):
             yield from _stress_limit_faults(limit, where)
         elif isinstance(limit, DisplacementLimit):
@@ -124,12 +128,16 @@ def _stress_limit_faults(limit: StressLimit, where: str) -> Iterator[Fault]:
         )
 
 
+FIELDS: dict[type, str] = {StressLimit: "against", JointLimit: "rules", FatigueLimit: "case"}
+"""The field of a limit that asks something of the material."""
+
+
 def limit_material_faults(part: Part) -> Iterator[Fault]:
     """Limits that need a stress which the material of the wall or of a zone has not."""
     used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
     materials = {m.name: m for m in used if m is not None}
     for limit in part.limits:
-        field = "against" if isinstance(limit, StressLimit) else "rules"
+        field = FIELDS.get(type(limit), "")
         for material in materials.values():
             for stress in _asked(limit):
                 if getattr(material, stress, 0.0) is not None:
@@ -141,6 +149,8 @@ def limit_material_faults(part: Part) -> Iterator[Fault]:
                     f"limits.{limit.id}.{field}",
                     (limit.id,),
                 )
+            if isinstance(limit, FatigueLimit):
+                yield from fatigue_material_faults(limit, material)
             if isinstance(limit, JointLimit):
                 yield from _foreign_material(limit, material)
 
@@ -149,6 +159,8 @@ def _asked(limit: Limit) -> tuple[str, ...]:
     """The stresses that a limit asks of a material, by their fields."""
     if isinstance(limit, StressLimit):
         return (limit.against,)
+    if isinstance(limit, FatigueLimit):
+        return ("strength",)
     if isinstance(limit, JointLimit) and limit.rules in joint_rules():
         return tuple(
             dict.fromkeys(s for c in joint_rules()[limit.rules].checks for s in c.stresses)

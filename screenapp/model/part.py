@@ -24,6 +24,24 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal
 
+from screenapp.model.limit_records import (
+    DisplacementLimit as DisplacementLimit,
+)
+from screenapp.model.limit_records import (
+    FatigueLimit as FatigueLimit,
+)
+from screenapp.model.limit_records import (
+    JointLimit as JointLimit,
+)
+from screenapp.model.limit_records import (
+    Limit as Limit,
+)
+from screenapp.model.limit_records import (
+    StressLimit as StressLimit,
+)
+from screenapp.model.limit_records import (
+    StressMeasure as StressMeasure,
+)
 from screenapp.model.load_records import (
     BearingLoad as BearingLoad,
 )
@@ -85,7 +103,6 @@ DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
 MaterialFamily = Literal[
     "steel", "cast iron", "aluminium", "magnesium", "titanium", "copper", "zinc", "plastic"
 ]
-StressMeasure = Literal["von_mises", "tresca", "sigma_1"]
 Measures = Literal["length", "angle", "number"]
 
 
@@ -269,63 +286,7 @@ class Combination:
     terms: tuple[Term, ...] = ()
 
 
-# --- limits, mesh, readings -----------------------------------------------------------------
-
-
-@dataclass(frozen=True)
-class StressLimit:
-    """Everywhere: `measure` times `factor` stays under the material's `against` stress.
-
-    `measure` "von_mises" or "tresca" (both with the principal stress across the wall) is for what
-    yields, "sigma_1", the largest tension, for what is brittle.
-
-    `at_rising` says what counts where the stress has no finite value: nothing (the verdict stays
-    undecided) or the structural stress, drawn on from 0.4 and 1.0 wall thicknesses.
-    """
-
-    id: str
-    measure: StressMeasure = "von_mises"
-    against: Literal["proof_stress", "strength"] = "proof_stress"
-    factor: float = 1.5
-    at_rising: Literal["undecided", "structural"] = "undecided"
-
-
-@dataclass(frozen=True)
-class DisplacementLimit:
-    """Nowhere, or at one place, the part moves by no more than `most` [mm].
-
-    Attributes:
-        at: the place [mm], None for everywhere.
-        angle: direction [deg] in which the movement counts, either way; None for its whole length.
-    """
-
-    id: str
-    most: float
-    at: Point | None = None
-    angle: float | None = None
-
-
-@dataclass(frozen=True)
-class JointLimit:
-    """A round hole that carries a pin or bolt keeps to a handbook's rules.
-
-    Attributes:
-        on: id of the hole; of a pattern, every hole of it.
-        rules: name of the set in `resources/joint_rules.json`.
-        factor: times the force.
-        pin: diameter of the pin [mm], None for that of the hole.
-        pin_strength: tensile strength of the pin [MPa], None for at least that of the wall.
-    """
-
-    id: str
-    on: str
-    rules: str = "EN 1993-1-8"
-    factor: float = 1.0
-    pin: float | None = None
-    pin_strength: float | None = None
-
-
-Limit = StressLimit | DisplacementLimit | JointLimit
+# --- mesh, readings -----------------------------------------------------------------
 
 
 @dataclass(frozen=True)

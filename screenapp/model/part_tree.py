@@ -22,6 +22,7 @@ from screenapp.model.part import (
     Dimension,
     DisplacementLimit,
     Edge,
+    FatigueLimit,
     FixedSupport,
     ForceLoad,
     Formula,
@@ -80,6 +81,7 @@ LIMITS: dict[str, type] = {
     "stress": StressLimit,
     "displacement": DisplacementLimit,
     "joint": JointLimit,
+    "fatigue": FatigueLimit,
 }
 READINGS: dict[str, type] = {"probe": Probe, "cut": Cut}
 PATTERNS: dict[str, type] = {"row": RowPattern, "grid": GridPattern, "bolt circle": BoltCircle}

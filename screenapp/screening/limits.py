@@ -13,9 +13,17 @@ from dataclasses import dataclass
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
-from screenapp.model.part import DisplacementLimit, JointLimit, Limit, Part, StressLimit
+from screenapp.model.part import (
+    DisplacementLimit,
+    FatigueLimit,
+    JointLimit,
+    Limit,
+    Part,
+    StressLimit,
+)
 from screenapp.model.shape import Shape
 from screenapp.screening.displacement_limits import displacement_limit_name, judge_displacement
+from screenapp.screening.fatigue_limits import fatigue_limit_name, judge_fatigue
 from screenapp.screening.joint_limits import judge_joint
 from screenapp.screening.passes import Pass
 from screenapp.screening.use import scaled
@@ -33,6 +41,8 @@ def limit_name(limit: Limit) -> str:
         return displacement_limit_name(limit)
     if isinstance(limit, JointLimit):
         return f"hole {limit.on} by {limit.rules}"
+    if isinstance(limit, FatigueLimit):
+        return fatigue_limit_name(limit)
     what = MEASURE_WORDS[limit.measure]
     against = "proof stress" if limit.against == "proof_stress" else "strength"
     rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
@@ -48,6 +58,9 @@ def judge_limits(
     """Every limit in every case; limits at a place read the passes of the screening."""
     found: list[LimitFindings] = []
     for limit in part.limits:
+        if isinstance(limit, FatigueLimit):
+            found.append(judge_fatigue(limit, part, shape, passes))
+            continue
         for k, case in enumerate(cases):
             if isinstance(limit, StressLimit):
                 found.append(_stress(limit, part, case))

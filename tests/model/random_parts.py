@@ -17,6 +17,7 @@ from screenapp.model.part import (
     Dimension,
     DisplacementLimit,
     Edge,
+    FatigueLimit,
     FixedSupport,
     ForceLoad,
     Formula,
@@ -144,6 +145,16 @@ def _limits(i: int) -> st.SearchStrategy[object]:
     return st.one_of(
         st.builds(StressLimit, name, st.sampled_from(measures), st.sampled_from(bounds), numbers),
         st.builds(JointLimit, name, st.sampled_from(["h1", "h4.2"]), texts, numbers, maybe, maybe),
+        st.builds(
+            FatigueLimit,
+            name,
+            st.just("k1"),
+            st.sampled_from([None, "k2"]),
+            numbers,
+            numbers,
+            st.sampled_from(["goodman", "smith_watson_topper"]),
+            st.sampled_from(["none", "peterson", "neuber"]),
+        ),
         st.builds(DisplacementLimit, name, numbers, st.none() | points, maybe),
     )
 

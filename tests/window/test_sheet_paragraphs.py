@@ -16,6 +16,7 @@ from screenapp.model.part import (
     BearingLoad,
     CircleHole,
     DisplacementLimit,
+    FatigueLimit,
     FixedSupport,
     ForceLoad,
     GravityLoad,
@@ -265,6 +266,19 @@ def test_limits_say_what_they_allow(sheet: Sheet) -> None:
     type_into(sentence.field("factor"), "1.35")
     type_into(sentence.field("pin"), "8")
     assert sheet.document.part.limits[2] == JointLimit(joint.id, "h1", factor=1.35, pin=8.0)
+    QTest.mouseClick(paragraph.add.field("fatigue"), Qt.MouseButton.LeftButton)
+    settle()
+    swing = sheet.document.part.limits[3]
+    assert isinstance(swing, FatigueLimit)
+    assert (swing.other, swing.cycles) == (None, 1e6)
+    sentence = paragraph.list.row(swing.id).sentence
+    assert "and no load" in sentence.text
+    type_into(sentence.field("cycles"), "2e5")
+    pick(sentence.field("mean"), "Smith–Watson–Topper")
+    pick(sentence.field("notch"), "count less by Peterson")
+    assert sheet.document.part.limits[3] == replace(
+        swing, cycles=2e5, mean="smith_watson_topper", notch="peterson"
+    )
     pick(row.sentence.field("measure"), "Tresca stress")
     assert sheet.document.part.limits[0] == replace(wanted, measure="tresca")
     pick(row.sentence.field("against"), "tensile strength")

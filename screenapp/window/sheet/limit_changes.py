@@ -6,7 +6,9 @@ from collections.abc import Callable
 from typing import Any
 
 from screenapp.model import edits
-from screenapp.model.part import DisplacementLimit, JointLimit, Limit, StressLimit
+from screenapp.model.combinations import loadings
+from screenapp.model.errors import ScreenappError
+from screenapp.model.part import DisplacementLimit, FatigueLimit, JointLimit, Limit, StressLimit
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
 
@@ -27,6 +29,14 @@ def add_displacement_limit(document: Document) -> None:
 def add_joint_limit(document: Document, on: str) -> None:
     """The rules of a handbook for a hole with a pin."""
     _add(document, "joint limit", JointLimit("", on))
+
+
+def add_fatigue_limit(document: Document) -> None:
+    """A million swings between the first case and no load."""
+    cases = loadings(document.part)
+    if not cases:
+        raise ScreenappError("there is no load case yet", "load the part first")
+    _add(document, "fatigue limit", FatigueLimit("", cases[0].id))
 
 
 def _add(document: Document, name: str, limit: Limit) -> None:

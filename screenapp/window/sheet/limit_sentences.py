@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from screenapp.model.combinations import loadings
 from screenapp.model.errors import ScreenappError
 from screenapp.model.features import place_name
 from screenapp.model.joint_rules import joint_rules
-from screenapp.model.part import CircleHole, DisplacementLimit, JointLimit, Part
+from screenapp.model.part import CircleHole, DisplacementLimit, FatigueLimit, JointLimit, Part
 from screenapp.window.sheet.limit_changes import LimitChange
 from screenapp.window.sheet.pieces import Choice, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -96,6 +97,62 @@ def joint_pieces(
     return (
         *("The pin in ", on, " keeps to ", rules, " under its force times ", factor),
         *("; pin ", pin, ", its strength ", strength, "."),
+    )
+
+
+MEANS = {"goodman": "Goodman", "smith_watson_topper": "Smith–Watson–Topper"}
+NOTCHES = {
+    "none": "count in full",
+    "peterson": "count less by Peterson",
+    "neuber": "count less by Neuber",
+}
+
+
+def fatigue_pieces(
+    part: Part, limit: FatigueLimit, change: LimitChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    """The stress swings between two cases so many times."""
+    where = f"limits.{limit.id}"
+    names = {case.id: case.name for case in loadings(part)}
+
+    def cases() -> tuple[Choice, ...]:
+        return tuple(Choice(id_, name) for id_, name in names.items())
+
+    def end(key: str, case: str | None, none: bool) -> Value:
+        return Value(
+            key,
+            "no load" if case is None else names.get(case, case),
+            "Case at the other end" if none else "Case",
+            lambda chosen: change.set(key, None if chosen == "no load" else chosen),
+            lambda: (*((Choice("no load", "no load"),) if none else ()), *cases()),
+        )
+
+    cycles = q.value(
+        "cycles", limit.cycles, "number", "Number of cycles", change.setter("cycles"),
+        field=f"{where}.cycles",
+    )  # fmt: skip
+    factor = q.value(
+        "factor", limit.factor, "number", "Factor on the amplitude", change.setter("factor"),
+        field=f"{where}.factor",
+    )  # fmt: skip
+    mean = Value(
+        "mean",
+        MEANS.get(limit.mean, limit.mean),
+        "How the mean stress counts",
+        change.setter("mean"),
+        lambda: tuple(Choice(k, t) for k, t in MEANS.items()),
+    )
+    notch = Value(
+        "notch",
+        NOTCHES.get(limit.notch, limit.notch),
+        "How sharp notches count",
+        change.setter("notch"),
+        lambda: tuple(Choice(k, t) for k, t in NOTCHES.items()),
+    )
+    return (
+        *("Swings between ", end("case", limit.case, False), " and "),
+        *(end("other", limit.other, True), " ", cycles, " times, amplitude times ", factor),
+        *("; mean stress by ", mean, ", notches ", notch, "."),
     )
 
 

@@ -3,9 +3,21 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault
-from screenapp.model.part import DisplacementLimit, JointLimit, Limit, Part, StressLimit
+from screenapp.model.part import (
+    DisplacementLimit,
+    FatigueLimit,
+    JointLimit,
+    Limit,
+    Part,
+    StressLimit,
+)
 from screenapp.window.sheet import changes, limit_changes
-from screenapp.window.sheet.limit_sentences import displacement_pieces, joint_pieces, round_holes
+from screenapp.window.sheet.limit_sentences import (
+    displacement_pieces,
+    fatigue_pieces,
+    joint_pieces,
+    round_holes,
+)
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -48,6 +60,12 @@ class LimitsParagraph(Paragraph):
             "Bearing, net section, shear-out and edge distances of a hole",
             lambda: round_holes(self.document.part),
         )
+        fatigue = Link(
+            "fatigue",
+            "+ fatigue",
+            lambda _key: limit_changes.add_fatigue_limit(self.document),
+            "A stress that swings between two cases",
+        )
         self.add.set(
             Link(
                 "stress",
@@ -60,6 +78,7 @@ class LimitsParagraph(Paragraph):
                 "+ displacement limit",
                 lambda _key: limit_changes.add_displacement_limit(self.document),
             ),
+            *((SEPARATOR, fatigue) if part.cases else ()),
             *((SEPARATOR, joint) if round_holes(part) else ()),
         )
         self.add.setVisible(bool(part.limits))
@@ -90,6 +109,8 @@ class LimitsParagraph(Paragraph):
             pieces = displacement_pieces(part, limit, change, q)
         elif isinstance(limit, JointLimit):
             pieces = joint_pieces(part, limit, change, q)
+        elif isinstance(limit, FatigueLimit):
+            pieces = fatigue_pieces(part, limit, change, q)
         else:
             pieces = self._stress(part, limit, change, q)
         return RowOf(

@@ -7,7 +7,7 @@ from PySide6.QtWidgets import QWidget
 from screenapp.model.combinations import loadings
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
-from screenapp.model.part import DisplacementLimit, JointLimit, Part, StressLimit
+from screenapp.model.part import DisplacementLimit, FatigueLimit, JointLimit, Part, StressLimit
 from screenapp.window.document import Document
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.sheet.quantities import Quantities
@@ -63,4 +63,6 @@ def _short_name(part: Part, found: LimitFindings) -> str:
         return f"moves{where} ≤ {Quantities(part.display_units).show(limit.most, 'length')}"
     if isinstance(limit, JointLimit):
         return found.rule or f"{limit.on} pin"
+    if isinstance(limit, FatigueLimit):
+        return f"fatigue, {limit.cycles:.4g} cycles"
     return found.name
