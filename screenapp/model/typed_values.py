@@ -270,6 +270,8 @@ class _Walk:
     def of(self, node: ast.expr) -> _Of:
         """What a node is; where a bare number meets a quantity in a sum, it takes the unit."""
         if isinstance(node, ast.Constant):
+            if isinstance(node.value, bool) or not isinstance(node.value, int | float):
+                return _Of()  # "None" is a name to the user: `evaluate` says that it is not known
             return _Of(1.0) if node.col_offset in self._known else _Of(bare=True)
         if isinstance(node, ast.Name):
             measures = self._measures.get(node.id, "number")
@@ -284,7 +286,7 @@ class _Walk:
 
     def give_unit(self, node: ast.expr, power: float) -> None:
         """Note the numbers that carry the unit of a bare node."""
-        if isinstance(node, ast.Constant):
+        if isinstance(node, ast.Constant) and not isinstance(node.value, bool | None):
             end = node.end_col_offset
             if node.col_offset not in self._known and end is not None:
                 self.found.append((node.col_offset, end, power))

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from hypothesis import given
+from hypothesis import example, given
 from hypothesis import strategies as st
 
 from screenapp.model.errors import ScreenappError
@@ -108,6 +108,8 @@ def test_a_shown_expression_reads_back_as_it_is_kept(units: DisplayUnits, formul
         assert shown == formula
 
 
+@example("None")
+@example("True + 2")
 @given(st.text(max_size=40) | st.text("0123456789.,+-*/() §withmaxn°", max_size=30))
 def test_any_text_gives_a_value_or_an_error_of_ours(text: str) -> None:
     for units in ("mm-N-MPa", "in-lbf-ksi"):
