@@ -14,7 +14,7 @@ from screenapp.model.assets import resource
 from screenapp.model.cut_figure import cut_figure
 from screenapp.model.edge_parts import span_of
 from screenapp.model.estimate_text import EstimateKind, estimate_text
-from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
+from screenapp.model.findings import CaseFindings, CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import (
@@ -32,6 +32,14 @@ from screenapp.model.units import format_quantity
 from screenapp.report.cut_svg import cut_svg
 from screenapp.report.drawing import part_svg
 from screenapp.report.history_svg import history_svg
+from screenapp.report.input_words import (
+    combination_words,
+    dimension_rows,
+    formula_rows,
+    hole_words,
+    ring_rows,
+    rings,
+)
 from screenapp.report.picture import RecordPicture
 
 CAUTION = (
@@ -56,6 +64,7 @@ def record_page(
     x0, y0, x1, y1 = shape.bounds
     return template.render(
         part=part,
+        units=units,
         findings=findings,
         names={case.case: case.name for case in findings.cases},
         numbered=_numbered(findings),
@@ -69,6 +78,13 @@ def record_page(
         share=share_text,
         load_words=load_words,
         support_words=support_words,
+        hole_words=hole_words,
+        rings=rings(part),
+        ring_rows=ring_rows,
+        dimension_rows=dimension_rows,
+        formula_rows=formula_rows,
+        combination_words=combination_words,
+        resultant=_resultant,
         size=(x1 - x0, y1 - y0),
         drawing=Markup(part_svg(part, shape, findings)),  # made here, its texts escaped there
         pictures=[(p.words, b64encode(p.png).decode()) for p in pictures],
@@ -82,6 +98,12 @@ def _environment() -> Environment:
     return Environment(
         autoescape=True, undefined=StrictUndefined, trim_blocks=True, lstrip_blocks=True
     )
+
+
+def _resultant(value: float, case: CaseFindings) -> str:
+    """A component of the loads' resultant; what is nothing but rounding beside them is 0."""
+    largest = max(map(abs, case.applied), default=0.0)
+    return f"{value if abs(value) > 1e-12 * largest else 0.0:.5g}"
 
 
 def _numbered(findings: Findings) -> list[tuple[int, str, object]]:

@@ -218,7 +218,7 @@ def _markup(block: Element) -> str:
             out.append("<br/>")
         elif child.tag == "span" and block.tag == "h2":
             out.append(f'<font color="#5c6470">{inner}</font>&nbsp;&nbsp; ')
-        elif child.tag == "span":
+        elif child.tag in ("span", "small"):
             out.append(f'<font color="#5c6470">{inner}</font>' if inner else "")
         elif child.tag in ("strong", "p"):
             out.append(inner)

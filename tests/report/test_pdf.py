@@ -14,6 +14,7 @@ import pytest
 from pypdf import PdfReader
 
 from screenapp.meshing.service import Mesher
+from screenapp.model.assets import resource
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import read_part
@@ -176,6 +177,13 @@ def test_a_page_with_something_unknown_is_refused(bracket: Screened) -> None:
         page = f"<html><style></style><body>{body}</body></html>"
         with pytest.raises(ValueError, match=word):
             record_pdf(part, "0" * 64, page, WHEN)
+
+
+def test_every_tag_of_the_template_can_be_shown() -> None:
+    """Also those that no sample reaches."""
+    body = resource("report/record.html").read_text(encoding="utf-8").split("<body>")[1]
+    blocks = {"h1", "h2", "h3", "p", "div", "table", "tr", "th", "td", "img", "body", "html"}
+    assert set(re.findall(r"</?([a-z]+\d?)", body)) <= blocks | {"span", "small", "strong", "br"}
 
 
 def test_styles_of_drawings_follow_the_page() -> None:
