@@ -18,7 +18,14 @@ from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError, SolvingError
 from screenapp.model.mesh import Mesh
-from screenapp.model.part import FixedSupport, Part, PrescribedSupport, RollerSupport, Support
+from screenapp.model.part import (
+    FixedSupport,
+    Part,
+    PinSupport,
+    PrescribedSupport,
+    RollerSupport,
+    Support,
+)
 from screenapp.model.shape import Shape
 
 Floats = NDArray[np.float64]
@@ -219,7 +226,7 @@ def _holds_of(support: Support, normals: Floats) -> list[tuple[Floats, float]]:
     if isinstance(support, PrescribedSupport):
         wanted = ((x, support.x), (y, support.y))
         return [(axis, value) for axis, value in wanted if value is not None]
-    if support.angle is None:
+    if isinstance(support, PinSupport) or support.angle is None:
         return [(normals, 0.0)]
     angle = math.radians(support.angle)
     return [(_clean(np.array([math.cos(angle), math.sin(angle)])), 0.0)]

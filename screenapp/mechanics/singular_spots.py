@@ -25,6 +25,7 @@ from screenapp.model.part import (
     Case,
     FixedSupport,
     Part,
+    PinSupport,
     Point,
     PointLoad,
     PrescribedSupport,
@@ -77,6 +78,8 @@ def _held(support: Support) -> Held:
         if support.x is None and support.y is None:
             return "free"
         return 0.0 if support.x is not None else 0.5 * math.pi
+    if isinstance(support, PinSupport):
+        return "normal"
     return "normal" if support.angle is None else math.radians(support.angle) % math.pi
 
 

@@ -3,20 +3,16 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
 from dataclasses import replace
 
 import numpy as np
-from numpy.typing import NDArray
-from scipy import sparse
 
-from screenapp.mechanics.assembly import System, assemble, condense_loads, internal_forces, spread
-from screenapp.mechanics.constraints import HeldDirections, held_directions, reduce
-from screenapp.mechanics.dissection import elimination_order
+from screenapp.mechanics.assembly import assemble
+from screenapp.mechanics.constraints import held_directions
 from screenapp.mechanics.element_walls import element_hooke, element_thickness
-from screenapp.mechanics.equilibrium import balance, reactions
-from screenapp.mechanics.linear_solve import factorise, solve_refined
+from screenapp.mechanics.linear_system import solve_system
 from screenapp.mechanics.loads import nodal_forces
+from screenapp.mechanics.one_sided import has_pins, solve_with_pins
 from screenapp.mechanics.thermal import free_strains, thermal_forces
 from screenapp.model.combinations import loadings
 from screenapp.model.mesh import Mesh
@@ -25,12 +21,9 @@ from screenapp.model.progress import SILENT, Progress
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution
 
-Floats = NDArray[np.float64]
-Ints = NDArray[np.int64]
-
 
 def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> Solution:
-    """Solve all load cases of a part with one factorisation.
+    """Solve all load cases of a part, with one factorisation unless pins that only push hold it.
 
     Prescribed displacements act in every case.
 
@@ -53,65 +46,11 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
         element_thickness(part, mesh),
         progress,
     )
-    return replace(solve_system(system, held, forces, progress), free_strains=free)
-
-
-def solve_system(
-    system: System, held: HeldDirections, forces: Floats, progress: Progress = SILENT
-) -> Solution:
-    """Solve assembled equations for nodal forces (n_cases, n_nodes, 2) [N].
-
-    Raises:
-        InvalidPartError, SolvingError, Cancelled: as for `solve`.
-    """
-    mesh = system.mesh
-    reduction = reduce(held, mesh, system.index)
-    loads = condense_loads(system, forces)
-    basis = reduction.basis
-    reduced = (basis.T @ system.stiffness @ basis).tocsc()
-    right = basis.T @ (loads - system.stiffness @ reduction.held).T
-    held_term = np.broadcast_to(reduction.held, loads.shape)
-
-    def in_full(terms: Sequence[Floats]) -> list[Floats]:
-        return [held_term, *((basis @ term).T for term in terms)]
-
-    def gap_of(terms: Sequence[Floats]) -> Floats:
-        progress.check()
-        return np.asarray(basis.T @ (loads - internal_forces(system, in_full(terms))).T)
-
-    progress.check()
-    terms, residual = solve_refined(
-        reduced, right, gap_of, lambda matrix: factorise(matrix, lambda: _order(system, basis))
-    )
-    progress.check()
-    parts = in_full(terms)
-    unknowns = np.sum(parts, axis=0)
-    displacements, modes = spread(system, unknowns, forces)
-    support_forces = np.zeros(forces.shape)
-    support_forces[:, system.carried] = (internal_forces(system, parts) - loads).reshape(
-        len(forces), len(system.carried), 2
-    )
-    given = tuple(reactions(held, mesh.nodes, case) for case in support_forces)
-    return Solution(
-        element=system.element,
-        displacements=displacements,
-        reactions=given,
-        balance=tuple(
-            balance(mesh.nodes, case, back) for case, back in zip(forces, given, strict=True)
-        ),
-        residual=residual,
-        unknowns=reduced.shape[0],
-        internal_modes=modes,
-        support_forces=support_forces,
-    )
-
-
-def _order(system: System, basis: sparse.csc_array) -> Ints:
-    """Unknowns of the reduced system in the order in which to eliminate them."""
-    node = basis.indices[basis.indptr[:-1]] // 2  # of the first displacement that each moves
-    return elimination_order(
-        system.element_nodes, system.mesh.nodes[system.carried], node.astype(np.int64)
-    )
+    if has_pins(part):
+        found = solve_with_pins(part, system, held, forces, progress)
+    else:
+        found = solve_system(system, held, forces, progress)
+    return replace(found, free_strains=free)
 
 
 def estimate_unknowns(n_elements: int, element: ElementName) -> int:

@@ -12,12 +12,9 @@ from screenapp.model.features import places_of
 from screenapp.model.load_faults import one_load_faults
 from screenapp.model.part import (
     Case,
-    FixedSupport,
     Load,
     Part,
     PlacedLoad,
-    PrescribedSupport,
-    RollerSupport,
     Support,
 )
 from screenapp.model.support_faults import one_support_faults
@@ -55,7 +52,7 @@ def put_on(part: Part, id_: str, on: str) -> Part:
         EditError: it cannot stand there, or is the part's own weight.
     """
     record = must_find(part, id_, "support", "load").record
-    if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
+    if isinstance(record, Support):
         return replace_support(part, without_span(replace(record, on=on)))
     if not isinstance(record, PlacedLoad):
         raise EditError(f"load {id_} acts throughout the part", "put another load on the place")

@@ -86,6 +86,9 @@ from screenapp.model.support_records import (
     FixedSupport as FixedSupport,
 )
 from screenapp.model.support_records import (
+    PinSupport as PinSupport,
+)
+from screenapp.model.support_records import (
     PrescribedSupport as PrescribedSupport,
 )
 from screenapp.model.support_records import (

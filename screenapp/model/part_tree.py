@@ -35,6 +35,7 @@ from screenapp.model.part import (
     MeshWishes,
     MomentLoad,
     Part,
+    PinSupport,
     Point,
     PointLoad,
     PrescribedSupport,
@@ -64,6 +65,7 @@ SUPPORTS: dict[str, type] = {
     "fixed": FixedSupport,
     "roller": RollerSupport,
     "prescribed": PrescribedSupport,
+    "pin": PinSupport,
 }
 LOADS: dict[str, type] = {
     "pressure": PressureLoad,

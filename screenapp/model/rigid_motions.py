@@ -18,6 +18,7 @@ from screenapp.model.edge_parts import pieces_under
 from screenapp.model.part import (
     FixedSupport,
     Part,
+    PinSupport,
     Point,
     PrescribedSupport,
     RollerSupport,
@@ -80,6 +81,8 @@ def held_by(part: Part, support: Support, shape: Shape) -> Held:
     parts: list[tuple[Floats, float]] = []
     if isinstance(support, FixedSupport):
         parts = [(x, 0.0), (y, 0.0)]
+    elif isinstance(support, PinSupport):
+        parts = [(normals, 0.0)]  # as if it touched all round
     elif isinstance(support, RollerSupport):
         if support.angle is None:
             parts = [(normals, 0.0)]

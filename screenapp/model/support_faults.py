@@ -11,8 +11,10 @@ from screenapp.model.edge_parts import span_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places, edges_at, loops_of
 from screenapp.model.part import (
+    CircleHole,
     Corner,
     Part,
+    PinSupport,
     Point,
     PrescribedSupport,
     RollerSupport,
@@ -99,7 +101,15 @@ def one_support_faults(
         return
     yield from span_faults(support, name, where, places, shape)
     on_corner = places[support.on].kind == "corner"
-    if isinstance(support, RollerSupport):
+    if isinstance(support, PinSupport):
+        if not isinstance(places[support.on].record, CircleHole):
+            yield Fault(
+                f"{name} is a pin on {places[support.on].kind} {support.on}",
+                "put it on a round hole, or hold the place in another way",
+                f"{where}.on",
+                (*ids, support.on),
+            )
+    elif isinstance(support, RollerSupport):
         if support.angle is None and on_corner:
             yield Fault(
                 f"{name} is a roller on corner {support.on}, which has no normal of its own",

@@ -47,4 +47,16 @@ class PrescribedSupport:
     end: float | None = None
 
 
-Support = FixedSupport | RollerSupport | PrescribedSupport
+@dataclass(frozen=True)
+class PinSupport:
+    """A rigid pin in a round hole that only pushes.
+
+    It fits without play and without friction, bears on the side that is pressed against it, and
+    lets the rim go elsewhere.
+    """
+
+    id: str
+    on: str
+
+
+Support = FixedSupport | RollerSupport | PrescribedSupport | PinSupport

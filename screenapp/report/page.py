@@ -182,6 +182,8 @@ def support_words(support: Support) -> str:
         on += ","
     if kind == "FixedSupport":
         return f"{on} is fixed in both directions"
+    if kind == "PinSupport":
+        return f"{on} sits on a rigid pin without play or friction that only pushes"
     if kind == "RollerSupport":
         angle = getattr(support, "angle", None)
         along = "its normal" if angle is None else f"{angle:g}°"

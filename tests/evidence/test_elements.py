@@ -13,8 +13,9 @@ import pytest
 from screenapp.mechanics.assembly import assemble
 from screenapp.mechanics.constraints import HeldDirections, prescribe_nodes
 from screenapp.mechanics.elasticity import constitutive_matrix
+from screenapp.mechanics.linear_system import solve_system
 from screenapp.mechanics.quadrature import gauss_square
-from screenapp.mechanics.solve import solve, solve_system
+from screenapp.mechanics.solve import solve
 from screenapp.mechanics.strain_displacement import element_strains
 from screenapp.model.part import (
     Case,

@@ -10,8 +10,9 @@ import pytest
 from screenapp.mechanics.assembly import assemble
 from screenapp.mechanics.constraints import prescribe_nodes
 from screenapp.mechanics.elasticity import constitutive_matrix
+from screenapp.mechanics.linear_system import solve_system
 from screenapp.mechanics.recovery import recover
-from screenapp.mechanics.solve import solve, solve_system
+from screenapp.mechanics.solve import solve
 from screenapp.model.part import (
     Case,
     CircleHole,

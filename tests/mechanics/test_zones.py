@@ -12,9 +12,9 @@ from screenapp.mechanics.assembly import assemble
 from screenapp.mechanics.constraints import prescribe_nodes
 from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.equilibrium import resultant
+from screenapp.mechanics.linear_system import solve_system
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import averaged_stress, extrapolated_stress, recover
-from screenapp.mechanics.solve import solve_system
 from screenapp.model.mass import mass_of
 from screenapp.model.part import (
     BearingLoad,

@@ -31,6 +31,7 @@ from screenapp.model.part import (
     MeshWishes,
     MomentLoad,
     Part,
+    PinSupport,
     PointLoad,
     PrescribedSupport,
     PressureLoad,
@@ -98,6 +99,7 @@ def _supports(i: int) -> st.SearchStrategy[object]:
     name = st.just(f"s{i}")
     return st.one_of(
         st.builds(FixedSupport, name, on, maybe, maybe),
+        st.builds(PinSupport, name, on),
         st.builds(RollerSupport, name, on, maybe, maybe, maybe),
         st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )

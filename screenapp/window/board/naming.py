@@ -18,14 +18,15 @@ from screenapp.model.part import (
     LineLoad,
     MomentLoad,
     Part,
+    PinSupport,
     PointLoad,
-    PrescribedSupport,
     PressureLoad,
     Probe,
     RollerSupport,
     ShearLoad,
     SlotHole,
     SpinLoad,
+    Support,
     TemperatureLoad,
     Zone,
 )
@@ -70,7 +71,7 @@ def described(part: Part, found: Found) -> str:
         return f"{words}, {_length(record.chamfer, units)} off both edges"
     if isinstance(record, Probe):
         return f"probe {record.name}"
-    if isinstance(record, FixedSupport | RollerSupport | PrescribedSupport):
+    if isinstance(record, Support):
         return f"{place_name(part, record.on)} {_held(record, units)}"
     if isinstance(record, GravityLoad):
         pull = format_quantity(math.hypot(record.x, record.y), "acceleration", units)
@@ -100,9 +101,11 @@ def zone_words(zone: Zone, part: Part) -> str:
     return ", ".join(words)
 
 
-def _held(record: FixedSupport | RollerSupport | PrescribedSupport, units: DisplayUnits) -> str:
+def _held(record: Support, units: DisplayUnits) -> str:
     if isinstance(record, FixedSupport):
         return "is held in both directions"
+    if isinstance(record, PinSupport):
+        return "sits on a pin that only pushes"
     if isinstance(record, RollerSupport):
         if record.angle is None:
             return "is held across its boundary and slides along it"

@@ -13,6 +13,7 @@ from screenapp.model.part import (
     BodyLoad,
     FixedSupport,
     Part,
+    PinSupport,
     PrescribedSupport,
     RollerSupport,
 )
@@ -30,7 +31,7 @@ from screenapp.window.board.popover import Popover
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
 
-SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport)
+SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport, PinSupport)
 
 
 class Placing:

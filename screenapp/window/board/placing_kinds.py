@@ -19,6 +19,7 @@ from screenapp.model.part import (
     Load,
     MomentLoad,
     Part,
+    PinSupport,
     PointLoad,
     PrescribedSupport,
     PressureLoad,
@@ -142,6 +143,13 @@ PIN = Way(
     "Sits on a pin that it can turn about; with an angle, held along that direction only.",
     (EntryField("angle", "held along", "angle", (), "all round"),),
     _roller,
+)
+PUSHING_PIN = Way(
+    "pushing",
+    "Pushing pin",
+    "A pin that bears only on the side that is pressed against it; found case by case.",
+    (),
+    lambda id_, on, _values: PinSupport(id_, on),
 )
 CORNER_ROLLER = Way(
     "roller",
@@ -268,6 +276,8 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
         return ()
     if found.kind == "corner":
         return FIXED, CORNER_ROLLER, MOVED
+    if isinstance(found.record, CircleHole):
+        return FIXED, PIN, PUSHING_PIN, MOVED
     return FIXED, (PIN if found.kind == "hole" else ROLLER), MOVED
 
 
@@ -287,6 +297,8 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
     """The key of the way and the values that would make this record."""
     if isinstance(record, FixedSupport):
         return "fixed", {}
+    if isinstance(record, PinSupport):
+        return "pushing", {}
     if isinstance(record, RollerSupport):
         return "roller", {} if record.angle is None else {"angle": record.angle}
     if isinstance(record, PrescribedSupport):

@@ -9,6 +9,7 @@ import numpy as np
 from screenapp.model.edge_parts import Span, span_of
 from screenapp.model.part import (
     FixedSupport,
+    PinSupport,
     PrescribedSupport,
     RollerSupport,
     Support,
@@ -36,6 +37,8 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
             _footed(mark, at, squared(out))
         else:
             _clamped(mark, drawn, frame, support.on, span_of(support))
+    elif isinstance(support, PinSupport):
+        _pin(mark, at, radius_px(drawn, frame, support.on))
     elif isinstance(support, RollerSupport):
         _rolling(mark, drawn, frame, support, at, out)
     else:
@@ -89,6 +92,18 @@ def _wheeled(mark: Mark, at: Floats, out: Floats) -> None:
         mark.circle(base + 3.0 * out + s * side, 2.5)
     ground = base + 6.5 * out
     mark.line(ground - 11.0 * side, ground + 11.0 * side)
+
+
+def _pin(mark: Mark, at: Floats, radius: float) -> None:
+    """A pin, hatched, on hatched ground: it pushes and does not pull."""
+    size = max(min(0.75 * radius, 14.0), 4.0)
+    mark.circle(at, size)
+    for s in (-0.5, 0.0, 0.5):
+        half = size * math.sqrt(1.0 - s * s) * 0.95
+        middle_of = at + s * size * np.array([1.0, 1.0]) / math.sqrt(2.0)
+        along = half * np.array([1.0, -1.0]) / math.sqrt(2.0)
+        mark.line(middle_of - along, middle_of + along)
+    _ground(mark, at + (size + 2.0) * DOWN, DOWN, np.array([1.0, 0.0]))
 
 
 def _rolling(

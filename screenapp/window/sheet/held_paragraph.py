@@ -3,8 +3,16 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault
-from screenapp.model.features import place_name
-from screenapp.model.part import FixedSupport, PrescribedSupport, RollerSupport, Support
+from screenapp.model.features import find, place_name
+from screenapp.model.part import (
+    CircleHole,
+    FixedSupport,
+    Part,
+    PinSupport,
+    PrescribedSupport,
+    RollerSupport,
+    Support,
+)
 from screenapp.window.sheet import changes, support_changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
@@ -16,6 +24,7 @@ from screenapp.window.sheet.span_pieces import span_pieces
 KINDS = (
     Choice("fixed", "fixed", "held in both directions"),
     Choice("normal", "held across its boundary", "slides along it; on a hole: a pin"),
+    Choice("pushing", "held by a pin that only pushes", "bears on the side that is pressed"),
     Choice("angle", "held along one direction", "slides across it"),
     Choice("moved", "moved by a given amount", "x, y or both"),
 )
@@ -77,12 +86,15 @@ class HeldParagraph(Paragraph):
     def _pieces(self, support: Support, where: str, q: Quantities) -> tuple[Piece | str, ...]:
         change = support_changes.SupportChange(self.document, support.id)
         texts = {c.key: c.text for c in KINDS}
+        kinds = _kinds(self.document.part, support)
 
         def kind(key: str) -> Value:
-            return Value("kind", texts[key], f"How {where} is held", change.kind, lambda: KINDS)
+            return Value("kind", texts[key], f"How {where} is held", change.kind, lambda: kinds)
 
         if isinstance(support, FixedSupport):
             return (kind("fixed"), " in both directions")
+        if isinstance(support, PinSupport):
+            return (kind("pushing"), "; it fits without play and friction")
         if isinstance(support, RollerSupport):
             if support.angle is None:
                 turns = ", so that it can turn on it" if where.startswith("hole") else ""
@@ -116,3 +128,12 @@ class HeldParagraph(Paragraph):
             f"supports.{support.id}.y",
         )
         return (kind("moved"), ": x ", x, ", y ", y)
+
+
+def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
+    """The ways in which the place of a support may be held; a hole's normal way is a pin."""
+    found = find(part, support.on)
+    if found is not None and isinstance(found.record, CircleHole):
+        pin = Choice("normal", "held across its boundary", "a pin all round: the part can turn")
+        return tuple(pin if c.key == "normal" else c for c in KINDS)
+    return tuple(c for c in KINDS if c.key != "pushing")

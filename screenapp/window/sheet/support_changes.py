@@ -7,7 +7,8 @@ from dataclasses import replace
 from typing import Any
 
 from screenapp.model import edits
-from screenapp.model.part import FixedSupport, PrescribedSupport, RollerSupport, Support
+from screenapp.model.edge_parts import span_of
+from screenapp.model.part import FixedSupport, PinSupport, PrescribedSupport, RollerSupport, Support
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
 
@@ -34,11 +35,15 @@ class SupportChange:
             new = FixedSupport(old.id, old.on)
         elif kind == "normal":
             new = RollerSupport(old.id, old.on)
+        elif kind == "pushing":
+            new = PinSupport(old.id, old.on)
         elif kind == "angle":
             new = RollerSupport(old.id, old.on, 90.0)
         else:
             new = PrescribedSupport(old.id, old.on, 0.0, 0.0)
-        new = replace(new, start=old.start, end=old.end)
+        if not isinstance(new, PinSupport):
+            start, end = span_of(old)
+            new = replace(new, start=start, end=end)
         self._put(f"how {old.on} is held", new)
 
     def setter(self, field: str) -> Callable[[Any], None]:
