@@ -220,6 +220,40 @@ class LimitFindings:
 
 
 @dataclass(frozen=True)
+class HandCheck:
+    """A computed stress beside that of a handbook formula for the same feature.
+
+    Attributes:
+        kind: the handbook's case in words.
+        case: id of the load case.
+        feature: id of the hole or corner.
+        place: the same in words, with what bounds it.
+        at: where the computed stress is [mm].
+        computed: largest von Mises stress there [MPa].
+        formula: that of the formula [MPa].
+        source: of the formula.
+        valid: its range, and where in it this case lies.
+        nominal: the force and section that it was worked out with.
+    """
+
+    kind: str
+    case: str
+    feature: str
+    place: str
+    at: Point
+    computed: Estimate
+    formula: float
+    source: str
+    valid: str
+    nominal: str
+
+    @property
+    def difference(self) -> float:
+        """Of the computed stress from the formula's, relative to the latter."""
+        return self.computed.value / self.formula - 1.0
+
+
+@dataclass(frozen=True)
 class PassSummary:
     """One pass of the mesh: size, unknowns, estimated relative energy error, largest von Mises
     stress [MPa] over all cases, and smallest element size [mm]."""
@@ -322,6 +356,7 @@ class Findings:
         area: of the part [mm²].
         cases, readings, limits: as named; readings list every probe for every case.
         cuts: every cut for every case.
+        hand_checks: features that are handbook cases, beside their formulas.
         mesh: the last mesh.
         timing: seconds by stage ("meshing", "solving", "recovery", "total").
         cautions: sentences that belong beside the verdict (a point load, a fallback mesh ...).
@@ -343,6 +378,7 @@ class Findings:
     cautions: tuple[str, ...] = ()
     fields: tuple[Fields, ...] = ()
     cuts: tuple[CutFindings, ...] = ()
+    hand_checks: tuple[HandCheck, ...] = ()
 
     @property
     def last(self) -> Fields | None:

@@ -21,6 +21,7 @@ from screenapp.model.findings import (
     Reading,
     WallGauge,
 )
+from screenapp.model.hand_check_json import hand_check_tree
 from screenapp.model.json_writer import json_text
 from screenapp.model.part import Part
 from screenapp.model.result_reading import FORMAT, VERSION, findings_from_record
@@ -49,6 +50,7 @@ def findings_to_record(findings: Findings, part: Part) -> Tree:
         "cases": [_case(case) for case in findings.cases],
         "readings": [_reading(reading) for reading in findings.readings],
         "cuts": [cut_tree(cut) for cut in findings.cuts],
+        "hand_checks": [hand_check_tree(check) for check in findings.hand_checks],
         "limits": [_limit(limit) for limit in findings.limits],
         "buckling": [],
         "mesh": _mesh(findings.mesh),

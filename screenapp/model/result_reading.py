@@ -20,6 +20,7 @@ from screenapp.model.findings import (
     Reading,
     WallGauge,
 )
+from screenapp.model.hand_check_json import hand_check_of
 from screenapp.model.result_values import estimate_of, number_of, point_of
 from screenapp.model.solution import Balance, Reaction
 
@@ -50,6 +51,7 @@ def findings_from_record(record: Tree) -> Findings:
         cases=tuple(_case_of(case) for case in record["cases"]),
         readings=tuple(_reading_of(reading) for reading in record["readings"]),
         cuts=tuple(cut_of(cut) for cut in record.get("cuts", ())),
+        hand_checks=tuple(hand_check_of(c) for c in record.get("hand_checks", ())),
         limits=tuple(_limit_of(limit) for limit in record["limits"]),
         mesh=_mesh_of(record["mesh"]),
         timing={stage: number_of(seconds) for stage, seconds in record["timing"].items()},

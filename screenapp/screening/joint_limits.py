@@ -33,6 +33,10 @@ NOTHING = 1e-7
 area is rounding."""
 
 
+MOST_USE = 1000.0
+"""What has next to no resistance counts as used so many times."""
+
+
 @dataclass(frozen=True)
 class HoleForce:
     """The force that a pin puts on a hole: its size [N] with band, and its components [N]."""
@@ -157,11 +161,8 @@ def _rows(
     found: list[LimitFindings] = []
     for check in rules.checks:
         resistance = rules.value(check.resistance, values)
-        used = (
-            scaled(force.size, limit.factor / resistance)
-            if resistance > 0.0
-            else Estimate(math.inf, math.inf, math.inf, force.size.trust)
-        )
+        least = limit.factor * force.size.value / MOST_USE
+        used = scaled(force.size, limit.factor / max(resistance, least))
         why = (
             f"{check.name} at hole {hole.id} uses {plain(used.value, 2)} of its resistance of "
             f"{resistance:.4g} N under “{case.name}” ({rules.name}, {check.source})"

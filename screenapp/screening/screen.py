@@ -45,6 +45,7 @@ from screenapp.model.validity import check, faults_of
 from screenapp.screening.adapt import targets, wanted_sizes
 from screenapp.screening.capacity import refuse_beyond_memory
 from screenapp.screening.cuts import cuts
+from screenapp.screening.hand_checks import hand_checks
 from screenapp.screening.limits import judge_limits, overall
 from screenapp.screening.passes import Pass
 from screenapp.screening.plain_quads import plain_losses
@@ -268,6 +269,7 @@ def _findings(
         cases=cases,
         readings=read,
         cuts=cuts(part, shape, passes),
+        hand_checks=hand_checks(part, shape, passes, cases),
         limits=limits,
         mesh=MeshFindings(
             part.mesh.element,

@@ -48,6 +48,7 @@ class FindingsParagraph(Paragraph):
         self._peaks: list[tuple[CaseFindings, Peak]] = []
         self.table.line_picked.connect(self._trace)
         self.why = self.rows(0)
+        self.hand = self.rows(0)
         self.cases = self.rows(0)
         self.reactions = self.rows(92)
         self.document.view_changed.connect(self.refresh)
@@ -66,6 +67,7 @@ class FindingsParagraph(Paragraph):
         self._show_history()
         self._show_cut()
         self.why.set([_why_row(i, p) for i, (_, p) in enumerate(_doubtful(peaks, findings))])
+        self.hand.set(self._hand_rows(findings) if findings else [])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
         self.reactions.set(self._reaction_rows(case) if case else [])
@@ -107,6 +109,25 @@ class FindingsParagraph(Paragraph):
         figure = cut_figure(chosen[0], document.part.display_units) if chosen else None
         names = {case.id: case.name for case in cases} if len(cases) > 1 else {}
         self.cut.show_figure(figure, names.get(viewed, ""))
+
+    def _hand_rows(self, findings: Findings) -> list[RowOf]:
+        """Handbook formulas beside what was computed, in the case that is viewed."""
+        units = self.document.part.display_units
+        case = _viewed(findings, self.document.view.case)
+        rows = []
+        for check in findings.hand_checks:
+            if case is None or check.case != case.case:
+                continue
+            text = (
+                f"By hand, {check.kind}, {check.place}: "
+                f"{Quantities(units).show(_three(check.formula), 'stress')} where "
+                f"{estimate_text(check.computed, 'stress', units)} was computed "
+                f"({signed_percent(check.difference)}). {_sentence(check.source)} "
+                f"{_sentence(check.valid)}"
+            )
+            pieces = (Words(text, quiet=True),)
+            rows.append(RowOf(f"hand {check.feature}", (), pieces, also=(check.feature,)))
+        return rows
 
     def _case_row(self, case: CaseFindings) -> RowOf:
         units = self.document.part.display_units
@@ -212,6 +233,17 @@ def _why_row(number: int, peak: Peak) -> RowOf:
     why = peak.why if peak.place in peak.why else f"{peak.place}: {peak.why}"
     text = f"{_sentence(why)}{mend}"
     return RowOf(f"why {number}", (), (Words(text, colour=colour),), also=(peak.feature,))
+
+
+def signed_percent(share: float) -> str:
+    """A difference as a percentage with its sign and one decimal.
+
+    Example:
+        >>> signed_percent(-0.0123)
+        '−1.2 %'
+    """
+    sign = "+" if share >= 0.0 else "−"
+    return f"{sign}{plain(abs(100.0 * share), 1)} %"
 
 
 def _sentence(text: str) -> str:
