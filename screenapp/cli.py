@@ -307,7 +307,7 @@ def _prepare(folder: Path, files: Sequence[Path]) -> None:
         ScreenappError: it cannot be written to, two records would have the same name, or a record
             would take the place of another part file.
     """
-    from screenapp.report.record import PART_ENDING, record_stem
+    from screenapp.report.record import record_stem, unowned_part
 
     try:
         folder.mkdir(parents=True, exist_ok=True)
@@ -327,9 +327,8 @@ def _prepare(folder: Path, files: Sequence[Path]) -> None:
                 "screen them one by one, each with its own --out",
             )
         first[stem] = path
-        copy = folder / f"{stem}{PART_ENDING}"
-        of_record = (folder / f"{stem}.result.json").exists()
-        if copy.exists() and not of_record and copy.resolve() != path.resolve():
+        copy = unowned_part(folder, path)
+        if copy is not None:
             raise ScreenappError(
                 f"{copy} is there already and belongs to no record: it would be replaced by {path}",
                 "give another folder with --out, or move the file away",

@@ -27,6 +27,15 @@ def record_stem(source: Path) -> str:
     return name[: -len(PART_ENDING)] if name.endswith(PART_ENDING) else source.stem
 
 
+def unowned_part(folder: Path, source: Path) -> Path | None:
+    """The part file that a record of `source` in `folder` would replace though it belongs to no
+    record; None if there is none."""
+    stem = record_stem(source)
+    copy = folder / f"{stem}{PART_ENDING}"
+    of_record = (folder / f"{stem}.result.json").exists()
+    return copy if copy.exists() and not of_record and copy.resolve() != source.resolve() else None
+
+
 def write_record(
     part: Part,
     findings: Findings,

@@ -82,7 +82,7 @@ class Actions:
         redo.setEnabled(history.can_redo)
         redo.setText(f"&Redo {history.redo_name}".strip())
         self.by_name["delete"].setEnabled(bool(document.selection))
-        self.by_name["cancel"].setEnabled(self._window.screener.busy)
+        self.by_name["cancel"].setEnabled(self._window.screener.busy or self._window.record.busy)
         self.by_name["screen"].setEnabled(not any(f.blocks for f in document.faults))
         for lens in LENSES:
             self.by_name[f"lens {lens}"].setChecked(document.view.lens == lens)
@@ -147,6 +147,16 @@ class Actions:
                 files.export_drawing,
                 ("Ctrl+Shift+E",),
                 line="Writes outline, holes and zones as a DXF drawing.",
+            ),
+        )
+        self._add(
+            menu,
+            Item(
+                "write record",
+                "&Write the record…",
+                self._window.record.choose_and_write,
+                ("Ctrl+Shift+R",),
+                line="Writes page, PDF, pictures, tables and fields of the findings into a folder.",
             ),
         )
         menu.addSeparator()

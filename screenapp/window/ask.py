@@ -48,6 +48,13 @@ class Ask:
             return path
         return path.with_name(path.name + DRAWING_SUFFIX)
 
+    def folder_for_record(self, parent: QWidget, suggested: Path) -> Path | None:
+        """The folder that the record goes into."""
+        name = QFileDialog.getExistingDirectory(
+            parent, "Write the record into a folder", str(suggested)
+        )
+        return Path(name) if name else None
+
     def unsaved(self, parent: QWidget, title: str) -> Unsaved:
         """What to do with changes that are not saved."""
         box = QMessageBox(parent)

@@ -32,8 +32,8 @@ from screenapp.model.part import DisplayUnits, Part, Point
 from screenapp.model.progress import Progress, Step
 from screenapp.model.units import parse_quantity
 from screenapp.window import theme
+from screenapp.window.background_jobs import BackgroundJobs
 from screenapp.window.cut_label import CutLabel
-from screenapp.window.drawing_jobs import DrawingJobs
 from screenapp.window.drawing_layers import LayerList
 from screenapp.window.drawing_preview import DrawingPreview, Painted
 from screenapp.window.drawing_words import (
@@ -67,7 +67,9 @@ class DrawingPanel(QDialog):
 
     wanted = Signal(object, str)
 
-    def __init__(self, path: Path, units: DisplayUnits, jobs: DrawingJobs, parent: QWidget) -> None:
+    def __init__(
+        self, path: Path, units: DisplayUnits, jobs: BackgroundJobs, parent: QWidget
+    ) -> None:
         super().__init__(parent)
         self.setWindowTitle(f"Bring in a drawing: {path.name}")
         self.setModal(False)

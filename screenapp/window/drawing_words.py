@@ -7,6 +7,7 @@ from collections.abc import Callable
 from screenapp.exchange import report
 from screenapp.exchange.bringing_in import Candidate
 from screenapp.exchange.drawing import Drawing, Remark
+from screenapp.model.errors import ScreenappError
 from screenapp.model.part import DisplayUnits, Point
 from screenapp.model.units import format_quantity
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value, Words
@@ -88,3 +89,13 @@ def remark_pieces(
 
     text = "Show it" if len(remark.at) == 1 else "Show one by one"
     return (words, " ", Link("show", text, next_place, "Bring the place near in the preview"))
+
+
+def not_understood(error: Exception) -> ScreenappError:
+    """What is told of an error that nobody foresaw."""
+    text = str(error).strip().splitlines()
+    detail = f": {text[0]}" if text else ""
+    return ScreenappError(
+        f"the drawing could not be understood ({type(error).__name__}{detail})",
+        "export it again in another version of DXF, and report this if it comes back",
+    )

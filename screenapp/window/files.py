@@ -143,7 +143,7 @@ class Files(QObject):
         """Ask where to write the part's boundary as a drawing."""
         self.take_typing()
         part, path = self._document.part, self._document.path
-        stem = path.name.removesuffix(SUFFIX) if path is not None else _file_name(part)
+        stem = path.name.removesuffix(SUFFIX) if path is not None else file_name(part)
         folder = path.parent if path is not None else self._settings.folder
         target = self._ask.drawing_to_save(self._window, folder / (stem + DRAWING_SUFFIX))
         if target is None:
@@ -166,7 +166,7 @@ class Files(QObject):
         """Ask where to save."""
         self.take_typing()
         document = self._document
-        suggested = document.path or self._settings.folder / (_file_name(document.part) + SUFFIX)
+        suggested = document.path or self._settings.folder / (file_name(document.part) + SUFFIX)
         path = self._ask.path_to_save(self._window, suggested)
         return path is not None and self._write(path)
 
@@ -211,11 +211,11 @@ def with_readings(part: Part, findings: Findings) -> Findings:
         return findings
 
 
-def _file_name(part: Part) -> str:
+def file_name(part: Part) -> str:
     """A file name made of the title.
 
     Example:
-        >>> _file_name(Part(title="Cable tray bracket, rev. B"))
+        >>> file_name(Part(title="Cable tray bracket, rev. B"))
         'cable-tray-bracket-rev-b'
     """
     kept = "".join(c if c.isalnum() else " " for c in part.title.lower())

@@ -7,12 +7,7 @@ from datetime import datetime
 from pathlib import Path
 
 from PySide6.QtCore import Qt, QTimer
-from PySide6.QtGui import (
-    QCloseEvent,
-    QDragEnterEvent,
-    QDropEvent,
-    QShowEvent,
-)
+from PySide6.QtGui import QCloseEvent, QDragEnterEvent, QDropEvent, QShowEvent
 from PySide6.QtWidgets import QDialog, QMainWindow, QSplitter
 
 from screenapp.model import findings_cache
@@ -26,6 +21,7 @@ from screenapp.model.restated import restated
 from screenapp.window import theme
 from screenapp.window.actions import Actions, keeps_delete
 from screenapp.window.ask import DRAWING_SUFFIX, Ask
+from screenapp.window.background_jobs import BackgroundJobs
 from screenapp.window.board.board import Board
 from screenapp.window.board.lens_bar import LensBar
 from screenapp.window.board.lens_painter import LensPainter
@@ -33,12 +29,13 @@ from screenapp.window.commands import Command
 from screenapp.window.commands_panel import READINGS, SHEET, CommandsPanel
 from screenapp.window.cut_label import CutLabel
 from screenapp.window.document import Document
-from screenapp.window.drawing_jobs import DrawingJobs
 from screenapp.window.drawing_panel import DrawingPanel
+from screenapp.window.drawing_words import not_understood
 from screenapp.window.files import Files, with_readings
 from screenapp.window.help_panels import about_panel
 from screenapp.window.jobs import MakeMesher, Screener, ScreenFunction
 from screenapp.window.readings import Readings
+from screenapp.window.record_writing import RecordWriter
 from screenapp.window.settings import Settings
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.sheet import Sheet
@@ -64,8 +61,10 @@ class MainWindow(QMainWindow):
         self.document = Document(Part(display_units=self.settings.units), parent=self)
         self.document.look(lens=self.settings.lens)
         self.screener = Screener(screen, make_mesher, self)
-        self.drawing_jobs = DrawingJobs(self)
-        self.files = Files(self.document, self.settings, ask or Ask(), self)
+        self.drawing_jobs = BackgroundJobs("drawing", not_understood, self)
+        ask = ask or Ask()
+        self.files = Files(self.document, self.settings, ask, self)
+        self.record = RecordWriter(self, ask)
         self.board = Board(self.document)
         self.board.canvas.dimensions.shown = self.settings.dimensions
         self.lens_bar = LensBar(self.document)
@@ -95,10 +94,12 @@ class MainWindow(QMainWindow):
             self.document.select(*first.ids)
             return
         self.sheet.head.notice.hide()
+        self.record.cancel()
         self.screener.start(self.document.part)
 
     def cancel(self) -> None:
-        """Stop screening."""
+        """Stop screening, or writing the record."""
+        self.record.cancel()
         if self.screener.busy:
             self.sheet.foot.show_cancelling()
             self.screener.cancel()
@@ -362,6 +363,7 @@ class MainWindow(QMainWindow):
         self.settings.sync()
         self.screener.shut_down()
         self.drawing_jobs.shut_down()
+        self.record.shut_down()
         for panel in list(self._panels.values()):
             panel.close()
         super().closeEvent(event)

@@ -84,6 +84,7 @@ class Answers(Ask):
     open: Path | None = None
     save: Path | None = None
     leave: Unsaved = "discard"
+    folder: Path | None = None
     asked: list[str] = field(default_factory=list)
 
     def path_to_open(self, parent: QWidget, folder: Path) -> Path | None:
@@ -95,6 +96,11 @@ class Answers(Ask):
         """Where to save."""
         self.asked.append(f"save {suggested.name}")
         return self.save
+
+    def folder_for_record(self, parent: QWidget, suggested: Path) -> Path | None:
+        """The folder of the record."""
+        self.asked.append(f"record {suggested.name}")
+        return self.folder
 
     def unsaved(self, parent: QWidget, title: str) -> Unsaved:
         """What to do with unsaved work."""

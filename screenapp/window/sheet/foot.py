@@ -36,7 +36,7 @@ class Foot(QWidget):
         self.button.setAccessibleName("Screen the part")
         self.button.clicked.connect(self.screen_wanted)
         self.stop = QPushButton("Cancel", self)
-        self.stop.setToolTip("Stop screening (Ctrl+.); the part stays as it is")
+        self.stop.setToolTip("Stop (Ctrl+.); the part stays as it is")
         self.stop.clicked.connect(self.cancel_wanted)
         self.bar = QProgressBar(self)
         self.bar.setRange(0, STEPS)

@@ -116,7 +116,7 @@ class Banner(QWidget):
 
 
 class Notice(Banner):
-    """Something went wrong: the cause, the mend, every fault; it goes when it is read."""
+    """What went wrong (the cause, the mend, every fault) or was done; it goes when it is read."""
 
     def __init__(self, document: Document, parent: QWidget) -> None:
         super().__init__(parent)
@@ -133,16 +133,19 @@ class Notice(Banner):
         self.column.addLayout(self.faults)
         self.hide()
 
+    def say(self, lead: str, *pieces: Piece | str) -> None:
+        """Say that something was done, and what can be done with it."""
+        self._empty()
+        self.show_standing("not screened", lead, pieces)
+        self.setAccessibleName(lead)
+        self.show()
+
     def tell(self, lead: str, error: ScreenappError) -> None:
         """Say what went wrong; `lead` begins, e.g. "The file was not opened"."""
         several = len(error.faults) > 1
         said = f"{len(error.faults)} things are wrong:" if several else sentence_of(error)
         self.show_standing("does not hold", lead, (said,))
-        for row in self._rows:
-            self.faults.removeWidget(row)
-            row.hide()
-            row.deleteLater()
-        self._rows = []
+        self._empty()
         for fault in error.faults[:MOST_LINES] if several else ():
             line = f"Line {fault.line}: " if fault.line is not None else ""
             where = "" if fault.field in fault.cause else f" ({fault.field})"
@@ -153,6 +156,15 @@ class Notice(Banner):
             self._add(f"And {rest} more.", ())
         self.setAccessibleName(f"{lead}. {sentence_of(error)}")
         self.show()
+
+    def _empty(self) -> None:
+        """Take away what was told last."""
+        self.setToolTip("")
+        for row in self._rows:
+            self.faults.removeWidget(row)
+            row.hide()
+            row.deleteLater()
+        self._rows = []
 
     def _add(self, text: str, ids: tuple[str, ...]) -> None:
         known = all(find(self._document.part, id_) is not None for id_ in ids)

@@ -1,4 +1,5 @@
-"""A thread that reads drawings and makes parts of them, one job at a time, stopped when asked.
+"""A thread for work that is not screening (drawings, records), one job at a time, stopped when
+asked.
 
 A newer job replaces the one that runs; what an older one still reports is dropped.
 """
@@ -18,6 +19,8 @@ from screenapp.model.progress import Progress, Step
 log = logging.getLogger(__name__)
 
 Work = Callable[[Progress], object]
+Unexpected = Callable[[Exception], ScreenappError]
+"""What is told of an error that nobody foresaw."""
 
 
 class _Worker(QObject):
@@ -26,6 +29,10 @@ class _Worker(QObject):
     progress = Signal(int, object)
     finished = Signal(int, object)
     failed = Signal(int, object)
+
+    def __init__(self, unexpected: Unexpected) -> None:
+        super().__init__()
+        self._unexpected = unexpected
 
     @Slot(int, object, object)
     def run(self, number: int, work: Work, stop: threading.Event) -> None:
@@ -39,14 +46,14 @@ class _Worker(QObject):
             return
         except ScreenappError as error:
             self.failed.emit(number, error)
-        except Exception as error:  # whatever is in a file must not end the program
-            log.error("a drawing could not be worked on:\n%s", traceback.format_exc())
-            self.failed.emit(number, _unexpected(error))
+        except Exception as error:  # nothing of this may end the program
+            log.error("work in the background failed:\n%s", traceback.format_exc())
+            self.failed.emit(number, self._unexpected(error))
         else:
             self.finished.emit(number, result)
 
 
-class DrawingJobs(QObject):
+class BackgroundJobs(QObject):
     """Starts and stops jobs from the window's thread.
 
     Signals:
@@ -61,13 +68,13 @@ class DrawingJobs(QObject):
 
     _run = Signal(int, object, object)
 
-    def __init__(self, parent: QObject | None = None) -> None:
+    def __init__(self, name: str, unexpected: Unexpected, parent: QObject | None = None) -> None:
         super().__init__(parent)
         self._number = 0
         self._stop: threading.Event | None = None
         self._thread = QThread()
-        self._thread.setObjectName("drawing")
-        self._worker = _Worker()
+        self._thread.setObjectName(name)
+        self._worker = _Worker(unexpected)
         self._worker.moveToThread(self._thread)
         self._run.connect(self._worker.run)
         self._worker.progress.connect(self._progressed)
@@ -119,12 +126,3 @@ class DrawingJobs(QObject):
         if number == self._number and self.busy:
             self._stop = None
             self.failed.emit(error)
-
-
-def _unexpected(error: Exception) -> ScreenappError:
-    text = str(error).strip().splitlines()
-    detail = f": {text[0]}" if text else ""
-    return ScreenappError(
-        f"the drawing could not be understood ({type(error).__name__}{detail})",
-        "export it again in another version of DXF, and report this if it comes back",
-    )
