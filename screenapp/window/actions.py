@@ -13,6 +13,7 @@ from PySide6.QtWidgets import QLineEdit, QMenu, QPlainTextEdit
 from screenapp.window import theme
 from screenapp.window.board.lens_bar import LENSES, TIPS
 from screenapp.window.commands import Command
+from screenapp.window.samples import fill_sample_menu
 
 if TYPE_CHECKING:
     from screenapp.window.main_window import MainWindow
@@ -111,6 +112,8 @@ class Actions:
         )
         self.recent = menu.addMenu("Open &recent")
         self.recent.aboutToShow.connect(self._fill_recent)
+        self.samples = menu.addMenu("Sa&mples")
+        self.samples.aboutToShow.connect(lambda: fill_sample_menu(self.samples, files.open_sample))
         menu.addSeparator()
         self._add(
             menu,

@@ -17,8 +17,9 @@ from screenapp.model import edits
 from screenapp.model.errors import MeshingError
 from screenapp.model.part import Part
 from screenapp.model.part_json import read_part, write_part
-from screenapp.window import theme
+from screenapp.window import samples, theme
 from screenapp.window.main_window import MainWindow
+from screenapp.window.samples import sample_paths
 from screenapp.window.settings import Settings
 from tests.window.fabricate import plate
 from tests.window.window_kit import (
@@ -221,6 +222,32 @@ def test_a_sample_is_opened_as_a_new_part(main: MainWindow, file: Path, ask: Ans
     assert main.document.part == plate()
     assert main.document.path is None
     assert main.settings.recent == ()
+
+
+def test_every_sample_is_in_the_menu_and_opens(main: MainWindow) -> None:
+    menu = main.actions_.samples
+    menu.aboutToShow.emit()
+    paths = sample_paths()
+    assert len(menu.actions()) == len(paths) == 8
+    for place, path in enumerate(paths):
+        menu.aboutToShow.emit()
+        action = menu.actions()[place]
+        sample = read_part(path)
+        assert action.text() == f"&{place + 1}  {sample.title}"
+        assert action.toolTip().split() == sample.notes.split()
+        action.trigger()
+        assert main.document.part == sample
+        assert main.document.path is None
+
+
+def test_a_broken_sample_is_left_out_of_the_menu(
+    main: MainWindow, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    (tmp_path / "broken.part.json").write_text("{", encoding="utf-8")
+    monkeypatch.setattr(samples, "sample_paths", lambda: [tmp_path / "broken.part.json"])
+    main.actions_.samples.aboutToShow.emit()
+    (only,) = main.actions_.samples.actions()
+    assert only.text() == "None found" and not only.isEnabled()
 
 
 def test_recent_files_are_listed_and_opened(main: MainWindow, file: Path) -> None:

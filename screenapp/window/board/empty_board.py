@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import logging
 from pathlib import Path
 
 from PySide6.QtCore import QSize, Qt, Signal
@@ -17,15 +16,11 @@ from PySide6.QtWidgets import (
     QWidget,
 )
 
-from screenapp.model.assets import PACKAGE
-from screenapp.model.errors import ScreenappError
 from screenapp.model.part import Part
-from screenapp.model.part_json import read_part
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import drawn_part
 from screenapp.window.board.frame import polygon
-
-log = logging.getLogger(__name__)
+from screenapp.window.samples import read_sample, sample_paths
 
 SENTENCES = (
     "Draw the outline of a flat part with the tools at the left, or open one.",
@@ -37,15 +32,7 @@ PICTURE = QSize(132, 88)
 """Size of a sample's picture [px]."""
 
 SHOWN = 3
-"""Samples offered."""
-
-
-def sample_paths(package: Path = PACKAGE) -> list[Path]:
-    """The sample parts, in the checkout or in the installed package; none if they are missing."""
-    for folder in (package / "samples", package.parent / "samples"):
-        if folder.is_dir():
-            return sorted(folder.glob("*.part.json"))
-    return []
+"""Samples offered here; File ▸ Samples has them all."""
 
 
 class EmptyBoard(QFrame):
@@ -112,10 +99,8 @@ class EmptyBoard(QFrame):
         self.move(max(8, x), max(8, y))
 
     def _sample(self, path: Path) -> QToolButton | None:
-        try:
-            part = read_part(path)
-        except (ScreenappError, OSError) as fault:
-            log.warning("sample %s cannot be offered: %s", path.name, fault)
+        part = read_sample(path)
+        if part is None:
             return None
         button = QToolButton()
         button.setText(in_two_lines(part.title))
