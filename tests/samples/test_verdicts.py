@@ -31,7 +31,7 @@ class Expected:
 EXPECTED = {
     "davit": Expected("holds", "g1", "q1", "fillet c3", 0.743),
     "float-latch": Expected("holds", "g1", "k2", "fillet c6", 0.710),
-    "heater-link": Expected("holds", "g1", "k2", "hole h", 0.543),
+    "heater-link": Expected("holds", "g1", "k2", "fillet c1", 0.675),
     "hose-clip": Expected("holds", "g2", "k1", "mm", 0.795),
     "lifting-lug": Expected("holds", "g1", "k2", "hole h1", 0.795),
     "mower-blade": Expected("holds", "g1", "k1", "fillet c6", 0.480),

@@ -247,7 +247,8 @@ def test_a_broken_sample_is_left_out_of_the_menu(
     monkeypatch.setattr(samples, "sample_paths", lambda: [tmp_path / "broken.part.json"])
     main.actions_.samples.aboutToShow.emit()
     (only,) = main.actions_.samples.actions()
-    assert only.text() == "None found" and not only.isEnabled()
+    assert only.text() == "None found"
+    assert not only.isEnabled()
 
 
 def test_recent_files_are_listed_and_opened(main: MainWindow, file: Path) -> None:
