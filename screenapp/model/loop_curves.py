@@ -35,9 +35,9 @@ def edge_curves(loop: Loop) -> list[Curve]:
 
 def loop_curves(loop: Loop, where: str, faults: list[Fault]) -> list[BoundaryCurve]:
     """Edges, fillets and chamfers in drawing order; what does not fit is added to `faults`."""
-    found = _RECENT.pieces_of(loop, _by_edge)
+    before = len(faults)
+    found = _RECENT.pieces_of(loop, where, faults, _by_edge)
     if found is None:
-        before = len(faults)
         found = _by_edge(loop, where, faults)
         if len(faults) == before:
             _RECENT.keep(loop, found)

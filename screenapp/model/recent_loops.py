@@ -41,9 +41,16 @@ class RecentLoops:
             self._kept = ((loop, groups), *self._kept[: self._most - 1])
 
     def pieces_of(
-        self, loop: Loop, work_out: Callable[[Loop, str, list[Fault]], list[Group]]
+        self,
+        loop: Loop,
+        where: str,
+        faults: list[Fault],
+        work_out: Callable[[Loop, str, list[Fault]], list[Group]],
     ) -> list[Group] | None:
-        """The pieces of a loop that is kept, or differs from one in a short stretch; else None."""
+        """The pieces of a loop that is kept, or differs from one in a short stretch; else None.
+
+        What does not fit in that stretch is added to `faults`; the rest is sound, as it was.
+        """
         if len(loop.corners) < LONG:
             return None
         for old, groups in self._kept:
@@ -52,7 +59,7 @@ class RecentLoops:
         for old, groups in self._kept:
             span = _changed_stretch(old, loop)
             if span is not None:
-                return self._patched(loop, groups, span, work_out)
+                return self._patched(loop, groups, span, where, faults, work_out)
         return None
 
     def _patched(
@@ -60,6 +67,8 @@ class RecentLoops:
         loop: Loop,
         groups: list[Group],
         span: tuple[int, int],
+        where: str,
+        faults: list[Fault],
         work_out: Callable[[Loop, str, list[Fault]], list[Group]],
     ) -> list[Group] | None:
         first, last = span
@@ -68,10 +77,13 @@ class RecentLoops:
         for end in (0, -1):
             corners[end] = replace(corners[end], round=0.0, chamfer=0.0)
         edges = (*loop.edges[base:stop], Edge("", None))  # the last one only closes the ring
-        faults: list[Fault] = []
-        made = work_out(Loop(tuple(corners), edges), "", faults)
-        if faults:
-            return None
+        found: list[Fault] = []
+        made = work_out(Loop(tuple(corners), edges), where, found)
+        if found:
+            if any("" in fault.ids for fault in found):  # of the edge that only closes the ring
+                return None
+            faults += found
+            return []
         patched = list(groups)
         patched[first - 2 : last + 2] = made[first - 2 - base : last + 2 - base]
         self.keep(loop, patched)

@@ -7,6 +7,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
+from numpy.typing import NDArray
 
 from screenapp.model.curves import Arc, Segment
 from screenapp.model.part import Point
@@ -51,6 +52,7 @@ class BoundaryIndex:
         self._centre, self._radius = arcs[:, :2], arcs[:, 2]
         self._begin, self._sweep = arcs[:, 3], arcs[:, 4]
         self._ends = ends
+        self._left_out: tuple[frozenset[str], NDArray[np.bool_]] | None = None
 
     @classmethod
     def of(cls, pieces: Sequence[BoundaryCurve]) -> BoundaryIndex:
@@ -85,7 +87,7 @@ class BoundaryIndex:
             return None
         far = self._distances(np.asarray(at))
         if without:
-            far[[p.feature in without for p in self._pieces]] = np.inf
+            far[self._mask(without)] = np.inf
         best = int(np.argmin(far))
         if not math.isfinite(far[best]):
             return None
@@ -104,6 +106,13 @@ class BoundaryIndex:
         near = np.flatnonzero(far <= reach)
         found = [self._pieces[i] for i in near[np.argsort(far[near])]]
         return [p for p in found if p.feature not in without]
+
+    def _mask(self, without: frozenset[str]) -> NDArray[np.bool_]:
+        """Which pieces are left out (n,); a drag leaves out the same ones at every move."""
+        if self._left_out is None or self._left_out[0] is not without:
+            left_out = np.array([p.feature in without for p in self._pieces], dtype=bool)
+            self._left_out = without, left_out
+        return self._left_out[1]
 
     def _distances(self, p: Floats) -> Floats:
         """Distance to every piece (n,)."""

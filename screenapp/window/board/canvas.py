@@ -133,8 +133,9 @@ class Canvas(ZoomView):
         """Paint the part afresh."""
         drawn = self.drawn
         self.grid.units = self.scale_bar.units = self.part.display_units
-        self.fill.show_part(drawn)
-        self.outline.show_part(drawn)
+        before = drawn_part(self.document.part) if self.previewing else None
+        self.fill.show_part(drawn, before)
+        self.outline.show_part(drawn, before)
         self.zone_fill.show_part(drawn)
         self.zone_lines.labels = self.document.view.lens == "Shape"
         self.zone_lines.show_part(drawn)
@@ -219,8 +220,9 @@ class Canvas(ZoomView):
         tool = self.tool
         if hold_off or tool is None:
             return Snap("none", at)
+        before = tool.dragged_from()
         return snap(
-            self.drawn,
+            self.drawn if before is None else drawn_part(before),
             self.frame_now,
             at,
             self.part.display_units,
@@ -245,14 +247,12 @@ class Canvas(ZoomView):
     ) -> Place:
         """Where a viewport position [px] is, what it snaps to and what lies under it."""
         frame = self.frame_now
-        raw = frame.mm(px)
-        return Place(
-            px,
-            raw,
-            self.snap_at(raw, bool(modifiers & HOLD_OFF)),
-            hit_test(self.drawn, frame, px, self.symbols),
-            bool(modifiers & Qt.KeyboardModifier.ShiftModifier),
-        )
+        raw, shift = frame.mm(px), bool(modifiers & Qt.KeyboardModifier.ShiftModifier)
+        tool = self.tool
+        if self.place is not None and tool is not None and tool.dragged_from() is not None:
+            return replace(self.place, px=px, raw=raw, shift=shift)  # the tool snaps what it drags
+        found = self.snap_at(raw, bool(modifiers & HOLD_OFF))
+        return Place(px, raw, found, hit_test(self.drawn, frame, px, self.symbols), shift)
 
     def _refresh_place(self) -> None:
         if self._last_px is not None:
@@ -316,6 +316,7 @@ class Canvas(ZoomView):
                 self.context.open(event.position())
         elif event.button() == Qt.MouseButton.LeftButton and self.tool is not None:
             self.tool.release(self._set_place(event.position(), event.modifiers()))
+            self._refresh_place()  # what was dragged lies under the cursor now
         self.refresh()
         event.accept()
 

@@ -132,11 +132,11 @@ class DrawnPart:
             return self.zone_rings[list(self.zones).index(feature)].pieces
         if feature in self.hole_ids:
             return self.loops[self.hole_ids.index(feature)].pieces
-        mine = tuple(p for p in self.pieces if p.feature == feature)
-        if not mine and self.zone_rings:
-            mine = tuple(p for ring in self.zone_rings for p in ring.pieces if p.feature == feature)
-        if mine or feature not in self.holes:
-            return mine
+        for ring in (*self.loops, *self.zone_rings):
+            if mine := ring.pieces_of(feature):
+                return mine
+        if feature not in self.holes:
+            return ()
         return tuple(p for p in self.pieces if p.feature.startswith(f"{feature}."))
 
     def members_of(self, hole: str) -> tuple[str, ...]:

@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 
 import numpy as np
-from PySide6.QtCore import QLineF, QPointF, QRect, QRectF, Qt
+from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
 from PySide6.QtGui import QColor, QPainter, QPainterPath, QPen, QPolygonF
 
 from screenapp.window import theme
@@ -13,6 +14,7 @@ from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
 from screenapp.window.board.ring import Ring, flatten
 from screenapp.window.board.screen_item import Z_FILL, Z_OUTLINE, ScreenItem
+from screenapp.window.board.still_picture import StillPicture, stretches_in
 
 SAGITTA_PX = 0.15
 """Arcs are flattened to within this [px]."""
@@ -32,6 +34,15 @@ def mixed(a: str, b: str, share: float) -> QColor:
     return QColor(red, green, blue)
 
 
+@dataclass(frozen=True)
+class RingLine:
+    """A ring in pixels: its points (n, 2), the same as a polygon, and the box round it."""
+
+    points: Floats
+    polygon: QPolygonF
+    box: QRectF
+
+
 class PartPaths:
     """The part's lines in pixels, shared by fill and outline, kept while the view only pans."""
 
@@ -39,32 +50,40 @@ class PartPaths:
         self._for: tuple[DrawnPart, Frame] | None = None
         self._features: dict[str, list[QPolygonF]] = {}
         self._frame: Frame | None = None
-        self._kept: dict[int, tuple[Ring, QPolygonF | None]] = {}
-        self.rings: list[QPolygonF] = []
-        self.whole = QPainterPath()
+        self._kept: dict[int, tuple[Ring, RingLine | None]] = {}
+        self._whole: QPainterPath | None = None
+        self.rings: list[RingLine] = []
 
     def settle(self, drawn: DrawnPart, frame: Frame) -> QPointF:
         """Make sure that the lines are of this part and zoom; gives how far they are panned."""
         had = self._for
         if had is None or had[0] is not drawn or not had[1].pans_to(frame, FARTHEST_PAN):
             self._for = had = drawn, frame
-            tolerance = 2.0 ** math.floor(math.log2(SAGITTA_PX / frame.scale))  # kept over zooms
+            tolerance = tolerance_at(frame)
             self._features = {}
             if self._frame is None or not self._frame.same_as(frame):
                 self._frame, self._kept = frame, {}
-            kept: dict[int, tuple[Ring, QPolygonF | None]] = {}
+            kept: dict[int, tuple[Ring, RingLine | None]] = {}
             self.rings = []
-            self.whole = QPainterPath()
-            self.whole.setFillRule(Qt.FillRule.OddEvenFill)
+            self._whole = None
             for ring in drawn.loops:  # in a drag all rings but one stay as they are
                 one = self._kept.get(id(ring)) or (ring, _seen(ring, frame, tolerance))
                 kept[id(ring)] = one
                 if one[1] is not None:
                     self.rings.append(one[1])
-                    self.whole.addPolygon(one[1])
-                    self.whole.closeSubpath()
             self._kept = kept
         return had[1].shift_to(frame)
+
+    @property
+    def whole(self) -> QPainterPath:
+        """All rings as one path; what lies in a hole is outside."""
+        if self._whole is None:
+            self._whole = _path(self.rings)
+        return self._whole
+
+    def seen_in(self, view: QRectF) -> list[RingLine]:
+        """The rings that reach into a view [px], as panned."""
+        return [ring for ring in self.rings if ring.box.intersects(view)]
 
     def feature(self, id_: str) -> list[QPolygonF]:
         """The pieces of an edge, fillet or hole."""
@@ -83,20 +102,30 @@ class FillItem(ScreenItem):
     def __init__(self, paths: PartPaths) -> None:
         super().__init__(Z_FILL)
         self.drawn: DrawnPart | None = None
+        self.before: DrawnPart | None = None
         self._paths = paths
+        self._still = StillPicture()
 
-    def show_part(self, drawn: DrawnPart) -> None:
-        """Paint this part from now on."""
-        self.drawn = drawn
+    def show_part(self, drawn: DrawnPart, before: DrawnPart | None = None) -> None:
+        """Paint this part from now on, which a gesture makes of the one `before`."""
+        self.drawn, self.before = drawn, before
         self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Fill the outline, holes left out."""
         if self.drawn is None or self.drawn.part.outline is None:
             return
-        painter.translate(self._paths.settle(self.drawn, frame))
         palette = theme.current()
-        painter.fillPath(self._paths.whole, mixed(palette.paper, palette.accent, 0.07))
+        colour = mixed(palette.paper, palette.accent, 0.07)
+
+        def fill(over: QPainter, drawn: DrawnPart, view: QRectF) -> None:
+            shift = self._paths.settle(drawn, frame)
+            over.translate(shift)
+            over.fillPath(_path(self._paths.seen_in(view.translated(-shift))), colour)
+            over.translate(-shift)
+
+        parts = self.before, self.drawn
+        self._still.paint(painter, frame, parts, colour.rgba(), fill, tolerance_at(frame))
 
 
 class OutlineItem(ScreenItem):
@@ -105,37 +134,42 @@ class OutlineItem(ScreenItem):
     def __init__(self, paths: PartPaths) -> None:
         super().__init__(Z_OUTLINE)
         self.drawn: DrawnPart | None = None
+        self.before: DrawnPart | None = None
         self.selected: tuple[str, ...] = ()
         self.hovered: str | None = None
         self.faint = False
         self._paths = paths
+        self._still = StillPicture()
 
-    def show_part(self, drawn: DrawnPart) -> None:
-        """Paint this part from now on."""
-        self.drawn = drawn
+    def show_part(self, drawn: DrawnPart, before: DrawnPart | None = None) -> None:
+        """Paint this part from now on, which a gesture makes of the one `before`."""
+        self.drawn, self.before = drawn, before
         self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Paint all lines."""
         if self.drawn is None:
             return
-        shift = self._paths.settle(self.drawn, frame)
         palette = theme.current()
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
         ink = QColor(palette.quiet if self.faint else palette.ink)
         if self.faint:
             ink.setAlphaF(0.55)
-        width = 1.0 if self.faint else 2.0
-        painter.setBrush(Qt.BrushStyle.NoBrush)
-        painter.setPen(_pen(ink, width))
-        painter.translate(shift)
-        view = QRectF(painter.viewport()).translated(-shift).adjusted(-4.0, -4.0, 4.0, 4.0)
-        for ring in self._paths.rings:  # one by one: a path of many rings is slow to stroke
-            if ring.boundingRect().intersects(view):
-                painter.drawPolygon(ring)
-        painter.translate(-shift)
-        if not self.faint:
-            self._draw_centre_lines(painter, frame)
+        pen = _pen(ink, 1.0 if self.faint else 2.0)
+
+        def lines(over: QPainter, drawn: DrawnPart, view: QRectF) -> None:
+            shift = self._paths.settle(drawn, frame)
+            over.setBrush(Qt.BrushStyle.NoBrush)
+            over.setPen(pen)
+            over.translate(shift)
+            _stroke(over, self._paths, view.translated(-shift).adjusted(-4.0, -4.0, 4.0, 4.0))
+            over.translate(-shift)
+            if not self.faint:
+                _draw_centre_lines(over, drawn, frame, view)
+
+        look = (ink.rgba(), palette.quiet, self.faint)
+        parts = self.before, self.drawn
+        self._still.paint(painter, frame, parts, look, lines, tolerance_at(frame))
         for id_ in self.selected:
             self._light(painter, frame, id_, QColor(palette.accent), 3.0)
         if self.hovered is not None:
@@ -162,16 +196,39 @@ class OutlineItem(ScreenItem):
             half = width + 1.0
             painter.drawRect(QRectF(p.x() - half, p.y() - half, 2 * half, 2 * half))
 
-    def _draw_centre_lines(self, painter: QPainter, frame: Frame) -> None:
-        assert self.drawn is not None
-        colour = QColor(theme.current().quiet)
-        pen = QPen(colour, 1.0)
-        pen.setDashPattern([12.0, 3.0, 2.0, 3.0])
-        painter.setPen(pen)
-        painter.drawLines(_crosses(self.drawn.crosses, frame, painter.viewport()))
+
+def tolerance_at(frame: Frame) -> float:
+    """Sagitta of rings [mm]; the same over a range of zooms, so that their points are kept."""
+    return float(2.0 ** math.floor(math.log2(SAGITTA_PX / frame.scale)))
 
 
-def _seen(ring: Ring, frame: Frame, tolerance: float) -> QPolygonF | None:
+def _path(rings: list[RingLine]) -> QPainterPath:
+    path = QPainterPath()
+    path.setFillRule(Qt.FillRule.OddEvenFill)
+    for ring in rings:
+        path.addPolygon(ring.polygon)
+        path.closeSubpath()
+    return path
+
+
+def _stroke(painter: QPainter, paths: PartPaths, view: QRectF) -> None:
+    """Draw the rings, of those that leave the view what lies in it."""
+    for ring in paths.seen_in(view):  # one by one: a path of many rings is slow to stroke
+        if view.contains(ring.box):
+            painter.drawPolygon(ring.polygon)
+            continue
+        for line in stretches_in(ring.points, view):
+            painter.drawPolyline(line)
+
+
+def _draw_centre_lines(painter: QPainter, drawn: DrawnPart, frame: Frame, view: QRectF) -> None:
+    pen = QPen(QColor(theme.current().quiet), 1.0)
+    pen.setDashPattern([12.0, 3.0, 2.0, 3.0])
+    painter.setPen(pen)
+    painter.drawLines(_crosses(drawn.crosses, frame, view))
+
+
+def _seen(ring: Ring, frame: Frame, tolerance: float) -> RingLine | None:
     """A ring in pixels; None if it is empty, or too far away to come into view by a pan."""
     box = ring.box
     if box is not None:
@@ -179,11 +236,14 @@ def _seen(ring: Ring, frame: Frame, tolerance: float) -> QPolygonF | None:
         outside = np.sign(frame.pxs([(box[0], box[1]), (box[2], box[3])]))
         if np.any((far.min(axis=0) > FARTHEST_SEEN) & (outside[0] == outside[1])):
             return None
-    points = ring.polyline(tolerance)
-    return polygon(frame.pxs(points)) if len(points) else None
+    points = frame.pxs(ring.polyline(tolerance))
+    if not len(points):
+        return None
+    line = polygon(points)
+    return RingLine(points, line, line.boundingRect())
 
 
-def _crosses(rows: Floats, frame: Frame, view: QRect) -> list[QLineF]:
+def _crosses(rows: Floats, frame: Frame, view: QRectF) -> list[QLineF]:
     """Two centre lines for each hole that stand out of it by a third, at least 5 px.
 
     Holes out of view, or so small that the lines would fill them, have none.

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 from functools import cached_property, lru_cache
 
 import numpy as np
@@ -42,6 +43,16 @@ class Ring:
     def index(self) -> BoundaryIndex:
         """Finds the nearest piece."""
         return BoundaryIndex.of(self.pieces)
+
+    @cached_property
+    def _features(self) -> frozenset[str]:
+        return frozenset([piece.feature for piece in self.pieces])
+
+    def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
+        """The pieces of an edge, fillet, chamfer or rim; none of anything else."""
+        if feature not in self._features:
+            return ()
+        return tuple(piece for piece in self.pieces if piece.feature == feature)
 
     @cached_property
     def box(self) -> tuple[float, float, float, float] | None:
@@ -110,12 +121,21 @@ class Ring:
 
 @kept_by_identity(64)
 def outline_ring(outline: Loop) -> Ring:
-    """The ring of an outline; if its rounds do not fit, without them."""
+    """The ring of an outline, without the rounds and chamfers that do not fit."""
     try:
-        shape = shape_of(Part(outline=outline))
+        return Ring(shape_of(Part(outline=outline)).curves)
+    except InvalidPartError as error:
+        found = {id_ for fault in error.faults for id_ in fault.ids}
+    except (ArithmeticError, ValueError):
+        found = set()
+    less = tuple(
+        replace(c, round=0.0, chamfer=0.0) if c.id in found and not c.sharp else c
+        for c in outline.corners
+    )
+    try:  # the corners round about keep theirs
+        return Ring(shape_of(Part(outline=replace(outline, corners=less))).curves)
     except (InvalidPartError, ArithmeticError, ValueError):
         return Ring(_unrounded(outline, hole=False))
-    return Ring(shape.curves)
 
 
 @lru_cache(maxsize=1024)

@@ -6,7 +6,7 @@ import math
 from functools import lru_cache
 
 from PySide6.QtCore import QPoint, QPointF, Qt
-from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPainterPath, QPen
+from PySide6.QtGui import QColor, QFontMetricsF, QImage, QPainter, QPainterPath, QPen
 
 from screenapp.model.curves import Arc, Curve
 from screenapp.model.part import DisplayUnits, Point
@@ -51,15 +51,36 @@ def dot(painter: QPainter, frame: Frame, at: Point) -> None:
 
 def label(painter: QPainter, text: str, at: QPointF, colour: str | None = None) -> None:
     """A text centred at a pixel position, with a seam so that lines do not run into it."""
+    palette, ratio = theme.current(), painter.device().devicePixelRatioF()
+    picture = _text_picture(text, colour or palette.accent, palette.paper, ratio)
+    size = picture.deviceIndependentSize()
+    x, y = at.x() - size.width() / 2.0, at.y() - size.height() / 2.0
+    painter.drawImage(QPointF(round(x * ratio) / ratio, round(y * ratio) / ratio), picture)
+
+
+@lru_cache(maxsize=512)
+def _text_picture(text: str, colour: str, paper: str, ratio: float) -> QImage:
+    """A text with its seam, centred, with a whole number of device pixels to the middle."""
     path = _text_path(text)
-    seam = QColor(theme.current().paper)
+    box = path.boundingRect()
+    half_x, half_y = (
+        math.ceil((max(abs(low), abs(high)) + 4.0) * ratio)
+        for low, high in ((box.left(), box.right()), (box.top(), box.bottom()))
+    )
+    picture = QImage(2 * half_x, 2 * half_y, QImage.Format.Format_ARGB32_Premultiplied)
+    picture.setDevicePixelRatio(ratio)
+    picture.fill(Qt.GlobalColor.transparent)
+    seam = QColor(paper)
     seam.setAlphaF(0.92)
     pen = QPen(seam, 4.0)
     pen.setJoinStyle(Qt.PenJoinStyle.RoundJoin)
-    painter.translate(at)
+    painter = QPainter(picture)
+    painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+    painter.translate(half_x / ratio, half_y / ratio)
     painter.strokePath(path, pen)
-    painter.fillPath(path, QColor(colour or theme.current().accent))
-    painter.translate(-at)
+    painter.fillPath(path, QColor(colour))
+    painter.end()
+    return picture
 
 
 @lru_cache(maxsize=256)

@@ -73,12 +73,17 @@ def _anchors(
     drawn: DrawnPart, extra: tuple[Snap, ...], without: frozenset[str]
 ) -> tuple[list[Snap], Floats]:
     """Corners and centres that a place may be level with, and the same as places (n, 2) [mm]."""
-    points, places = anchor_points(drawn)
-    if without:
-        keep = [i for i, p in enumerate(points) if p.id not in without]
-        points, places = tuple(points[i] for i in keep), places[keep]
+    points, places = _anchors_left(drawn, without)
     more = np.array([p.at for p in extra], dtype=float).reshape(-1, 2)
     return [*points, *extra], np.concatenate([places, more])
+
+
+@lru_cache(maxsize=4)
+def _anchors_left(drawn: DrawnPart, without: frozenset[str]) -> Points:
+    """The anchors of a part without some; a drag leaves out the same ones at every move."""
+    points, places = anchor_points(drawn)
+    keep = [i for i, p in enumerate(points) if p.id not in without]
+    return tuple(points[i] for i in keep), places[keep]
 
 
 def snap_to_edge(

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import replace
+from dataclasses import dataclass, replace
 
 import numpy as np
 from PySide6.QtCore import QPointF, Qt
@@ -10,6 +10,7 @@ from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.combinations import loadings
 from screenapp.model.part import BearingLoad, BodyLoad, ForceLoad, Load, Support
+from screenapp.model.shape import BoundaryCurve
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
@@ -45,6 +46,15 @@ def load_marks(drawn: DrawnPart, frame: Frame, load: Load) -> list[Mark]:
     return marks
 
 
+@dataclass(frozen=True)
+class _Kept:
+    """The symbols of a support or load and the pieces of the boundary that it is on."""
+
+    record: Support | Load
+    pieces: tuple[BoundaryCurve, ...]
+    marks: list[Mark]
+
+
 class SymbolsItem(ScreenItem):
     """The symbols of the supports and of the present case's loads."""
 
@@ -57,6 +67,7 @@ class SymbolsItem(ScreenItem):
         self._marks: list[Mark] = []
         self._for: tuple[DrawnPart, int, Frame] | None = None
         self._strokes: _Strokes | None = None
+        self._kept: dict[tuple[int, str], _Kept] = {}
 
     def show_part(self, drawn: DrawnPart, case: int) -> None:
         """Show the supports and the loads of case number `case` from now on."""
@@ -68,14 +79,34 @@ class SymbolsItem(ScreenItem):
         if self.drawn is None:
             return []
         if not self._fits(frame):
+            if self._for is None or not self._for[2].same_as(frame):
+                self._kept = {}
             self._for = self.drawn, self.case, frame
-            part = self.drawn.part
-            self._marks = [m for s in part.supports for m in support_marks(self.drawn, frame, s)]
-            if self.case < len(loadings(part)):
-                loads = loadings(part)[self.case].loads
-                self._marks += [m for load in loads for m in load_marks(self.drawn, frame, load)]
-            self._strokes = None
+            self._marks, self._strokes = self._made(self.drawn, frame), None
         return self._marks
+
+    def _made(self, drawn: DrawnPart, frame: Frame) -> list[Mark]:
+        """The symbols of a part; those on what a drag leaves as it is are taken over."""
+        part = drawn.part
+        records: list[Support | Load] = [*part.supports]
+        if self.case < len(loadings(part)):
+            records += loadings(part)[self.case].loads
+        before, self._kept = self._kept, {}
+        marks: list[Mark] = []
+        for record in records:
+            on = "" if isinstance(record, BodyLoad) else record.on
+            pieces = drawn.pieces_of(on) if on else ()
+            key = id(record), part.display_units
+            kept = before.get(key)
+            if kept is None or not pieces or kept.pieces != pieces:
+                if isinstance(record, Support):
+                    made = support_marks(drawn, frame, record)
+                else:
+                    made = load_marks(drawn, frame, record)
+                kept = _Kept(record, pieces, made)
+            self._kept[key] = kept
+            marks += kept.marks
+        return marks
 
     def shift(self, frame: Frame) -> QPointF:
         """How far the view was panned since the symbols were worked out [px]."""

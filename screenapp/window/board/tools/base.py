@@ -124,6 +124,10 @@ class Tool:
         """Ids that must not draw the cursor."""
         return frozenset()
 
+    def dragged_from(self) -> Part | None:
+        """The part before a drag under way: what of it stays draws the cursor; None without one."""
+        return None
+
     def drafted(self) -> Part | None:
         """The part as it would be with what is half drawn; None if that is nothing yet."""
         return None

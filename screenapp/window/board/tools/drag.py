@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 from screenapp.model import edits
 from screenapp.model.edit_dimensions import formulas_lost
@@ -78,6 +79,7 @@ class Drag:
             return f"move {len(self.ids)} things"
         return f"move {place_name(self.part, self.ids[0])}"
 
+    @cached_property
     def unsnapped(self) -> frozenset[str]:
         """What moves or bends along, which must not draw the cursor."""
         out = set(self.ids)

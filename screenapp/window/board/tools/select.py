@@ -94,7 +94,11 @@ class SelectTool(Tool):
 
     def unsnapped(self) -> frozenset[str]:
         """What is dragged must not draw the cursor to itself."""
-        return frozenset() if self._drag is None else self._drag.unsnapped()
+        return frozenset() if self._drag is None else self._drag.unsnapped
+
+    def dragged_from(self) -> Part | None:
+        """The part before a drag."""
+        return None if self._drag is None else self._drag.part
 
     @property
     def snapping(self) -> bool:

@@ -1,0 +1,154 @@
+"""Pictures of what stays in a gesture: only where the part changed is it painted afresh."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Hashable
+from functools import lru_cache
+
+import numpy as np
+from PySide6.QtCore import QRect, QRectF, Qt
+from PySide6.QtGui import QPainter, QPixmap, QPolygonF, QRegion
+
+from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.window.board.frame import Floats, Frame, polygon
+from screenapp.window.board.ring import Ring
+
+AROUND_PX = 20.0
+"""Lines, joins and centre lines of a ring stay within this of it [px]."""
+
+SEAM_PX = 4.0
+"""Half of the widest line and more [px]: a stretch that ends so far out of view ends unseen."""
+
+Draw = Callable[[QPainter, DrawnPart, QRectF], None]
+"""Paints of a part what lies in a view [px]."""
+
+
+class StillPicture:
+    """The part as a gesture found it, painted once by one item, and mended at each frame.
+
+    The picture is exact where nothing changed, and what changed is painted as without a picture.
+    """
+
+    def __init__(self) -> None:
+        self._key: Hashable = None
+        self._picture = QPixmap()
+
+    def paint(
+        self,
+        painter: QPainter,
+        frame: Frame,
+        parts: tuple[DrawnPart | None, DrawnPart],
+        look: Hashable,
+        draw: Draw,
+        tolerance: float,
+    ) -> None:
+        """Paint a part in pixels.
+
+        Args:
+            painter: of the viewport.
+            frame: the view.
+            parts: the part before the gesture, None without one, and the part to be shown.
+            look: whatever else decides how it looks.
+            draw: paints it.
+            tolerance: sagitta to which the rings are flattened [mm].
+        """
+        base, drawn = parts
+        view = painter.viewport()
+        if base is None or base is drawn:
+            self._key, self._picture = None, QPixmap()
+            draw(painter, drawn, QRectF(view))
+            return
+        changed = QRect()
+        if (box := changed_box(base, drawn, tolerance)) is not None:
+            corners = frame.pxs([(box[0], box[1]), (box[2], box[3])])
+            (x0, y0), (x1, y1) = corners.min(axis=0) - AROUND_PX, corners.max(axis=0) + AROUND_PX
+            inside = QRectF(x0, y0, x1 - x0, y1 - y0) & QRectF(view)
+            changed = inside.toAlignedRect() & view
+        if 2 * changed.width() * changed.height() > view.width() * view.height():
+            draw(painter, drawn, QRectF(view))
+            return
+        self._settle(painter, frame, base, look, draw)
+        painter.save()
+        painter.setClipRegion(QRegion(view) - QRegion(changed))
+        painter.drawPixmap(0, 0, self._picture)
+        painter.restore()
+        if not changed.isEmpty():
+            painter.save()
+            painter.setClipRect(changed)
+            draw(painter, drawn, QRectF(changed))
+            painter.restore()
+
+    def _settle(
+        self, painter: QPainter, frame: Frame, base: DrawnPart, look: Hashable, draw: Draw
+    ) -> None:
+        """Make sure that the picture is of this part, view and look."""
+        view, ratio = painter.viewport(), painter.device().devicePixelRatioF()
+        t = frame.transform
+        at = (t.m11(), t.m22(), t.dx(), t.dy())
+        key = (id(base), at, look, view.width(), view.height(), ratio)
+        if key == self._key:
+            return
+        self._key = key
+        self._picture = QPixmap(view.size() * ratio)
+        self._picture.setDevicePixelRatio(ratio)
+        self._picture.fill(Qt.GlobalColor.transparent)
+        over = QPainter(self._picture)
+        over.setRenderHints(painter.renderHints())
+        draw(over, base, QRectF(view))
+        over.end()
+
+
+@lru_cache(maxsize=2)
+def changed_box(
+    was: DrawnPart, now: DrawnPart, tolerance: float
+) -> tuple[float, float, float, float] | None:
+    """The box [mm] in which two parts differ, None if they are alike.
+
+    Rings that an edit leaves as they are stay the same objects.
+    """
+    before, after = {id(r) for r in was.loops}, {id(r) for r in now.loops}
+    gone = [r for r in was.loops if id(r) not in after]
+    come = [r for r in now.loops if id(r) not in before]
+    if gone and come and gone[0] is was.loops[0] and come[0] is now.loops[0]:
+        places = [*_differing(gone[0], come[0], tolerance)]
+        gone, come = gone[1:], come[1:]
+    else:
+        places = []
+    places += [ring.polyline(tolerance) for ring in (*gone, *come)]
+    points = np.concatenate([np.empty((0, 2)), *places])
+    points = points[np.isfinite(points).all(axis=1)]
+    if not len(points):
+        return None
+    (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
+    return float(x0), float(y0), float(x1), float(y1)
+
+
+def _differing(one: Ring, other: Ring, tolerance: float) -> tuple[Floats, Floats]:
+    """What of two rings lies between the stretches that they have in common."""
+    a, b = one.polyline(tolerance), other.polyline(tolerance)
+    n = min(len(a), len(b))
+    head = _alike(a[:n], b[:n])
+    tail = min(_alike(a[len(a) - n :][::-1], b[len(b) - n :][::-1]), n - head)
+    if head == len(a) == len(b):
+        return a[:0], b[:0]
+    first = max(head - 1, 0)
+    return a[first : len(a) - tail + 1], b[first : len(b) - tail + 1]
+
+
+def _alike(a: Floats, b: Floats) -> int:
+    """How many points agree from the first on."""
+    unlike = np.flatnonzero((a != b).any(axis=1))
+    return int(unlike[0]) if len(unlike) else len(a)
+
+
+def stretches_in(points: Floats, view: QRectF) -> list[QPolygonF]:
+    """The stretches of a closed polyline (n, 2) [px] that run through a view, as open polylines."""
+    low, high = np.minimum(points[:-1], points[1:]), np.maximum(points[:-1], points[1:])
+    seen = (low[:, 0] <= view.right() + SEAM_PX) & (high[:, 0] >= view.left() - SEAM_PX)
+    seen &= (low[:, 1] <= view.bottom() + SEAM_PX) & (high[:, 1] >= view.top() - SEAM_PX)
+    steps = np.diff(np.concatenate([[0], seen.astype(np.int8), [0]]))
+    runs = list(zip(np.flatnonzero(steps > 0), np.flatnonzero(steps < 0), strict=True))
+    pieces = [points[first : last + 1] for first, last in runs]
+    if len(pieces) > 1 and seen[0] and seen[-1]:  # one stretch over the place where it closes
+        pieces = [np.concatenate([pieces[-1], pieces[0]]), *pieces[1:-1]]
+    return [polygon(piece) for piece in pieces]
