@@ -6,7 +6,7 @@ segments and circular arcs: nothing is flattened.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, fields
 from functools import cached_property
 from typing import TYPE_CHECKING
 
@@ -65,6 +65,22 @@ class CurveTable:
             on_circle = centre + radius[:, None] * np.stack([np.cos(angle), np.sin(angle)], axis=1)
             ends[arc] = on_circle[arc]
         return cls(arc, start, end, centre, radius, begin, sweep, data[:, 10].astype(np.int64))
+
+    @classmethod
+    def patched(
+        cls, table: CurveTable, were: tuple[BoundaryCurve, ...], are: tuple[BoundaryCurve, ...]
+    ) -> CurveTable:
+        """The table of `are`, with the rows of `table` for what is as it was at either end."""
+        most = min(len(were), len(are))
+        head = next((i for i in range(most) if were[i] is not are[i]), most)
+        rest = most - head
+        tail = next((i for i in range(rest) if were[-1 - i] is not are[-1 - i]), rest)
+        made = cls.of(are[head : len(are) - tail])
+        columns = (getattr(one, f.name) for f in fields(cls) for one in (table, made))
+        pairs = zip(columns, columns, strict=True)
+        return cls(
+            *(np.concatenate([old[:head], new, old[len(were) - tail :]]) for old, new in pairs)
+        )
 
     def __len__(self) -> int:
         return len(self.arc)

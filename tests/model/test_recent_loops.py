@@ -63,5 +63,5 @@ def outcome(part: Part) -> object:
     try:
         shape = shape_of(part)
     except InvalidPartError as refused:
-        return [fault.cause for fault in refused.faults]
+        return refused.faults
     return shape.curves, shape.sharp_corners

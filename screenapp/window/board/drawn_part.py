@@ -124,7 +124,7 @@ class DrawnPart:
     @property
     def exact_bounds(self) -> tuple[float, float, float, float] | None:
         """Smallest x, y and largest x, y [mm] of the outline, to the last figure."""
-        return self.loops[0].exact_box if self.part.outline is not None else None
+        return self.loops[0].box if self.part.outline is not None else None
 
     def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
         """Pieces of an edge, fillet, hole of any kind or whole pattern."""

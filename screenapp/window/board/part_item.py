@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from PySide6.QtCore import QLineF, QPointF, QRectF, Qt
@@ -14,7 +15,7 @@ from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
 from screenapp.window.board.ring import Ring, flatten
 from screenapp.window.board.screen_item import Z_FILL, Z_OUTLINE, ScreenItem
-from screenapp.window.board.still_picture import StillPicture, stretches_in
+from screenapp.window.board.still_picture import StillPicture, stretches_in, thinned
 
 SAGITTA_PX = 0.15
 """Arcs are flattened to within this [px]."""
@@ -36,11 +37,20 @@ def mixed(a: str, b: str, share: float) -> QColor:
 
 @dataclass(frozen=True)
 class RingLine:
-    """A ring in pixels: its points (n, 2), the same as a polygon, and the box round it."""
+    """A ring in pixels: its points (n, 2) and the box round them."""
 
     points: Floats
-    polygon: QPolygonF
     box: QRectF
+
+    @cached_property
+    def polygon(self) -> QPolygonF:
+        """All points."""
+        return polygon(self.points)
+
+    def thinned(self, view: QRectF) -> QPolygonF:
+        """A polygon that fills a view [px] as the whole does."""
+        points = thinned(self.points, view)
+        return polygon(points) if len(points) else QPolygonF()
 
 
 class PartPaths:
@@ -78,7 +88,7 @@ class PartPaths:
     def whole(self) -> QPainterPath:
         """All rings as one path; what lies in a hole is outside."""
         if self._whole is None:
-            self._whole = _path(self.rings)
+            self._whole = _path([ring.polygon for ring in self.rings])
         return self._whole
 
     def seen_in(self, view: QRectF) -> list[RingLine]:
@@ -121,7 +131,12 @@ class FillItem(ScreenItem):
         def fill(over: QPainter, drawn: DrawnPart, view: QRectF) -> None:
             shift = self._paths.settle(drawn, frame)
             over.translate(shift)
-            over.fillPath(_path(self._paths.seen_in(view.translated(-shift))), colour)
+            seen = view.translated(-shift)
+            rings = self._paths.seen_in(seen)
+            over.fillPath(
+                _path([r.polygon if seen.contains(r.box) else r.thinned(seen) for r in rings]),
+                colour,
+            )
             over.translate(-shift)
 
         parts = self.before, self.drawn
@@ -202,11 +217,11 @@ def tolerance_at(frame: Frame) -> float:
     return float(2.0 ** math.floor(math.log2(SAGITTA_PX / frame.scale)))
 
 
-def _path(rings: list[RingLine]) -> QPainterPath:
+def _path(rings: list[QPolygonF]) -> QPainterPath:
     path = QPainterPath()
     path.setFillRule(Qt.FillRule.OddEvenFill)
     for ring in rings:
-        path.addPolygon(ring.polygon)
+        path.addPolygon(ring)
         path.closeSubpath()
     return path
 
@@ -239,8 +254,8 @@ def _seen(ring: Ring, frame: Frame, tolerance: float) -> RingLine | None:
     points = frame.pxs(ring.polyline(tolerance))
     if not len(points):
         return None
-    line = polygon(points)
-    return RingLine(points, line, line.boundingRect())
+    (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
+    return RingLine(points, QRectF(x0, y0, x1 - x0, y1 - y0))
 
 
 def _crosses(rows: Floats, frame: Frame, view: QRectF) -> list[QLineF]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections import deque
 from dataclasses import replace
 from functools import cached_property, lru_cache
 
@@ -35,8 +36,10 @@ class Ring:
     A ring at fault may be open or empty.
     """
 
-    def __init__(self, pieces: tuple[BoundaryCurve, ...]) -> None:
+    def __init__(self, pieces: tuple[BoundaryCurve, ...], like: Ring | None = None) -> None:
+        """A ring; most pieces of a long one may be those of the ring that it is `like`."""
         self.pieces = pieces
+        self._like = like
         self._lines: dict[float, Floats] = {}
 
     @cached_property
@@ -55,20 +58,12 @@ class Ring:
         return tuple(piece for piece in self.pieces if piece.feature == feature)
 
     @cached_property
-    def box(self) -> tuple[float, float, float, float] | None:
-        """Smallest x, y and largest x, y [mm]; None if the ring is empty."""
-        if not self.pieces:
-            return None
-        points = self._flattened(0.01 * self.table.lengths)
-        if not np.isfinite(points).all():
-            return None
-        (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
-        return float(x0), float(y0), float(x1), float(y1)
-
-    @cached_property
     def table(self) -> CurveTable:
         """The pieces as arrays."""
-        return CurveTable.of(tuple(self.pieces))
+        like, self._like = self._like, None
+        if like is None:
+            return CurveTable.of(self.pieces)
+        return CurveTable.patched(like.table, like.pieces, self.pieces)
 
     def _flattened(self, tolerances: Floats) -> Floats:
         """All pieces as `flatten` gives them, each to its own sagitta [mm]."""
@@ -85,8 +80,8 @@ class Ring:
         return table.points(which, t)
 
     @cached_property
-    def exact_box(self) -> tuple[float, float, float, float] | None:
-        """As `box`, to the last figure."""
+    def box(self) -> tuple[float, float, float, float] | None:
+        """Smallest x, y and largest x, y [mm], to the last figure; None if the ring is empty."""
         if not self.pieces:
             return None
         boxes = self.table.boxes
@@ -112,9 +107,8 @@ class Ring:
             return False
         x0, y0, x1, y1 = self.box
         size = max(x1 - x0, y1 - y0)
-        slack = 0.05 * size  # the box is of a coarse polyline
         x, y = at
-        if not (x0 - slack <= x <= x1 + slack and y0 - slack <= y <= y1 + slack):
+        if not (x0 <= x <= x1 and y0 <= y <= y1):
             return False
         return point_in_ring(at, self.polyline(FINE * size))
 
@@ -122,8 +116,22 @@ class Ring:
 @kept_by_identity(64)
 def outline_ring(outline: Loop) -> Ring:
     """The ring of an outline, without the rounds and chamfers that do not fit."""
+    pieces = _fitting_pieces(outline)
+    like = _latest[-1] if _latest else None
+    ring = Ring(pieces, like)
+    if like is not None:
+        like._like = None  # no chain of rings
+    _latest.append(ring)
+    return ring
+
+
+_latest: deque[Ring] = deque(maxlen=1)
+"""The outline last worked out: in a drag the next one is much like it."""
+
+
+def _fitting_pieces(outline: Loop) -> tuple[BoundaryCurve, ...]:
     try:
-        return Ring(shape_of(Part(outline=outline)).curves)
+        return shape_of(Part(outline=outline)).curves
     except InvalidPartError as error:
         found = {id_ for fault in error.faults for id_ in fault.ids}
     except (ArithmeticError, ValueError):
@@ -133,9 +141,9 @@ def outline_ring(outline: Loop) -> Ring:
         for c in outline.corners
     )
     try:  # the corners round about keep theirs
-        return Ring(shape_of(Part(outline=replace(outline, corners=less))).curves)
+        return shape_of(Part(outline=replace(outline, corners=less))).curves
     except (InvalidPartError, ArithmeticError, ValueError):
-        return Ring(_unrounded(outline, hole=False))
+        return _unrounded(outline, hole=False)
 
 
 @lru_cache(maxsize=1024)

@@ -31,7 +31,7 @@ class StillPicture:
 
     def __init__(self) -> None:
         self._key: Hashable = None
-        self._picture = QPixmap()
+        self._picture, self._area = QPixmap(), QRect()
 
     def paint(
         self,
@@ -58,19 +58,16 @@ class StillPicture:
             self._key, self._picture = None, QPixmap()
             draw(painter, drawn, QRectF(view))
             return
-        changed = QRect()
-        if (box := changed_box(base, drawn, tolerance)) is not None:
-            corners = frame.pxs([(box[0], box[1]), (box[2], box[3])])
-            (x0, y0), (x1, y1) = corners.min(axis=0) - AROUND_PX, corners.max(axis=0) + AROUND_PX
-            inside = QRectF(x0, y0, x1 - x0, y1 - y0) & QRectF(view)
-            changed = inside.toAlignedRect() & view
+        changed = _in_view(changed_box(base, drawn, tolerance), frame, view)
         if 2 * changed.width() * changed.height() > view.width() * view.height():
             draw(painter, drawn, QRectF(view))
             return
         self._settle(painter, frame, base, look, draw)
         painter.save()
-        painter.setClipRegion(QRegion(view) - QRegion(changed))
-        painter.drawPixmap(0, 0, self._picture)
+        # one rectangle after the other: clipping to a region of many is slow
+        for rect in QRegion(self._area) - QRegion(changed):  # type: ignore[attr-defined]
+            painter.setClipRect(rect)
+            painter.drawPixmap(self._area.topLeft(), self._picture)
         painter.restore()
         if not changed.isEmpty():
             painter.save()
@@ -89,19 +86,32 @@ class StillPicture:
         if key == self._key:
             return
         self._key = key
-        self._picture = QPixmap(view.size() * ratio)
+        self._area = _in_view(base.bounds, frame, view)
+        self._picture = QPixmap(self._area.size() * ratio)
         self._picture.setDevicePixelRatio(ratio)
         self._picture.fill(Qt.GlobalColor.transparent)
         over = QPainter(self._picture)
         over.setRenderHints(painter.renderHints())
-        draw(over, base, QRectF(view))
+        over.translate(-self._area.topLeft())
+        draw(over, base, QRectF(self._area))
         over.end()
 
 
+Box = tuple[float, float, float, float]
+"""Smallest x, y and largest x, y [mm]."""
+
+
+def _in_view(box: Box | None, frame: Frame, view: QRect) -> QRect:
+    """The pixels of a view in which lines of a box [mm] may lie."""
+    if box is None:
+        return QRect()
+    corners = frame.pxs([(box[0], box[1]), (box[2], box[3])])
+    (x0, y0), (x1, y1) = corners.min(axis=0) - AROUND_PX, corners.max(axis=0) + AROUND_PX
+    return (QRectF(x0, y0, x1 - x0, y1 - y0) & QRectF(view)).toAlignedRect() & view
+
+
 @lru_cache(maxsize=2)
-def changed_box(
-    was: DrawnPart, now: DrawnPart, tolerance: float
-) -> tuple[float, float, float, float] | None:
+def changed_box(was: DrawnPart, now: DrawnPart, tolerance: float) -> Box | None:
     """The box [mm] in which two parts differ, None if they are alike.
 
     Rings that an edit leaves as they are stay the same objects.
@@ -152,3 +162,20 @@ def stretches_in(points: Floats, view: QRectF) -> list[QPolygonF]:
     if len(pieces) > 1 and seen[0] and seen[-1]:  # one stretch over the place where it closes
         pieces = [np.concatenate([pieces[-1], pieces[0]]), *pieces[1:-1]]
     return [polygon(piece) for piece in pieces]
+
+
+def thinned(points: Floats, view: QRectF) -> Floats:
+    """A closed polyline (n, 2) [px] that fills a view as the given one does, with fewer points.
+
+    Points are left out that lie, with those before and after them, all on one side of the view:
+    however the line runs out there, it does not come in.
+    """
+    x, y = points[:, 0], points[:, 1]
+    side = np.zeros(len(points), dtype=np.int8)
+    side[y > view.bottom() + SEAM_PX] = 4
+    side[y < view.top() - SEAM_PX] = 3
+    side[x > view.right() + SEAM_PX] = 2
+    side[x < view.left() - SEAM_PX] = 1
+    before, after = np.roll(side, 1), np.roll(side, -1)
+    left: Floats = points[(side == 0) | (side != before) | (side != after)]
+    return left
