@@ -25,6 +25,7 @@ from screenapp.model.part import (
     PrescribedSupport,
     RollerSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.model.shape import Shape
 
@@ -226,7 +227,7 @@ def _holds_of(support: Support, normals: Floats) -> list[tuple[Floats, float]]:
     if isinstance(support, PrescribedSupport):
         wanted = ((x, support.x), (y, support.y))
         return [(axis, value) for axis, value in wanted if value is not None]
-    if isinstance(support, PinSupport) or support.angle is None:
+    if isinstance(support, PinSupport | SymmetrySupport) or support.angle is None:
         return [(normals, 0.0)]
     angle = math.radians(support.angle)
     return [(_clean(np.array([math.cos(angle), math.sin(angle)])), 0.0)]

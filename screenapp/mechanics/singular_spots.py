@@ -30,6 +30,7 @@ from screenapp.model.part import (
     PointLoad,
     PrescribedSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.model.shape import Shape
 
@@ -78,7 +79,7 @@ def _held(support: Support) -> Held:
         if support.x is None and support.y is None:
             return "free"
         return 0.0 if support.x is not None else 0.5 * math.pi
-    if isinstance(support, PinSupport):
+    if isinstance(support, PinSupport | SymmetrySupport):
         return "normal"
     return "normal" if support.angle is None else math.radians(support.angle) % math.pi
 

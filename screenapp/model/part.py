@@ -97,6 +97,9 @@ from screenapp.model.support_records import (
 from screenapp.model.support_records import (
     Support as Support,
 )
+from screenapp.model.support_records import (
+    SymmetrySupport as SymmetrySupport,
+)
 
 Point = tuple[float, float]
 

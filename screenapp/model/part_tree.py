@@ -46,6 +46,7 @@ from screenapp.model.part import (
     SlotHole,
     SpinLoad,
     StressLimit,
+    SymmetrySupport,
     TemperatureLoad,
     Term,
     Wall,
@@ -66,6 +67,7 @@ SUPPORTS: dict[str, type] = {
     "roller": RollerSupport,
     "prescribed": PrescribedSupport,
     "pin": PinSupport,
+    "symmetry": SymmetrySupport,
 }
 LOADS: dict[str, type] = {
     "pressure": PressureLoad,

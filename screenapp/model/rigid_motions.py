@@ -23,6 +23,7 @@ from screenapp.model.part import (
     PrescribedSupport,
     RollerSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.model.shape import Shape
 
@@ -81,8 +82,8 @@ def held_by(part: Part, support: Support, shape: Shape) -> Held:
     parts: list[tuple[Floats, float]] = []
     if isinstance(support, FixedSupport):
         parts = [(x, 0.0), (y, 0.0)]
-    elif isinstance(support, PinSupport):
-        parts = [(normals, 0.0)]  # as if it touched all round
+    elif isinstance(support, PinSupport | SymmetrySupport):
+        parts = [(normals, 0.0)]  # a pin as if it touched all round
     elif isinstance(support, RollerSupport):
         if support.angle is None:
             parts = [(normals, 0.0)]

@@ -13,12 +13,14 @@ from screenapp.model.features import Places, edges_at, loops_of
 from screenapp.model.part import (
     CircleHole,
     Corner,
+    Edge,
     Part,
     PinSupport,
     Point,
     PrescribedSupport,
     RollerSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
@@ -101,7 +103,16 @@ def one_support_faults(
         return
     yield from span_faults(support, name, where, places, shape)
     on_corner = places[support.on].kind == "corner"
-    if isinstance(support, PinSupport):
+    if isinstance(support, SymmetrySupport):
+        record = places[support.on].record
+        if not isinstance(record, Edge) or record.through is not None:
+            yield Fault(
+                f"{name} is a line of symmetry on {places[support.on].kind} {support.on}",
+                "put it on a straight edge, or hold the place in another way",
+                f"{where}.on",
+                (*ids, support.on),
+            )
+    elif isinstance(support, PinSupport):
         if not isinstance(places[support.on].record, CircleHole):
             yield Fault(
                 f"{name} is a pin on {places[support.on].kind} {support.on}",

@@ -48,6 +48,19 @@ class PrescribedSupport:
 
 
 @dataclass(frozen=True)
+class SymmetrySupport:
+    """A straight edge on which the part is cut in half: it stays on its line and slides along it.
+
+    What is drawn is one half; the other does the same in the mirror.
+    """
+
+    id: str
+    on: str
+    start: float | None = None
+    end: float | None = None
+
+
+@dataclass(frozen=True)
 class PinSupport:
     """A rigid pin in a round hole that only pushes.
 
@@ -59,4 +72,4 @@ class PinSupport:
     on: str
 
 
-Support = FixedSupport | RollerSupport | PrescribedSupport | PinSupport
+Support = FixedSupport | RollerSupport | PrescribedSupport | PinSupport | SymmetrySupport

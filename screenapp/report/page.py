@@ -182,6 +182,8 @@ def support_words(support: Support) -> str:
         on += ","
     if kind == "FixedSupport":
         return f"{on} is fixed in both directions"
+    if kind == "SymmetrySupport":
+        return f"{on} is a line of symmetry; only one half of the part is drawn"
     if kind == "PinSupport":
         return f"{on} sits on a rigid pin without play or friction that only pushes"
     if kind == "RollerSupport":

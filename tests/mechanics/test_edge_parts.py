@@ -15,6 +15,7 @@ from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.edge_parts import pieces_under, with_span_ends
 from screenapp.model.part import (
     Case,
+    CircleHole,
     ElementName,
     FixedSupport,
     ForceLoad,
@@ -25,6 +26,7 @@ from screenapp.model.part import (
     PressureLoad,
     RollerSupport,
     ShearLoad,
+    SymmetrySupport,
 )
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.shape import shape_of
@@ -184,3 +186,21 @@ def test_a_hole_and_a_corner_have_no_parts() -> None:
     fault = faults_of(part)[0]
     assert fault.field == "supports.s2.end"
     assert "only an edge has parts" in fault.cause
+
+
+def test_a_line_of_symmetry_is_a_roller_along_its_normal() -> None:
+    part = loaded(ForceLoad("l", "e2", 300.0, 0.0))
+    rolling = replace(part, supports=UPRIGHT)
+    mirror = replace(part, supports=(SymmetrySupport("s1", "e4"), UPRIGHT[1]))
+    one, two = solved(rolling), solved(mirror)
+    np.testing.assert_allclose(one.stress.nodal, two.stress.nodal, atol=1e-9)
+    assert singular_spots(mirror, one.shape) == singular_spots(rolling, one.shape)
+
+
+def test_a_line_of_symmetry_is_straight() -> None:
+    for on in ("h1", "c2"):
+        part = replace(loaded(ForceLoad("l", "e2", 3.0, 0.0)), supports=(SymmetrySupport("s", on),),
+                       holes=(CircleHole("h1", (30.0, 6.0), 4.0),))  # fmt: skip
+        fault = next(f for f in faults_of(part) if f.field.startswith("supports.s"))
+        assert fault.field == "supports.s.on"
+        assert "straight edge" in fault.mend

@@ -41,6 +41,7 @@ from screenapp.model.part import (
     SlotHole,
     SpinLoad,
     StressLimit,
+    SymmetrySupport,
     TemperatureLoad,
     Term,
     Wall,
@@ -100,6 +101,7 @@ def _supports(i: int) -> st.SearchStrategy[object]:
     return st.one_of(
         st.builds(FixedSupport, name, on, maybe, maybe),
         st.builds(PinSupport, name, on),
+        st.builds(SymmetrySupport, name, on, maybe, maybe),
         st.builds(RollerSupport, name, on, maybe, maybe, maybe),
         st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )

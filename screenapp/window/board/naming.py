@@ -27,6 +27,7 @@ from screenapp.model.part import (
     SlotHole,
     SpinLoad,
     Support,
+    SymmetrySupport,
     TemperatureLoad,
     Zone,
 )
@@ -104,6 +105,8 @@ def zone_words(zone: Zone, part: Part) -> str:
 def _held(record: Support, units: DisplayUnits) -> str:
     if isinstance(record, FixedSupport):
         return "is held in both directions"
+    if isinstance(record, SymmetrySupport):
+        return "is a line of symmetry"
     if isinstance(record, PinSupport):
         return "sits on a pin that only pushes"
     if isinstance(record, RollerSupport):

@@ -16,6 +16,7 @@ from screenapp.model.part import (
     PinSupport,
     PrescribedSupport,
     RollerSupport,
+    SymmetrySupport,
 )
 from screenapp.window.board.placing_kinds import (
     Record,
@@ -31,7 +32,7 @@ from screenapp.window.board.popover import Popover
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
 
-SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport, PinSupport)
+SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport, PinSupport, SymmetrySupport)
 
 
 class Placing:

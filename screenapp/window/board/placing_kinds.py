@@ -12,6 +12,7 @@ from screenapp.model.part import (
     BearingLoad,
     BodyLoad,
     CircleHole,
+    Edge,
     FixedSupport,
     ForceLoad,
     GravityLoad,
@@ -27,6 +28,7 @@ from screenapp.model.part import (
     ShearLoad,
     SpinLoad,
     Support,
+    SymmetrySupport,
     TemperatureLoad,
 )
 from screenapp.window.board.typed_entry import EntryField
@@ -150,6 +152,13 @@ PUSHING_PIN = Way(
     "A pin that bears only on the side that is pressed against it; found case by case.",
     (),
     lambda id_, on, _values: PinSupport(id_, on),
+)
+SYMMETRY = Way(
+    "symmetry",
+    "Symmetry",
+    "Only one half is drawn: the edge stays on its line and slides along it.",
+    (),
+    lambda id_, on, _values: SymmetrySupport(id_, on),
 )
 CORNER_ROLLER = Way(
     "roller",
@@ -278,6 +287,8 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
         return FIXED, CORNER_ROLLER, MOVED
     if isinstance(found.record, CircleHole):
         return FIXED, PIN, PUSHING_PIN, MOVED
+    if isinstance(found.record, Edge) and found.record.through is None:
+        return FIXED, ROLLER, SYMMETRY, MOVED
     return FIXED, (PIN if found.kind == "hole" else ROLLER), MOVED
 
 
@@ -297,6 +308,8 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
     """The key of the way and the values that would make this record."""
     if isinstance(record, FixedSupport):
         return "fixed", {}
+    if isinstance(record, SymmetrySupport):
+        return "symmetry", {}
     if isinstance(record, PinSupport):
         return "pushing", {}
     if isinstance(record, RollerSupport):

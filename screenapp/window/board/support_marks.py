@@ -13,6 +13,7 @@ from screenapp.model.part import (
     PrescribedSupport,
     RollerSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
@@ -37,6 +38,8 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
             _footed(mark, at, squared(out))
         else:
             _clamped(mark, drawn, frame, support.on, span_of(support))
+    elif isinstance(support, SymmetrySupport):
+        _mirrored(mark, drawn, frame, support)
     elif isinstance(support, PinSupport):
         _pin(mark, at, radius_px(drawn, frame, support.on))
     elif isinstance(support, RollerSupport):
@@ -92,6 +95,19 @@ def _wheeled(mark: Mark, at: Floats, out: Floats) -> None:
         mark.circle(base + 3.0 * out + s * side, 2.5)
     ground = base + 6.5 * out
     mark.line(ground - 11.0 * side, ground + 11.0 * side)
+
+
+def _mirrored(mark: Mark, drawn: DrawnPart, frame: Frame, support: SymmetrySupport) -> None:
+    """Two short strokes across each end of the line, as drawings mark symmetry (ISO 128)."""
+    line = stations(drawn, frame, support.on, 1e9, ends=True, span=span_of(support))
+    if len(line) < 2:
+        return
+    for p, along, way in ((line.at[0], line.along[0], 1.0), (line.at[-1], line.along[-1], -1.0)):
+        out = line.out[0]
+        for step in (4.0, 8.0):
+            foot = p + way * step * along
+            mark.line(foot - 7.0 * out, foot + 7.0 * out)
+    mark.line(line.at[0] + 2.5 * line.out[0], line.at[-1] + 2.5 * line.out[-1])
 
 
 def _pin(mark: Mark, at: Floats, radius: float) -> None:

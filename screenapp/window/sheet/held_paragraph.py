@@ -6,12 +6,14 @@ from screenapp.model.errors import Fault
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
     CircleHole,
+    Edge,
     FixedSupport,
     Part,
     PinSupport,
     PrescribedSupport,
     RollerSupport,
     Support,
+    SymmetrySupport,
 )
 from screenapp.window.sheet import changes, support_changes
 from screenapp.window.sheet.paragraph import Paragraph
@@ -23,7 +25,9 @@ from screenapp.window.sheet.span_pieces import span_pieces
 
 KINDS = (
     Choice("fixed", "fixed", "held in both directions"),
-    Choice("normal", "held across its boundary", "slides along it; on a hole: a pin"),
+    Choice("normal", "held across its boundary", "slides along it"),
+    Choice("pin", "held by a pin all round", "the part can turn on it"),
+    Choice("symmetry", "on a line of symmetry", "only one half is drawn"),
     Choice("pushing", "held by a pin that only pushes", "bears on the side that is pressed"),
     Choice("angle", "held along one direction", "slides across it"),
     Choice("moved", "moved by a given amount", "x, y or both"),
@@ -93,12 +97,15 @@ class HeldParagraph(Paragraph):
 
         if isinstance(support, FixedSupport):
             return (kind("fixed"), " in both directions")
+        if isinstance(support, SymmetrySupport):
+            return (kind("symmetry"),)
         if isinstance(support, PinSupport):
             return (kind("pushing"), "; it fits without play and friction")
         if isinstance(support, RollerSupport):
             if support.angle is None:
-                turns = ", so that it can turn on it" if where.startswith("hole") else ""
-                return (kind("normal"), f", free to slide along it{turns}")
+                if any(c.key == "pin" for c in kinds):
+                    return (kind("pin"), ", so that it can turn on it")
+                return (kind("normal"), ", free to slide along it")
             angle = q.value(
                 "angle",
                 support.angle,
@@ -131,9 +138,13 @@ class HeldParagraph(Paragraph):
 
 
 def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
-    """The ways in which the place of a support may be held; a hole's normal way is a pin."""
+    """The ways in which the place of a support may be held."""
     found = find(part, support.on)
-    if found is not None and isinstance(found.record, CircleHole):
-        pin = Choice("normal", "held across its boundary", "a pin all round: the part can turn")
-        return tuple(pin if c.key == "normal" else c for c in KINDS)
-    return tuple(c for c in KINDS if c.key != "pushing")
+    record = found.record if found is not None else None
+    if isinstance(record, Edge):
+        out = {"pin", "pushing", *(() if record.through is None else ("symmetry",))}
+    elif isinstance(record, CircleHole):
+        out = {"normal", "symmetry"}
+    else:
+        out = {"pin", "pushing", "symmetry"}
+    return tuple(c for c in KINDS if c.key not in out)

@@ -8,7 +8,14 @@ from typing import Any
 
 from screenapp.model import edits
 from screenapp.model.edge_parts import span_of
-from screenapp.model.part import FixedSupport, PinSupport, PrescribedSupport, RollerSupport, Support
+from screenapp.model.part import (
+    FixedSupport,
+    PinSupport,
+    PrescribedSupport,
+    RollerSupport,
+    Support,
+    SymmetrySupport,
+)
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
 
@@ -28,12 +35,14 @@ class SupportChange:
         self._support = support
 
     def kind(self, kind: str) -> None:
-        """Hold it "fixed", by its "normal", along an "angle", or "moved"."""
+        """Hold it in the way that a key of the paragraph's `KINDS` names."""
         old = next(s for s in self._document.part.supports if s.id == self._support)
         new: Support
         if kind == "fixed":
             new = FixedSupport(old.id, old.on)
-        elif kind == "normal":
+        elif kind == "symmetry":
+            new = SymmetrySupport(old.id, old.on)
+        elif kind in ("normal", "pin"):
             new = RollerSupport(old.id, old.on)
         elif kind == "pushing":
             new = PinSupport(old.id, old.on)
