@@ -37,7 +37,8 @@ class View:
     """What is painted on the part.
 
     `deformation` is the factor on the drawn displacement; None lets the board choose one that can
-    be seen; 0 draws the part undeformed.  `case` indexes `Part.cases`.
+    be seen; 0 draws the part undeformed.  `case` indexes the cases and combinations; with
+    `envelope` all of them are shown at once, by lenses that can, and loads drawn are its.
     """
 
     lens: Lens = "Shape"
@@ -45,6 +46,7 @@ class View:
     displacement: DisplacementComponent = "u"
     case: int = 0
     deformation: float | None = None
+    envelope: bool = False
 
 
 class Document(QObject):
@@ -206,7 +208,12 @@ class Document(QObject):
             self.hovered_changed.emit()
 
     def look(self, **changes: object) -> None:
-        """Change the view, e.g. `look(lens="Stress", case=1)`."""
+        """Change the view, e.g. `look(lens="Stress", case=1)`.
+
+        Who chooses a case wants it alone, not the envelope.
+        """
+        if "case" in changes:
+            changes.setdefault("envelope", False)
         view = replace(self.view, **changes)  # type: ignore[arg-type]
         if view != self.view:
             self.view = view

@@ -56,6 +56,8 @@ class Painting:
         caption: a sentence or two; "" for none.
         marks: every peak with its trust, where that is what is shown.
         legend: what each trust means here, in words, with its count.
+        governing: index of the case that each value is of, shaped as they are, where all cases are
+            shown at once; else None.
     """
 
     points: Floats
@@ -71,6 +73,7 @@ class Painting:
     ends: tuple[float, float] | None = None
     marks: tuple[tuple[Point, Trust], ...] = ()
     legend: tuple[tuple[Trust, str], ...] = ()
+    governing: Ints | None = None
 
 
 @dataclass(frozen=True, eq=False)

@@ -8,8 +8,6 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
-import numpy as np
-
 from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Peak, Trust
 from screenapp.window import fields as scalars
@@ -23,7 +21,9 @@ from screenapp.window.cards import (
     with_history,
 )
 from screenapp.window.document import Lens, View
-from screenapp.window.painted import Card, Floats, Painting, Source, Zone
+from screenapp.window.doubtful_zones import trusted_ends, zones_of
+from screenapp.window.envelope import ENVELOPED, paint_envelope
+from screenapp.window.painted import Card, Painting, Source
 
 MOST_CARDS = 4
 """Cards shown at once; more would hide the part."""
@@ -53,6 +53,8 @@ def paint(view: View, source: Source) -> Painting | None:
         "Displacement": _displacement,
         "Trust": _trust,
     }
+    if view.envelope and view.lens in ENVELOPED and len(source.fields.solution.displacements) > 1:
+        return paint_envelope(view, source)
     painter = painters.get(view.lens)
     return painter(view, source) if painter is not None else None
 
@@ -68,6 +70,7 @@ def _mesh(_view: View, source: Source) -> Painting:
 
 def _stress(view: View, source: Source) -> Painting:
     name = scalars.STRESS_NAMES[view.stress]
+    zones = zones_of([source])
     values = scalars.stress_of(source.fields, source.case, view.stress, source.part)
     peaks = peaks_of(source, view.stress)
     cards = with_history(source, tuple(peak_card(peak, source) for peak in peaks[:1]))
@@ -81,34 +84,12 @@ def _stress(view: View, source: Source) -> Painting:
         name,
         "stress",
         mesh=0.3,
-        zones=_zones(source),
+        zones=zones,
         cards=cards,
         probes=probe_values(source, view.stress, "stress"),
         caption=caption,
-        ends=_trusted_ends(source, view.stress, values),
+        ends=trusted_ends(source, zones, peaks, values),
     )
-
-
-def _trusted_ends(source: Source, quantity: str, values: Floats) -> tuple[float, float] | None:
-    """The range of what does not keep rising; None where nothing does.
-
-    A rising value would take the colours from all the rest, and more so with each pass.  The upper
-    end is the largest peak that is not rising, or else the largest value outside rising zones.
-    """
-    rising = [zone.elements for zone in _zones(source) if zone.trust == "rising"]
-    if not rising:
-        return None
-    mesh = source.fields.mesh
-    steady = np.ones(mesh.n_nodes, dtype=bool)
-    steady[mesh.quads[np.concatenate(rising)]] = False
-    steady = steady if values.ndim == 1 else steady[mesh.quads]
-    if not steady.any():
-        return None
-    low, high = float(values[steady].min()), float(values[steady].max())
-    known = [p for p in peaks_of(source, quantity) if p.estimate.trust != "rising"]
-    if known:
-        high = max(peak.estimate.value for peak in known)
-    return low, high
 
 
 def _utilisation(_view: View, source: Source) -> Painting:
@@ -121,7 +102,7 @@ def _utilisation(_view: View, source: Source) -> Painting:
         "Utilisation",
         "factor",
         mesh=0.3,
-        zones=_zones(source),
+        zones=zones_of([source]),
         cards=with_history(source, use_cards(source)),
         probes=probe_values(source, "von_mises", "stress"),
     )
@@ -166,7 +147,7 @@ def _trust(_view: View, source: Source) -> Painting:
         "Mesh error / allowed",
         None,
         mesh=0.15,
-        zones=_zones(source),
+        zones=zones_of([source]),
         cards=with_history(
             source, tuple(peak_card(p, source) for p in shown[:MOST_CARDS]), first=True
         ),
@@ -184,20 +165,6 @@ def _legend(places: Sequence[Peak], tolerance: float) -> tuple[tuple[Trust, str]
         (trust, f"{counts[trust]} {words.format(100.0 * tolerance)}")
         for trust, words in _MEANINGS.items()
     )
-
-
-def _zones(source: Source) -> tuple[Zone, ...]:
-    """Round every rising or unsettled peak of the case."""
-    found = source.case_findings
-    if found is None:
-        return ()
-    zones: list[Zone] = []
-    for trust in ("unsettled", "rising"):
-        peaks = [p for p in apart(found.peaks) if p.estimate.trust == trust]
-        if peaks:
-            elements = [scalars.zone_round(source.fields, p.at) for p in peaks]
-            zones.append(Zone(np.unique(np.concatenate(elements)), trust))
-    return tuple(zones)
 
 
 def grouped(number: int) -> str:

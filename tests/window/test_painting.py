@@ -11,7 +11,8 @@ from numpy.testing import assert_allclose
 from screenapp.model.findings import Trust
 from screenapp.model.part import Part, StressLimit
 from screenapp.window import fields as scalars
-from screenapp.window.document import View
+from screenapp.window.document import Lens, View
+from screenapp.window.envelope import ENVELOPED, envelope
 from screenapp.window.painting import Painting, Source, paint
 from tests.window import fabricate as made
 
@@ -169,3 +170,85 @@ def test_mesh_counts_elements_and_unknowns() -> None:
     of = source()
     caption = painted(View("Mesh"), of).caption
     assert caption.startswith(f"{of.fields.mesh.n_elements} elements")
+
+
+# --- all cases at once ----------------------------------------------------------------------
+
+
+def test_the_envelope_of_each_kind_of_component() -> None:
+    values = np.array([[1.0, -5.0, 2.0], [3.0, 4.0, 2.0]])
+    for component, wanted, cases in (
+        ("von_mises", [3.0, 4.0, 2.0], [1, 1, 0]),
+        ("sigma_2", [1.0, -5.0, 2.0], [0, 0, 0]),
+        ("tau_xy", [3.0, -5.0, 2.0], [1, 0, 0]),
+        ("u_x", [3.0, -5.0, 2.0], [1, 0, 0]),
+    ):
+        shown, of = envelope(values, component)
+        assert_allclose(shown, wanted, err_msg=component)
+        assert of.tolist() == cases, component
+
+
+@pytest.mark.parametrize("lens", ENVELOPED)
+def test_all_cases_show_the_worst_at_each_place(lens: Lens) -> None:
+    of = source()
+    whole = painted(View(lens, envelope=True, deformation=0.0), of)
+    each = [
+        painted(View(lens, case=k, deformation=0.0), replace(of, case=k)).values for k in (0, 1)
+    ]
+    assert whole.values is not None
+    assert whole.governing is not None
+    assert_allclose(whole.values, np.maximum(*each))  # type: ignore[arg-type]
+    assert whole.governing.shape == whole.values.shape
+    chosen = np.where(whole.governing == 0, *each)  # type: ignore[call-overload]
+    assert_allclose(chosen, whole.values)
+    assert whole.deformation == 0.0
+    assert whole.points is of.fields.mesh.nodes
+
+
+@pytest.mark.parametrize("lens", ENVELOPED)
+def test_the_card_of_all_cases_names_the_one_that_governs(lens: Lens) -> None:
+    of = source()
+    assert of.findings is not None
+    (card,) = painted(View(lens, envelope=True), of).cards
+    tops = {
+        "Utilisation": {
+            c.name: max(
+                (u.utilisation.value for u in of.findings.limits if u.case == c.case), default=0.0
+            )
+            for c in of.findings.cases
+        },
+        "Stress": {
+            c.name: max(
+                (p.estimate.value for p in c.peaks if p.quantity == "von_mises"), default=0.0
+            )
+            for c in of.findings.cases
+        },
+        "Displacement": {c.name: c.displacement_max.value for c in of.findings.cases},
+    }[lens]
+    worst = max(tops, key=lambda name: tops[name])
+    assert f"“{worst}”" in card.detail
+    caption = painted(View(lens, envelope=True), of).caption
+    assert caption.startswith("All 2 cases: ")
+    assert any(name in caption for name in tops)
+
+
+def test_doubt_of_any_case_is_hatched_in_the_envelope() -> None:
+    of = source(trust="rising")
+    whole = painted(View("Stress", envelope=True), of)
+    each = [painted(View("Stress"), replace(of, case=k)) for k in (0, 1)]
+    marked = {int(e) for one in each for zone in one.zones for e in zone.elements}
+    assert marked
+    assert {int(e) for zone in whole.zones for e in zone.elements} == marked
+
+
+def test_one_case_has_no_envelope() -> None:
+    part = replace(made.plate(), cases=made.plate().cases[:1])
+    arrays = made.fields(made.ring(32, 8), 1)
+    of = Source(arrays, 0, part)
+    assert painted(View("Stress", envelope=True), of).governing is None
+
+
+def test_without_a_limit_the_envelope_says_so_too() -> None:
+    painting = painted(View("Utilisation", envelope=True), source(replace(made.plate(), limits=())))
+    assert painting.values is None
+    assert "No limit" in painting.caption

@@ -13,10 +13,12 @@ from screenapp.window.board.colour_bar import TAKEN
 from screenapp.window.board.overlay import Anchor
 from screenapp.window.board.trust_marks import TrustLegend
 from screenapp.window.document import Document
+from screenapp.window.envelope import ENVELOPED
 from screenapp.window.fields import DISPLACEMENT_NAMES, STRESS_NAMES
 
 MARGIN = 16
 AUTOMATIC = "auto"
+ALL_CASES = "all cases, the worst at each place"
 
 
 class LensHeading(QWidget):
@@ -32,7 +34,9 @@ class LensHeading(QWidget):
         self.displacement = self._chooser("Displacement component", DISPLACEMENT_NAMES)
         self.case = QComboBox()
         self.case.setAccessibleName("Case")
-        self.case.setToolTip("The load case that is painted")
+        self.case.setToolTip(
+            "The load case that is painted; the last line takes the worst of all at each place"
+        )
         self.deformation = QLineEdit()
         self.deformation.setAccessibleName("Factor on the drawn deformation")
         self.deformation.setToolTip(
@@ -97,10 +101,14 @@ class LensHeading(QWidget):
         self.stress.setCurrentIndex(self.stress.findData(view.stress))
         self.displacement.setCurrentIndex(self.displacement.findData(view.displacement))
         names = [case.name or case.id for case in loadings(part)]
+        count = len(names)
+        if cases and view.lens in ENVELOPED:
+            names.append(ALL_CASES)
         if names != [self.case.itemText(i) for i in range(self.case.count())]:
             self.case.clear()
             self.case.addItems(names)
-        self.case.setCurrentIndex(min(view.case, len(names) - 1))
+        whole = view.envelope and len(names) > count
+        self.case.setCurrentIndex(count if whole else min(view.case, count - 1))
         if not self.deformation.hasFocus() or not self.deformation.isModified():
             factor = view.deformation
             self.deformation.setText(AUTOMATIC if factor is None else f"{factor:g}")
@@ -150,8 +158,14 @@ class LensHeading(QWidget):
         self.displacement.activated.connect(
             lambda _i: self._document.look(displacement=self.displacement.currentData())
         )
-        self.case.activated.connect(lambda i: self._document.look(case=i))
+        self.case.activated.connect(self._take_case)
         self.deformation.editingFinished.connect(self._take_factor)
+
+    def _take_case(self, index: int) -> None:
+        if index < len(loadings(self._document.part)):
+            self._document.look(case=index)
+        else:
+            self._document.look(envelope=True)
 
     def _take_factor(self) -> None:
         text = self.deformation.text().strip().removesuffix("×").strip().replace(",", ".")
