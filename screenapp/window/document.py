@@ -39,6 +39,7 @@ class View:
     `deformation` is the factor on the drawn displacement; None lets the board choose one that can
     be seen; 0 draws the part undeformed.  `case` indexes the cases and combinations; with
     `envelope` all of them are shown at once, by lenses that can, and loads drawn are its.
+    `crosses` shows the principal directions, in lenses of stress.
     """
 
     lens: Lens = "Shape"
@@ -47,6 +48,7 @@ class View:
     case: int = 0
     deformation: float | None = None
     envelope: bool = False
+    crosses: bool = False
 
 
 class Document(QObject):

@@ -39,6 +39,21 @@ class Zone:
 
 
 @dataclass(frozen=True, eq=False)
+class Crosses:
+    """Where crosses may stand, and how the stress lies there.
+
+    Attributes:
+        at: middles of the elements as drawn [mm], (n_elements, 2).
+        stresses: σ1 >= σ2 there [MPa], (n_elements, 2).
+        directions: unit vectors of σ1 and σ2, (n_elements, 2, 2).
+    """
+
+    at: Floats
+    stresses: Floats
+    directions: Floats
+
+
+@dataclass(frozen=True, eq=False)
 class Painting:
     """What a lens shows.
 
@@ -58,6 +73,7 @@ class Painting:
         legend: what each trust means here, in words, with its count.
         governing: index of the case that each value is of, shaped as they are, where all cases are
             shown at once; else None.
+        crosses: principal directions, where they are asked for.
     """
 
     points: Floats
@@ -74,6 +90,7 @@ class Painting:
     marks: tuple[tuple[Point, Trust], ...] = ()
     legend: tuple[tuple[Trust, str], ...] = ()
     governing: Ints | None = None
+    crosses: Crosses | None = None
 
 
 @dataclass(frozen=True, eq=False)

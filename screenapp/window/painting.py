@@ -7,6 +7,7 @@ board.
 from __future__ import annotations
 
 from collections.abc import Sequence
+from dataclasses import replace
 
 from screenapp.model.estimate_text import estimate_text
 from screenapp.model.findings import Peak, Trust
@@ -24,6 +25,7 @@ from screenapp.window.document import Lens, View
 from screenapp.window.doubtful_zones import trusted_ends, zones_of
 from screenapp.window.envelope import ENVELOPED, paint_envelope
 from screenapp.window.painted import Card, Painting, Source
+from screenapp.window.principal_crosses import crosses_of
 
 MOST_CARDS = 4
 """Cards shown at once; more would hide the part."""
@@ -33,6 +35,11 @@ _MEANINGS: dict[Trust, str] = {
     "unsettled": "not settled yet",
     "settled": "settled to ± {:g} %",
 }
+
+CROSSED: tuple[Lens, ...] = ("Utilisation", "Stress")
+"""Lenses that can show principal directions."""
+
+CROSSES_MEAN = "Crosses: full lines are tension, broken ones between bars compression"
 
 WAITING: dict[Lens, str] = {
     "Shape": "",
@@ -54,9 +61,15 @@ def paint(view: View, source: Source) -> Painting | None:
         "Trust": _trust,
     }
     if view.envelope and view.lens in ENVELOPED and len(source.fields.solution.displacements) > 1:
-        return paint_envelope(view, source)
-    painter = painters.get(view.lens)
-    return painter(view, source) if painter is not None else None
+        painting: Painting | None = paint_envelope(view, source)
+    else:
+        painter = painters.get(view.lens)
+        painting = painter(view, source) if painter is not None else None
+    if painting is None or not view.crosses or view.lens not in CROSSED:
+        return painting
+    crosses = crosses_of(source.fields, source.case, painting.points, painting.governing)
+    caption = f"{painting.caption}. {CROSSES_MEAN}" if painting.caption else CROSSES_MEAN
+    return replace(painting, crosses=crosses, caption=caption)
 
 
 def _mesh(_view: View, source: Source) -> Painting:

@@ -19,6 +19,7 @@ from screenapp.window.board.tools.every import every_tool
 from screenapp.window.board.tools.select import SelectTool
 from screenapp.window.commands import run_pressed
 from screenapp.window.document import Document
+from screenapp.window.painting import CROSSED
 
 
 class Board(QWidget):
@@ -112,6 +113,14 @@ class Board(QWidget):
         self.document.said.emit(f"Dimensions: {words[dimensions.shown]}.")
         dimensions.refresh()
         dimensions.make_room()
+
+    def show_crosses(self) -> None:
+        """Show the principal directions, or hide them."""
+        shown = not self.document.view.crosses
+        self.document.look(crosses=shown)
+        where = "" if self.document.view.lens in CROSSED else ", in the lenses Utilisation, Stress"
+        state = "shown" if shown else "hidden"
+        self.document.said.emit(f"Principal directions: {state}{where}.")
 
     def zoom_in(self) -> None:
         """Magnify about the middle."""

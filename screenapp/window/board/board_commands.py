@@ -59,6 +59,12 @@ def board_commands(board: Board) -> tuple[Command, ...]:
             board.canvas.dimensions.edit_first,
         ),
         Command(
+            "Principal directions",
+            "Shows crosses in the lenses of stress and utilisation, or hides them.",
+            ("Shift+P",),
+            board.show_crosses,
+        ),
+        Command(
             "Step back",
             "Drops what is half done, then the tool, then the selection.",
             ("Esc",),

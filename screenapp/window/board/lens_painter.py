@@ -15,6 +15,7 @@ from screenapp.window import theme
 from screenapp.window.board.callouts import Callout, CalloutItem
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.colour_bar import TAKEN, ColourBar
+from screenapp.window.board.crosses_item import CrossesItem
 from screenapp.window.board.field_item import FieldItem
 from screenapp.window.board.hatching import HatchItem, Zone
 from screenapp.window.board.labels import PointValue
@@ -74,8 +75,9 @@ class LensPainter(QObject):
         self._path = QPainterPath()
         self.field, self.mesh = FieldItem(), MeshItem()
         self.hatch, self.rim, self.callouts = HatchItem(), RimItem(), CalloutItem()
-        self.marks = TrustMarkItem()
-        for item in (self.field, self.mesh, self.hatch, self.rim, self.marks, self.callouts):
+        self.marks, self.crosses = TrustMarkItem(), CrossesItem()
+        under = (self.field, self.mesh, self.hatch, self.crosses, self.rim)
+        for item in (*under, self.marks, self.callouts):
             board.canvas.view_box.addItem(item, ignoreBounds=True)
         self.bar = ColourBar(board.canvas)
         self.heading = LensHeading(document, board.canvas)
@@ -210,6 +212,7 @@ class LensPainter(QObject):
         self.hatch.show_zones(())
         self.rim.show_path(None)
         self.marks.show_marks(())
+        self.crosses.show_crosses(None)
         self.callouts.show_callouts((), (), QPainterPath())
         self._board.canvas.labels.show_values(())
         self.bar.show_content(None)
@@ -258,6 +261,7 @@ class LensPainter(QObject):
             for card in painting.cards
         )
         self.marks.show_marks(painting.marks)
+        self.crosses.show_crosses(painting.crosses)
         values = tuple(PointValue(at, text) for at, text in painting.probes)
         self.callouts.right_margin = float(TAKEN) if self.bar.content else 0.0
         probes = tuple(probe.at for probe in self._document.part.readings)
@@ -271,7 +275,7 @@ class LensPainter(QObject):
             warning = "Out of date: the part has changed since it was screened"
         elif self._pass is not None:
             warning = f"Pass {self._pass[1]}: nothing is settled yet"
-        for item in (self.field, self.mesh, self.hatch, self.rim, self.marks):
+        for item in (self.field, self.mesh, self.hatch, self.crosses, self.rim, self.marks):
             item.setOpacity(FADED if old else 1.0)
         self.callouts.setOpacity(FADED_WORDS if old else 1.0)
         # numbers that are out of date need no legend, and the warning takes its place
