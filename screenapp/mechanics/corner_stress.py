@@ -1,7 +1,7 @@
 """What is known of the stress where two sides of the boundary meet at an angle.
 
-At a convex corner the tractions on both sides fix the whole stress (a free corner has none).  At a
-right angle against a line of symmetry the field goes on in its mirror image.
+At a convex corner the tractions on both sides fix the stress (a free corner has none).  At a right
+angle against a line of symmetry the field goes on in its mirror image.
 """
 
 from __future__ import annotations
@@ -29,11 +29,12 @@ NEGLIGIBLE = 1e-6  # share of the largest traction of a case
 def known_corners(
     chains: BoundaryChains, traction: Floats, held: Bools, disturbed: Bools
 ) -> tuple[Floats, Bools]:
-    """Stress at the corner at every side's end, where the tractions on both sides fix it.
+    """Stress along both sides at the corner at every side's end, where the tractions fix it.
 
-    Four tractions fix three stresses; where they contradict each other (a shear on one side only)
-    the stress is not single-valued and nothing is known.  One such case rules the corner out for
-    all, so that the recovery of a sum of cases is the sum of their recoveries.
+    Constant tractions on a wedge of angle ω give φ = r² (A cos 2θ + B sin 2θ + C θ + D), with
+    σθ = 2 φ/r² and τ = -(φ/r²)' given on both faces and σr = φ''/r² + 2 φ/r² along them (Timoshenko
+    & Goodier, Theory of Elasticity, from memory).  Where the tractions contradict each other (a
+    shear on one side only) C is not zero and the two sides differ, each with its own limit.
 
     Args:
         traction: (n_cases, n_sides, 3, 2) [MPa].
@@ -42,26 +43,47 @@ def known_corners(
             there, (n_sides,).
 
     Returns:
-        σx, σy, τxy (n_cases, n_sides, 3) [MPa] and whether they are known (n_sides,).
+        Stress along the side that ends there and along the one that begins [MPa],
+        (n_cases, n_sides, 2), and whether they are known (n_sides,).
     """
     after = chains.following
     turn = chains.turn
-    open_ = (turn >= LEAST_TURN) & (turn <= math.pi - LEAST_TURN) & ~disturbed
-    open_ &= chains.same_wall & ~held.any(axis=1) & ~held[after].any(axis=1)
-    n1, n2 = chains.normals[:, 2], chains.normals[after, 0]
+    known = (turn >= LEAST_TURN) & (turn <= math.pi - LEAST_TURN) & ~disturbed
+    known &= chains.same_wall & ~held.any(axis=1) & ~held[after].any(axis=1)
+    along = np.zeros((*traction.shape[:2], 2))
+    some = np.flatnonzero(known)
+    then = after[some]
+    # θ runs from the side that begins (0) to the one that ends (ω)
+    faces = ((0.0 * turn[some], then, 0), (math.pi - turn[some], some, 2))
+    rows, right = [], []
+    for theta, side, place in faces:
+        one, nil = np.ones_like(theta), np.zeros_like(theta)
+        c, s = np.cos(2.0 * theta), np.sin(2.0 * theta)
+        rows += [np.stack(row, -1) for row in ((c, s, theta, one), (-2.0 * s, 2.0 * c, one, nil))]
+        pull = traction[:, side, place]
+        right.append(0.5 * (pull * chains.normals[side, place]).sum(axis=-1))
+        right.append((pull * chains.tangents[side, place]).sum(axis=-1))
+    amplitudes = np.linalg.solve(np.stack(rows, axis=1), np.stack(right, axis=-1)[..., None])
+    for k, (theta, _, _) in enumerate(faces):
+        c, s = np.cos(2.0 * theta), np.sin(2.0 * theta)
+        factors = 2.0 * np.stack([-c, -s, theta, np.ones_like(theta)], axis=-1)
+        along[:, some, 1 - k] = (amplitudes[..., 0] * factors).sum(axis=-1)
+    return along, known
+
+
+def split_corners(chains: BoundaryChains, traction: Floats, known: Bools) -> Bools:
+    """Corners whose stress is known but differs on the two sides, by the side that ends there,
+    (n_sides,).
+
+    No element can show such a stress, however small it is: what the ones at the corner say is wrong
+    by the same share in every mesh.
+    """
+    after = chains.following
     t1, t2 = traction[:, :, 2], traction[:, after, 0]
+    n1, n2 = chains.normals[:, 2], chains.normals[after, 0]
     contradiction = np.abs((t1 * n2).sum(axis=-1) - (t2 * n1).sum(axis=-1))
     scale = np.abs(traction).max(axis=(1, 2, 3))[:, None]
-    known = open_ & (contradiction <= NEGLIGIBLE * scale).all(axis=0)
-    stress = np.zeros((*contradiction.shape, 3))
-    some = np.flatnonzero(open_)
-    rows = np.zeros((len(some), 4, 3))
-    for k, n in ((0, n1[some]), (2, n2[some])):
-        rows[:, k, 0], rows[:, k, 2] = n[:, 0], n[:, 1]
-        rows[:, k + 1, 1], rows[:, k + 1, 2] = n[:, 1], n[:, 0]
-    right = np.concatenate([t1[:, some], t2[:, some]], axis=-1)
-    stress[:, some] = (np.linalg.pinv(rows) @ right[..., None])[..., 0]
-    return stress, known
+    return np.asarray(known & (contradiction > NEGLIGIBLE * scale).any(axis=0))
 
 
 def mirrored_ends(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:

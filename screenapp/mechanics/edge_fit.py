@@ -52,6 +52,46 @@ def fit_at_ends(
     return ends
 
 
+def beside_corners(
+    mesh: Mesh,
+    chains: BoundaryChains,
+    joined: Bools,
+    split: Bools,
+    samples: Floats,
+    at_corner: Floats,
+) -> Floats:
+    """The samples with those beside a split corner replaced by what the next side and the corner's
+    own value say: a parabola through them.
+
+    Args:
+        joined: where the fit may run past a side's end, (n_sides,).
+        split: whether a side ends at a split corner (`corner_stress.split_corners`), (n_sides,).
+        samples: (n_cases, n_sides, n_samples) at `sample_places`.
+        at_corner: values at start and end of every side, used where a corner is split,
+            (n_cases, n_sides, 2).
+    """
+    per_side = samples.shape[2]
+    at = side_lengths(mesh, sample_places(per_side))
+    lengths = chains.lengths[:, None]
+    out = samples.copy()
+    begins = split[chains.preceding]
+    for end, corner, beyond, joins in (
+        (0, begins & ~split, chains.following, joined),
+        (1, split & ~begins, chains.preceding, joined[chains.preceding]),
+    ):
+        some = np.flatnonzero(corner & joins)
+        other = beyond[some]
+        # distances from the corner
+        own = at[some] if end == 0 else lengths[some] - at[some]
+        far = lengths[some] + (at[other] if end == 0 else lengths[other] - at[other])
+        given = np.concatenate([np.zeros((len(some), 1)), far], axis=1)
+        values = np.concatenate([at_corner[:, some, end, None], samples[:, other]], axis=2)
+        for k in range(per_side):
+            weights = fit_weights(given - own[:, k, None], np.ones(given.shape, dtype=bool), 2)
+            out[:, some, k] = (values * weights).sum(axis=-1)
+    return out
+
+
 def fit_at_middles(mesh: Mesh, samples: Floats, ends: Floats) -> Floats:
     """Values at the middle node of every side, (n_cases, n_sides).
 

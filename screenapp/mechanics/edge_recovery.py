@@ -14,8 +14,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.boundary_chains import BoundaryChains
-from screenapp.mechanics.corner_stress import known_corners, mirrored_ends
-from screenapp.mechanics.edge_fit import fit_at_ends, fit_at_middles, sample_places
+from screenapp.mechanics.corner_stress import known_corners, mirrored_ends, split_corners
+from screenapp.mechanics.edge_fit import (
+    beside_corners,
+    fit_at_ends,
+    fit_at_middles,
+    sample_places,
+)
 from screenapp.mechanics.thermal import side_free_strains
 from screenapp.model.mesh import Mesh
 from screenapp.model.solution import Solution
@@ -48,19 +53,21 @@ def recover_edge_stress(
     """
     joined = joined_sides(chains, traction, held)
     mirrored = mirrored_ends(chains, traction, held)
-    corner, known = known_corners(chains, traction, held, disturbed)
-    ends = fit_at_ends(mesh, chains, joined, mirrored, samples)
-    compliance = np.linalg.inv(hooke)
-    for end, stress, given in (
-        (1, corner, known),
-        (0, corner[:, chains.preceding], known[chains.preceding]),
-    ):
-        stretch = _along(
-            (stress[..., None, :] @ compliance)[..., 0, :], chains.tangents[:, 2 * end], 0.5
-        )
-        ends[:, :, end] = np.where(given, stretch, ends[:, :, end])
-    strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
     normal, shear = edge_tractions(chains, traction, held, inside)
+    corner, known = known_corners(chains, traction, held, disturbed)
+    before = chains.preceding
+    stretch = np.stack(
+        [
+            edge_stretch(corner[:, before, 1], normal[:, :, 0], hooke),
+            edge_stretch(corner[:, :, 0], normal[:, :, 2], hooke),
+        ],
+        axis=2,
+    )
+    split = split_corners(chains, traction, known)
+    samples = beside_corners(mesh, chains, joined, split, samples, stretch)
+    ends = fit_at_ends(mesh, chains, joined, mirrored, samples)
+    ends = np.where(np.stack([known[before], known], axis=1), stretch, ends)
+    strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
     side = edge_stress(strain, normal, shear, chains, hooke)
     # the support's side takes over what the side that it mirrors knows better
     at_start, at_end = np.flatnonzero(mirrored[:, 0]), np.flatnonzero(mirrored[:, 1])
@@ -69,15 +76,10 @@ def recover_edge_stress(
     return side
 
 
-def _along(tensor: Floats, direction: Floats, shear: float = 1.0) -> Floats:
-    """The component along unit vectors (n, 2) of tensors (..., n, 3), xx, yy, xy.
-
-    `shear` is 0.5 for strains, whose last component is γ.
-    """
-    x, y = direction[:, 0], direction[:, 1]
-    return np.asarray(
-        tensor[..., 0] * x * x + tensor[..., 1] * y * y + 2.0 * shear * tensor[..., 2] * x * y
-    )
+def edge_stretch(along: Floats, normal: Floats, hooke: Floats) -> Floats:
+    """εt from the stresses along and across an edge, (n_cases, n_sides) each [MPa]."""
+    d11, d12 = hooke[..., 0, 0], hooke[..., 0, 1]  # isotropic: the same along any direction
+    return np.asarray((d11 * along - d12 * normal) / (d11**2 - d12**2))
 
 
 def joined_sides(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:

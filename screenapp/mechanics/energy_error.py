@@ -92,7 +92,12 @@ def energy_error(
 
 
 def pointwise_jump(
-    mesh: Mesh, own: Floats, nodal: Floats, side: Floats, poisson: float = 0.0
+    mesh: Mesh,
+    own: Floats,
+    nodal: Floats,
+    side: Floats,
+    poisson: Floats | float = 0.0,
+    split: Ints | None = None,
 ) -> Floats:
     """Largest gap at each node between the recovered von Mises stress and the elements' own.
 
@@ -100,7 +105,10 @@ def pointwise_jump(
         own: each element's stress carried to its nine nodes, (n_cases, n_elements, 9, 3) [MPa].
         nodal: recovered stresses, (n_cases, n_fields, 3) [MPa].
         side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
-        poisson: ν in plane strain, else 0.
+        poisson: ν in plane strain, else 0: one for all or one for each element, (n_elements, 1).
+        split: nodes of split corners (`corner_stress.split_corners`), where the elements' own
+            stress is wrong in every mesh: those at such a corner do not count, and the corner takes
+            the largest gap of their other corners.
 
     Returns:
         (n_cases, n_fields) [MPa], in the numbers of `Mesh.field_quads`.
@@ -108,6 +116,12 @@ def pointwise_jump(
     recovered = von_mises(element_nodal(mesh, nodal, side), poisson)
     gap = np.abs(von_mises(own, poisson) - recovered)
     jump = np.zeros((len(nodal), len(mesh.field_nodes)))
+    at_split = np.isin(mesh.quads[:, :4], [] if split is None else split)
+    blind = at_split.any(axis=1)
+    quads = mesh.field_quads
     for case in range(len(nodal)):
-        np.maximum.at(jump[case], mesh.field_quads.ravel(), gap[case].ravel())
+        np.maximum.at(jump[case], quads[~blind].ravel(), gap[case, ~blind].ravel())
+        around = np.where(at_split[blind], 0.0, jump[case, quads[blind, :4]]).max(axis=1)
+        corners = quads[blind, :4][at_split[blind]]
+        np.maximum.at(jump[case], corners, np.repeat(around, at_split[blind].sum(axis=1)))
     return jump

@@ -13,7 +13,6 @@ from numpy.typing import ArrayLike, NDArray
 
 from screenapp.mechanics import shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
-from screenapp.mechanics.elasticity import wall_material
 from screenapp.mechanics.element_walls import element_hooke
 from screenapp.mechanics.energy_error import rim_nodal
 from screenapp.mechanics.interface_reading import other_hands, zones_at
@@ -21,6 +20,7 @@ from screenapp.mechanics.locate import PointLocator
 from screenapp.mechanics.strain_displacement import strains_at
 from screenapp.model.curves import Arc, Segment
 from screenapp.model.mesh import Mesh
+from screenapp.model.out_of_plane import out_of_plane_ratios
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution, StressField, von_mises
@@ -56,9 +56,8 @@ class PointReader:
     def __init__(
         self, part: Part, shape: Shape, mesh: Mesh, solution: Solution, stress: StressField
     ) -> None:
-        material = wall_material(part)
         self._hooke = element_hooke(part, mesh)
-        self._poisson = material.poissons_ratio if part.wall.state == "plane strain" else 0.0
+        self._poisson = out_of_plane_ratios(part)
         self._shape, self._mesh, self._solution, self.stress = shape, mesh, solution, stress
         self.locator = PointLocator(mesh)
         self._chains = boundary_chains(shape, mesh)
@@ -79,12 +78,17 @@ class PointReader:
         Returns:
             (n_cases, n, 3) and (n_cases, n, 2), NaN off the part.
         """
+        return self.read_with_zones(points)[:2]
+
+    def read_with_zones(self, points: ArrayLike) -> tuple[Floats, Floats, Ints]:
+        """As `read`, and the zone whose stress it is (-1: the wall itself), (n_cases, n)."""
         points = np.asarray(points, dtype=float).reshape(-1, 2)
         element, local = self.locator.locate(points)
         side, place = self._on_boundary(points, element)
         n_cases = len(self.stress.nodal)
         stress = np.full((n_cases, len(points), 3), np.nan)
         displacement = np.full((n_cases, len(points), 2), np.nan)
+        zones = np.repeat(self._mesh.element_zones[element][None], n_cases, axis=0)
         hit = np.flatnonzero(element >= 0)
         quads, fields = self._mesh.quads[element[hit]], self._mesh.field_quads[element[hit]]
         shapes = shape_functions.values(9, local[hit])[:, None, :]
@@ -100,11 +104,13 @@ class PointReader:
         ):
             nodal = self.stress.nodal[:, self._mesh.field_quads[other]]
             rival = (shape_functions.values(9, at[None]) @ nodal)[:, 0]
-            stronger = self._size(rival) > self._size(stress[:, who])
+            zone = self._mesh.element_zones[other]
+            stronger = self._size(rival, zone) > self._size(stress[:, who], zones[:, who])
             stress[:, who] = np.where(stronger[:, None], rival, stress[:, who])
+            zones[:, who] = np.where(stronger, zone, zones[:, who])
         on = np.flatnonzero((side >= 0) & (element >= 0))
-        stress[:, on] = self._edge_values(side[on], place[on])
-        return stress, displacement
+        stress[:, on], zones[:, on] = self._edge_values(side[on], place[on])
+        return stress, displacement, zones
 
     def zones_at(self, points: ArrayLike) -> list[tuple[int, ...]]:
         """The zones that meet at each point (-1 for the wall itself); none off the part."""
@@ -132,8 +138,8 @@ class PointReader:
         element, _ = self.locator.locate(points)
         return self._on_boundary(points, element)
 
-    def _size(self, stress: Floats) -> Floats:
-        return von_mises(stress, self._poisson)
+    def _size(self, stress: Floats, zones: Ints) -> Floats:
+        return von_mises(stress, self._poisson[zones + 1])
 
     def _on_boundary(self, points: Floats, element: Ints) -> tuple[Ints, Floats]:
         """As `on_boundary`, looking only at points in elements at the rim."""
@@ -162,9 +168,11 @@ class PointReader:
             side[near[better]], place[near[better]] = own[k[better]], along[better]
         return side, place
 
-    def _edge_values(self, side: Ints, place: Floats) -> Floats:
-        """Edge stresses (n_cases, n, 3) at places 0 to 1 along sides."""
+    def _edge_values(self, side: Ints, place: Floats) -> tuple[Floats, Ints]:
+        """Edge stresses (n_cases, n, 3) at places 0 to 1 along sides, and their zones."""
         values = self.stress.side
+        behind = self._mesh.element_zones[self._mesh.sides[:, 0]]
+        zones = np.repeat(behind[side][None], len(values), axis=0)
         found = (_quadratic(place) @ values[:, side])[:, :, 0]
         # exactly at a sharp corner the other side has a say
         length = self._chains.lengths[side]
@@ -173,9 +181,11 @@ class PointReader:
         after, before = self._chains.following[side], self._chains.preceding[side]
         for here, other, k in ((at_end, after, 0), (at_start, before, 2)):
             rival = values[:, other[here], k]
-            stronger = self._size(rival) > self._size(found[:, here])
+            zone = behind[other[here]]
+            stronger = self._size(rival, zone) > self._size(found[:, here], zones[:, here])
             found[:, here] = np.where(stronger[..., None], rival, found[:, here])
-        return np.asarray(found)
+            zones[:, here] = np.where(stronger, zone, zones[:, here])
+        return np.asarray(found), zones
 
 
 def nearest_parameters(curve: AnyCurve, points: Floats) -> Floats:

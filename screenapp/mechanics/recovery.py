@@ -14,7 +14,7 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics import constraints, loads, shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
-from screenapp.mechanics.corner_stress import disturbed_corners
+from screenapp.mechanics.corner_stress import disturbed_corners, known_corners, split_corners
 from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
 from screenapp.mechanics.element_walls import element_hooke, element_thickness, hooke_of
 from screenapp.mechanics.energy_error import energy_error
@@ -29,6 +29,7 @@ from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution, StressField
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 
 
 def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressField:
@@ -62,6 +63,15 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     nodal = with_edges(mesh, np.where(reached[:, None], fitted, inside), side)
     error = energy_error(mesh, solution, hooke, nodal, side, thickness)
     return StressField(nodal, side, error)
+
+
+def split_corner_nodes(part: Part, shape: Shape, mesh: Mesh) -> Ints:
+    """Nodes of corners whose stress differs on the two sides (`corner_stress.split_corners`)."""
+    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in loadings(part)])
+    held = constraints.held_sides(part, shape, mesh)
+    chains = boundary_chains(shape, mesh)
+    _, known = known_corners(chains, traction, held, disturbed_corners(part, mesh))
+    return np.asarray(mesh.side_nodes[split_corners(chains, traction, known), 2])
 
 
 def extrapolated_stress(mesh: Mesh, solution: Solution, hooke: Floats) -> Floats:

@@ -2,7 +2,7 @@
 
 A sharp re-entrant corner, the end of a support, a corner or end of a change of thickness, a force
 or a support at a point: there the stress grows with every refinement, and the number on any one
-mesh means nothing.
+mesh means nothing.  Where a shear load stops it grows as well, but slowly (`shear_ends`).
 """
 
 from __future__ import annotations
@@ -58,7 +58,20 @@ def singular_spots(part: Part, shape: Shape) -> tuple[SingularSpot, ...]:
         for s in _junctions(part, shape)
         if all(math.dist(s.at, end) > 1e-6 * shape.size for end in ends)
     ]  # at an interface the fan of walls says more
-    return (*spots, *at_zones, *_points(part, shape))
+    spots += [*at_zones, *_points(part, shape)]
+
+    def known(spot: SingularSpot) -> bool:
+        return any(
+            s.case in ("", spot.case) and math.dist(s.at, spot.at) < 1e-6 * shape.size
+            for s in spots
+        )
+
+    def face(piece: int, start: bool) -> Face:
+        tangent = shape.curves[piece].curve.tangent(0.0 if start else 1.0)
+        return _against(kinds[piece], tangent if start else -tangent)
+
+    slow = shear_ends(part, shape, _angles(shape), face)
+    return (*spots, *(spot for spot in slow if not known(spot)))
 
 
 def faces(part: Part, shape: Shape) -> list[Held]:
@@ -111,28 +124,33 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
     kinds = faces(part, shape)
     named = {point: corner for corner, point in shape.sharp_corners}
     spots: list[SingularSpot] = []
+    for i, j, angle in _angles(shape):
+        before, after = shape.curves[i], shape.curves[j]
+        if abs(angle - math.pi) < _SMOOTH and kinds[i] == kinds[j]:
+            continue
+        # the wedge opens from the piece that leaves the corner, the material on its left
+        sides = (
+            _against(kinds[j], after.curve.tangent(0.0)),
+            _against(kinds[i], -before.curve.tangent(1.0)),
+        )
+        rate = growth_rate(angle, sides, poisson, part.wall.state)
+        if rate < _LEAST_RATE:
+            continue
+        x, y = after.curve.start
+        corner = next((c for p, c in named.items() if math.dist(p, (x, y)) < 1e-9 * shape.size), "")
+        ids = tuple(dict.fromkeys(k for k in (corner, before.feature, after.feature) if k))
+        spots.append(_junction_spot(part, ids, corner, (x, y), angle, rate, kinds[i], kinds[j]))
+    return spots
+
+
+def _angles(shape: Shape) -> list[tuple[int, int, float]]:
+    """Every piece of the boundary, the one after it, and the angle of the material between."""
+    found: list[tuple[int, int, float]] = []
     for first, last in shape.loops:
         for i in range(first, last):
             j = i + 1 if i + 1 < last else first
-            before, after = shape.curves[i], shape.curves[j]
-            angle = _inside_angle(before.curve, after.curve)
-            if abs(angle - math.pi) < _SMOOTH and kinds[i] == kinds[j]:
-                continue
-            # the wedge opens from the piece that leaves the corner, the material on its left
-            sides = (
-                _against(kinds[j], after.curve.tangent(0.0)),
-                _against(kinds[i], -before.curve.tangent(1.0)),
-            )
-            rate = growth_rate(angle, sides, poisson, part.wall.state)
-            if rate < _LEAST_RATE:
-                continue
-            x, y = after.curve.start
-            corner = next(
-                (c for p, c in named.items() if math.dist(p, (x, y)) < 1e-9 * shape.size), ""
-            )
-            ids = tuple(dict.fromkeys(k for k in (corner, before.feature, after.feature) if k))
-            spots.append(_junction_spot(part, ids, corner, (x, y), angle, rate, kinds[i], kinds[j]))
-    return spots
+            found.append((i, j, _inside_angle(shape.curves[i].curve, shape.curves[j].curve)))
+    return found
 
 
 def _inside_angle(before: Curve, after: Curve) -> float:
@@ -218,10 +236,8 @@ def _points(part: Part, shape: Shape) -> list[SingularSpot]:
                     f"corner {support.on}",
                 )
             )
-    free = [held == "free" for held in faces(part, shape)]
     for case in loadings(part):
         spots += _point_loads(case, corners)
-        spots += shear_ends(part, shape, case, free)
     return spots
 
 

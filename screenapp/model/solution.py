@@ -86,10 +86,11 @@ class StressField:
     energy_error: Floats
 
 
-def von_mises(stress: Floats, poisson: float = 0.0) -> Floats:
+def von_mises(stress: Floats, poisson: Floats | float = 0.0) -> Floats:
     """Von Mises stress [MPa] of (..., 3) stresses.
 
-    `poisson` is zero for plane stress; for plane strain give ν, so that σz = ν (σx + σy) counts.
+    `poisson` is zero for plane stress; for plane strain give ν, so that σz = ν (σx + σy) counts:
+    one for all, or of a shape that broadcasts against (...).
     """
     sx, sy, txy = stress[..., 0], stress[..., 1], stress[..., 2]
     sz = poisson * (sx + sy)
@@ -97,7 +98,7 @@ def von_mises(stress: Floats, poisson: float = 0.0) -> Floats:
     return np.asarray(np.sqrt(0.5 * squares + 3.0 * txy**2))
 
 
-def tresca(stress: Floats, poisson: float = 0.0) -> Floats:
+def tresca(stress: Floats, poisson: Floats | float = 0.0) -> Floats:
     """Tresca stress [MPa] of (..., 3) stresses: the largest principal stress less the smallest.
 
     The one across the wall counts: zero in plane stress, ν (σx + σy) in plane strain, for which

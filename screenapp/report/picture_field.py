@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from screenapp.model.allowables import allowables
 from screenapp.model.estimate_text import estimate_text, unit_of, value_text
 from screenapp.model.findings import CaseFindings, Fields, Findings, LimitFindings
+from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import DisplacementLimit, Part, Point, StressLimit
 from screenapp.model.solution import principal, tresca, von_mises
 from screenapp.report import colours
@@ -76,17 +77,10 @@ def measured(part: Part, fields: Fields, case: int, measure: str) -> Floats:
     principal stress."""
     stress = fields.stress.nodal[case]
     if measure == "von_mises":
-        return von_mises(stress, out_of_plane_ratio(part))
+        return von_mises(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
     if measure == "tresca":
-        return tresca(stress, out_of_plane_ratio(part))
+        return tresca(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
     return np.maximum(principal(stress)[0], 0.0)
-
-
-def out_of_plane_ratio(part: Part) -> float:
-    """What `von_mises` needs to count σz: Poisson's ratio in plane strain, else 0."""
-    if part.wall.state == "plane strain" and part.material is not None:
-        return part.material.poissons_ratio
-    return 0.0
 
 
 def _utilisation(

@@ -11,9 +11,9 @@ import numpy as np
 from screenapp.model.atomic_write import write_atomically
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields
+from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import Part
 from screenapp.model.solution import von_mises
-from screenapp.report.picture_field import out_of_plane_ratio
 
 
 def write_vtu(part: Part, fields: Fields, path: Path) -> None:
@@ -24,8 +24,8 @@ def write_vtu(part: Part, fields: Fields, path: Path) -> None:
     written once for each zone, since the stress jumps there; the zone of each element, where there
     are any, is `zone` (0 for the wall itself).
     """
-    poisson = out_of_plane_ratio(part)
     mesh = fields.mesh
+    poisson = out_of_plane_ratio(part, mesh.field_zones)
     nodes = mesh.field_nodes
     points = np.column_stack([mesh.nodes[nodes], np.zeros(len(nodes))])
     at_nodes: dict[str, object] = {}

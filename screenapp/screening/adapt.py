@@ -1,8 +1,9 @@
 """The sizes of the next mesh, from what the last one shows.
 
 Two criteria, the smaller size wins: every element should carry the same share of the energy error
-(Zienkiewicz & Zhu 1987, exponent 1/(p+1)), and where the stress is above 0.6 of the peak the
-pointwise gap between the recovered and the elements' own stress should be a set share of the peak.
+(Zienkiewicz & Zhu 1987, exponent 1/(p+1)), and where the stress is above 0.6 of the case's level
+the pointwise gap between the recovered and the elements' own stress should be a set share of that
+level; what lies round singular places does not count.
 Where a peak or a reading is not settled, the mesh goes on to be refined by what its band exceeds.
 """
 
@@ -15,14 +16,13 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.singular_spots import SingularSpot
+from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import CaseFindings, Estimate, Reading
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import measure
-from screenapp.screening.probes import LEAST_SCALE
 from screenapp.screening.structural import reading_places
 
 Floats = NDArray[np.float64]
@@ -61,14 +61,10 @@ def targets(
 ) -> tuple[Target, ...]:
     """Where the next mesh must be as fine or finer for the sake of a peak or a reading."""
     found: list[Target] = []
-    tops: dict[str, float] = {}
     for case in cases:
-        top = case.peaks[0].estimate.value if case.peaks else 0.0
-        tops[case.case] = top
         for peak in case.peaks:
             if peak.estimate.trust != "rising":
-                allowed = part.mesh.tolerance * max(peak.estimate.value, 0.5 * top)
-                found.append(Target(peak.at, _excess(peak.estimate, allowed)))
+                found.append(Target(peak.at, _excess(peak.estimate, peak.allowed or 0.0)))
             beside = peak.structural
             if beside is not None:
                 excess = _excess(beside, part.mesh.tolerance * abs(beside.value))
@@ -79,8 +75,7 @@ def targets(
         stresses = [e for name, e in reading.values.items() if not name.startswith("u_")]
         if any(e.trust == "rising" for e in stresses):
             continue
-        scale = max(reading.values["von_mises"].value, LEAST_SCALE * tops.get(reading.case, 0.0))
-        worst = max(_excess(e, part.mesh.tolerance * scale) for e in stresses)
+        worst = max(_excess(e, reading.allowed or 0.0) for e in stresses)
         found.append(Target(reading.at, worst))
     return tuple(found)
 
@@ -109,7 +104,7 @@ def wanted_sizes(
         watched: numbers that somebody waits for.
     """
     mesh = last.fields.mesh
-    size = nodal_sizes(last)
+    size = last.node_sizes
     factor = np.minimum(_energy_factor(part, last), _point_factor(part, last))
     wanted = size * np.clip(factor, FACTOR_LEAST, FACTOR_MOST)
     p = order(last.fields.solution.element)
@@ -121,6 +116,8 @@ def wanted_sizes(
             shrink = min(0.7, max(FACTOR_LEAST, target.excess ** (-1.0 / p)))
         wanted[near] = np.minimum(wanted[near], shrink * size[near])
     for spot, first in zip(spots, first_sizes, strict=True):
+        if spot.creep > 0.0:
+            continue  # its growth is known, and too slow to be seen
         far = np.hypot(*(mesh.nodes - spot.at).T)
         here = int(np.argmin(far))
         floor = first * _SPOT_LEAST
@@ -140,14 +137,6 @@ def energy_goal(tolerance: float) -> float:
     return 0.25 * float(np.sqrt(tolerance))
 
 
-def nodal_sizes(last: Pass) -> Floats:
-    """Smallest size of the elements round each node [mm]."""
-    mesh = last.fields.mesh
-    size = np.full(mesh.n_nodes, np.inf)
-    np.minimum.at(size, mesh.quads, np.broadcast_to(last.sizes[:, None], mesh.quads.shape))
-    return size
-
-
 def _energy_factor(part: Part, last: Pass) -> Floats:
     mesh = last.fields.mesh
     error = last.fields.stress.energy_error.max(axis=0)  # the worst case counts
@@ -164,12 +153,12 @@ def _point_factor(part: Part, last: Pass) -> Floats:
     p = order(last.fields.solution.element)
     factor = np.full(mesh.n_nodes, np.inf)
     for k in range(len(loadings(part))):
-        value = measure("von_mises", last.fields.stress.nodal[k], part)  # (n_fields,)
-        peak = last.measure_max("von_mises", k)
-        if peak <= 0.0:
+        value = measure("von_mises", last.fields.stress.nodal[k], part, mesh.field_zones)
+        level = last.level("von_mises", k)
+        if level <= 0.0:
             continue
-        high = value > HIGH_SHARE * peak
-        goal = part.mesh.tolerance * peak
+        high = (value > HIGH_SHARE * level) & ~last.round_spots(k)[mesh.field_nodes]
+        goal = part.mesh.tolerance * level
         doubt = np.maximum(last.doubt[k], 1e-3 * goal)
         np.minimum.at(factor, mesh.field_nodes[high], (goal / doubt[high]) ** (1.0 / p))
     return factor

@@ -10,7 +10,8 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics.free_body import centroid, section_forces, span_thickness
 from screenapp.mechanics.point_reading import ON_CURVE
-from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.mechanics.singular_spot import SingularSpot, spot_at
+from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.mechanics.straight_cut import StraightCut, straight_cut
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import (
@@ -25,14 +26,13 @@ from screenapp.model.part import Cut, Part
 from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass, passes_of
 from screenapp.screening.peaks import ON_BOUNDARY, measure, on_boundary
-from screenapp.screening.spots import spot_at
 from screenapp.screening.trust import Sample, half_band, judge
 
 Floats = NDArray[np.float64]
 _Judge = Callable[[Sequence[float], float], Estimate]
 
 _LEAST_SCALE = 0.05
-"""A stress on the cut is judged against at least this share of the case's largest."""
+"""A stress on the cut is judged against at least this share of the case's level."""
 
 
 NEAR_INTERFACE = 3.0 * ON_CURVE
@@ -101,7 +101,8 @@ def _lines(part: Part, shape: Shape, this: Pass, line: StraightCut) -> list[_Lin
         lengthwise = np.stack(
             [s[:, 0] * d[0] + s[:, 2] * d[1], s[:, 2] * d[0] + s[:, 1] * d[1]], -1
         )
-        values = np.stack([across @ n, lengthwise @ d, across @ d, measure("von_mises", s, part)])
+        size = measure("von_mises", s, part, read.zones[k])
+        values = np.stack([across @ n, lengthwise @ d, across @ d, size])
         out.append(
             _Line(values.reshape(4, *grid), read.doubt[k].reshape(grid), read.size.reshape(grid))
         )
@@ -120,7 +121,7 @@ def _cut(
 ) -> CutFindings:
     case = loadings(part)[k]
     last = passes[-1].fields
-    largest_of_case = passes[-1].measure_max("von_mises", k)
+    level = passes[-1].level("von_mises", k)
     applied = section_forces(part, shape, last.mesh, last.solution, k, line)
     t = span_thickness(part, line)[:, None]
     middle = centroid(part, line)
@@ -135,11 +136,11 @@ def _cut(
     shear = [float((t * line.weights * r.values[2]).sum()) for r in read]
     moment = [float((t * line.weights * arm * r.values[0]).sum()) for r in read]
     force = max(float(np.hypot(normal[-1], shear[-1])), abs(moment[-1]) / line.length)
-    least = _LEAST_SCALE * largest_of_case * float((t * line.weights).sum())
+    least = _LEAST_SCALE * level * float((t * line.weights).sum())
     force = max(force, least)
-    largest, where, why = _largest(part, shape, line, read, spots, case.id, largest_of_case)
+    largest, where, why = _largest(part, shape, line, read, spots, case.id, level)
     spans = tuple(
-        _span(part, line, read, i, judged, largest_of_case, _beam(part, line, applied, i))
+        _span(part, line, read, i, judged, level, _beam(part, line, applied, i))
         for i in range(len(line.spans))
     )
     return CutFindings(
@@ -166,7 +167,7 @@ def _largest(
     read: Sequence[_Line],
     spots: Sequence[SingularSpot],
     case: str,
-    largest_of_case: float,
+    level: float,
 ) -> tuple[Estimate, float, str]:
     """Largest von Mises stress on the cut, its distance from the start, why it is not settled."""
     last = read[-1]
@@ -181,8 +182,9 @@ def _largest(
         )
         for r in read
     ]
-    scale = max(samples[-1].value, _LEAST_SCALE * largest_of_case)
-    estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
+    scale = max(samples[-1].value, _LEAST_SCALE * level)
+    rate, creep = (spot.rate, spot.creep) if spot else (0.0, 0.0)
+    estimate = judge(samples, part.mesh.tolerance, scale, rate, creep)
     why = ""
     if estimate.trust == "rising":
         why = spot.why if spot else "the stress here keeps rising as the mesh is refined"
@@ -197,7 +199,7 @@ def _span(
     read: Sequence[_Line],
     i: int,
     judged: _Judge,
-    largest_of_case: float,
+    level: float,
     beam: tuple[float, float] | None,
 ) -> CutSpan:
     """One stretch of material: curves with bands, membrane and bending part."""
@@ -206,8 +208,8 @@ def _span(
     off = s - line.spans[i].mean()
     membrane = [float((w * r.values[0, i]).sum() / long) for r in read]
     bending = [float((w * off * r.values[0, i]).sum() * 6.0 / long**2) for r in read]
-    scale = max(abs(membrane[-1]), abs(bending[-1]), _LEAST_SCALE * largest_of_case)
-    least = _LEAST_SCALE * largest_of_case
+    scale = max(abs(membrane[-1]), abs(bending[-1]), _LEAST_SCALE * level)
+    least = _LEAST_SCALE * level
     n = len(s)
     bands: dict[str, tuple[float, ...]] = {}
     for q, name in enumerate(CUT_QUANTITIES):

@@ -8,12 +8,13 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.mechanics.singular_spot import SingularSpot, spot_at
+from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.fatigue import (
     FatigueFigures,
@@ -25,17 +26,14 @@ from screenapp.model.fatigue import (
 from screenapp.model.findings import Estimate, LimitFindings, Verdict
 from screenapp.model.part import FatigueLimit, Material, Part, Point
 from screenapp.model.shape import Shape
-from screenapp.model.solution import StressField, principal
+from screenapp.model.solution import principal
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import RawPeak, find, place_in_words
-from screenapp.screening.spots import spot_at
+from screenapp.screening.peaks import REACH, RawPeak, place_in_words
 from screenapp.screening.trust import Sample, judge
 from screenapp.screening.use import verdict_on
 
 Floats = NDArray[np.float64]
 
-_REACH = 2.5
-"""Places nearer than so many elements to each other, or to a singular one, count as one."""
 
 MEANS = {"goodman": "Goodman", "smith_watson_topper": "Smith, Watson and Topper"}
 
@@ -133,42 +131,35 @@ def _swings(limit: FatigueLimit, part: Part, shape: Shape, passes: Sequence[Pass
     cases = {limit.case, limit.other or limit.case}
     found: list[tuple[RawPeak, SingularSpot | None, list[Sample], float, float, str]] = []
     taken: set[Point] = set()
-    for peak in _places(part, shape, passes[-1], a, b):
-        near = [s for c in cases if (s := spot_at(spots, peak.at, c, _REACH * peak.size))]
+    for peak in _places(passes[-1], a, b):
+        near = [s for c in cases if (s := spot_at(spots, peak.at, c, REACH * peak.size))]
         spot = min(near, key=lambda s: math.dist(s.at, peak.at), default=None)
         if spot is not None and spot.at in taken:
             continue
         if spot is not None:
             taken.add(spot.at)
         found.append((peak, spot, *_history(limit, part, shape, passes, peak, a, b)))
-    most = max((samples[-1].value for _, _, samples, *_ in found), default=0.0)
+    # what has no finite value is no measure for the rest
+    most = max((samples[-1].value for _, spot, samples, *_ in found if not spot), default=0.0)
     swings: list[_Swing] = []
     for peak, spot, samples, amplitude, mean, notch in found:
         if samples[-1].value <= 0.0:
             continue
         scale = max(samples[-1].value, 0.5 * most)
-        used = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
+        rate, creep = (spot.rate, spot.creep) if spot else (0.0, 0.0)
+        creep *= samples[-1].value / amplitude if amplitude > 0.0 else 0.0
+        used = judge(samples, part.mesh.tolerance, scale, rate, creep)
         rising = used.trust == "rising" and spot is not None
         place = spot.place if rising and spot else place_in_words(shape, peak.piece, peak.at)
         swings.append(_Swing(peak, place, spot, amplitude, mean, used, notch))
     return swings
 
 
-def _places(part: Part, shape: Shape, last: Pass, a: int, b: int | None) -> list[RawPeak]:
+def _places(last: Pass, a: int, b: int | None) -> list[RawPeak]:
     """Peaks of both cases and of the difference of their stresses, near ones once."""
     peaks = list(last.peaks("von_mises", a))
     if b is not None:
-        f = last.fields
-        swing = StressField(
-            (f.stress.nodal[a] - f.stress.nodal[b])[None],
-            (f.stress.side[a] - f.stress.side[b])[None],
-            f.stress.energy_error[:1],
-        )
-        peaks = [
-            *find("von_mises", part, shape, replace(f, stress=swing), 0),
-            *peaks,
-            *last.peaks("von_mises", b),
-        ]
+        peaks = [*last.swing_peaks(a, b), *peaks, *last.peaks("von_mises", b)]
     kept: list[RawPeak] = []
     for peak in peaks:
         if all(math.dist(peak.at, k.at) > peak.size for k in kept):

@@ -1,7 +1,8 @@
 """Separate maxima of a stress measure along every boundary and inside the part, on one mesh.
 
-A peak is a local maximum that stands out: it is at least `LEAST_SHARE` of the largest value of
-its case and falls by `PROMINENCE` of it before a higher one is reached.
+A peak is a local maximum that stands out: it is at least `LEAST_SHARE` of the level of its case
+(`screening/level.py`: the largest value but for singular places) and falls by `PROMINENCE` of it,
+and of its own value, before a higher one is reached.
 """
 
 from __future__ import annotations
@@ -16,16 +17,23 @@ from scipy.signal import find_peaks
 from screenapp.model.allowables import demands
 from screenapp.model.curves import Arc
 from screenapp.model.findings import Fields
+from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import Part, Point
 from screenapp.model.place_words import edge_words, point_words
 from screenapp.model.shape import BoundaryCurve, Shape
 from screenapp.model.solution import principal, tresca, von_mises
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 
 LEAST_SHARE = 0.3
 PROMINENCE = 0.05
 MOST = 12
+"""Peaks that are listed of one measure in one case; as many again at singular places."""
+
+REACH = 2.5
+"""A peak belongs to a singular place, or is one of an earlier pass, if it lies within this many of
+its elements."""
 
 _SAMPLES = np.array([0.0, 0.25, 0.5, 0.75])
 """Where each side is sampled; the next side brings the end."""
@@ -59,28 +67,31 @@ class RawPeak:
         return self.value * self.demand
 
 
-def measure(name: str, stress: Floats, part: Part) -> Floats:
+def measure(name: str, stress: Floats, part: Part, zones: Ints) -> Floats:
     """A stress measure [MPa] of (..., 3) stresses: "von_mises", "tresca", "sigma_1", or
-    "sigma_2" turned positive for compression."""
+    "sigma_2" turned positive for compression.
+
+    `zones` tells the zone of each, -1 for the wall itself; it broadcasts against (...).
+    """
     if name in ("von_mises", "tresca"):
-        material = part.material
-        strain = part.wall.state == "plane strain" and material is not None
         by = von_mises if name == "von_mises" else tresca
-        return by(stress, material.poissons_ratio if strain and material else 0.0)
+        return by(stress, out_of_plane_ratio(part, zones))
     first, second, _ = principal(stress)
     return first if name == "sigma_1" else np.negative(second)
 
 
-def find(name: str, part: Part, shape: Shape, fields: Fields, case: int) -> list[RawPeak]:
-    """Peaks of one measure in one case, largest first, at most `MOST`."""
-    sizes = fields.mesh.element_sizes
-    found = _on_boundary(name, part, shape, fields, case, sizes)
-    found += _inside(name, part, fields, case, sizes)
+def find(
+    name: str, part: Part, shape: Shape, fields: Fields, case: int, level: float
+) -> list[RawPeak]:
+    """Peaks of one measure in one case, largest first.
+
+    `level` is that of the case [MPa], by values times their demand.
+    """
+    found = _on_boundary(name, part, shape, fields, case, level)
+    found += _inside(name, part, fields, case, level)
     found.sort(key=lambda peak: -peak.counted)
-    if not found:
-        return []
-    least = LEAST_SHARE * found[0].counted
-    return [peak for peak in found if peak.counted >= least and peak.value > 0.0][:MOST]
+    least = LEAST_SHARE * level
+    return [peak for peak in found if peak.counted >= least and peak.value > 0.0]
 
 
 def side_stress(stress: Floats, t: Floats) -> Floats:
@@ -90,26 +101,26 @@ def side_stress(stress: Floats, t: Floats) -> Floats:
 
 
 def _on_boundary(
-    name: str, part: Part, shape: Shape, fields: Fields, case: int, sizes: Floats
+    name: str, part: Part, shape: Shape, fields: Fields, case: int, level: float
 ) -> list[RawPeak]:
     mesh, stress = fields.mesh, fields.stress.side[case]
     found: list[RawPeak] = []
     loop_of = np.array([piece.loop for piece in shape.curves])[mesh.side_piece]
     # both ends of a side count: at a sharp corner the two sides differ there
     places = np.concatenate([_SAMPLES, [1.0]])
-    demand = np.array(demands(name, part))[mesh.element_zones[mesh.sides[:, 0]] + 1]
-    values = measure(name, side_stress(stress, places), part) * demand[:, None]
+    zones = mesh.element_zones[mesh.sides[:, 0]]
+    demand = np.array(demands(name, part))[zones + 1]
+    values = measure(name, side_stress(stress, places), part, zones[:, None]) * demand[:, None]
     lengths = np.array([shape.curves[i].curve.length for i in mesh.side_piece])
     lengths = lengths * (mesh.side_t[:, 1] - mesh.side_t[:, 0])
-    highest = float(values.max(initial=0.0))
-    if highest <= 0.0:
+    if float(values.max(initial=0.0)) <= 0.0:
         return []
     for loop in range(len(shape.loops)):
         sides = np.flatnonzero(loop_of == loop)
         line = values[sides].ravel()
         start = np.concatenate([[0.0], np.cumsum(lengths[sides])[:-1]])
         s = (start[:, None] + places * lengths[sides][:, None]).ravel()
-        for k in _cyclic_peaks(line, PROMINENCE * highest):
+        for k in _cyclic_peaks(line, level):
             side, place = sides[k // len(places)], places[k % len(places)]
             piece = int(mesh.side_piece[side])
             t0, t1 = mesh.side_t[side]
@@ -121,15 +132,16 @@ def _on_boundary(
                     piece,
                     float(s[k]),
                     float(lengths[side]),
-                    int(mesh.element_zones[mesh.sides[side, 0]]),
+                    int(zones[side]),
                     float(demand[side]),
                 )
             )
     return found
 
 
-def _cyclic_peaks(line: Floats, prominence: float) -> list[int]:
+def _cyclic_peaks(line: Floats, level: float) -> list[int]:
     """Indices of the prominent maxima of a closed line; a constant line has one."""
+    prominence = PROMINENCE * level
     n = len(line)
     if n == 0:
         return []
@@ -137,22 +149,23 @@ def _cyclic_peaks(line: Floats, prominence: float) -> list[int]:
         return [int(np.argmax(line))]
     turned = np.roll(line, -int(np.argmin(line)))  # starts and ends at the lowest value
     closed = np.concatenate([turned, turned[:1]])
-    peaks, _ = find_peaks(closed, prominence=prominence)
+    peaks, found = find_peaks(closed, prominence=prominence)
+    peaks = peaks[found["prominences"] >= PROMINENCE * closed[peaks]]
     return sorted({int((k + np.argmin(line)) % n) for k in peaks})
 
 
-def _inside(name: str, part: Part, fields: Fields, case: int, sizes: Floats) -> list[RawPeak]:
+def _inside(name: str, part: Part, fields: Fields, case: int, level: float) -> list[RawPeak]:
     """Nodes inside whose value no neighbour exceeds, away from the boundary's elements."""
-    mesh = fields.mesh
-    demand = np.array(demands(name, part))[mesh.field_zones + 1]
-    value = measure(name, fields.stress.nodal[case], part) * demand
+    mesh, zones, sizes = fields.mesh, fields.mesh.field_zones, fields.mesh.element_sizes
+    demand = np.array(demands(name, part))[zones + 1]
+    value = measure(name, fields.stress.nodal[case], part, zones) * demand
     quads, n = mesh.field_quads, len(mesh.field_nodes)
     around = np.full(n, -np.inf)
     np.maximum.at(around, quads, value[quads].max(axis=1, keepdims=True))
     inner = np.ones(n, dtype=bool)
     inner[quads[mesh.sides[:, 0]]] = False
     inner[mesh.side_fields] = False
-    top = np.flatnonzero(inner & (value >= around) & (value > 0.5 * value.max()))
+    top = np.flatnonzero(inner & (value >= around) & (value > 0.5 * level))
     size = np.zeros(n)
     np.maximum.at(size, quads, np.broadcast_to(sizes[:, None], quads.shape))
     return [
@@ -162,7 +175,7 @@ def _inside(name: str, part: Part, fields: Fields, case: int, sizes: Floats) -> 
             -1,
             0.0,
             float(size[i]),
-            int(mesh.field_zones[i]),
+            int(zones[i]),
             float(demand[i]),
         )
         for i in top

@@ -58,7 +58,9 @@ def _solved(part: Part, shape: Shape, last: Pass, element: ElementName, progress
     mesh = last.fields.mesh
     solution = solve(changed, shape, mesh, progress)
     progress.check()
-    return Pass(changed, shape, Fields(mesh, solution, recover(changed, shape, mesh, solution)))
+    return Pass(
+        changed, shape, Fields(mesh, solution, recover(changed, shape, mesh, solution)), last.spots
+    )
 
 
 def _loss(
@@ -109,4 +111,5 @@ def _highest(this: Pass, last: Pass, peak: Peak, k: int) -> float:
     near = [p.value for p in this.peaks("von_mises", k) if math.dist(p.at, peak.at) <= reach]
     if near:
         return max(near)
-    return float(measure("von_mises", this.read(at).stress[k, 0], this.part))
+    read = this.read(at)
+    return float(measure("von_mises", read.stress[k, 0], this.part, read.zones[k, 0]))

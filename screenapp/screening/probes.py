@@ -8,7 +8,8 @@ from dataclasses import replace
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.mechanics.singular_spot import SingularSpot, spot_at
+from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Reading
 from screenapp.model.part import Part, Probe
@@ -23,14 +24,14 @@ from screenapp.screening.peaks import (
     piece_at,
     place_in_words,
 )
-from screenapp.screening.spots import sizes_at_points, spot_at
+from screenapp.screening.spots import sizes_at_points
 from screenapp.screening.trust import Sample, growth, judge, judge_creeping, worst
 
 Floats = NDArray[np.float64]
 
 LEAST_SCALE = 0.05
-"""A reading is judged against at least this share of the case's largest stress or displacement:
-how closely a place is known where next to nothing happens does not matter."""
+"""A reading is judged against at least this share of the case's level of stress, or of its largest
+displacement: how closely a place is known where next to nothing happens does not matter."""
 
 
 def read_probes(part: Part, shape: Shape, findings: Findings) -> Findings:
@@ -51,7 +52,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     zones = passes[-1].reader.zones_at(points)
     found: list[Reading] = []
     for k, case in enumerate(loadings(part)):
-        largest = passes[-1].measure_max("von_mises", k)
+        level = passes[-1].level("von_mises", k)
         moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
         creeping = sizes_at_points(spots, case.id, passes)
         for i, probe in enumerate(part.readings):
@@ -68,7 +69,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
                         case.id,
                         spot,
                         creeping,
-                        largest,
+                        level,
                         moved,
                         zones[i],
                     )
@@ -86,16 +87,16 @@ def _reading(
     case: str,
     spot: SingularSpot | None,
     creeping: Sequence[float] | None,
-    largest: float,
+    level: float,
     largest_moved: float,
     zones: tuple[int, ...],
 ) -> Reading:
-    rate = spot.rate if spot else 0.0
+    rate, creep = (spot.rate, spot.creep) if spot else (0.0, 0.0)
     piece = piece_at(shape, probe.at)
-    columns = [_quantities(part, values.stress[k, i], values.displacement[k, i]) for values in read]
+    columns = [_quantities(part, values, k, i) for values in read]
     von_mises = [column["von_mises"] for column in columns]
     # a tensor is as close as its largest parts: a component near zero has no accuracy of its own
-    stress_scale = max(von_mises[-1], LEAST_SCALE * largest)
+    stress_scale = max(von_mises[-1], LEAST_SCALE * level)
     moved = float(np.hypot(columns[-1]["u_x"], columns[-1]["u_y"]))
     moved_scale = max(moved, LEAST_SCALE * largest_moved)
     values: dict[str, Estimate] = {}
@@ -109,7 +110,7 @@ def _reading(
             Sample(abs(n) if spot else n, float(v.size[i]), float(v.doubt[k, i]))
             for n, v in zip(numbers, read, strict=True)
         ]
-        estimate = judge(samples, part.mesh.tolerance, stress_scale, rate)
+        estimate = judge(samples, part.mesh.tolerance, stress_scale, rate, creep)
         rates[name] = growth(samples)
         values[name] = _signed(estimate, numbers[-1]) if spot else estimate
     trust = worst([estimate.trust for estimate in values.values()])
@@ -164,14 +165,15 @@ def zone_words(part: Part, zones: tuple[int, ...]) -> str:
     return f", between {' and '.join(names)} (the larger stress of the two sides is given)"
 
 
-def _quantities(part: Part, stress: Floats, displacement: Floats) -> dict[str, float]:
+def _quantities(part: Part, read: PointValues, k: int, i: int) -> dict[str, float]:
+    stress = read.stress[k, i]
     first, second, _ = principal(stress)
     numbers = (
         *stress,
         first,
         second,
-        measure("von_mises", stress, part),
-        *displacement,
+        measure("von_mises", stress, part, read.zones[k, i]),
+        *read.displacement[k, i],
     )
     return dict(zip(READING_QUANTITIES, (float(n) for n in numbers), strict=True))
 

@@ -12,7 +12,8 @@ import numpy as np
 from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import recover
-from screenapp.mechanics.singular_spots import SingularSpot, singular_spots
+from screenapp.mechanics.singular_spot import SingularSpot
+from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.mechanics.solve import estimate_memory, estimate_unknowns, solve
 from screenapp.meshing.across import elements_across
 from screenapp.meshing.service import Mesher
@@ -122,7 +123,7 @@ def screen(
         progress.report(Step("reading stresses", number, (number - 0.2) / most))
         with clock.stage("recovery"):
             fields = Fields(mesh, solution, recover(part, shape, mesh, solution))
-            this = Pass(part, shape, fields)
+            this = Pass(part, shape, fields, spots)
         passes.append(this)
         summaries.append(_summary(part, this))
         if number == 1 and spots:

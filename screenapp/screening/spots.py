@@ -1,27 +1,13 @@
-"""Which singular place, if any, a peak or a probe belongs to, and what lets a part creep."""
+"""Where forces and supports act at a point, which lets a part creep."""
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterable, Sequence
 
 import numpy as np
 
-from screenapp.mechanics.singular_spots import SingularSpot
-from screenapp.model.part import Point
+from screenapp.mechanics.singular_spot import POINT_RATE, SingularSpot
 from screenapp.screening.passes import Pass
-
-POINT_RATE = 1.0
-"""Growth rate of the stress under a force at a point, where the displacement has no finite value
-either."""
-
-
-def spot_at(
-    spots: Iterable[SingularSpot], at: Point, case: str, reach: float
-) -> SingularSpot | None:
-    """The nearest singular place of a case within `reach` [mm] of a point, or None."""
-    near = [s for s in spots if s.case in ("", case) and math.dist(s.at, at) <= reach]
-    return min(near, key=lambda s: (math.dist(s.at, at), -s.rate), default=None)
 
 
 def sizes_at_points(

@@ -19,7 +19,8 @@ from collections.abc import Sequence
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.singular_spots import SingularSpot, faces
+from screenapp.mechanics.singular_spot import POINT_RATE, SingularSpot
+from screenapp.mechanics.singular_spots import faces
 from screenapp.model.curves import Curve
 from screenapp.model.findings import Estimate
 from screenapp.model.part import Part, Point
@@ -52,7 +53,8 @@ def structural_stress(
             local = _along_edge(values.stress[k], tangents)
             drawn = _WEIGHT_NEAR * local[0] - _WEIGHT_FAR * local[1]
             doubt = _WEIGHT_NEAR * values.doubt[k, 0] + _WEIGHT_FAR * values.doubt[k, 1]
-            value, near = (float(v) for v in measure(name, np.stack([drawn, local[0]]), part))
+            stresses, zones = np.stack([drawn, local[0]]), values.zones[k, :1]
+            value, near = (float(v) for v in measure(name, stresses, part, zones))
             samples.append(Sample(value, float(values.size[0]), float(doubt)))
             scale = max(abs(value), abs(near))  # of the last pass
         if not math.isfinite(samples[-1].value):
@@ -84,7 +86,7 @@ def _paths(
 
     An edge must be long enough for the far point to stay clear of its other end.
     """
-    if spot.rate >= 1.0:  # a point force or support: no toe to draw a line to
+    if spot.rate >= POINT_RATE:  # a point force or support: no toe to draw a line to
         return []
     slack = 1e-9 * shape.size
     kinds = faces(part, shape)

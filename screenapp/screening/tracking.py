@@ -7,19 +7,15 @@ from collections.abc import Sequence
 
 import numpy as np
 
-from screenapp.mechanics.singular_spots import SingularSpot
+from screenapp.mechanics.singular_spot import SingularSpot, spot_at
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Estimate, Peak
 from screenapp.model.part import Case, Part, StressLimit
 from screenapp.model.shape import Shape
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import RawPeak, feature_of, measure, place_in_words
-from screenapp.screening.spots import spot_at
+from screenapp.screening.peaks import REACH, RawPeak, feature_of, measure, place_in_words
 from screenapp.screening.structural import structural_stress
 from screenapp.screening.trust import Sample, growth, judge
-
-_REACH = 2.5
-"""A peak of an earlier pass is the same one if it lies within this many of its elements."""
 
 
 def measures(part: Part) -> tuple[str, ...]:
@@ -42,15 +38,15 @@ def track(
     case = loadings(part)[k]
     found: list[Peak] = []
     for name in measures(part):
-        raws = passes[-1].peaks(name, k)
+        level = passes[-1].counted_level(name, k)
         taken: set[tuple[float, float]] = set()
-        for raw in raws:
-            spot = spot_at(spots, raw.at, case.id, _REACH * raw.size)
+        for raw in passes[-1].peaks(name, k):
+            spot = spot_at(spots, raw.at, case.id, REACH * raw.size)
             if spot is not None:
                 if spot.at in taken:
                     continue
                 taken.add(spot.at)
-            found.append(_peak(part, shape, passes, name, k, case, raw, spot, raws[0].counted))
+            found.append(_peak(part, shape, passes, name, k, case, raw, spot, level))
     found.sort(key=lambda p: (p.quantity != "von_mises", -p.estimate.value))
     return tuple(found)
 
@@ -64,12 +60,13 @@ def _peak(
     case: Case,
     raw: RawPeak,
     spot: SingularSpot | None,
-    largest: float,
+    level: float,
 ) -> Peak:
     samples = [_sample(part, earlier, name, k, raw, spot) for earlier in passes]
-    # a peak below the largest one need not be known more closely than it matters
-    scale = max(abs(raw.value), 0.5 * largest / raw.demand)
-    estimate = judge(samples, part.mesh.tolerance, scale, spot.rate if spot else 0.0)
+    # a peak below the level of the case need not be known more closely than it matters
+    scale = max(abs(raw.value), 0.5 * level / raw.demand)
+    rate, creep = (spot.rate, spot.creep) if spot else (0.0, 0.0)
+    estimate = judge(samples, part.mesh.tolerance, scale, rate, creep)
     at, place = raw.at, place_in_words(shape, raw.piece, raw.at)
     zone = part.zones[raw.zone].id if raw.zone >= 0 else ""
     place += _zone_words(part, raw, passes[-1])
@@ -123,7 +120,7 @@ def _zone_words(part: Part, raw: RawPeak, last: Pass) -> str:
 def _why_unsettled(estimate: Estimate, spot: SingularSpot | None) -> str:
     if not math.isfinite(estimate.high):
         return "one pass alone says nothing about its accuracy"
-    if spot is not None:
+    if spot is not None and spot.creep == 0.0:
         return f"{spot.why}, but it does not clearly rise yet"
     share = (estimate.high - estimate.value) / max(abs(estimate.value), 1e-300)
     return f"its band is still ±{100.0 * share:.1f} %"
@@ -141,14 +138,15 @@ def _sample(
     near = [
         p
         for p in earlier.peaks(name, k)
-        if math.dist(p.at, raw.at) <= _REACH * max(p.size, raw.size)
+        if math.dist(p.at, raw.at) <= REACH * max(p.size, raw.size)
         and (p.piece < 0) == (raw.piece < 0)
         and p.zone == raw.zone
     ]
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))
         return Sample(best.value, _finest(best.size, size, spot), doubt)
-    return Sample(float(measure(name, values.stress[k, 0], part)), size, doubt)
+    value = measure(name, values.stress[k, 0], part, values.zones[k, 0])
+    return Sample(float(value), size, doubt)
 
 
 def _finest(of_side: float, of_element: float, spot: SingularSpot | None) -> float:

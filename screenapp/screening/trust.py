@@ -10,7 +10,8 @@ The rule joins what the numbers do with what the geometry says.  The growth rate
 * else it is *unsettled*.
 
 A displacement under a force or a support at a point creeps: it grows as the logarithm of the
-elements' size there (Flamant's solution for a force on a half-plane), too slowly for that rule.
+elements' size there (Flamant's solution for a force on a half-plane), too slowly for that rule.  So
+does the stress where a shear load stops (`mechanics/shear_ends.py`), whose growth is known.
 """
 
 from __future__ import annotations
@@ -47,7 +48,7 @@ These shares were fitted on the random parts of tests/evidence/band_parts.py (se
 far they hold on parts that were not seen is measured by tests/evidence/calibration.py."""
 
 CREEP_SPAN = 10.0
-"""The band of a creeping displacement takes in what elements so many times smaller would add."""
+"""The band of a creeping number takes in what elements so many times smaller would add."""
 
 
 @dataclass(frozen=True)
@@ -102,7 +103,11 @@ def half_band(samples: Sequence[Sample], scale: float) -> float:
 
 
 def judge(
-    samples: Sequence[Sample], tolerance: float, scale: float, expected_rate: float = 0.0
+    samples: Sequence[Sample],
+    tolerance: float,
+    scale: float,
+    expected_rate: float = 0.0,
+    creep: float = 0.0,
 ) -> Estimate:
     """Band and trust of the last of `samples`.
 
@@ -111,7 +116,10 @@ def judge(
         tolerance: relative half band at which a number counts as settled.
         scale: what the tolerance is relative to, in the number's unit.
         expected_rate: growth rate that the geometry predicts here; 0 where it predicts none.
+        creep: what theory says the number gains as the elements shrink e times; 0 for nothing.
     """
+    if creep > 0.0:
+        return _judge_growing(samples, tolerance, scale, creep)
     value = samples[-1].value
     rate = growth(samples, RATE_SPAN if expected_rate > 0.0 else 1.0)
     shrinkage = max(s.size for s in samples) / max(samples[-1].size, 1e-300)
@@ -131,8 +139,7 @@ def judge(
 def judge_creeping(samples: Sequence[Sample], tolerance: float, scale: float) -> Estimate:
     """Band and trust of a displacement [mm] in a case with a force or a support at a point.
 
-    It has no finite value where that point is truly a point.  If elements `CREEP_SPAN` times
-    smaller would add less than the tolerance, the band takes that in; else it is *rising*.
+    It has no finite value where that point is truly a point.
 
     Args:
         samples: one for each pass, oldest first; their sizes are those at the point.
@@ -140,6 +147,17 @@ def judge_creeping(samples: Sequence[Sample], tolerance: float, scale: float) ->
     """
     last = _window(samples, RATE_SPAN)
     creep = -_slope([math.log(s.size) for s in last], [s.value for s in last])
+    return _judge_growing(samples, tolerance, scale, creep)
+
+
+def _judge_growing(
+    samples: Sequence[Sample], tolerance: float, scale: float, creep: float
+) -> Estimate:
+    """Band and trust of a number that gains `creep` for ever as the elements shrink e times.
+
+    If elements `CREEP_SPAN` times smaller would add less than the tolerance, the band takes that
+    in; else it is *rising*.
+    """
     more = abs(creep) * math.log(CREEP_SPAN)
     value = samples[-1].value
     if len(samples) >= LEAST_PASSES and more > tolerance * abs(scale):

@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import Fields
+from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import Part, StressLimit
 from screenapp.model.solution import principal, tresca, von_mises
 
@@ -54,9 +55,9 @@ def _component(fields: Fields, case: int, component: str, part: Part) -> Floats:
     """One stress component in the numbers of `Mesh.field_quads`, (n_fields,)."""
     stress = fields.stress.nodal[case]
     if component == "von_mises":
-        return von_mises(stress, _poisson(part))
+        return von_mises(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
     if component == "tresca":
-        return tresca(stress, _poisson(part))
+        return tresca(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
     if component in ("sigma_1", "sigma_2"):
         return principal(stress)[0 if component == "sigma_1" else 1]
     return np.asarray(stress[:, ("sigma_x", "sigma_y", "tau_xy").index(component)])
@@ -138,10 +139,3 @@ def zone_round(fields: Fields, at: tuple[float, float]) -> Ints:
     size = float(np.hypot(*np.ptp(mesh.nodes, axis=0)))
     reach = max(ZONE_ELEMENTS * float(mesh.element_sizes[nearest]), ZONE_SHARE * size)
     return np.flatnonzero(distance <= max(reach, float(distance[nearest])))
-
-
-def _poisson(part: Part) -> float:
-    """What `von_mises` needs: ν in plane strain, else 0."""
-    if part.wall.state == "plane strain" and part.material is not None:
-        return part.material.poissons_ratio
-    return 0.0

@@ -24,7 +24,6 @@ from screenapp.model.findings import Estimate, Fields, Findings, Peak, Trust
 from screenapp.model.part import Case, FixedSupport, Part, Point, PointLoad
 from screenapp.model.shape import Shape, shape_of
 from screenapp.model.solution import principal
-from screenapp.screening.adapt import nodal_sizes
 from screenapp.screening.passes import Pass
 from screenapp.screening.peaks import measure, on_boundary, piece_at
 
@@ -33,7 +32,7 @@ REACH = 2.5
 """A peak of the finer mesh is the same one if it lies within this many elements of the last."""
 LEAST_SCALE = 0.05
 """Readings are compared on the scale that the program states: von Mises stress or movement there,
-at least this share of the largest in the case."""
+at least this share of the case's level of stress or largest movement."""
 
 Kind = Literal["peak", "boundary", "interior", "displacement"]
 
@@ -75,7 +74,7 @@ class Outcome:
 
 def finer_pass(part: Part, shape: Shape, last: Pass, mesher: Mesher) -> Pass:
     """The part on a mesh `FINER` times finer than the last one everywhere."""
-    wanted = nodal_sizes(last) / FINER
+    wanted = last.node_sizes / FINER
     sizes = adapted_sizes(
         shape, last.fields.mesh, wanted, float(wanted.min()), float(wanted.max()), 0
     )
@@ -133,7 +132,8 @@ def _of_peak(
     if near:
         truth = min(near, key=lambda p: math.dist(p.at, peak.at)).value
     else:
-        truth = float(measure(peak.quantity, fine.read(at).stress[k, 0], part))
+        read = fine.read(at)
+        truth = float(measure(peak.quantity, read.stress[k, 0], part, read.zones[k, 0]))
     singular = any(math.dist(p, peak.at) <= size for p in infinite)
     what = f"{part.cases[k].id} {peak.quantity} {peak.place}"
     return _outcome(part, what, "peak", peak.estimate, abs(truth), truth, singular)
@@ -151,11 +151,11 @@ def _of_readings(
         i, k = probes[reading.probe], cases[reading.case]
         kind: Kind = "boundary" if piece_at(shape, reading.at) >= 0 else "interior"
         stress, moved = true.stress[k, i], true.displacement[k, i]
-        von_mises = float(measure("von_mises", stress, part))
+        von_mises = float(measure("von_mises", stress, part, true.zones[k, i]))
         first, second, _ = principal(stress)
         truths = [*stress, first, second, von_mises, *moved]
         largest = float(np.hypot(*fine.fields.solution.displacements[k].T).max())
-        stress_scale = max(von_mises, LEAST_SCALE * last.measure_max("von_mises", k))
+        stress_scale = max(von_mises, LEAST_SCALE * last.level("von_mises", k))
         moved_scale = max(float(np.hypot(*moved)), LEAST_SCALE * largest)
         for (name, estimate), truth in zip(reading.values.items(), truths, strict=True):
             moves = name.startswith("u_")

@@ -19,7 +19,7 @@ from screenapp.model.part import (
     PointLoad,
     Probe,
 )
-from screenapp.screening.adapt import Target, nodal_sizes, wanted_sizes
+from screenapp.screening.adapt import Target, wanted_sizes
 from screenapp.screening.passes import Pass
 from screenapp.screening.screen import screen
 from tests.mechanics.structured import rectangle
@@ -43,7 +43,7 @@ def ratio(this: Pass, at: tuple[float, float], *watched: Target) -> float:
     """Wanted size over the present one at a point."""
     wanted = wanted_sizes(this.part, this, (), (), watched)
     node = int(np.argmin(np.hypot(*(this.fields.mesh.nodes - at).T)))
-    return float(wanted[node] / nodal_sizes(this)[node])
+    return float(wanted[node] / this.node_sizes[node])
 
 
 def test_the_mesh_stays_as_fine_where_a_number_is_settled(fine: Pass) -> None:

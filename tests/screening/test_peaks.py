@@ -12,7 +12,8 @@ from screenapp.meshing.service import Mesher
 from screenapp.model.findings import Fields
 from screenapp.model.part import Case, CircleHole, LineLoad, Part, RollerSupport, Wall
 from screenapp.model.solution import StressField
-from screenapp.screening.peaks import RawPeak, find
+from screenapp.screening.passes import Pass
+from screenapp.screening.peaks import RawPeak
 from screenapp.screening.screen import screen
 from tests.mechanics.stress_fields import solution_of
 from tests.mechanics.structured import Structured, full_ring, rectangle
@@ -37,7 +38,8 @@ def peaks_of(case: Structured, sigma_x: Scalar) -> list[RawPeak]:
         np.zeros((1, mesh.n_elements)),
     )
     still = solution_of(mesh, lambda p: 0.0 * p)
-    return find("von_mises", case.part, case.shape, Fields(mesh, still, field), 0)
+    part = replace(case.part, cases=(Case("k1", "case"),))
+    return Pass(part, case.shape, Fields(mesh, still, field)).peaks("von_mises", 0)
 
 
 def bump(x: Floats, y: Floats, x0: float, y0: float, height: float, width: float) -> Floats:

@@ -32,7 +32,11 @@ class FieldPass:
     def read(self, points: Floats) -> PointValues:
         n = len(points)
         return PointValues(
-            self.stress(points)[None], np.zeros((1, n, 2)), np.ones((1, n)), np.full(n, self.size)
+            self.stress(points)[None],
+            np.zeros((1, n, 2)),
+            np.ones((1, n)),
+            np.full(n, self.size),
+            np.full((1, n), -1),
         )
 
 

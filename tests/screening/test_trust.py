@@ -95,3 +95,16 @@ def test_slow_creep_is_settled_and_its_band_holds_ten_times_smaller_elements() -
 def test_a_displacement_far_from_the_point_is_judged_as_any_other() -> None:
     assert judge_creeping(creeping(1.0, 0.0), 0.02, 1.0) == judge(creeping(1.0, 0.0), 0.02, 1.0)
     assert judge_creeping(creeping(1.0, 0.0, 2), 0.02, 1.0).trust == "unsettled"
+
+
+def test_a_stress_that_theory_says_creeps_is_never_settled_beyond_its_tolerance() -> None:
+    """Where a shear load stops: even a steady history does not make it known."""
+    steady = history(*[100.0] * 5)
+    assert judge(steady, 0.02, 100.0).trust == "settled"
+    rising = judge(steady, 0.02, 100.0, creep=1.0)  # 2.3 MPa on a tenth of the size
+    assert rising.trust == "rising"
+    assert math.isinf(rising.high)
+    little = judge(steady, 0.02, 100.0, creep=0.5)
+    assert little.trust == "settled"
+    assert little.high - little.value >= 0.5 * math.log(10.0)
+    assert judge(steady[:2], 0.02, 100.0, creep=1.0).trust == "unsettled"
