@@ -11,6 +11,7 @@ from screenapp.model.extents import FARTHEST
 from screenapp.model.fatigue_faults import fatigue_limit_faults, fatigue_material_faults
 from screenapp.model.features import find
 from screenapp.model.joint_rules import joint_rules
+from screenapp.model.local_strain import TYPICAL, hardening_curve
 from screenapp.model.material_faults import positive
 from screenapp.model.part import (
     CircleHole,
@@ -20,6 +21,7 @@ from screenapp.model.part import (
     Limit,
     Material,
     Part,
+    StrainLimit,
     StressLimit,
     StressMeasure,
 )
@@ -33,6 +35,13 @@ def limit_faults(part: Part) -> Iterator[Fault]:
             yield from _joint_limit_faults(limit, part, where)
         elif isinstance(limit, FatigueLimit):
             yield from fatigue_limit_faults(limit, part, where)
+        elif isinstance(limit, StrainLimit) and not positive(limit.most):
+            yield Fault(
+                f"the strain limit {limit.id} is {limit.most:g}",
+                "give a strain above zero, e.g. 0.01 for 1 %",
+                f"{where}.most",
+                (limit.id,),
+            )
         if isinstance(limit, StressLimit):
             yield from _stress_limit_faults(limit, where)
         elif isinstance(limit, DisplacementLimit):
@@ -151,6 +160,14 @@ def limit_material_faults(part: Part) -> Iterator[Fault]:
                 )
             if isinstance(limit, FatigueLimit):
                 yield from fatigue_material_faults(limit, material)
+            if isinstance(limit, StrainLimit) and hardening_curve(material) is None:
+                yield Fault(
+                    f"limit {limit.id} asks for a hardening curve, which “{material.name}” has not",
+                    "give its hardening coefficient and exponent, or its strength and a family of "
+                    f"which they are known ({', '.join(TYPICAL)})",
+                    f"limits.{limit.id}",
+                    (limit.id,),
+                )
             if isinstance(limit, JointLimit):
                 yield from _foreign_material(limit, material)
 

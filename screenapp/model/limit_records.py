@@ -89,4 +89,12 @@ class FatigueLimit:
     notch: NotchRule = "none"
 
 
-Limit = StressLimit | DisplacementLimit | JointLimit | FatigueLimit
+@dataclass(frozen=True)
+class StrainLimit:
+    """Nowhere the local strain, yielding counted by Neuber's rule, is above `most` [-]."""
+
+    id: str
+    most: float = 0.01
+
+
+Limit = StressLimit | DisplacementLimit | JointLimit | FatigueLimit | StrainLimit

@@ -37,6 +37,9 @@ from screenapp.model.limit_records import (
     Limit as Limit,
 )
 from screenapp.model.limit_records import (
+    StrainLimit as StrainLimit,
+)
+from screenapp.model.limit_records import (
     StressLimit as StressLimit,
 )
 from screenapp.model.limit_records import (

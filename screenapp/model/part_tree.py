@@ -45,6 +45,7 @@ from screenapp.model.part import (
     ShearLoad,
     SlotHole,
     SpinLoad,
+    StrainLimit,
     StressLimit,
     SymmetrySupport,
     TemperatureLoad,
@@ -86,6 +87,7 @@ LIMITS: dict[str, type] = {
     "displacement": DisplacementLimit,
     "joint": JointLimit,
     "fatigue": FatigueLimit,
+    "strain": StrainLimit,
 }
 READINGS: dict[str, type] = {"probe": Probe, "cut": Cut}
 PATTERNS: dict[str, type] = {"row": RowPattern, "grid": GridPattern, "bolt circle": BoltCircle}

@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
@@ -19,6 +19,7 @@ from screenapp.model.part import (
     JointLimit,
     Limit,
     Part,
+    StrainLimit,
     StressLimit,
 )
 from screenapp.model.shape import Shape
@@ -26,6 +27,12 @@ from screenapp.screening.displacement_limits import displacement_limit_name, jud
 from screenapp.screening.fatigue_limits import fatigue_limit_name, judge_fatigue
 from screenapp.screening.joint_limits import judge_joint
 from screenapp.screening.passes import Pass
+from screenapp.screening.strain_limits import (
+    curve_at,
+    strain_limit_name,
+    strain_share,
+    strain_words,
+)
 from screenapp.screening.use import scaled
 
 MEASURE_WORDS = {
@@ -43,6 +50,8 @@ def limit_name(limit: Limit) -> str:
         return f"hole {limit.on} by {limit.rules}"
     if isinstance(limit, FatigueLimit):
         return fatigue_limit_name(limit)
+    if isinstance(limit, StrainLimit):
+        return strain_limit_name(limit)
     what = MEASURE_WORDS[limit.measure]
     against = "proof stress" if limit.against == "proof_stress" else "strength"
     rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
@@ -64,6 +73,8 @@ def judge_limits(
         for k, case in enumerate(cases):
             if isinstance(limit, StressLimit):
                 found.append(_stress(limit, part, case))
+            elif isinstance(limit, StrainLimit):
+                found.append(_strain(limit, part, case))
             elif isinstance(limit, JointLimit):
                 found += judge_joint(limit, part, case, k, shape, passes)
             else:
@@ -82,11 +93,34 @@ def _stress(limit: StressLimit, part: Part, case: CaseFindings) -> LimitFindings
         return LimitFindings(limit.id, name, case.case, trust, verdict, (0.0, 0.0), "", why)
     number = {zone.id: k + 1 for k, zone in enumerate(part.zones)}
     used = [_used(p, allowed[number.get(p.zone, 0)], limit) for p in peaks]
+    return _judge_uses(limit, name, case, used)
+
+
+def _strain(limit: StrainLimit, part: Part, case: CaseFindings) -> LimitFindings:
+    name = limit_name(limit)
+    peaks = [(p, curve_at(part, p)) for p in case.peaks if p.quantity == "von_mises"]
+    used = [_Use(p, strain_share(limit, c, p.estimate), False) for p, c in peaks if c is not None]
+    if len(used) < len(peaks):
+        why, trust = "a material has no hardening curve", Estimate(0.0, 0.0, math.inf, "unsettled")
+        at = (0.0, 0.0)
+        return LimitFindings(limit.id, name, case.case, trust, "undecided", at, "", why)
+    if not used:
+        nothing = Estimate(0.0, 0.0, 0.0, "settled")
+        return LimitFindings(limit.id, name, case.case, nothing, "holds", (0.0, 0.0), "", "")
+    found = _judge_uses(limit, name, case, used)
+    governing = next(p for p, _ in peaks if (p.at, p.place) == (found.at, found.place))
+    curve = curve_at(part, governing)
+    return replace(found, assumed=strain_words(curve, governing.estimate) if curve else "")
+
+
+def _judge_uses(limit: Limit, name: str, case: CaseFindings, used: Sequence[_Use]) -> LimitFindings:
+    """What surely fails goes before doubt, and doubt before what holds."""
     over = [u for u in used if u.share.trust == "settled" and u.share.low > 1.0]
     open_ = [
         u for u in used if u.share.trust == "rising" or (u not in over and u.share.high >= 1.0)
     ]
     largest = max(used, key=_size)
+    verdict: Verdict
     if over:
         governing = max(over, key=_size)
         verdict = "does not hold"

@@ -40,6 +40,7 @@ from screenapp.model.part import (
     ShearLoad,
     SlotHole,
     SpinLoad,
+    StrainLimit,
     StressLimit,
     SymmetrySupport,
     TemperatureLoad,
@@ -159,6 +160,7 @@ def _limits(i: int) -> st.SearchStrategy[object]:
             st.sampled_from(["goodman", "smith_watson_topper"]),
             st.sampled_from(["none", "peterson", "neuber"]),
         ),
+        st.builds(StrainLimit, name, numbers),
         st.builds(DisplacementLimit, name, numbers, st.none() | points, maybe),
     )
 

@@ -24,6 +24,7 @@ from screenapp.model.part import (
     Part,
     PrescribedSupport,
     RollerSupport,
+    StrainLimit,
     StressLimit,
 )
 from screenapp.model.solution import Reaction
@@ -279,6 +280,13 @@ def test_limits_say_what_they_allow(sheet: Sheet) -> None:
     assert sheet.document.part.limits[3] == replace(
         swing, cycles=2e5, mean="smith_watson_topper", notch="peterson"
     )
+    QTest.mouseClick(paragraph.add.field("strain"), Qt.MouseButton.LeftButton)
+    settle()
+    strain = sheet.document.part.limits[4]
+    sentence = paragraph.list.row(strain.id).sentence
+    assert sentence.text == "The local strain by Neuber's rule is nowhere above 1 %."
+    type_into(sentence.field("most"), "0.5 %")
+    assert sheet.document.part.limits[4] == StrainLimit(strain.id, 0.005)
     pick(row.sentence.field("measure"), "Tresca stress")
     assert sheet.document.part.limits[0] == replace(wanted, measure="tresca")
     pick(row.sentence.field("against"), "tensile strength")

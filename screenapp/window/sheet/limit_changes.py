@@ -8,7 +8,14 @@ from typing import Any
 from screenapp.model import edits
 from screenapp.model.combinations import loadings
 from screenapp.model.errors import ScreenappError
-from screenapp.model.part import DisplacementLimit, FatigueLimit, JointLimit, Limit, StressLimit
+from screenapp.model.part import (
+    DisplacementLimit,
+    FatigueLimit,
+    JointLimit,
+    Limit,
+    StrainLimit,
+    StressLimit,
+)
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
 
@@ -37,6 +44,11 @@ def add_fatigue_limit(document: Document) -> None:
     if not cases:
         raise ScreenappError("there is no load case yet", "load the part first")
     _add(document, "fatigue limit", FatigueLimit("", cases[0].id))
+
+
+def add_strain_limit(document: Document) -> None:
+    """At most one per cent of local strain."""
+    _add(document, "strain limit", StrainLimit(""))
 
 
 def _add(document: Document, name: str, limit: Limit) -> None:

@@ -6,7 +6,14 @@ from screenapp.model.combinations import loadings
 from screenapp.model.errors import ScreenappError
 from screenapp.model.features import place_name
 from screenapp.model.joint_rules import joint_rules
-from screenapp.model.part import CircleHole, DisplacementLimit, FatigueLimit, JointLimit, Part
+from screenapp.model.part import (
+    CircleHole,
+    DisplacementLimit,
+    FatigueLimit,
+    JointLimit,
+    Part,
+    StrainLimit,
+)
 from screenapp.window.sheet.limit_changes import LimitChange
 from screenapp.window.sheet.pieces import Choice, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
@@ -154,6 +161,17 @@ def fatigue_pieces(
         *(end("other", limit.other, True), " ", cycles, " times, amplitude times ", factor),
         *("; mean stress by ", mean, ", notches ", notch, "."),
     )
+
+
+def strain_pieces(
+    limit: StrainLimit, change: LimitChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    """The local strain stays under so much."""
+    most = q.value(
+        "most", limit.most, "share", "Most local strain", change.setter("most"),
+        field=f"limits.{limit.id}.most",
+    )  # fmt: skip
+    return ("The local strain by Neuber's rule is nowhere above ", most, ".")
 
 
 def round_holes(part: Part) -> tuple[Choice, ...]:

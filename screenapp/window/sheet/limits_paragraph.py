@@ -9,6 +9,7 @@ from screenapp.model.part import (
     JointLimit,
     Limit,
     Part,
+    StrainLimit,
     StressLimit,
 )
 from screenapp.window.sheet import changes, limit_changes
@@ -17,6 +18,7 @@ from screenapp.window.sheet.limit_sentences import (
     fatigue_pieces,
     joint_pieces,
     round_holes,
+    strain_pieces,
 )
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
@@ -78,6 +80,13 @@ class LimitsParagraph(Paragraph):
                 "+ displacement limit",
                 lambda _key: limit_changes.add_displacement_limit(self.document),
             ),
+            SEPARATOR,
+            Link(
+                "strain",
+                "+ local strain",
+                lambda _key: limit_changes.add_strain_limit(self.document),
+                "What a peak strains by where it yields",
+            ),
             *((SEPARATOR, fatigue) if part.cases else ()),
             *((SEPARATOR, joint) if round_holes(part) else ()),
         )
@@ -111,6 +120,8 @@ class LimitsParagraph(Paragraph):
             pieces = joint_pieces(part, limit, change, q)
         elif isinstance(limit, FatigueLimit):
             pieces = fatigue_pieces(part, limit, change, q)
+        elif isinstance(limit, StrainLimit):
+            pieces = strain_pieces(limit, change, q)
         else:
             pieces = self._stress(part, limit, change, q)
         return RowOf(

@@ -7,7 +7,14 @@ from PySide6.QtWidgets import QWidget
 from screenapp.model.combinations import loadings
 from screenapp.model.estimate_text import value_text
 from screenapp.model.findings import LimitFindings
-from screenapp.model.part import DisplacementLimit, FatigueLimit, JointLimit, Part, StressLimit
+from screenapp.model.part import (
+    DisplacementLimit,
+    FatigueLimit,
+    JointLimit,
+    Part,
+    StrainLimit,
+    StressLimit,
+)
 from screenapp.window.document import Document
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.sheet.quantities import Quantities
@@ -65,4 +72,6 @@ def _short_name(part: Part, found: LimitFindings) -> str:
         return found.rule or f"{limit.on} pin"
     if isinstance(limit, FatigueLimit):
         return f"fatigue, {limit.cycles:.4g} cycles"
+    if isinstance(limit, StrainLimit):
+        return f"local strain ≤ {100.0 * limit.most:.4g} %"
     return found.name
