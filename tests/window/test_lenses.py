@@ -316,7 +316,7 @@ def test_case_and_component_are_chosen_by_keys(bench: Bench) -> None:
     bench.screen()
     bench.painter.heading.stress.setFocus()
     QTest.keyClick(bench.painter.heading.stress, Qt.Key.Key_Down)
-    assert bench.document.view.stress == "sigma_1"
+    assert bench.document.view.stress == "tresca"
     bench.painter.heading.case.setFocus()
     QTest.keyClick(bench.painter.heading.case, Qt.Key.Key_Down)
     assert bench.document.view.case == 1
