@@ -1,13 +1,15 @@
 """Frames of the board while something is dragged, panned, zoomed or pointed at.
 
 Each frame is one mouse event with the repaint that follows it, at 1920 × 1080 on a part of 60
-corners, 24 holes, 12 supports and 12 loads; the aim is 16 ms.
+corners, 24 holes, 12 supports and 12 loads; the aim is 16 ms of
+processor time, for the machine may have other work.
 """
 
 from __future__ import annotations
 
 import itertools
 import math
+import time
 from collections.abc import Callable
 
 import pytest
@@ -34,6 +36,8 @@ from screenapp.model.part import (
 )
 from tests.benchmarks.test_validity_speed import large_part
 from tests.window.board_kit import Hand
+
+pytestmark = pytest.mark.benchmark(timer=time.process_time)
 
 N = 60
 
@@ -147,10 +151,13 @@ def large(qtbot: QtBot, request: pytest.FixtureRequest) -> tuple[Hand, str]:
     return made, request.param
 
 
-def test_dragging_in_a_large_part(large: tuple[Hand, str], benchmark: BenchmarkFixture) -> None:
+@pytest.mark.parametrize("magnified", [1.0, 8.0], ids=["whole", "close"])
+def test_dragging_in_a_large_part(
+    large: tuple[Hand, str], magnified: float, benchmark: BenchmarkFixture
+) -> None:
     """The aim is 16 ms a frame with a hole, and with a corner, of a very large part."""
     hand, what = large
-    hand.canvas.zoom(8.0, QPointF(hand.px(1000.0, 0.0)))
+    hand.canvas.zoom(magnified, QPointF(hand.px(1000.0, 0.0)))
     QApplication.processEvents()
     if what == "hole":
         hole = hand.part.holes[480]

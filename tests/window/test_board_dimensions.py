@@ -245,3 +245,14 @@ def test_overall_size_that_ends_on_an_arc_is_refused_in_words() -> None:
     assert through == pytest.approx((10.0, 20.0))
     with pytest.raises(edits.EditError, match="more than 20 mm"):
         edit_dimensioned.set_arc_radius(part, "e1", 19.0)
+
+
+def test_a_fitted_part_keeps_its_dimensions_clear_of_the_scale_bar(qtbot: QtBot) -> None:
+    hand = shown(qtbot, plate())
+    right, high = hand.canvas.scale_bar.REACH
+    hand.canvas.fit()
+    paint(hand)
+    placed = hand.canvas.dimensions.item.placed(WIDTH)
+    assert placed is not None
+    assert hand.canvas.frame_now.px((0.0, 0.0)).x() < right  # the line would run over the bar
+    assert placed.middle.y() < hand.canvas.viewport().height() - high

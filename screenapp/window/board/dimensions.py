@@ -9,6 +9,7 @@ from PySide6.QtCore import QPointF, QRectF
 from screenapp.window.board.dimension_editor import DimensionEditor
 from screenapp.window.board.dimension_item import ROW_PX, DimensionsItem, reach_of
 from screenapp.window.board.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
+from screenapp.window.board.zoom_view import BOTTOM
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
@@ -66,13 +67,17 @@ class Dimensions:
         bounds = canvas.drawn.bounds
         canvas.show_box(bounds)
         rows = rows_of(self.item.marks)
-        if bounds is None or max(rows) <= FREE_ROWS:
+        if bounds is None or not max(rows):
+            return
+        down, left = (max(0, n - FREE_ROWS) * ROW_PX for n in rows)
+        if rows[0] and canvas.frame_now.px(bounds[:2]).x() < canvas.scale_bar.REACH[0]:
+            down = max(down, reach_of(rows[0]) + canvas.scale_bar.REACH[1] - BOTTOM)
+        if max(down, left) <= 0.0:
             return
         for _ in range(3):  # room in pixels is worth more millimetres the farther off one stands
-            row = ROW_PX / canvas.frame_now.scale
+            scale = canvas.frame_now.scale
             x0, y0, x1, y1 = bounds
-            down, left = (max(0, n - FREE_ROWS) * row for n in rows)
-            canvas.show_box((x0 - left, y0 - down, x1, y1))
+            canvas.show_box((x0 - left / scale, y0 - down / scale, x1, y1))
 
     def make_room(self) -> None:
         """Fit again where rows of dimensions reach beyond the view and the part does not."""

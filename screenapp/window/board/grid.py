@@ -88,7 +88,13 @@ class GridItem(ScreenItem):
 
 
 class ScaleBarItem(ScreenItem):
-    """A bar of round length at the lower left."""
+    """A bar of round length at the lower left.
+
+    Attributes:
+        REACH: how far it comes from the left and the lower edge of the view at most [px].
+    """
+
+    REACH = 220.0, 42.0
 
     def __init__(self) -> None:
         super().__init__(Z_PREVIEW + 5)
