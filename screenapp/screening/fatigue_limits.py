@@ -51,11 +51,14 @@ class _Swing:
     notch: str
 
 
-def fatigue_limit_name(limit: FatigueLimit) -> str:
-    """The limit in a few words."""
+def fatigue_limit_name(limit: FatigueLimit, part: Part | None = None) -> str:
+    """The limit in a few words, its cases by their names where the part is given."""
+    names = {c.id: f"“{c.name}”" for c in loadings(part)} if part is not None else {}
+    one = names.get(limit.case, limit.case)
+    other = "no load" if limit.other is None else names.get(limit.other, limit.other)
     return (
-        f"fatigue over {limit.cycles:.4g} cycles between {limit.case} and "
-        f"{limit.other or 'no load'} with {limit.factor:g} in hand"
+        f"fatigue over {limit.cycles:.4g} cycles between {one} and {other} "
+        f"with {limit.factor:g} in hand"
     )
 
 
@@ -63,7 +66,7 @@ def judge_fatigue(
     limit: FatigueLimit, part: Part, shape: Shape | None, passes: Sequence[Pass]
 ) -> LimitFindings:
     """A fatigue limit over the whole part, told under its first case."""
-    name = fatigue_limit_name(limit)
+    name = fatigue_limit_name(limit, part)
     figures = [fatigue_figures(m) for z in range(-1, len(part.zones)) if (m := part.material_of(z))]
     if shape is None or not passes or None in figures:
         why = "the fields of the screening were not kept, or a material has no fatigue figures"

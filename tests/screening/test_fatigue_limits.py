@@ -68,6 +68,7 @@ def test_a_bar(limit: FatigueLimit, used: float, mesher: Mesher) -> None:
     assert found.utilisation.trust == "settled"
     assert found.verdict == ("holds" if used < 1.0 else "does not hold")
     assert "uniform material law" in found.assumed
+    assert f"between “{'push' if limit.case == 'k2' else 'pull'}” and" in found.name
 
 
 def test_a_hole_swings_by_its_peak_and_its_radius_counts(mesher: Mesher) -> None:
