@@ -103,6 +103,8 @@ def test_a_moment_is_put_on_a_hole_by_the_board(qtbot: QtBot) -> None:
     hand.click(50.0, 40.0)  # on the rim
     popover = hand.canvas.placing.popover
     button = next(b for b in popover.findChildren(QPushButton) if b.text() == "Moment")
+    shown = [b for b in popover.findChildren(QPushButton) if b.isVisible()]
+    assert all(b.width() >= b.sizeHint().width() for b in shown)  # no word is cut off
     button.click()
     hand.type("3")
     hand.enter()

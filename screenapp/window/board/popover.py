@@ -23,6 +23,10 @@ from screenapp.window.board.placing_kinds import Way
 from screenapp.window.board.quantity import parse, written
 
 
+WIDE = 300
+"""Least width of the small sheet [px]."""
+
+
 class Popover(QFrame):
     """Choose a way, type its values; nothing is modal.
 
@@ -70,7 +74,7 @@ class Popover(QFrame):
         column.addLayout(self._grid)
         column.addWidget(self._tip)
         column.addWidget(self._put, 0, Qt.AlignmentFlag.AlignLeft)
-        self.setFixedWidth(300)
+        self.setFixedWidth(WIDE)
         self.hide()
 
     @property
@@ -231,6 +235,8 @@ class Popover(QFrame):
         layout = self.layout()
         if layout is not None:
             layout.activate()
+            ways = self._ways_row.minimumSize().width() + 28  # no way's word is cut off
+            self.setFixedWidth(max(WIDE, ways))
             self.resize(self.width(), layout.totalHeightForWidth(self.width()))
 
     def _style(self) -> None:
