@@ -22,7 +22,6 @@ from screenapp.window import theme
 from screenapp.window.board.placing_kinds import Way
 from screenapp.window.board.quantity import parse, written
 
-
 WIDE = 300
 """Least width of the small sheet [px]."""
 
