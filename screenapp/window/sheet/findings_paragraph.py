@@ -28,6 +28,7 @@ ROUNDING = 1e-7
 """A reaction below this share of the force that a millimetre of the most stressed wall carries is
 rounding."""
 QUANTITIES = {"von_mises": "", "tresca": "Tresca at ", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
+HEADS = {"von_mises": "von Mises", "tresca": "Tresca", "sigma_1": "σ₁"}
 
 
 class FindingsParagraph(Paragraph):
@@ -123,7 +124,7 @@ class FindingsParagraph(Paragraph):
                 f"{Quantities(units).show(_three(check.formula), 'stress')} where "
                 f"{estimate_text(check.computed, 'stress', units)} was computed "
                 f"({signed_percent(check.difference)}). {_sentence(check.source)} "
-                f"{_sentence(check.valid)}"
+                f"Range: {check.valid}."
             )
             pieces = (Words(text, quiet=True),)
             rows.append(RowOf(f"hand {check.feature}", (), pieces, also=(check.feature,)))
@@ -165,7 +166,8 @@ def _columns(part: Part) -> tuple[Column, ...]:
     columns = [Column("where")]
     if len(loadings(part)) > 1:
         columns.append(Column("case"))
-    columns.append(Column(f"von Mises {unit}", number=True))
+    head = HEADS[_only_measure(part)]
+    columns.append(Column(f"{head} {unit}", number=True))
     if any(isinstance(limit, StressLimit) for limit in part.limits):
         columns.append(
             Column("use", number=True, tip="Stress over what the limit allows; 1 is all of it")
@@ -174,8 +176,15 @@ def _columns(part: Part) -> tuple[Column, ...]:
     return tuple(columns)
 
 
+def _only_measure(part: Part) -> str:
+    """The stress that the limits are on where they are all on one; else von Mises."""
+    judged = {limit.measure for limit in part.limits if isinstance(limit, StressLimit)}
+    return judged.pop() if len(judged) == 1 else "von_mises"
+
+
 def _line(part: Part, case: CaseFindings, peak: Peak) -> Line:
-    texts = [QUANTITIES.get(peak.quantity, "") + peak.place]
+    known = peak.quantity == _only_measure(part)  # the head of the column says it
+    texts = [("" if known else QUANTITIES.get(peak.quantity, "")) + peak.place]
     if len(loadings(part)) > 1:
         texts.append(case.name)
     texts.append(value_text(peak.estimate, "stress", part.display_units, unit=False))
