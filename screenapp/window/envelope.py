@@ -163,7 +163,7 @@ def _under(card: Card, source: Source) -> Card:
 
 def _caption(cases: Ints, sources: list[Source]) -> str:
     """How many cases there are, and which of them governs at how many places."""
-    shares = np.bincount(cases.ravel(), minlength=len(sources)) / cases.size
-    order = np.argsort(-shares, kind="stable")[:2]
-    told = [f"“{case_name(sources[i])}” at {100.0 * shares[i]:.0f} %" for i in order if shares[i]]
-    return f"All {len(sources)} cases: {' and '.join(told)} of the nodes govern"
+    shares = np.rint(100.0 * np.bincount(cases.ravel(), minlength=len(sources)) / cases.size)
+    order = [i for i in np.argsort(-shares, kind="stable")[:2] if shares[i] > 0.0]
+    told = [f"“{case_name(sources[i])}” at {shares[i]:.0f} %" for i in order]
+    return f"Of {len(sources)} cases the worst: {' and '.join(told)} of the nodes"

@@ -1,6 +1,7 @@
 """Makes the README's picture: the real window with a sample, screened.
 
     python -m tests.window.picture [SAMPLE] [--out FILE] [--size WxH] [--theme NAME] [--lens LENS]
+        [--all-cases] [--crosses]
 
 Run it again whenever the window changes.
 """
@@ -23,6 +24,8 @@ def main() -> None:
     parser.add_argument("--size", default="1600x960")
     parser.add_argument("--theme", default="paper", choices=["paper", "slate"])
     parser.add_argument("--lens", default="Utilisation")
+    parser.add_argument("--all-cases", action="store_true")
+    parser.add_argument("--crosses", action="store_true")
     words = parser.parse_args()
     os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
 
@@ -58,7 +61,8 @@ def main() -> None:
         end = time.monotonic() + 60.0
         while not window.document.current and time.monotonic() < end:
             settle(0.1)
-        window.document.look(lens=words.lens)
+        window.document.look(lens=words.lens, crosses=words.crosses)
+        window.document.look(envelope=words.all_cases)
         window.board.fit()
         settle(1.0)
         window.painter.wait()

@@ -143,7 +143,7 @@ def test_all_cases_are_chosen_by_keys_and_a_case_again(bench: Bench) -> None:
     QTest.keyClick(chooser, Qt.Key.Key_End)
     assert bench.document.view.envelope
     assert "all cases" in chooser.currentText()
-    assert bench.caption.startswith("All 2 cases")
+    assert bench.caption.startswith("Of 2 cases")
     bench.document.look(lens="Trust")
     assert chooser.count() == 2, "the lens of trust shows one case"
     bench.document.look(lens="Utilisation")
@@ -151,3 +151,17 @@ def test_all_cases_are_chosen_by_keys_and_a_case_again(bench: Bench) -> None:
     QTest.keyClick(chooser, Qt.Key.Key_Home)
     assert not bench.document.view.envelope
     assert bench.document.view.case == 0
+
+
+def test_a_long_caption_wraps_and_is_not_cut_off(bench: Bench) -> None:
+    bench.document.look(lens="Utilisation", envelope=True, crosses=True)
+    bench.screen()
+    heading = bench.painter.heading
+    for width in (420, 1200):
+        bench.board.resize(width, 640)
+        bench.settle()
+        label = heading.caption
+        assert label.height() >= label.heightForWidth(label.width()) or not label.wordWrap()
+        assert label.wordWrap() == (width == 420)
+        assert heading.geometry().right() <= bench.board.canvas.width()
+        assert heading.rect().contains(label.geometry())

@@ -228,7 +228,7 @@ def test_the_card_of_all_cases_names_the_one_that_governs(lens: Lens) -> None:
     worst = max(tops, key=lambda name: tops[name])
     assert f"“{worst}”" in card.detail
     caption = painted(View(lens, envelope=True), of).caption
-    assert caption.startswith("All 2 cases: ")
+    assert caption.startswith("Of 2 cases the worst: ")
     assert any(name in caption for name in tops)
 
 

@@ -18,7 +18,7 @@ from screenapp.window.fields import DISPLACEMENT_NAMES, STRESS_NAMES
 
 MARGIN = 16
 AUTOMATIC = "auto"
-ALL_CASES = "all cases, the worst at each place"
+ALL_CASES = "all cases"
 
 
 class LensHeading(QWidget):
@@ -128,12 +128,26 @@ class LensHeading(QWidget):
 
     def settle(self) -> None:
         """Take the place at the host's upper left corner, no larger than what is shown."""
-        self.legend.keep_within(max(160, self._host.width() - 2 * MARGIN - TAKEN))
+        room = max(160, self._host.width() - 2 * MARGIN - TAKEN)
+        self.legend.keep_within(room)
+        self._wrap_caption(room)
         self._column.activate()
         size = self.sizeHint()
         width = min(size.width(), max(80, self._host.width() - 2 * MARGIN))
         self.setGeometry(MARGIN, MARGIN, width, size.height())
         self.raise_()
+
+    def _wrap_caption(self, room: int) -> None:
+        """Let the caption wrap where it is wider than the room [px], and only there."""
+        label = self.caption
+        label.setWordWrap(False)
+        label.setMinimumSize(0, 0)  # or its height for a width is the one it had
+        label.setMaximumSize(room, 10_000)
+        if label.sizeHint().width() > room:
+            label.setWordWrap(True)
+            label.setFixedSize(room, label.heightForWidth(room))
+        else:
+            label.setFixedSize(label.sizeHint())
 
     def apply_theme(self) -> None:
         """Take the colours of the theme in force."""
