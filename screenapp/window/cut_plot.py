@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from PySide6.QtCore import QPointF, QRectF, QSize, Qt
 from PySide6.QtGui import (
-    QFocusEvent,
-    QFont,
     QFontMetricsF,
     QPainter,
     QPaintEvent,
@@ -13,12 +11,13 @@ from PySide6.QtGui import (
     QPolygonF,
     QResizeEvent,
 )
-from PySide6.QtWidgets import QSizePolicy, QWidget
+from PySide6.QtWidgets import QWidget
 
 from screenapp.model.cut_figure import CutFigure
 from screenapp.window import theme
+from screenapp.window.figure_box import HEAD, LINE, FigureBox
 
-_HEAD, _LINE, _PLOT, _FOOT = 8.0, 17.0, 132.0, 18.0
+_PLOT, _FOOT = 132.0, 18.0
 _LABELS = 52.0
 _WIDEST = 460.0
 _KEYS = (
@@ -29,17 +28,13 @@ _KEYS = (
 _COLOURS = {"settled": "ink", "rising": "bad", "unsettled": "doubt"}
 
 
-class CutPlot(QWidget):
+class CutPlot(FigureBox):
     """Shows one cut under one case; hidden while there is none."""
 
     def __init__(self, parent: QWidget | None = None) -> None:
         super().__init__(parent)
         self.figure: CutFigure | None = None
         self._case = ""
-        self.setFocusPolicy(Qt.FocusPolicy.TabFocus)
-        self.setSizePolicy(QSizePolicy.Policy.Expanding, QSizePolicy.Policy.Fixed)
-        self.hide()
-        theme.notifier.changed.connect(self.update)
 
     def show_figure(self, figure: CutFigure | None, case: str = "") -> None:
         """Show a figure under the case of that name, or hide."""
@@ -47,9 +42,7 @@ class CutPlot(QWidget):
         self.setVisible(figure is not None)
         if figure is not None:
             under = f" under “{case}”" if case else ""
-            self.setAccessibleName(f"Stress along {figure.name}{under}")
-            self.setAccessibleDescription(figure.words)
-            self.setToolTip(figure.words)
+            self.say(f"Stress along {figure.name}{under}", figure.words)
         self.updateGeometry()
         self.setFixedHeight(self.sizeHint().height())
         self.update()
@@ -57,7 +50,7 @@ class CutPlot(QWidget):
     def sizeHint(self) -> QSize:
         """The plot, and as many lines as the sentences need."""
         lines = sum(len(self._wrapped(s)) for s in self.figure.sentences) if self.figure else 0
-        return QSize(260, round(2 * _HEAD + 2 * _LINE + _PLOT + _FOOT + 6.0 + lines * _LINE))
+        return QSize(260, round(2 * HEAD + 2 * LINE + _PLOT + _FOOT + 6.0 + lines * LINE))
 
     def resizeEvent(self, event: QResizeEvent) -> None:
         """Sentences wrap anew."""
@@ -66,39 +59,24 @@ class CutPlot(QWidget):
         if self.height() != wanted:
             self.setFixedHeight(wanted)
 
-    def focusInEvent(self, event: QFocusEvent) -> None:
-        """Show that it has the focus."""
-        super().focusInEvent(event)
-        self.update()
-
-    def focusOutEvent(self, event: QFocusEvent) -> None:
-        """Show that it has it no more."""
-        super().focusOutEvent(event)
-        self.update()
-
     def paintEvent(self, _event: QPaintEvent) -> None:
         """Name, key, plot, sentences."""
         figure = self.figure
         if figure is None:
             return
         painter = QPainter(self)
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
-        frame = QRectF(self.rect()).adjusted(1.0, 1.0, -1.0, -1.0)
-        focused = self.hasFocus()
-        painter.setPen(QPen(theme.colour("accent" if focused else "faint"), 1.5 if focused else 1))
-        painter.drawRoundedRect(frame, 4.0, 4.0)
-        inner = frame.adjusted(10.0, _HEAD - 1.0, -10.0, -_HEAD + 1.0)
+        inner = self.paint_frame(painter)
         under = f"  ·  {self._case}" if self._case else ""
-        self._text(painter, f"{figure.name}{under}", inner, inner.top(), bold=True)
-        self._key(painter, figure, inner.left(), inner.top() + _LINE)
+        self.paint_words(painter, f"{figure.name}{under}", inner, inner.top(), bold=True)
+        self._key(painter, figure, inner.left(), inner.top() + LINE)
         wide = min(inner.width(), _WIDEST)
-        top = inner.top() + 2 * _LINE + 4.0
+        top = inner.top() + 2 * LINE + 4.0
         paint_cut(painter, QRectF(inner.left(), top, wide, _PLOT + _FOOT), figure)
         y = top + _PLOT + _FOOT + 2.0
         for sentence in figure.sentences:
             for line in self._wrapped(sentence):
-                self._text(painter, line, inner, y)
-                y += _LINE
+                self.paint_words(painter, line, inner, y)
+                y += LINE
         painter.end()
 
     def _key(self, painter: QPainter, figure: CutFigure, x: float, y: float) -> None:
@@ -107,19 +85,10 @@ class CutPlot(QWidget):
         metrics = QFontMetricsF(painter.font())
         for text, style, name in _KEYS[: 3 if figure.beam else 2]:
             painter.setPen(QPen(theme.colour(name), 1.6, style))
-            painter.drawLine(QPointF(x, y + _LINE / 2), QPointF(x + 20.0, y + _LINE / 2))
+            painter.drawLine(QPointF(x, y + LINE / 2), QPointF(x + 20.0, y + LINE / 2))
             painter.setPen(theme.colour("quiet"))
-            painter.drawText(QPointF(x + 25.0, y + _LINE / 2 + metrics.ascent() / 2 - 1.5), text)
+            painter.drawText(QPointF(x + 25.0, y + LINE / 2 + metrics.ascent() / 2 - 1.5), text)
             x += 25.0 + metrics.horizontalAdvance(text) + 14.0
-
-    def _text(
-        self, painter: QPainter, text: str, inner: QRectF, y: float, bold: bool = False
-    ) -> None:
-        weight = QFont.Weight.DemiBold if bold else QFont.Weight.Normal
-        painter.setFont(theme.font(theme.TEXT_SMALL, weight))
-        painter.setPen(theme.colour("ink" if bold else "quiet"))
-        left = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
-        painter.drawText(QRectF(inner.left(), y, inner.width(), _LINE), left, text)
 
     def _wrapped(self, sentence: str) -> list[str]:
         """A sentence in lines that fit."""
