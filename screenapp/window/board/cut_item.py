@@ -12,10 +12,9 @@ from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.screen_item import Z_PROBES, ScreenItem
-from screenapp.window.board.sketch import label
 
-FLAG = 11.0
-"""Length of the flag at each end [px]."""
+FLAG, NAME_AWAY = 11.0, 13.0
+"""Length of the flag at each end, and how far beyond it the name stands [px]."""
 
 
 class CutsItem(ScreenItem):
@@ -33,7 +32,7 @@ class CutsItem(ScreenItem):
         self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
-        """Dash-dot lines, flags to the left, names at the first end."""
+        """Dash-dot lines with flags to the left; `labels` paints the names."""
         if self.drawn is None:
             return
         painter.setRenderHint(QPainter.RenderHint.Antialiasing)
@@ -54,8 +53,14 @@ class CutsItem(ScreenItem):
             left = QPointF(dy, -dx) / length * FLAG  # y runs downwards on the screen
             for end in (one, two):
                 painter.drawLine(end, end + left)
-            back = QPointF(dx, dy) / length * 13.0
-            label(painter, cut.name, one - back, colour.name())
+
+
+def name_place(frame: Frame, cut: Cut) -> QPointF:
+    """Where the name of a cut reads best [px]: beyond its first end."""
+    one, two = frame.px(cut.start), frame.px(cut.end)
+    gap = one - two
+    length = math.hypot(gap.x(), gap.y())
+    return one if length < 1.0 else one + gap / length * NAME_AWAY
 
 
 def nearest_cut(part: Part, at: Point, reach: float) -> tuple[Cut, Point] | None:

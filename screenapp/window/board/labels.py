@@ -1,4 +1,4 @@
-"""The texts at supports, loads and probes, placed so that none covers another."""
+"""The texts at supports, loads, probes and cuts, placed so that none covers another."""
 
 from __future__ import annotations
 
@@ -11,6 +11,7 @@ from PySide6.QtGui import QColor, QFontMetricsF, QPainter, QPen
 
 from screenapp.model.part import Point
 from screenapp.window import theme
+from screenapp.window.board.cut_item import name_place
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.label_placing import Wish, place, round_about, round_text
 from screenapp.window.board.screen_item import Z_PROBES, ScreenItem
@@ -135,6 +136,9 @@ class LabelsItem(ScreenItem):
         ]
         values = {value.at: value.text for value in self.values}
         chosen = canvas.document.selection
+        for cut in drawn.part.cuts:
+            colour = palette.accent if cut.id in chosen else palette.ink
+            tags.append(_Tag(name_place(frame, cut), (cut.name or cut.id,), colour, False))
         for probe in drawn.part.readings:
             lines = tuple(filter(None, (probe.name, values.get(probe.at, ""))))
             colour = palette.accent if probe.id in chosen else palette.ink
