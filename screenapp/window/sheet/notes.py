@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+import math
+
 from PySide6.QtCore import QSize, Qt
-from PySide6.QtGui import QFocusEvent, QKeyEvent
+from PySide6.QtGui import QFocusEvent, QFontMetricsF, QKeyEvent, QResizeEvent
 from PySide6.QtWidgets import QPlainTextEdit, QSizePolicy, QWidget
 
 from screenapp.model.edit_settings import set_notes
@@ -68,8 +70,16 @@ class NotesEdit(QPlainTextEdit):
     def sizeHint(self) -> QSize:
         """As high as its lines."""
         lines = max(1, min(MOST_LINES, int(self.document().size().height())))
-        margins = 2.0 * (self.document().documentMargin() + self.frameWidth())
-        return QSize(200, round(lines * self.fontMetrics().lineSpacing() + margins) + 2)
+        spacing = QFontMetricsF(self.document().defaultFont()).lineSpacing()
+        around = self.height() - self.viewport().height() if self.isVisible() else 4
+        margins = 2.0 * self.document().documentMargin() + around
+        return QSize(200, math.ceil(lines * math.ceil(spacing) + margins))
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """Lines wrap anew."""
+        super().resizeEvent(event)
+        if event.size().width() != event.oldSize().width():
+            self._fit()
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
         """Escape restores; Control and Enter accept."""
