@@ -22,6 +22,7 @@ class NotesEdit(QPlainTextEdit):
     def __init__(self, document: Document, parent: QWidget) -> None:
         super().__init__(parent)
         self._document = document
+        self._fitted = -1  # width that the height was fitted to [px]
         self.setObjectName("notes")
         self.setAccessibleName("Notes of the part")
         self.setToolTip("Notes of the part; Escape restores what was there")
@@ -78,7 +79,8 @@ class NotesEdit(QPlainTextEdit):
     def resizeEvent(self, event: QResizeEvent) -> None:
         """Lines wrap anew."""
         super().resizeEvent(event)
-        if event.size().width() != event.oldSize().width():
+        if self.width() != self._fitted:  # not again by the height that this gives
+            self._fitted = self.width()
             self._fit()
 
     def keyPressEvent(self, event: QKeyEvent) -> None:
