@@ -194,6 +194,8 @@ def _run_on(loop: Loop, corner: Corner) -> Loop:
 
 
 def _one_line(a: Curve, b: Curve) -> bool:
+    if a.length == 0.0 or b.length == 0.0:  # two corners at one place, a fault of their own
+        return False
     u, v = a.tangent(1.0), b.tangent(0.0)
     if abs(float(u[0] * v[1] - u[1] * v[0])) > 1e-9 or float(u @ v) < 0.0:
         return False
