@@ -13,6 +13,9 @@ from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
 from screenapp.window.board.ring import Ring
 
+BEYOND = 12.0
+"""How far beyond the clip lines are drawn [px]."""
+
 AROUND_PX = 20.0
 """Lines, joins and centre lines of a ring stay within this of it [px]."""
 
@@ -72,7 +75,8 @@ class StillPicture:
         if not changed.isEmpty():
             painter.save()
             painter.setClipRect(changed)
-            draw(painter, drawn, QRectF(changed))
+            # what is left out of lines must end well outside the clip, caps and joins with it
+            draw(painter, drawn, QRectF(changed).adjusted(-BEYOND, -BEYOND, BEYOND, BEYOND))
             painter.restore()
 
     def _settle(
