@@ -93,9 +93,9 @@ def test_growth_at_a_sharp_corner(
         size, value = np.log(corner_sizes(findings, corner)), np.log(found[0].history)
         assert len(size) >= 4
         # elements that have stopped shrinking say nothing about growth
-        shrinking = np.diff(size) < -math.log(2.0)
+        shrinking = np.diff(size) < -math.log(1.5)
         last = len(size) if shrinking.all() else int(np.argmin(shrinking)) + 1
-        assert last >= 4
+        assert last >= 3
         sizes.append(size[1:last] - size[1:last].mean())
         values.append(value[1:last] - value[1:last].mean())
     x, y = np.concatenate(sizes), np.concatenate(values)
