@@ -174,7 +174,7 @@ KINDS: tuple[Callable[[Random], Part], ...] = (
 
 
 def random_shape(seed: int) -> Shape:
-    """The shape of a seed: its kind goes round with the seed, drawn anew until it is valid."""
+    """The shape of a number: its kind goes round with the number, drawn anew until it is valid."""
     random = np.random.default_rng(seed)
     draw = KINDS[seed % len(KINDS)]
     while True:
