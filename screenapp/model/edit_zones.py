@@ -3,10 +3,11 @@
 from __future__ import annotations
 
 from dataclasses import replace
+from typing import Literal
 
 from screenapp.model.edit_places import drop_from_places
 from screenapp.model.edit_rules import EditError, Outcome, must_find, new_id, settle
-from screenapp.model.part import CircleHole, Loop, LoopHole, Part, SlotHole, Zone
+from screenapp.model.part import CircleHole, Loop, LoopHole, Part, SlotHole, Zone, ZoneSides
 from screenapp.model.zone_faults import zone_value_faults
 
 Form = CircleHole | SlotHole | LoopHole
@@ -35,17 +36,19 @@ def set_zone(
     thickness: float | None = None,
     material: str | None = None,
     name: str | None = None,
+    sides: ZoneSides | Literal[""] | None = None,
 ) -> Part:
-    """Give a zone a thickness [mm], a material or a name; None leaves each as it is.
+    """Give a zone a thickness [mm], a material, a name or sides; None leaves each as it is.
 
-    A material of "" stands for the wall's.
+    A material of "" stands for the wall's; sides of "" say nothing.
     """
     record = _zone(part, zone)
     changed = Zone(
         record.form,
         record.thickness if thickness is None else float(thickness),
         record.material if material is None else (material or None),
-        record.name if name is None else name,
+        record.name if name is None else name.strip(),
+        record.sides if sides is None else (sides or None),
     )
     return settle(part, _with_zone(part, changed), zone_value_faults)
 

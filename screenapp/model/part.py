@@ -107,6 +107,7 @@ from screenapp.model.support_records import (
 Point = tuple[float, float]
 
 WallState = Literal["plane stress", "plane strain"]
+ZoneSides = Literal["both", "one"]
 ElementName = Literal["quad4", "quad4-incompatible", "quad8", "quad9"]
 DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
 MaterialFamily = Literal[
@@ -190,20 +191,24 @@ Hole = CircleHole | SlotHole | LoopHole
 class Zone:
     """A stretch of the wall with a thickness or material of its own: a pad, a pocket, a rib.
 
-    Its middle plane is that of the wall.  What of it lies outside the part does not count; where
-    zones overlap, the later one of the list wins.
+    The screening takes its middle plane to be that of the wall, which is so where the thickness is
+    on both sides.  What of it lies outside the part does not count; where zones overlap, the later
+    one of the list wins.
 
     Attributes:
         form: the closed form, as of a hole; it bears the zone's id.
         thickness: [mm], None for the wall's.
         material: name of its material, None for the wall's.
         name: what the user calls it, may be empty.
+        sides: whether what its thickness adds or takes away is on both sides of the wall alike or
+            on one only; None where it is not said.
     """
 
     form: CircleHole | SlotHole | LoopHole
     thickness: float | None = None
     material: str | None = None
     name: str = ""
+    sides: ZoneSides | None = None
 
     @property
     def id(self) -> str:

@@ -215,6 +215,7 @@ def _zone_tree(zone: Zone) -> Tree:
         "thickness": zone.thickness,
         "material": zone.material,
         "name": zone.name or None,
+        "sides": zone.sides,
     }
 
 
@@ -287,6 +288,7 @@ def _zone(tree: Tree) -> Zone:
         None if thickness is None else float(thickness),
         tree.get("material"),
         tree.get("name", ""),
+        tree.get("sides"),
     )
 
 

@@ -9,7 +9,7 @@ import pytest
 
 from screenapp.model import edits
 from screenapp.model.edit_dimensions import set_dimension
-from screenapp.model.errors import PartFileError
+from screenapp.model.errors import Fault, PartFileError
 from screenapp.model.part import (
     CircleHole,
     FixedSupport,
@@ -181,6 +181,50 @@ def test_a_limit_needs_the_stress_of_every_material_used() -> None:
     part = replace(part, materials=(*part.materials, resin))
     limit = edits.add_limit(part, StressLimit("g9"))
     assert any("resin" in f.cause for f in faults_of(limit) if f.blocks)
+
+
+def _sided(sides: str | None, thickness: float = 9.0) -> list[Fault]:
+    zone = Zone(CircleHole("z1", (25.0, 25.0), 10.0), thickness, sides=sides)  # type: ignore[arg-type]
+    return [f for f in faults_of(zoned(zone)) if f.field.startswith("zones.z1")]
+
+
+def test_a_zone_on_both_sides_needs_no_caution_and_one_on_one_side_a_number() -> None:
+    """Wall t = 3, pad 9: the middle planes are 3 mm apart; 6 e / t = 6 (rectangular section)."""
+    assert zoned().wall.thickness == 3.0
+    assert _sided("both") == []
+    (one,) = _sided("one")
+    assert "thicker on one side only" in one.cause
+    assert "stands 3 mm off" in one.cause
+    assert "adds 6 times the membrane stress" in one.cause
+    assert not one.blocks
+    (silent,) = _sided(None)
+    assert "is taken to be the wall's" in silent.cause
+    assert "on which sides" in silent.mend
+
+
+def test_a_pocket_from_one_side_is_eccentric_too() -> None:
+    """Wall t = 3, pocket 2: 0.5 mm apart, 6 × 0.5 / 2 = 1.5 in the thinner of the two."""
+    (one,) = _sided("one", 2.0)
+    assert "thinner on one side only" in one.cause
+    assert "stands 0.5 mm off" in one.cause
+    assert "2 mm take that alone, the bending adds 1.5 times" in one.cause
+
+
+def test_sides_say_nothing_where_the_thickness_is_the_walls() -> None:
+    assert _sided("one", 3.0) == []
+
+
+def test_sides_are_written_read_and_left_out() -> None:
+    zone = Zone(CircleHole("z1", (25.0, 25.0), 10.0), 9.0)
+    silent = part_to_text(zoned(zone))
+    assert "sides" not in silent
+    text = part_to_text(edits.set_zone(zoned(zone), "z1", sides="one"))
+    assert '"sides": "one"' in text
+    again = part_from_text(text)
+    assert again.zones[0].sides == "one"
+    assert part_to_text(edits.set_zone(again, "z1", sides="")) == silent
+    with pytest.raises(PartFileError, match="sides"):
+        part_from_text(text.replace('"sides": "one"', '"sides": "left"'))
 
 
 def test_nothing_can_stand_on_a_zone() -> None:

@@ -34,7 +34,7 @@ def padded() -> Screened:
         60.0,
         30.0,
         (
-            replace(disc((40.0, 15.0), 16.0, 6.0), name="boss"),
+            replace(disc((40.0, 15.0), 16.0, 6.0), name="boss", sides="one"),
             pad([(-5.0, -5.0), (10.0, -5.0), (10.0, 40.0), (-5.0, 40.0)], None, "weak", "z2"),
         ),
         (FixedSupport("s1", "e4"),),
@@ -49,7 +49,7 @@ def padded() -> Screened:
 def test_the_page_names_every_zone_with_its_wall(padded: Screened) -> None:
     part, _, findings = padded
     page = record_page(part, findings, datetime(2026, 1, 2, tzinfo=UTC))
-    assert "Zone z1 (boss) is 6 mm thick, of steel. Its form: " in page
+    assert "Zone z1 (boss) is 6 mm thick (on one side only), of steel. Its form: " in page
     assert "Zone z2 is 2 mm thick, of weak: E 70000 MPa" in page
     assert page.count('class="zone"') == len(padded[1].interfaces)
     assert "middle plane" in page

@@ -25,7 +25,6 @@ SAMPLES = sorted((Path(__file__).parents[2] / "samples").glob("*.part.json"))
 
 
 CAUTIONS = {
-    "davit": ["the middle plane of zones z1, z2, z3"],
     "rake-knee": ["corner c4 re-enters", "corner c5 re-enters"],
 }
 """What the samples caution against on purpose, by its first words."""

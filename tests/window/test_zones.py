@@ -173,7 +173,16 @@ def _sheet(qtbot: QtBot, part: Part) -> tuple[Sheet, WallParagraph]:
 def test_the_sheet_says_and_changes_thickness_and_material(qtbot: QtBot) -> None:
     sheet, paragraph = _sheet(qtbot, padded())
     row = paragraph.zones.row("z1").sentence
-    assert row.text == "8 mm thick, of the wall's material"
+    assert row.text == "no name, 8 mm thick, sides not said, of the wall's material"
+    type_into(row.field("name"), "boss")
+    pick(row.field("sides"), "on one side")
+    assert row.text == "boss, 8 mm thick, on one side, of the wall's material"
+    assert sheet.document.part.zones[0].sides == "one"
+    assert any("on one side only" in f.cause for f in sheet.document.faults)
+    pick(row.field("sides"), "on both sides")
+    assert not any("middle plane" in f.cause for f in sheet.document.faults)
+    type_into(row.field("name"), " ")
+    assert sheet.document.part.zones[0].name == ""
     type_into(row.field("thickness"), "0.5 in")
     assert sheet.document.part.zones[0].thickness == 12.7
     assert sheet.document.history.undo_name == "thickness of zone z1"

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import replace
+from typing import Literal, cast
 
 from screenapp.model import edits
 from screenapp.model.materials import library
@@ -15,6 +16,8 @@ from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
 
 SAME = "the wall's material"
+UNNAMED = "no name"
+SIDES = {"both": "on both sides", "one": "on one side", "": "sides not said"}
 
 
 def zone_rows(
@@ -48,13 +51,49 @@ def _row(
         lambda key: _choose(document, zone.id, key),
         lambda: (Choice("", SAME), *library_choices()),
     )
-    named = f" “{zone.name}”" if zone.name else ""
+    name = Value(
+        "name",
+        zone.name or UNNAMED,
+        f"Name of {where}",
+        lambda text: document.apply(
+            f"name of {where}", edits.set_zone(document.part, zone.id, name=text)
+        ),
+        hint="Leave it empty for none",
+        typed=zone.name,
+    )
     return RowOf(
         zone.id,
         (where,),
-        (f"{named.strip()} " if named else "", thickness, " thick, of ", material),
+        (name, ", ", thickness, " thick", *_sides(document, zone), ", of ", material),
         lambda: changes.remove(document, zone.id),
         f"Remove {where}",
+    )
+
+
+def _sides(document: Document, zone: Zone) -> tuple[Value | str, ...]:
+    """On which sides the thickness of a zone is; nothing where it is the wall's."""
+    if zone.thickness in (None, document.part.wall.thickness):
+        return ()
+
+    def choose(key: str) -> None:
+        sides = cast(Literal["both", "one", ""], key)
+        document.apply(
+            f"sides of zone {zone.id}", edits.set_zone(document.part, zone.id, sides=sides)
+        )
+
+    return (
+        ", ",
+        Value(
+            "sides",
+            SIDES[zone.sides or ""],
+            f"On which sides zone {zone.id} differs from the wall",
+            choose,
+            lambda: (
+                Choice("both", SIDES["both"], "middle planes aligned"),
+                Choice("one", SIDES["one"], "the wall bends as well: a caution"),
+                Choice("", SIDES[""], "a caution"),
+            ),
+        ),
     )
 
 
