@@ -11,7 +11,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.model.part import ElementName
+from screenapp.model.part import ElementName, Point
 
 Floats = NDArray[np.float64]
 
@@ -24,6 +24,25 @@ class Reaction:
     x: float
     y: float
     moment: float
+
+
+@dataclass(frozen=True)
+class LoadResultant:
+    """What one load (or all of a case) amounts to: force `x`, `y` [N] and moment about the origin
+    [N·mm].
+
+    Attributes:
+        load: id of the load, or of the case.
+        at: a place on the line of action, the nearest to where the load acts; where there is only
+            a couple, or the line runs far from the part, the middle of where it acts [mm].  None
+            if nothing acts.
+    """
+
+    load: str
+    x: float
+    y: float
+    moment: float
+    at: Point | None
 
 
 @dataclass(frozen=True)
