@@ -48,7 +48,7 @@ NOTHING = 1e-11
 """A force below this share of all that acts (a moment: times the distance) is rounding."""
 
 FAR = 10.0
-"""A line of action farther from where the load acts than this many of its extents is not gone to."""
+"""A line of action farther off than so many extents of where the load acts is not gone to."""
 
 Acting = tuple[Floats, Floats]
 """Places (n, 2) [mm] and forces (n, 2) [N]."""
@@ -90,7 +90,8 @@ def _resultant(id_: str, places: Floats, forces: Floats, couples: Floats) -> Loa
     """Of forces at places, and couples [N·mm] beside them."""
     if not len(places):
         return LoadResultant(id_, 0.0, 0.0, 0.0, None)
-    x, y, moment = resultant(places, forces) + (0.0, 0.0, couples.sum())
+    x, y, moment = resultant(places, forces)
+    moment += couples.sum()
     size = np.hypot(*forces.T)
     weight = size if size.any() else np.abs(couples)
     if not weight.any():

@@ -11,7 +11,7 @@ from typing import Literal
 
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Point
-from screenapp.model.solution import Balance, Reaction, Solution, StressField
+from screenapp.model.solution import Balance, LoadResultant, Reaction, Solution, StressField
 
 Trust = Literal["settled", "rising", "unsettled"]
 Verdict = Literal["holds", "does not hold", "undecided"]
@@ -84,7 +84,8 @@ class Peak:
 class CaseFindings:
     """One load case: its peaks, largest first, and its statics.
 
-    `applied` is the resultant of the loads: force x, y [N] and moment about the origin [N·mm].
+    `applied` is the resultant of the loads on the last mesh: force x, y [N] and moment about the
+    origin [N·mm]; `loads` what each of them amounts to on the boundary as it is drawn.
     """
 
     case: str
@@ -95,6 +96,7 @@ class CaseFindings:
     applied: tuple[float, float, float]
     reactions: tuple[Reaction, ...]
     balance: Balance
+    loads: tuple[LoadResultant, ...] = ()
 
 
 @dataclass(frozen=True)

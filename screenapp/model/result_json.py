@@ -78,6 +78,16 @@ def _case(case: CaseFindings) -> Tree:
         "name": case.name,
         "peaks": [_peak(peak) for peak in case.peaks],
         "applied": dict(zip(("x", "y", "moment"), map(float, case.applied), strict=True)),
+        "loads": [
+            {
+                "load": r.load,
+                "x": float(r.x),
+                "y": float(r.y),
+                "moment": float(r.moment),
+                "at": None if r.at is None else point_tree(r.at),
+            }
+            for r in case.loads
+        ],
         "reactions": [
             {"support": r.support, "x": float(r.x), "y": float(r.y), "moment": float(r.moment)}
             for r in case.reactions

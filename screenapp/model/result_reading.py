@@ -22,7 +22,7 @@ from screenapp.model.findings import (
 )
 from screenapp.model.hand_check_json import hand_check_of
 from screenapp.model.result_values import estimate_of, number_of, point_of
-from screenapp.model.solution import Balance, Reaction
+from screenapp.model.solution import Balance, LoadResultant, Reaction
 
 FORMAT = "screenapp result"
 VERSION = 1
@@ -77,6 +77,16 @@ def _case_of(tree: Tree) -> CaseFindings:
             for r in tree["reactions"]
         ),
         balance=Balance(number_of(balance["force"]), number_of(balance["moment"])),
+        loads=tuple(
+            LoadResultant(
+                r["load"],
+                float(r["x"]),
+                float(r["y"]),
+                float(r["moment"]),
+                None if r["at"] is None else point_of(r["at"]),
+            )
+            for r in tree.get("loads", ())
+        ),
     )
 
 

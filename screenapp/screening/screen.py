@@ -12,6 +12,7 @@ import numpy as np
 from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import recover
+from screenapp.mechanics.resultants import load_resultants
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.mechanics.solve import estimate_memory, estimate_unknowns, solve
@@ -198,6 +199,7 @@ def _cases(
                 (float(total[0]), float(total[1]), float(total[2])),
                 last.solution.reactions[k],
                 last.solution.balance[k],
+                load_resultants(part, shape, case),
             )
         )
     return tuple(found)

@@ -93,7 +93,31 @@ def check_free_body(part: Part, found: Record) -> float:
         worst = max(worst, told["balance"]["force"], told["balance"]["moment"])
         # the mesh follows arcs by parabolas; their length is right to a few parts in 1e5
         assert np.abs(applied[:2] - drawn.sum(axis=0)).max() < 1e-4 * size
+        check_each_load(part, case, told["loads"], back, size * shape.size)
     return worst
+
+
+def check_each_load(
+    part: Part, case: Case, told: list[dict[str, float]], back: np.ndarray, scale: float
+) -> None:
+    """What the loads amount to as they are drawn, and the reactions, cancel.
+
+    Exactly where forces of a given size or loads on straight edges act alone; else as well as the
+    mesh follows arcs and round holes.
+    """
+    assert [each["load"] for each in told] == [load.id for load in case.loads]
+    each = np.array([[r[k] for k in ("x", "y", "moment")] for r in told]).reshape(-1, 3)
+    gap = np.abs(each.sum(axis=0) + back.sum(axis=0))
+    shape = shape_of(part)
+    exact = all(
+        isinstance(load, BearingLoad | PointLoad | TemperatureLoad)
+        or (
+            hasattr(load, "on")
+            and all(shape.curves[i].curve.curvature == 0.0 for i in shape.pieces_of(load.on))
+        )
+        for load in case.loads
+    )
+    assert gap.max() < (1e-8 if exact else 1e-4) * scale
 
 
 @pytest.mark.parametrize("place", SAMPLES, ids=lambda p: p.name.split(".")[0])

@@ -24,7 +24,7 @@ from screenapp.model.findings import (
     WallGauge,
 )
 from screenapp.model.mesh import Mesh
-from screenapp.model.solution import Balance, Reaction, Solution, StressField
+from screenapp.model.solution import Balance, LoadResultant, Reaction, Solution, StressField
 
 texts = st.text(st.characters(exclude_categories=["Cs"]), max_size=12)
 numbers = st.floats(allow_nan=False, allow_infinity=False)
@@ -63,6 +63,9 @@ cases = st.builds(
     st.tuples(numbers, numbers, numbers),
     st.lists(st.builds(Reaction, texts, numbers, numbers, numbers), max_size=2).map(tuple),
     st.builds(Balance, numbers, numbers),
+    st.lists(
+        st.builds(LoadResultant, texts, numbers, numbers, numbers, st.none() | points), max_size=2
+    ).map(tuple),
 )
 readings = st.builds(
     Reading,

@@ -101,6 +101,14 @@ def test_an_end_without_bound_is_null_and_comes_back_infinite(found: Findings) -
     assert (again.displacement_max.low, again.displacement_max.high) == (-inf, inf)
 
 
+def test_a_record_of_before_says_nothing_of_each_load(found: Findings) -> None:
+    record = findings_to_record(found, Part())
+    for case in record["cases"]:
+        del case["loads"]
+    assert _violations(record) == []
+    assert all(case.loads == () for case in findings_from_record(record).cases)
+
+
 def test_the_record_says_who_wrote_it_of_what(found: Findings) -> None:
     record = findings_to_record(found, Part(title="Tie plate"))
     assert (record["format"], record["version"]) == ("screenapp result", 1)
