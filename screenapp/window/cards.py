@@ -6,9 +6,10 @@ import math
 from dataclasses import replace
 
 from screenapp.model.estimate_text import EstimateKind, estimate_text, value_text
-from screenapp.model.findings import Estimate, LimitFindings, Peak, Reading
+from screenapp.model.findings import Estimate, LimitFindings, Peak
 from screenapp.model.part import Point, StressLimit
 from screenapp.window.painted import Card, Source
+from screenapp.window.read_values import read_value
 from screenapp.window.traced import Traced, figure_of, traced_number
 
 
@@ -110,22 +111,8 @@ def probe_values(
     for reading in source.findings.readings:
         if reading.case != found.case or places.get(reading.probe) != reading.at:
             continue
-        estimate = _read(reading, quantity)
+        estimate = read_value(reading, quantity)
         chosen = source.traced is not None and source.traced.probe == reading.probe
         if estimate is not None and not (chosen and quantity == "von_mises"):
             texts.append((reading.at, estimate_text(estimate, kind, source.part.display_units)))
     return tuple(texts)
-
-
-def _read(reading: Reading, quantity: str) -> Estimate | None:
-    if quantity != "u":
-        return reading.values.get(quantity)
-    parts = [reading.values.get(name) for name in ("u_x", "u_y")]
-    known = [p for p in parts if p is not None]
-    if len(known) < 2:
-        return None
-    size = math.hypot(*(p.value for p in known))
-    # the length of a vector is off by at most the length of what its components are off by
-    half = math.hypot(*(max(p.high - p.value, p.value - p.low) for p in known))
-    least = next((p for p in known if p.trust != "settled"), known[0])
-    return Estimate(size, max(0.0, size - half), size + half, least.trust)

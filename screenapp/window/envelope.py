@@ -7,43 +7,18 @@ from collections.abc import Callable
 from dataclasses import replace
 
 import numpy as np
-from numpy.typing import NDArray
 
 from screenapp.model.combinations import loadings
-from screenapp.model.estimate_text import estimate_text
+from screenapp.model.estimate_text import EstimateKind, estimate_text
 from screenapp.model.findings import Peak
-from screenapp.model.part import StressLimit
+from screenapp.model.part import Point, StressLimit
 from screenapp.window import fields as scalars
 from screenapp.window.cards import peak_card, peaks_of, trailing, use_cards
 from screenapp.window.document import View
 from screenapp.window.doubtful_zones import trusted_ends, zones_of
-from screenapp.window.painted import Card, Floats, Painting, Source
-
-Ints = NDArray[np.int64]
-
-ENVELOPED = ("Utilisation", "Stress", "Displacement")
-"""Lenses that can show all cases at once."""
-
-_LARGEST = ("von_mises", "tresca", "sigma_1", "u", "use")
-_LEAST = ("sigma_2",)
-
-
-def envelope(values: Floats, component: str) -> tuple[Floats, Ints]:
-    """The governing value at each place and the index of its case.
-
-    Measures that only grow worse upwards take the largest, σ₂ the smallest, components with a sign
-    the one that is largest in size, with its sign.  Of equals the first case governs.
-
-    Args:
-        values: (n_cases, ...).
-    """
-    if component in _LARGEST:
-        cases = values.argmax(axis=0)
-    elif component in _LEAST:
-        cases = values.argmin(axis=0)
-    else:
-        cases = np.abs(values).argmax(axis=0)
-    return np.take_along_axis(values, cases[None], axis=0)[0], cases
+from screenapp.window.governing import component_of, envelope, governing_reading
+from screenapp.window.painted import Card, Floats, Ints, Painting, Source
+from screenapp.window.read_values import read_value
 
 
 def paint_envelope(view: View, source: Source) -> Painting:
@@ -55,7 +30,29 @@ def paint_envelope(view: View, source: Source) -> Painting:
         "Stress": _stress,
         "Displacement": _displacement,
     }
-    return painters[view.lens](view, sources)
+    painting = painters[view.lens](view, sources)
+    if painting.values is None:
+        return painting
+    kind: EstimateKind = "displacement" if view.lens == "Displacement" else "stress"
+    return replace(painting, probes=_probe_values(source, component_of(view), kind))
+
+
+def _probe_values(
+    source: Source, component: str, kind: EstimateKind
+) -> tuple[tuple[Point, str], ...]:
+    """The value of each probe in the case that governs there, with its name."""
+    if source.findings is None:
+        return ()
+    names = {case.case: case.name for case in source.findings.cases}
+    texts: list[tuple[Point, str]] = []
+    for probe in source.part.readings:
+        readings = [r for r in source.findings.readings if r.probe == probe.id and r.at == probe.at]
+        reading = governing_reading(readings, component)
+        estimate = None if reading is None else read_value(reading, component)
+        if reading is not None and estimate is not None:
+            value = estimate_text(estimate, kind, source.part.display_units)
+            texts.append((reading.at, f"{value} under “{names[reading.case]}”"))
+    return tuple(texts)
 
 
 def case_name(source: Source) -> str:

@@ -270,9 +270,10 @@ class FigureTable(QTableView):
 
     def mousePressEvent(self, event: QMouseEvent) -> None:
         """A click on the line that is selected already goes there again."""
-        super().mousePressEvent(event)
         index = self.indexAt(event.position().toPoint())
-        if index.isValid():
+        again = index.isValid() and self.selectionModel().isRowSelected(index.row())
+        super().mousePressEvent(event)
+        if again and index.row() < len(self.figures.lines):
             self.document.select(self.figures.lines[index.row()].id)
             self.line_picked.emit(index.row())
 

@@ -23,7 +23,8 @@ from screenapp.window.cards import (
 )
 from screenapp.window.document import Lens, View
 from screenapp.window.doubtful_zones import trusted_ends, zones_of
-from screenapp.window.envelope import ENVELOPED, paint_envelope
+from screenapp.window.envelope import paint_envelope
+from screenapp.window.governing import ENVELOPED
 from screenapp.window.painted import Card, Painting, Source
 from screenapp.window.principal_crosses import crosses_of
 

@@ -11,12 +11,19 @@ from screenapp.model.cut_figure import cut_figure
 from screenapp.model.edits import rename_cut, rename_probe
 from screenapp.model.errors import ScreenappError
 from screenapp.model.estimate_text import value_text
-from screenapp.model.findings import Estimate, Reading
+from screenapp.model.findings import Reading
 from screenapp.model.part import Part
 from screenapp.window import theme
 from screenapp.window.document import Document
 from screenapp.window.figure_table import Column, FigureTable, Line
+from screenapp.window.governing import (
+    component_of,
+    governing_cut,
+    governing_reading,
+    shows_all_cases,
+)
 from screenapp.window.icons import icon
+from screenapp.window.read_values import size_of
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.field import sentence_of
 from screenapp.window.sheet.quantities import Quantities
@@ -56,6 +63,7 @@ class Readings(QWidget):
         self.setMinimumHeight(96)
         document.part_changed.connect(self.refresh)
         document.findings_changed.connect(self.refresh)
+        document.view_changed.connect(self._view_changed)
         theme.notifier.changed.connect(self._colour)
         self.refresh()
 
@@ -63,13 +71,24 @@ class Readings(QWidget):
         self.copy_button.setIcon(icon("copy", theme.current().quiet))
         self.update()
 
+    def _view_changed(self) -> None:
+        """With all cases in the lens, each reading stands in the case that governs there."""
+        view = self.document.view
+        shown = (component_of(view), shows_all_cases(view, self.document.part))
+        if shown != self._shown and (shown[1] or self._shown[1]):
+            self.refresh()
+
     def refresh(self) -> None:
         """Show the document as it now is."""
         document = self.document
         part = document.part
-        lines = _lines(document)
+        worst = shows_all_cases(document.view, part)
+        self._shown = (component_of(document.view), worst)
+        numbered = _lines(document)
+        self.table.cases = tuple(case for case, _ in numbered)
+        lines = tuple(line for _, line in numbered)
         fresh = document.findings is None or document.current
-        self.table.show_lines(_columns(part), lines, faded=not fresh)
+        self.table.show_lines(_columns(part, worst), lines, faded=not fresh)
         self._stack.setCurrentIndex(0 if lines else 1)
         self.copy_button.setVisible(bool(lines))
 
@@ -82,6 +101,7 @@ class _Table(FigureTable):
         self.figures.rename = self._rename
         self.figures.refused = self._refused
         self.line_picked.connect(self._trace)
+        self.cases: tuple[int, ...] = ()  # index of the case of each line
 
     def _rename(self, probe: str, name: str) -> None:
         part = self.document.part
@@ -92,7 +112,7 @@ class _Table(FigureTable):
         cases = loadings(self.document.part)
         if not cases:
             return
-        number, id_ = row % len(cases), self.line_at(row).id  # each has a line for every case
+        number, id_ = self.cases[row], self.line_at(row).id
         if any(cut.id == id_ for cut in self.document.part.cuts):
             self.document.look(case=number)
             self.document.select(id_)
@@ -133,13 +153,15 @@ class _Table(FigureTable):
         menu.popup(event.globalPos())
 
 
-def _columns(part: Part) -> tuple[Column, ...]:
+def _columns(part: Part, worst: bool) -> tuple[Column, ...]:
     q = Quantities(part.display_units)
     length = q.show(1.0, "length").split()[-1]
     stress = q.show(1.0, "stress").split()[-1]
     columns = [
         Column("Reading"),
-        Column("Case"),
+        Column("Governing case", tip="The lens shows all cases: the worst one at each reading")
+        if worst
+        else Column("Case"),
         Column(f"x, y {length}", number=True, spare=True),
         Column(f"von Mises {stress}", number=True),
         Column("σ₁", number=True, tip="Largest principal stress"),
@@ -150,8 +172,10 @@ def _columns(part: Part) -> tuple[Column, ...]:
     return tuple(columns)
 
 
-def _lines(document: Document) -> tuple[Line, ...]:
-    part = document.part
+def _lines(document: Document) -> list[tuple[int, Line]]:
+    """The index of the case of each line, and the line."""
+    part, view = document.part, document.view
+    worst = shows_all_cases(view, part)
     found: dict[tuple[str, str], Reading] = {}
     if document.findings is not None:
         found = {(r.probe, r.case): r for r in document.findings.readings}
@@ -161,7 +185,11 @@ def _lines(document: Document) -> tuple[Line, ...]:
     length = q.show(1.0, "length").split()[-1]
     for probe in part.readings:
         at = f"{q.bare(probe.at[0], 'length')}, {q.bare(probe.at[1], 'length')}"
-        for id_, case_name in cases:
+        here = [r for (id_, _), r in found.items() if id_ == probe.id and r.at == probe.at]
+        only = governing_reading(here, component_of(view)) if worst else None
+        for number, (id_, case_name) in enumerate(cases):
+            if only is not None and only.case != id_:
+                continue
             reading = found.get((probe.id, id_))
             if reading is not None and reading.at != probe.at:
                 reading = None  # it was moved since and is being read anew
@@ -169,19 +197,25 @@ def _lines(document: Document) -> tuple[Line, ...]:
             place = reading.place if reading else ""
             why = reading.why if reading else "Not read yet: screen the part"
             tip = "\n".join(filter(None, (place, f"at {at} {length}", why)))
-            lines.append(Line(probe.id, texts, tip))
-    lines += _cut_lines(document, cases)
-    return tuple(lines)
+            lines.append((number, Line(probe.id, texts, tip)))
+    return lines + _cut_lines(document, cases, worst)
 
 
-def _cut_lines(document: Document, cases: list[tuple[str, str]]) -> list[Line]:
-    """A line for each cut under each case: its largest stress; the sheet has the rest."""
+def _cut_lines(
+    document: Document, cases: list[tuple[str, str]], worst: bool
+) -> list[tuple[int, Line]]:
+    """A line for each cut under each case, or under the one that governs: its largest stress; the
+    sheet has the rest."""
     part = document.part
     read = document.findings.cuts if document.findings is not None else ()
     found = {(c.cut, c.case, c.start, c.end): c for c in read}
     lines = []
     for cut in part.cuts:
-        for id_, case_name in cases:
+        here_now = [c for c in read if c.cut == cut.id and (c.start, c.end) == (cut.start, cut.end)]
+        only = governing_cut(here_now) if worst else None
+        for number, (id_, case_name) in enumerate(cases):
+            if only is not None and only.case != id_:
+                continue
             here = found.get((cut.id, id_, cut.start, cut.end))
             if here is None:
                 texts = (cut.name, case_name, "cut", *(DASH,) * 5)
@@ -190,7 +224,7 @@ def _cut_lines(document: Document, cases: list[tuple[str, str]]) -> list[Line]:
                 largest = value_text(here.largest, "stress", part.display_units, unit=False)
                 texts = (cut.name, case_name, "cut", largest, *(DASH,) * 3, here.trust)
                 tip = cut_figure(here, part.display_units).words
-            lines.append(Line(cut.id, texts, tip))
+            lines.append((number, Line(cut.id, texts, tip)))
     return lines
 
 
@@ -217,26 +251,3 @@ def _moved(part: Part, reading: Reading) -> str:
     if not {"u_x", "u_y"} <= reading.values.keys():
         return DASH
     return value_text(size_of(reading), "displacement", part.display_units, unit=False)
-
-
-def size_of(reading: Reading) -> Estimate:
-    """Size of the displacement, with the band that the bands of its components leave.
-
-    The true components lie in their bands, so the true size lies between the smallest and the
-    largest size of any vector in that box.
-    """
-    x, y = reading.values["u_x"], reading.values["u_y"]
-    value = (x.value**2 + y.value**2) ** 0.5
-    low = (_least(x) ** 2 + _least(y) ** 2) ** 0.5
-    high = (_most(x) ** 2 + _most(y) ** 2) ** 0.5
-    rank = ("settled", "unsettled", "rising")
-    trust = max((x.trust, y.trust), key=rank.index)
-    return Estimate(value, low, high, trust)
-
-
-def _least(e: Estimate) -> float:
-    return 0.0 if e.low <= 0.0 <= e.high else min(abs(e.low), abs(e.high))
-
-
-def _most(e: Estimate) -> float:
-    return max(abs(e.low), abs(e.high))

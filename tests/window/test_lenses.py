@@ -496,3 +496,31 @@ def test_nothing_at_the_edges_covers_a_fitted_part(bench: Bench, size: tuple[int
     assert part.right() < bar.x() + bar._bar().left()
     assert part.top() > heading.geometry().bottom()
     assert part.bottom() < canvas.bottom() - 44  # the scale bar with its figure
+
+
+def test_pointing_at_all_cases_names_the_one_that_governs_there(bench: Bench) -> None:
+    """Kirsch: beside the hole the pull compresses (-100 MPa), far off only the push does."""
+    bench.document.look(lens="Stress", stress="sigma_2", envelope=True)
+    bench.screen()
+    bench.settle()
+
+    def said_at(x: float, y: float) -> str:
+        QTest.mouseMove(
+            bench.board.canvas.viewport(), bench.board.canvas.frame_now.px((x, y)).toPoint()
+        )
+        QApplication.processEvents()
+        return bench.board._corner.full
+
+    assert "“Push” governs" in said_at(45.0, 20.0)
+    assert "“Pull” governs" in said_at(-made.RADIUS - 0.4, 0.0)
+    assert "governs" not in said_at(0.0, 0.0), "in the hole"
+    bench.document.look(envelope=False)
+    assert "governs" not in said_at(45.0, 20.0)
+
+
+def test_probes_of_all_cases_name_the_case_of_their_value(bench: Bench) -> None:
+    bench.document.look(lens="Stress", stress="von_mises", envelope=True)
+    bench.screen()
+    texts = [value.text for value in bench.board.canvas.labels.values]
+    assert texts
+    assert all(" under “P" in text for text in texts)

@@ -12,7 +12,7 @@ from screenapp.model.findings import Trust
 from screenapp.model.part import Part, StressLimit
 from screenapp.window import fields as scalars
 from screenapp.window.document import Lens, View
-from screenapp.window.envelope import ENVELOPED, envelope
+from screenapp.window.governing import ENVELOPED, envelope
 from screenapp.window.painting import Painting, Source, paint
 from tests.window import fabricate as made
 

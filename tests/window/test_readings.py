@@ -14,7 +14,8 @@ from pytestqt.qtbot import QtBot
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Reading
 from screenapp.model.part import Probe
 from screenapp.window.document import Document
-from screenapp.window.readings import EMPTY, Readings, size_of
+from screenapp.window.read_values import size_of
+from screenapp.window.readings import EMPTY, Readings
 from tests.window.fabricate import plate
 from tests.window.window_kit import made_up, settle
 
@@ -173,3 +174,56 @@ def test_numbers_are_never_cut(readings: Readings, width: int) -> None:
             if spec.number:
                 room = table.visualRect(table.figures.index(row, column)).width() - 12
                 assert metrics.horizontalAdvance(line.texts[column]) <= room
+
+
+def test_all_cases_show_each_reading_in_the_case_that_governs_there(readings: Readings) -> None:
+    document = readings.document
+    screened(document)
+    assert document.findings is not None
+    more = Estimate(300.0, 299.0, 301.0, "settled")
+    rows = [
+        replace(
+            r,
+            values=r.values | {"von_mises": more, "sigma_2": Estimate(-9.0, -9.1, -8.9, "settled")},
+        )
+        if (r.probe, r.case) == ("p1", "case2")
+        else r
+        for r in document.findings.readings
+    ]
+    document.set_findings(replace(document.findings, readings=tuple(rows)))
+    document.look(lens="Stress", envelope=True)
+    first, second = texts(readings)
+    assert first[:2] == ("P1", "Push")
+    assert first[3] == "300.0 ± 1.0"
+    assert second[:2] == ("P2", "Pull"), "of equals the first case"
+    assert readings.table.figures.columns[1].title == "Governing case"
+    document.look(stress="sigma_1")
+    assert texts(readings)[0][:2] == ("P1", "Pull"), "10 in both: the first case"
+    document.look(stress="sigma_2")
+    assert texts(readings)[0][:2] == ("P1", "Push"), "the most compressive"
+    QTest.mouseClick(
+        readings.table.viewport(),
+        LEFT,
+        pos=readings.table.visualRect(readings.table.figures.index(0, 0)).center(),
+    )
+    assert document.traced is not None
+    assert document.traced.case == "case2", "the history is that of the case shown"
+    document.look(case=0)
+    assert len(texts(readings)) == 4
+    assert readings.table.figures.columns[1].title == "Case"
+
+
+def test_what_rises_in_one_case_governs_before_larger_numbers(readings: Readings) -> None:
+    document = readings.document
+    screened(document)
+    assert document.findings is not None
+    rising = Estimate(20.0, 20.0, math.inf, "rising")
+    rows = [
+        replace(r, values=r.values | {"von_mises": rising})
+        if (r.probe, r.case) == ("p1", "case2")
+        else r
+        for r in document.findings.readings
+    ]
+    document.set_findings(replace(document.findings, readings=tuple(rows)))
+    document.look(lens="Utilisation", envelope=True)
+    assert texts(readings)[0][1] == "Push"

@@ -232,7 +232,6 @@ class Board(QWidget):
         x, y = place.at if tool is not None and tool.snapping else place.raw
         digits, word = (3, "in") if units == "in-lbf-ksi" else (2, "mm")
         at = f"x {x / unit:.{digits}f}   y {y / unit:.{digits}f} {word}"
-        if tool is not None and tool.snapping:
-            self._corner.say(at, f"snap: {place.snap.words}")
-        else:
-            self._corner.say(at)
+        snap = f"snap: {place.snap.words}" if tool is not None and tool.snapping else ""
+        remarks = " · ".join(filter(None, (self.canvas.remark_at(place.raw), snap)))
+        self._corner.say(*filter(None, (at, remarks)))

@@ -49,6 +49,7 @@ class Canvas(ZoomView):
         tool: the tool in hand.
         place: where the cursor is, None while it is elsewhere.
         dimensions: those that are shown, as on a drawing.
+        remark_at: what the lens has to say of a place [mm], "" for nothing.
         pressed_first: asked about a press [px] before the tool; answers whether it was taken.
 
     Signals:
@@ -66,6 +67,7 @@ class Canvas(ZoomView):
         self.document = document
         self.tool: Tool | None = None
         self.place: Place | None = None
+        self.remark_at: Callable[[Point], str] = lambda at: ""
         self.pressed_first: Callable[[QPointF], bool] = lambda px: False
         self._preview: Part | None = None
         self._space = False

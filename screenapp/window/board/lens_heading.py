@@ -13,8 +13,8 @@ from screenapp.window.board.colour_bar import TAKEN
 from screenapp.window.board.overlay import Anchor
 from screenapp.window.board.trust_marks import TrustLegend
 from screenapp.window.document import Document
-from screenapp.window.envelope import ENVELOPED
 from screenapp.window.fields import DISPLACEMENT_NAMES, STRESS_NAMES
+from screenapp.window.governing import ENVELOPED
 
 MARGIN = 16
 AUTOMATIC = "auto"

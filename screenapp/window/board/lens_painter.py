@@ -10,6 +10,7 @@ from PySide6.QtGui import QPainterPath
 
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields, Findings
+from screenapp.model.part import Point
 from screenapp.report.colours import Scale
 from screenapp.window import theme
 from screenapp.window.board.callouts import Callout, CalloutItem
@@ -27,6 +28,7 @@ from screenapp.window.board.rim_item import RimItem
 from screenapp.window.board.trust_marks import TrustMarkItem
 from screenapp.window.document import Document
 from screenapp.window.fields import moved
+from screenapp.window.governing import Governing
 from screenapp.window.painted import Painting, Source
 from screenapp.window.painting import WAITING, paint
 
@@ -71,6 +73,7 @@ class LensPainter(QObject):
         self._findings_at_pass: Findings | None = None
         self._passes = 0
         self._shown: _Shown | None = None
+        self._governing: Governing | None = None
         self._typed: dict[tuple[str, str], Range] = {}
         self._path = QPainterPath()
         self.field, self.mesh = FieldItem(), MeshItem()
@@ -82,6 +85,7 @@ class LensPainter(QObject):
         self.bar = ColourBar(board.canvas)
         self.heading = LensHeading(document, board.canvas)
         board.canvas.pressed_first = self._press
+        board.canvas.remark_at = self.remark_at
         board.canvas.labels.cards = self.callouts.cards
         board.canvas.labels.overlays = self.callouts.overlays = self._overlays
         self.bar.range_wanted.connect(self._take_range)
@@ -117,6 +121,17 @@ class LensPainter(QObject):
         """Make sharp pictures at once (to save an image of the board)."""
         for item in (self.field, self.mesh):
             item.refresh_now()
+
+    def remark_at(self, at: Point) -> str:
+        """The case that governs at a place [mm], where all of them are shown; else ""."""
+        known = self._shown
+        if known is None or known.painting.governing is None:
+            return ""
+        if self._governing is None or self._governing.painting is not known.painting:
+            self._governing = Governing(known.fields.mesh, known.painting)
+        case = self._governing.at(at)
+        names = [one.name or one.id for one in loadings(self._document.part)]
+        return f"“{names[case]}” governs" if case is not None and case < len(names) else ""
 
     def _press(self, px: QPointF) -> bool:
         """Choose the number whose card is pressed."""
