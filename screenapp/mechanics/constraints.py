@@ -14,11 +14,13 @@ import numpy as np
 from numpy.typing import NDArray
 from scipy import sparse
 
+from screenapp.mechanics.elastic_supports import Springs
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError, SolvingError
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import (
+    ElasticSupport,
     FixedSupport,
     Part,
     PinSupport,
@@ -78,6 +80,8 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
     tangents = side_tangents(shape, mesh)
     parts: list[tuple[Ints, Floats, Floats, Ints]] = []
     for owner, support in enumerate(part.supports):
+        if isinstance(support, ElasticSupport):
+            continue  # it holds nothing: see `elastic_supports`
         nodes, normals = _places_of(part, support, shape, mesh, tangents)
         for direction, value in _holds_of(support, normals):
             parts.append(
@@ -115,12 +119,14 @@ def prescribe_nodes(nodes: Ints, displacements: Floats, name: str = "nodes") -> 
     )
 
 
-def reduce(held: HeldDirections, mesh: Mesh, index: Ints) -> Reduction:
+def reduce(
+    held: HeldDirections, mesh: Mesh, index: Ints, springs: Springs | None = None
+) -> Reduction:
     """Work out which displacements are left free.
 
     `index` gives each mesh node's position among the carried ones, -1 for the others, whose holds
     are dropped.  Holds at one node combine: two different directions fix it, equal ones count
-    once.
+    once.  `springs` hold nothing, but they stop a part from moving freely.
 
     Raises:
         InvalidPartError: supports ask for different displacements of one node.
@@ -129,7 +135,11 @@ def reduce(held: HeldDirections, mesh: Mesh, index: Ints) -> Reduction:
     at = index[held.nodes]
     keep = at >= 0
     at, directions, values = at[keep], held.directions[keep], held.values[keep]
-    free_motion(held.nodes[keep], directions, mesh)
+    stopped, ways = held.nodes[keep], directions
+    if springs is not None:
+        stopped = np.concatenate([stopped, springs.nodes])
+        ways = np.concatenate([ways, springs.directions])
+    free_motion(stopped, ways, mesh)
     nodes, inverse = np.unique(at, return_inverse=True)
     gram = np.zeros((len(nodes), 2, 2))
     pull = np.zeros((len(nodes), 2))
@@ -157,6 +167,8 @@ def held_sides(part: Part, shape: Shape, mesh: Mesh) -> NDArray[np.bool_]:
     normals = outward(tangents)
     out = np.zeros((len(mesh.sides), 2), dtype=bool)
     for support in part.supports:
+        if isinstance(support, ElasticSupport):
+            continue  # its traction follows from the displacements
         sides = mesh.sides_on(pieces_under(part, shape, support))
         for direction, _ in _holds_of(support, normals[sides]):
             for column, frame in enumerate((normals, tangents)):
@@ -227,7 +239,11 @@ def _holds_of(support: Support, normals: Floats) -> list[tuple[Floats, float]]:
     if isinstance(support, PrescribedSupport):
         wanted = ((x, support.x), (y, support.y))
         return [(axis, value) for axis, value in wanted if value is not None]
-    if isinstance(support, PinSupport | SymmetrySupport) or support.angle is None:
+    if isinstance(support, PinSupport | SymmetrySupport):
+        return [(normals, 0.0)]
+    if isinstance(support, ElasticSupport):
+        return []
+    if support.angle is None:
         return [(normals, 0.0)]
     angle = math.radians(support.angle)
     return [(_clean(np.array([math.cos(angle), math.sin(angle)])), 0.0)]

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -17,7 +19,10 @@ def resultant(positions: Floats, forces: Floats) -> Floats:
 
 
 def reactions(
-    held: HeldDirections, positions: Floats, support_forces: Floats
+    held: HeldDirections,
+    positions: Floats,
+    support_forces: Floats,
+    springs: Mapping[int, Floats] | None = None,
 ) -> tuple[Reaction, ...]:
     """The reaction of every support, in the order of `held.supports`.
 
@@ -25,12 +30,19 @@ def reactions(
     force along the directions it holds.  Where several supports hold one node and that leaves a
     choice, the split with the least sum of squares is taken (two fixed supports share evenly);
     the sum over the supports is the node's whole reaction in every case.
+
+    Args:
+        springs: what supports that give way give at the nodes, (n_nodes, 2) [N], by the index of
+            the support; it is part of `support_forces`.
     """
-    shares = _shares(held, support_forces)
+    beds = springs or {}
+    shares = _shares(held, support_forces - sum(beds.values(), start=np.zeros(2)))
     out = []
     for owner, name in enumerate(held.supports):
         mine = held.owners == owner
         total = resultant(positions[held.nodes[mine]], shares[mine])
+        if owner in beds:
+            total = total + resultant(positions, beds[owner])
         out.append(Reaction(name, float(total[0]), float(total[1]), float(total[2])))
     return tuple(out)
 

@@ -11,6 +11,7 @@ from scipy import sparse
 from screenapp.mechanics.assembly import System, condense_loads, internal_forces, spread
 from screenapp.mechanics.constraints import HeldDirections, reduce
 from screenapp.mechanics.dissection import elimination_order
+from screenapp.mechanics.elastic_supports import Springs
 from screenapp.mechanics.equilibrium import balance, reactions
 from screenapp.mechanics.linear_solve import factorise, solve_refined
 from screenapp.model.progress import SILENT, Progress
@@ -21,19 +22,26 @@ Ints = NDArray[np.int64]
 
 
 def solve_system(
-    system: System, held: HeldDirections, forces: Floats, progress: Progress = SILENT
+    system: System,
+    held: HeldDirections,
+    forces: Floats,
+    progress: Progress = SILENT,
+    springs: Springs | None = None,
 ) -> Solution:
-    """Solve assembled equations for nodal forces (n_cases, n_nodes, 2) [N].
+    """Solve assembled equations for nodal forces (n_cases, n_nodes, 2) [N], on supports that hold
+    and on springs that give way.
 
     Raises:
         InvalidPartError, SolvingError, Cancelled: as for `solve`.
     """
     mesh = system.mesh
-    reduction = reduce(held, mesh, system.index)
+    reduction = reduce(held, mesh, system.index, springs)
     loads = condense_loads(system, forces)
     basis = reduction.basis
-    reduced = (basis.T @ system.stiffness @ basis).tocsc()
-    right = basis.T @ (loads - system.stiffness @ reduction.held).T
+    bedded = None if springs is None else springs.stiffness(system.carried)
+    stiffness = system.stiffness if bedded is None else system.stiffness + bedded
+    reduced = (basis.T @ stiffness @ basis).tocsc()
+    right = basis.T @ (loads - stiffness @ reduction.held).T
     held_term = np.broadcast_to(reduction.held, loads.shape)
 
     def in_full(terms: Sequence[Floats]) -> list[Floats]:
@@ -41,7 +49,11 @@ def solve_system(
 
     def gap_of(terms: Sequence[Floats]) -> Floats:
         progress.check()
-        return np.asarray(basis.T @ (loads - internal_forces(system, in_full(terms))).T)
+        full = in_full(terms)
+        back = loads - internal_forces(system, full)
+        if bedded is not None:
+            back -= (bedded @ np.sum(full, axis=0).T).T
+        return np.asarray(basis.T @ back.T)
 
     progress.check()
     terms, residual = solve_refined(
@@ -55,7 +67,11 @@ def solve_system(
     support_forces[:, system.carried] = (internal_forces(system, parts) - loads).reshape(
         len(forces), len(system.carried), 2
     )
-    given = tuple(reactions(held, mesh.nodes, case) for case in support_forces)
+    beds = {} if springs is None else springs.forces(displacements)
+    given = tuple(
+        reactions(held, mesh.nodes, case, {owner: bed[k] for owner, bed in beds.items()})
+        for k, case in enumerate(support_forces)
+    )
     return Solution(
         element=system.element,
         displacements=displacements,

@@ -17,6 +17,7 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics.assembly import System
 from screenapp.mechanics.constraints import HeldDirections
+from screenapp.mechanics.elastic_supports import Springs
 from screenapp.mechanics.linear_system import solve_system
 from screenapp.model.errors import SolvingError
 from screenapp.model.part import Part, PinSupport
@@ -42,7 +43,12 @@ def has_pins(part: Part) -> bool:
 
 
 def solve_with_pins(
-    part: Part, system: System, held: HeldDirections, forces: Floats, progress: Progress = SILENT
+    part: Part,
+    system: System,
+    held: HeldDirections,
+    forces: Floats,
+    progress: Progress = SILENT,
+    springs: Springs | None = None,
 ) -> Solution:
     """Solve every case with the contact that it makes.
 
@@ -59,7 +65,7 @@ def solve_with_pins(
     )
     names = " and ".join(s.on for s in part.supports if isinstance(s, PinSupport))
     return _together(
-        [_one_case(system, held, pushing, own[None], names, progress) for own in forces]
+        [_one_case(system, held, pushing, own[None], names, progress, springs) for own in forces]
     )
 
 
@@ -70,13 +76,14 @@ def _one_case(
     forces: Floats,
     names: str,
     progress: Progress,
+    springs: Springs | None,
 ) -> Solution:
     movable = pushing & (system.index[held.nodes] >= 0)
     touching = np.ones(len(held.nodes), dtype=bool)
     for number in range(MOST_ROUNDS):
         progress.check()
         try:
-            found = solve_system(system, _only(held, touching), forces, progress)
+            found = solve_system(system, _only(held, touching), forces, progress, springs)
         except SolvingError as error:
             if number == 0:
                 raise

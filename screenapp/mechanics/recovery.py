@@ -16,6 +16,7 @@ from screenapp.mechanics import constraints, loads, shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
 from screenapp.mechanics.corner_stress import disturbed_corners, known_corners, split_corners
 from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
+from screenapp.mechanics.elastic_supports import spring_tractions
 from screenapp.mechanics.element_walls import element_hooke, element_thickness, hooke_of
 from screenapp.mechanics.energy_error import energy_error
 from screenapp.mechanics.patch_recovery import recover_inside
@@ -39,7 +40,7 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
         SolvingError: the wall has no usable material.
     """
     hooke = element_hooke(part, mesh)
-    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in loadings(part)])
+    traction = known_tractions(part, shape, mesh, solution)
     held = constraints.held_sides(part, shape, mesh)
     inside = averaged_stress(mesh, extrapolated_stress(mesh, solution, hooke))
     chains = boundary_chains(shape, mesh)
@@ -65,9 +66,15 @@ def recover(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> StressF
     return StressField(nodal, side, error)
 
 
-def split_corner_nodes(part: Part, shape: Shape, mesh: Mesh) -> Ints:
+def known_tractions(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> Floats:
+    """What loads and beds of springs put on the boundary, (n_cases, n_sides, 3, 2) [MPa]."""
+    given = np.stack([loads.side_tractions(part, shape, mesh, case) for case in loadings(part)])
+    return given + spring_tractions(part, shape, mesh, solution)
+
+
+def split_corner_nodes(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> Ints:
     """Nodes of corners whose stress differs on the two sides (`corner_stress.split_corners`)."""
-    traction = np.stack([loads.side_tractions(part, shape, mesh, case) for case in loadings(part)])
+    traction = known_tractions(part, shape, mesh, solution)
     held = constraints.held_sides(part, shape, mesh)
     chains = boundary_chains(shape, mesh)
     _, known = known_corners(chains, traction, held, disturbed_corners(part, mesh))

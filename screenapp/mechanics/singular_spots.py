@@ -8,6 +8,7 @@ mesh means nothing.  Where a shear load stops it grows as well, but slowly (`she
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 from typing import Literal
 
 import numpy as np
@@ -23,6 +24,7 @@ from screenapp.model.edge_parts import pieces_under
 from screenapp.model.members import whole_id
 from screenapp.model.part import (
     Case,
+    ElasticSupport,
     FixedSupport,
     Part,
     PinSupport,
@@ -37,7 +39,7 @@ from screenapp.model.shape import Shape
 Held = Literal["free", "fixed", "normal"] | float
 """How a piece of the boundary is held; a number is the angle [rad] of the one held direction."""
 
-__all__ = ["SingularSpot", "faces", "singular_spots"]
+__all__ = ["SingularSpot", "face_at", "faces", "junctions", "singular_spots"]
 
 _LEAST_RATE = 0.02
 """Growth slower than this cannot be told from none in seven passes and is not counted."""
@@ -66,11 +68,7 @@ def singular_spots(part: Part, shape: Shape) -> tuple[SingularSpot, ...]:
             for s in spots
         )
 
-    def face(piece: int, start: bool) -> Face:
-        tangent = shape.curves[piece].curve.tangent(0.0 if start else 1.0)
-        return _against(kinds[piece], tangent if start else -tangent)
-
-    slow = shear_ends(part, shape, _angles(shape), face)
+    slow = shear_ends(part, shape, junctions(shape), face_at(part, shape))
     return (*spots, *(spot for spot in slow if not known(spot)))
 
 
@@ -83,6 +81,17 @@ def faces(part: Part, shape: Shape) -> list[Held]:
     return kinds
 
 
+def face_at(part: Part, shape: Shape) -> Callable[[int, bool], Face]:
+    """How a piece of the boundary (by index) is held at its start (True) or its end."""
+    kinds = faces(part, shape)
+
+    def face(piece: int, start: bool) -> Face:
+        tangent = shape.curves[piece].curve.tangent(0.0 if start else 1.0)
+        return _against(kinds[piece], tangent if start else -tangent)
+
+    return face
+
+
 def _held(support: Support) -> Held:
     if isinstance(support, FixedSupport):
         return "fixed"
@@ -92,6 +101,8 @@ def _held(support: Support) -> Held:
         if support.x is None and support.y is None:
             return "free"
         return 0.0 if support.x is not None else 0.5 * math.pi
+    if isinstance(support, ElasticSupport):
+        return "free"  # springs give a finite traction
     if isinstance(support, PinSupport | SymmetrySupport):
         return "normal"
     return "normal" if support.angle is None else math.radians(support.angle) % math.pi
@@ -124,7 +135,7 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
     kinds = faces(part, shape)
     named = {point: corner for corner, point in shape.sharp_corners}
     spots: list[SingularSpot] = []
-    for i, j, angle in _angles(shape):
+    for i, j, angle in junctions(shape):
         before, after = shape.curves[i], shape.curves[j]
         if abs(angle - math.pi) < _SMOOTH and kinds[i] == kinds[j]:
             continue
@@ -143,7 +154,7 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
     return spots
 
 
-def _angles(shape: Shape) -> list[tuple[int, int, float]]:
+def junctions(shape: Shape) -> list[tuple[int, int, float]]:
     """Every piece of the boundary, the one after it, and the angle of the material between."""
     found: list[tuple[int, int, float]] = []
     for first, last in shape.loops:

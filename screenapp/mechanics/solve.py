@@ -9,6 +9,7 @@ import numpy as np
 
 from screenapp.mechanics.assembly import assemble
 from screenapp.mechanics.constraints import held_directions
+from screenapp.mechanics.elastic_supports import springs
 from screenapp.mechanics.element_walls import element_hooke, element_thickness
 from screenapp.mechanics.linear_system import solve_system
 from screenapp.mechanics.loads import nodal_forces
@@ -46,10 +47,11 @@ def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> 
         element_thickness(part, mesh),
         progress,
     )
+    beds = springs(part, shape, mesh)
     if has_pins(part):
-        found = solve_with_pins(part, system, held, forces, progress)
+        found = solve_with_pins(part, system, held, forces, progress, beds)
     else:
-        found = solve_system(system, held, forces, progress)
+        found = solve_system(system, held, forces, progress, beds)
     return replace(found, free_strains=free)
 
 

@@ -19,6 +19,7 @@ KindName = Literal[
     "moment",
     "stress",
     "line_load",
+    "bed_stiffness",
     "angle",
     "acceleration",
     "density",
@@ -86,6 +87,13 @@ KINDS: dict[KindName, Kind] = {
         ("N/mm", _ONE),
         ("lbf/in", _POUND_FORCE / _INCH),
         "5 N/mm or 30 lbf/in",
+    ),
+    "bed_stiffness": Kind(
+        "a stiffness per length",
+        "N/mm**2",
+        ("N/mm²", _ONE),
+        ("lbf/in²", _POUND_FORCE / _INCH**2),
+        "50 N/mm²",
     ),
     "angle": Kind(
         "an angle",

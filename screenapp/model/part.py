@@ -86,6 +86,9 @@ from screenapp.model.load_records import (
 )
 from screenapp.model.pattern import Pattern
 from screenapp.model.support_records import (
+    ElasticSupport as ElasticSupport,
+)
+from screenapp.model.support_records import (
     FixedSupport as FixedSupport,
 )
 from screenapp.model.support_records import (

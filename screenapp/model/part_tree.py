@@ -22,6 +22,7 @@ from screenapp.model.part import (
     Dimension,
     DisplacementLimit,
     Edge,
+    ElasticSupport,
     FatigueLimit,
     FixedSupport,
     ForceLoad,
@@ -69,6 +70,7 @@ SUPPORTS: dict[str, type] = {
     "prescribed": PrescribedSupport,
     "pin": PinSupport,
     "symmetry": SymmetrySupport,
+    "elastic": ElasticSupport,
 }
 LOADS: dict[str, type] = {
     "pressure": PressureLoad,

@@ -16,6 +16,7 @@ from numpy.typing import NDArray
 
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.part import (
+    ElasticSupport,
     FixedSupport,
     Part,
     PinSupport,
@@ -93,6 +94,10 @@ def held_by(part: Part, support: Support, shape: Shape) -> Held:
     elif isinstance(support, PrescribedSupport):
         given = ((x, support.x), (y, support.y))
         parts = [(direction, value) for direction, value in given if value is not None]
+    elif isinstance(support, ElasticSupport):
+        along = np.column_stack([-normals[:, 1], normals[:, 0]])
+        springs = ((normals, support.normal), (along, support.along))
+        parts = [(direction, 0.0) for direction, stiffness in springs if stiffness > 0.0]
     if not parts:
         return Held(np.empty((0, 2)), np.empty((0, 2)), np.empty(0))
     return Held(

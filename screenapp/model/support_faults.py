@@ -14,6 +14,7 @@ from screenapp.model.part import (
     CircleHole,
     Corner,
     Edge,
+    ElasticSupport,
     Part,
     PinSupport,
     Point,
@@ -25,6 +26,11 @@ from screenapp.model.part import (
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
 from screenapp.model.size_faults import finite_point
+
+STIFFEST = 1e9
+"""No bed of springs may be stiffer [N/mm²]: thousands of times what a wall of metal is."""
+
+_WAYS = {"normal": "across", "along": "along"}
 
 
 def support_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fault]:
@@ -135,6 +141,8 @@ def one_support_faults(
                 f"{where}.angle",
                 ids,
             )
+    elif isinstance(support, ElasticSupport):
+        yield from _elastic_faults(support, name, where, on_corner)
     elif isinstance(support, PrescribedSupport):
         given = {k: v for k, v in (("x", support.x), ("y", support.y)) if v is not None}
         if not given:
@@ -161,6 +169,35 @@ def one_support_faults(
                 )
 
 
+def _elastic_faults(
+    support: ElasticSupport, name: str, where: str, on_corner: bool
+) -> Iterator[Fault]:
+    ids = (support.id, support.on)
+    if on_corner:
+        yield Fault(
+            f"{name} is a bed of springs on corner {support.on}, which has no length",
+            "put it on an edge or a hole",
+            f"{where}.on",
+            ids,
+        )
+    for field, value in (("normal", support.normal), ("along", support.along)):
+        if not (math.isfinite(value) and 0.0 <= value <= STIFFEST):
+            yield Fault(
+                f"the stiffness {_WAYS[field]} the boundary of {name} is {value:g} N/mm²",
+                "give zero or more, and for what hardly gives way another kind of support",
+                f"{where}.{field}",
+                ids,
+            )
+            return
+    if support.normal == 0.0 and support.along == 0.0:
+        yield Fault(
+            f"{name} is a bed of springs without stiffness",
+            "give a stiffness across or along the boundary, or remove it",
+            where,
+            ids,
+        )
+
+
 def _with_ids(fault: Fault, id_: str, on: str) -> Fault:
     """The same fault with the plain id (not its words) to be marked."""
     ids = (id_, on) if len(fault.ids) > 1 else (id_,)
@@ -175,6 +212,8 @@ def _contradictions(part: Part, shape: Shape) -> Iterator[Fault]:
     moving = [k for k, s in enumerate(part.supports) if isinstance(s, PrescribedSupport)]
     for a in moving:
         for b in range(len(held)):
+            if isinstance(part.supports[b], ElasticSupport):
+                continue  # springs give way
             if b == a or (b in moving and b < a):
                 continue
             at = _clash(held[a].points, held[b].points, (held[a], held[b]))

@@ -72,4 +72,23 @@ class PinSupport:
     on: str
 
 
-Support = FixedSupport | RollerSupport | PrescribedSupport | PinSupport | SymmetrySupport
+@dataclass(frozen=True)
+class ElasticSupport:
+    """A bed of springs along an edge or round a hole.
+
+    For every millimetre of the boundary that moves by one millimetre it pushes back with `normal`
+    [N/mm²] along the boundary's normal and with `along` [N/mm²] along its tangent; a stiffness of
+    zero lets that direction free.  It pulls as well as pushes.
+    """
+
+    id: str
+    on: str
+    normal: float = 0.0
+    along: float = 0.0
+    start: float | None = None
+    end: float | None = None
+
+
+Support = (
+    FixedSupport | RollerSupport | PrescribedSupport | PinSupport | SymmetrySupport | ElasticSupport
+)

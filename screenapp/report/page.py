@@ -20,6 +20,7 @@ from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import (
     BodyLoad,
     DisplayUnits,
+    ElasticSupport,
     LineLoad,
     Load,
     Part,
@@ -184,6 +185,10 @@ def support_words(support: Support) -> str:
         return f"{on} is fixed in both directions"
     if kind == "SymmetrySupport":
         return f"{on} is a line of symmetry; only one half of the part is drawn"
+    if isinstance(support, ElasticSupport):
+        ways = (("across", support.normal), ("along", support.along))
+        given = [f"{v:g} N/mm² {way} it" for way, v in ways if v]
+        return f"{on} is held by springs of {' and '.join(given)}"
     if kind == "PinSupport":
         return f"{on} sits on a rigid pin without play or friction that only pushes"
     if kind == "RollerSupport":

@@ -11,7 +11,6 @@ from numpy.typing import NDArray
 from screenapp.mechanics.free_body import centroid, section_forces, span_thickness
 from screenapp.mechanics.point_reading import ON_CURVE
 from screenapp.mechanics.singular_spot import SingularSpot, spot_at
-from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.mechanics.straight_cut import StraightCut, straight_cut
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import (
@@ -66,7 +65,7 @@ def cuts(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[CutFindings,
     """Every cut in every case; cuts that miss the part have no spans and are left out."""
     if not part.cuts:
         return ()
-    spots = singular_spots(part, shape)
+    spots = passes[-1].spots
     found: list[CutFindings] = []
     for cut in part.cuts:
         line = straight_cut(shape, cut.start, cut.end)

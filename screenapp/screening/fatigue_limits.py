@@ -14,7 +14,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.singular_spot import SingularSpot, spot_at
-from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.fatigue import (
     FatigueFigures,
@@ -130,7 +129,7 @@ def _swings(limit: FatigueLimit, part: Part, shape: Shape, passes: Sequence[Pass
     ids = [case.id for case in loadings(part)]
     a = ids.index(limit.case)
     b = None if limit.other is None else ids.index(limit.other)
-    spots = singular_spots(part, shape)
+    spots = passes[-1].spots
     cases = {limit.case, limit.other or limit.case}
     found: list[tuple[RawPeak, SingularSpot | None, list[Sample], float, float, str]] = []
     taken: set[Point] = set()

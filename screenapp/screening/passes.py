@@ -14,6 +14,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics import shape_functions
+from screenapp.mechanics.bed_ends import with_bed_ends
 from screenapp.mechanics.element_walls import element_hooke
 from screenapp.mechanics.energy_error import pointwise_jump
 from screenapp.mechanics.point_reading import PointReader
@@ -88,7 +89,7 @@ class Pass:
         f = self.fields
         own = extrapolated_stress(f.mesh, f.solution, element_hooke(self.part, f.mesh))
         poisson = out_of_plane_ratio(self.part, f.mesh.element_zones)[:, None]
-        split = split_corner_nodes(self.part, self.shape, f.mesh)
+        split = split_corner_nodes(self.part, self.shape, f.mesh, f.solution)
         return pointwise_jump(f.mesh, own, f.stress.nodal, f.stress.side, poisson, split)
 
     @cached_property
@@ -197,4 +198,6 @@ class Pass:
 def passes_of(part: Part, shape: Shape, fields: Sequence[Fields]) -> list[Pass]:
     """The passes of a finished screening."""
     spots = singular_spots(part, shape)
-    return [Pass(part, shape, f, spots) for f in fields]
+    return [
+        Pass(part, shape, f, with_bed_ends(part, shape, f.mesh, f.solution, spots)) for f in fields
+    ]

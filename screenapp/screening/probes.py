@@ -9,7 +9,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.singular_spot import SingularSpot, spot_at
-from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Reading
 from screenapp.model.part import Part, Probe
@@ -48,7 +47,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
         return ()
     points = np.array([on_boundary(shape, probe.at) for probe in part.readings])
     read = [p.read(points) for p in passes]
-    spots = singular_spots(part, shape)
+    spots = passes[-1].spots
     zones = passes[-1].reader.zones_at(points)
     found: list[Reading] = []
     for k, case in enumerate(loadings(part)):

@@ -9,6 +9,7 @@ from dataclasses import dataclass, field
 
 import numpy as np
 
+from screenapp.mechanics.bed_ends import with_bed_ends
 from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import nodal_forces
 from screenapp.mechanics.recovery import recover
@@ -124,22 +125,22 @@ def screen(
         progress.report(Step("reading stresses", number, (number - 0.2) / most))
         with clock.stage("recovery"):
             fields = Fields(mesh, solution, recover(part, shape, mesh, solution))
-            this = Pass(part, shape, fields, spots)
+            this = Pass(part, shape, fields, with_bed_ends(part, shape, mesh, solution, spots))
         passes.append(this)
         summaries.append(_summary(part, this))
-        if number == 1 and spots:
-            first_sizes = list(this.read(np.array([s.at for s in spots])).size)
+        if number == 1 and this.spots:
+            first_sizes = list(this.read(np.array([s.at for s in this.spots])).size)
         on_pass(fields, summaries[-1])
         progress.check()
         with clock.stage("judging"):
-            cases = _cases(part, shape, passes, spots)
+            cases = _cases(part, shape, passes, this.spots)
             read = readings(part, shape, passes)
             limits = judge_limits(part, cases, shape, passes)
         if number >= most or (number >= LEAST_PASSES and _done(part, cases, read, limits)):
             break
         with clock.stage("adapting"):
             wanted = wanted_sizes(
-                part, this, spots, first_sizes, targets(part, shape, spots, cases, read)
+                part, this, this.spots, first_sizes, targets(part, shape, this.spots, cases, read)
             )
             largest = part.mesh.size or SHARE_OF_PART * shape.size
             smallest = min(float(wanted.min()), largest)

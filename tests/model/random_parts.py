@@ -17,6 +17,7 @@ from screenapp.model.part import (
     Dimension,
     DisplacementLimit,
     Edge,
+    ElasticSupport,
     FatigueLimit,
     FixedSupport,
     ForceLoad,
@@ -103,6 +104,7 @@ def _supports(i: int) -> st.SearchStrategy[object]:
         st.builds(FixedSupport, name, on, maybe, maybe),
         st.builds(PinSupport, name, on),
         st.builds(SymmetrySupport, name, on, maybe, maybe),
+        st.builds(ElasticSupport, name, on, numbers, numbers, maybe, maybe),
         st.builds(RollerSupport, name, on, maybe, maybe, maybe),
         st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )

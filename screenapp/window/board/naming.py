@@ -12,6 +12,7 @@ from screenapp.model.part import (
     CircleHole,
     Corner,
     DisplayUnits,
+    ElasticSupport,
     FixedSupport,
     ForceLoad,
     GravityLoad,
@@ -107,6 +108,8 @@ def _held(record: Support, units: DisplayUnits) -> str:
         return "is held in both directions"
     if isinstance(record, SymmetrySupport):
         return "is a line of symmetry"
+    if isinstance(record, ElasticSupport):
+        return f"is held by springs, {spring_words(record, units)}"
     if isinstance(record, PinSupport):
         return "sits on a pin that only pushes"
     if isinstance(record, RollerSupport):
@@ -119,6 +122,13 @@ def _held(record: Support, units: DisplayUnits) -> str:
         if v is not None
     ]
     return "is moved by " + " and ".join(given)
+
+
+def spring_words(support: ElasticSupport, units: DisplayUnits) -> str:
+    """The stiffnesses that a bed of springs has: "50 N/mm² across, 20 N/mm² along"."""
+    ways = (("across", support.normal), ("along", support.along))
+    given = [f"{format_quantity(v, 'bed_stiffness', units)} {way}" for way, v in ways if v]
+    return ", ".join(given) or "without stiffness"
 
 
 def _loaded(record: object, units: DisplayUnits) -> str:

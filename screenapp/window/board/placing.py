@@ -11,12 +11,8 @@ from screenapp.model.edits import EditError
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
     BodyLoad,
-    FixedSupport,
     Part,
-    PinSupport,
-    PrescribedSupport,
-    RollerSupport,
-    SymmetrySupport,
+    Support,
 )
 from screenapp.window.board.placing_kinds import (
     Record,
@@ -31,8 +27,6 @@ from screenapp.window.board.popover import Popover
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
-
-SUPPORTS = (FixedSupport, RollerSupport, PrescribedSupport, PinSupport, SymmetrySupport)
 
 
 class Placing:
@@ -93,7 +87,7 @@ class Placing:
             self.popover.complain("Type a value first.")
             return False
         name = ("change" if self._id else "add") + (
-            " a support" if isinstance(record, SUPPORTS) else " a load"
+            " a support" if isinstance(record, Support) else " a load"
         )
         try:
             part = self._made(record)
@@ -133,7 +127,7 @@ class Placing:
     def _made(self, record: Record) -> Part:
         document = self._canvas.document
         part = document.part
-        if isinstance(record, SUPPORTS):
+        if isinstance(record, Support):
             if self._id:
                 return edits.replace_support(part, record)
             return edits.add_support(part, record)

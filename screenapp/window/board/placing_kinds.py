@@ -13,6 +13,7 @@ from screenapp.model.part import (
     BodyLoad,
     CircleHole,
     Edge,
+    ElasticSupport,
     FixedSupport,
     ForceLoad,
     GravityLoad,
@@ -103,6 +104,12 @@ def _moved(id_: str, on: str, values: Values) -> Support | None:
     return PrescribedSupport(id_, on, values.get("x"), values.get("y"))
 
 
+def _springs(id_: str, on: str, values: Values) -> Support | None:
+    if "normal" not in values and "along" not in values:
+        return None
+    return ElasticSupport(id_, on, values.get("normal", 0.0), values.get("along", 0.0))
+
+
 def _pressure(id_: str, on: str, values: Values) -> Load | None:
     return PressureLoad(id_, on, values["pressure"]) if "pressure" in values else None
 
@@ -159,6 +166,16 @@ SYMMETRY = Way(
     "Only one half is drawn: the edge stays on its line and slides along it.",
     (),
     lambda id_, on, _values: SymmetrySupport(id_, on),
+)
+SPRINGS = Way(
+    "springs",
+    "Springs",
+    "A bed of springs: force per length for each length of movement; it pulls as well as pushes.",
+    (
+        EntryField("normal", "across", "bed_stiffness", (), "free"),
+        EntryField("along", "along", "bed_stiffness", (), "free"),
+    ),
+    _springs,
 )
 CORNER_ROLLER = Way(
     "roller",
@@ -286,10 +303,10 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     if found.kind == "corner":
         return FIXED, CORNER_ROLLER, MOVED
     if isinstance(found.record, CircleHole):
-        return FIXED, PIN, PUSHING_PIN, MOVED
+        return FIXED, PIN, PUSHING_PIN, SPRINGS, MOVED
     if isinstance(found.record, Edge) and found.record.through is None:
-        return FIXED, ROLLER, SYMMETRY, MOVED
-    return FIXED, (PIN if found.kind == "hole" else ROLLER), MOVED
+        return FIXED, ROLLER, SYMMETRY, SPRINGS, MOVED
+    return FIXED, (PIN if found.kind == "hole" else ROLLER), SPRINGS, MOVED
 
 
 def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
@@ -314,6 +331,9 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         return "pushing", {}
     if isinstance(record, RollerSupport):
         return "roller", {} if record.angle is None else {"angle": record.angle}
+    if isinstance(record, ElasticSupport):
+        ways = {"normal": record.normal, "along": record.along}
+        return "springs", {k: v for k, v in ways.items() if v}
     if isinstance(record, PrescribedSupport):
         both = {"x": record.x, "y": record.y}
         return "moved", {k: v for k, v in both.items() if v is not None}

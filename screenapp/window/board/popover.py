@@ -8,7 +8,6 @@ from PySide6.QtWidgets import (
     QButtonGroup,
     QFrame,
     QGridLayout,
-    QHBoxLayout,
     QLabel,
     QLineEdit,
     QPushButton,
@@ -24,6 +23,9 @@ from screenapp.window.board.quantity import parse, written
 
 WIDE = 300
 """Least width of the small sheet [px]."""
+
+MOST_IN_A_ROW = 5
+"""Of more ways two rows are made."""
 
 
 class Popover(QFrame):
@@ -52,7 +54,7 @@ class Popover(QFrame):
         self._bad: dict[str, str] = {}
         self._title = QLabel()
         self._title.setObjectName("popoverTitle")
-        self._ways_row = QHBoxLayout()
+        self._ways_row = QGridLayout()
         self._ways_row.setSpacing(4)
         self._group: QButtonGroup | None = None
         self._grid = QGridLayout()
@@ -137,7 +139,9 @@ class Popover(QFrame):
     def _build_ways(self) -> None:
         _clear(self._ways_row)
         self._group = QButtonGroup(self)
-        for way in self._ways:
+        many = len(self._ways)
+        columns = many if many <= MOST_IN_A_ROW else (many + 1) // 2
+        for number, way in enumerate(self._ways):
             button = QPushButton(way.label)
             button.setCheckable(True)
             button.setToolTip(way.tip)
@@ -146,8 +150,7 @@ class Popover(QFrame):
             button.clicked.connect(lambda _on, w=way: self._take(w, dict(w.start)))
             button.installEventFilter(self)
             self._group.addButton(button)
-            self._ways_row.addWidget(button)
-        self._ways_row.addStretch(1)
+            self._ways_row.addWidget(button, number // columns, number % columns)
 
     def _take(self, way: Way, values: dict[str, float], first: bool = False) -> None:
         """Show another way; a vector already typed is kept."""
@@ -263,7 +266,7 @@ class Popover(QFrame):
         )
 
 
-def _clear(layout: QHBoxLayout | QGridLayout) -> None:
+def _clear(layout: QGridLayout) -> None:
     while (item := layout.takeAt(0)) is not None:
         if (widget := item.widget()) is not None:
             widget.hide()

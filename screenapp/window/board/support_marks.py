@@ -8,6 +8,7 @@ import numpy as np
 
 from screenapp.model.edge_parts import Span, span_of
 from screenapp.model.part import (
+    ElasticSupport,
     FixedSupport,
     PinSupport,
     PrescribedSupport,
@@ -22,6 +23,8 @@ from screenapp.window.board.quantity import written
 
 DOWN = np.array([0.0, 1.0])
 HATCH_GAP, HATCH = 8.0, 9.0
+SPRING, SPRING_GAP = 18.0, 26.0
+"""Length of a spring and distance between two [px]."""
 HIGH, HALF = 14.0, 9.0
 """Height and half the base of a support triangle [px]."""
 
@@ -42,6 +45,8 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
         _mirrored(mark, drawn, frame, support)
     elif isinstance(support, PinSupport):
         _pin(mark, at, radius_px(drawn, frame, support.on))
+    elif isinstance(support, ElasticSupport):
+        _sprung(mark, drawn, frame, support)
     elif isinstance(support, RollerSupport):
         _rolling(mark, drawn, frame, support, at, out)
     else:
@@ -120,6 +125,32 @@ def _pin(mark: Mark, at: Floats, radius: float) -> None:
         along = half * np.array([1.0, -1.0]) / math.sqrt(2.0)
         mark.line(middle_of - along, middle_of + along)
     _ground(mark, at + (size + 2.0) * DOWN, DOWN, np.array([1.0, 0.0]))
+
+
+def _sprung(mark: Mark, drawn: DrawnPart, frame: Frame, support: ElasticSupport) -> None:
+    """Coils on ground, across the boundary or leaning where they resist sliding too."""
+    span = span_of(support)
+    inside = radius_px(drawn, frame, support.on)
+    high = min(SPRING, 0.7 * inside)
+    both = support.normal > 0.0 and support.along > 0.0
+    gap = SPRING_GAP * (1.4 if both else 1.0)
+    line = stations(drawn, frame, support.on, gap, span=span)
+    for p, out, along in zip(line.at, line.out, line.along, strict=True):
+        if support.normal > 0.0:
+            mark.line(*_coil(p, out, along, high))
+            foot = p + high * out
+            mark.line(foot - 6.0 * along, foot + 6.0 * along)
+        if support.along > 0.0:
+            start = p + (high + 5.0 if support.normal > 0.0 else 5.0) * out - 7.0 * along
+            mark.line(*_coil(start, along, out, 14.0))
+            end = start + 14.0 * along
+            mark.line(end - 4.0 * out, end + 4.0 * out)
+
+
+def _coil(at: Floats, way: Floats, side: Floats, long: float) -> list[Floats]:
+    """A zigzag from a place along `way`."""
+    steps = [(0.0, 0.0), (0.2, 0.0), *((0.3 + 0.1 * i, (-1.0) ** i) for i in range(5)), (0.8, 0.0)]
+    return [at + long * t * way + 3.5 * s * side for t, s in (*steps, (1.0, 0.0))]
 
 
 def _rolling(

@@ -6,7 +6,9 @@ from screenapp.model.errors import Fault
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
     CircleHole,
+    Corner,
     Edge,
+    ElasticSupport,
     FixedSupport,
     Part,
     PinSupport,
@@ -30,6 +32,7 @@ KINDS = (
     Choice("symmetry", "on a line of symmetry", "only one half is drawn"),
     Choice("pushing", "held by a pin that only pushes", "bears on the side that is pressed"),
     Choice("angle", "held along one direction", "slides across it"),
+    Choice("springs", "held by springs", "it gives way in proportion to the force"),
     Choice("moved", "moved by a given amount", "x, y or both"),
 )
 
@@ -115,6 +118,8 @@ class HeldParagraph(Paragraph):
                 field=f"supports.{support.id}.angle",
             )
             return (kind("angle"), ", at ", angle)
+        if isinstance(support, ElasticSupport):
+            return (kind("springs"), *_spring_pieces(support, where, change, q))
         assert isinstance(support, PrescribedSupport)
         x = q.optional_value(
             "x",
@@ -137,6 +142,30 @@ class HeldParagraph(Paragraph):
         return (kind("moved"), ": x ", x, ", y ", y)
 
 
+def _spring_pieces(
+    support: ElasticSupport, where: str, change: support_changes.SupportChange, q: Quantities
+) -> tuple[Piece | str, ...]:
+    """ ", across it 50 N/mm², along it free"."""
+    pieces: list[Piece | str] = []
+    for lead, name, stiffness in (
+        (", across it ", "normal", support.normal),
+        (", along it ", "along", support.along),
+    ):
+        pieces += [
+            lead,
+            q.optional_value(
+                name,
+                stiffness or None,
+                "bed_stiffness",
+                f"Stiffness {lead.strip(', ')} of the springs at {where}",
+                change.setter(name),
+                "free",
+                f"supports.{support.id}.{name}",
+            ),
+        ]
+    return tuple(pieces)
+
+
 def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
     """The ways in which the place of a support may be held."""
     found = find(part, support.on)
@@ -146,5 +175,5 @@ def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
     elif isinstance(record, CircleHole):
         out = {"normal", "symmetry"}
     else:
-        out = {"pin", "pushing", "symmetry"}
+        out = {"pin", "pushing", "symmetry", *(("springs",) if isinstance(record, Corner) else ())}
     return tuple(c for c in KINDS if c.key not in out)

@@ -9,6 +9,7 @@ from typing import Any
 from screenapp.model import edits
 from screenapp.model.edge_parts import span_of
 from screenapp.model.part import (
+    ElasticSupport,
     FixedSupport,
     PinSupport,
     PrescribedSupport,
@@ -18,6 +19,9 @@ from screenapp.model.part import (
 )
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
+
+SPRINGS = 100.0
+"""Stiffness that a bed of springs begins with [N/mm²], to be typed over."""
 
 
 def add_support(document: Document, on: str) -> None:
@@ -46,6 +50,8 @@ class SupportChange:
             new = RollerSupport(old.id, old.on)
         elif kind == "pushing":
             new = PinSupport(old.id, old.on)
+        elif kind == "springs":
+            new = ElasticSupport(old.id, old.on, SPRINGS, SPRINGS)
         elif kind == "angle":
             new = RollerSupport(old.id, old.on, 90.0)
         else:
@@ -56,7 +62,7 @@ class SupportChange:
         self._put(f"how {old.on} is held", new)
 
     def setter(self, field: str) -> Callable[[Any], None]:
-        """A function that sets "angle", "x" or "y"."""
+        """A function that sets "angle", "x", "y", "normal" or "along"."""
         return lambda value: self._set(field, value)
 
     def put(self, fields: dict[str, Any]) -> None:
@@ -65,6 +71,8 @@ class SupportChange:
         self._put(f"where {old.on} is held", replace(old, **fields))
 
     def _set(self, field: str, value: float | None) -> None:
+        if field in ("normal", "along"):
+            value = value or 0.0  # free
         old = next(s for s in self._document.part.supports if s.id == self._support)
         self._put(f"{field} of the support at {old.on}", with_field(old, field, value))
 

@@ -1,0 +1,174 @@
+"""Supports that give way: springs per length along the boundary.
+
+A bed of springs answers a movement u of the boundary with the force per length
+
+    q = -(kₙ n nᵀ + kₜ t tᵀ) u    [N/mm],
+
+n the outward normal and t the tangent (a bed without a shear layer: Winkler 1867, from memory).  It
+adds a matrix to the stiffness and a known traction to the boundary; nothing is held.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy import sparse
+
+from screenapp.mechanics.element_walls import element_thickness
+from screenapp.mechanics.kernels import CARRIED_NODES
+from screenapp.mechanics.places import misplaced, outward, side_tangents
+from screenapp.mechanics.quadrature import gauss_line
+from screenapp.model.edge_parts import pieces_under
+from screenapp.model.mesh import Mesh
+from screenapp.model.part import ElasticSupport, Part
+from screenapp.model.shape import Shape
+from screenapp.model.solution import Solution
+
+Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
+
+POINTS = 4
+"""Gauss points along a side: exact for the product of two quadratics on a straight side."""
+
+
+@dataclass(frozen=True)
+class Bed:
+    """Springs under some pieces of the boundary.
+
+    Attributes:
+        owner: index of the support in `Part.supports`.
+        on: id of the edge or hole.
+        pieces: of the boundary, in the direction of drawing.
+        normal, along: stiffness [N/mm²].
+    """
+
+    owner: int
+    on: str
+    pieces: tuple[int, ...]
+    normal: float
+    along: float
+
+
+@dataclass(frozen=True, eq=False)
+class Springs:
+    """All beds of a part on a mesh.
+
+    Attributes:
+        matrices: of each support that has a bed, by its index: what it answers to the
+            displacements (x, y node by node), (2 n_nodes, 2 n_nodes) [N/mm].
+        nodes, directions: where and along what they hold, (k,) and unit (k, 2).
+    """
+
+    matrices: dict[int, sparse.csr_array]
+    nodes: Ints
+    directions: Floats
+
+    def stiffness(self, carried: Ints) -> sparse.csr_array:
+        """Of all together, on the carried nodes only, (2 n_carried, 2 n_carried) [N/mm]."""
+        total = sum(self.matrices.values(), start=0 * next(iter(self.matrices.values())))
+        rows = np.stack([2 * carried, 2 * carried + 1], axis=1).ravel()
+        return sparse.csr_array(total.tocsr()[rows][:, rows])
+
+    def forces(self, displacements: Floats) -> dict[int, Floats]:
+        """What each gives at the nodes, (n_cases, n_nodes, 2) [N], under displacements of that
+        shape [mm]."""
+        flat = displacements.reshape(len(displacements), -1)
+        return {
+            owner: -(matrix @ flat.T).T.reshape(displacements.shape)
+            for owner, matrix in self.matrices.items()
+        }
+
+
+def beds(part: Part, shape: Shape) -> tuple[Bed, ...]:
+    """The springs of all supports that give way."""
+    return tuple(
+        Bed(owner, s.on, pieces_under(part, shape, s), s.normal, s.along)
+        for owner, s in enumerate(part.supports)
+        if isinstance(s, ElasticSupport)
+    )
+
+
+def springs(part: Part, shape: Shape, mesh: Mesh) -> Springs | None:
+    """The matrices of all beds of a part; None where it has none.
+
+    Raises:
+        InvalidPartError: a bed stands on nothing that has a length.
+    """
+    matrices: dict[int, sparse.csr_array] = {}
+    nodes: list[Ints] = []
+    directions: list[Floats] = []
+    tangents = side_tangents(shape, mesh)
+    for bed in beds(part, shape):
+        sides = mesh.sides_on(bed.pieces)
+        if not len(sides):
+            raise misplaced(part.supports[bed.owner].id, bed.on, "put it on an edge or a hole")
+        own = _matrix(part, mesh, sides, bed)
+        matrices[bed.owner] = matrices[bed.owner] + own if bed.owner in matrices else own
+        ways = ((bed.normal, outward(tangents[sides])), (bed.along, tangents[sides]))
+        for stiffness, way in ways:
+            if stiffness > 0.0:
+                nodes.append(mesh.side_nodes[sides].ravel())
+                directions.append(way.reshape(-1, 2))
+    if not matrices:
+        return None
+    return Springs(matrices, np.concatenate(nodes), np.concatenate(directions))
+
+
+def spring_tractions(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> Floats:
+    """Traction that the beds put on the wall's face, (n_cases, n_sides, 3, 2) [MPa], at start,
+    middle and end of every boundary side."""
+    out = np.zeros((len(solution.displacements), len(mesh.sides), 3, 2))
+    for bed in beds(part, shape):
+        sides = mesh.sides_on(bed.pieces)
+        normals, tangents, across, forward = bed_forces(shape, mesh, solution, bed)
+        thickness = element_thickness(part, mesh)[mesh.sides[sides, 0]]
+        force = across[..., None] * normals + forward[..., None] * tangents
+        out[:, sides] += force / thickness[:, None, None]
+    return out
+
+
+def bed_forces(
+    shape: Shape, mesh: Mesh, solution: Solution, bed: Bed
+) -> tuple[Floats, Floats, Floats, Floats]:
+    """What a bed gives at start, middle and end of its sides (`Mesh.sides_on` its pieces).
+
+    Returns:
+        Outward normals and tangents, (n, 3, 2); force per length along them, (n_cases, n, 3)
+        [N/mm], positive where it pulls outwards and where it pushes forwards (material on the
+        left).
+    """
+    sides = mesh.sides_on(bed.pieces)
+    tangents = side_tangents(shape, mesh)[sides]
+    normals = outward(tangents)
+    moved = solution.displacements[:, mesh.side_nodes[sides]]
+    across = -bed.normal * (moved * normals).sum(axis=-1)
+    forward = -bed.along * (moved * tangents).sum(axis=-1)
+    return normals, tangents, across, forward
+
+
+def _matrix(part: Part, mesh: Mesh, sides: Ints, bed: Bed) -> sparse.csr_array:
+    """∫ N_i N_j (kₙ n nᵀ + kₜ t tᵀ) ds over the sides as the part's element interpolates them."""
+    s, weights = gauss_line(POINTS)
+    if CARRIED_NODES[part.mesh.element] == 4:
+        nodes = mesh.side_nodes[sides][:, ::2]
+        shapes = np.stack([0.5 * (1.0 - s), 0.5 * (1.0 + s)], axis=1)
+        slopes = np.tile([-0.5, 0.5], (len(s), 1))
+    else:
+        nodes = mesh.side_nodes[sides]
+        shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
+        slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    run = np.einsum("pi,sid->spd", slopes, mesh.nodes[nodes])
+    stretch = np.linalg.norm(run, axis=2)
+    t = run / stretch[..., None]
+    n = outward(t)
+    law = bed.normal * n[..., :, None] * n[..., None, :]
+    law += bed.along * t[..., :, None] * t[..., None, :]
+    block = np.einsum("sp,pi,pj,spab->siajb", stretch * weights, shapes, shapes, law)
+    places = (2 * nodes[:, :, None] + np.arange(2)).reshape(len(nodes), -1)  # (n_sides, 2m)
+    m = places.shape[1]
+    rows = np.repeat(places, m, axis=1).ravel()
+    columns = np.tile(places, (1, m)).ravel()
+    size = 2 * mesh.n_nodes
+    return sparse.coo_array((block.ravel(), (rows, columns)), shape=(size, size)).tocsr()
