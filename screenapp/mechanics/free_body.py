@@ -1,7 +1,8 @@
 """What acts on one side of a cut: the free body that an engineer would draw.
 
-Loads are integrated along the sides that lie on the body (a side that the cut divides counts as far
-as it reaches), weight and spin over its elements, and supports give their forces at its nodes.
+Loads are integrated along the sides that lie on the body and weight and spin over its elements, a
+side or element that the cut divides exactly as far as it reaches (`cut_elements`); supports give
+their forces at its nodes.
 """
 
 from __future__ import annotations
@@ -10,7 +11,9 @@ import numpy as np
 import shapely
 from numpy.typing import NDArray
 
-from screenapp.mechanics.body_forces import body_rule, force_density, has_body_forces
+from screenapp.mechanics.body_forces import force_density, has_body_forces
+from screenapp.mechanics.cut_elements import area_points, side_pieces, side_slopes, side_values
+from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import side_thickness, side_tractions
 from screenapp.mechanics.quadrature import gauss_line
@@ -38,7 +41,8 @@ def section_forces(
     body = body_left_of(shape, cut)
     if body is None or solution.support_forces is None:
         return None
-    total = _on_body(part, shape, mesh, solution.support_forces[case], loadings(part)[case], body)
+    held, loads = solution.support_forces[case], loadings(part)[case]
+    total = _on_body(part, shape, mesh, held, loads, body, cut)
     middle = cut.start + centroid(part, cut) * cut.along
     force = -total[:2]
     about = total[2] - (middle[0] * total[1] - middle[1] * total[0])
@@ -98,13 +102,13 @@ def _on_body(
     support_forces: Floats,
     case: Case,
     body: shapely.Geometry,
+    cut: StraightCut,
 ) -> Floats:
     """Force [N] and moment about the origin [N·mm] of all that acts on the body, (3,)."""
     shapely.prepare(body)
     total = np.zeros(3)
-    at, force = _side_forces(part, shape, mesh, case)
-    total += _sum(body, at, force)
-    total += _sum(body, *_throughout(part, mesh, case))
+    total += _sum(body, *_side_forces(part, shape, mesh, case, cut))
+    total += _throughout(part, mesh, case, body, cut)
     sharp = dict(shape.sharp_corners)
     points = [load for load in case.loads if isinstance(load, PointLoad) and load.on in sharp]
     if points:
@@ -115,33 +119,47 @@ def _on_body(
     return total
 
 
-def _side_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
+def _side_forces(
+    part: Part, shape: Shape, mesh: Mesh, case: Case, cut: StraightCut
+) -> tuple[Floats, Floats]:
     """Places (n, 2) [mm] and forces (n, 2) [N] of a fine rule over all loaded sides."""
     traction = side_tractions(part, shape, mesh, case)
     loaded = np.flatnonzero(traction.any(axis=(1, 2)))
-    s, weights = gauss_line(16)
-    shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
-    slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    points, weights = gauss_line(16)
     nodes = mesh.nodes[mesh.side_nodes[loaded]]
-    stretch = np.linalg.norm(slopes @ nodes, axis=2)
-    thickness = side_thickness(part, mesh)[loaded, None]
-    force = (thickness * stretch * weights)[..., None] * (shapes @ traction[loaded])
-    return (shapes @ nodes).reshape(-1, 2), force.reshape(-1, 2)
+    thickness = side_thickness(part, mesh)[loaded]
+    at, force = [np.zeros((0, 2))], [np.zeros((0, 2))]
+    for side, a, b in side_pieces(nodes, cut):
+        t = 0.5 * (a + b) + 0.5 * (b - a) * points
+        shapes, slopes = side_values(t), side_slopes(t)
+        at.append(shapes @ nodes[side])
+        stretch = np.linalg.norm(slopes @ nodes[side], axis=1) * 0.5 * (b - a)
+        share = (thickness[side] * stretch * weights)[:, None]
+        force.append(share * (shapes @ traction[loaded[side]]))
+    return np.concatenate(at), np.concatenate(force)
 
 
-def _throughout(part: Part, mesh: Mesh, case: Case) -> tuple[Floats, Floats]:
-    """Places and forces of weight and spin: a rule over each element."""
+def _throughout(
+    part: Part, mesh: Mesh, case: Case, body: shapely.Geometry, cut: StraightCut
+) -> Floats:
+    """Force and moment of weight and spin on the body, (3,)."""
     if not has_body_forces(case):
-        return np.zeros((0, 2)), np.zeros((0, 2))
-    at, volumes, _ = body_rule(part, mesh, "quad9")
+        return np.zeros(3)
+    at, areas = area_points(mesh, cut, lambda points: _holds(body, points))
+    volumes = areas * element_thickness(part, mesh)[:, None]
     force = force_density(part, mesh, case, at) * volumes[..., None]
-    return at.reshape(-1, 2), force.reshape(-1, 2)
+    return resultant(at.reshape(-1, 2), force.reshape(-1, 2))
 
 
 def _sum(body: shapely.Geometry, at: Floats, force: Floats) -> Floats:
     """Resultant (3,) of the forces that stand on the body."""
     if not len(at):
         return np.zeros(3)
-    reach = 1e-6 * float(np.ptp(np.asarray(body.bounds).reshape(2, 2), axis=0).max())
-    mine = shapely.dwithin(body, shapely.points(at), 20.0 * reach)
+    mine = _holds(body, at)
     return resultant(at[mine], force[mine])
+
+
+def _holds(body: shapely.Geometry, at: Floats) -> NDArray[np.bool_]:
+    """Which points lie on the body or so near to it as its flattened arcs are to the arcs."""
+    reach = 1e-6 * float(np.ptp(np.asarray(body.bounds).reshape(2, 2), axis=0).max())
+    return np.asarray(shapely.dwithin(body, shapely.points(at), 20.0 * reach))
