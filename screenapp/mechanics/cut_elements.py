@@ -90,7 +90,7 @@ def _divided(local: Floats, cut: StraightCut) -> NDArray[np.bool_]:
     n = local[..., 1].reshape(len(local), -1)
     near = NEAR * cut.length
     reach = 0.5 * np.ptp(cut.spans, axis=1) + BEYOND * cut.length
-    out = (n.min(axis=1) < -near) & (n.max(axis=1) > near)
+    out = np.asarray((n.min(axis=1) < -near) & (n.max(axis=1) > near))
     for i in np.flatnonzero(out):
         met = [float(_at(side, t)[0]) for side in local[i] for t in _meets(side[:, 1])]
         middle = 0.5 * (min(met) + max(met)) if met else np.inf
@@ -134,7 +134,8 @@ def side_slopes(t: Floats) -> Floats:
 def _whole_moments(sides: Floats) -> Floats:
     """Area, ∫s, ∫n, ∫s², ∫sn, ∫n² within closed rings of sides (n, 4, 3, 2), (n, 6)."""
     t, weights = gauss_line(_MOMENT_POINTS)
-    return _line_integrals(side_values(t) @ sides, side_slopes(t) @ sides, weights).sum(axis=1)
+    every = _line_integrals(side_values(t) @ sides, side_slopes(t) @ sides, weights)
+    return np.asarray(every.sum(axis=1))
 
 
 def _moments_left(ring: Floats) -> Floats:
