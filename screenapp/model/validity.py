@@ -38,7 +38,7 @@ def faults_of(part: Part) -> tuple[Fault, ...]:
         >>> faults_of(Part())[0].cause
         'the part has no outline'
     """
-    return _examine(part)[0]
+    return examine(part)[0]
 
 
 def check(part: Part) -> Shape:
@@ -47,15 +47,15 @@ def check(part: Part) -> Shape:
     Raises:
         InvalidPartError: with every fault that blocks.
     """
-    faults, shape = _examine(part)
+    faults, shape = examine(part)
     blocking = tuple(f for f in faults if f.blocks)
     if blocking or shape is None:
         raise InvalidPartError.of(blocking)
     return shape
 
 
-def _examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
-    """All faults, and the shape if nothing is wrong with it."""
+def examine(part: Part) -> tuple[tuple[Fault, ...], Shape | None]:
+    """All faults as `faults_of`, and the shape as of `check` if nothing is wrong with it."""
     shape, table, shape_faults = _sound_shape(part)
     places = places_of(part)
     faults = [

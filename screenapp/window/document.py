@@ -22,7 +22,9 @@ from screenapp.model.findings import Findings
 from screenapp.model.history import History
 from screenapp.model.part import Part
 from screenapp.model.part_json import screening_key
-from screenapp.model.validity import faults_of
+from screenapp.model.shape import Shape
+from screenapp.model.validity import examine
+from screenapp.window.load_amounts import Amounts, amounts_of
 from screenapp.window.traced import Traced
 
 Lens = Literal["Shape", "Mesh", "Utilisation", "Stress", "Displacement", "Trust"]
@@ -88,7 +90,8 @@ class Document(QObject):
         self.live_faults: tuple[Fault, ...] = ()
         self._saved = self.history.part
         self._key_of: tuple[Part, str] | None = None
-        self._faults_of: tuple[Part, tuple[Fault, ...]] | None = None
+        self._examined: tuple[Part, tuple[Fault, ...], Shape | None] | None = None
+        self._amounts_of: tuple[Part, Amounts] | None = None
         self._kept: Mapping[str, str | None] = {}
 
     @property
@@ -99,9 +102,14 @@ class Document(QObject):
     @property
     def faults(self) -> tuple[Fault, ...]:
         """Everything that is wrong with the part, worked out once for each part."""
-        if self._faults_of is None or self._faults_of[0] is not self.part:
-            self._faults_of = (self.part, faults_of(self.part))
-        return self._faults_of[1]
+        return self._looked_through()[1]
+
+    @property
+    def amounts(self) -> Amounts:
+        """What the loads of each case amount to, worked out once for each part."""
+        if self._amounts_of is None or self._amounts_of[0] is not self.part:
+            self._amounts_of = (self.part, amounts_of(self.part, self._looked_through()[2]))
+        return self._amounts_of[1]
 
     @property
     def key(self) -> str:
@@ -220,6 +228,11 @@ class Document(QObject):
         if view != self.view:
             self.view = view
             self.view_changed.emit()
+
+    def _looked_through(self) -> tuple[Part, tuple[Fault, ...], Shape | None]:
+        if self._examined is None or self._examined[0] is not self.part:
+            self._examined = (self.part, *examine(self.part))
+        return self._examined
 
     def _told_part(self) -> None:
         if self.view.case >= max(1, len(loadings(self.part))):

@@ -105,7 +105,7 @@ def test_rings_of_cautions_stand_where_nothing_is_judged_yet(bench: Bench) -> No
     """A dashed ring round a caution would pass for a zone that is not settled."""
     document = bench.document
     caution = Fault("corner c1 is sharp", "round it", ids=("c1",), at=(-60.0, -40.0), blocks=False)
-    document._faults_of = (document.part, (caution,))
+    document._examined = (document.part, (caution,), None)
     canvas = bench.board.canvas
     canvas.show_part()
     assert len(canvas.marked.spots) == 1  # nothing is judged yet

@@ -25,6 +25,7 @@ from screenapp.window.board.naming import name_at
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
 from screenapp.window.board.preview_item import PreviewItem
+from screenapp.window.board.resultant_item import ResultantItem
 from screenapp.window.board.ring_choice import RingChoice
 from screenapp.window.board.snapping import Snap, snap
 from screenapp.window.board.symbols import ProbesItem, SymbolsItem
@@ -81,6 +82,7 @@ class Canvas(ZoomView):
         self.zone_fill, self.zone_lines = ZoneFillItem(paths), ZoneLineItem(paths)
         self.symbols, self.probes, self.marked = SymbolsItem(), ProbesItem(), FaultsItem()
         self.cuts = CutsItem()
+        self.resultants = ResultantItem(document)
         self.dimensions = Dimensions(self)
         self.labels = LabelsItem(self)
         self.preview_item = PreviewItem(self)
@@ -95,6 +97,7 @@ class Canvas(ZoomView):
             self.cuts,
             self.probes,
             self.labels,
+            self.resultants,
             self.marked,
             self.preview_item,
             self.scale_bar,
@@ -145,6 +148,7 @@ class Canvas(ZoomView):
         self.cuts.show_part(drawn)
         self.probes.show_part(drawn)
         self.labels.update()
+        self.resultants.update()
         self.show_marked()
         self.dimensions.refresh()
         self.grid.update()
@@ -170,7 +174,14 @@ class Canvas(ZoomView):
     def show_lit(self) -> None:
         """Light what is selected and hovered."""
         self.dimensions.refresh()
-        for item in (self.outline, self.zone_lines, self.symbols, self.cuts, self.probes):
+        for item in (
+            self.outline,
+            self.zone_lines,
+            self.symbols,
+            self.cuts,
+            self.probes,
+            self.resultants,
+        ):
             item.selected, item.hovered = self.document.selection, self.document.hovered
             item.update()
         self.labels.update()

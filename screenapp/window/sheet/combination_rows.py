@@ -10,6 +10,7 @@ from screenapp.window.document import Document
 from screenapp.window.sheet.changes import remove
 from screenapp.window.sheet.pieces import Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.resultant_words import case_words
 from screenapp.window.sheet.rows import RowOf
 
 
@@ -39,7 +40,7 @@ def combination_row(document: Document, combination: Combination) -> RowOf:
     return RowOf(
         id_,
         (name,),
-        tuple(pieces),
+        (*pieces, *case_words(document, id_)),
         lambda: remove(document, id_),
         f"Remove the combination {combination.name}",
     )

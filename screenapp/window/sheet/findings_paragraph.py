@@ -15,6 +15,7 @@ from screenapp.model.place_words import NAUGHT
 from screenapp.window.cut_plot import CutPlot
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.history_plot import HistoryPlot
+from screenapp.window.load_amounts import together_id
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
@@ -71,7 +72,7 @@ class FindingsParagraph(Paragraph):
         self.hand.set(self._hand_rows(findings) if findings else [])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
-        self.reactions.set(self._reaction_rows(case) if case else [])
+        self.reactions.set([*self._applied_rows(case), *self._reaction_rows(case)] if case else [])
         if findings is None:
             if any(fault.blocks for fault in document.faults):
                 return ("Nothing yet: the open paragraphs above come first.",)
@@ -138,6 +139,18 @@ class FindingsParagraph(Paragraph):
         at = f"({q.bare(x, 'length')}, {q.show(y, 'length')})"
         text = f"{case.name}: moves by at most {moved} at {at}."
         return RowOf(case.case, (), (Words(text, quiet=self.outdated()),))
+
+    def _applied_rows(self, case: CaseFindings) -> list[RowOf]:
+        """The loads together, to stand beside what the supports give."""
+        x, y, _ = case.applied
+        size = math.hypot(x, y)
+        q = Quantities(self.document.part.display_units)
+        back = sum(math.hypot(r.x, r.y) for r in case.reactions)
+        if size <= ROUNDING * back:
+            return []
+        text = f"amount to {q.show(_three(size), 'force')} {_way(x, y)} in {case.name}"
+        words = Words(text, quiet=self.outdated())
+        return [RowOf(together_id(case.case), ("the loads",), (words,))]
 
     def _reaction_rows(self, case: CaseFindings) -> list[RowOf]:
         part = self.document.part

@@ -33,8 +33,9 @@ from screenapp.window.sheet.body_load_rows import spin_pieces, temperature_piece
 from screenapp.window.sheet.combination_rows import add_link, combination_row
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value
+from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value, Words
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.resultant_words import KEY, load_words, together_rows
 from screenapp.window.sheet.rows import RowOf, Rows
 from screenapp.window.sheet.sentence import Sentence
 from screenapp.window.sheet.span_pieces import span_pieces, varying_pieces
@@ -80,7 +81,8 @@ class CaseBlock(QWidget):
         name = Value("name", case.name, "Name of the load case", change.rename)
         self.head.set("In case ", name, ":" if case.loads else ": nothing acts yet.")
         self.head.on_delete = change.remove
-        self.loads.set([_load_row(document, case, load, q) for load in case.loads])
+        rows = [_load_row(document, case, load, q) for load in case.loads]
+        self.loads.set([*rows, *together_rows(document, case)])
         add = Link("add", "+ load", change.add, "Add a load to this case", self._choices)
         pieces: list[Piece | str] = [add]
         if len(document.part.cases) > 1:
@@ -112,6 +114,7 @@ class LoadedParagraph(Paragraph):
         self.together = self.sentence()
         self.combinations = self.rows()
         self.add = self.sentence()
+        self.key = self.sentence()
         self.document.view_changed.connect(self.refresh)
 
     def block(self, case_id: str) -> CaseBlock:
@@ -148,6 +151,8 @@ class LoadedParagraph(Paragraph):
         if len(part.cases) > 1 or part.combinations:
             self.add.set(new_case, SEPARATOR, add_link(self.document))
         self.add.setVisible(bool(part.cases))
+        self.key.set(Words(KEY, quiet=True))
+        self.key.setVisible(any(self.document.amounts.loads.values()))
         if part.cases:
             return ()
         if part.outline is None:
@@ -221,6 +226,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
             *_load_pieces(document.part, load, name, change, q, field),
             *varying_pieces(document.part, load, where, change.put, q, field),
             *span_pieces(document.part, load, where, change.put, q, field),
+            *load_words(document, case.id, load.id),
         ),
         change.remove,
         f"Remove the {name} from {case.name}",
