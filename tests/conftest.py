@@ -1,13 +1,18 @@
-"""For all tests: no display is needed, and the user's own cache is left alone."""
+"""For all tests: no display is needed, the user's own cache is left alone, and no widget dies while
+it is painted.
+"""
 
 from __future__ import annotations
 
 import os
-from collections.abc import Iterator
+from collections.abc import Generator, Iterator
 
 import pytest
+from PySide6.QtWidgets import QApplication, QWidget
 
 os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
+
+KEPT = pytest.StashKey[list[QWidget]]()
 
 
 @pytest.fixture(autouse=True, scope="session")
@@ -16,3 +21,30 @@ def own_cache(tmp_path_factory: pytest.TempPathFactory) -> Iterator[None]:
     with pytest.MonkeyPatch.context() as patch:
         patch.setenv("SCREENAPP_CACHE", str(tmp_path_factory.mktemp("cache")))
         yield
+
+
+@pytest.hookimpl(wrapper=True, trylast=True)
+def pytest_runtest_call(item: pytest.Item) -> Generator[None, object, object]:
+    """Keep the open widgets from the end of the test to the end of its teardown.
+
+    A board and its items refer to one another, so when a test returns, its board is garbage that
+    the collector may take at any moment: also in the midst of painting it, as pytest-qt lets
+    events be processed before it closes the widgets. That ends the process. The program itself
+    keeps its window as long as it is open.
+    """
+    try:
+        return (yield)
+    finally:
+        app = QApplication.instance()
+        if isinstance(app, QApplication):
+            item.stash[KEPT] = app.topLevelWidgets()
+
+
+@pytest.hookimpl(wrapper=True, tryfirst=True)
+def pytest_runtest_teardown(item: pytest.Item) -> Generator[None, object, object]:
+    """Let the widgets go."""
+    try:
+        return (yield)
+    finally:
+        if KEPT in item.stash:
+            del item.stash[KEPT]
