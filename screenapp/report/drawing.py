@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from typing import Protocol
 from xml.sax.saxutils import escape
 
 import numpy as np
@@ -14,6 +15,15 @@ from screenapp.model.shape import Shape
 
 WIDTH = 720.0
 MARGIN = 48.0
+
+
+class Scaled(Protocol):
+    """Turns mm into a drawing's pixels, y downwards; `scale` is pixels per mm."""
+
+    scale: float
+
+    def at(self, x: float, y: float) -> tuple[float, float]:
+        """A place [mm] on the paper [px]."""
 
 
 class _Paper:
@@ -34,7 +44,7 @@ class _Paper:
 def part_svg(part: Part, shape: Shape, findings: Findings) -> str:
     """The part with its mesh in the background and its peaks numbered as in the tables."""
     paper = _Paper(shape)
-    body = [_mesh_path(findings, paper), *_interfaces(shape, paper), _outline_path(shape, paper)]
+    body = [_mesh_path(findings, paper), *zone_paths(shape, paper), boundary_path(shape, paper)]
     body += _names(part, shape, paper)
     number = 0
     for case in findings.cases:
@@ -60,7 +70,8 @@ def part_svg(part: Part, shape: Shape, findings: Findings) -> str:
     )
 
 
-def _outline_path(shape: Shape, paper: _Paper) -> str:
+def boundary_path(shape: Shape, paper: Scaled) -> str:
+    """Outline and holes as one path."""
     data: list[str] = []
     for first, last in shape.loops:
         start = paper.at(*shape.curves[first].curve.start)
@@ -70,7 +81,7 @@ def _outline_path(shape: Shape, paper: _Paper) -> str:
     return f'<path class="outline" d="{"".join(data)}"/>'
 
 
-def _interfaces(shape: Shape, paper: _Paper) -> list[str]:
+def zone_paths(shape: Shape, paper: Scaled) -> list[str]:
     """Lines between zones."""
     paths = []
     for interface in shape.interfaces:
@@ -79,7 +90,7 @@ def _interfaces(shape: Shape, paper: _Paper) -> list[str]:
     return paths
 
 
-def _piece(curve: Curve, paper: _Paper) -> str:
+def _piece(curve: Curve, paper: Scaled) -> str:
     x, y = paper.at(*curve.end)
     if isinstance(curve, Segment):
         return f"L{x:.2f} {y:.2f}"

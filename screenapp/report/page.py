@@ -31,6 +31,7 @@ from screenapp.model.part import (
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
 from screenapp.report.cut_svg import cut_svg
+from screenapp.report.dimensioned import dimensioned_svg
 from screenapp.report.drawing import part_svg
 from screenapp.report.history_svg import history_svg
 from screenapp.report.input_words import (
@@ -88,6 +89,7 @@ def record_page(
         resultant=_resultant,
         size=(x1 - x0, y1 - y0),
         drawing=Markup(part_svg(part, shape, findings)),  # made here, its texts escaped there
+        dimensioned=Markup(dimensioned_svg(part, shape)),
         pictures=[(p.words, b64encode(p.png).decode()) for p in pictures],
         version=__version__,
         when=when.strftime("%Y-%m-%d %H:%M %Z"),

@@ -9,9 +9,9 @@ from typing import get_args
 from platformdirs import user_config_path
 from PySide6.QtCore import QByteArray, QSettings
 
+from screenapp.model.dimension_marks import DimensionsShown
 from screenapp.model.part import DisplayUnits
 from screenapp.window import theme
-from screenapp.window.board.dimension_marks import DimensionsShown
 from screenapp.window.document import Lens
 
 PLACE = "SCREENAPP_SETTINGS"

@@ -8,9 +8,9 @@ import pytest
 from PySide6.QtCore import Qt
 from pytestqt.qtbot import QtBot
 
+from screenapp.model.dimension_marks import marks_of
 from screenapp.model.part import CircleHole, FixedSupport, SlotHole
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
-from screenapp.window.board.dimension_marks import marks_of
 from tests.window.board_kit import Hand, plate
 
 SHIFT = Qt.KeyboardModifier.ShiftModifier

@@ -6,11 +6,11 @@ from PySide6.QtCore import QPointF, Qt, Signal
 from PySide6.QtGui import QKeyEvent, QResizeEvent, QShowEvent
 from PySide6.QtWidgets import QHBoxLayout, QVBoxLayout, QWidget
 
+from screenapp.model.dimension_marks import DimensionsShown
 from screenapp.window import theme
 from screenapp.window.board.board_commands import board_commands
 from screenapp.window.board.canvas import Canvas
 from screenapp.window.board.corner_label import CornerLabel
-from screenapp.window.board.dimension_marks import DimensionsShown
 from screenapp.window.board.empty_board import EmptyBoard
 from screenapp.window.board.grid import unit_length
 from screenapp.window.board.quantity import warm_up

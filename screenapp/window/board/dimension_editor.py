@@ -9,6 +9,7 @@ from PySide6.QtGui import QFocusEvent, QKeyEvent
 from PySide6.QtWidgets import QLineEdit
 
 from screenapp.model import edit_dimensioned, edits
+from screenapp.model.dimension_marks import Mark
 from screenapp.model.edit_dimensions import formula_at, formulas_lost, with_formulas
 from screenapp.model.errors import ScreenappError
 from screenapp.model.expressions import plain_number
@@ -18,7 +19,6 @@ from screenapp.model.part import CircleHole, Part, SlotHole
 from screenapp.model.typed_values import Typed, shown_formula
 from screenapp.window import theme
 from screenapp.window.board.dimension_item import DimensionsItem
-from screenapp.window.board.dimension_marks import Mark
 from screenapp.window.board.exact import exact_paths
 from screenapp.window.board.quantity import parse, written
 

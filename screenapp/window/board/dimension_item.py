@@ -16,10 +16,10 @@ from PySide6.QtGui import (
     QTransform,
 )
 
+from screenapp.model.dimension_marks import Mark
 from screenapp.model.part import DisplayUnits, Point
 from screenapp.model.units import format_number
 from screenapp.window import theme
-from screenapp.window.board.dimension_marks import Mark
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.screen_item import Z_DIMENSIONS, ScreenItem
 

@@ -6,9 +6,9 @@ from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QPointF, QRectF
 
+from screenapp.model.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
 from screenapp.window.board.dimension_editor import DimensionEditor
 from screenapp.window.board.dimension_item import ROW_PX, DimensionsItem, reach_of
-from screenapp.window.board.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
 from screenapp.window.board.zoom_view import BOTTOM
 
 if TYPE_CHECKING:

@@ -1,14 +1,14 @@
-"""Which dimensions the board shows, as a drawing gives them: values and the places they join.
+"""Which dimensions a drawing shows: values and the places they join.
 
-Nothing here knows pixels; `dimension_item.py` draws the marks.
+Nothing here knows pixels; the board and the record draw the marks, each at its own scale.
 """
 
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Iterator
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass
-from typing import Literal
+from typing import Literal, Protocol
 
 from screenapp.model.curves import Arc
 from screenapp.model.edit_dimensions import formula_at
@@ -16,13 +16,29 @@ from screenapp.model.features import find, loops_of
 from screenapp.model.kinds import KindName
 from screenapp.model.members import members
 from screenapp.model.part import CircleHole, Corner, Edge, Loop, Part, Point, SlotHole
-from screenapp.window.board.drawn_part import DrawnPart
+from screenapp.model.shape import BoundaryCurve
 
 MOST_ROWS = 6
 """No more rows of hole positions than this on a side: the rest is shown when it is selected."""
 
 DimensionsShown = Literal["plain", "all", "none"]
 """Overall sizes and those of what is selected; all of them; none."""
+
+
+class Measured(Protocol):
+    """A part and where its boundary runs."""
+
+    @property
+    def part(self) -> Part:
+        """The part."""
+
+    @property
+    def exact_bounds(self) -> tuple[float, float, float, float] | None:
+        """Smallest x, y and largest x, y [mm] of the outline."""
+
+    def pieces_of(self, feature: str) -> Sequence[BoundaryCurve]:
+        """Pieces of an edge, a fillet or a hole."""
+
 
 What = Literal["overall", "place", "diameter", "size", "length", "radius", "arc"]
 
@@ -75,7 +91,7 @@ class Mark:
 RIGHT, UP, LEFT, DOWN = (1.0, 0.0), (0.0, 1.0), (-1.0, 0.0), (0.0, -1.0)
 
 
-def marks_of(drawn: DrawnPart, selection: Iterable[str], everything: bool) -> tuple[Mark, ...]:
+def marks_of(drawn: Measured, selection: Iterable[str], everything: bool) -> tuple[Mark, ...]:
     """Overall sizes and those of what is selected, or of everything."""
     part, box = drawn.part, drawn.exact_bounds
     if box is None or part.outline is None:
@@ -179,7 +195,7 @@ def _slot_sizes(part: Part, slot: SlotHole) -> Iterator[Mark]:
         yield Mark("size", slot.id, name, value, a, b, way, off, 0, given=given)
 
 
-def _all_radii(part: Part, drawn: DrawnPart) -> Iterator[Mark]:
+def _all_radii(part: Part, drawn: Measured) -> Iterator[Mark]:
     """The radii of fillets, those that are alike told once, and of arcs."""
     count: dict[float, int] = {}
     first: dict[float, tuple[str, Corner]] = {}
@@ -195,7 +211,7 @@ def _all_radii(part: Part, drawn: DrawnPart) -> Iterator[Mark]:
         yield from _round(drawn, where, corner, count[radius])
 
 
-def _of_selected(drawn: DrawnPart, id_: str) -> Iterator[Mark]:
+def _of_selected(drawn: Measured, id_: str) -> Iterator[Mark]:
     found = find(drawn.part, id_)
     if found is None:
         return
@@ -216,7 +232,7 @@ def _of_selected(drawn: DrawnPart, id_: str) -> Iterator[Mark]:
                         yield from _edge_length(drawn, loop, edge)
 
 
-def _edge_length(drawn: DrawnPart, loop: Loop, edge: Edge) -> Iterator[Mark]:
+def _edge_length(drawn: Measured, loop: Loop, edge: Edge) -> Iterator[Mark]:
     """The length from corner to corner, on the side where there is no material."""
     i = loop.edges.index(edge)
     a, b = loop.corners[i].at, loop.corners[(i + 1) % len(loop.corners)].at
@@ -232,7 +248,7 @@ def _edge_length(drawn: DrawnPart, loop: Loop, edge: Edge) -> Iterator[Mark]:
     yield Mark("length", edge.id, "length", length, a, b, along, away)
 
 
-def _round(drawn: DrawnPart, where: str, corner: Corner, count: int) -> Iterator[Mark]:
+def _round(drawn: Measured, where: str, corner: Corner, count: int) -> Iterator[Mark]:
     if not corner.round > 0.0:
         return
     for piece in drawn.pieces_of(corner.id):
@@ -245,7 +261,7 @@ def _round(drawn: DrawnPart, where: str, corner: Corner, count: int) -> Iterator
             return
 
 
-def _arc_radius(drawn: DrawnPart, edge: Edge) -> Iterator[Mark]:
+def _arc_radius(drawn: Measured, edge: Edge) -> Iterator[Mark]:
     for piece in drawn.pieces_of(edge.id):
         if isinstance(piece.curve, Arc):
             x, y = piece.curve.point(0.5)
