@@ -8,7 +8,7 @@ definite however the rollers lean.
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -16,9 +16,11 @@ from scipy import sparse
 
 from screenapp.mechanics.elastic_supports import Springs
 from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_of
+from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError, SolvingError
 from screenapp.model.mesh import Mesh
+from screenapp.model.misfits import movements
 from screenapp.model.part import (
     ElasticSupport,
     FixedSupport,
@@ -49,6 +51,8 @@ class HeldDirections:
         values: displacement along the direction [mm], (k,).
         owners: index of the support in `supports`, (k,).
         supports: ids of the supports.
+        added: what misfits add to the values in each case [mm], (n_cases, k); None where no case
+            has any.
     """
 
     nodes: Ints
@@ -56,6 +60,28 @@ class HeldDirections:
     values: Floats
     owners: Ints
     supports: tuple[str, ...]
+    added: Floats | None = None
+
+    @property
+    def by_case(self) -> Floats:
+        """The displacements along the directions [mm], (n_cases, k), or (1, k) where all cases
+        have the same."""
+        return self.values[None] + (0.0 if self.added is None else self.added)
+
+    def only(self, kept: NDArray[np.bool_]) -> HeldDirections:
+        """Those of the holds that are kept, (k,)."""
+        return HeldDirections(
+            self.nodes[kept],
+            self.directions[kept],
+            self.values[kept],
+            self.owners[kept],
+            self.supports,
+            None if self.added is None else self.added[:, kept],
+        )
+
+    def of_case(self, case: int) -> HeldDirections:
+        """The holds of one case alone."""
+        return self if self.added is None else replace(self, added=self.added[case : case + 1])
 
 
 @dataclass(frozen=True, eq=False)
@@ -63,7 +89,8 @@ class Reduction:
     """The displacements that obey the supports: u = `held` + `basis` q.
 
     Attributes:
-        held: (2 n_carried,) [mm], orthogonal to the basis.
+        held: [mm], orthogonal to the basis; (n_cases, 2 n_carried), or (1, 2 n_carried) where it is
+            the same in all cases.
         basis: orthonormal columns, (2 n_carried, n_free).
     """
 
@@ -104,7 +131,11 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
     nodes, directions, values, owners = (
         np.concatenate(column) for column in zip(*parts, strict=True)
     )
-    return _without_repeats(HeldDirections(nodes, directions, values, owners, names))
+    held = _without_repeats(HeldDirections(nodes, directions, values, owners, names))
+    off = movements(part, loadings(part))
+    if off is None:
+        return held
+    return replace(held, added=(off[:, held.owners] * held.directions).sum(axis=-1))
 
 
 def prescribe_nodes(nodes: Ints, displacements: Floats, name: str = "nodes") -> HeldDirections:
@@ -134,7 +165,7 @@ def reduce(
     """
     at = index[held.nodes]
     keep = at >= 0
-    at, directions, values = at[keep], held.directions[keep], held.values[keep]
+    at, directions, values = at[keep], held.directions[keep], held.by_case[:, keep]
     stopped, ways = held.nodes[keep], directions
     if springs is not None:
         stopped = np.concatenate([stopped, springs.nodes])
@@ -142,20 +173,22 @@ def reduce(
     free_motion(stopped, ways, mesh)
     nodes, inverse = np.unique(at, return_inverse=True)
     gram = np.zeros((len(nodes), 2, 2))
-    pull = np.zeros((len(nodes), 2))
+    pull = np.zeros((len(values), len(nodes), 2))
     np.add.at(gram, inverse, directions[:, :, None] * directions[:, None, :])
-    np.add.at(pull, inverse, directions * values[:, None])
+    for own, asked in zip(pull, values, strict=True):
+        np.add.at(own, inverse, directions * asked[:, None])
     stiff, axes = np.linalg.eigh(gram)  # rising; axes in columns
     fixed = stiff[:, 0] > PARALLEL**2 * stiff[:, 1]
-    along = np.einsum("nda,nd->na", axes, pull)
-    moved = axes[:, :, 1] * (along[:, 1] / stiff[:, 1])[:, None]
-    moved[fixed] += axes[fixed, :, 0] * (along[fixed, 0] / stiff[fixed, 0])[:, None]
-    moved[fixed] = _exact(moved[fixed], pull[fixed])
-    _check_agreement(held, keep, np.einsum("kd,kd->k", directions, moved[inverse]) - values)
+    along = np.einsum("nda,cnd->cna", axes, pull)
+    moved = axes[:, :, 1] * (along[..., 1] / stiff[:, 1])[..., None]
+    moved[:, fixed] += axes[fixed, :, 0] * (along[:, fixed, 0] / stiff[fixed, 0])[..., None]
+    moved[:, fixed] = _exact(moved[:, fixed], pull[:, fixed])
+    gap = np.einsum("kd,ckd->ck", directions, moved[:, inverse]) - values
+    _check_agreement(held, keep, np.abs(gap).max(axis=0, initial=0.0))
     n = int(index.max()) + 1
-    u_held = np.zeros((n, 2))
-    u_held[nodes] = moved
-    return Reduction(u_held.ravel(), _basis(n, nodes, fixed, axes[:, :, 0]))
+    u_held = np.zeros((len(values), n, 2))
+    u_held[:, nodes] = moved
+    return Reduction(u_held.reshape(len(values), -1), _basis(n, nodes, fixed, axes[:, :, 0]))
 
 
 def held_sides(part: Part, shape: Shape, mesh: Mesh) -> NDArray[np.bool_]:
@@ -270,16 +303,16 @@ def _without_repeats(held: HeldDirections) -> HeldDirections:
 
 def _exact(moved: Floats, pull: Floats) -> Floats:
     """A node fixed at zero must stand at exactly zero, whatever rounding did."""
-    return np.where((pull == 0.0).all(axis=1)[:, None], 0.0, moved)
+    return np.where((pull == 0.0).all(axis=-1)[..., None], 0.0, moved)
 
 
 def _check_agreement(held: HeldDirections, keep: NDArray[np.bool_], gap: Floats) -> None:
     """Raise if a node cannot do what all its supports ask."""
-    scale = float(np.abs(held.values).max(initial=0.0))
-    if scale == 0.0 or not (np.abs(gap) > 1e-9 * scale).any():
+    scale = float(np.abs(held.by_case).max(initial=0.0))
+    if scale == 0.0 or not (gap > 1e-9 * scale).any():
         return
     rows = np.flatnonzero(keep)
-    node = held.nodes[rows[int(np.argmax(np.abs(gap)))]]
+    node = held.nodes[rows[int(np.argmax(gap))]]
     names = tuple(held.supports[i] for i in np.unique(held.owners[rows[held.nodes[rows] == node]]))
     raise InvalidPartError.of(
         (

@@ -2,15 +2,16 @@
 
 A bed of springs answers a movement u of the boundary with the force per length
 
-    q = -(kₙ n nᵀ + kₜ t tᵀ) u    [N/mm],
+    q = -(kₙ n nᵀ + kₜ t tᵀ) (u - d)    [N/mm],
 
-n the outward normal and t the tangent (a bed without a shear layer: Winkler 1867, from memory).  It
-adds a matrix to the stiffness and a known traction to the boundary; nothing is held.
+n the outward normal, t the tangent and d how far its ground is off (a bed without a shear layer:
+Winkler 1867, from memory).  It adds a matrix to the stiffness and a known traction to the boundary;
+nothing is held.
 """
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -20,8 +21,10 @@ from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, outward, side_tangents
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.mesh import Mesh
+from screenapp.model.misfits import movements
 from screenapp.model.part import ElasticSupport, Part
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution
@@ -59,11 +62,29 @@ class Springs:
         matrices: of each support that has a bed, by its index: what it answers to the
             displacements (x, y node by node), (2 n_nodes, 2 n_nodes) [N/mm].
         nodes, directions: where and along what they hold, (k,) and unit (k, 2).
+        off: how far the ground of every support is off in each case (n_cases, n_supports, 2) [mm];
+            None where none is.
     """
 
     matrices: dict[int, sparse.csr_array]
     nodes: Ints
     directions: Floats
+    off: Floats | None = None
+
+    def of_case(self, case: int) -> Springs:
+        """The springs in one case alone."""
+        return self if self.off is None else replace(self, off=self.off[case : case + 1])
+
+    def pulls(self, carried: Ints, shape: tuple[int, ...]) -> Floats:
+        """What they give at the carried nodes while the part has not moved, of that shape
+        (n_cases, 2 n_carried) [N]."""
+        given = self.forces(np.zeros((shape[0], self._size // 2, 2)))
+        total = sum(given.values(), start=np.zeros(2))
+        return np.asarray(total[:, carried].reshape(shape))
+
+    @property
+    def _size(self) -> int:
+        return int(next(iter(self.matrices.values())).shape[0])
 
     def stiffness(self, carried: Ints) -> sparse.csr_array:
         """Of all together, on the carried nodes only, (2 n_carried, 2 n_carried) [N/mm]."""
@@ -74,11 +95,11 @@ class Springs:
     def forces(self, displacements: Floats) -> dict[int, Floats]:
         """What each gives at the nodes, (n_cases, n_nodes, 2) [N], under displacements of that
         shape [mm]."""
-        flat = displacements.reshape(len(displacements), -1)
-        return {
-            owner: -(matrix @ flat.T).T.reshape(displacements.shape)
-            for owner, matrix in self.matrices.items()
-        }
+        given: dict[int, Floats] = {}
+        for owner, matrix in self.matrices.items():
+            gap = -displacements if self.off is None else self.off[:, owner, None] - displacements
+            given[owner] = (matrix @ gap.reshape(len(gap), -1).T).T.reshape(gap.shape)
+        return given
 
 
 def beds(part: Part, shape: Shape) -> tuple[Bed, ...]:
@@ -113,16 +134,18 @@ def springs(part: Part, shape: Shape, mesh: Mesh) -> Springs | None:
                 directions.append(way.reshape(-1, 2))
     if not matrices:
         return None
-    return Springs(matrices, np.concatenate(nodes), np.concatenate(directions))
+    off = movements(part, loadings(part))
+    return Springs(matrices, np.concatenate(nodes), np.concatenate(directions), off)
 
 
 def spring_tractions(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> Floats:
     """Traction that the beds put on the wall's face, (n_cases, n_sides, 3, 2) [MPa], at start,
     middle and end of every boundary side."""
     out = np.zeros((len(solution.displacements), len(mesh.sides), 3, 2))
+    off = movements(part, loadings(part))
     for bed in beds(part, shape):
         sides = mesh.sides_on(bed.pieces)
-        normals, tangents, across, forward = bed_forces(shape, mesh, solution, bed)
+        normals, tangents, across, forward = bed_forces(shape, mesh, solution, bed, off)
         thickness = element_thickness(part, mesh)[mesh.sides[sides, 0]]
         force = across[..., None] * normals + forward[..., None] * tangents
         out[:, sides] += force / thickness[:, None, None]
@@ -130,9 +153,11 @@ def spring_tractions(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -
 
 
 def bed_forces(
-    shape: Shape, mesh: Mesh, solution: Solution, bed: Bed
+    shape: Shape, mesh: Mesh, solution: Solution, bed: Bed, off: Floats | None
 ) -> tuple[Floats, Floats, Floats, Floats]:
     """What a bed gives at start, middle and end of its sides (`Mesh.sides_on` its pieces).
+
+    `off` is how far the supports are off, as `misfits.movements` has it.
 
     Returns:
         Outward normals and tangents, (n, 3, 2); force per length along them, (n_cases, n, 3)
@@ -143,6 +168,8 @@ def bed_forces(
     tangents = side_tangents(shape, mesh)[sides]
     normals = outward(tangents)
     moved = solution.displacements[:, mesh.side_nodes[sides]]
+    if off is not None:
+        moved = moved - off[:, bed.owner, None, None]
     across = -bed.normal * (moved * normals).sum(axis=-1)
     forward = -bed.along * (moved * tangents).sum(axis=-1)
     return normals, tangents, across, forward

@@ -41,7 +41,8 @@ def solve_system(
     bedded = None if springs is None else springs.stiffness(system.carried)
     stiffness = system.stiffness if bedded is None else system.stiffness + bedded
     reduced = (basis.T @ stiffness @ basis).tocsc()
-    right = basis.T @ (loads - stiffness @ reduction.held).T
+    driven = loads if springs is None else loads + springs.pulls(system.carried, loads.shape)
+    right = basis.T @ (driven - (stiffness @ reduction.held.T).T).T
     held_term = np.broadcast_to(reduction.held, loads.shape)
 
     def in_full(terms: Sequence[Floats]) -> list[Floats]:
@@ -50,7 +51,7 @@ def solve_system(
     def gap_of(terms: Sequence[Floats]) -> Floats:
         progress.check()
         full = in_full(terms)
-        back = loads - internal_forces(system, full)
+        back = driven - internal_forces(system, full)
         if bedded is not None:
             back -= (bedded @ np.sum(full, axis=0).T).T
         return np.asarray(basis.T @ back.T)

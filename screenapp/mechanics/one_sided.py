@@ -65,7 +65,18 @@ def solve_with_pins(
     )
     names = " and ".join(s.on for s in part.supports if isinstance(s, PinSupport))
     return _together(
-        [_one_case(system, held, pushing, own[None], names, progress, springs) for own in forces]
+        [
+            _one_case(
+                system,
+                held.of_case(k),
+                pushing,
+                own[None],
+                names,
+                progress,
+                None if springs is None else springs.of_case(k),
+            )
+            for k, own in enumerate(forces)
+        ]
     )
 
 
@@ -83,7 +94,7 @@ def _one_case(
     for number in range(MOST_ROUNDS):
         progress.check()
         try:
-            found = solve_system(system, _only(held, touching), forces, progress, springs)
+            found = solve_system(system, held.only(touching), forces, progress, springs)
         except SolvingError as error:
             if number == 0:
                 raise
@@ -109,23 +120,13 @@ def _wrong(held: HeldDirections, found: Solution, movable: Bools, touching: Bool
     """How wrongly each hold touches or not, relative to the largest; 0 where it is right, (k,)."""
     assert found.support_forces is not None
     force = (found.support_forces[0, held.nodes] * held.directions).sum(axis=1)
-    into = (found.displacements[0, held.nodes] * held.directions).sum(axis=1) - held.values
+    into = (found.displacements[0, held.nodes] * held.directions).sum(axis=1) - held.by_case[0]
     most = float(np.abs(found.support_forces[0]).max(initial=0.0)) + 1e-300
     farthest = float(np.abs(found.displacements[0]).max(initial=0.0)) + 1e-300
     pulled = np.where(movable & touching, force / most, 0.0)
     entered = np.where(movable & ~touching, into / farthest, 0.0)
     wrong = np.maximum(pulled, entered)
     return np.where(wrong > NOTHING, wrong, 0.0)
-
-
-def _only(held: HeldDirections, kept: Bools) -> HeldDirections:
-    return HeldDirections(
-        held.nodes[kept],
-        held.directions[kept],
-        held.values[kept],
-        held.owners[kept],
-        held.supports,
-    )
 
 
 def _together(found: Sequence[Solution]) -> Solution:

@@ -26,6 +26,7 @@ from screenapp.model.part import (
     Case,
     GravityLoad,
     Load,
+    MisfitLoad,
     Part,
     Point,
     PointLoad,
@@ -112,7 +113,7 @@ def _resultant(id_: str, places: Floats, forces: Floats, couples: Floats) -> Loa
 
 def _acting(part: Part, shape: Shape, load: Load) -> Acting:
     """The forces that a load stands for."""
-    if isinstance(load, TemperatureLoad):
+    if isinstance(load, TemperatureLoad | MisfitLoad):
         return np.zeros((0, 2)), np.zeros((0, 2))
     if isinstance(load, GravityLoad | SpinLoad):
         return _throughout(part, shape, load)

@@ -26,7 +26,7 @@ from screenapp.model.solution import Solution
 def solve(part: Part, shape: Shape, mesh: Mesh, progress: Progress = SILENT) -> Solution:
     """Solve all load cases of a part, with one factorisation unless pins that only push hold it.
 
-    Prescribed displacements act in every case.
+    Prescribed displacements act in every case, misfits in theirs.
 
     Raises:
         InvalidPartError: a support or load stands where it cannot act, or supports disagree.

@@ -1,4 +1,4 @@
-"""What is wrong with spins and changes of temperature."""
+"""What is wrong with spins, changes of temperature and misfits."""
 
 from __future__ import annotations
 
@@ -8,7 +8,16 @@ from collections.abc import Iterator
 import numpy as np
 
 from screenapp.model.errors import Fault
-from screenapp.model.part import BodyLoad, Case, LoopHole, Part, SpinLoad, TemperatureLoad
+from screenapp.model.misfits import misfit_faults
+from screenapp.model.part import (
+    BodyLoad,
+    Case,
+    LoopHole,
+    MisfitLoad,
+    Part,
+    SpinLoad,
+    TemperatureLoad,
+)
 from screenapp.model.shape import Shape
 
 COLDEST = -273.15
@@ -31,6 +40,8 @@ def body_load_faults(part: Part, load: BodyLoad, name: str, where: str) -> Itera
                 (load.id,),
                 blocks=False,
             )
+    elif isinstance(load, MisfitLoad):
+        yield from misfit_faults(part, load, name, where)
     elif isinstance(load, TemperatureLoad):
         fields = {"start": load.start}
         if load.zone is not None and all(z.id != load.zone for z in part.zones):

@@ -15,6 +15,7 @@ from screenapp.model.part import (
     CircleHole,
     Hole,
     Load,
+    MisfitLoad,
     Part,
     SlotHole,
     Support,
@@ -87,21 +88,28 @@ def break_pattern(part: Part, hole: str) -> Part:
 def _spread(part: Part, hole: Hole, ids: list[str]) -> Part:
     """Supports and loads on the whole pattern, put on each of the holes with these ids."""
     supports: list[Support] = []
+    became: dict[str, list[str]] = {}
     for support in part.supports:
         if support.on != hole.id:
             supports.append(support)
             continue
         names = [support.id, *_fresh(part, "s", len(ids) - 1, [s.id for s in supports])]
         supports += [replace(support, id=n, on=on) for n, on in zip(names, ids, strict=True)]
+        became[support.id] = names
     part = replace(part, supports=tuple(supports))
     cases: list[Case] = []
     for number, case in enumerate(part.cases):
         loads: list[Load] = []
         for load in case.loads:
+            used = [x.id for c in cases for x in c.loads] + [x.id for x in loads]
+            if isinstance(load, MisfitLoad) and load.support in became:
+                mine = became[load.support]
+                names = [load.id, *_fresh(part, "l", len(mine) - 1, used)]
+                loads += [replace(load, id=n, support=s) for s, n in zip(mine, names, strict=True)]
+                continue
             if isinstance(load, BodyLoad) or load.on != hole.id:
                 loads.append(load)
                 continue
-            used = [x.id for c in cases for x in c.loads] + [x.id for x in loads]
             names = [load.id, *_fresh(part, "l", len(ids) - 1, used)]
             total = isinstance(load, Shareable)
             shares = shared(load, hole) if total else [load] * len(ids)  # type: ignore[arg-type]

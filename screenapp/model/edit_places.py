@@ -7,6 +7,7 @@ from dataclasses import replace
 
 from screenapp.model.edit_rules import Outcome, must_find
 from screenapp.model.members import member_ids
+from screenapp.model.misfits import without_orphans
 from screenapp.model.part import BodyLoad, JointLimit, LoopHole, Part
 
 
@@ -50,9 +51,9 @@ def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
     limits = tuple(g for g in part.limits if g not in gone_limits)
     if not lost:
         return Outcome(part)
-    return Outcome(
-        replace(part, supports=tuple(supports), cases=tuple(cases), limits=limits), tuple(lost)
-    )
+    left = replace(part, supports=tuple(supports), cases=tuple(cases), limits=limits)
+    left, orphans = without_orphans(left)
+    return Outcome(left, (*lost, *orphans))
 
 
 def remove_outline(part: Part) -> Outcome:

@@ -11,6 +11,7 @@ from screenapp.model.edit_places import remove_hole, remove_outline
 from screenapp.model.edit_rules import EditError, Outcome, must_find, without_stale_formulas
 from screenapp.model.edit_zones import remove_zone
 from screenapp.model.features import find, loops_of
+from screenapp.model.misfits import without_orphans
 from screenapp.model.part import FatigueLimit, Part
 
 
@@ -59,7 +60,8 @@ def _remove_one(part: Part, id_: str) -> Outcome:
     if kind == "zone":
         return Outcome(remove_zone(part, id_))
     if kind == "support":
-        return Outcome(replace(part, supports=tuple(s for s in part.supports if s.id != id_)))
+        left = replace(part, supports=tuple(s for s in part.supports if s.id != id_))
+        return Outcome(*without_orphans(left))
     if kind == "limit":
         return Outcome(replace(part, limits=tuple(g for g in part.limits if g.id != id_)))
     if kind == "probe":

@@ -9,6 +9,7 @@ from screenapp.model.body_load_faults import body_load_faults, temperature_fault
 from screenapp.model.edge_parts import span_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places
+from screenapp.model.misfits import misfit_faults_of_case
 from screenapp.model.part import (
     BearingLoad,
     BodyLoad,
@@ -18,6 +19,7 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MisfitLoad,
     MomentLoad,
     Part,
     PlacedLoad,
@@ -48,6 +50,7 @@ WORDS: dict[type, str] = {
     GravityLoad: "gravity",
     SpinLoad: "spin",
     TemperatureLoad: "temperature change",
+    MisfitLoad: "misfit",
 }
 """What each load is called."""
 
@@ -83,6 +86,8 @@ def load_faults(part: Part, places: Places, shape: Shape | None) -> Iterator[Fau
             continue
         yield from one_load_faults(part, case, places, shape)
         yield from temperature_faults(part, case, shape)
+        if shape is not None:
+            yield from misfit_faults_of_case(part, case, shape)
         if not pushed and all(not any(components(load).values()) for load in case.loads):
             yield Fault(
                 f"all loads of case “{case.name}” are zero",

@@ -150,7 +150,24 @@ class TemperatureLoad:
     zone: str | None = None
 
 
+@dataclass(frozen=True)
+class MisfitLoad:
+    """A support that is not where the drawing has it: `x`, `y` [mm] away, in this case only.
+
+    It moves what the support holds, in the directions in which it holds; the movement adds to the
+    one that the support may prescribe in all cases.
+
+    Attributes:
+        support: id of the support.
+    """
+
+    id: str
+    support: str
+    x: float
+    y: float
+
+
 PlacedLoad = PressureLoad | ShearLoad | LineLoad | ForceLoad | BearingLoad | PointLoad | MomentLoad
-BodyLoad = GravityLoad | SpinLoad | TemperatureLoad
-"""Loads that act throughout the part, not on a place of its boundary."""
+BodyLoad = GravityLoad | SpinLoad | TemperatureLoad | MisfitLoad
+"""Loads that act throughout the part or through a support, not on a place of its boundary."""
 Load = PlacedLoad | BodyLoad

@@ -64,6 +64,9 @@ from screenapp.model.load_records import (
     Load as Load,
 )
 from screenapp.model.load_records import (
+    MisfitLoad as MisfitLoad,
+)
+from screenapp.model.load_records import (
     MomentLoad as MomentLoad,
 )
 from screenapp.model.load_records import (

@@ -34,6 +34,7 @@ from screenapp.model.part import (
     LoopHole,
     Material,
     MeshWishes,
+    MisfitLoad,
     MomentLoad,
     Part,
     PinSupport,
@@ -83,6 +84,7 @@ LOADS: dict[str, type] = {
     "gravity": GravityLoad,
     "spin": SpinLoad,
     "temperature": TemperatureLoad,
+    "misfit": MisfitLoad,
 }
 LIMITS: dict[str, type] = {
     "stress": StressLimit,

@@ -216,7 +216,7 @@ def _contradictions(part: Part, shape: Shape) -> Iterator[Fault]:
                 continue  # springs give way
             if b == a or (b in moving and b < a):
                 continue
-            at = _clash(held[a].points, held[b].points, (held[a], held[b]))
+            at = clash(held[a].points, held[b].points, (held[a], held[b]))
             if at is not None:
                 one, two = part.supports[a].id, part.supports[b].id
                 yield Fault(
@@ -229,7 +229,7 @@ def _contradictions(part: Part, shape: Shape) -> Iterator[Fault]:
                 )
 
 
-def _clash(p: np.ndarray, q: np.ndarray, held: tuple) -> Point | None:  # type: ignore[type-arg]
+def clash(p: np.ndarray, q: np.ndarray, held: tuple) -> Point | None:  # type: ignore[type-arg]
     """A common point at which no displacement satisfies both supports."""
     if len(p) == 0 or len(q) == 0:
         return None

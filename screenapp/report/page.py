@@ -23,6 +23,7 @@ from screenapp.model.part import (
     ElasticSupport,
     LineLoad,
     Load,
+    MisfitLoad,
     Part,
     SpinLoad,
     Support,
@@ -143,6 +144,8 @@ def load_words(load: Load) -> str:
         if load.x or load.y:
             graded = f", at the origin; gradient ({load.x:g}, {load.y:g}) K/mm"
         return f"{what} warms by {load.change:g} K from {load.start:g} °C{graded}"
+    if isinstance(load, MisfitLoad):
+        return f"support {load.support} is off by ({load.x:g}, {load.y:g}) mm"
     if isinstance(load, BodyLoad):
         return f"own weight under ({load.x:g}, {load.y:g}) m/s²"
     kind = type(load).__name__

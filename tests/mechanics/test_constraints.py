@@ -38,7 +38,7 @@ def _held(case: Structured, *supports: Support) -> tuple[Part, Floats, Floats]:
     carried, index = carried_nodes(case.mesh, "quad9")
     made = reduce(held_directions(part, case.shape, case.mesh), case.mesh, index)
     full = np.zeros((case.mesh.n_nodes, 2))
-    full[carried] = made.held.reshape(-1, 2)
+    full[carried] = made.held[0].reshape(-1, 2)
     basis = np.zeros((case.mesh.n_nodes, 2, made.basis.shape[1]))
     basis[carried] = made.basis.toarray().reshape(len(carried), 2, -1)
     return part, full, basis

@@ -30,6 +30,7 @@ from screenapp.model.part import (
     Material,
     MaterialFamily,
     MeshWishes,
+    MisfitLoad,
     MomentLoad,
     Part,
     PinSupport,
@@ -121,6 +122,7 @@ def _loads(case: int):  # type: ignore[no-untyped-def]
             st.builds(ForceLoad, name, on, numbers, numbers, maybe, maybe),
             *(st.builds(cls, name, on, numbers, numbers) for cls in vectors),
             st.builds(MomentLoad, name, on, numbers),
+            st.builds(MisfitLoad, name, st.sampled_from(["s0", "s1", "gone"]), numbers, numbers),
             st.builds(GravityLoad, name, numbers, numbers),
             st.builds(SpinLoad, name, numbers, numbers, numbers, numbers),
             st.builds(

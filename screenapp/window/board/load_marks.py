@@ -13,6 +13,7 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MisfitLoad,
     MomentLoad,
     PointLoad,
     PressureLoad,
@@ -38,6 +39,9 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
         return mark
     if isinstance(load, SpinLoad):
         spin_mark(mark, drawn, frame, load)
+        return mark
+    if isinstance(load, MisfitLoad):
+        _misfit(mark, drawn, frame, load)
         return mark
     if isinstance(load, TemperatureLoad):
         centre = drawn.anchor_of(load.zone) if load.zone is not None else centroid(drawn)
@@ -220,6 +224,24 @@ def _own_weight(mark: Mark, drawn: DrawnPart, frame: Frame, load: GravityLoad) -
     tip = at + (LONG - 4.0) * way
     mark.arrow(at + 6.0 * way, tip)
     mark.say("own weight", at + 0.5 * (tip - at) + np.array([44.0, 0.0]))
+
+
+def _misfit(mark: Mark, drawn: DrawnPart, frame: Frame, load: MisfitLoad) -> None:
+    """Two bars, where the support should be and where it is, and an arrow from one to the other."""
+    support = next((s for s in drawn.part.supports if s.id == load.support), None)
+    way = to_px(load.x, load.y)
+    place = None if support is None else middle(drawn, frame, support.on, span_of(support))
+    if support is None or way is None or place is None:
+        return
+    at, out = place
+    start = at if support.on in drawn.holes else at + 4.0 * out
+    side = 9.0 * np.array([-way[1], way[0]])
+    tip = start + 34.0 * way
+    for end in (start, tip):
+        mark.line(end - side, end + side)
+    mark.arrow(start, tip)
+    size = format_quantity(math.hypot(load.x, load.y), "length", drawn.part.display_units)
+    mark.say(f"off by {size}", tip + np.array([52.0 * way[0], 16.0 * way[1]]))
 
 
 def label_gap(way: Floats) -> Floats:

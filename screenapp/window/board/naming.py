@@ -17,6 +17,7 @@ from screenapp.model.part import (
     ForceLoad,
     GravityLoad,
     LineLoad,
+    MisfitLoad,
     MomentLoad,
     Part,
     PinSupport,
@@ -87,6 +88,9 @@ def described(part: Part, found: Found) -> str:
         start = format_quantity(record.start, "temperature", units)
         where = "" if record.zone is None else f" of zone {record.zone}"
         return f"load {record.id}, change of temperature{where} by {change} from {start}"
+    if isinstance(record, MisfitLoad):
+        x, y = (_length(v, units) for v in (record.x, record.y))
+        return f"load {record.id}, misfit of support {record.support} by {x}, {y}"
     if found.kind == "load":
         return f"{_loaded(record, units)} on {place_name(part, record.on)}"  # type: ignore
     return words

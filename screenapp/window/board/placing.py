@@ -71,7 +71,8 @@ class Placing:
             ways = holding_ways(part, record.on)  # type: ignore[union-attr]
         else:
             ways = loading_ways(part, record.on)  # type: ignore[union-attr]
-        on = getattr(record, "on", "") or getattr(record, "zone", None) or ""
+        places = (getattr(record, key, None) for key in ("on", "zone", "support"))
+        on = next((place for place in places if place), "")
         verb = "Hold" if found.kind == "support" else "Load"
         title = title or f"{verb} {place_name(part, on)}"
         self._open(title, ways, on, near, record)  # type: ignore[arg-type]

@@ -19,6 +19,7 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MisfitLoad,
     MomentLoad,
     Part,
     PinSupport,
@@ -286,12 +287,26 @@ TEMPERATURE = Way(
 )
 
 
+MISFIT = Way(
+    "misfit",
+    "Misfit",
+    "The support here is not where the drawing has it, in this case; what it holds moves with it.",
+    vector_fields("length"),
+    lambda id_, on, values: (  # `on` is the support
+        None if (found := components(values)) is None else MisfitLoad(id_, on, *found)
+    ),
+    (("angle", 0.0),),
+)
+
+
 def body_ways(load: BodyLoad) -> tuple[str, tuple[Way, ...]]:
     """What a load that acts throughout the part is called, and how it is given."""
     if isinstance(load, SpinLoad):
         return "Spin", (SPIN,)
     if isinstance(load, TemperatureLoad):
         return "Change of temperature", (TEMPERATURE,)
+    if isinstance(load, MisfitLoad):
+        return f"Misfit of support {load.support}", (MISFIT,)
     return "Own weight", (OWN_WEIGHT,)
 
 
@@ -310,7 +325,20 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
 
 
 def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
-    """The ways in which a place may be loaded, the most likely first."""
+    """The ways in which a place may be loaded, the most likely first; what is held may be off."""
+    held = next(
+        (s.id for s in part.supports if s.on == on and not isinstance(s, SymmetrySupport)), None
+    )
+    if held is None:
+        return _loading_ways(part, on)
+
+    def make(id_: str, _on: str, values: Values) -> Record | None:
+        return MISFIT.make(id_, held, values)
+
+    return (*_loading_ways(part, on), replace(MISFIT, make=make))
+
+
+def _loading_ways(part: Part, on: str) -> tuple[Way, ...]:
     found = find(part, on)
     if found is None or found.inside or found.kind not in ("edge", "hole", "corner"):
         return ()
@@ -355,6 +383,7 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         PointLoad: "point",
         LineLoad: "line",
         GravityLoad: "gravity",
+        MisfitLoad: "misfit",
     }
     return keys[type(record)], {"x": record.x, "y": record.y}
 

@@ -15,6 +15,7 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MisfitLoad,
     MomentLoad,
     Part,
     PointLoad,
@@ -33,7 +34,10 @@ FIRST_FORCE, FIRST_LINE, FIRST_PRESSURE = 100.0, 1.0, 1.0
 FIRST_MOMENT, FIRST_SPEED, FIRST_CHANGE = 10_000.0, 1000.0, 20.0
 """[N·mm, 1/min, K]."""
 
-Directed = LineLoad | ForceLoad | BearingLoad | PointLoad | GravityLoad
+FIRST_MISFIT = 0.1
+"""[mm]."""
+
+Directed = LineLoad | ForceLoad | BearingLoad | PointLoad | GravityLoad | MisfitLoad
 """Loads with a size and a direction."""
 
 FREE_FALL = 9.80665
@@ -48,7 +52,8 @@ def add_case(document: Document) -> None:
 
 
 def add_load(document: Document, case: str | None, key: str) -> None:
-    """Add a load; `key` is "kind place" or "gravity"; without a case, one is made."""
+    """Add a load; `key` is "kind place", "misfit support" or "gravity"; without a case, one is
+    made."""
     part = document.part
     if case is None:
         part = edits.add_case(part)
@@ -62,6 +67,8 @@ def add_load(document: Document, case: str | None, key: str) -> None:
 def _first_load(part: Part, kind: str, id_: str, on: str) -> Load:
     if kind == "spin":
         return SpinLoad(id_, *_middle(part), FIRST_SPEED)
+    if kind == "misfit":
+        return MisfitLoad(id_, on, FIRST_MISFIT, 0.0)
     if kind == "temperature":
         return TemperatureLoad(id_, FIRST_CHANGE)
     if kind == "moment":

@@ -19,12 +19,14 @@ from screenapp.model.part import (
     GravityLoad,
     LineLoad,
     Load,
+    MisfitLoad,
     MomentLoad,
     Part,
     PointLoad,
     PressureLoad,
     ShearLoad,
     SpinLoad,
+    SymmetrySupport,
     TemperatureLoad,
 )
 from screenapp.window.document import Document
@@ -55,6 +57,7 @@ BODY_NAMES: dict[type, str] = {
     GravityLoad: "own weight",
     SpinLoad: "spin",
     TemperatureLoad: "change of temperature",
+    MisfitLoad: "misfit",
 }
 
 
@@ -199,6 +202,13 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
     for title, lines_of in groups.items():
         if lines_of:
             made += [Choice("-", title), *lines_of]
+    off = [
+        Choice(f"misfit {s.id}", f"{s.id} is off at {place_name(document.part, s.on)}")
+        for s in document.part.supports
+        if not isinstance(s, SymmetrySupport)
+    ]
+    if off:
+        made += [Choice("-", "Supports"), *off]
     return (
         *made,
         Choice("-", ""),
@@ -215,6 +225,9 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
         where, also, name = "everywhere", (), BODY_NAMES[type(load)]
         if isinstance(load, TemperatureLoad) and load.zone is not None:
             where, also = f"zone {load.zone}", (load.zone,)
+        if isinstance(load, MisfitLoad):
+            where, also = f"support {load.support}", (load.support,)
+            name = f"misfit of support {load.support}"
     else:
         where, also = place_name(document.part, load.on), (load.on,)
         name = f"load at {where}"
@@ -280,6 +293,7 @@ def _load_pieces(
         PointLoad: ("pulled at the point by ", "force"),
         LineLoad: ("pulled by ", "line load"),
         GravityLoad: ("own weight under ", "acceleration"),
+        MisfitLoad: ("off by ", "displacement"),
     }
     lead, kind = kinds[type(load)]
     size = math.hypot(load.x, load.y)
