@@ -140,28 +140,30 @@ def internal_forces(system: System, terms: Sequence[Floats]) -> Floats:
     slender part the rigid motion of an element is a million times its stretch, and its rounding
     would drown the forces; this way they keep their digits.
     """
-    n_cases = len(terms[0])
     m = CARRIED_NODES[system.element]
-    nodes, n_carried = system.element_nodes, len(system.carried)
-    out = np.zeros((n_cases, 2 * n_carried))
+    nodes, size = system.element_nodes, 2 * len(system.carried)
+    columns = [np.ascontiguousarray(t.T) for t in terms]  # (2 n_carried, n_cases)
+    out = np.zeros((size, len(terms[0])))
     unpack = np.zeros((2 * m, 2 * m), dtype=np.int64)
     upper = np.triu_indices(2 * m)
     unpack[upper] = np.arange(len(upper[0]))
     unpack = np.maximum(unpack, unpack.T)
     for first in range(0, len(nodes), CHUNK):
         rows = slice(first, first + CHUNK)
-        at = nodes[rows]
+        places = _places(nodes[rows])
         positions = system.mesh.nodes[system.mesh.quads[rows, :m]]
-        stretch = np.sum(
-            [_without_motion(t.reshape(n_cases, n_carried, 2)[:, at], positions) for t in terms],
-            axis=0,
+        across = _turning(positions)
+        stretch = _without_motion(columns[0][places], positions, across)
+        for term in columns[1:]:
+            stretch += _without_motion(term[places], positions, across)
+        forces = (system.packed[rows][:, unpack] @ stretch).reshape(-1, out.shape[1])
+        # one column for each displacement of an element, with a single 1 where it belongs
+        gather = sparse.csc_array(
+            (np.ones(len(forces)), places.ravel(), np.arange(len(forces) + 1)),
+            shape=(size, len(forces)),
         )
-        stacked = np.moveaxis(stretch, 0, 3).transpose(0, 2, 1, 3).reshape(len(at), 2 * m, n_cases)
-        forces = system.packed[rows][:, unpack] @ stacked
-        places = _places(at).ravel()
-        for case in range(n_cases):
-            out[case] += np.bincount(places, forces[..., case].ravel(), minlength=out.shape[1])
-    return out
+        out += np.asarray(gather @ forces)
+    return np.ascontiguousarray(out.T)
 
 
 def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Floats | None]:
@@ -180,34 +182,49 @@ def spread(system: System, unknowns: Floats, forces: Floats) -> tuple[Floats, Fl
     mesh, element, m = system.mesh, system.element, CARRIED_NODES[system.element]
     out = np.zeros((n_cases, mesh.n_nodes, 2))
     out[:, system.carried] = unknowns.reshape(n_cases, len(system.carried), 2)
-    local = out[:, mesh.quads[:, :m]]  # (n_cases, n_elements, m, 2)
     inner: Floats | None = None
     if system.recovery is not None:
-        stacked = np.moveaxis(local, 3, 2).reshape(n_cases, mesh.n_elements, 2 * m)
-        inner = -np.einsum("eki,cei->cek", system.recovery, stacked)
+        columns = np.ascontiguousarray(unknowns.T)[_places(system.element_nodes)]
+        inner = -np.moveaxis(system.recovery @ columns, 2, 0)
     if element == "quad9":
         assert inner is not None
         assert system.flexibility is not None
-        own = forces[:, mesh.quads[:, 8]]
-        out[:, mesh.quads[:, 8]] = inner + np.einsum("ekl,cel->cek", system.flexibility, own)
+        centre = mesh.quads[:, 8]
+        out[:, centre] = inner
+        own = forces[:, centre]
+        if own.any():
+            out[:, centre] += np.einsum("ekl,cel->cek", system.flexibility, own)
         return out, None
     shapes = shape_functions.values(
         NODES_OF_ELEMENT[element], shape_functions.LOCAL_NODES[m:]
     )  # (9 - m, m)
-    out[:, mesh.quads[:, m:]] = np.einsum("im,cemk->ceik", shapes, local)
+    out[:, mesh.quads[:, m:]] = shapes @ out[:, mesh.quads[:, :m]]
     return out, inner
 
 
-def _without_motion(displacements: Floats, positions: Floats) -> Floats:
-    """Displacements (n_cases, n, m, 2) of elements at (n, m, 2), less their mean turn and their
-    first node's shift (differences of neighbours are free of rounding)."""
-    moved = displacements - displacements[:, :, :1]
+def _turning(positions: Floats) -> Floats:
+    """Displacements (n, 2m), x of all nodes first, of elements at (n, m, 2) [mm] that turn by 1
+    about their middle."""
     arm = positions - positions.mean(axis=1, keepdims=True)
-    turn = np.einsum("nm,cnm->cn", arm[..., 0], moved[..., 1])
-    turn -= np.einsum("nm,cnm->cn", arm[..., 1], moved[..., 0])
-    turn /= np.einsum("nmd,nmd->n", arm, arm)
-    across = np.stack([-arm[..., 1], arm[..., 0]], axis=-1)
-    return np.asarray(moved - turn[..., None, None] * (across - across[:, :1]))
+    return np.concatenate([-arm[..., 1], arm[..., 0]], axis=1)
+
+
+def _without_motion(displacements: Floats, positions: Floats, across: Floats) -> Floats:
+    """Displacements (n, 2m, n_cases) of elements, x of all nodes first, less their mean turn and
+    their first node's shift (differences of neighbours are free of rounding); written over.
+
+    Args:
+        positions: of the nodes [mm], (n, m, 2).
+        across: as `_turning`.
+    """
+    m = positions.shape[1]
+    shares = across / np.einsum("ni,ni->n", across, across)[:, None]
+    displacements[:, :m] -= displacements[:, :1].copy()
+    displacements[:, m:] -= displacements[:, m : m + 1].copy()
+    turn = shares[:, None] @ displacements  # (n, 1, n_cases)
+    from_first = across - np.repeat(across[:, [0, m]], m, axis=1)
+    displacements -= from_first[:, :, None] * turn
+    return displacements
 
 
 def _keep(made: ElementMatrices, recovery: list[Floats], flexibility: list[Floats]) -> None:

@@ -71,9 +71,9 @@ class Springs:
     directions: Floats
     off: Floats | None = None
 
-    def of_case(self, case: int) -> Springs:
-        """The springs in one case alone."""
-        return self if self.off is None else replace(self, off=self.off[case : case + 1])
+    def of_cases(self, cases: Ints) -> Springs:
+        """The springs in some of the cases alone."""
+        return self if self.off is None else replace(self, off=self.off[cases])
 
     def pulls(self, carried: Ints, shape: tuple[int, ...]) -> Floats:
         """What they give at the carried nodes while the part has not moved, of that shape

@@ -158,16 +158,19 @@ def solve_refined(
     if not np.isfinite(terms[0]).all():
         raise _mechanism()
     gap = gap_of(terms)
-    residual = _relative(gap, right)
+    residuals = _relative(gap, right)
     for _ in range(REFINEMENTS):
-        if residual <= ENOUGH:
+        rough = np.flatnonzero(~(residuals <= ENOUGH))
+        if not len(rough):
             break
-        tried = [*terms, solve(gap)]
-        left = gap_of(tried)
+        more = np.zeros(right.shape)
+        more[:, rough] = solve(gap[:, rough])
+        left = gap_of([*terms, more])
         better = _relative(left, right)
-        if not better < residual:
+        if not better.max() < residuals.max():
             break
-        terms, gap, residual = tried, left, better
+        terms, gap, residuals = [*terms, more], left, better
+    residual = float(residuals.max())
     if not residual <= TOO_MUCH:
         raise SolvingError(
             f"the equations are solved to a relative residual of {residual:.1e} only",
@@ -177,9 +180,10 @@ def solve_refined(
     return terms, residual
 
 
-def _relative(gap: Floats, right: Floats) -> float:
+def _relative(gap: Floats, right: Floats) -> Floats:
+    """Size of each column of the gap relative to its right-hand side, (k,)."""
     size = np.linalg.norm(right, axis=0)
-    return float((np.linalg.norm(gap, axis=0) / np.where(size > 0.0, size, 1.0)).max())
+    return np.asarray(np.linalg.norm(gap, axis=0) / np.where(size > 0.0, size, 1.0))
 
 
 def _no_memory(matrix: sparse.csc_array) -> SolvingError:

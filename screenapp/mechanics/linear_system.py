@@ -9,11 +9,12 @@ from numpy.typing import NDArray
 from scipy import sparse
 
 from screenapp.mechanics.assembly import System, condense_loads, internal_forces, spread
-from screenapp.mechanics.constraints import HeldDirections, reduce
+from screenapp.mechanics.constraints import HeldDirections, Reduction, reduce
 from screenapp.mechanics.dissection import elimination_order
 from screenapp.mechanics.elastic_supports import Springs
 from screenapp.mechanics.equilibrium import balance, reactions
 from screenapp.mechanics.linear_solve import factorise, solve_refined
+from screenapp.mechanics.superposition import Superposition, superpose
 from screenapp.model.progress import SILENT, Progress
 from screenapp.model.solution import Solution
 
@@ -36,22 +37,31 @@ def solve_system(
     """
     mesh = system.mesh
     reduction = reduce(held, mesh, system.index, springs)
-    loads = condense_loads(system, forces)
+    cases = _superposition(forces, reduction, springs)
+    own = forces[cases.solved]
+    prescribed = np.broadcast_to(reduction.held, (len(forces), reduction.held.shape[1]))[
+        cases.solved
+    ]
+    loads = condense_loads(system, own)
     basis = reduction.basis
     bedded = None if springs is None else springs.stiffness(system.carried)
     stiffness = system.stiffness if bedded is None else system.stiffness + bedded
     reduced = (basis.T @ stiffness @ basis).tocsc()
-    driven = loads if springs is None else loads + springs.pulls(system.carried, loads.shape)
-    right = basis.T @ (driven - (stiffness @ reduction.held.T).T).T
-    held_term = np.broadcast_to(reduction.held, loads.shape)
+    driven = loads
+    if springs is not None:
+        driven = loads + springs.of_cases(cases.solved).pulls(system.carried, loads.shape)
+    right = basis.T @ (driven - (stiffness @ prescribed.T).T).T
 
     def in_full(terms: Sequence[Floats]) -> list[Floats]:
-        return [held_term, *((basis @ term).T for term in terms)]
+        return [prescribed, *((basis @ term).T for term in terms)]
+
+    put_up: dict[int, Floats] = {}  # internal forces by the number of terms
 
     def gap_of(terms: Sequence[Floats]) -> Floats:
         progress.check()
         full = in_full(terms)
-        back = driven - internal_forces(system, full)
+        put_up[len(terms)] = internal_forces(system, full)
+        back = driven - put_up[len(terms)]
         if bedded is not None:
             back -= (bedded @ np.sum(full, axis=0).T).T
         return np.asarray(basis.T @ back.T)
@@ -61,13 +71,15 @@ def solve_system(
         reduced, right, gap_of, lambda matrix: factorise(matrix, lambda: _order(system, basis))
     )
     progress.check()
-    parts = in_full(terms)
-    unknowns = np.sum(parts, axis=0)
-    displacements, modes = spread(system, unknowns, forces)
-    support_forces = np.zeros(forces.shape)
-    support_forces[:, system.carried] = (internal_forces(system, parts) - loads).reshape(
-        len(forces), len(system.carried), 2
+    displacements, modes = spread(system, np.sum(in_full(terms), axis=0), own)
+    if len(terms) not in put_up:  # there was nothing to solve for
+        put_up[len(terms)] = internal_forces(system, in_full(terms))
+    support_forces = np.zeros(own.shape)
+    support_forces[:, system.carried] = (put_up[len(terms)] - loads).reshape(
+        len(own), len(system.carried), 2
     )
+    support_forces = cases.spread(support_forces)
+    displacements = cases.spread(displacements)
     beds = {} if springs is None else springs.forces(displacements)
     given = tuple(
         reactions(held, mesh.nodes, case, {owner: bed[k] for owner, bed in beds.items()})
@@ -82,9 +94,23 @@ def solve_system(
         ),
         residual=residual,
         unknowns=reduced.shape[0],
-        internal_modes=modes,
+        internal_modes=None if modes is None else cases.spread(modes),
         support_forces=support_forces,
     )
+
+
+def _superposition(forces: Floats, reduction: Reduction, springs: Springs | None) -> Superposition:
+    """Which cases to solve: what acts in a case are its forces, the displacements that supports
+    prescribe and the springs whose ground is off, each measured by its largest in any case."""
+    acting = [forces, np.broadcast_to(reduction.held, (len(forces), reduction.held.shape[1]))]
+    if springs is not None and springs.off is not None:
+        acting.append(springs.off)
+    columns = []
+    for kind in acting:
+        flat = kind.reshape(len(forces), -1)
+        flat = flat[:, flat.any(axis=0)]
+        columns.append(flat / np.abs(flat).max(initial=1e-300))
+    return superpose(np.concatenate(columns, axis=1))
 
 
 def _order(system: System, basis: sparse.csc_array) -> Ints:

@@ -73,7 +73,7 @@ def solve_with_pins(
                 own[None],
                 names,
                 progress,
-                None if springs is None else springs.of_case(k),
+                None if springs is None else springs.of_cases(np.array([k])),
             )
             for k, own in enumerate(forces)
         ]
