@@ -51,7 +51,7 @@ def _probe_values(
         estimate = None if reading is None else read_value(reading, component)
         if reading is not None and estimate is not None:
             value = estimate_text(estimate, kind, source.part.display_units)
-            texts.append((reading.at, f"{value} under “{names[reading.case]}”"))
+            texts.append((reading.at, f"{value}\nunder “{names[reading.case]}”"))
     return tuple(texts)
 
 

@@ -26,6 +26,8 @@ PADDING = 6
 LINE_ROLE = Qt.ItemDataRole.UserRole + 1
 PILL_ROLE = Qt.ItemDataRole.UserRole + 2
 
+WRAP = Qt.TextFlag.TextWordWrap.value
+
 Index = QModelIndex | QPersistentModelIndex
 
 
@@ -48,7 +50,7 @@ class FigureDelegate(QStyledItemDelegate):
         else:
             painter.setFont(theme.font())
             painter.setPen(index.data(Qt.ItemDataRole.ForegroundRole))
-            _draw(painter, rect, text, index.data(Qt.ItemDataRole.TextAlignmentRole))
+            _draw(painter, rect, text, index.data(Qt.ItemDataRole.TextAlignmentRole), wraps=True)
         if index == table.currentIndex() and table.hasFocus():
             painter.fillRect(rect.left(), rect.bottom(), rect.width(), 1, theme.colour("accent"))
 
@@ -76,8 +78,25 @@ class FigureHeading(QHeaderView):
         _draw(painter, rect, str(text or ""), side)
 
 
-def _draw(painter: QPainter, rect: QRect, text: str, side: Qt.AlignmentFlag) -> None:
+def lines_of(metrics: QFontMetrics, text: str, width: int) -> int:
+    """How many lines a text takes between its paddings; 1 too where no line can hold a word."""
+    inner = width - 2 * PADDING
+    if metrics.horizontalAdvance(text) <= inner + 1:
+        return 1
+    if any(metrics.horizontalAdvance(word) > inner for word in text.split()):
+        return 1
+    box = metrics.boundingRect(QRect(0, 0, inner, 10_000), WRAP, text)
+    return max(1, round(box.height() / metrics.lineSpacing()))
+
+
+def _draw(
+    painter: QPainter, rect: QRect, text: str, side: Qt.AlignmentFlag, wraps: bool = False
+) -> None:
     inner = rect.adjusted(PADDING, 0, -PADDING, 0)
     metrics = painter.fontMetrics()
+    lines = lines_of(metrics, text, rect.width()) if wraps else 1
+    if lines > 1 and lines * metrics.lineSpacing() <= rect.height() + 2:
+        painter.drawText(inner, Qt.AlignmentFlag(side).value | WRAP, text)
+        return
     shown = metrics.elidedText(text, Qt.TextElideMode.ElideRight, inner.width() + 1)
     painter.drawText(inner, Qt.AlignmentFlag(side).value, shown)

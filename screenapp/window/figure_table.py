@@ -35,14 +35,19 @@ from screenapp.window.figure_painting import (
     PILL_ROLE,
     FigureDelegate,
     FigureHeading,
+    lines_of,
 )
 from screenapp.window.pill import pill_width
 
 ROW = 24
-"""Height of a row [px]."""
+"""Height of a row of one line [px]."""
+
+MOST_LINES = 3
+"""Words that find no room beside the numbers wrap into so many lines; more are cut."""
 
 LEAST_NAME, LEAST_WORDS, LEAST_IN_SHEET = 72, 56, 76
-"""The first column, and others of words, are not made narrower [px]; numbers are never cut."""
+"""The first column, and others of words, are not made narrower [px]: their texts wrap.  Numbers
+are never cut."""
 
 Index = QModelIndex | QPersistentModelIndex
 
@@ -251,7 +256,8 @@ class FigureTable(QTableView):
         """As tall as its lines where it grows."""
         if not self.grows:
             return super().sizeHint()
-        return QSize(240, ROW * (len(self.figures.lines) + 1) + 2)
+        rows = sum(self.rowHeight(row) for row in range(len(self.figures.lines)))
+        return QSize(240, ROW + rows + 2)
 
     def minimumSizeHint(self) -> QSize:
         """As `sizeHint` in height."""
@@ -353,3 +359,9 @@ class FigureTable(QTableView):
             spare += 1
         for i, wide in enumerate(wants):
             self.setColumnWidth(i, wide)
+        for row, line in enumerate(lines):
+            count = max((lines_of(body, line.texts[i], wants[i]) for i in words), default=1)
+            more = (min(count, MOST_LINES) - 1) * body.lineSpacing()
+            self.setRowHeight(row, ROW + more)
+        if self.grows:
+            self.updateGeometry()

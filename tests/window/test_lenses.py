@@ -523,4 +523,4 @@ def test_probes_of_all_cases_name_the_case_of_their_value(bench: Bench) -> None:
     bench.screen()
     texts = [value.text for value in bench.board.canvas.labels.values]
     assert texts
-    assert all(" under “P" in text for text in texts)
+    assert all("\nunder “P" in text for text in texts)

@@ -7,13 +7,16 @@ from dataclasses import replace
 
 import pytest
 from PySide6.QtCore import Qt
+from PySide6.QtGui import QFontMetrics
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QLineEdit
 from pytestqt.qtbot import QtBot
 
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Reading
 from screenapp.model.part import Probe
+from screenapp.window import theme
 from screenapp.window.document import Document
+from screenapp.window.figure_painting import lines_of
 from screenapp.window.read_values import size_of
 from screenapp.window.readings import EMPTY, Readings
 from tests.window.fabricate import plate
@@ -227,3 +230,28 @@ def test_what_rises_in_one_case_governs_before_larger_numbers(readings: Readings
     document.set_findings(replace(document.findings, readings=tuple(rows)))
     document.look(lens="Utilisation", envelope=True)
     assert texts(readings)[0][1] == "Push"
+
+
+def test_long_names_wrap_where_numbers_leave_no_room(readings: Readings) -> None:
+    """Nothing of a name of words is cut, and no number."""
+    document = readings.document
+    name = "beside the upper toe of the weld"
+    first = document.part.readings[0]
+    named = (replace(first, name=name), *document.part.readings[1:])
+    document.apply("name", replace(document.part, readings=named))
+    screened(document)
+    readings.resize(660, 180)
+    settle()
+    table = readings.table
+    assert table.rowHeight(0) > table.rowHeight(2)
+    metrics = QFontMetrics(theme.font())
+    needed = lines_of(metrics, name, table.columnWidth(0))
+    assert 2 <= needed <= 3
+    assert table.rowHeight(0) >= needed * metrics.lineSpacing()
+    for column in range(3, 7):
+        if not table.isColumnHidden(column):
+            text = texts(readings)[0][column]
+            assert metrics.horizontalAdvance(text) <= table.columnWidth(column)
+    readings.resize(1400, 180)
+    settle()
+    assert table.rowHeight(0) == table.rowHeight(2), "with room they stand in one line again"

@@ -520,3 +520,15 @@ def test_combinations_are_added_weighted_renamed_and_removed(sheet: Sheet) -> No
     document.undo()
     document.undo()
     assert document.part.combinations == ()
+
+
+def test_the_head_sets_the_verdict_apart_from_its_mend(qtbot: QtBot) -> None:
+    part = plate()
+    sheet = Sheet(Document(part))
+    qtbot.addWidget(sheet)
+    cause, mend = "the corner c4 is sharp and has no finite stress", "give it a radius"
+    found = made_up(part, "undecided", f"Undecided: {cause}: {mend}")
+    sheet.document.set_findings(replace(found, reasons=(f"{cause}: {mend}",)))
+    head = sheet.head.verdict
+    assert head.headline.text == f"Undecided: {cause}"
+    assert head.detail.text == "Give it a radius."

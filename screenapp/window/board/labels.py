@@ -140,7 +140,7 @@ class LabelsItem(ScreenItem):
             colour = palette.accent if cut.id in chosen else palette.ink
             tags.append(_Tag(name_place(frame, cut), (cut.name or cut.id,), colour, False))
         for probe in drawn.part.readings:
-            lines = tuple(filter(None, (probe.name, values.get(probe.at, ""))))
+            lines = tuple(filter(None, (probe.name, *values.get(probe.at, "").split("\n"))))
             colour = palette.accent if probe.id in chosen else palette.ink
             tags.append(_Tag(frame.px(probe.at), lines or (probe.id,), colour, True))
         return tags

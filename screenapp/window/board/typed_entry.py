@@ -22,6 +22,9 @@ STARTERS = "0123456789.,-(="
 """A key with one of these opens the row; "=" begins an expression and is not itself typed."""
 
 
+WIDEST = "−1234.5678 mm"
+"""The longest live value that a field shows whole."""
+
 TIP = "type a value, with a unit if you like, or an expression; Enter accepts"
 
 
@@ -188,7 +191,7 @@ class EntryRow(QFrame):
         for field in fields:
             label = QLabel(field.label)
             edit = QLineEdit()
-            edit.setFixedWidth(92)
+            edit.setFixedWidth(edit.fontMetrics().horizontalAdvance(WIDEST) + 14)
             edit.setAccessibleName(field.label)
             edit.setToolTip(f"{field.label}: {TIP}")
             edit.textEdited.connect(lambda _text, name=field.name: self._edited(name))

@@ -13,6 +13,9 @@ from screenapp.window.sheet.quantities import grouped
 
 STEPS = 1000
 
+BESIDE_TEXT = 40 + 3 * 12 + 48
+"""What margins, spaces and the shortest bar take beside buttons and words [px]."""
+
 
 class Foot(QWidget):
     """Screens, shows progress, cancels.
@@ -74,7 +77,13 @@ class Foot(QWidget):
     def show_step(self, step: Step) -> None:
         """Show stage, pass and share done."""
         number = f"pass {step.number}: " if step.number else ""
-        self.text.setText(f"{number}{step.stage}{self._pass}".capitalize())
+        stage = f"{number}{step.stage}".capitalize()
+        whole = stage + self._pass
+        used = (self.button, self.stop)
+        room = self.width() - sum(w.sizeHint().width() for w in used) - BESIDE_TEXT
+        fits = self.text.fontMetrics().horizontalAdvance(whole) <= room
+        self.text.setText(whole if fits else stage)
+        self.text.setToolTip(whole)
         self.bar.setValue(round(STEPS * min(1.0, max(0.0, step.done))))
 
     def show_pass(self, summary: PassSummary) -> None:

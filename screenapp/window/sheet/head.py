@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable
 from datetime import datetime
 
 from PySide6.QtCore import QRectF, Qt, Signal
@@ -262,9 +262,17 @@ class Head(QWidget):
             was = f"The part has changed since. It was: {findings.headline}. "
             return "out of date", "Out of date", (was, again, ".")
         reasons = reasons_in_head(findings)
-        detail: tuple[Piece | str, ...] = (_sentences(reasons),) if reasons else ()
-        return findings.verdict, findings.headline, detail
+        headline, mend = _parted(findings.headline)
+        said = _sentences(filter(None, (mend, *reasons)))
+        return findings.verdict, headline, (said,) if said else ()
 
 
-def _sentences(texts: Sequence[str]) -> str:
+def _parted(headline: str) -> tuple[str, str]:
+    """A headline that says what to do as well, in two: the verdict with its cause, and the mend."""
+    verdict, _, rest = headline.partition(": ")
+    cause, _, mend = rest.partition(": ")
+    return (f"{verdict}: {cause}", mend) if mend else (headline, "")
+
+
+def _sentences(texts: Iterable[str]) -> str:
     return " ".join(f"{t[:1].upper()}{t[1:].rstrip('.')}." for t in texts)
