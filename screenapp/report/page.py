@@ -14,7 +14,7 @@ from screenapp.model.assets import resource
 from screenapp.model.cut_figure import cut_figure
 from screenapp.model.edge_parts import span_of
 from screenapp.model.estimate_text import EstimateKind, estimate_text
-from screenapp.model.findings import CaseFindings, CutFindings, Estimate, Findings, Peak
+from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import (
@@ -31,6 +31,7 @@ from screenapp.model.part import (
 )
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.units import format_quantity
+from screenapp.report.balance_rows import balance_heads, balance_rows
 from screenapp.report.cut_svg import cut_svg
 from screenapp.report.dimensioned import dimensioned_svg
 from screenapp.report.drawing import part_svg
@@ -87,7 +88,8 @@ def record_page(
         dimension_rows=dimension_rows,
         formula_rows=formula_rows,
         combination_words=combination_words,
-        resultant=_resultant,
+        balance_heads=balance_heads(units),
+        balance_rows=lambda case: balance_rows(case, units),
         size=(x1 - x0, y1 - y0),
         drawing=Markup(part_svg(part, shape, findings)),  # made here, its texts escaped there
         dimensioned=Markup(dimensioned_svg(part, shape)),
@@ -102,12 +104,6 @@ def _environment() -> Environment:
     return Environment(
         autoescape=True, undefined=StrictUndefined, trim_blocks=True, lstrip_blocks=True
     )
-
-
-def _resultant(value: float, case: CaseFindings) -> str:
-    """A component of the loads' resultant; what is nothing but rounding beside them is 0."""
-    largest = max(map(abs, case.applied), default=0.0)
-    return f"{value if abs(value) > 1e-12 * largest else 0.0:.5g}"
 
 
 def _numbered(findings: Findings) -> list[tuple[int, str, object]]:

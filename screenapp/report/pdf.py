@@ -9,6 +9,7 @@ import base64
 import io
 from collections.abc import Callable, Iterator
 from datetime import datetime
+from itertools import zip_longest
 from xml.etree.ElementTree import Element
 from xml.sax.saxutils import escape
 
@@ -53,6 +54,7 @@ from screenapp.report.pdf_type import (
 MARGIN = 18.0 * mm
 ROOM = A4[0] - 2.0 * MARGIN
 MOST_DRAWING = 330.0  # height of a drawing [pt]
+DRAWING = "\x00"  # stands in marked-up text where a drawing stands
 
 
 def record_pdf(part: Part, sha256: str, page: str, when: datetime) -> bytes:
@@ -192,10 +194,24 @@ def _cell(block: Element, styles: DrawingStyles) -> Cell:
     if block.tag == "th":
         style = ParagraphStyle(f"{style.name} head", style, textColor=NOTE.textColor)
     drawings = [Drawn(svg, styles, MOST_DRAWING) for svg in block.iter("svg")]
-    markup = _markup(block).removeprefix("<br/>")
-    flow = (*drawings, *((Paragraph(markup, style),) if markup or not drawings else ()))
+    between = [_without_breaks(text) for text in _markup(block, DRAWING).split(DRAWING)]
+    flow: list[Flowable] = []
+    for text, drawing in zip_longest(between, drawings):
+        if text or not drawings:
+            flow.append(Paragraph(text, style))
+        if drawing is not None:
+            flow.append(drawing)
     words = _clean("".join(_texts(block)))
-    return Cell(flow, words, max(map(drawn_least, drawings), default=0.0))
+    return Cell(tuple(flow), words, max(map(drawn_least, drawings), default=0.0))
+
+
+def _without_breaks(markup: str) -> str:
+    """Marked-up text without breaks of the line at its ends: a drawing breaks it too."""
+    while markup.startswith("<br/>"):
+        markup = markup.removeprefix("<br/>")
+    while markup.endswith("<br/>"):
+        markup = markup.removesuffix("<br/>")
+    return markup
 
 
 def _texts(block: Element) -> Iterator[str]:
@@ -209,11 +225,11 @@ def _texts(block: Element) -> Iterator[str]:
         yield child.tail or ""
 
 
-def _markup(block: Element) -> str:
-    """The words of a block as marked-up text, drawings left out."""
+def _markup(block: Element, drawing: str = "") -> str:
+    """The words of a block as marked-up text, `drawing` in place of each drawing."""
     out = [escape(_clean(block.text or ""))]
     for child in block:
-        inner = "" if child.tag in ("svg", "br") else _markup(child)
+        inner = "" if child.tag in ("svg", "br") else _markup(child, drawing)
         if child.tag == "br":
             out.append("<br/>")
         elif child.tag == "span" and block.tag == "h2":
@@ -222,7 +238,9 @@ def _markup(block: Element) -> str:
             out.append(f'<font color="#5c6470">{inner}</font>' if inner else "")
         elif child.tag in ("strong", "p"):
             out.append(inner)
-        elif child.tag != "svg":
+        elif child.tag == "svg":
+            out.append(drawing)
+        else:
             raise ValueError(f"the record's PDF cannot show <{child.tag}> in <{block.tag}>")
         out.append(escape(_clean(child.tail or "")))
     words = "".join(out).strip()
