@@ -127,7 +127,8 @@ class PointLocator:
             miss[out] = np.hypot(*(back - points[who[out]]).T)
         fits = ~out | (miss <= self._slack[element])
         who, element, clamped, over = who[fits], element[fits], clamped[fits], over[fits]
-        order = np.lexsort((over, who))
+        # a point on a common side is in both elements but for rounding: the first of them has it
+        order = np.lexsort((element, np.round(over, 9), who))
         who, element, clamped = who[order], element[order], clamped[order]
         best = np.concatenate([[True], who[1:] != who[:-1]]) if len(who) else np.zeros(0, bool)
         found[who[best]], local[who[best]] = element[best], clamped[best]

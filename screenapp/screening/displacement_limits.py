@@ -7,7 +7,6 @@ from collections.abc import Sequence
 
 import numpy as np
 
-from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings
 from screenapp.model.part import DisplacementLimit, Part
 from screenapp.model.place_words import point_words
@@ -98,7 +97,7 @@ def _read(
     scale = max(abs(numbers[-1]), LEAST_SCALE * largest)
     if scale == 0.0:
         return Estimate(0.0, 0.0, 0.0, "settled"), at
-    creeping = sizes_at_points(singular_spots(part, shape), case, passes)
+    creeping = sizes_at_points(case, passes)
     return upright(judge_movement(numbers, read, creeping, part.mesh.tolerance, scale)), at
 
 

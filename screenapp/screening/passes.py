@@ -97,6 +97,12 @@ class Pass:
         """Element sizes [mm], (n_elements,)."""
         return self.fields.mesh.element_sizes
 
+    @cached_property
+    def spot_sizes(self) -> Floats:
+        """Size of the element at each of `spots` [mm], (n_spots,)."""
+        element, _ = self.reader.locator.locate(np.array([s.at for s in self.spots]))
+        return self.sizes[element]
+
     def peaks(self, measure: str, case: int) -> list[RawPeak]:
         """Separate maxima of a measure in a case, largest first.
 

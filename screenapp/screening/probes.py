@@ -53,7 +53,7 @@ def readings(part: Part, shape: Shape, passes: Sequence[Pass]) -> tuple[Reading,
     for k, case in enumerate(loadings(part)):
         level = passes[-1].level("von_mises", k)
         moved = float(np.hypot(*passes[-1].fields.solution.displacements[k].T).max())
-        creeping = sizes_at_points(spots, case.id, passes)
+        creeping = sizes_at_points(case.id, passes)
         for i, probe in enumerate(part.readings):
             if np.isfinite(read[-1].stress[k, i]).all():
                 spot = spot_at(spots, probe.at, case.id, ON_BOUNDARY * shape.size)

@@ -34,7 +34,6 @@ from screenapp.model.findings import (
     LimitFindings,
     MeshFindings,
     PassSummary,
-    Peak,
     PlainLoss,
     Reading,
 )
@@ -186,9 +185,10 @@ def _cases(
 ) -> tuple[CaseFindings, ...]:
     found: list[CaseFindings] = []
     last = passes[-1].fields
-    for k, case in enumerate(loadings(part)):
-        peaks: tuple[Peak, ...] = track(part, shape, passes, spots, k)
-        moved, at = _displacement(part, passes, k, sizes_at_points(spots, case.id, passes))
+    for k, (case, peaks) in enumerate(
+        zip(loadings(part), track(part, shape, passes, spots), strict=True)
+    ):
+        moved, at = _displacement(part, passes, k, sizes_at_points(case.id, passes))
         total = resultant(last.mesh.nodes, nodal_forces(part, shape, last.mesh, case))
         found.append(
             CaseFindings(

@@ -4,15 +4,16 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
+from dataclasses import dataclass
 
 import numpy as np
 
 from screenapp.mechanics.singular_spot import SingularSpot, spot_at
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Estimate, Peak
-from screenapp.model.part import Case, Part, StressLimit
+from screenapp.model.part import Part, Point, StressLimit
 from screenapp.model.shape import Shape
-from screenapp.screening.passes import Pass
+from screenapp.screening.passes import Pass, PointValues
 from screenapp.screening.peaks import REACH, RawPeak, feature_of, measure, place_in_words
 from screenapp.screening.structural import structural_stress
 from screenapp.screening.trust import Sample, growth, judge
@@ -24,52 +25,90 @@ def measures(part: Part) -> tuple[str, ...]:
     return tuple(dict.fromkeys(["von_mises", *asked]))
 
 
+@dataclass(frozen=True, eq=False)
+class _Followed:
+    """A peak of the last pass with what every pass says at its place.
+
+    Attributes:
+        name: the measure.
+        case: which case it is of.
+        raw: the peak.
+        read: the values of every pass at the peaks' places, oldest first.
+        row: which of those places is the peak's.
+    """
+
+    name: str
+    case: int
+    raw: RawPeak
+    read: Sequence[PointValues]
+    row: int
+
+
 def track(
-    part: Part,
-    shape: Shape,
-    passes: Sequence[Pass],
-    spots: Sequence[SingularSpot],
-    k: int,
-) -> tuple[Peak, ...]:
-    """The peaks of case `k` on the last pass with their history, largest first.
+    part: Part, shape: Shape, passes: Sequence[Pass], spots: Sequence[SingularSpot]
+) -> tuple[tuple[Peak, ...], ...]:
+    """The peaks of every case on the last pass with their history, largest first.
 
     Peaks that rise to the same singular place count as one.
     """
-    case = loadings(part)[k]
-    found: list[Peak] = []
-    for name in measures(part):
-        level = passes[-1].counted_level(name, k)
-        taken: set[tuple[float, float]] = set()
-        for raw in passes[-1].peaks(name, k):
-            spot = spot_at(spots, raw.at, case.id, REACH * raw.size)
-            if spot is not None:
-                if spot.at in taken:
-                    continue
-                taken.add(spot.at)
-            found.append(_peak(part, shape, passes, name, k, case, raw, spot, level))
-    found.sort(key=lambda p: (p.quantity != "von_mises", -p.estimate.value))
-    return tuple(found)
+    cases = loadings(part)
+    followed = _followed(part, passes)
+    zones = _zones_met(part, passes[-1], followed)
+    found: list[list[Peak]] = [[] for _ in cases]
+    taken: set[tuple[str, int, Point]] = set()
+    for peak in followed:
+        spot = spot_at(spots, peak.raw.at, cases[peak.case].id, REACH * peak.raw.size)
+        if spot is not None:
+            if (peak.name, peak.case, spot.at) in taken:
+                continue
+            taken.add((peak.name, peak.case, spot.at))
+        found[peak.case].append(_peak(part, shape, passes, peak, spot, zones[peak.row]))
+    return tuple(
+        tuple(sorted(own, key=lambda p: (p.quantity != "von_mises", -p.estimate.value)))
+        for own in found
+    )
+
+
+def _followed(part: Part, passes: Sequence[Pass]) -> list[_Followed]:
+    """All peaks of the last pass; every pass is read once, at all their places."""
+    raws = [
+        (name, k, raw)
+        for k in range(len(loadings(part)))
+        for name in measures(part)
+        for raw in passes[-1].peaks(name, k)
+    ]
+    if not raws:
+        return []
+    points = np.array([raw.at for _, _, raw in raws])
+    read = [p.read(points) for p in passes]
+    return [_Followed(name, k, raw, read, row) for row, (name, k, raw) in enumerate(raws)]
+
+
+def _zones_met(part: Part, last: Pass, followed: Sequence[_Followed]) -> Sequence[tuple[int, ...]]:
+    """The zones that meet at each peak; nothing where the part has none."""
+    if not part.zones or not followed:
+        return [()] * len(followed)
+    return last.reader.zones_at([peak.raw.at for peak in followed])
 
 
 def _peak(
     part: Part,
     shape: Shape,
     passes: Sequence[Pass],
-    name: str,
-    k: int,
-    case: Case,
-    raw: RawPeak,
+    peak: _Followed,
     spot: SingularSpot | None,
-    level: float,
+    zones: tuple[int, ...],
 ) -> Peak:
-    samples = [_sample(part, earlier, name, k, raw, spot) for earlier in passes]
+    name, k, raw = peak.name, peak.case, peak.raw
+    samples = [_sample(part, earlier, peak, number, spot) for number, earlier in enumerate(passes)]
+    level = passes[-1].counted_level(name, k)
     # a peak below the level of the case need not be known more closely than it matters
     scale = max(abs(raw.value), 0.5 * level / raw.demand)
     rate, creep = (spot.rate, spot.creep) if spot else (0.0, 0.0)
     estimate = judge(samples, part.mesh.tolerance, scale, rate, creep)
     at, place = raw.at, place_in_words(shape, raw.piece, raw.at)
     zone = part.zones[raw.zone].id if raw.zone >= 0 else ""
-    place += _zone_words(part, raw, passes[-1])
+    place += _zone_words(part, raw, zones)
     why = mend = ""
     structural: Estimate | None = None
     if estimate.trust == "rising":
@@ -106,11 +145,10 @@ def _peak(
     )
 
 
-def _zone_words(part: Part, raw: RawPeak, last: Pass) -> str:
+def _zone_words(part: Part, raw: RawPeak, met: tuple[int, ...]) -> str:
     """The zone that a peak is in, and the step that it stands at; "" in the wall itself."""
     if not part.zones:
         return ""
-    (met,) = last.reader.zones_at([raw.at])
     names = {z: "the wall" if z < 0 else f"zone {part.zones[z].id}" for z in (*met, raw.zone)}
     words = f", in {names[raw.zone]}" if raw.zone >= 0 else ""
     others = [name for z, name in sorted(names.items()) if z != raw.zone]
@@ -127,12 +165,12 @@ def _why_unsettled(estimate: Estimate, spot: SingularSpot | None) -> str:
 
 
 def _sample(
-    part: Part, earlier: Pass, name: str, k: int, raw: RawPeak, spot: SingularSpot | None
+    part: Part, earlier: Pass, peak: _Followed, number: int, spot: SingularSpot | None
 ) -> Sample:
-    """The value of the same peak on another pass."""
-    point = np.array([raw.at])
-    values = earlier.read(point)
-    size, doubt = float(values.size[0]), float(values.doubt[k, 0])
+    """The value of the same peak on another pass, the one of that number."""
+    name, k, raw = peak.name, peak.case, peak.raw
+    values, row = peak.read[number], peak.row
+    size, doubt = float(values.size[row]), float(values.doubt[k, row])
     if any(p is raw for p in earlier.peaks(name, k)):
         return Sample(raw.value, _finest(raw.size, size, spot), doubt)
     near = [
@@ -145,7 +183,7 @@ def _sample(
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))
         return Sample(best.value, _finest(best.size, size, spot), doubt)
-    value = measure(name, values.stress[k, 0], part, values.zones[k, 0])
+    value = measure(name, values.stress[k, row], part, values.zones[k, row])
     return Sample(float(value), size, doubt)
 
 

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
@@ -86,3 +88,16 @@ def test_inverse_of_a_strongly_curved_map() -> None:
     points = shape_functions.values(9, xi) @ nodes
     found = invert_map(np.broadcast_to(nodes, (200, 9, 2)), points)
     assert np.abs(found - xi).max() < 1e-10
+
+
+def test_a_point_on_a_common_side_is_always_in_the_same_element() -> None:
+    """Rounding must not choose: sizes at peaks, and by them the next mesh, hang on it."""
+    case = rectangle(30.0, 20.0, 6, 4)
+    mesh = shaken(case.mesh, case.shape, 0.2)
+    middles = mesh.nodes[np.unique(mesh.quads[:, 4:8])]
+    wanted, _ = PointLocator(mesh).locate(middles)
+    rng = np.random.default_rng(2)
+    for _ in range(5):
+        noise = rng.uniform(-1e-13, 1e-13, middles.shape)
+        turned = replace(mesh, nodes=mesh.nodes * (1.0 + rng.uniform(-2e-16, 2e-16, (1, 2))))
+        assert np.array_equal(PointLocator(turned).locate(middles + noise)[0], wanted)
