@@ -29,6 +29,11 @@ SOFT, STIFF = 1.0, 1.3e6
 """Young's moduli outside these [MPa] are pointed out: softer than foam, stiffer than diamond
 (1.05e6 to 1.2e6 MPa, from memory)."""
 
+ENTERING = (
+    "these corners re-enter the material and are sharp, so that the stress there has no finite "
+    "value; round them, or read the stress at a distance from them"
+)
+
 MOST = 20
 """No more cautions of one kind are listed."""
 
@@ -79,6 +84,7 @@ def _corner_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
             (id_,),
             at,
             blocks=False,
+            alike=ENTERING,
         )
     if len(entering) > MOST:
         yield Fault(
@@ -87,6 +93,7 @@ def _corner_cautions(shape: Shape, table: CurveTable) -> Iterator[Fault]:
             "outline",
             tuple(id_ for id_, _, _ in entering[MOST:]),
             blocks=False,
+            alike=ENTERING,
         )
 
 

@@ -35,6 +35,7 @@ class Fault:
     blocks: bool = True
     line: int | None = None
     span: tuple[tuple[float, float], tuple[float, float]] | None = None
+    alike: str = ""
 
     def __str__(self) -> str:
         return f"{self.cause}: {self.mend}"

@@ -37,6 +37,7 @@ from screenapp.window.sheet.mesh_paragraph import MeshParagraph
 from screenapp.window.sheet.part_paragraph import PartParagraph
 from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.verdict_paragraph import ALWAYS, VerdictParagraph
+from tests.model.plates import loop
 from tests.window.fabricate import plate
 from tests.window.window_kit import made_up, pick, settle, texts, type_into
 
@@ -495,6 +496,34 @@ def test_a_reason_is_told_once_and_what_stands_above_is_counted(sheet: Sheet) ->
     assert "A caution of the screening alone." in said
     assert told not in said.lower()
     assert "One caution stands in the paragraphs above." in said
+
+
+def test_sharp_corners_are_told_in_one_sentence_with_a_link_to_each(qtbot: QtBot) -> None:
+    """A cross has four corners that re-enter; a part with one of them gets its own sentence."""
+    points = [(20, 0), (40, 0), (40, 20), (60, 20), (60, 40), (40, 40)]
+    points += [(40, 60), (20, 60), (20, 40), (0, 40), (0, 20), (20, 20)]
+    cross = replace(plate(), outline=loop(points), holes=(), supports=(), cases=())
+    sheet = shown(qtbot, cross)
+    paragraph = the(sheet, PartParagraph)
+    assert isinstance(paragraph, PartParagraph)
+    (said,) = [t for t in texts(paragraph) if "re-enter" in t]
+    assert said.startswith("These corners re-enter the material and are sharp")
+    assert said.endswith(": c3, c6, c9, c12.")
+    row = paragraph._faults.row("fault 0")
+    link = row.sentence.field("show 2")
+    assert "corner c9 re-enters the material at 270°" in link.toolTip()
+    link.enterEvent(_enter(link))
+    assert sheet.document.hovered == "c9"
+    link.leaveEvent(_leave())
+    assert sheet.document.hovered != "c9"
+    QTest.mouseClick(link, Qt.MouseButton.LeftButton)
+    assert sheet.document.selection == ("c9",)
+    one = replace(cross, outline=loop(points, rounds={2: 2.0, 5: 2.0, 8: 2.0}))
+    sheet.document.apply("round three", one)
+    settle()
+    (said,) = [t for t in texts(paragraph) if "re-enter" in t]
+    assert said.startswith("Corner c12 re-enters the material at 270° and is sharp")
+    assert said.endswith("Show it")
 
 
 def test_combinations_are_added_weighted_renamed_and_removed(sheet: Sheet) -> None:

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
+
 from PySide6.QtCore import Qt
 from PySide6.QtGui import QFont, QPainter, QPaintEvent, QPen
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
@@ -84,7 +86,8 @@ class Paragraph(QWidget):
         self.missing.set(*missing)
         self.missing.setVisible(bool(missing))
         units = self.document.part.display_units
-        self._faults.set([_fault_row(i, f, self._mend(f), units) for i, f in enumerate(shown)])
+        groups = enumerate(_alike(shown))
+        self._faults.set([self._fault_row(f"fault {i}", group, units) for i, group in groups])
         blocked = any(f.blocks for f in faults)
         self.state = "open" if missing or blocked else "set"
         if self.state == "set" and self.outdated():
@@ -113,11 +116,30 @@ class Paragraph(QWidget):
         self.body.addWidget(made)
         return made
 
-    def _mend(self, fault: Fault) -> tuple[Piece | str, ...]:
+    def _fault_row(self, id_: str, faults: tuple[Fault, ...], units: DisplayUnits) -> RowOf:
+        """One sentence for one fault, or for several that are alike."""
+        first = faults[0]
+        colour = "bad" if first.blocks else "doubt"
+        if len(faults) > 1:
+            lead = Words(f"{capital(first.alike)}: ", colour=colour)
+            return RowOf(id_, (), (lead, *self._places(faults), Words(".", colour=colour)))
+        said = restated(f"{capital(first.cause)}: {first.mend.rstrip('.')}.", units)
+        mend = (" ", self._show("show", "Show it", first)) if first.ids else ()
+        return RowOf(id_, (), (Words(said, colour=colour), *mend))
+
+    def _places(self, faults: tuple[Fault, ...]) -> Iterator[Piece | str]:
+        """A link to the place of each fault."""
+        for i, fault in enumerate(faults):
+            if i:
+                yield ", "
+            name = fault.ids[0] if len(fault.ids) == 1 else f"{len(fault.ids)} more"
+            yield self._show(f"show {i}", name, fault)
+
+    def _show(self, key: str, text: str, fault: Fault) -> Link:
         ids = fault.ids
-        if not ids:
-            return ()
-        return (" ", Link("show", "Show it", lambda _key: self.document.select(*ids)))
+        about = ids[0] if len(ids) == 1 else ""
+        tip = f"Show it: {fault.cause}" if fault.alike else ""
+        return Link(key, text, lambda _key: self.document.select(*ids), tip, about=about)
 
     def paintEvent(self, _event: QPaintEvent) -> None:
         """A pale line at its foot."""
@@ -126,9 +148,9 @@ class Paragraph(QWidget):
         painter.drawLine(0, self.height() - 1, self.width(), self.height() - 1)
 
 
-def _fault_row(
-    number: int, fault: Fault, mend: tuple[Piece | str, ...], units: DisplayUnits
-) -> RowOf:
-    colour = "bad" if fault.blocks else "doubt"
-    said = restated(f"{capital(fault.cause)}: {fault.mend.rstrip('.')}.", units)
-    return RowOf(f"fault {number}", (), (Words(said, colour=colour), *mend))
+def _alike(faults: list[Fault]) -> list[tuple[Fault, ...]]:
+    """Faults in their order, those that share a sentence together at the place of the first."""
+    groups: dict[object, list[Fault]] = {}
+    for i, fault in enumerate(faults):
+        groups.setdefault(fault.alike or i, []).append(fault)
+    return [tuple(group) for group in groups.values()]

@@ -107,6 +107,7 @@ class Row(QWidget):
         line.addWidget(self.cross, 0, Qt.AlignmentFlag.AlignTop)
         for part in (self.where, self.sentence):
             part.on_delete = self.remove
+            part.pointed.connect(self._point)
         document.hovered_changed.connect(self.update)
         document.selection_changed.connect(self.update)
 
@@ -124,6 +125,11 @@ class Row(QWidget):
         """Take it out of the part."""
         if self.spec.remove is not None:
             self.spec.remove()
+
+    def _point(self, about: str) -> None:
+        """Light what the piece under the pointer speaks of, else what the row stands for."""
+        whole = self.spec.id if self.spec.selects else ""
+        self._document.hover(about or whole or None)
 
     @property
     def lit(self) -> bool:
