@@ -122,12 +122,12 @@ class Paragraph(QWidget):
         colour = "bad" if first.blocks else "doubt"
         if len(faults) > 1:
             lead = Words(f"{capital(first.alike)}: ", colour=colour)
-            return RowOf(id_, (), (lead, *self._places(faults), Words(".", colour=colour)))
+            return RowOf(id_, (), (lead, *self._fault_links(faults), Words(".", colour=colour)))
         said = restated(f"{capital(first.cause)}: {first.mend.rstrip('.')}.", units)
         mend = (" ", self._show("show", "Show it", first)) if first.ids else ()
         return RowOf(id_, (), (Words(said, colour=colour), *mend))
 
-    def _places(self, faults: tuple[Fault, ...]) -> Iterator[Piece | str]:
+    def _fault_links(self, faults: tuple[Fault, ...]) -> Iterator[Piece | str]:
         """A link to the place of each fault."""
         for i, fault in enumerate(faults):
             if i:

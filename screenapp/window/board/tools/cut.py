@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, ClassVar
+from typing import ClassVar
 
 from PySide6.QtGui import QPainter
 
@@ -10,45 +10,24 @@ from screenapp.model import edits
 from screenapp.model.part import Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
-from screenapp.window.board.tools.base import Place, Tool
-from screenapp.window.board.tools.drawing import NEXT_FIELDS, PLACE_FIELDS, DrawTool
+from screenapp.window.board.tools.base import Place
+from screenapp.window.board.tools.drawing import NEXT_FIELDS
+from screenapp.window.board.tools.two_places import TwoPlaceTool
 from screenapp.window.board.typed_entry import EntryField
 
-if TYPE_CHECKING:
-    from screenapp.window.board.canvas import Canvas
 
-
-class CutTool(DrawTool):
+class CutTool(TwoPlaceTool):
     """Stays in hand: two places make a cut; the free body is on the left of the way."""
 
     name: ClassVar[str] = "Cut"
     key: ClassVar[str] = "X"
     line: ClassVar[str] = "Click two places; the stress along the line between them is read."
     icon: ClassVar[str] = "cut"
-
-    def __init__(self, canvas: Canvas) -> None:
-        super().__init__(canvas)
-        self.first: Point | None = None
-
-    def stop(self, following: Tool | None) -> None:
-        """Drop the first place."""
-        self.first = None
-        self.typed = {}
-
-    def step_back(self) -> bool:
-        """Drop the first place."""
-        had, self.first = self.first is not None, None
-        return had
-
-    def hint(self) -> str:
-        """What the next click does."""
-        if self.first is None:
-            return "Click where the cut begins."
-        return "Click where it ends; the part to the left is the free body."
-
-    def entry_fields(self) -> tuple[EntryField, ...]:
-        """A place, then a place or length and angle."""
-        return PLACE_FIELDS if self.first is None else NEXT_FIELDS
+    hints: ClassVar[tuple[str, str]] = (
+        "Click where the cut begins.",
+        "Click where it ends; the part to the left is the free body.",
+    )
+    second_fields: ClassVar[tuple[EntryField, ...]] = NEXT_FIELDS
 
     def point_from(self) -> Point | None:
         """Length and angle count from the first place."""
@@ -78,13 +57,7 @@ class CutTool(DrawTool):
         if at is not None:
             self.accept_point(at)
 
-    def paint(self, painter: QPainter, frame: Frame) -> None:
+    def paint_between(self, painter: QPainter, frame: Frame, first: Point, at: Point) -> None:
         """The line with its length."""
-        at = self.point()
-        if self.first is None or at is None:
-            if self.typed and at is not None:
-                sketch.dot(painter, frame, at)
-            return
-        sketch.segment(painter, frame, self.first, at, dashed=True)
-        sketch.measure(painter, frame, self.first, at, self.canvas.part.display_units)
-        sketch.dot(painter, frame, self.first)
+        sketch.segment(painter, frame, first, at, dashed=True)
+        sketch.measure(painter, frame, first, at, self.canvas.part.display_units)

@@ -16,9 +16,8 @@ from screenapp.model.part import Loop, Part, Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.quantity import written
-from screenapp.window.board.tools.base import Tool
 from screenapp.window.board.tools.chain import OUTSIDE
-from screenapp.window.board.tools.drawing import PLACE_FIELDS, DrawTool
+from screenapp.window.board.tools.two_places import TwoPlaceTool
 from screenapp.window.board.typed_entry import EntryField
 
 if TYPE_CHECKING:
@@ -27,7 +26,7 @@ if TYPE_CHECKING:
 SIZE_FIELDS = (EntryField("width", "width"), EntryField("height", "height"))
 
 
-class RectangleTool(DrawTool):
+class RectangleTool(TwoPlaceTool):
     """The outline if there is none, else a hole."""
 
     name: ClassVar[str] = "Rectangle"
@@ -35,29 +34,12 @@ class RectangleTool(DrawTool):
     line: ClassVar[str] = "Click two opposite corners, or type width and height."
     icon: ClassVar[str] = "rectangle"
     group: ClassVar[str] = "rectangles"
+    hints: ClassVar[tuple[str, str]] = ("Click the first corner.", "Click the opposite corner.")
+    second_fields: ClassVar[tuple[EntryField, ...]] = SIZE_FIELDS
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
-        self.first: Point | None = None
         self._given: dict[str, str | None] = {}
-
-    def stop(self, following: Tool | None) -> None:
-        """Drop the first corner."""
-        self.first = None
-        self.typed = {}
-
-    def step_back(self) -> bool:
-        """Drop the first corner."""
-        had, self.first = self.first is not None, None
-        return had
-
-    def hint(self) -> str:
-        """What the next click does."""
-        return "Click the first corner." if self.first is None else "Click the opposite corner."
-
-    def entry_fields(self) -> tuple[EntryField, ...]:
-        """A place, then sizes."""
-        return PLACE_FIELDS if self.first is None else SIZE_FIELDS
 
     def typed_point(self, cursor: Point | None) -> Point | None:
         """The opposite corner lies on the cursor's side, at the typed sizes."""
@@ -112,24 +94,35 @@ class RectangleTool(DrawTool):
         if self.first is None:
             self.first, self._given = at, taken
             return
-        part, first = self.canvas.document.part, self.first
+        if self.first[0] == at[0] or self.first[1] == at[1]:
+            self.say("The rectangle has no area: choose a corner away from the first one.")
+            return
+        self._put(self.first, at, taken)
+
+    def _put(
+        self,
+        first: Point,
+        at: Point,
+        sizes: dict[str, str | None],
+        radius: float = 0.0,
+        radius_text: str | None = None,
+    ) -> None:
+        """Draw the outline or a hole, or ask what a ring across the part's edge is to be."""
+        part, corners = self.canvas.document.part, edits.rectangle_corners(first, at)
 
         def keep(made: Part) -> dict[str, str | None]:
             where, _, loop = list(loops_of(made))[-1]
-            return self._expressions(loop, where, taken, at)
+            kept = self._expressions(loop, where, sizes, at)
+            return kept | {f"{where}.corners.{c.id}.round": radius_text for c in loop.corners}
 
+        ring = ring_loop(corners, None, radius)
         if part.outline is None:
             done = self.apply(
-                "draw the outline", lambda: edits.outline_from_rectangle(part, first, at), keep
+                "draw the outline", lambda: edits.set_outline(part, corners, None, radius), keep
             )
-        elif first[0] == at[0] or first[1] == at[1]:
-            self.say("The rectangle has no area: choose a corner away from the first one.")
-            return
-        elif self.fits_inside(ring := ring_loop(edits.rectangle_corners(first, at))):
+        elif self.fits_inside(ring):
             done = self.apply(
-                "draw a hole",
-                lambda: edits.add_loop_hole(part, edits.rectangle_corners(first, at)),
-                keep,
+                "draw a hole", lambda: edits.add_loop_hole(part, corners, None, radius), keep
             )
         elif self.ask_ring(ring, at, self._drawn):
             return
@@ -149,26 +142,16 @@ class RectangleTool(DrawTool):
         if self.first is not None and at is not None:
             self.accept_point(at)
 
-    def paint(self, painter: QPainter, frame: Frame) -> None:
+    def paint_between(self, painter: QPainter, frame: Frame, first: Point, at: Point) -> None:
         """The rectangle with its sizes."""
-        at = self.point()
-        if self.first is None or at is None:
-            if self.typed and at is not None:
-                sketch.dot(painter, frame, at)
-            return
-        one, two = frame.px(self.first), frame.px(at)
         painter.setPen(sketch.line_pen())
         painter.setBrush(Qt.BrushStyle.NoBrush)
-        box = QRectF(one, two).normalized()
+        box = QRectF(frame.px(first), frame.px(at)).normalized()
         painter.drawRect(box)
         units = self.canvas.part.display_units
-        for text, a, b in (
-            (written(abs(at[0] - self.first[0]), "length", units), box.topLeft(), box.topRight()),
-            (
-                written(abs(at[1] - self.first[1]), "length", units),
-                box.topRight(),
-                box.bottomRight(),
-            ),
+        wide, high = (abs(b - a) for a, b in zip(first, at, strict=True))
+        for size, a, b in (
+            (wide, box.topLeft(), box.topRight()),
+            (high, box.topRight(), box.bottomRight()),
         ):
-            sketch.label(painter, text, sketch.beside(a, b, 14.0))
-        sketch.dot(painter, frame, self.first)
+            sketch.label(painter, written(size, "length", units), sketch.beside(a, b, 14.0))

@@ -9,14 +9,11 @@ from PySide6.QtCore import QRectF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
-from screenapp.model.features import loops_of
-from screenapp.model.hole_loops import ring_loop
-from screenapp.model.part import Part, Point
+from screenapp.model.part import Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.quantity import written
 from screenapp.window.board.tools.base import Place, Tool
-from screenapp.window.board.tools.chain import OUTSIDE
 from screenapp.window.board.tools.rectangle import RectangleTool
 from screenapp.window.board.typed_entry import EntryField
 
@@ -128,39 +125,16 @@ class RoundedRectangleTool(RectangleTool):
             super().enter()
 
     def _draw(self, radius: float) -> None:
-        first, second, part = self.first, self.second, self.canvas.document.part
+        first, second = self.first, self.second
         if first is None or second is None:
             return
         if not 0.0 <= radius <= self.most * (1.0 + 1e-9):
-            units = part.display_units
+            units = self.canvas.document.part.display_units
             most = written(self.most, "length", units)
             self.say(f"The radius does not fit: give at most {most}.")
             return
-        corners = edits.rectangle_corners(first, second)
-        sizes = self._sizes
         text = self.canvas.entry.taken.get("radius")
-
-        def keep(made: Part) -> dict[str, str | None]:
-            where, _, loop = list(loops_of(made))[-1]
-            kept = self._expressions(loop, where, sizes, second)
-            return kept | {f"{where}.corners.{c.id}.round": text for c in loop.corners}
-
-        ring = ring_loop(corners, None, radius)
-        if part.outline is None:
-            done = self.apply(
-                "draw the outline", lambda: edits.set_outline(part, corners, None, radius), keep
-            )
-        elif self.fits_inside(ring):
-            done = self.apply(
-                "draw a hole", lambda: edits.add_loop_hole(part, corners, None, radius), keep
-            )
-        elif self.ask_ring(ring, second, self._drawn):
-            return
-        else:
-            self.say(OUTSIDE)
-            return
-        if done:
-            self._drawn()
+        self._put(first, second, self._sizes, radius, text)
 
     def _drawn(self) -> None:
         self.second = None
