@@ -6,16 +6,14 @@ from PySide6.QtCore import QPointF, QRectF, QSize, Qt
 from PySide6.QtGui import (
     QFontMetricsF,
     QPainter,
-    QPaintEvent,
     QPen,
     QPolygonF,
     QResizeEvent,
 )
-from PySide6.QtWidgets import QWidget
 
 from screenapp.model.cut_figure import CutFigure
 from screenapp.window import theme
-from screenapp.window.figure_box import HEAD, LINE, FigureBox
+from screenapp.window.figure_box import HEAD, LINE, FigurePlot
 
 _PLOT, _FOOT = 132.0, 18.0
 _LABELS = 52.0
@@ -28,24 +26,16 @@ _KEYS = (
 _COLOURS = {"settled": "ink", "rising": "bad", "unsettled": "doubt"}
 
 
-class CutPlot(FigureBox):
-    """Shows one cut under one case; hidden while there is none."""
+class CutPlot(FigurePlot[CutFigure]):
+    """Shows one cut under one case."""
 
-    def __init__(self, parent: QWidget | None = None) -> None:
-        super().__init__(parent)
-        self.figure: CutFigure | None = None
-        self._case = ""
+    lead = "Stress along"
 
     def show_figure(self, figure: CutFigure | None, case: str = "") -> None:
-        """Show a figure under the case of that name, or hide."""
-        self.figure, self._case = figure, case
-        self.setVisible(figure is not None)
-        if figure is not None:
-            under = f" under “{case}”" if case else ""
-            self.say(f"Stress along {figure.name}{under}", figure.words)
+        """Show a figure under the case of that name, or hide; it is as tall as its sentences."""
+        super().show_figure(figure, case)
         self.updateGeometry()
         self.setFixedHeight(self.sizeHint().height())
-        self.update()
 
     def sizeHint(self) -> QSize:
         """The plot, and as many lines as the sentences need."""
@@ -59,15 +49,8 @@ class CutPlot(FigureBox):
         if self.height() != wanted:
             self.setFixedHeight(wanted)
 
-    def paintEvent(self, _event: QPaintEvent) -> None:
-        """Name, key, plot, sentences."""
-        figure = self.figure
-        if figure is None:
-            return
-        painter = QPainter(self)
-        inner = self.paint_frame(painter)
-        under = f"  ·  {self._case}" if self._case else ""
-        self.paint_words(painter, f"{figure.name}{under}", inner, inner.top(), bold=True)
+    def paint_figure(self, painter: QPainter, inner: QRectF, figure: CutFigure) -> None:
+        """Key, plot, sentences."""
         self._key(painter, figure, inner.left(), inner.top() + LINE)
         wide = min(inner.width(), _WIDEST)
         top = inner.top() + 2 * LINE + 4.0
@@ -77,7 +60,6 @@ class CutPlot(FigureBox):
             for line in self._wrapped(sentence):
                 self.paint_words(painter, line, inner, y)
                 y += LINE
-        painter.end()
 
     def _key(self, painter: QPainter, figure: CutFigure, x: float, y: float) -> None:
         """What the three lines are."""

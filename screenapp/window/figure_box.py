@@ -2,8 +2,10 @@
 
 from __future__ import annotations
 
+from typing import ClassVar, Generic, Protocol, TypeVar
+
 from PySide6.QtCore import QRectF, Qt
-from PySide6.QtGui import QFocusEvent, QFont, QFontMetricsF, QPainter, QPen
+from PySide6.QtGui import QFocusEvent, QFont, QFontMetricsF, QPainter, QPaintEvent, QPen
 from PySide6.QtWidgets import QSizePolicy, QWidget
 
 from screenapp.window import theme
@@ -60,3 +62,56 @@ class FigureBox(QWidget):
         )
         left = Qt.AlignmentFlag.AlignLeft | Qt.AlignmentFlag.AlignVCenter
         painter.drawText(QRectF(inner.left(), y, inner.width(), LINE), left, shown)
+
+
+class NamedFigure(Protocol):
+    """What every figure says of itself."""
+
+    @property
+    def name(self) -> str:
+        """What it is of, as its heading says."""
+
+    @property
+    def words(self) -> str:
+        """The whole of it in words."""
+
+
+FigureT = TypeVar("FigureT", bound=NamedFigure)
+
+
+class FigurePlot(FigureBox, Generic[FigureT]):
+    """Shows a figure under its name and the case's; hidden while there is none.
+
+    The whole of it is said in words as tooltip and accessible description, after `lead`.
+    """
+
+    lead: ClassVar[str]
+
+    def __init__(self, parent: QWidget | None = None) -> None:
+        super().__init__(parent)
+        self.figure: FigureT | None = None
+        self._case = ""
+
+    def show_figure(self, figure: FigureT | None, case: str = "") -> None:
+        """Show a figure under the case of that name, or hide."""
+        self.figure, self._case = figure, case
+        self.setVisible(figure is not None)
+        if figure is not None:
+            under = f" under “{case}”" if case else ""
+            self.say(f"{self.lead} {figure.name}{under}", figure.words)
+        self.update()
+
+    def paintEvent(self, _event: QPaintEvent) -> None:
+        """Name, and what the subclass paints below."""
+        if self.figure is None:
+            return
+        painter = QPainter(self)
+        inner = self.paint_frame(painter)
+        under = f"  ·  {self._case}" if self._case else ""
+        self.paint_words(painter, f"{self.figure.name}{under}", inner, inner.top(), bold=True)
+        self.paint_figure(painter, inner, self.figure)
+        painter.end()
+
+    def paint_figure(self, painter: QPainter, inner: QRectF, figure: FigureT) -> None:
+        """Paint the figure inside the frame, from the line below its name on."""
+        raise NotImplementedError

@@ -93,7 +93,7 @@ def test_a_moment_is_added_to_a_hole(sheet: Sheet) -> None:
     assert load == MomentLoad(load.id, "h1", 10_000.0)
     sentence = block(sheet).loads.row(load.id).sentence
     assert sentence.text.startswith("turned by 10 N·m –")
-    type_into(sentence.field("m"), "-250 N mm")
+    type_into(sentence.field("moment"), "-250 N mm")
     assert sheet.document.part.cases[0].loads[-1] == MomentLoad(load.id, "h1", -250.0)
 
 

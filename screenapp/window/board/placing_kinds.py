@@ -111,16 +111,11 @@ def _springs(id_: str, on: str, values: Values) -> Support | None:
     return ElasticSupport(id_, on, values.get("normal", 0.0), values.get("along", 0.0))
 
 
-def _pressure(id_: str, on: str, values: Values) -> Load | None:
-    return PressureLoad(id_, on, values["pressure"]) if "pressure" in values else None
+def _number(record: Callable[[str, str, float], Load], field: str) -> Callable[..., Load | None]:
+    def make(id_: str, on: str, values: Values) -> Load | None:
+        return record(id_, on, values[field]) if field in values else None
 
-
-def _shear(id_: str, on: str, values: Values) -> Load | None:
-    return ShearLoad(id_, on, values["shear"]) if "shear" in values else None
-
-
-def _moment(id_: str, on: str, values: Values) -> Load | None:
-    return MomentLoad(id_, on, values["moment"]) if "moment" in values else None
+    return make
 
 
 def _spin(id_: str, _on: str, values: Values) -> Load | None:
@@ -196,52 +191,37 @@ MOVED = Way(
     ),
     _moved,
 )
-FORCE = Way(
-    "force",
-    "Force",
-    "A total force spread evenly.",
-    vector_fields("force"),
-    _vector(ForceLoad),
-    DOWN,
+
+
+def _vector_way(
+    key: str, tip: str, kind: KindName, record: Callable[[str, str, float, float], Load]
+) -> Way:
+    """A load given by a vector that points down at first."""
+    return Way(key, key.capitalize(), tip, vector_fields(kind), _vector(record), DOWN)
+
+
+FORCE = _vector_way("force", "A total force spread evenly.", "force", ForceLoad)
+BEARING = _vector_way(
+    "bearing", "A pin's force: radial pressure over the half it bears on.", "force", BearingLoad
 )
-BEARING = Way(
-    "bearing",
-    "Bearing",
-    "A pin's force: radial pressure over the half it bears on.",
-    vector_fields("force"),
-    _vector(BearingLoad),
-    DOWN,
-)
-POINT = Way(
-    "point",
-    "Point",
-    "A force at a corner; the stress under it has no finite value.",
-    vector_fields("force"),
-    _vector(PointLoad),
-    DOWN,
+POINT = _vector_way(
+    "point", "A force at a corner; the stress under it has no finite value.", "force", PointLoad
 )
 PRESSURE = Way(
     "pressure",
     "Pressure",
     "Pushes on the material; negative pulls.",
     (EntryField("pressure", "pressure", "stress"),),
-    _pressure,
+    _number(PressureLoad, "pressure"),
 )
 SHEAR = Way(
     "shear",
     "Shear",
     "Along the edge, with the material on its left.",
     (EntryField("shear", "per length", "line_load"),),
-    _shear,
+    _number(ShearLoad, "shear"),
 )
-LINE = Way(
-    "line",
-    "Line",
-    "A force per length in one direction.",
-    vector_fields("line_load"),
-    _vector(LineLoad),
-    DOWN,
-)
+LINE = _vector_way("line", "A force per length in one direction.", "line_load", LineLoad)
 OWN_WEIGHT = Way(
     "gravity",
     "Own weight",
@@ -259,7 +239,7 @@ MOMENT = Way(
     "Moment",
     "An even shear round the hole; positive turns counter-clockwise.",
     (EntryField("moment", "moment", "moment"),),
-    _moment,
+    _number(MomentLoad, "moment"),
 )
 SPIN = Way(
     "spin",

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import Protocol
+
 from screenapp.model.part import Part, SpinLoad, TemperatureLoad
 from screenapp.window.sheet.load_changes import LoadChange
 from screenapp.window.sheet.pieces import Choice, Piece, Value
@@ -10,16 +12,27 @@ from screenapp.window.sheet.quantities import Quantities
 WHOLE = "the whole part"
 
 
-def spin_pieces(
-    load: SpinLoad, change: LoadChange, q: Quantities, field: str
-) -> tuple[Piece | str, ...]:
-    """How fast it turns, and about which point."""
+class _Number(Protocol):
+    def __call__(self, key: str, kind: str, name: str, hint: str = "") -> Value:
+        """A number of the load, to be changed in place."""
 
+
+def _numbers(
+    load: SpinLoad | TemperatureLoad, change: LoadChange, q: Quantities, field: str
+) -> _Number:
     def number(key: str, kind: str, name: str, hint: str = "") -> Value:
         return q.value(
             key, getattr(load, key), kind, name, change.setter(key), hint, f"{field}.{key}"
         )
 
+    return number
+
+
+def spin_pieces(
+    load: SpinLoad, change: LoadChange, q: Quantities, field: str
+) -> tuple[Piece | str, ...]:
+    """How fast it turns, and about which point."""
+    number = _numbers(load, change, q, field)
     pieces: tuple[Piece | str, ...] = (
         "spins at ",
         number("speed", "speed", "Speed of the spin", "turns in a minute"),
@@ -37,12 +50,7 @@ def temperature_pieces(
     part: Part, load: TemperatureLoad, change: LoadChange, q: Quantities, field: str
 ) -> tuple[Piece | str, ...]:
     """By how much it warms, from where, how that varies, and which zone."""
-
-    def number(key: str, kind: str, name: str, hint: str = "") -> Value:
-        return q.value(
-            key, getattr(load, key), kind, name, change.setter(key), hint, f"{field}.{key}"
-        )
-
+    number = _numbers(load, change, q, field)
     pieces: tuple[Piece | str, ...] = (
         "warmed by ",
         number("change", "temperature_change", "Change of temperature", "negative cools"),

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from typing import NamedTuple
 
 from PySide6.QtCore import Qt
 from PySide6.QtWidgets import QVBoxLayout, QWidget
@@ -247,42 +248,48 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
     )
 
 
+class _Single(NamedTuple):
+    """How a load of one number is told."""
+
+    lead: str
+    attribute: str
+    kind: str
+    noun: str
+    hint: str
+
+
+SINGLE: dict[type, _Single] = {
+    PressureLoad: _Single(
+        "pressed by ", "pressure", "stress", "Pressure", "positive presses on the material"
+    ),
+    ShearLoad: _Single(
+        "sheared along by ",
+        "per_length",
+        "line load",
+        "Shear",
+        "positive runs with the material on its left",
+    ),
+    MomentLoad: _Single(
+        "turned by ", "moment", "moment", "Moment", "positive turns counter-clockwise"
+    ),
+}
+
+
 def _load_pieces(
     part: Part, load: Load, name: str, change: load_changes.LoadChange, q: Quantities, field: str
 ) -> tuple[Piece | str, ...]:
-    if isinstance(load, PressureLoad):
+    if isinstance(load, PressureLoad | ShearLoad | MomentLoad):
+        one = SINGLE[type(load)]
         value = q.value(
-            "p",
-            load.pressure,
-            "stress",
-            f"Pressure of {name}",
-            change.setter("pressure"),
-            "positive presses on the material",
-            f"{field}.pressure",
+            one.attribute,
+            getattr(load, one.attribute),
+            one.kind,
+            f"{one.noun} of {name}",
+            change.setter(one.attribute),
+            one.hint,
+            f"{field}.{one.attribute}",
         )
-        return ("pressed by ", value)
-    if isinstance(load, ShearLoad):
-        value = q.value(
-            "q",
-            load.per_length,
-            "line load",
-            f"Shear of {name}",
-            change.setter("per_length"),
-            "positive runs with the material on its left",
-            f"{field}.per_length",
-        )
-        return ("sheared along by ", value)
-    if isinstance(load, MomentLoad):
-        value = q.value(
-            "m",
-            load.moment,
-            "moment",
-            f"Moment of {name}",
-            change.setter("moment"),
-            "positive turns counter-clockwise",
-            f"{field}.moment",
-        )
-        return ("turned by ", value)
+        return (one.lead, value)
     if isinstance(load, SpinLoad):
         return spin_pieces(load, change, q, field)
     if isinstance(load, TemperatureLoad):

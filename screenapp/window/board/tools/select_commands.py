@@ -15,6 +15,16 @@ if TYPE_CHECKING:
 STEPS = {"left": (-1.0, 0.0), "right": (1.0, 0.0), "up": (0.0, 1.0), "down": (0.0, -1.0)}
 """Ways to nudge, in grid steps."""
 
+NEXT = (
+    ("Next thing", "Selects the thing after the selected one and says what it is.", ("PgDown",), 1),
+    (
+        "Thing before",
+        "Selects the thing before the selected one and says what it is.",
+        ("PgUp",),
+        -1,
+    ),
+)
+
 SIZES = (
     ("Nudge", "", 1.0, "a grid step"),
     ("Nudge far", "Shift+", 10.0, "ten grid steps"),
@@ -33,45 +43,38 @@ def select_commands(tool: SelectTool) -> tuple[Command, ...]:
         Command(
             "Select everything", "All corners, holes and probes.", ("Ctrl+A",), tool.select_all
         ),
-        Command(
-            "Next thing",
-            "Selects the thing after the selected one and says what it is.",
-            ("PgDown",),
-            partial(tool.select_next, 1),
+        *(
+            Command(name, words, keys, partial(tool.select_next, step))
+            for name, words, keys, step in NEXT
         ),
-        Command(
-            "Thing before",
-            "Selects the thing before the selected one and says what it is.",
-            ("PgUp",),
-            partial(tool.select_next, -1),
-        ),
-        Command(
-            "Edit what is selected",
-            "Opens the fields for exact values beside it.",
-            ("F2", "Return", "Enter"),
-            tool.edit_selected,
-            ready=chosen,
-        ),
-        Command(
-            "Remove what is selected",
-            "Says what else goes with it; undo brings it back.",
-            ("Del", "Backspace"),
-            tool.remove_selected,
-            ready=chosen,
-        ),
-        Command(
-            "Copy holes",
-            "Puts the selected holes on the clipboard.",
-            ("Ctrl+C",),
-            partial(clipboard.copy, document),
-            ready=chosen,
-        ),
-        Command(
-            "Cut holes",
-            "Puts the selected holes on the clipboard and takes them out of the part.",
-            ("Ctrl+X",),
-            partial(clipboard.cut, document),
-            ready=chosen,
+        *(
+            Command(name, words, keys, act, ready=chosen)
+            for name, words, keys, act in (
+                (
+                    "Edit what is selected",
+                    "Opens the fields for exact values beside it.",
+                    ("F2", "Return", "Enter"),
+                    tool.edit_selected,
+                ),
+                (
+                    "Remove what is selected",
+                    "Says what else goes with it; undo brings it back.",
+                    ("Del", "Backspace"),
+                    tool.remove_selected,
+                ),
+                (
+                    "Copy holes",
+                    "Puts the selected holes on the clipboard.",
+                    ("Ctrl+C",),
+                    partial(clipboard.copy, document),
+                ),
+                (
+                    "Cut holes",
+                    "Puts the selected holes on the clipboard and takes them out of the part.",
+                    ("Ctrl+X",),
+                    partial(clipboard.cut, document),
+                ),
+            )
         ),
         Command(
             "Paste holes",
