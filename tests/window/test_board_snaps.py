@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 
 import numpy as np
 import pytest
@@ -12,11 +13,11 @@ from PySide6.QtTest import QTest
 from pytestqt.qtbot import QtBot
 
 from screenapp.model.curves import Arc, Segment
-from screenapp.model.part import CircleHole, Part
+from screenapp.model.part import CircleHole, LoopHole, Part, Zone
 from screenapp.window.board.snap_lines import crossings, tangent_points
 from screenapp.window.board.snap_record import Snap, SnapKind
 from screenapp.window.board.snap_signs import draw_snap
-from tests.window.board_kit import Hand, plate
+from tests.window.board_kit import Hand, plate, ring
 
 CENTRE, RADIUS = (50.0, 30.0), 10.0
 
@@ -154,3 +155,74 @@ def test_every_kind_has_a_sign_of_its_own(hand: Hand) -> None:
         painter.end()
         signs.add(bytes(image.constBits()))
     assert len(signs) == len(kinds)
+
+
+# --- lines of zones -----------------------------------------------------------------------------
+
+
+@pytest.fixture
+def padded(qtbot: QtBot) -> Hand:
+    """The plate with a round pad of 24 mm about (80, 30), and a square one about (20, 30)."""
+    square = ring((13.0, 23.0), (27.0, 23.0), (27.0, 37.0), (13.0, 37.0), first=11)
+    zones = (
+        Zone(CircleHole("z1", (80.0, 30.0), 24.0), 6.0),
+        Zone(LoopHole("z2", square), 6.0),
+    )
+    made = Hand(replace(plate(), zones=zones))
+    qtbot.addWidget(made.board)
+    return made
+
+
+@pytest.mark.parametrize(
+    ("near", "kind", "at"),
+    [
+        ((13.2, 22.9), "corner", (13.0, 23.0)),
+        ((20.2, 36.8), "middle", (20.0, 37.0)),
+        ((27.1, 33.3), "edge", (27.0, 33.3)),
+        ((79.8, 30.3), "centre", (80.0, 30.0)),
+    ],
+)
+def test_the_lines_of_zones_draw_the_cursor(
+    padded: Hand, near: tuple[float, float], kind: str, at: tuple[float, float]
+) -> None:
+    padded.type("C")
+    padded.go(*near)
+    assert snapped(padded).kind == kind
+    assert snapped(padded).at == pytest.approx(at, abs=0.15 if kind == "edge" else 1e-9)
+
+
+def test_a_line_is_drawn_tangent_and_square_to_a_zone(padded: Hand) -> None:
+    padded.type("L")
+    padded.click(60.0, 8.0)
+    reach, far = 12.0, math.dist((60.0, 8.0), (80.0, 30.0))
+    to, half = math.atan2(-22.0, -20.0), math.acos(reach / far)
+    for way in (to - half, to + half):
+        touch = (80.0 + reach * math.cos(way), 30.0 + reach * math.sin(way))
+        padded.go(*touch)
+        assert snapped(padded).kind == "tangent"
+        assert snapped(padded).id == "z1"
+        assert snapped(padded).at == pytest.approx(touch, abs=1e-9)
+    padded.key(Qt.Key.Key_Escape)
+    padded.click(60.0, 30.0)
+    padded.go(27.0, 30.1)
+    assert snapped(padded).at == pytest.approx((27.0, 30.0), abs=1e-9)
+
+
+def test_a_zone_that_is_dragged_does_not_draw_itself(padded: Hand) -> None:
+    padded.press(80.0, 35.0)
+    padded.go(80.0, 37.0)
+    padded.go(80.0, 39.0)
+    assert snapped(padded).id != "z1"
+    padded.release(80.0, 39.0)
+    form = padded.part.zones[0].form
+    assert isinstance(form, CircleHole)
+    assert form.centre == pytest.approx((80.0, 34.0), abs=1.0)
+
+
+def test_where_a_zone_meets_the_edge_is_a_crossing(qtbot: QtBot) -> None:
+    made = Hand(replace(plate(), zones=(Zone(CircleHole("z1", (80.0, 0.0), 24.0), 6.0),)))
+    qtbot.addWidget(made.board)
+    made.type("C")
+    made.go(92.2, 0.2)
+    assert snapped(made).kind == "intersection"
+    assert snapped(made).at == pytest.approx((92.0, 0.0), abs=1e-9)

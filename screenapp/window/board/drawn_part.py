@@ -97,6 +97,13 @@ class DrawnPart:
         """Finds the nearest line of a zone."""
         return BoundaryIndex.joined([ring.index for ring in self.zone_rings])
 
+    @cached_property
+    def snap_index(self) -> BoundaryIndex:
+        """Finds the nearest piece of the boundary or line of a zone: what the cursor snaps to."""
+        if not self.zone_rings:
+            return self.index
+        return BoundaryIndex.joined([self.index, self.zone_index])
+
     def zone_of(self, feature: str) -> str:
         """The zone that a corner or edge belongs to; "" for none."""
         for zone in self.part.zones:

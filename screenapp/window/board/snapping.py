@@ -51,9 +51,9 @@ def snap(
     points, places = snap_points(drawn)
     near = np.flatnonzero(np.hypot(*(places - at).T) <= reach) if len(points) else ()
     offered = [*extra, *(points[i] for i in near if points[i].id not in without)]
-    offered += meetings(drawn.index, at, reach, without)
+    offered += meetings(drawn.snap_index, at, reach, without)
     if origin is not None:
-        offered += from_origin(drawn.index, at, reach, origin, without)
+        offered += from_origin(drawn.snap_index, at, reach, origin, without)
     offered = [
         one for one in offered if one.kind not in passes_over and math.dist(one.at, at) <= reach
     ]
@@ -64,7 +64,7 @@ def snap(
     edge = snap_to_edge(drawn, at, EDGE_REACH_PX / frame.scale, without)
     grid = snap_to_grid(frame, at, units)
     if edge is not None:
-        return level_on_edge(drawn.index, at, line_reach, anchors, without) or edge
+        return level_on_edge(drawn.snap_index, at, line_reach, anchors, without) or edge
     found = level(at, line_reach, anchors, grid)
     return grid if found is None or found.kind in passes_over else found
 
@@ -90,7 +90,7 @@ def snap_to_edge(
     drawn: DrawnPart, at: Point, reach: float, without: frozenset[str] = frozenset()
 ) -> Snap | None:
     """The nearest place on the exact boundary within `reach` [mm]."""
-    foot = drawn.index.nearest(at, without)
+    foot = drawn.snap_index.nearest(at, without)
     if foot is None or foot.far > reach:
         return None
     dx, dy = foot.piece.curve.tangent(foot.t)
@@ -112,7 +112,8 @@ def anchor_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
         [
             *(_corners_of(loop) for loop in loops_of(drawn.part)),
             *(_centres_of(hole) for hole in drawn.cut_holes),
-            *(_points_of(ring)[0] for ring in drawn.loops),
+            *(_centres_of(zone.form) for zone in drawn.part.zones),
+            *(_points_of(ring)[0] for ring in (*drawn.loops, *drawn.zone_rings)),
         ]
     )
 
@@ -120,7 +121,8 @@ def anchor_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
 @lru_cache(maxsize=4)
 def snap_points(drawn: DrawnPart) -> tuple[tuple[Snap, ...], Floats]:
     """Corners, centres and middles of a part, and the same as places (n, 2) [mm]."""
-    return _joined([anchor_points(drawn), *(_points_of(ring)[1] for ring in drawn.loops)])
+    rings = (*drawn.loops, *drawn.zone_rings)
+    return _joined([anchor_points(drawn), *(_points_of(ring)[1] for ring in rings)])
 
 
 Points = tuple[tuple[Snap, ...], Floats]

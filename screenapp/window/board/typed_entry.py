@@ -225,7 +225,7 @@ class EntryRow(QFrame):
     def _edited(self, name: str) -> None:
         """A field was typed into: those it excludes go back to live values."""
         field = next(f for f in self._fields if f.name == name)
-        text = self._edits[name].text().strip()
+        text = self._edits[name].text().strip().removeprefix("=")  # a habit, in any field
         if text:
             self._typed[name] = text
             for other in field.excludes:

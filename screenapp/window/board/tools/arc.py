@@ -28,6 +28,9 @@ THROUGH_FIELDS = (
 )
 
 
+RADIUS_KEPT = "The radius of an arc is kept as a number: an arc stands by the places it passes."
+
+
 class ArcTool(LinesTool):
     """An arc by three places: its ends, then a place it passes; or turns an edge into an arc."""
 
@@ -120,13 +123,15 @@ class ArcTool(LinesTool):
             self._set_through(at)
         elif self.draft.points:
             if math.dist(at, self.draft.points[-1]) > 1e-9:
-                self.draft.end = at
+                self.draft.end = self.keep(at)
         elif place is not None and place.hit is not None and place.hit.kind == "edge":
             self.bending = place.hit.id
         else:
-            self.draft.points.append(at)
+            self.draft.points.append(self.keep(at))
 
     def _set_through(self, at: Point) -> None:
+        if self.canvas.entry.taken.get("radius"):
+            self.say(RADIUS_KEPT)
         end = self.draft.end
         assert end is not None
         self.draft.end = None

@@ -10,6 +10,8 @@ from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
 from screenapp.model.curves import Curve, Segment, arc_through
+from screenapp.model.edit_dimensions import values_of
+from screenapp.model.expressions import evaluate
 from screenapp.model.features import loops_of
 from screenapp.model.hole_loops import ring_loop
 from screenapp.model.part import Loop, Part, Point
@@ -18,6 +20,7 @@ from screenapp.window.board.frame import Frame
 from screenapp.window.board.snapping import Snap
 from screenapp.window.board.tools.base import Tool
 from screenapp.window.board.tools.drawing import NEXT_FIELDS, PLACE_FIELDS, DrawTool
+from screenapp.window.board.tools.relative import place_expressions
 from screenapp.window.board.typed_entry import EntryField
 
 if TYPE_CHECKING:
@@ -145,8 +148,24 @@ class LinesTool(DrawTool):
         elif not points or math.dist(at, points[-1]) > 1e-9:
             if points:
                 self.draft.throughs.append(None)
-            points.append(at)
-            self.draft.given[at] = self.canvas.entry.taken
+            points.append(self.keep(at))
+
+    def keep(self, at: Point) -> Point:
+        """Remember what gives a place that is about to follow the last one; the place as that
+        gives it, to the last digit."""
+        taken, points = self.canvas.entry.taken, self.draft.points
+        texts: dict[str, str | None] = dict(taken)
+        if points:
+            given = self.draft.given.get(points[-1], {})
+            texts, remark = place_expressions(points[-1], given, taken, at)
+            if remark:
+                self.say(remark)
+        known = values_of(self.canvas.document.part)
+        x, y = (
+            evaluate(t, known) if (t := texts.get(n)) else v for n, v in zip("xy", at, strict=True)
+        )
+        self.draft.given[(x, y)] = texts
+        return x, y
 
     def enter(self) -> None:
         """Close the ring."""

@@ -53,7 +53,10 @@ class DrawTool(Tool):
             gap = (0.0, 0.0) if cursor is None else (cursor[0] - origin[0], cursor[1] - origin[1])
             length = typed.get("length", math.hypot(*gap))
             angle = math.radians(typed["angle"]) if "angle" in typed else math.atan2(*gap[::-1])
-            return origin[0] + length * math.cos(angle), origin[1] + length * math.sin(angle)
+            step = (length * math.cos(angle), length * math.sin(angle))
+            # what is level or upright is so to the last digit
+            dx, dy = (0.0 if abs(v) <= 1e-12 * length else v for v in step)
+            return origin[0] + dx, origin[1] + dy
         if cursor is None:
             return (typed["x"], typed["y"]) if {"x", "y"} <= typed.keys() else None
         return typed.get("x", cursor[0]), typed.get("y", cursor[1])

@@ -10,6 +10,8 @@ from PySide6.QtCore import QPointF, Qt
 from PySide6.QtGui import QPainter
 
 from screenapp.model import edits
+from screenapp.model.edit_dimensions import values_of
+from screenapp.model.expressions import evaluate, plain_number
 from screenapp.model.hole_loops import slot_loop
 from screenapp.model.part import Point
 from screenapp.window.board import sketch
@@ -17,6 +19,7 @@ from screenapp.window.board.frame import Floats, Frame, polygon
 from screenapp.window.board.quantity import written
 from screenapp.window.board.tools.base import Tool
 from screenapp.window.board.tools.drawing import NEXT_FIELDS, PLACE_FIELDS, DrawTool
+from screenapp.window.board.tools.relative import place_expressions
 from screenapp.window.board.typed_entry import EntryField
 
 if TYPE_CHECKING:
@@ -36,10 +39,11 @@ class SlotTool(DrawTool):
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
         self.ends: list[Point] = []
+        self._given: list[dict[str, str | None]] = []  # what was typed for each
 
     def stop(self, following: Tool | None) -> None:
         """Drop the ends."""
-        self.ends = []
+        self.ends, self._given = [], []
         self.typed = {}
 
     def step_back(self) -> bool:
@@ -47,6 +51,7 @@ class SlotTool(DrawTool):
         if not self.ends:
             return False
         self.ends.pop()
+        self._given.pop()
         return True
 
     def hint(self) -> str:
@@ -101,6 +106,7 @@ class SlotTool(DrawTool):
             if width:
                 self._draw(width)
         elif not self.ends or math.dist(self.ends[0], at) > 1e-9:
+            self._given.append(self.canvas.entry.taken)
             self.ends.append(at)
 
     def enter(self) -> None:
@@ -110,21 +116,49 @@ class SlotTool(DrawTool):
 
     def _draw(self, width: float) -> None:
         part, (a, b) = self.canvas.document.part, self.ends
-        centre = (a[0] + b[0]) / 2.0, (a[1] + b[1]) / 2.0
-        length = math.dist(a, b) + width
-        angle = math.degrees(math.atan2(b[1] - a[1], b[0] - a[0]))
-        text = self.canvas.entry.taken.get("width")
-        if self.ask_ring(slot_loop(centre, length, width, angle), b, self._drawn):
+        values = {
+            "centre.0": (a[0] + b[0]) / 2.0,
+            "centre.1": (a[1] + b[1]) / 2.0,
+            "length": math.dist(a, b) + width,
+            "width": width,
+            "angle": math.degrees(math.atan2(b[1] - a[1], b[0] - a[0])),
+        }
+        kept = self._expressions((values["centre.0"], values["centre.1"]), width)
+        known = values_of(part)
+        values |= {name: evaluate(text, known) for name, text in kept.items() if text}
+        centre = values["centre.0"], values["centre.1"]
+        sizes = values["length"], values["width"], values["angle"]
+        if self.ask_ring(slot_loop(centre, *sizes), b, self._drawn):
             return
         if self.apply(
             "draw a slot",
-            lambda: edits.add_slot_hole(part, centre, length, width, angle),
-            lambda made: {f"holes.{made.holes[-1].id}.width": text},
+            lambda: edits.add_slot_hole(part, centre, *sizes),
+            lambda made: {f"holes.{made.holes[-1].id}.{name}": text for name, text in kept.items()},
         ):
             self._drawn()
 
+    def _expressions(self, centre: Point, width: float) -> dict[str, str | None]:
+        """What was typed gives the width, and with a length and angle the rest too."""
+        wide = self.canvas.entry.taken.get("width")
+        kept: dict[str, str | None] = {"width": wide}
+        first, then = self._given
+        if not {"length", "angle"} & then.keys():
+            if any(first.values()) or any(then.values()):
+                self.say("The ends of a slot are kept as numbers: type its length and angle.")
+            return kept
+        texts, remark = place_expressions(self.ends[0], first, then, centre, 0.5)
+        if remark:
+            self.say(remark)
+            return kept
+        long = then.get("length")
+        if long or wide:
+            between = f"({long})" if long else plain_number(math.dist(*self.ends))
+            kept["length"] = f"{between} + " + (f"({wide})" if wide else plain_number(width))
+        kept["angle"] = then.get("angle")
+        return kept | {f"centre.{axis}": texts.get(name) for axis, name in enumerate("xy")}
+
     def _drawn(self) -> None:
-        self.ends = []
+        self.ends, self._given = [], []
 
     def paint(self, painter: QPainter, frame: Frame) -> None:
         """The slot as far as it is known."""

@@ -54,8 +54,7 @@ class TangentArcTool(LinesTool):
             self.close(through)
         elif math.dist(at, self.draft.points[-1]) > 1e-9:
             self.draft.throughs.append(through)
-            self.draft.points.append(at)
-            self.draft.given[at] = self.canvas.entry.taken
+            self.draft.points.append(self.keep(at))
 
     def paint_next(self, painter: QPainter, frame: Frame, at: Point) -> None:
         """The arc that a click would add, with its radius."""
