@@ -8,10 +8,10 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from typing import Literal
 
 from screenapp.model.estimate_text import estimate_text, significant, unit_of
 from screenapp.model.findings import CutFindings, Estimate, Trust
-from screenapp.model.kinds import KindName
 from screenapp.model.part import DisplayUnits
 from screenapp.model.units import format_quantity
 
@@ -120,16 +120,18 @@ def _sentences(cut: CutFindings, units: DisplayUnits) -> tuple[str, ...]:
             f"bending {estimate_text(span.bending, 'stress', units)} at its end."
         )
     applied = cut.applied
-    forces: tuple[tuple[str, Estimate, KindName, float | None], ...] = (
-        ("N", cut.normal, "force", applied.normal if applied else None),
-        ("V", cut.shear, "force", applied.shear if applied else None),
-        ("M", cut.moment, "moment", applied.moment if applied else None),
+    force = max(abs(cut.normal.value), abs(cut.shear.value))
+    forces: tuple[tuple[str, Estimate, Literal["force", "moment"], float | None, float], ...] = (
+        ("N", cut.normal, "force", applied.normal if applied else None, force),
+        ("V", cut.shear, "force", applied.shear if applied else None, force),
+        ("M", cut.moment, "moment", applied.moment if applied else None, abs(cut.moment.value)),
     )
     told = []
-    for letter, estimate, kind, given in forces:
-        text = f"{letter} {format_quantity(_three(estimate.value), kind, units)}"
+    for letter, estimate, kind, given, largest in forces:
+        text = f"{letter} {estimate_text(estimate, kind, units)}"
         if given is not None:
-            text += f" ({format_quantity(_three(given), kind, units)})"
+            said = 0.0 if abs(given) <= _ROUNDING * largest else given
+            text += f" ({format_quantity(said, kind, units)})"
         told.append(text)
     by = "by the stress"
     if applied is not None:
@@ -140,6 +142,10 @@ def _sentences(cut: CutFindings, units: DisplayUnits) -> tuple[str, ...]:
     if cut.why:
         out.append(f"{cut.why[0].upper()}{cut.why[1:]}.")
     return tuple(out)
+
+
+_ROUNDING = 1e-7
+"""Share of the largest section force below which the loads on a free body are written as 0."""
 
 
 def _ends(membrane: Estimate, bending: Estimate) -> tuple[float, float]:

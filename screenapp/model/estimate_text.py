@@ -13,15 +13,23 @@ from screenapp.model.findings import Estimate
 from screenapp.model.kinds import KINDS, KindName
 from screenapp.model.part import DisplayUnits
 
-EstimateKind = Literal["stress", "displacement", "factor"]
+EstimateKind = Literal["stress", "displacement", "factor", "force", "moment"]
 
 _KINDS: dict[EstimateKind, KindName] = {
     "stress": "stress",
     "displacement": "length",
     "factor": "number",
+    "force": "force",
+    "moment": "moment",
 }
-_NAUGHT: dict[EstimateKind, float] = {"stress": 1e-6, "displacement": 1e-7, "factor": 1e-6}
-"""Below this a stored value is nothing but rounding [MPa, mm, 1]: it is written as 0."""
+_NAUGHT: dict[EstimateKind, float] = {
+    "stress": 1e-6,
+    "displacement": 1e-7,
+    "factor": 1e-6,
+    "force": 1e-6,
+    "moment": 1e-3,
+}
+"""Below this a stored value is nothing but rounding [MPa, mm, 1, N, N·mm]: it is written as 0."""
 
 MINUS = "−"
 _MOST_DIGITS = 5  # significant digits, however narrow the band

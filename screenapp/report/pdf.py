@@ -19,6 +19,7 @@ from reportlab.lib.units import mm
 from reportlab.pdfgen.canvas import Canvas
 from reportlab.platypus import (
     BaseDocTemplate,
+    CondPageBreak,
     Flowable,
     Frame,
     HRFlowable,
@@ -54,6 +55,8 @@ from screenapp.report.pdf_type import (
 MARGIN = 18.0 * mm
 ROOM = A4[0] - 2.0 * MARGIN
 MOST_DRAWING = 330.0  # height of a drawing [pt]
+MOST_PICTURE = 318.0  # height of a picture: two stand on a sheet with their words [pt]
+LEAST_UNDER_HEAD = 72.0  # a head with less room under it goes to the next sheet [pt]
 DRAWING = "\x00"  # stands in marked-up text where a drawing stands
 
 
@@ -119,6 +122,7 @@ def _flow(body: Element, styles: DrawingStyles) -> Iterator[Flowable]:
         if block.tag == "h1":
             yield Paragraph(_markup(block), TITLE)
         elif block.tag == "h2":
+            yield CondPageBreak(LEAST_UNDER_HEAD)
             yield Paragraph(_markup(block), HEAD)
         elif block.tag == "h3":
             yield Paragraph(_markup(block), SUBHEAD)
@@ -175,7 +179,7 @@ def _picture(block: Element) -> Flowable:
     if not head.endswith(";base64"):
         raise ValueError("a picture of the record's page is not inside it")
     picture = Image(io.BytesIO(base64.b64decode(data)), hAlign="LEFT")
-    share = min(ROOM / picture.imageWidth, 1.2 * MOST_DRAWING / picture.imageHeight)
+    share = min(ROOM / picture.imageWidth, MOST_PICTURE / picture.imageHeight)
     picture.drawWidth, picture.drawHeight = (
         picture.imageWidth * share,
         picture.imageHeight * share,

@@ -55,7 +55,7 @@ def _style(name: str, size: float, **more: object) -> ParagraphStyle:
 BODY = _style("body", 9.0, spaceBefore=2.0, spaceAfter=2.0)
 NOTE = _style("note", 8.0, spaceBefore=2.0, spaceAfter=2.0, textColor=QUIET)
 TITLE = _style("title", 15.0, fontName=BOLD, spaceAfter=2.0)
-HEAD = _style("head", 10.5, fontName=BOLD, spaceBefore=14.0, spaceAfter=3.0, keepWithNext=1)
+HEAD = _style("head", 10.5, fontName=BOLD, spaceBefore=14.0, spaceAfter=3.0)
 SUBHEAD = _style("subhead", 9.0, fontName=BOLD, spaceBefore=8.0, spaceAfter=2.0, keepWithNext=1)
 CELL = _style("cell", 8.0, leading=10.5)
 NUMBER = _style("number", 8.0, leading=10.5, alignment=TA_RIGHT)

@@ -13,7 +13,8 @@ import pytest
 from pypdf import PdfReader
 
 from screenapp.meshing.service import Mesher
-from screenapp.model.findings import CUT_QUANTITIES, Findings
+from screenapp.model.cut_figure import cut_figure
+from screenapp.model.findings import CUT_QUANTITIES, Estimate, Findings
 from screenapp.model.part import Cut, Part
 from screenapp.model.part_json import read_part
 from screenapp.report.page import record_page
@@ -80,3 +81,23 @@ def test_the_pdf_draws_the_cut_and_says_what_it_gives(screened: tuple[Part, Find
     text = " ".join("".join(s.extract_text() for s in PdfReader(io.BytesIO(data)).pages).split())
     for words in ("Across, the wall", "Section forces", "Full line: stress across the cut"):
         assert words in text
+
+
+def test_section_forces_have_their_bands_and_rounding_is_nought(
+    screened: tuple[Part, Findings],
+) -> None:
+    part, findings = screened
+    cut = findings.cuts[0]
+    applied = cut.applied
+    assert applied is not None
+    known = Estimate(-2453.2, -2460.7, -2445.7, "settled")
+    odd = dataclasses.replace(
+        cut,
+        normal=known,
+        shear=Estimate(0.0469, -7.46, 7.56, "settled"),
+        moment=Estimate(-811935.0, -812749.0, -811121.0, "settled"),
+        applied=dataclasses.replace(applied, normal=-2453.0, shear=2.1e-9),
+    )
+    words = " ".join(cut_figure(odd, part.display_units).sentences)
+    for told in ("N −2453 ± 8 N (−2453 N)", "V 0 ± 8 N (0 N)", "M −811.9 ± 0.9 N·m ("):
+        assert told in words
