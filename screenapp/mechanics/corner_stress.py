@@ -23,6 +23,9 @@ LEAST_TURN = math.radians(45.0)
 """A corner must turn by this for its tractions to fix the stress; flatter ones reach it too
 slowly for the elements next to them (Williams 1952: the next term grows as r^0.18 at 150°)."""
 
+JUMP = 1e-3
+"""Share of the largest traction of a case that counts as a jump of it."""
+
 NEGLIGIBLE = 1e-6  # share of the largest traction of a case
 
 
@@ -84,6 +87,21 @@ def split_corners(chains: BoundaryChains, traction: Floats, known: Bools) -> Boo
     contradiction = np.abs((t1 * n2).sum(axis=-1) - (t2 * n1).sum(axis=-1))
     scale = np.abs(traction).max(axis=(1, 2, 3))[:, None]
     return np.asarray(known & (contradiction > NEGLIGIBLE * scale).any(axis=0))
+
+
+def pressure_jumps(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:
+    """Places of a smooth free boundary at which the pressure jumps in a case, by the side that ends
+    there, (n_sides,).
+
+    The stress along the edge jumps by as much, and turns from one value to the other within the
+    material round that point.  As at a split corner, what the elements there say is wrong by the
+    same share in every mesh.
+    """
+    after = chains.following
+    gap = np.abs(((traction[:, :, 2] - traction[:, after, 0]) * chains.normals[:, 2]).sum(axis=-1))
+    scale = np.abs(traction).max(axis=(1, 2, 3))[:, None]
+    free = ~held.any(axis=1) & ~held[after].any(axis=1)
+    return np.asarray(chains.smooth & free & (gap > JUMP * scale).any(axis=0))
 
 
 def mirrored_ends(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:

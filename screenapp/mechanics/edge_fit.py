@@ -92,6 +92,41 @@ def beside_corners(
     return out
 
 
+def beside_jumps(
+    mesh: Mesh, chains: BoundaryChains, joined: Bools, jumps: Bools, samples: Floats
+) -> Floats:
+    """The samples with those beside a jump of the pressure replaced by what the next two sides say:
+    a parabola through their samples.  Where these do not join, they stay.
+
+    Args:
+        joined: where the fit may run past a side's end, (n_sides,).
+        jumps: whether the pressure jumps at a side's end (`corner_stress.pressure_jumps`),
+            (n_sides,).
+        samples: (n_cases, n_sides, n_samples) at `sample_places`.
+    """
+    at = side_lengths(mesh, sample_places(samples.shape[2]))
+    out = samples.copy()
+    backward = joined[chains.preceding]
+    for end, beside, beyond, joins in (
+        (0, jumps[chains.preceding], chains.following, joined),
+        (1, jumps, chains.preceding, backward),
+    ):
+        some = np.flatnonzero(beside & joins & joins[beyond])
+        one, two = beyond[some], beyond[beyond[some]]
+        own, first, second = (
+            at[k] if end == 0 else chains.lengths[k, None] - at[k] for k in (some, one, two)
+        )  # distances from the end of each that is nearer to the jump
+        first = first + chains.lengths[some, None]
+        second = second + (chains.lengths[some] + chains.lengths[one])[:, None]
+        given = np.concatenate([first, second], axis=1)
+        values = np.concatenate([samples[:, one], samples[:, two]], axis=2)
+        degree = min(2, given.shape[1] - 1)
+        for k in range(samples.shape[2]):
+            weights = fit_weights(given - own[:, k, None], np.ones(given.shape, bool), degree)
+            out[:, some, k] = (values * weights).sum(axis=-1)
+    return out
+
+
 def fit_at_middles(mesh: Mesh, samples: Floats, ends: Floats) -> Floats:
     """Values at the middle node of every side, (n_cases, n_sides).
 

@@ -14,9 +14,16 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.boundary_chains import BoundaryChains
-from screenapp.mechanics.corner_stress import known_corners, mirrored_ends, split_corners
+from screenapp.mechanics.corner_stress import (
+    JUMP,
+    known_corners,
+    mirrored_ends,
+    pressure_jumps,
+    split_corners,
+)
 from screenapp.mechanics.edge_fit import (
     beside_corners,
+    beside_jumps,
     fit_at_ends,
     fit_at_middles,
     sample_places,
@@ -65,6 +72,7 @@ def recover_edge_stress(
     )
     split = split_corners(chains, traction, known)
     samples = beside_corners(mesh, chains, joined, split, samples, stretch)
+    samples = beside_jumps(mesh, chains, joined, pressure_jumps(chains, traction, held), samples)
     ends = fit_at_ends(mesh, chains, joined, mirrored, samples)
     ends = np.where(np.stack([known[before], known], axis=1), stretch, ends)
     strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
@@ -91,7 +99,7 @@ def joined_sides(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools
     after = chains.following
     scale = np.abs(traction).max(axis=(1, 2, 3), keepdims=True)[:, :, 0, 0] + 1e-300
     jump = np.abs(traction[:, :, 2] - traction[:, after, 0]).max(axis=2)
-    steady = (jump <= 1e-3 * scale).all(axis=0)
+    steady = (jump <= JUMP * scale).all(axis=0)
     return np.asarray(chains.smooth & steady & (held == held[after]).all(axis=1))
 
 

@@ -19,7 +19,9 @@ from screenapp.mechanics.loads import side_thickness, side_tractions
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.mechanics.straight_cut import StraightCut
 from screenapp.model.combinations import loadings
+from screenapp.model.edge_parts import point_of
 from screenapp.model.findings import SectionForces
+from screenapp.model.members import spread_loads
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Case, Part, PointLoad
 from screenapp.model.shape import Shape
@@ -109,10 +111,9 @@ def _on_body(
     total = np.zeros(3)
     total += _sum(body, *_side_forces(part, shape, mesh, case, cut))
     total += _throughout(part, mesh, case, body, cut)
-    sharp = dict(shape.sharp_corners)
-    points = [load for load in case.loads if isinstance(load, PointLoad) and load.on in sharp]
+    points = [load for load in spread_loads(part, case) if isinstance(load, PointLoad)]
     if points:
-        places = np.array([sharp[load.on] for load in points])
+        places = np.array([point_of(part, shape, load) for load in points])
         total += _sum(body, places, np.array([(load.x, load.y) for load in points]))
     held = np.flatnonzero(support_forces.any(axis=1))
     total += _sum(body, mesh.nodes[held], support_forces[held])

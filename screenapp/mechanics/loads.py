@@ -17,6 +17,7 @@ from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.model.edge_parts import point_of
 from screenapp.model.members import spread_loads
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import BodyLoad, Case, Part, PointLoad
@@ -28,6 +29,8 @@ Ints = NDArray[np.int64]
 POINTS = 5
 """Gauss points along a side: exact for every even load on a parabola but for the root in its
 length; a bearing load's cosine is smooth but for its two ends."""
+
+POINT_MEND = "put the point load on a sharp corner, or say where along its edge"
 
 _ENDS = np.array([0.0, 0.5, 1.0])
 
@@ -59,7 +62,7 @@ def nodal_forces(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
         if isinstance(load, BodyLoad):
             continue
         if isinstance(load, PointLoad):
-            out[_corner_node(mesh, load)] += (load.x, load.y)
+            out[point_node(part, shape, mesh, load)] += (load.x, load.y)
             continue
         rule = _rule(part, mesh, sides_of(part, shape, mesh, load))
         own = rule.places
@@ -96,10 +99,21 @@ def side_tractions(part: Part, shape: Shape, mesh: Mesh, case: Case) -> Floats:
     return out
 
 
-def _corner_node(mesh: Mesh, load: PointLoad) -> int:
-    if load.on not in mesh.corner_nodes:
-        raise misplaced(load.id, load.on, "put the point load on a sharp corner")
-    return mesh.corner_nodes[load.on]
+def point_node(part: Part, shape: Shape, mesh: Mesh, load: PointLoad) -> int:
+    """The node that a force at a point acts on.
+
+    Raises:
+        InvalidPartError: it stands on no sharp corner and no place of an edge.
+    """
+    if load.along is None and load.on in mesh.corner_nodes:
+        return mesh.corner_nodes[load.on]
+    at = point_of(part, shape, load)
+    if at is not None:
+        ends = np.unique(mesh.side_nodes[mesh.sides_on(shape.pieces_of(load.on))][:, ::2])
+        far = np.hypot(*(mesh.nodes[ends] - at).T)
+        if len(far) and far.min() < 1e-6 * shape.size:
+            return int(ends[np.argmin(far)])
+    raise misplaced(load.id, load.on, POINT_MEND)
 
 
 def side_thickness(part: Part, mesh: Mesh) -> Floats:

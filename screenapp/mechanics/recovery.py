@@ -14,7 +14,12 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics import constraints, loads, shape_functions
 from screenapp.mechanics.boundary_chains import boundary_chains
-from screenapp.mechanics.corner_stress import disturbed_corners, known_corners, split_corners
+from screenapp.mechanics.corner_stress import (
+    disturbed_corners,
+    known_corners,
+    pressure_jumps,
+    split_corners,
+)
 from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
 from screenapp.mechanics.elastic_supports import spring_tractions
 from screenapp.mechanics.element_walls import element_hooke, element_thickness, hooke_of
@@ -73,12 +78,14 @@ def known_tractions(part: Part, shape: Shape, mesh: Mesh, solution: Solution) ->
 
 
 def split_corner_nodes(part: Part, shape: Shape, mesh: Mesh, solution: Solution) -> Ints:
-    """Nodes of corners whose stress differs on the two sides (`corner_stress.split_corners`)."""
+    """Nodes whose stress differs on the two sides (`corner_stress.split_corners`,
+    `pressure_jumps`)."""
     traction = known_tractions(part, shape, mesh, solution)
     held = constraints.held_sides(part, shape, mesh)
     chains = boundary_chains(shape, mesh)
     _, known = known_corners(chains, traction, held, disturbed_corners(part, mesh))
-    return np.asarray(mesh.side_nodes[split_corners(chains, traction, known), 2])
+    split = split_corners(chains, traction, known) | pressure_jumps(chains, traction, held)
+    return np.asarray(mesh.side_nodes[split, 2])
 
 
 def extrapolated_stress(mesh: Mesh, solution: Solution, hooke: Floats) -> Floats:

@@ -17,10 +17,11 @@ from numpy.typing import NDArray
 from screenapp.mechanics.edge_loads import EdgePlaces, force_per_length
 from screenapp.mechanics.elasticity import zone_material
 from screenapp.mechanics.equilibrium import resultant
+from screenapp.mechanics.loads import POINT_MEND
 from screenapp.mechanics.places import misplaced
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.model.curves import Arc
-from screenapp.model.edge_parts import pieces_under
+from screenapp.model.edge_parts import pieces_under, point_of
 from screenapp.model.members import spread_loads
 from screenapp.model.part import (
     Case,
@@ -118,20 +119,16 @@ def _acting(part: Part, shape: Shape, load: Load) -> Acting:
     if isinstance(load, GravityLoad | SpinLoad):
         return _throughout(part, shape, load)
     if isinstance(load, PointLoad):
-        return _at_point(shape, load)
+        at = point_of(part, shape, load)
+        if at is None:
+            raise misplaced(load.id, load.on, POINT_MEND)
+        return np.array([at]), np.array([[load.x, load.y]])
     pieces = pieces_under(part, shape, load)
     if not pieces:
         raise misplaced(load.id, load.on, "put it on an edge, a fillet or a hole of the part")
     rule = _rule(part, shape, pieces)
     force = force_per_length(part, shape, load, rule, rule) * rule.lengths[..., None]
     return rule.at.reshape(-1, 2), force.reshape(-1, 2)
-
-
-def _at_point(shape: Shape, load: PointLoad) -> Acting:
-    corners = dict(shape.sharp_corners)
-    if load.on not in corners:
-        raise misplaced(load.id, load.on, "put the point load on a sharp corner")
-    return np.array([corners[load.on]]), np.array([[load.x, load.y]])
 
 
 def _throughout(part: Part, shape: Shape, load: GravityLoad | SpinLoad) -> Acting:

@@ -20,8 +20,8 @@ from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.zone_spots import fans, zone_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.curves import Curve
-from screenapp.model.edge_parts import pieces_under
-from screenapp.model.members import whole_id
+from screenapp.model.edge_parts import pieces_under, point_of
+from screenapp.model.members import spread_loads, whole_id
 from screenapp.model.part import (
     Case,
     ElasticSupport,
@@ -248,21 +248,28 @@ def _points(part: Part, shape: Shape) -> list[SingularSpot]:
                 )
             )
     for case in loadings(part):
-        spots += _point_loads(case, corners)
+        spots += _point_loads(part, shape, case)
     return spots
 
 
-def _point_loads(case: Case, corners: dict[str, Point]) -> list[SingularSpot]:
-    return [
-        SingularSpot(
-            corners[load.on],
-            (load.on, load.id),
-            f"a force acts at the point {load.on}, where the stress has no finite value",
-            "spread the force over an edge or a hole",
-            1.0,
-            f"corner {load.on}",
-            case.id,
+def _point_loads(part: Part, shape: Shape, case: Case) -> list[SingularSpot]:
+    spots: list[SingularSpot] = []
+    for load in spread_loads(part, case):
+        if not isinstance(load, PointLoad) or not (load.x or load.y):
+            continue
+        at = point_of(part, shape, load)
+        if at is None:
+            continue
+        place = load.on if load.along is None else f"{load.along:g} mm along {load.on}"
+        spots.append(
+            SingularSpot(
+                at,
+                (load.on, load.id),
+                f"a force acts at the point {place}, where the stress has no finite value",
+                "spread the force over a patch of an edge, or over an edge or a hole",
+                1.0,
+                f"corner {place}" if load.along is None else place,
+                case.id,
+            )
         )
-        for load in case.loads
-        if isinstance(load, PointLoad) and load.on in corners and (load.x or load.y)
-    ]
+    return spots

@@ -9,6 +9,7 @@ import numpy as np
 
 from screenapp.model.crossings import piece_name
 from screenapp.model.curve_table import CurveTable
+from screenapp.model.edge_parts import point_of
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST
 from screenapp.model.features import place_name
@@ -210,14 +211,17 @@ def _point_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
     sharp = dict(shape.sharp_corners)
     for case in part.cases:
         for load in case.loads:
-            if isinstance(load, PointLoad) and load.on in sharp:
+            if not isinstance(load, PointLoad) or load.patch is not None:
+                continue
+            at = point_of(part, shape, load)
+            if at is not None:
+                edge = f"on edge {load.on}" if load.along is not None else f"at corner {load.on}"
                 yield Fault(
-                    f"point load {load.id} at corner {load.on}: "
-                    "the stress under it has no finite value",
-                    "spread it along an edge, or do not judge the stress near it",
+                    f"point load {load.id} {edge}: the stress under it has no finite value",
+                    "spread it over a patch of an edge, or do not judge the stress near it",
                     f"cases.{case.id}.loads.{load.id}",
                     (load.id, load.on),
-                    sharp[load.on],
+                    at,
                     blocks=False,
                 )
     for support in part.supports:

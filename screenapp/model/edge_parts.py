@@ -13,11 +13,11 @@ from dataclasses import replace
 from typing import Any
 
 from screenapp.model.boundary_curve import BoundaryCurve
-from screenapp.model.errors import Fault
-from screenapp.model.features import Places, loops_of
+from screenapp.model.errors import Fault, InvalidPartError
+from screenapp.model.features import Places, find, loops_of
 from screenapp.model.loop_curves import runs_clockwise
-from screenapp.model.part import Load, Part, Support
-from screenapp.model.shape import Shape
+from screenapp.model.part import Load, Part, Point, PointLoad, Support
+from screenapp.model.shape import Shape, shape_of
 
 Span = tuple[float | None, float | None]
 """From where to where [mm]; None is the edge's own start or end."""
@@ -28,7 +28,10 @@ NEAR = 1e-7
 
 
 def span_of(record: Support | Load) -> Span:
-    """The part of its edge that a support or load stands on."""
+    """The part of its edge that a support or load stands on; empty for a force at a point of it."""
+    if isinstance(record, PointLoad) and record.along is not None:
+        half = 0.5 * (record.patch or 0.0)
+        return record.along - half, record.along + half
     if not hasattr(record, "end"):
         return WHOLE
     return record.start, record.end  # type: ignore[union-attr]
@@ -109,9 +112,42 @@ def pieces_under(part: Part, shape: Shape, record: Support | Load) -> tuple[int,
     )
 
 
+def point_of(part: Part, shape: Shape, load: PointLoad) -> Point | None:
+    """Where a force at a point, or the middle of its patch, is [mm]; None if it is nowhere.
+
+    Args:
+        shape: its pieces may be cut, or not yet, where loads begin and end.
+    """
+    if load.along is None:
+        return dict(shape.sharp_corners).get(load.on)
+    pieces, rest = shape.pieces_of(load.on), load.along
+    backward = runs_backward(part, load.on)
+    for number, k in enumerate(pieces[::-1] if backward else pieces):
+        curve = shape.curves[k].curve
+        last = number == len(pieces) - 1
+        if rest <= curve.length or (last and rest <= curve.length + NEAR * shape.size):
+            t = min(rest / curve.length, 1.0)
+            x, y = curve.point(1.0 - t if backward else t)
+            return float(x), float(y)
+        rest -= curve.length
+    return None
+
+
 def edge_length(shape: Shape, edge: str) -> float:
     """Length of what the rounds leave of an edge [mm]."""
     return sum(shape.curves[k].curve.length for k in shape.pieces_of(edge))
+
+
+def half_length(part: Part, edge: str) -> float | None:
+    """Half of what the rounds leave of an edge [mm]; None for what is no edge, or has no sound
+    shape."""
+    found = find(part, edge)
+    if found is None or found.kind != "edge":
+        return None
+    try:
+        return 0.5 * edge_length(shape_of(part), edge) or None
+    except InvalidPartError:
+        return None
 
 
 def span_faults(

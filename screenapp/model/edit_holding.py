@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import replace
 
-from screenapp.model.edge_parts import without_span
+from screenapp.model.edge_parts import half_length, without_span
 from screenapp.model.edit_rules import EditError, must_find, new_id, settle
 from screenapp.model.errors import Fault
 from screenapp.model.features import places_of
@@ -15,6 +15,7 @@ from screenapp.model.part import (
     Load,
     Part,
     PlacedLoad,
+    PointLoad,
     Support,
 )
 from screenapp.model.support_faults import one_support_faults
@@ -56,7 +57,10 @@ def put_on(part: Part, id_: str, on: str) -> Part:
         return replace_support(part, without_span(replace(record, on=on)))
     if not isinstance(record, PlacedLoad):
         raise EditError(f"load {id_} acts throughout the part", "put another load on the place")
-    return replace_load(part, without_span(replace(record, on=on)))
+    moved = without_span(replace(record, on=on))
+    if isinstance(moved, PointLoad):
+        moved = replace(moved, along=half_length(part, on))
+    return replace_load(part, moved)
 
 
 def add_case(part: Part, name: str = "") -> Part:

@@ -30,6 +30,7 @@ from screenapp.model.part import (
     SpinLoad,
     TemperatureLoad,
 )
+from screenapp.model.point_load_faults import point_load_faults
 from screenapp.model.shape import Shape
 from screenapp.model.support_faults import place_fault
 
@@ -176,7 +177,8 @@ def _place_faults(
         yield Fault(fault.cause, fault.mend, fault.field, ids if found else (load.id,), fault.at)
         return
     assert found is not None
-    yield from span_faults(load, name, where, places, shape)
+    if not isinstance(load, PointLoad):
+        yield from span_faults(load, name, where, places, shape)
     varies = any(axis.startswith("end_") for axis in components(load))
     if varies and found.kind != "edge":
         yield Fault(
@@ -192,10 +194,5 @@ def _place_faults(
             f"{where}.on",
             ids,
         )
-    elif isinstance(load, PointLoad) and found.kind != "corner":
-        yield Fault(
-            f"{name} cannot act on {found.kind} {load.on}",
-            "put it on a sharp corner, or use a force",
-            f"{where}.on",
-            ids,
-        )
+    elif isinstance(load, PointLoad):
+        yield from point_load_faults(part, load, found, name, where, shape)

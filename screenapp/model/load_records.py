@@ -83,12 +83,24 @@ class BearingLoad:
 
 @dataclass(frozen=True)
 class PointLoad:
-    """A force `x`, `y` [N] at a sharp corner; the stress under it has no finite value."""
+    """A force `x`, `y` [N] at a place of the boundary.
+
+    At a point (a sharp corner, or a place on an edge) the stress under it has no finite value; on
+    a patch of an edge it has one.
+
+    Attributes:
+        on: id of a sharp corner or of an edge.
+        along: on an edge, the length along it from its first corner (see `edge_parts`) [mm].
+        patch: length of edge over which the force is spread evenly, half on either side [mm]; None
+            for a point.
+    """
 
     id: str
     on: str
     x: float
     y: float
+    along: float | None = None
+    patch: float | None = None
 
 
 @dataclass(frozen=True)

@@ -19,6 +19,7 @@ from screenapp.model.part import (
     LoopHole,
     MomentLoad,
     Part,
+    PointLoad,
     SlotHole,
 )
 from screenapp.model.pattern import stations
@@ -67,13 +68,16 @@ def member_ids(hole: Hole) -> tuple[str, ...]:
 
 
 def spread_loads(part: Part, case: Case) -> tuple[Load, ...]:
-    """The loads of a case; a pin's force or moment on a whole pattern is shared evenly by its
-    members."""
+    """The loads of a case as they act: a pin's force or moment on a whole pattern is shared evenly
+    by its members, and a force on a patch is one spread over that part of its edge."""
     wholes = {h.id: h for h in part.holes if patterned(h)}
     loads: list[Load] = []
     for load in case.loads:
         if isinstance(load, BearingLoad | MomentLoad) and load.on in wholes:
             loads += shared(load, wholes[load.on])
+        elif isinstance(load, PointLoad) and load.along is not None and load.patch is not None:
+            begin, end = load.along - 0.5 * load.patch, load.along + 0.5 * load.patch
+            loads.append(ForceLoad(load.id, load.on, load.x, load.y, begin, end))
         else:
             loads.append(load)
     return tuple(loads)

@@ -25,6 +25,7 @@ from screenapp.model.part import (
     Load,
     MisfitLoad,
     Part,
+    PointLoad,
     SpinLoad,
     Support,
     TemperatureLoad,
@@ -156,14 +157,22 @@ def load_words(load: Load) -> str:
         "LineLoad": "({x:g}, {y:g}) N/mm along {on}",
         "ForceLoad": "({x:g}, {y:g}) N spread evenly over {on}",
         "BearingLoad": "a pin bears on {on} with ({x:g}, {y:g}) N",
-        "PointLoad": "({x:g}, {y:g}) N at the point {on}",
+        "PointLoad": "({x:g}, {y:g}) N at {on}",
     }[kind]
     text = words.format(x=load.x, y=load.y, on=load.on)  # type: ignore[union-attr]
+    if isinstance(load, PointLoad):
+        return text + point_words(load)
     if isinstance(load, LineLoad) and (load.end_x is not None or load.end_y is not None):
         x = load.x if load.end_x is None else load.end_x
         y = load.y if load.end_y is None else load.end_y
         text += f", varying to ({x:g}, {y:g}) N/mm at its end"
     return text + _span(load)
+
+
+def point_words(load: PointLoad) -> str:
+    """Where on its edge a force at a place is, and whether it is spread, to follow the edge."""
+    text = "" if load.along is None else f", {load.along:g} mm along it"
+    return text + (", at a point" if load.patch is None else f", over a patch of {load.patch:g} mm")
 
 
 def _span(record: Load | Support) -> str:

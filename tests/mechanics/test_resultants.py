@@ -281,3 +281,11 @@ def test_pressure_on_an_arc_of_a_sector() -> None:
     chord = end - [9.0, 0.0]
     assert (found.x, found.y) == pytest.approx((-6.0 * chord[1], 6.0 * chord[0]), rel=1e-12)
     assert abs(found.moment) < 1e-9  # every bit of it points at the origin
+
+
+@pytest.mark.parametrize("patch", [None, 6.0])
+def test_a_force_at_a_place_of_an_edge(patch: float | None) -> None:
+    (found,) = of(plate(), PointLoad("f", "e3", 30.0, -40.0, 20.0, patch))
+    assert (found.x, found.y) == pytest.approx((30.0, -40.0))
+    assert found.moment == pytest.approx(80.0 * -40.0 - 50.0 * 30.0)
+    assert found.at == pytest.approx((80.0, 50.0))

@@ -6,7 +6,7 @@ import math
 
 import numpy as np
 
-from screenapp.model.edge_parts import runs_backward, span_of
+from screenapp.model.edge_parts import Span, runs_backward, span_of
 from screenapp.model.part import (
     BearingLoad,
     ForceLoad,
@@ -15,6 +15,7 @@ from screenapp.model.part import (
     Load,
     MisfitLoad,
     MomentLoad,
+    PlacedLoad,
     PointLoad,
     PressureLoad,
     ShearLoad,
@@ -29,6 +30,9 @@ from screenapp.window.board.marks import Mark, middle, radius_px, stations, to_p
 
 LONG, ROW, ROW_GAP = 46.0, 28.0, 24.0
 """Length of a single arrow and of one in a row, and the gap between those [px]."""
+
+POINT = 1e-6
+"""Half the length of edge that stands for a point of it, as a share of the edge."""
 
 
 def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
@@ -49,7 +53,7 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
             aside = np.array([-26.0, -20.0]) if load.zone is None else np.zeros(2)
             temperature_mark(mark, drawn, load, frame.pxs(centre) + aside)
         return mark
-    place = middle(drawn, frame, load.on, span_of(load))
+    place = middle(drawn, frame, load.on, _drawn_span(drawn, load))
     if place is None:
         return mark
     units = drawn.part.display_units
@@ -77,6 +81,17 @@ def load_mark(drawn: DrawnPart, frame: Frame, load: Load) -> Mark:
     if mark.lines:
         mark.label = text
     return mark
+
+
+def _drawn_span(drawn: DrawnPart, load: PlacedLoad) -> Span:
+    """The part of its edge that a load is drawn on: a point of an edge has a length too small to be
+    seen, so that it has a place."""
+    start, end = span_of(load)
+    if start is None or start != end:
+        return start, end
+    whole = sum(piece.curve.length for piece in drawn.pieces_of(load.on))
+    at = min(max(start, 0.0), whole)
+    return max(at - POINT * whole, 0.0), min(at + POINT * whole, whole)
 
 
 def _push(
@@ -190,8 +205,8 @@ def _single(
     tail, tip = _push(mark, (at, out), way, LONG)
     away = tip if way @ out > 1e-9 else tail
     mark.say("", away + label_gap((away - at) / max(float(np.hypot(*(away - at))), 1e-9)))
-    if isinstance(load, ForceLoad):  # the length over which it is spread
-        line = stations(drawn, frame, load.on, 10.0, ends=True, span=span_of(load))
+    if isinstance(load, ForceLoad | PointLoad):  # the length it is spread over
+        line = stations(drawn, frame, load.on, 10.0, ends=True, span=_drawn_span(drawn, load))
         if len(line) > 1:
             rail = line.at + 5.0 * line.out
             mark.lines.append(rail)

@@ -148,7 +148,9 @@ def _loaded(record: object, units: DisplayUnits) -> str:
     if isinstance(record, ForceLoad | BearingLoad | PointLoad):
         kind = {ForceLoad: "force", BearingLoad: "bearing force", PointLoad: "point force"}
         x, y = (format_quantity(v, "force", units) for v in (record.x, record.y))
-        return f"{kind[type(record)]} of {x}, {y}"
+        patch = getattr(record, "patch", None)
+        spread = "" if patch is None else f" over {_length(patch, units)}"
+        return f"{kind[type(record)]} of {x}, {y}{spread}"
     return "load"
 
 

@@ -4,9 +4,10 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from PySide6.QtCore import QPoint, Qt
+from PySide6.QtCore import QPoint, QPointF, Qt
 
 from screenapp.model import edits
+from screenapp.model.edge_parts import runs_backward
 from screenapp.model.edits import EditError
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
@@ -55,7 +56,19 @@ class Placing:
     def load(self, on: str, near: QPoint) -> None:
         """Begin to load a place."""
         part = self._canvas.document.part
-        self._open(f"Load {place_name(part, on)}", loading_ways(part, on), on, near)
+        ways = loading_ways(part, on, self._along(on, near))
+        self._open(f"Load {place_name(part, on)}", ways, on, near)
+
+    def _along(self, on: str, near: QPoint) -> float | None:
+        """How far along an edge a place is [mm], to a tenth; None for what is no edge."""
+        pieces = self._canvas.drawn.pieces_of(on)
+        if len(pieces) != 1 or pieces[0].kind != "edge":
+            return None
+        curve = pieces[0].curve
+        t = curve.nearest(self._canvas.frame_now.mm(QPointF(near)))
+        if runs_backward(self._canvas.document.part, on):
+            t = 1.0 - t
+        return min(round(t * curve.length, 1), curve.length)
 
     def change(self, id_: str, near: QPoint) -> None:
         """Begin to change a support or load."""

@@ -91,6 +91,13 @@ def _vector(record: Callable[[str, str, float, float], Load]) -> Callable[..., L
     return make
 
 
+def _point_on_edge(id_: str, on: str, values: Values) -> Load | None:
+    found = components(values)
+    if found is None or "along" not in values:
+        return None
+    return PointLoad(id_, on, *found, values["along"], values.get("patch"))
+
+
 def _fixed(id_: str, on: str, values: Values) -> Support | None:
     return FixedSupport(id_, on)
 
@@ -207,6 +214,19 @@ BEARING = _vector_way(
 POINT = _vector_way(
     "point", "A force at a corner; the stress under it has no finite value.", "force", PointLoad
 )
+POINT_ON_EDGE = Way(
+    "point",
+    "Point",
+    "A force at a place of the edge, or over a short patch about it; at a point the stress has no "
+    "finite value.",
+    (
+        *vector_fields("force"),
+        EntryField("along", "along it", "length"),
+        EntryField("patch", "over", "length", (), "a point"),
+    ),
+    _point_on_edge,
+    DOWN,
+)
 PRESSURE = Way(
     "pressure",
     "Pressure",
@@ -304,21 +324,24 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     return FIXED, (PIN if found.kind == "hole" else ROLLER), SPRINGS, MOVED
 
 
-def loading_ways(part: Part, on: str) -> tuple[Way, ...]:
-    """The ways in which a place may be loaded, the most likely first; what is held may be off."""
+def loading_ways(part: Part, on: str, along: float | None = None) -> tuple[Way, ...]:
+    """The ways in which a place may be loaded, the most likely first; what is held may be off.
+
+    `along` is where on an edge a force at a point begins [mm].
+    """
     held = next(
         (s.id for s in part.supports if s.on == on and not isinstance(s, SymmetrySupport)), None
     )
     if held is None:
-        return _loading_ways(part, on)
+        return _loading_ways(part, on, along)
 
     def make(id_: str, _on: str, values: Values) -> Record | None:
         return MISFIT.make(id_, held, values)
 
-    return (*_loading_ways(part, on), replace(MISFIT, make=make))
+    return (*_loading_ways(part, on, along), replace(MISFIT, make=make))
 
 
-def _loading_ways(part: Part, on: str) -> tuple[Way, ...]:
+def _loading_ways(part: Part, on: str, along: float | None) -> tuple[Way, ...]:
     found = find(part, on)
     if found is None or found.inside or found.kind not in ("edge", "hole", "corner"):
         return ()
@@ -326,6 +349,9 @@ def _loading_ways(part: Part, on: str) -> tuple[Way, ...]:
         return (POINT,)
     if isinstance(found.record, CircleHole):
         return BEARING, FORCE, PRESSURE, SHEAR, MOMENT
+    if found.kind == "edge":
+        start = DOWN if along is None else (*DOWN, ("along", along))
+        return FORCE, PRESSURE, SHEAR, LINE, replace(POINT_ON_EDGE, start=start)
     return FORCE, PRESSURE, SHEAR, LINE
 
 
@@ -357,10 +383,13 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
     if isinstance(record, TemperatureLoad):
         names = ("change", "start", "x", "y")
         return "temperature", {name: getattr(record, name) for name in names}
+    if isinstance(record, PointLoad):
+        where = {"along": record.along, "patch": record.patch}
+        given = {name: value for name, value in where.items() if value is not None}
+        return "point", {"x": record.x, "y": record.y, **given}
     keys: dict[type, str] = {
         ForceLoad: "force",
         BearingLoad: "bearing",
-        PointLoad: "point",
         LineLoad: "line",
         GravityLoad: "gravity",
         MisfitLoad: "misfit",

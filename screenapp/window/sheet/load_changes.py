@@ -8,6 +8,7 @@ from dataclasses import replace
 from typing import Any
 
 from screenapp.model import edits
+from screenapp.model.edge_parts import half_length
 from screenapp.model.part import (
     BearingLoad,
     CircleHole,
@@ -85,7 +86,7 @@ def _first_load(part: Part, kind: str, id_: str, on: str) -> Load:
         return BearingLoad(id_, on, 0.0, -FIRST_FORCE)
     if kind == "force":
         return ForceLoad(id_, on, 0.0, -FIRST_FORCE)
-    return PointLoad(id_, on, 0.0, -FIRST_FORCE)
+    return PointLoad(id_, on, 0.0, -FIRST_FORCE, half_length(part, on))
 
 
 def _middle(part: Part) -> tuple[float, float]:

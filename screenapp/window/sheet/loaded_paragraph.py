@@ -37,6 +37,7 @@ from screenapp.window.sheet.combination_rows import add_link, combination_row
 from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import SEPARATOR, Choice, Link, Piece, Value, Words
+from screenapp.window.sheet.point_pieces import point_pieces
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.resultant_words import KEY, load_words, together_rows
 from screenapp.window.sheet.rows import RowOf, Rows
@@ -49,7 +50,7 @@ KIND_WORDS = {
     "line": "a force per length",
     "pressure": "a pressure",
     "shear": "a shear along it",
-    "point": "a force at the point",
+    "point": "a force at a point, or on a patch",
     "moment": "a moment, sheared round it",
 }
 
@@ -189,7 +190,7 @@ def load_choices(document: Document) -> tuple[Choice, ...]:
                 kinds = ("bearing", *kinds, "moment")
             title = "Holes"
         elif found.kind == "edge":
-            kinds, title = ("force", "line", "pressure", "shear"), "Edges"
+            kinds, title = ("force", "line", "pressure", "shear", "point"), "Edges"
         elif isinstance(record, Corner) and record.sharp:
             kinds, title = ("point",), "Sharp corners"
         else:
@@ -240,6 +241,7 @@ def _load_row(document: Document, case: Case, load: Load, q: Quantities) -> RowO
             *_load_pieces(document.part, load, name, change, q, field),
             *varying_pieces(document.part, load, where, change.put, q, field),
             *span_pieces(document.part, load, where, change.put, q, field),
+            *point_pieces(document.part, load, where, change.put, q, field),
             *load_words(document, case.id, load.id),
         ),
         change.remove,
@@ -303,6 +305,8 @@ def _load_pieces(
         MisfitLoad: ("off by ", "displacement"),
     }
     lead, kind = kinds[type(load)]
+    if isinstance(load, PointLoad) and load.along is not None:
+        lead = "pulled by "
     size = math.hypot(load.x, load.y)
     parts = f"x {q.show(load.x, kind)}, y {q.show(load.y, kind)}"
     way = Value(

@@ -5,11 +5,9 @@ from __future__ import annotations
 from collections.abc import Callable
 from typing import Any
 
-from screenapp.model.edge_parts import WHOLE, can_have_span, edge_length, span_of
-from screenapp.model.errors import InvalidPartError
+from screenapp.model.edge_parts import WHOLE, can_have_span, half_length, span_of
 from screenapp.model.features import find
 from screenapp.model.part import LineLoad, Load, Part, PressureLoad, Support
-from screenapp.model.shape import shape_of
 from screenapp.window.sheet.pieces import SEPARATOR, Link, Piece
 from screenapp.window.sheet.quantities import Quantities
 
@@ -31,7 +29,8 @@ def span_pieces(
     if span == WHOLE:
 
         def begin(_key: str) -> None:
-            put({"start": 0.0, "end": _half(part, on)})
+            half = half_length(part, on)
+            put({"start": 0.0, "end": None if half is None else float(f"{half:.3g}")})
 
         return (SEPARATOR, Link("span", "on part of it", begin, f"Take only part of {where}"))
     begins = f"Start on {where}"
@@ -86,12 +85,3 @@ def varying_pieces(
             ),
         )
     return pieces
-
-
-def _half(part: Part, edge: str) -> float | None:
-    """Half the length of an edge [mm] to three figures, None if the part has no sound shape."""
-    try:
-        whole = edge_length(shape_of(part), edge)
-    except InvalidPartError:
-        return None
-    return float(f"{0.5 * whole:.3g}") if whole > 0.0 else None
