@@ -6,7 +6,14 @@ from collections.abc import Callable
 from dataclasses import replace
 
 from PySide6.QtCore import QEvent, QPointF, Qt, Signal
-from PySide6.QtGui import QContextMenuEvent, QFocusEvent, QKeyEvent, QMouseEvent, QWheelEvent
+from PySide6.QtGui import (
+    QContextMenuEvent,
+    QFocusEvent,
+    QKeyEvent,
+    QMouseEvent,
+    QResizeEvent,
+    QWheelEvent,
+)
 from PySide6.QtWidgets import QWidget
 
 from screenapp.model.errors import Fault
@@ -62,6 +69,9 @@ class Canvas(ZoomView):
     pointed = Signal()
     tool_wanted = Signal(str)
     edit_wanted = Signal(str, QPointF)
+
+    _fitted: tuple[float, float, float, float] | None = None
+    """Bounds of the part [mm] when it was fitted; None once the view is moved."""
 
     def __init__(self, document: Document, parent: QWidget | None = None) -> None:
         super().__init__(parent)
@@ -196,10 +206,23 @@ class Canvas(ZoomView):
     def fit(self) -> None:
         """Show the whole part with room for what stands round it."""
         self.dimensions.fit()
+        self._fitted = self.drawn.bounds
+
+    def resizeEvent(self, event: QResizeEvent) -> None:
+        """A part that was fitted, and has the same size still, is fitted again."""
+        super().resizeEvent(event)
+        if self._fitted is not None and self._fitted == self.drawn.bounds:
+            self.fit()
+
+    def pan_to(self, px: QPointF) -> None:
+        """The view is dragged to a pixel."""
+        super().pan_to(px)
+        self._fitted = None
 
     def zoom(self, factor: float, about: QPointF | None = None) -> None:
         """Magnify by `factor`, keeping the place at `about` [px] where it is."""
         super().zoom(factor, about)
+        self._fitted = None
         self._refresh_place()
 
     # tools

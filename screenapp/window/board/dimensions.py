@@ -7,12 +7,18 @@ from typing import TYPE_CHECKING
 from PySide6.QtCore import QPointF, QRectF
 
 from screenapp.model.dimension_marks import DimensionsShown, Mark, marks_of, rows_of
+from screenapp.model.part import SpinLoad
 from screenapp.window.board.dimension_editor import DimensionEditor
 from screenapp.window.board.dimension_item import ROW_PX, DimensionsItem, reach_of
+from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.zoom_view import BOTTOM
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
+
+FARTHEST_SPIN = 2.0
+"""A point that the part turns about is shown with it where it makes the view at most so many times
+as large."""
 
 FREE_ROWS = 2
 """Rows of dimensions that stand in the room that is left round the part anyway."""
@@ -64,7 +70,7 @@ class Dimensions:
     def fit(self) -> None:
         """Show the whole part with room for its symbols, and for rows of dimensions."""
         canvas = self._canvas
-        bounds = canvas.drawn.bounds
+        bounds = with_spin(canvas.drawn)
         canvas.show_box(bounds)
         rows = rows_of(self.item.marks)
         if bounds is None or not max(rows):
@@ -89,4 +95,20 @@ class Dimensions:
         below, beside = rows_of(self.item.marks)
         outer = low + QPointF(-reach_of(beside), reach_of(below))
         if view.contains(low) and view.contains(high) and not view.contains(outer):
-            self.fit()
+            self._canvas.fit()
+
+
+def with_spin(drawn: DrawnPart) -> tuple[float, float, float, float] | None:
+    """What a fitted view shows [mm]: all that is drawn, and the points that the part turns about
+    unless they are far off."""
+    if drawn.bounds is None:
+        return None
+    x0, y0, x1, y1 = drawn.bounds
+    size = max(x1 - x0, y1 - y0)
+    for case in drawn.part.cases:
+        for load in case.loads:
+            if isinstance(load, SpinLoad):
+                box = min(x0, load.x), min(y0, load.y), max(x1, load.x), max(y1, load.y)
+                if max(box[2] - box[0], box[3] - box[1]) <= FARTHEST_SPIN * size:
+                    x0, y0, x1, y1 = box
+    return x0, y0, x1, y1
