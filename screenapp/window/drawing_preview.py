@@ -20,15 +20,13 @@ from screenapp.window.board.drawn_part import drawn_part
 from screenapp.window.board.faults_item import FaultsItem
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.grid import GridItem, ScaleBarItem
+from screenapp.window.board.open_chains_item import FEW, OpenChainsItem
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.screen_item import Z_MESH, Z_PREVIEW, ScreenItem
 from screenapp.window.board.zoom_view import ZoomView
 from screenapp.window.many_lines import paint_pieces, straight_pieces
 
 Floats = NDArray[np.float64]
-
-FEW = 2000
-"""So many pieces, ends or gaps are painted with care; more could not be told apart."""
 
 SHOWN_SHARE = 0.06
 """How much of the drawing is seen round a place that is shown."""
@@ -49,6 +47,11 @@ class Painted:
     lines: Floats
     chains: Floats
     faults: tuple[Fault, ...] = ()
+
+    @property
+    def open_ends(self) -> tuple[Point, ...]:
+        """Where chains are open [mm]."""
+        return tuple(p for chain in self.brought.open_chains for p in chain.ends)
 
     @property
     def bounds(self) -> tuple[float, float, float, float] | None:
@@ -73,28 +76,21 @@ class LinesItem(ScreenItem):
 
 
 class MarksItem(ScreenItem):
-    """Zones, open chains with rings at their ends, gaps closed, and the place that is shown."""
+    """Zones, gaps closed, and the place that is shown."""
 
     def __init__(self) -> None:
         super().__init__(Z_PREVIEW)
-        self.chains: Floats = np.empty((0, 2, 2))
         self.zones: Floats = np.empty((0, 2, 2))
-        self.ends: list[Point] = []
         self.gaps: list[Point] = []
         self.shown: Point | None = None
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Paint all marks."""
-        painter.setRenderHint(QPainter.RenderHint.Antialiasing, len(self.chains) < FEW)
-        bad, doubt = theme.colour("bad"), theme.colour("doubt")
+        painter.setRenderHint(QPainter.RenderHint.Antialiasing)
+        doubt = theme.colour("doubt")
         painter.setBrush(Qt.BrushStyle.NoBrush)
         size = _view_size(self)
         paint_pieces(painter, frame, self.zones, size, QPen(theme.colour("accent"), 2.0))
-        dashed = QPen(bad, 2.0, Qt.PenStyle.DashLine)
-        pen = dashed if len(self.chains) < FEW else QPen(bad, 1.0)
-        paint_pieces(painter, frame, self.chains, size, pen)
-        for at in self.ends[:FEW]:
-            _ring(painter, frame.px(at), 5.0, bad)
         for at in self.gaps[:FEW]:
             _ring(painter, frame.px(at), 4.0, doubt)
         if self.shown is not None:
@@ -113,11 +109,13 @@ class DrawingPreview(ZoomView):
         paths = PartPaths()
         self.fill, self.outline = FillItem(paths), OutlineItem(paths)
         self.lines, self.marks, self.faults = LinesItem(), MarksItem(), FaultsItem()
+        self.open_chains = OpenChainsItem()
         for item in (
             self.grid,
             self.fill,
             self.lines,
             self.outline,
+            self.open_chains,
             self.marks,
             self.faults,
             self.scale_bar,
@@ -139,8 +137,7 @@ class DrawingPreview(ZoomView):
         self.outline.show_part(drawn)
         self.lines.lines = painted.lines
         marks = self.marks
-        marks.chains = painted.chains
-        marks.ends = [p for chain in brought.open_chains for p in chain.ends]
+        self.open_chains.show_chains(painted.chains, painted.open_ends)
         marks.gaps = [p for r in brought.remarks if r.kind == "gap" for p in r.at]
         rims = zone_curves(drawn.part, [])
         marks.zones = straight_pieces(tuple(c.curve for rim in rims for c in rim))

@@ -166,9 +166,17 @@ class MainWindow(QMainWindow):
         panel = DrawingPanel(path, self.document.part.display_units, self.drawing_jobs, self)
 
         def take(part: Part, name: str) -> None:
-            if self.files.take_drawing(part, name):
-                panel.close()
-                self.board.fit()
+            painted = panel.painted
+            if not self.files.take_drawing(part, name):
+                return
+            panel.close()
+            self.board.fit()
+            if painted is not None and (count := len(painted.brought.open_chains)):
+                self.board.canvas.open_chains.show_chains(painted.chains, painted.open_ends)
+                stay = "line stays" if count == 1 else "lines stay"
+                self.document.said.emit(
+                    f"Brought in {name}; {count} {stay} open, ringed on the board (Shift+L)"
+                )
 
         panel.wanted.connect(take)
         self._show_panel("drawing", lambda: panel)

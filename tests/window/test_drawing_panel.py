@@ -349,3 +349,30 @@ def test_it_is_painted_in_both_themes(
         assert ground == theme.current().paper
     finally:
         theme.choose(had)
+
+
+def test_lines_that_stay_open_are_ringed_on_the_board(
+    qtbot: QtBot, tmp_path: Path, main: MainWindow
+) -> None:
+    panel = opened(qtbot, main, write(tmp_path / "open.dxf", plate))
+    type_into(panel.tolerance.field("tolerance"), "0.05 mm")
+    wait(qtbot, panel)
+    QTest.mouseClick(panel.take, LEFT)
+    settle()
+    item = main.board.canvas.open_chains
+    ends = {(round(x, 6), round(y, 6)) for x, y in item.ends}
+    assert {(30.0, 10.0), (40.0, 15.0)} <= ends
+    assert "stay open, ringed on the board" in main.said.text() or "stays open" in main.said.text()
+    main.board.fit()
+    settle()
+    image = main.board.canvas.grab().toImage()
+    px = main.board.canvas.frame_now.px((30.0, 10.0)).toPoint()
+    ring = [image.pixelColor(px.x() + dx, px.y()) for dx in (-6, -5, -4, 4, 5, 6)]
+    bad = theme.colour("bad")
+    assert any(abs(c.red() - bad.red()) + abs(c.blue() - bad.blue()) < 60 for c in ring)
+    main.board.canvas.setFocus()
+    QTest.keyClick(main.board.canvas, Qt.Key.Key_L, Qt.KeyboardModifier.ShiftModifier)
+    settle()
+    assert not item.ends
+    main.document.undo()
+    assert main.document.part.outline is None

@@ -208,6 +208,7 @@ class Board(QWidget):
         self.canvas.show_part()
         if self.document.history is not self._history:
             self._history = self.document.history
+            self.canvas.open_chains.clear()
             self.canvas.fit()
         self._show_empty()
         self.canvas.refresh()

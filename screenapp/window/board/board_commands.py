@@ -65,6 +65,13 @@ def board_commands(board: Board) -> tuple[Command, ...]:
             board.show_crosses,
         ),
         Command(
+            "Put open lines away",
+            "Hides the lines of a drawing that stayed open and are ringed on the board.",
+            ("Shift+L",),
+            board.canvas.open_chains.clear,
+            ready=lambda: bool(board.canvas.open_chains.ends),
+        ),
+        Command(
             "Step back",
             "Drops what is half done, then the tool, then the selection.",
             ("Esc",),

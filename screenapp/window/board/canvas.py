@@ -29,6 +29,7 @@ from screenapp.window.board.hit_test import hit_test
 from screenapp.window.board.labels import LabelsItem
 from screenapp.window.board.live_faults import LiveFaults
 from screenapp.window.board.naming import name_at
+from screenapp.window.board.open_chains_item import OpenChainsItem
 from screenapp.window.board.part_item import FillItem, OutlineItem, PartPaths
 from screenapp.window.board.placing import Placing
 from screenapp.window.board.preview_item import PreviewItem
@@ -95,6 +96,7 @@ class Canvas(ZoomView):
         self.resultants = ResultantItem(document)
         self.dimensions = Dimensions(self)
         self.labels = LabelsItem(self)
+        self.open_chains = OpenChainsItem()
         self.preview_item = PreviewItem(self)
         for item in (
             self.grid,
@@ -109,6 +111,7 @@ class Canvas(ZoomView):
             self.labels,
             self.resultants,
             self.marked,
+            self.open_chains,
             self.preview_item,
             self.scale_bar,
         ):
