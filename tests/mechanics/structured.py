@@ -22,7 +22,21 @@ from numpy.typing import ArrayLike, NDArray
 
 from screenapp.model.curves import Curve
 from screenapp.model.mesh import Mesh
-from screenapp.model.part import CircleHole, Corner, Edge, Loop, Material, Part, Point, Wall
+from screenapp.model.part import (
+    Case,
+    CircleHole,
+    Corner,
+    Edge,
+    ElementName,
+    FixedSupport,
+    ForceLoad,
+    Loop,
+    Material,
+    MeshWishes,
+    Part,
+    Point,
+    Wall,
+)
 from screenapp.model.shape import BoundaryCurve, Shape, shape_of
 
 Floats = NDArray[np.float64]
@@ -158,6 +172,19 @@ def shaken(mesh: Mesh, shape: Shape, share: float, seed: int = 0) -> Mesh:
     size = share * float(mesh.element_sizes.min())
     points[inner] += rng.uniform(-size, size, (int(inner.sum()), 2))
     return mesh_from_corners(points, inverse.reshape(-1, 4), shape)
+
+
+def down_and_along(case: Structured, element: ElementName) -> Part:
+    """Its part fixed on e4, under two cases on e2: 100 N down, and 300 N along."""
+    return replace(
+        case.part,
+        mesh=MeshWishes(element=element),
+        supports=(FixedSupport("s", "e4"),),
+        cases=(
+            Case("k1", "down", (ForceLoad("f", "e2", 0.0, -100.0),)),
+            Case("k2", "along", (ForceLoad("g", "e2", 300.0, 0.0),)),
+        ),
+    )
 
 
 def outlined(

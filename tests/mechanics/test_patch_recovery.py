@@ -12,14 +12,14 @@ from screenapp.mechanics.elasticity import constitutive_matrix
 from screenapp.mechanics.patch_recovery import recover_inside
 from screenapp.mechanics.recovery import averaged_stress, extrapolated_stress, recover
 from screenapp.mechanics.solve import solve
-from screenapp.model.part import Case, ElementName, FixedSupport, ForceLoad, MeshWishes
+from screenapp.model.part import ElementName
 from tests.mechanics.stress_fields import (
     Floats,
     kirsch_displacement,
     kirsch_stress,
     solution_of,
 )
-from tests.mechanics.structured import STEEL, full_ring, rectangle, shaken
+from tests.mechanics.structured import STEEL, down_and_along, full_ring, rectangle, shaken
 
 HOOKE = constitutive_matrix(STEEL, "plane stress")
 ELEMENTS: tuple[ElementName, ...] = ("quad4", "quad4-incompatible", "quad8", "quad9")
@@ -133,15 +133,7 @@ def test_the_boundary_keeps_its_edge_recovery(
     """With and without patches, the same along the sides; inside, the patches speak."""
     base = rectangle(60.0, 24.0, 8, 4)
     case = replace(base, mesh=shaken(base.mesh, base.shape, 0.15))
-    part = replace(
-        case.part,
-        mesh=MeshWishes(element=element),
-        supports=(FixedSupport("s", "e4"),),
-        cases=(
-            Case("k1", "down", (ForceLoad("f", "e2", 0.0, -100.0),)),
-            Case("k2", "along", (ForceLoad("g", "e2", 300.0, 0.0),)),
-        ),
-    )
+    part = down_and_along(case, element)
     mesh = case.mesh
     solution = solve(part, case.shape, mesh)
     fitted, reached = recover_inside(mesh, solution, HOOKE)

@@ -11,14 +11,14 @@ from screenapp.mechanics.elasticity import constitutive_matrix
 from screenapp.mechanics.energy_error import element_nodal
 from screenapp.mechanics.recovery import averaged_stress, extrapolated_stress, recover
 from screenapp.mechanics.solve import solve
-from screenapp.model.part import Case, ElementName, FixedSupport, ForceLoad, MeshWishes
+from screenapp.model.part import Case, ElementName, FixedSupport, ForceLoad
 from tests.mechanics.stress_fields import (
     Floats,
     kirsch_displacement,
     kirsch_stress,
     solution_of,
 )
-from tests.mechanics.structured import STEEL, full_ring, rectangle, shaken
+from tests.mechanics.structured import STEEL, down_and_along, full_ring, rectangle, shaken
 
 HOOKE = constitutive_matrix(STEEL, "plane stress")
 
@@ -63,15 +63,7 @@ def test_order_of_convergence_inside(element: ElementName, order: float) -> None
 def test_nodes_of_the_rim_take_the_mean_of_their_sides(element: ElementName) -> None:
     base = rectangle(60.0, 20.0, 6, 3)
     case = replace(base, mesh=shaken(base.mesh, base.shape, 0.2))
-    part = replace(
-        case.part,
-        mesh=MeshWishes(element=element),
-        supports=(FixedSupport("s", "e4"),),
-        cases=(
-            Case("k1", "down", (ForceLoad("f", "e2", 0.0, -100.0),)),
-            Case("k2", "along", (ForceLoad("g", "e2", 300.0, 0.0),)),
-        ),
-    )
+    part = down_and_along(case, element)
     mesh = case.mesh
     field = recover(part, case.shape, mesh, solve(part, case.shape, mesh))
     assert field.nodal.shape == (2, mesh.n_nodes, 3)

@@ -19,13 +19,12 @@ from screenapp.model.part import (
 from screenapp.report.page import load_words
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.load_marks import load_mark
-from screenapp.window.document import Document
 from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
 from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand
 from tests.window.board_kit import plate as board_plate
 from tests.window.fabricate import plate
-from tests.window.window_kit import pick, settle, type_into
+from tests.window.window_kit import pick, shown_sheet, type_into
 
 PAD = Zone(CircleHole("z1", (20.0, 20.0), 8.0), 5.0)
 
@@ -33,13 +32,7 @@ PAD = Zone(CircleHole("z1", (20.0, 20.0), 8.0), 5.0)
 @pytest.fixture
 def sheet(qtbot: QtBot) -> Sheet:
     """The sheet of a strip with a hole and a pad."""
-    made = Sheet(Document(replace(plate(), zones=(PAD,))))
-    qtbot.addWidget(made)
-    made.resize(540, 900)
-    made.show()
-    made.activateWindow()
-    settle()
-    return made
+    return shown_sheet(qtbot, replace(plate(), zones=(PAD,)))
 
 
 def block(sheet: Sheet):  # type: ignore[no-untyped-def]

@@ -39,24 +39,13 @@ from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.verdict_paragraph import ALWAYS, VerdictParagraph
 from tests.model.plates import loop
 from tests.window.fabricate import plate
-from tests.window.window_kit import made_up, pick, settle, texts, type_into
-
-
-def shown(qtbot: QtBot, part: Part) -> Sheet:
-    """The sheet of a part."""
-    made = Sheet(Document(part))
-    qtbot.addWidget(made)
-    made.resize(540, 900)
-    made.show()
-    made.activateWindow()
-    settle()
-    return made
+from tests.window.window_kit import made_up, pick, settle, shown_sheet, texts, type_into
 
 
 @pytest.fixture
 def sheet(qtbot: QtBot) -> Sheet:
     """The sheet of a strip with a hole."""
-    return shown(qtbot, plate())
+    return shown_sheet(qtbot, plate())
 
 
 def the(sheet: Sheet, kind: type) -> object:
@@ -70,7 +59,7 @@ def states(sheet: Sheet) -> list[str]:
 
 
 def test_a_new_part_is_open_everywhere_but_in_its_mesh(qtbot: QtBot) -> None:
-    sheet = shown(qtbot, Part())
+    sheet = shown_sheet(qtbot, Part())
     assert states(sheet) == ["open"] * 5 + ["set"] + ["open"] * 2
     for paragraph in sheet.paragraphs:
         assert paragraph.missing.isVisibleTo(sheet) == (paragraph.state == "open")
@@ -222,7 +211,7 @@ def test_cases_are_added_renamed_shown_and_removed(sheet: Sheet) -> None:
 
 
 def test_the_first_load_brings_its_case(qtbot: QtBot) -> None:
-    sheet = shown(qtbot, replace(plate(), cases=()))
+    sheet = shown_sheet(qtbot, replace(plate(), cases=()))
     pick(loaded(sheet).missing.field("load"), "edge e2", "a force, spread evenly")
     assert [type(x) for c in sheet.document.part.cases for x in c.loads] == [ForceLoad]
 
@@ -503,7 +492,7 @@ def test_sharp_corners_are_told_in_one_sentence_with_a_link_to_each(qtbot: QtBot
     points = [(20, 0), (40, 0), (40, 20), (60, 20), (60, 40), (40, 40)]
     points += [(40, 60), (20, 60), (20, 40), (0, 40), (0, 20), (20, 20)]
     cross = replace(plate(), outline=loop(points), holes=(), supports=(), cases=())
-    sheet = shown(qtbot, cross)
+    sheet = shown_sheet(qtbot, cross)
     paragraph = the(sheet, PartParagraph)
     assert isinstance(paragraph, PartParagraph)
     (said,) = [t for t in texts(paragraph) if "re-enter" in t]

@@ -12,24 +12,17 @@ from pytestqt.qtbot import QtBot
 from screenapp.model import edits
 from screenapp.model.part import CircleHole, Dimension, FixedSupport
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
-from screenapp.window.document import Document
 from screenapp.window.sheet.part_paragraph import PartParagraph
 from screenapp.window.sheet.sheet import Sheet
 from tests.model.plates import plate
-from tests.window.window_kit import pick, settle, type_into
+from tests.window.window_kit import pick, settle, shown_sheet, type_into
 
 ROW = CircleHole("h1", (10.0, 10.0), 6.0, RowPattern(4, 15.0))
 
 
 @pytest.fixture
 def sheet(qtbot: QtBot) -> Sheet:
-    made = Sheet(Document(plate(None, ROW, CircleHole("h2", (80.0, 40.0), 5.0))))
-    qtbot.addWidget(made)
-    made.resize(540, 800)
-    made.show()
-    made.activateWindow()
-    settle()
-    return made
+    return shown_sheet(qtbot, plate(None, ROW, CircleHole("h2", (80.0, 40.0), 5.0)), 800)
 
 
 def part_of(sheet: Sheet) -> PartParagraph:

@@ -12,25 +12,18 @@ from PySide6.QtWidgets import QApplication, QLineEdit
 from pytestqt.qtbot import QtBot
 
 from screenapp.model.part import StressLimit
-from screenapp.window.document import Document
 from screenapp.window.sheet.field import LINE
 from screenapp.window.sheet.rows import Cross
 from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.wall_paragraph import WallParagraph
 from tests.window.fabricate import plate
-from tests.window.window_kit import pick, settle, type_into
+from tests.window.window_kit import pick, settle, shown_sheet, type_into
 
 
 @pytest.fixture
 def sheet(qtbot: QtBot) -> Sheet:
     """The sheet of a strip with a hole."""
-    made = Sheet(Document(plate()))
-    qtbot.addWidget(made)
-    made.resize(540, 800)
-    made.show()
-    made.activateWindow()
-    settle()
-    return made
+    return shown_sheet(qtbot, plate(), 800)
 
 
 def wall(sheet: Sheet) -> WallParagraph:

@@ -22,12 +22,10 @@ from screenapp.model.part import (
 from screenapp.report.page import load_words, support_words
 from screenapp.window.board.load_marks import load_mark
 from screenapp.window.board.support_marks import support_mark
-from screenapp.window.document import Document
 from screenapp.window.sheet.held_paragraph import HeldParagraph
 from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
-from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import settle, type_into
+from tests.window.window_kit import settle, shown_sheet, type_into
 
 
 def with_load(load: object) -> Part:
@@ -39,19 +37,8 @@ def with_load(load: object) -> Part:
     )
 
 
-def shown(qtbot: QtBot, part: Part) -> Sheet:
-    """The sheet of a part."""
-    made = Sheet(Document(part))
-    qtbot.addWidget(made)
-    made.resize(540, 900)
-    made.show()
-    made.activateWindow()
-    settle()
-    return made
-
-
 def test_a_load_is_put_on_part_of_its_edge(qtbot: QtBot) -> None:
-    sheet = shown(qtbot, with_load(PressureLoad("l1", "e1", 2.0)))
+    sheet = shown_sheet(qtbot, with_load(PressureLoad("l1", "e1", 2.0)))
     paragraph = next(p for p in sheet.paragraphs if isinstance(p, LoadedParagraph))
     row = paragraph.block("k1").loads.row("l1")
     assert row.sentence.text.startswith("pressed by 2 MPa · varying · on part of it –")
@@ -74,7 +61,7 @@ def test_a_load_is_put_on_part_of_its_edge(qtbot: QtBot) -> None:
 
 def test_a_support_keeps_its_part_when_its_kind_changes(qtbot: QtBot) -> None:
     part = replace(with_load(ForceLoad("l1", "e2", 1.0, 0.0)), supports=(FixedSupport("s1", "e4"),))
-    sheet = shown(qtbot, part)
+    sheet = shown_sheet(qtbot, part)
     paragraph = next(p for p in sheet.paragraphs if isinstance(p, HeldParagraph))
     row = paragraph.list.row("s1")
     QTest.mouseClick(row.sentence.field("span"), Qt.MouseButton.LeftButton)

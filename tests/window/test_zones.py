@@ -17,7 +17,7 @@ from screenapp.window.sheet import changes
 from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.wall_paragraph import WallParagraph
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import pick, settle, texts, type_into
+from tests.window.window_kit import pick, shown_sheet, texts, type_into
 
 SHIFT = Qt.KeyboardModifier.ShiftModifier
 
@@ -161,12 +161,7 @@ def test_a_thicker_zone_is_darker_than_the_wall(on_pad: Hand) -> None:
 
 
 def _sheet(qtbot: QtBot, part: Part) -> tuple[Sheet, WallParagraph]:
-    made = Sheet(Document(part))
-    qtbot.addWidget(made)
-    made.resize(540, 900)
-    made.show()
-    made.activateWindow()
-    settle()
+    made = shown_sheet(qtbot, part)
     return made, next(p for p in made.paragraphs if isinstance(p, WallParagraph))
 
 

@@ -11,17 +11,20 @@ from typing import Any
 from PySide6.QtCore import Qt
 from PySide6.QtTest import QTest
 from PySide6.QtWidgets import QApplication, QWidget
+from pytestqt.qtbot import QtBot
 
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.part_json import screening_key
 from screenapp.model.progress import Progress, Step
 from screenapp.window.ask import Ask, Unsaved
+from screenapp.window.document import Document
 from screenapp.window.jobs import OnPass
 from screenapp.window.main_window import MainWindow
 from screenapp.window.settings import Settings
 from screenapp.window.sheet.field import Field
 from screenapp.window.sheet.sentence import Sentence
+from screenapp.window.sheet.sheet import Sheet
 from tests.window import fabricate
 
 LEFT = Qt.MouseButton.LeftButton
@@ -31,6 +34,17 @@ def made_up(part: Part, verdict: str = "holds", headline: str = "Holds, 1.04 in 
     """Findings of `fabricate.plate()` or a part like it, without arrays."""
     found = fabricate.findings(part, screening_key(part))
     return replace(found, verdict=verdict, headline=headline, reasons=(), fields=())
+
+
+def shown_sheet(qtbot: QtBot, part: Part, tall: int = 900) -> Sheet:
+    """The sheet of a part, on its own."""
+    made = Sheet(Document(part))
+    qtbot.addWidget(made)
+    made.resize(540, tall)
+    made.show()
+    made.activateWindow()
+    settle()
+    return made
 
 
 @dataclass

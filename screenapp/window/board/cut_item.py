@@ -9,27 +9,18 @@ from PySide6.QtGui import QColor, QPainter, QPen
 
 from screenapp.model.part import Cut, Part, Point
 from screenapp.window import theme
-from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
-from screenapp.window.board.screen_item import Z_PROBES, ScreenItem
+from screenapp.window.board.screen_item import Z_PROBES, ReadingsItem
 
 FLAG, NAME_AWAY = 11.0, 13.0
 """Length of the flag at each end, and how far beyond it the name stands [px]."""
 
 
-class CutsItem(ScreenItem):
+class CutsItem(ReadingsItem):
     """All cuts of the part."""
 
     def __init__(self) -> None:
         super().__init__(Z_PROBES - 1)
-        self.drawn: DrawnPart | None = None
-        self.selected: tuple[str, ...] = ()
-        self.hovered: str | None = None
-
-    def show_part(self, drawn: DrawnPart) -> None:
-        """Show this part's cuts from now on."""
-        self.drawn = drawn
-        self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """Dash-dot lines with flags to the left; `labels` paints the names."""

@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 import logging
+from collections.abc import Callable
 
 import pyqtgraph as pg
 from PySide6.QtCore import QRectF
 from PySide6.QtGui import QColor, QPainter, QTransform
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
+from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Frame
 
 log = logging.getLogger(__name__)
@@ -26,11 +28,28 @@ Z_GRID, Z_FILL, Z_FIELD, Z_MESH, Z_OUTLINE, Z_DIMENSIONS, Z_SYMBOLS, Z_PROBES, Z
 )
 
 
-class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
-    """Covers the whole view and paints in pixels, told where millimetres fall.
+def paint_in_pixels(
+    item: object, painter: QPainter, draw: Callable[[QPainter, QTransform], None]
+) -> None:
+    """Let an item paint in pixels, told where millimetres fall.
 
     An exception while painting would end the program, so it is logged and its words are painted.
     """
+    to_screen = QTransform(painter.worldTransform())
+    painter.save()
+    painter.setWorldTransform(QTransform())
+    try:
+        draw(painter, to_screen)
+    except Exception as fault:
+        log.exception("painting %s failed", type(item).__name__)
+        painter.setPen(QColor("#b3360f"))
+        painter.drawText(12, 24, f"This could not be drawn: {fault}")
+    finally:
+        painter.restore()
+
+
+class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
+    """Covers the whole view and paints in pixels, told where millimetres fall."""
 
     def __init__(self, z: int) -> None:
         super().__init__()
@@ -58,18 +77,23 @@ class ScreenItem(pg.GraphicsObject):  # type: ignore[misc]
         self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None = None
     ) -> None:
         """Paint in pixels."""
-        frame = Frame(QTransform(painter.worldTransform()))
-        painter.save()
-        painter.setWorldTransform(QTransform())
-        try:
-            self.draw(painter, frame)
-        except Exception as fault:
-            log.exception("painting %s failed", type(self).__name__)
-            painter.setPen(QColor("#b3360f"))
-            painter.drawText(12, 24, f"This could not be drawn: {fault}")
-        finally:
-            painter.restore()
+        paint_in_pixels(self, painter, lambda p, to_screen: self.draw(p, Frame(to_screen)))
 
     def _forget(self) -> None:
         self.prepareGeometryChange()
+        self.update()
+
+
+class ReadingsItem(ScreenItem):
+    """Base of what shows the part's readings: with a part, a selection and what is hovered."""
+
+    def __init__(self, z: int) -> None:
+        super().__init__(z)
+        self.drawn: DrawnPart | None = None
+        self.selected: tuple[str, ...] = ()
+        self.hovered: str | None = None
+
+    def show_part(self, drawn: DrawnPart) -> None:
+        """Show this part's readings from now on."""
+        self.drawn = drawn
         self.update()

@@ -17,7 +17,7 @@ from screenapp.window.board.frame import Floats, Frame, polygon
 from screenapp.window.board.hit_test import HitKind
 from screenapp.window.board.load_marks import load_mark
 from screenapp.window.board.marks import Mark
-from screenapp.window.board.screen_item import Z_PROBES, Z_SYMBOLS, ScreenItem
+from screenapp.window.board.screen_item import Z_PROBES, Z_SYMBOLS, ReadingsItem, ScreenItem
 from screenapp.window.board.support_marks import support_mark
 
 FARTHEST_PAN = 2000.0
@@ -143,19 +143,11 @@ class SymbolsItem(ScreenItem):
             _paint(painter, mark, colour, width)
 
 
-class ProbesItem(ScreenItem):
+class ProbesItem(ReadingsItem):
     """The places of the probes."""
 
     def __init__(self) -> None:
         super().__init__(Z_PROBES)
-        self.drawn: DrawnPart | None = None
-        self.selected: tuple[str, ...] = ()
-        self.hovered: str | None = None
-
-    def show_part(self, drawn: DrawnPart) -> None:
-        """Show this part's probes from now on."""
-        self.drawn = drawn
-        self.update()
 
     def draw(self, painter: QPainter, frame: Frame) -> None:
         """A ring with a dot."""

@@ -15,11 +15,12 @@ import numpy as np
 import pyqtgraph as pg
 from numpy.typing import NDArray
 from PySide6.QtCore import QRectF, Qt, QTimer, Signal, Slot
-from PySide6.QtGui import QBrush, QColor, QImage, QPainter, QPainterPath, QRegion, QTransform
+from PySide6.QtGui import QBrush, QImage, QPainter, QPainterPath, QRegion, QTransform
 from PySide6.QtWidgets import QStyleOptionGraphicsItem, QWidget
 
 from screenapp.report.raster import Viewport
 from screenapp.window.board.picture_jobs import Picture, PictureJob, Render, Scalars, threads
+from screenapp.window.board.screen_item import paint_in_pixels
 
 log = logging.getLogger(__name__)
 
@@ -230,17 +231,7 @@ class ViewImage(pg.GraphicsObject):  # type: ignore[misc]
         self, painter: QPainter, _option: QStyleOptionGraphicsItem, _widget: QWidget | None = None
     ) -> None:
         """Show the pictures at hand where the view now has them."""
-        to_screen = QTransform(painter.worldTransform())
-        painter.save()
-        painter.setWorldTransform(QTransform())
-        try:
-            self._show(painter, to_screen)
-        except Exception as fault:
-            log.exception("painting %s failed", type(self).__name__)
-            painter.setPen(QColor("#b3360f"))
-            painter.drawText(12, 24, f"This could not be drawn: {fault}")
-        finally:
-            painter.restore()
+        paint_in_pixels(self, painter, self._show)
 
     def _show(self, painter: QPainter, to_screen: QTransform) -> None:
         look = self._look
