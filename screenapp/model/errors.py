@@ -7,6 +7,7 @@ next; the window puts the cause in the sheet and marks the place on the board.
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
 
 
@@ -39,6 +40,24 @@ class Fault:
 
     def __str__(self) -> str:
         return f"{self.cause}: {self.mend}"
+
+
+def joined(faults: Iterable[Fault]) -> list[tuple[Fault, ...]]:
+    """Faults in their order, those that are alike together at the place of the first."""
+    groups: dict[object, list[Fault]] = {}
+    for i, fault in enumerate(faults):
+        groups.setdefault(fault.alike or i, []).append(fault)
+    return [tuple(group) for group in groups.values()]
+
+
+def causes_of(faults: Iterable[Fault]) -> list[str]:
+    """What is wrong, one sentence for each group of `joined`."""
+    return [
+        group[0].cause
+        if len(group) == 1
+        else f"{group[0].alike}: {', '.join(id_ for fault in group for id_ in fault.ids)}"
+        for group in joined(faults)
+    ]
 
 
 class ScreenappError(Exception):

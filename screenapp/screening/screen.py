@@ -26,6 +26,7 @@ from screenapp.meshing.sizing import (
     initial_sizes,
 )
 from screenapp.model.combinations import loadings
+from screenapp.model.errors import causes_of
 from screenapp.model.findings import (
     CaseFindings,
     Estimate,
@@ -244,7 +245,7 @@ def _findings(
     walls = wall_gauges(part, shape, last.mesh)
     verdict, headline, reasons = overall(limits)
     area = shape.area
-    cautions = [fault.cause for fault in faults_of(part) if not fault.blocks]
+    cautions = causes_of(fault for fault in faults_of(part) if not fault.blocks)
     if part.mesh.element == "quad4":
         said = loss_text(plain, {case.id: case.name for case in loadings(part)})
         cautions.append(

@@ -8,7 +8,7 @@ from PySide6.QtCore import Qt
 from PySide6.QtGui import QFont, QPainter, QPaintEvent, QPen
 from PySide6.QtWidgets import QHBoxLayout, QLabel, QVBoxLayout, QWidget
 
-from screenapp.model.errors import Fault
+from screenapp.model.errors import Fault, joined
 from screenapp.model.part import DisplayUnits
 from screenapp.model.restated import restated
 from screenapp.window import theme
@@ -86,7 +86,7 @@ class Paragraph(QWidget):
         self.missing.set(*missing)
         self.missing.setVisible(bool(missing))
         units = self.document.part.display_units
-        groups = enumerate(_alike(shown))
+        groups = enumerate(joined(shown))
         self._faults.set([self._fault_row(f"fault {i}", group, units) for i, group in groups])
         blocked = any(f.blocks for f in faults)
         self.state = "open" if missing or blocked else "set"
@@ -146,11 +146,3 @@ class Paragraph(QWidget):
         painter = QPainter(self)
         painter.setPen(QPen(theme.colour("faint"), 1))
         painter.drawLine(0, self.height() - 1, self.width(), self.height() - 1)
-
-
-def _alike(faults: list[Fault]) -> list[tuple[Fault, ...]]:
-    """Faults in their order, those that share a sentence together at the place of the first."""
-    groups: dict[object, list[Fault]] = {}
-    for i, fault in enumerate(faults):
-        groups.setdefault(fault.alike or i, []).append(fault)
-    return [tuple(group) for group in groups.values()]

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from screenapp.model.errors import causes_of
 from screenapp.model.findings import Findings, LimitFindings
 from screenapp.window.sheet.field import capital
 from screenapp.window.sheet.limits_table import LimitsTable
@@ -49,7 +50,7 @@ class VerdictParagraph(Paragraph):
 
     def _cautions(self, findings: Findings) -> list[str]:
         """The cautions, those that the paragraphs above tell counted alone."""
-        told = {fault.cause for fault in self.document.faults}
+        told = set(causes_of(self.document.faults))
         new = [f"{capital(c)}." for c in findings.cautions if c not in told]
         above = len(findings.cautions) - len(new)
         if above:
