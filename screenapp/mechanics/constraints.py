@@ -8,7 +8,8 @@ definite however the rollers lean.
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, replace
+from collections.abc import Mapping
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -19,9 +20,11 @@ from screenapp.mechanics.places import misplaced, outward, side_tangents, sides_
 from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.errors import Fault, InvalidPartError, SolvingError
+from screenapp.model.members import bolt_holes
 from screenapp.model.mesh import Mesh
 from screenapp.model.misfits import movements
 from screenapp.model.part import (
+    BoltSupport,
     ElasticSupport,
     FixedSupport,
     Part,
@@ -32,6 +35,7 @@ from screenapp.model.part import (
     SymmetrySupport,
 )
 from screenapp.model.shape import Shape
+from screenapp.model.support_records import gives_way
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -53,6 +57,8 @@ class HeldDirections:
         supports: ids of the supports.
         added: what misfits add to the values in each case [mm], (n_cases, k); None where no case
             has any.
+        bolts: holes and the nodes on their rims of each support that is a group of bolts, by its
+            index.
     """
 
     nodes: Ints
@@ -61,6 +67,7 @@ class HeldDirections:
     owners: Ints
     supports: tuple[str, ...]
     added: Floats | None = None
+    bolts: Mapping[int, tuple[tuple[str, Ints], ...]] = field(default_factory=dict)
 
     @property
     def by_case(self) -> Floats:
@@ -77,6 +84,7 @@ class HeldDirections:
             self.owners[kept],
             self.supports,
             None if self.added is None else self.added[:, kept],
+            self.bolts,
         )
 
     def of_case(self, case: int) -> HeldDirections:
@@ -107,7 +115,7 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
     tangents = side_tangents(shape, mesh)
     parts: list[tuple[Ints, Floats, Floats, Ints]] = []
     for owner, support in enumerate(part.supports):
-        if isinstance(support, ElasticSupport):
+        if gives_way(support):
             continue  # it holds nothing: see `elastic_supports`
         nodes, normals = _places_of(part, support, shape, mesh, tangents)
         for direction, value in _holds_of(support, normals):
@@ -120,6 +128,7 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
                 )
             )
     names = tuple(s.id for s in part.supports)
+    bolts = _bolts(part, shape, mesh)
     if not parts:
         return HeldDirections(
             np.zeros(0, dtype=np.int64),
@@ -127,15 +136,31 @@ def held_directions(part: Part, shape: Shape, mesh: Mesh) -> HeldDirections:
             np.zeros(0),
             np.zeros(0, dtype=np.int64),
             names,
+            bolts=bolts,
         )
     nodes, directions, values, owners = (
         np.concatenate(column) for column in zip(*parts, strict=True)
     )
-    held = _without_repeats(HeldDirections(nodes, directions, values, owners, names))
+    held = _without_repeats(HeldDirections(nodes, directions, values, owners, names, bolts=bolts))
     off = movements(part, loadings(part))
     if off is None:
         return held
     return replace(held, added=(off[:, held.owners] * held.directions).sum(axis=-1))
+
+
+def _bolts(part: Part, shape: Shape, mesh: Mesh) -> dict[int, tuple[tuple[str, Ints], ...]]:
+    """Holes and rim nodes of every group of bolts, by the index of the support."""
+    return {
+        owner: tuple(
+            (
+                hole.id,
+                np.unique(mesh.side_nodes[mesh.sides_on(shape.pieces_of(hole.id))]),
+            )
+            for hole in bolt_holes(part, support)
+        )
+        for owner, support in enumerate(part.supports)
+        if isinstance(support, BoltSupport)
+    }
 
 
 def prescribe_nodes(nodes: Ints, displacements: Floats, name: str = "nodes") -> HeldDirections:
@@ -200,7 +225,7 @@ def held_sides(part: Part, shape: Shape, mesh: Mesh) -> NDArray[np.bool_]:
     normals = outward(tangents)
     out = np.zeros((len(mesh.sides), 2), dtype=bool)
     for support in part.supports:
-        if isinstance(support, ElasticSupport):
+        if gives_way(support):
             continue  # its traction follows from the displacements
         sides = mesh.sides_on(pieces_under(part, shape, support))
         for direction, _ in _holds_of(support, normals[sides]):
@@ -272,10 +297,10 @@ def _holds_of(support: Support, normals: Floats) -> list[tuple[Floats, float]]:
     if isinstance(support, PrescribedSupport):
         wanted = ((x, support.x), (y, support.y))
         return [(axis, value) for axis, value in wanted if value is not None]
-    if isinstance(support, PinSupport | SymmetrySupport):
-        return [(normals, 0.0)]
-    if isinstance(support, ElasticSupport):
+    if isinstance(support, ElasticSupport) or gives_way(support):
         return []
+    if isinstance(support, PinSupport | SymmetrySupport | BoltSupport):
+        return [(normals, 0.0)]
     if support.angle is None:
         return [(normals, 0.0)]
     angle = math.radians(support.angle)
@@ -298,6 +323,8 @@ def _without_repeats(held: HeldDirections) -> HeldDirections:
         held.values[first],
         held.owners[first],
         held.supports,
+        held.added,
+        held.bolts,
     )
 
 

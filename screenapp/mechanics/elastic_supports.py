@@ -11,6 +11,7 @@ nothing is held.
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -23,9 +24,10 @@ from screenapp.mechanics.places import misplaced, outward, side_tangents
 from screenapp.mechanics.quadrature import gauss_line
 from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under
+from screenapp.model.members import bolt_holes
 from screenapp.model.mesh import Mesh
 from screenapp.model.misfits import movements
-from screenapp.model.part import ElasticSupport, Part
+from screenapp.model.part import BoltSupport, ElasticSupport, Part
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution
 
@@ -104,11 +106,23 @@ class Springs:
 
 def beds(part: Part, shape: Shape) -> tuple[Bed, ...]:
     """The springs of all supports that give way."""
-    return tuple(
-        Bed(owner, s.on, pieces_under(part, shape, s), s.normal, s.along)
-        for owner, s in enumerate(part.supports)
-        if isinstance(s, ElasticSupport)
-    )
+    found: list[Bed] = []
+    for owner, s in enumerate(part.supports):
+        if isinstance(s, ElasticSupport):
+            found.append(Bed(owner, s.on, pieces_under(part, shape, s), s.normal, s.along))
+        elif isinstance(s, BoltSupport) and s.stiffness is not None:
+            # a rim that moves by u along x meets ∫ k cos²θ r dθ u = π r k u
+            found += [
+                Bed(
+                    owner,
+                    hole.id,
+                    shape.pieces_of(hole.id),
+                    s.stiffness / (0.5 * math.pi * hole.diameter),
+                    0.0,
+                )
+                for hole in bolt_holes(part, s)
+            ]
+    return tuple(found)
 
 
 def springs(part: Part, shape: Shape, mesh: Mesh) -> Springs | None:

@@ -8,7 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.constraints import HeldDirections
-from screenapp.model.solution import Balance, Reaction
+from screenapp.model.solution import Balance, BoltForce, Reaction
 
 Floats = NDArray[np.float64]
 
@@ -43,7 +43,14 @@ def reactions(
         total = resultant(positions[held.nodes[mine]], shares[mine])
         if owner in beds:
             total = total + resultant(positions, beds[owner])
-        out.append(Reaction(name, float(total[0]), float(total[1]), float(total[2])))
+        bolts: tuple[BoltForce, ...] = ()
+        if owner in held.bolts:
+            nodal = np.zeros(positions.shape)
+            np.add.at(nodal, held.nodes[mine], shares[mine])
+            nodal += beds.get(owner, 0.0)
+            each = ((hole, nodal[nodes].sum(axis=0)) for hole, nodes in held.bolts[owner])
+            bolts = tuple(BoltForce(hole, float(f[0]), float(f[1])) for hole, f in each)
+        out.append(Reaction(name, float(total[0]), float(total[1]), float(total[2]), bolts))
     return tuple(out)
 
 

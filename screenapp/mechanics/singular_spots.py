@@ -23,6 +23,7 @@ from screenapp.model.curves import Curve
 from screenapp.model.edge_parts import pieces_under, point_of
 from screenapp.model.members import spread_loads, whole_id
 from screenapp.model.part import (
+    BoltSupport,
     Case,
     ElasticSupport,
     FixedSupport,
@@ -35,6 +36,7 @@ from screenapp.model.part import (
     SymmetrySupport,
 )
 from screenapp.model.shape import Shape
+from screenapp.model.support_records import gives_way
 
 Held = Literal["free", "fixed", "normal"] | float
 """How a piece of the boundary is held; a number is the angle [rad] of the one held direction."""
@@ -101,9 +103,9 @@ def _held(support: Support) -> Held:
         if support.x is None and support.y is None:
             return "free"
         return 0.0 if support.x is not None else 0.5 * math.pi
-    if isinstance(support, ElasticSupport):
+    if isinstance(support, ElasticSupport) or gives_way(support):
         return "free"  # springs give a finite traction
-    if isinstance(support, PinSupport | SymmetrySupport):
+    if isinstance(support, PinSupport | SymmetrySupport | BoltSupport):
         return "normal"
     return "normal" if support.angle is None else math.radians(support.angle) % math.pi
 

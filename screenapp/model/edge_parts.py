@@ -16,8 +16,9 @@ from screenapp.model.boundary_curve import BoundaryCurve
 from screenapp.model.errors import Fault, InvalidPartError
 from screenapp.model.features import Places, find, loops_of
 from screenapp.model.loop_curves import runs_clockwise
-from screenapp.model.part import Load, Part, Point, PointLoad, Support
+from screenapp.model.part import BoltSupport, Load, Part, Point, PointLoad, Support
 from screenapp.model.shape import Shape, shape_of
+from screenapp.model.support_records import stands_on
 
 Span = tuple[float | None, float | None]
 """From where to where [mm]; None is the edge's own start or end."""
@@ -95,6 +96,8 @@ def runs_backward(part: Part, edge: str) -> bool:
 
 def pieces_under(part: Part, shape: Shape, record: Support | Load) -> tuple[int, ...]:
     """Pieces of the boundary that a support or load stands on, in the direction of drawing."""
+    if isinstance(record, BoltSupport):
+        return tuple(k for on in stands_on(record) for k in shape.pieces_of(on))
     on: str = record.on  # type: ignore[union-attr]
     mine = shape.pieces_of(on)
     span = span_of(record)

@@ -17,9 +17,11 @@ from screenapp.model.features import loops_of
 from screenapp.model.hole_loops import loop_of_hole, reversed_loop
 from screenapp.model.loop_curves import edge_curves
 from screenapp.model.members import all_holes, members, patterned
+from screenapp.model.misfits import without_orphans
 from screenapp.model.part import (
     BearingLoad,
     BodyLoad,
+    BoltSupport,
     CircleHole,
     Corner,
     Edge,
@@ -28,7 +30,9 @@ from screenapp.model.part import (
     LoopHole,
     MomentLoad,
     Part,
+    PinSupport,
 )
+from screenapp.model.support_records import stands_on
 
 
 def ring_meets(part: Part, ring: Loop) -> bool:
@@ -187,7 +191,7 @@ def _rebuilt(part: Part, sources: list[_Source], outer: Ring, inner: list[Ring])
 
 
 def _without_loose_pins(part: Part) -> Outcome:
-    """The part without pins' forces on holes that are no longer round."""
+    """The part without pins, bolts and their forces in holes that are no longer round."""
     round_ = {h.id for h in (*part.holes, *all_holes(part)) if isinstance(h, CircleHole)}
     lost: list[str] = []
     cases = []
@@ -197,12 +201,25 @@ def _without_loose_pins(part: Part) -> Outcome:
         ]
         lost += [f"load {x.id} on {x.on} (case “{case.name}”)" for x in loose]
         cases.append(replace(case, loads=tuple(x for x in case.loads if x not in loose)))
-    return Outcome(replace(part, cases=tuple(cases)) if lost else part, tuple(lost))
+    held = []
+    for support in part.supports:
+        loose_holes = {on for on in stands_on(support) if on not in round_}
+        if not isinstance(support, PinSupport | BoltSupport) or not loose_holes:
+            held.append(support)
+            continue
+        lost.append(f"support {support.id} on {' and '.join(sorted(loose_holes))}")
+        kept = tuple(on for on in stands_on(support) if on in round_)
+        if isinstance(support, BoltSupport) and kept:
+            held.append(replace(support, on=kept[0], also=kept[1:]))
+    if not lost:
+        return Outcome(part)
+    now, orphans = without_orphans(replace(part, cases=tuple(cases), supports=tuple(held)))
+    return Outcome(now, (*lost, *orphans))
 
 
 def _stood_on(part: Part) -> set[str]:
     loads = (x for c in part.cases for x in c.loads if not isinstance(x, BodyLoad))
-    return {s.on for s in part.supports} | {load.on for load in loads}
+    return {on for s in part.supports for on in stands_on(s)} | {load.on for load in loads}
 
 
 def _places(part: Part) -> set[str]:

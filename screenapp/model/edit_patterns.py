@@ -11,6 +11,7 @@ from screenapp.model.edit_rules import EditError, Outcome, must_find, new_ids, s
 from screenapp.model.members import Shareable, member_ids, members, patterned, shared, whole_id
 from screenapp.model.part import (
     BodyLoad,
+    BoltSupport,
     Case,
     CircleHole,
     Hole,
@@ -22,6 +23,7 @@ from screenapp.model.part import (
 )
 from screenapp.model.pattern import Pattern
 from screenapp.model.pattern_faults import COUNTS
+from screenapp.model.support_records import stands_on
 
 
 def set_pattern(part: Part, hole: str, pattern: Pattern | None) -> Outcome:
@@ -90,6 +92,12 @@ def _spread(part: Part, hole: Hole, ids: list[str]) -> Part:
     supports: list[Support] = []
     became: dict[str, list[str]] = {}
     for support in part.supports:
+        if isinstance(support, BoltSupport) and hole.id in stands_on(support):
+            first, *others = [
+                each for on in stands_on(support) for each in (ids if on == hole.id else [on])
+            ]
+            supports.append(replace(support, on=first, also=tuple(others)))
+            continue
         if support.on != hole.id:
             supports.append(support)
             continue

@@ -8,12 +8,13 @@ from dataclasses import replace
 from screenapp.model.edit_rules import Outcome, must_find
 from screenapp.model.members import member_ids
 from screenapp.model.misfits import without_orphans
-from screenapp.model.part import BodyLoad, JointLimit, LoopHole, Part
+from screenapp.model.part import BodyLoad, BoltSupport, JointLimit, LoopHole, Part, Support
+from screenapp.model.support_records import stands_on
 
 
 def moved_references(part: Part, to: Mapping[str, str]) -> Part:
     """Supports, loads and limits on the keys of `to` put on its values; the places stay."""
-    supports = tuple(replace(s, on=to[s.on]) if s.on in to else s for s in part.supports)
+    supports = tuple(_moved(s, to) for s in part.supports)
     cases = tuple(
         replace(
             case,
@@ -31,15 +32,34 @@ def moved_references(part: Part, to: Mapping[str, str]) -> Part:
     return replace(part, supports=supports, cases=cases, limits=limits)
 
 
+def _moved(support: Support, to: Mapping[str, str]) -> Support:
+    if not any(on in to for on in stands_on(support)):
+        return support
+    first, *others = dict.fromkeys(to.get(on, on) for on in stands_on(support))
+    if isinstance(support, BoltSupport):
+        return replace(support, on=first, also=tuple(others))
+    return replace(support, on=first)
+
+
+def _left(support: Support, places: Collection[str]) -> Support | None:
+    """What is left of a support when places go; None if nothing is."""
+    kept = tuple(on for on in stands_on(support) if on not in places)
+    if not isinstance(support, BoltSupport):
+        return support if kept else None
+    return replace(support, on=kept[0], also=kept[1:]) if kept else None
+
+
 def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
     """Remove the supports, loads and limits on any of the places, not the places themselves."""
     lost: list[str] = []
     supports = []
     for support in part.supports:
-        if support.on in places:
-            lost.append(f"support {support.id} on {support.on}")
-        else:
-            supports.append(support)
+        left = _left(support, places)
+        if left is not None:
+            supports.append(left)
+        if left != support:
+            gone_from = [on for on in stands_on(support) if on in places]
+            lost.append(f"support {support.id} on {' and '.join(gone_from)}")
     cases = []
     for case in part.cases:
         gone = [x for x in case.loads if not isinstance(x, BodyLoad) and x.on in places]
@@ -51,9 +71,9 @@ def drop_from_places(part: Part, places: Collection[str]) -> Outcome:
     limits = tuple(g for g in part.limits if g not in gone_limits)
     if not lost:
         return Outcome(part)
-    left = replace(part, supports=tuple(supports), cases=tuple(cases), limits=limits)
-    left, orphans = without_orphans(left)
-    return Outcome(left, (*lost, *orphans))
+    now = replace(part, supports=tuple(supports), cases=tuple(cases), limits=limits)
+    now, orphans = without_orphans(now)
+    return Outcome(now, (*lost, *orphans))
 
 
 def remove_outline(part: Part) -> Outcome:

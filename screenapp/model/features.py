@@ -33,6 +33,7 @@ from screenapp.model.part import (
     Zone,
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
+from screenapp.model.support_records import stands_on
 
 Kind = Literal[
     "corner",
@@ -175,7 +176,7 @@ def places_of(part: Part) -> Places:
 
     Of two things with one id the first counts; those of a zone are not on the boundary.
     """
-    wanted = {s.on for s in part.supports}
+    wanted = {on for s in part.supports for on in stands_on(s)}
     wanted |= {x.on for c in part.cases for x in c.loads if not isinstance(x, BodyLoad)}
     places: Places = {}
     if not wanted:

@@ -20,6 +20,7 @@ KindName = Literal[
     "stress",
     "line_load",
     "bed_stiffness",
+    "spring_stiffness",
     "angle",
     "acceleration",
     "density",
@@ -94,6 +95,13 @@ KINDS: dict[KindName, Kind] = {
         ("N/mm²", _ONE),
         ("lbf/in²", _POUND_FORCE / _INCH**2),
         "50 N/mm²",
+    ),
+    "spring_stiffness": Kind(
+        "a stiffness",
+        "N/mm",
+        ("kN/mm", Fraction(1000)),
+        ("lbf/in", _POUND_FORCE / _INCH),
+        "50 kN/mm",
     ),
     "angle": Kind(
         "an angle",

@@ -11,6 +11,7 @@ from functools import lru_cache
 
 from screenapp.model.part import (
     BearingLoad,
+    BoltSupport,
     Case,
     CircleHole,
     ForceLoad,
@@ -23,6 +24,7 @@ from screenapp.model.part import (
     SlotHole,
 )
 from screenapp.model.pattern import stations
+from screenapp.model.support_records import stands_on
 
 
 def whole_id(id_: str) -> str:
@@ -65,6 +67,19 @@ def patterned(hole: object) -> bool:
 def member_ids(hole: Hole) -> tuple[str, ...]:
     """Ids of a pattern's members; none for a hole without one."""
     return tuple(m.id for m in members(hole)) if patterned(hole) else ()
+
+
+def bolt_holes(part: Part, support: BoltSupport) -> tuple[CircleHole, ...]:
+    """The round holes that a group of bolts is in, patterns unfolded."""
+    wanted = stands_on(support)
+    return tuple(
+        member
+        for id_ in wanted
+        for hole in part.holes
+        if hole.id == whole_id(id_)
+        for member in members(hole)
+        if isinstance(member, CircleHole) and id_ in (hole.id, member.id)
+    )
 
 
 def spread_loads(part: Part, case: Case) -> tuple[Load, ...]:

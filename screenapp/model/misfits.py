@@ -10,10 +10,11 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.model.errors import Fault
-from screenapp.model.part import Case, ElasticSupport, MisfitLoad, Part, SymmetrySupport
+from screenapp.model.part import Case, MisfitLoad, Part, SymmetrySupport
 from screenapp.model.rigid_motions import Held, held_by
 from screenapp.model.shape import Shape
 from screenapp.model.support_faults import clash
+from screenapp.model.support_records import gives_way
 
 Floats = NDArray[np.float64]
 
@@ -105,7 +106,7 @@ def misfit_faults_of_case(part: Part, case: Case, shape: Shape) -> Iterator[Faul
                 where[support.id],
                 named,
             )
-    rigid = [k for k, s in enumerate(part.supports) if not isinstance(s, ElasticSupport)]
+    rigid = [k for k, s in enumerate(part.supports) if not gives_way(s)]
     for a in rigid:
         for b in rigid:
             one, other = part.supports[a].id, part.supports[b].id

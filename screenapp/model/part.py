@@ -95,6 +95,9 @@ from screenapp.model.material_records import (
 )
 from screenapp.model.pattern import Pattern
 from screenapp.model.support_records import (
+    BoltSupport as BoltSupport,
+)
+from screenapp.model.support_records import (
     ElasticSupport as ElasticSupport,
 )
 from screenapp.model.support_records import (

@@ -14,6 +14,7 @@ from typing import Any, TypeVar
 
 from screenapp.model.part import (
     BearingLoad,
+    BoltSupport,
     Case,
     CircleHole,
     Combination,
@@ -72,6 +73,7 @@ SUPPORTS: dict[str, type] = {
     "pin": PinSupport,
     "symmetry": SymmetrySupport,
     "elastic": ElasticSupport,
+    "bolts": BoltSupport,
 }
 LOADS: dict[str, type] = {
     "pressure": PressureLoad,
@@ -187,7 +189,7 @@ def _tree(record: Any) -> Tree:
     tree: Tree = {"kind": KIND_OF[type(record)]} if isinstance(record, Pattern) else {}
     for name in FORMS[type(record)]:
         value = getattr(record, name)
-        tree[name] = list(value) if isinstance(value, tuple) else value
+        tree[name] = (list(value) or None) if isinstance(value, tuple) else value
         if name == "id" and type(record) in KIND_OF:
             tree["kind"] = KIND_OF[type(record)]
     return tree
@@ -309,5 +311,7 @@ def _record(cls: type[Record], tree: Tree) -> Record:
             value = (float(value[0]), float(value[1]))
         elif form == "whole":
             value = int(value)
+        elif isinstance(value, list):
+            value = tuple(value)
         values[name] = value
     return cls(**values)

@@ -26,6 +26,7 @@ from screenapp.model.json_writer import json_text
 from screenapp.model.part import Part
 from screenapp.model.result_reading import FORMAT, VERSION, findings_from_record
 from screenapp.model.result_values import estimate_tree, finite, point_tree
+from screenapp.model.solution import Reaction
 
 __all__ = ["findings_from_record", "findings_to_record", "record_to_text", "write_record_json"]
 
@@ -72,6 +73,18 @@ def write_record_json(record: Tree, path: Path) -> None:
     write_atomically(path, record_to_text(record).encode("utf-8"))
 
 
+def _reaction(reaction: Reaction) -> Tree:
+    tree: Tree = {
+        "support": reaction.support,
+        "x": float(reaction.x),
+        "y": float(reaction.y),
+        "moment": float(reaction.moment),
+    }
+    if reaction.bolts:
+        tree["bolts"] = [{"on": b.on, "x": float(b.x), "y": float(b.y)} for b in reaction.bolts]
+    return tree
+
+
 def _case(case: CaseFindings) -> Tree:
     return {
         "id": case.case,
@@ -88,10 +101,7 @@ def _case(case: CaseFindings) -> Tree:
             }
             for r in case.loads
         ],
-        "reactions": [
-            {"support": r.support, "x": float(r.x), "y": float(r.y), "moment": float(r.moment)}
-            for r in case.reactions
-        ],
+        "reactions": [_reaction(r) for r in case.reactions],
         "balance": {
             "force": finite(case.balance.force),
             "moment": finite(case.balance.moment),

@@ -22,7 +22,7 @@ from screenapp.model.findings import (
 )
 from screenapp.model.hand_check_json import hand_check_of
 from screenapp.model.result_values import estimate_of, number_of, point_of
-from screenapp.model.solution import Balance, LoadResultant, Reaction
+from screenapp.model.solution import Balance, BoltForce, LoadResultant, Reaction
 
 FORMAT = "screenapp result"
 VERSION = 1
@@ -73,7 +73,13 @@ def _case_of(tree: Tree) -> CaseFindings:
         displacement_at=point_of(tree["displacement_max"]["at"]),
         applied=(float(applied["x"]), float(applied["y"]), float(applied["moment"])),
         reactions=tuple(
-            Reaction(r["support"], float(r["x"]), float(r["y"]), float(r["moment"]))
+            Reaction(
+                r["support"],
+                float(r["x"]),
+                float(r["y"]),
+                float(r["moment"]),
+                tuple(BoltForce(b["on"], float(b["x"]), float(b["y"])) for b in r.get("bolts", ())),
+            )
             for r in tree["reactions"]
         ),
         balance=Balance(number_of(balance["force"]), number_of(balance["moment"])),

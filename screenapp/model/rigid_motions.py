@@ -16,6 +16,7 @@ from numpy.typing import NDArray
 
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.part import (
+    BoltSupport,
     ElasticSupport,
     FixedSupport,
     Part,
@@ -83,7 +84,7 @@ def held_by(part: Part, support: Support, shape: Shape) -> Held:
     parts: list[tuple[Floats, float]] = []
     if isinstance(support, FixedSupport):
         parts = [(x, 0.0), (y, 0.0)]
-    elif isinstance(support, PinSupport | SymmetrySupport):
+    elif isinstance(support, PinSupport | SymmetrySupport | BoltSupport):
         parts = [(normals, 0.0)]  # a pin as if it touched all round
     elif isinstance(support, RollerSupport):
         if support.angle is None:

@@ -17,13 +17,24 @@ Floats = NDArray[np.float64]
 
 
 @dataclass(frozen=True)
+class BoltForce:
+    """What the bolt in the hole `on` gives: force `x`, `y` [N]."""
+
+    on: str
+    x: float
+    y: float
+
+
+@dataclass(frozen=True)
 class Reaction:
-    """What one support gives: force `x`, `y` [N] and moment about the origin [N·mm]."""
+    """What one support gives: force `x`, `y` [N] and moment about the origin [N·mm]; `bolts` are
+    its shares where it is a group of bolts."""
 
     support: str
     x: float
     y: float
     moment: float
+    bolts: tuple[BoltForce, ...] = ()
 
 
 @dataclass(frozen=True)

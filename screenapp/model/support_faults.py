@@ -10,7 +10,9 @@ import numpy as np
 from screenapp.model.edge_parts import span_faults
 from screenapp.model.errors import Fault
 from screenapp.model.features import Places, edges_at, loops_of
+from screenapp.model.members import whole_id
 from screenapp.model.part import (
+    BoltSupport,
     CircleHole,
     Corner,
     Edge,
@@ -26,9 +28,11 @@ from screenapp.model.part import (
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
 from screenapp.model.size_faults import finite_point
+from screenapp.model.support_records import gives_way, stands_on
 
 STIFFEST = 1e9
-"""No bed of springs may be stiffer [N/mm²]: thousands of times what a wall of metal is."""
+"""No bed of springs may be stiffer [N/mm²], no bolt [N/mm]: thousands of times what a wall of metal
+is."""
 
 _WAYS = {"normal": "across", "along": "along"}
 
@@ -107,6 +111,9 @@ def one_support_faults(
     if fault is not None:
         yield _with_ids(fault, support.id, support.on)
         return
+    if isinstance(support, BoltSupport):
+        yield from _bolt_faults(part, support, places, shape)
+        return
     yield from span_faults(support, name, where, places, shape)
     on_corner = places[support.on].kind == "corner"
     if isinstance(support, SymmetrySupport):
@@ -169,6 +176,41 @@ def one_support_faults(
                 )
 
 
+def _bolt_faults(
+    part: Part, support: BoltSupport, places: Places, shape: Shape | None
+) -> Iterator[Fault]:
+    where, name = f"supports.{support.id}", f"support {support.id}"
+    seen: set[str] = set()
+    for number, on in enumerate(stands_on(support)):
+        field = f"{where}.{'also' if number else 'on'}"
+        fault = place_fault(part, name, on, field, places, shape)
+        if fault is not None:
+            yield _with_ids(fault, support.id, on)
+        elif not isinstance(places[on].record, CircleHole):
+            yield Fault(
+                f"{name} has a bolt in {places[on].kind} {on}",
+                "choose round holes only, or hold the place in another way",
+                field,
+                (support.id, on),
+            )
+        elif on in seen or whole_id(on) in seen:
+            yield Fault(
+                f"{name} has hole {on} twice",
+                "leave it out once",
+                field,
+                (support.id, on),
+            )
+        seen.add(on)
+    stiffness = support.stiffness
+    if stiffness is not None and not (math.isfinite(stiffness) and 0.0 < stiffness <= STIFFEST):
+        yield Fault(
+            f"the stiffness of the bolts of {name} is {stiffness:g} N/mm",
+            "give a stiffness above zero, or leave it out for rigid bolts",
+            f"{where}.stiffness",
+            (support.id,),
+        )
+
+
 def _elastic_faults(
     support: ElasticSupport, name: str, where: str, on_corner: bool
 ) -> Iterator[Fault]:
@@ -212,7 +254,7 @@ def _contradictions(part: Part, shape: Shape) -> Iterator[Fault]:
     moving = [k for k, s in enumerate(part.supports) if isinstance(s, PrescribedSupport)]
     for a in moving:
         for b in range(len(held)):
-            if isinstance(part.supports[b], ElasticSupport):
+            if gives_way(part.supports[b]):
                 continue  # springs give way
             if b == a or (b in moving and b < a):
                 continue

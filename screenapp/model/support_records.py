@@ -89,6 +89,44 @@ class ElasticSupport:
     end: float | None = None
 
 
+@dataclass(frozen=True)
+class BoltSupport:
+    """Bolts in round holes that hold the part together, each fitting its hole without play.
+
+    A bolt holds its rim along the radius, pushing and pulling, and lets it turn.  With a
+    `stiffness` [N/mm] its shank gives way by force over stiffness, as a bed of springs round the
+    rim; None is a rigid bolt.  The bolts' ground is one rigid thing, so that they share force and
+    moment as the part and their stiffness have it.
+
+    Attributes:
+        on: a round hole, or all of a pattern.
+        also: further holes or patterns.
+    """
+
+    id: str
+    on: str
+    also: tuple[str, ...] = ()
+    stiffness: float | None = None
+
+
 Support = (
-    FixedSupport | RollerSupport | PrescribedSupport | PinSupport | SymmetrySupport | ElasticSupport
+    FixedSupport
+    | RollerSupport
+    | PrescribedSupport
+    | PinSupport
+    | SymmetrySupport
+    | ElasticSupport
+    | BoltSupport
 )
+
+
+def stands_on(support: Support) -> tuple[str, ...]:
+    """Ids of all places that a support is on."""
+    return (support.on, *support.also) if isinstance(support, BoltSupport) else (support.on,)
+
+
+def gives_way(support: Support) -> bool:
+    """Whether it only pushes back against a movement and holds nothing exactly."""
+    if isinstance(support, BoltSupport):
+        return support.stiffness is not None
+    return isinstance(support, ElasticSupport)

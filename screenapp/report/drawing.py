@@ -12,6 +12,7 @@ from screenapp.model.curves import Curve, Segment
 from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape
+from screenapp.model.support_records import stands_on
 
 WIDTH = 720.0
 MARGIN = 48.0
@@ -120,7 +121,7 @@ def _mesh_path(findings: Findings, paper: _Paper) -> str:
 
 def _names(part: Part, shape: Shape, paper: _Paper) -> list[str]:
     """What supports and loads stand on, named where it is."""
-    held = {s.on for s in part.supports}
+    held = {on for s in part.supports for on in stands_on(s)}
     loaded = {load.on for case in part.cases for load in case.loads if hasattr(load, "on")}
     out: list[str] = []
     for feature in sorted(held | loaded):

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from base64 import b64encode
 from collections.abc import Sequence
 from datetime import datetime
@@ -19,6 +20,7 @@ from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
 from screenapp.model.part import (
     BodyLoad,
+    BoltSupport,
     DisplayUnits,
     ElasticSupport,
     LineLoad,
@@ -31,6 +33,7 @@ from screenapp.model.part import (
     TemperatureLoad,
 )
 from screenapp.model.regions import shape_with_zones
+from screenapp.model.support_records import stands_on
 from screenapp.model.units import format_quantity
 from screenapp.report.balance_rows import balance_heads, balance_rows
 from screenapp.report.cut_svg import cut_svg
@@ -83,6 +86,7 @@ def record_page(
         share=share_text,
         load_words=load_words,
         support_words=support_words,
+        bolt_size=lambda b: math.hypot(b.x, b.y),
         hole_words=hole_words,
         rings=rings(part),
         ring_rows=ring_rows,
@@ -199,6 +203,12 @@ def support_words(support: Support) -> str:
         ways = (("across", support.normal), ("along", support.along))
         given = [f"{v:g} N/mm² {way} it" for way, v in ways if v]
         return f"{on} is held by springs of {' and '.join(given)}"
+    if isinstance(support, BoltSupport):
+        holes = " and ".join(stands_on(support))
+        bolts = "rigid bolts"
+        if support.stiffness is not None:
+            bolts = f"bolts of {support.stiffness / 1000.0:g} kN/mm each"
+        return f"{holes}: held by {bolts}, without play, on one rigid ground"
     if kind == "PinSupport":
         return f"{on} sits on a rigid pin without play or friction that only pushes"
     if kind == "RollerSupport":

@@ -11,9 +11,10 @@ from screenapp.model.estimate_text import plain
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings
 from screenapp.model.hole_distances import HoleDistances, hole_distances
 from screenapp.model.joint_rules import ABSENT, JointRules, joint_rules
-from screenapp.model.members import all_holes, patterned, shared, spread_loads, whole_id
+from screenapp.model.members import all_holes, bolt_holes, patterned, shared, spread_loads, whole_id
 from screenapp.model.part import (
     BearingLoad,
+    BoltSupport,
     Case,
     CircleHole,
     ForceLoad,
@@ -24,6 +25,7 @@ from screenapp.model.part import (
     Point,
 )
 from screenapp.model.shape import Shape
+from screenapp.model.solution import BoltForce, Reaction
 from screenapp.screening.passes import Pass
 from screenapp.screening.trust import Sample, judge
 from screenapp.screening.use import exact, scaled, verdict_on
@@ -86,9 +88,15 @@ def hole_force(
     case = loadings(part)[k]
     loads = [load for load in _loads(part, case) if load.on == hole.id]
     x, y = sum(load.x for load in loads), sum(load.y for load in loads)
-    supports = {s.id for s in part.supports if s.on == hole.id}
     whole = whole_id(hole.id)
-    if whole != hole.id and any(s.on == whole for s in part.supports):
+    bolted = {s.id for s in part.supports if isinstance(s, BoltSupport)}
+    supports = {s.id for s in part.supports if s.on == hole.id and s.id not in bolted}
+    supports |= {
+        s.id
+        for s in part.supports
+        if isinstance(s, BoltSupport) and any(h.id == hole.id for h in bolt_holes(part, s))
+    }
+    if whole != hole.id and any(s.on == whole and s.id not in bolted for s in part.supports):
         return None
     if not supports:
         return HoleForce(exact(math.hypot(x, y)), x, y, "from the loads")
@@ -96,7 +104,10 @@ def hole_force(
         return None
     forces: list[Point] = []
     for this in passes:
-        given = [r for r in this.fields.solution.reactions[k] if r.support in supports]
+        given: list[Reaction | BoltForce] = []
+        for r in this.fields.solution.reactions[k]:
+            if r.support in supports:
+                given += [b for b in r.bolts if b.on == hole.id] if r.bolts else [r]
         forces.append((x + sum(r.x for r in given), y + sum(r.y for r in given)))
     fx, fy = forces[-1]
     size = math.hypot(fx, fy)

@@ -9,6 +9,7 @@ from hypothesis import strategies as st
 
 from screenapp.model.part import (
     BearingLoad,
+    BoltSupport,
     Case,
     CircleHole,
     Combination,
@@ -106,6 +107,7 @@ def _supports(i: int) -> st.SearchStrategy[object]:
         st.builds(PinSupport, name, on),
         st.builds(SymmetrySupport, name, on, maybe, maybe),
         st.builds(ElasticSupport, name, on, numbers, numbers, maybe, maybe),
+        st.builds(BoltSupport, name, on, st.sampled_from([(), ("h1",), ("h2.1-3", "gone")]), maybe),
         st.builds(RollerSupport, name, on, maybe, maybe, maybe),
         st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )

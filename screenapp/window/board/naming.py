@@ -9,6 +9,7 @@ from screenapp.model.errors import Fault
 from screenapp.model.features import Found, find, name_of, place_name
 from screenapp.model.part import (
     BearingLoad,
+    BoltSupport,
     CircleHole,
     Corner,
     DisplayUnits,
@@ -114,6 +115,12 @@ def _held(record: Support, units: DisplayUnits) -> str:
         return "is a line of symmetry"
     if isinstance(record, ElasticSupport):
         return f"is held by springs, {spring_words(record, units)}"
+    if isinstance(record, BoltSupport):
+        more = f" with {' and '.join(record.also)}" if record.also else ""
+        if record.stiffness is None:
+            return f"is held by rigid bolts{more}"
+        each = format_quantity(record.stiffness, "spring_stiffness", units)
+        return f"is held by bolts of {each}{more}"
     if isinstance(record, PinSupport):
         return "sits on a pin that only pushes"
     if isinstance(record, RollerSupport):

@@ -19,6 +19,7 @@ from screenapp.window.board.placing_kinds import (
     Record,
     Way,
     body_ways,
+    bolting_ways,
     holding_ways,
     loading_ways,
     read_back,
@@ -52,6 +53,13 @@ class Placing:
         """Begin to hold a place."""
         part = self._canvas.document.part
         self._open(f"Hold {place_name(part, on)}", holding_ways(part, on), on, near)
+
+    def hold_together(self, holes: tuple[str, ...], near: QPoint) -> bool:
+        """Begin to hold several round holes by one group of bolts; False if they are no such."""
+        part = self._canvas.document.part
+        ways = bolting_ways(part, holes)
+        self._open(f"Hold holes {', '.join(holes)}", ways, holes[0] if holes else "", near)
+        return bool(ways)
 
     def load(self, on: str, near: QPoint) -> None:
         """Begin to load a place."""

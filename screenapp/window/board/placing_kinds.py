@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from screenapp.model.features import find
@@ -11,6 +11,7 @@ from screenapp.model.kinds import KindName
 from screenapp.model.part import (
     BearingLoad,
     BodyLoad,
+    BoltSupport,
     CircleHole,
     Edge,
     ElasticSupport,
@@ -180,6 +181,13 @@ SPRINGS = Way(
     ),
     _springs,
 )
+BOLTS = Way(
+    "bolts",
+    "Bolts",
+    "A bolt in each hole: they share force and moment, and the force in each is told.",
+    (EntryField("stiffness", "each gives way by", "spring_stiffness", (), "rigid"),),
+    lambda id_, on, values: BoltSupport(id_, on, (), values.get("stiffness")),
+)
 CORNER_ROLLER = Way(
     "roller",
     "Roller",
@@ -318,10 +326,23 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     if found.kind == "corner":
         return FIXED, CORNER_ROLLER, MOVED
     if isinstance(found.record, CircleHole):
-        return FIXED, PIN, PUSHING_PIN, SPRINGS, MOVED
+        return FIXED, PIN, PUSHING_PIN, BOLTS, SPRINGS, MOVED
     if isinstance(found.record, Edge) and found.record.through is None:
         return FIXED, ROLLER, SYMMETRY, SPRINGS, MOVED
     return FIXED, (PIN if found.kind == "hole" else ROLLER), SPRINGS, MOVED
+
+
+def bolting_ways(part: Part, holes: Sequence[str]) -> tuple[Way, ...]:
+    """How several round holes may be held together; nothing where one of them is not round."""
+    found = [find(part, on) for on in holes]
+    if len(holes) < 2 or not all(f and isinstance(f.record, CircleHole) for f in found):
+        return ()
+    also = tuple(holes[1:])
+
+    def make(id_: str, on: str, values: Values) -> Support:
+        return BoltSupport(id_, on, also, values.get("stiffness"))
+
+    return (replace(BOLTS, make=make),)
 
 
 def loading_ways(part: Part, on: str, along: float | None = None) -> tuple[Way, ...]:
@@ -365,6 +386,8 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         return "pushing", {}
     if isinstance(record, RollerSupport):
         return "roller", {} if record.angle is None else {"angle": record.angle}
+    if isinstance(record, BoltSupport):
+        return "bolts", {} if record.stiffness is None else {"stiffness": record.stiffness}
     if isinstance(record, ElasticSupport):
         ways = {"normal": record.normal, "along": record.along}
         return "springs", {k: v for k, v in ways.items() if v}
@@ -397,7 +420,7 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
     return keys[type(record)], {"x": record.x, "y": record.y}
 
 
-REST = ("start", "end", "end_pressure", "end_x", "end_y")
+REST = ("start", "end", "also", "end_pressure", "end_x", "end_y")
 """Fields that the popover does not show: the sheet has them."""
 
 

@@ -8,6 +8,7 @@ import numpy as np
 
 from screenapp.model.edge_parts import Span, span_of
 from screenapp.model.part import (
+    BoltSupport,
     ElasticSupport,
     FixedSupport,
     PinSupport,
@@ -47,6 +48,8 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
         _pin(mark, at, radius_px(drawn, frame, support.on))
     elif isinstance(support, ElasticSupport):
         _sprung(mark, drawn, frame, support)
+    elif isinstance(support, BoltSupport):
+        _bolted(mark, at, radius_px(drawn, frame, support.on), support.stiffness is not None)
     elif isinstance(support, RollerSupport):
         _rolling(mark, drawn, frame, support, at, out)
     else:
@@ -145,6 +148,20 @@ def _sprung(mark: Mark, drawn: DrawnPart, frame: Frame, support: ElasticSupport)
             mark.line(*_coil(start, along, out, 14.0))
             end = start + 14.0 * along
             mark.line(end - 4.0 * out, end + 4.0 * out)
+
+
+def _bolted(mark: Mark, at: Floats, radius: float, soft: bool) -> None:
+    """The head of a bolt, with its shank; one that gives way stands on a spring."""
+    size = max(min(0.7 * radius, 11.0), 4.0)
+    turn = np.arange(7) * math.pi / 3.0
+    mark.lines.append(at + size * np.stack([np.cos(turn), np.sin(turn)], axis=-1))
+    mark.circle(at, 0.55 * size)
+    foot = at + (size + 1.0) * DOWN
+    side = np.array([1.0, 0.0])
+    if soft:
+        mark.line(*_coil(foot, DOWN, side, 14.0))
+        foot = foot + 14.0 * DOWN
+    _ground(mark, foot, DOWN, side)
 
 
 def _coil(at: Floats, way: Floats, side: Floats, long: float) -> list[Floats]:

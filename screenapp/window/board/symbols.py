@@ -11,6 +11,7 @@ from PySide6.QtGui import QColor, QPainter, QPen
 from screenapp.model.combinations import loadings
 from screenapp.model.part import BearingLoad, BodyLoad, ForceLoad, Load, Support
 from screenapp.model.shape import BoundaryCurve
+from screenapp.model.support_records import stands_on
 from screenapp.window import theme
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame, polygon
@@ -25,8 +26,8 @@ FARTHEST_PAN = 2000.0
 
 
 def support_marks(drawn: DrawnPart, frame: Frame, support: Support) -> list[Mark]:
-    """The symbol of a support, or one on each hole of a pattern."""
-    places = drawn.members_of(support.on) or (support.on,)
+    """The symbol of a support, or one on each hole of a pattern or a group."""
+    places = [each for on in stands_on(support) for each in drawn.members_of(on) or (on,)]
     marks = [support_mark(drawn, frame, replace(support, on=on)) for on in places]
     for mark in marks[1:]:
         mark.label = ""
@@ -44,6 +45,13 @@ def load_marks(drawn: DrawnPart, frame: Frame, load: Load) -> list[Mark]:
     for mark in marks[1:]:
         mark.label = ""
     return marks
+
+
+def _places(record: Support | Load) -> tuple[str, ...]:
+    """Ids of what a support or load is on."""
+    if isinstance(record, Support):
+        return stands_on(record)
+    return () if isinstance(record, BodyLoad) else (record.on,)
 
 
 @dataclass(frozen=True)
@@ -94,8 +102,7 @@ class SymbolsItem(ScreenItem):
         before, self._kept = self._kept, {}
         marks: list[Mark] = []
         for record in records:
-            on = "" if isinstance(record, BodyLoad) else record.on
-            pieces = drawn.pieces_of(on) if on else ()
+            pieces = tuple(piece for on in _places(record) for piece in drawn.pieces_of(on))
             key = id(record), part.display_units
             kept = before.get(key)
             if kept is None or not pieces or kept.pieces != pieces:

@@ -8,7 +8,6 @@ from screenapp.model.allowables import allowables
 from screenapp.model.combinations import loadings
 from screenapp.model.cut_figure import cut_figure
 from screenapp.model.estimate_text import estimate_text, plain, value_text
-from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings, Findings, Peak
 from screenapp.model.part import Part, StressLimit
 from screenapp.model.place_words import NAUGHT
@@ -16,18 +15,15 @@ from screenapp.window.cut_plot import CutPlot
 from screenapp.window.figure_table import Column, FigureTable, Line
 from screenapp.window.history_plot import HistoryPlot
 from screenapp.window.load_amounts import together_id
-from screenapp.window.sheet.direction import direction_text
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Piece, Words
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.reaction_rows import ROUNDING, reaction_rows, three, way_text
 from screenapp.window.sheet.reasons import head_says
 from screenapp.window.sheet.rows import RowOf
 from screenapp.window.traced import Traced, figure_of, traced_number
 
 MOST_PEAKS = 8
-ROUNDING = 1e-7
-"""A reaction below this share of the force that a millimetre of the most stressed wall carries is
-rounding."""
 QUANTITIES = {"von_mises": "", "tresca": "Tresca at ", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
 HEADS = {"von_mises": "von Mises", "tresca": "Tresca", "sigma_1": "σ₁"}
 
@@ -72,7 +68,9 @@ class FindingsParagraph(Paragraph):
         self.hand.set(self._hand_rows(findings) if findings else [])
         self.cases.set([self._case_row(case) for case in findings.cases] if findings else [])
         case = _viewed(findings, document.view.case) if findings else None
-        self.reactions.set([*self._applied_rows(case), *self._reaction_rows(case)] if case else [])
+        self.reactions.set(
+            [*self._applied_rows(case), *reaction_rows(part, case, self.outdated())] if case else []
+        )
         if findings is None:
             if any(fault.blocks for fault in document.faults):
                 return ("Nothing yet: the open paragraphs above come first.",)
@@ -122,7 +120,7 @@ class FindingsParagraph(Paragraph):
                 continue
             text = (
                 f"By hand, {check.kind}, {check.place}: "
-                f"{Quantities(units).show(_three(check.formula), 'stress')} where "
+                f"{Quantities(units).show(three(check.formula), 'stress')} where "
                 f"{estimate_text(check.computed, 'stress', units)} was computed "
                 f"({signed_percent(check.difference)}). {_sentence(check.source)} "
                 f"Range: {check.valid}."
@@ -148,30 +146,9 @@ class FindingsParagraph(Paragraph):
         back = sum(math.hypot(r.x, r.y) for r in case.reactions)
         if size <= ROUNDING * back:
             return []
-        text = f"amount to {q.show(_three(size), 'force')} {_way(x, y)} in {case.name}"
+        text = f"amount to {q.show(three(size), 'force')} {way_text(x, y)} in {case.name}"
         words = Words(text, quiet=self.outdated())
         return [RowOf(together_id(case.case), ("the loads",), (words,))]
-
-    def _reaction_rows(self, case: CaseFindings) -> list[RowOf]:
-        part = self.document.part
-        q = Quantities(part.display_units)
-        rows = []
-        largest = max((abs(peak.estimate.value) for peak in case.peaks), default=0.0)
-        nothing = ROUNDING * largest * part.wall.thickness  # times a millimetre: a force [N]
-        for reaction in case.reactions:
-            found = find(part, reaction.support)
-            on = getattr(found.record, "on", "") if found else ""
-            where = place_name(part, on) if on else reaction.support
-            size = math.hypot(reaction.x, reaction.y)
-            if size < nothing:
-                text = f"carries nothing in {case.name}"
-            else:
-                way = _way(reaction.x, reaction.y)
-                text = f"gives {q.show(_three(size), 'force')} {way} in {case.name}"
-            rows.append(
-                RowOf(reaction.support, (where,), (Words(text, quiet=self.outdated()),), also=(on,))
-            )
-        return rows
 
 
 def _columns(part: Part) -> tuple[Column, ...]:
@@ -277,17 +254,3 @@ def _viewed(findings: Findings, case: int) -> CaseFindings | None:
     if not findings.cases:
         return None
     return findings.cases[min(case, len(findings.cases) - 1)]
-
-
-def _way(x: float, y: float) -> str:
-    size = math.hypot(x, y)
-    if size == 0.0:
-        return ""
-    # a component below a thousandth is nothing to a reader
-    flat = [0.0 if abs(v) < 1e-3 * size else v for v in (x, y)]
-    text = direction_text(*flat)
-    return text if not text.endswith("°") else f"at {float(text[:-1]):.0f}°"
-
-
-def _three(value: float) -> float:
-    return float(f"{value:.3g}")

@@ -5,6 +5,7 @@ from __future__ import annotations
 from screenapp.model.errors import Fault
 from screenapp.model.features import find, place_name
 from screenapp.model.part import (
+    BoltSupport,
     CircleHole,
     Corner,
     Edge,
@@ -17,7 +18,9 @@ from screenapp.model.part import (
     Support,
     SymmetrySupport,
 )
+from screenapp.model.support_records import stands_on
 from screenapp.window.sheet import changes, support_changes
+from screenapp.window.sheet.bolt_pieces import bolt_pieces
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
 from screenapp.window.sheet.places import place_choices
@@ -32,6 +35,7 @@ KINDS = (
     Choice("symmetry", "on a line of symmetry", "only one half is drawn"),
     Choice("pushing", "held by a pin that only pushes", "bears on the side that is pressed"),
     Choice("angle", "held along one direction", "slides across it"),
+    Choice("bolts", "held by bolts", "the force in each is told"),
     Choice("springs", "held by springs", "it gives way in proportion to the force"),
     Choice("moved", "moved by a given amount", "x, y or both"),
 )
@@ -87,13 +91,14 @@ class HeldParagraph(Paragraph):
             ),
             lambda: changes.remove(self.document, support.id),
             f"Remove the support at {where}",
-            (support.on,),
+            stands_on(support),
         )
 
     def _pieces(self, support: Support, where: str, q: Quantities) -> tuple[Piece | str, ...]:
         change = support_changes.SupportChange(self.document, support.id)
         texts = {c.key: c.text for c in KINDS}
-        kinds = _kinds(self.document.part, support)
+        part = self.document.part
+        kinds = _kinds(part, support)
 
         def kind(key: str) -> Value:
             return Value("kind", texts[key], f"How {where} is held", change.kind, lambda: kinds)
@@ -118,6 +123,8 @@ class HeldParagraph(Paragraph):
                 field=f"supports.{support.id}.angle",
             )
             return (kind("angle"), ", at ", angle)
+        if isinstance(support, BoltSupport):
+            return (kind("bolts"), *bolt_pieces(part, support, change, q))
         if isinstance(support, ElasticSupport):
             return (kind("springs"), *_spring_pieces(support, where, change, q))
         assert isinstance(support, PrescribedSupport)
@@ -171,9 +178,15 @@ def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
     found = find(part, support.on)
     record = found.record if found is not None else None
     if isinstance(record, Edge):
-        out = {"pin", "pushing", *(() if record.through is None else ("symmetry",))}
+        out = {"pin", "pushing", "bolts", *(() if record.through is None else ("symmetry",))}
     elif isinstance(record, CircleHole):
         out = {"normal", "symmetry"}
     else:
-        out = {"pin", "pushing", "symmetry", *(("springs",) if isinstance(record, Corner) else ())}
+        out = {
+            "pin",
+            "pushing",
+            "symmetry",
+            "bolts",
+            *(("springs",) if isinstance(record, Corner) else ()),
+        }
     return tuple(c for c in KINDS if c.key not in out)

@@ -9,6 +9,7 @@ from typing import Any
 from screenapp.model import edits
 from screenapp.model.edge_parts import span_of
 from screenapp.model.part import (
+    BoltSupport,
     ElasticSupport,
     FixedSupport,
     PinSupport,
@@ -50,13 +51,15 @@ class SupportChange:
             new = RollerSupport(old.id, old.on)
         elif kind == "pushing":
             new = PinSupport(old.id, old.on)
+        elif kind == "bolts":
+            new = BoltSupport(old.id, old.on)
         elif kind == "springs":
             new = ElasticSupport(old.id, old.on, SPRINGS, SPRINGS)
         elif kind == "angle":
             new = RollerSupport(old.id, old.on, 90.0)
         else:
             new = PrescribedSupport(old.id, old.on, 0.0, 0.0)
-        if not isinstance(new, PinSupport):
+        if not isinstance(new, PinSupport | BoltSupport):
             start, end = span_of(old)
             new = replace(new, start=start, end=end)
         self._put(f"how {old.on} is held", new)

@@ -70,9 +70,19 @@ class HoldTool(PlaceTool):
     name: ClassVar[str] = "Hold"
     key: ClassVar[str] = "H"
     line: ClassVar[str] = (
-        "Click an edge, hole or corner to hold it; with Shift all holes of a pattern."
+        "Click an edge, hole or corner to hold it; with Shift all holes of a pattern. "
+        "Several round holes selected before are held together by bolts."
     )
     icon: ClassVar[str] = "hold"
+
+    def start(self) -> None:
+        """Take up what is selected; several round holes are held together."""
+        canvas, selection = self.canvas, self.canvas.document.selection
+        at = canvas.drawn.anchor_of(selection[0]) if len(selection) > 1 else None
+        if at is None or not canvas.placing.hold_together(
+            tuple(selection), canvas.frame_now.px(at).toPoint()
+        ):
+            super().start()
 
     def open_at(self, on: str, near: QPoint) -> None:
         """Choose how it is held."""
