@@ -144,6 +144,8 @@ def internal_forces(system: System, terms: Sequence[Floats]) -> Floats:
     nodes, size = system.element_nodes, 2 * len(system.carried)
     columns = [np.ascontiguousarray(t.T) for t in terms]  # (2 n_carried, n_cases)
     out = np.zeros((size, len(terms[0])))
+    if not out.size:
+        return out.T
     unpack = np.zeros((2 * m, 2 * m), dtype=np.int64)
     upper = np.triu_indices(2 * m)
     unpack[upper] = np.arange(len(upper[0]))

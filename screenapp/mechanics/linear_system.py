@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 
 import numpy as np
@@ -107,7 +108,7 @@ def _superposition(forces: Floats, reduction: Reduction, springs: Springs | None
         acting.append(springs.off)
     columns = []
     for kind in acting:
-        flat = kind.reshape(len(forces), -1)
+        flat = kind.reshape(len(forces), math.prod(kind.shape[1:]))
         flat = flat[:, flat.any(axis=0)]
         columns.append(flat / np.abs(flat).max(initial=1e-300))
     return superpose(np.concatenate(columns, axis=1))
