@@ -3,11 +3,13 @@ gives."""
 
 from __future__ import annotations
 
+import math
 from typing import Literal
 
 from screenapp.model.findings import CaseFindings
 from screenapp.model.part import DisplayUnits
-from screenapp.model.units import format_number, unit_label
+from screenapp.model.solution import BoltForce
+from screenapp.model.units import format_number, format_quantity, unit_label
 
 ROUNDING = 1e-9
 """Share of the largest force (or moment) of a case below which another one is written as 0."""
@@ -24,28 +26,36 @@ def balance_heads(units: DisplayUnits) -> tuple[str, str, str]:
 def balance_rows(case: CaseFindings, units: DisplayUnits) -> list[tuple[str, tuple[str, ...]]]:
     """Rows of a case: whose, and its force along x and y and its moment about the origin.
 
-    A single load is the sum itself and has no row of its own, unless it is none at all.
+    A group of bolts is followed by its bolts.  A single load is the sum itself and has no row of its own, unless it is none at all.
     """
-    rows = [("loads together", case.applied)]
+    rows: list[tuple[str, tuple[float, ...]]] = [("loads together", case.applied)]
     rows += [
         (f"of which load {r.load}" + ("" if r.at else ", no force"), (r.x, r.y, r.moment))
         for r in case.loads
         if len(case.loads) > 1 or r.at is None
     ]
-    rows += [(f"support {r.support} gives", (r.x, r.y, r.moment)) for r in case.reactions]
+    for r in case.reactions:
+        rows.append((f"support {r.support} gives", (r.x, r.y, r.moment)))
+        rows += [(_bolt(b, units), (b.x, b.y)) for b in r.bolts]
     force = max(abs(value) for _whose, row in rows for value in row[:2])
-    moment = max(abs(row[2]) for _whose, row in rows)
+    moment = max(abs(row[2]) for _whose, row in rows if len(row) > 2)
     return [
         (
             whose,
             (
                 _figure(row[0], force, "force", units),
                 _figure(row[1], force, "force", units),
-                _figure(row[2], moment, "moment", units),
+                _figure(row[2], moment, "moment", units) if len(row) > 2 else "",
             ),
         )
         for whose, row in rows
     ]
+
+
+def _bolt(bolt: BoltForce, units: DisplayUnits) -> str:
+    """Which bolt of a group, and the size of its force."""
+    size = format_quantity(math.hypot(bolt.x, bolt.y), "force", units)
+    return f"its bolt in {bolt.on}, {size}"
 
 
 def _figure(

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from base64 import b64encode
 from collections.abc import Sequence
 from datetime import datetime
@@ -86,7 +85,6 @@ def record_page(
         share=share_text,
         load_words=load_words,
         support_words=support_words,
-        bolt_size=lambda b: math.hypot(b.x, b.y),
         hole_words=hole_words,
         rings=rings(part),
         ring_rows=ring_rows,

@@ -10,6 +10,7 @@ from pytestqt.qtbot import QtBot
 from screenapp.model.findings import CaseFindings, Estimate
 from screenapp.model.part import BoltSupport, CircleHole, FixedSupport
 from screenapp.model.solution import Balance, BoltForce, Reaction
+from screenapp.report.balance_rows import balance_rows
 from screenapp.report.page import support_words
 from screenapp.window.board.symbols import support_marks
 from screenapp.window.document import Document
@@ -83,3 +84,17 @@ def test_the_force_in_each_bolt_is_told() -> None:
     )
     rows = reaction_rows(part, replace(case, reactions=(many,)), False)
     assert len(rows) == 1 + MOST_BOLTS + 1
+
+
+def test_the_record_tells_each_bolt_below_its_group() -> None:
+    bolts = (BoltForce("h1", 0.0, 300.0), BoltForce("h2", -400.0, 0.0))
+    known = Estimate(10.0, 9.9, 10.1, "settled")
+    case = CaseFindings(
+        "k1", "pull", (), known, (0.0, 0.0), (400.0, -300.0, 0.0),
+        (Reaction("s1", -400.0, 300.0, 0.0, bolts),), Balance(0.0, 0.0),
+    )  # fmt: skip
+    rows = balance_rows(case, "mm-N-MPa")
+    assert rows[-2:] == [
+        ("its bolt in h1, 300 N", ("0", "300", "")),
+        ("its bolt in h2, 400 N", ("-400", "0", "")),
+    ]
