@@ -26,7 +26,8 @@ def balance_heads(units: DisplayUnits) -> tuple[str, str, str]:
 def balance_rows(case: CaseFindings, units: DisplayUnits) -> list[tuple[str, tuple[str, ...]]]:
     """Rows of a case: whose, and its force along x and y and its moment about the origin.
 
-    A group of bolts is followed by its bolts.  A single load is the sum itself and has no row of its own, unless it is none at all.
+    A single load is the sum itself and has no row of its own, unless it is none at all.  The bolts
+    of a group follow it.
     """
     rows: list[tuple[str, tuple[float, ...]]] = [("loads together", case.applied)]
     rows += [

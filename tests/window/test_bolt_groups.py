@@ -96,5 +96,5 @@ def test_the_record_tells_each_bolt_below_its_group() -> None:
     rows = balance_rows(case, "mm-N-MPa")
     assert rows[-2:] == [
         ("its bolt in h1, 300 N", ("0", "300", "")),
-        ("its bolt in h2, 400 N", ("-400", "0", "")),
+        ("its bolt in h2, 400 N", ("−400", "0", "")),
     ]
