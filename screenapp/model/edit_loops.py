@@ -96,23 +96,17 @@ def move_corner(part: Part, corner: str, to: Point) -> Part:
 
 def moved_loop(loop: Loop, to: dict[str, Point]) -> Loop:
     """The loop with some corners elsewhere; each arc follows its chord."""
-    corners = tuple(replace(c, at=to[c.id]) if c.id in to else c for c in loop.corners)
-    n = len(corners)
-    edges = tuple(
-        replace(
-            e,
-            through=_carried(
-                e.through,
-                (loop.corners[i].at, loop.corners[(i + 1) % n].at),
-                (corners[i].at, corners[(i + 1) % n].at),
-            ),
-        )
-        if e.through is not None
-        and (loop.corners[i].id in to or loop.corners[(i + 1) % n].id in to)
-        else e
-        for i, e in enumerate(loop.edges)
-    )
-    return Loop(corners, edges)
+    old, n = loop.corners, len(loop.corners)
+    moved = [i for i, c in enumerate(old) if c.id in to]
+    corners, edges = list(old), list(loop.edges)
+    for i in moved:
+        corners[i] = replace(old[i], at=to[old[i].id])
+    for i in {k % n for m in moved for k in (m - 1, m)}:  # the edges on either side
+        j = (i + 1) % n
+        if (through := edges[i].through) is not None:
+            chord, new = (old[i].at, old[j].at), (corners[i].at, corners[j].at)
+            edges[i] = replace(edges[i], through=_carried(through, chord, new))
+    return Loop(tuple(corners), tuple(edges))
 
 
 def _carried(through: Point, old: tuple[Point, Point], new: tuple[Point, Point]) -> Point:

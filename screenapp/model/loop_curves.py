@@ -89,12 +89,11 @@ def _by_edge(loop: Loop, where: str, faults: list[Fault]) -> list[Group]:
 def runs_clockwise(loop: Loop) -> bool:
     """Whether a loop was drawn clockwise, by the sign of its area before rounding."""
     at = [c.at for c in loop.corners]
-    double = 0.0
+    x, y = np.array(at, dtype=float).reshape(-1, 2).T
+    double = float(np.sum(x * np.roll(y, -1) - np.roll(x, -1) * y))
     for i, edge in enumerate(loop.edges):
-        (ax, ay), (bx, by) = at[i], at[(i + 1) % len(at)]
-        double += ax * by - bx * ay
         if edge.through is not None and isinstance(
-            arc := arc_through((ax, ay), edge.through, (bx, by)), Arc
+            arc := arc_through(at[i], edge.through, at[(i + 1) % len(at)]), Arc
         ):
             double += arc.radius**2 * (arc.sweep - math.sin(arc.sweep))
     return double < 0.0

@@ -56,7 +56,20 @@ def members(hole: Hole) -> tuple[Hole, ...]:
 
 def all_holes(part: Part) -> tuple[Hole, ...]:
     """Every hole that is cut, patterns unfolded, in the order of the part file."""
-    return tuple(member for hole in part.holes for member in members(hole))
+    global _latest
+    given, made = _latest
+    if given is not part.holes:
+        given = part.holes
+        made = tuple(member for hole in given for member in members(hole))
+        _latest = (
+            given,
+            made,
+        )  # one assignment: a thread that reads meanwhile sees the old or the new
+    return made
+
+
+_latest: tuple[tuple[Hole, ...], tuple[Hole, ...]] = ((), ())
+"""The holes last unfolded; most edits of a part keep them all, and many ask for them."""
 
 
 def patterned(hole: object) -> bool:

@@ -168,6 +168,15 @@ def shape_of(part: Part) -> Shape:
     return Shape(tuple(pieces), tuple(loops), tuple(hole_ids), tuple(corners))
 
 
+def outline_curves(outline: Loop) -> tuple[tuple[BoundaryCurve, ...], tuple[Fault, ...]]:
+    """The pieces of an outline alone, material on their left, and what does not fit in it."""
+    faults: list[Fault] = []
+    curves = loop_curves(outline, "outline", faults)
+    if curves and not faults and runs_clockwise(outline):
+        curves = [turned(c) for c in reversed(curves)]
+    return tuple(curves), tuple(faults)
+
+
 @lru_cache(maxsize=8192)
 def _rim(hole: CircleHole | SlotHole, number: int) -> list[BoundaryCurve]:
     """The rim of a hole, clockwise, empty if it is at fault; most holes stay in an edit."""

@@ -27,7 +27,7 @@ from screenapp.model.part import (
 from screenapp.model.shape import BoundaryCurve
 from screenapp.window.board.boundary_index import BoundaryIndex
 from screenapp.window.board.identity import kept_by_identity
-from screenapp.window.board.ring import Ring, hole_ring, outline_ring
+from screenapp.window.board.ring import Ring, hole_ring, hole_rings, outline_ring
 
 
 @dataclass(frozen=True, eq=False)
@@ -77,15 +77,7 @@ class DrawnPart:
     @cached_property
     def crosses(self) -> NDArray[np.float64]:
         """Centre x, y, half length, half width [mm] and angle [rad] of round holes and slots."""
-        rows = []
-        for hole in self.cut_holes:
-            if isinstance(hole, CircleHole):
-                half = hole.diameter / 2.0
-                rows.append((*hole.centre, half, half, 0.0))
-            elif isinstance(hole, SlotHole):
-                angle = math.radians(hole.angle) if math.isfinite(hole.angle) else 0.0
-                rows.append((*hole.centre, hole.length / 2.0, hole.width / 2.0, angle))
-        return np.array(rows, dtype=float).reshape(-1, 5)
+        return _crosses(self.cut_holes)
 
     @cached_property
     def zones(self) -> dict[str, Zone]:
@@ -191,10 +183,24 @@ class DrawnPart:
 
 
 @kept_by_identity(4)
+def _crosses(holes: tuple[Hole, ...]) -> NDArray[np.float64]:
+    """As `DrawnPart.crosses`; most edits keep all holes."""
+    rows = []
+    for hole in holes:
+        if isinstance(hole, CircleHole):
+            half = hole.diameter / 2.0
+            rows.append((*hole.centre, half, half, 0.0))
+        elif isinstance(hole, SlotHole):
+            angle = math.radians(hole.angle) if math.isfinite(hole.angle) else 0.0
+            rows.append((*hole.centre, hole.length / 2.0, hole.width / 2.0, angle))
+    return np.array(rows, dtype=float).reshape(-1, 5)
+
+
+@kept_by_identity(4)
 def drawn_part(part: Part) -> DrawnPart:
     """The boundary to draw, kept for the parts last asked for."""
     holes = all_holes(part)
-    rings = [hole_ring(hole) for hole in holes]
+    rings = list(hole_rings(holes))
     ids: list[str | None] = [hole.id for hole in holes]
     if part.outline is not None:
         rings, ids = [outline_ring(part.outline), *rings], [None, *ids]

@@ -14,7 +14,7 @@ from screenapp.model.curve_table import CurveTable
 from screenapp.model.curves import Curve, Segment
 from screenapp.model.errors import InvalidPartError
 from screenapp.model.part import Corner, Edge, Hole, Loop, LoopHole, Part, Point
-from screenapp.model.shape import BoundaryCurve, edge_curves, shape_of
+from screenapp.model.shape import BoundaryCurve, edge_curves, outline_curves, shape_of
 from screenapp.window.board.boundary_index import BoundaryIndex
 from screenapp.window.board.identity import kept_by_identity
 
@@ -131,19 +131,27 @@ _latest: deque[Ring] = deque(maxlen=1)
 
 def _fitting_pieces(outline: Loop) -> tuple[BoundaryCurve, ...]:
     try:
-        return shape_of(Part(outline=outline)).curves
-    except InvalidPartError as error:
-        found = {id_ for fault in error.faults for id_ in fault.ids}
+        pieces, faults = outline_curves(outline)
+        if not faults:
+            return pieces
+        found = {id_ for fault in faults for id_ in fault.ids}
     except (ArithmeticError, ValueError):
         found = set()
-    less = tuple(
-        replace(c, round=0.0, chamfer=0.0) if c.id in found and not c.sharp else c
-        for c in outline.corners
-    )
+    less = list(outline.corners)
+    for i in [i for i, c in enumerate(less) if c.id in found]:
+        if not less[i].sharp:
+            less[i] = replace(less[i], round=0.0, chamfer=0.0)
     try:  # the corners round about keep theirs
-        return shape_of(Part(outline=replace(outline, corners=less))).curves
-    except (InvalidPartError, ArithmeticError, ValueError):
+        pieces, faults = outline_curves(replace(outline, corners=tuple(less)))
+        return _unrounded(outline, hole=False) if faults else pieces
+    except (ArithmeticError, ValueError):
         return _unrounded(outline, hole=False)
+
+
+@kept_by_identity(4)
+def hole_rings(holes: tuple[Hole, ...]) -> tuple[Ring, ...]:
+    """The rings of all holes of a part; most edits keep them all."""
+    return tuple(hole_ring(hole) for hole in holes)
 
 
 @lru_cache(maxsize=1024)
