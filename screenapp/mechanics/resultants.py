@@ -103,13 +103,13 @@ def _resultant(id_: str, places: Floats, forces: Floats, couples: Floats) -> Loa
     reach = FAR * float(np.hypot(*(places - middle).T).max())
     least = NOTHING * float(size.sum())
     x, y = (0.0 if abs(v) <= least else float(v) for v in (x, y))
-    if abs(about) <= NOTHING * float((size * np.hypot(*places.T)).sum() + np.abs(couples).sum()):
-        about = 0.0
+    least = NOTHING * float((size * np.hypot(*places.T)).sum() + np.abs(couples).sum())
+    moment, about = (0.0 if abs(v) <= least else float(v) for v in (moment, about))
     force = math.hypot(x, y)
     if 0.0 < abs(about) <= force * reach:
         middle = middle + about / force**2 * np.array([y, -x])
     at: Point = float(middle[0]), float(middle[1])
-    return LoadResultant(id_, x, y, float(moment) if x or y or about else 0.0, at)
+    return LoadResultant(id_, x, y, moment if x or y or about else 0.0, at)
 
 
 def _acting(part: Part, shape: Shape, load: Load) -> Acting:

@@ -134,6 +134,15 @@ def test_a_pin_gives_its_force_through_the_centre(angle: float) -> None:
     )
 
 
+def test_a_pin_right_above_the_origin_turns_nothing_to_the_last_figure() -> None:
+    """The sum over the rim leaves 1e-10 N·mm of rounding, which would be shown."""
+    hole = CircleHole("h1", (0.0, 33.7), 13.3)
+    part = plate(loop([(-50.0, 0.0), (50.0, 0.0), (50.0, 60.0), (-50.0, 60.0)]), hole)
+    (found,) = of(part, BearingLoad("p", "h1", 0.0, 24_000.0))
+    assert found.moment == 0.0
+    assert found.y == pytest.approx(24_000.0, rel=1e-13)
+
+
 def test_a_spread_force_on_part_of_an_edge() -> None:
     found = one(plate(), ForceLoad("f", "e2", 0.0, -80.0, 30.0, 50.0))
     assert found == pytest.approx((0.0, -80.0, -8000.0), rel=1e-13)
