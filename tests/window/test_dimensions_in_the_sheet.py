@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import math
+from dataclasses import replace
 from pathlib import Path
 
 import pytest
@@ -10,10 +12,12 @@ from PySide6.QtTest import QTest
 from pytestqt.qtbot import QtBot
 
 from screenapp.model.edit_dimensions import formula_at
-from screenapp.model.part import CircleHole, Dimension, Part
+from screenapp.model.part import Case, CircleHole, Dimension, ForceLoad, Part
+from screenapp.model.part_json import part_from_text, part_to_text
 from screenapp.window.main_window import MainWindow
 from screenapp.window.sheet.dimension_rows import row_id
 from screenapp.window.sheet.field import Field
+from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
 from screenapp.window.sheet.part_paragraph import PartParagraph
 from screenapp.window.sheet.rows import Row
 from screenapp.window.sheet.wall_paragraph import WallParagraph
@@ -161,3 +165,39 @@ def test_the_wall_is_given_by_a_dimension_too(win: MainWindow) -> None:
     assert win.document.part.wall.thickness == 4.0
     type_into(row(win, "t").sentence.field("value"), "1.5")
     assert win.document.part.wall.thickness == 3.0
+
+
+def test_the_size_of_a_load_keeps_its_expression(win: MainWindow) -> None:
+    """Typed, turned another way, followed when the dimension changes, let go, and undone."""
+    document = win.document
+    load = ForceLoad("l1", "e2", 0.0, -100.0)
+    document.apply("load", replace(document.part, cases=(Case("k1", "pull", (load,)),)))
+    add(win, "pull", "500", "a plain number")
+    loaded = win.sheet.paragraph(4)
+    assert isinstance(loaded, LoadedParagraph)
+
+    def field(key: str) -> Field:
+        return loaded.block("k1").loads.row("l1").sentence.field(key)
+
+    def vector() -> tuple[float, float]:
+        (now,) = document.part.cases[0].loads
+        assert isinstance(now, ForceLoad)
+        return now.x, now.y
+
+    type_into(field("size"), "2*pull + 0.1 kN")
+    assert vector() == (0.0, -1100.0)
+    assert formula_at(document.part, "cases.k1.loads.l1.y") == "-(2*pull + 100)"
+    assert field("size").piece.text.startswith("=")
+    type_into(field("way"), "30")
+    assert vector() == pytest.approx((1100.0 * math.cos(math.radians(30.0)), 550.0))
+    type_into(row(win, "pull").sentence.field("value"), "1000")
+    assert vector() == pytest.approx((2100.0 * math.cos(math.radians(30.0)), 1050.0))
+    assert field("size").piece.formula.startswith("2*pull + 100")
+    again = part_from_text(part_to_text(document.part))
+    assert again == document.part
+    type_into(field("size"), "700 N")
+    assert vector() == pytest.approx((700.0 * math.cos(math.radians(30.0)), 350.0))
+    assert [f for f in document.part.formulas if f.field.startswith("cases")] == []
+    document.undo()
+    assert vector() == pytest.approx((2100.0 * math.cos(math.radians(30.0)), 1050.0))
+    assert len([f for f in document.part.formulas if f.field.startswith("cases")]) == 2

@@ -10,6 +10,13 @@ WORDS = {"right": 0.0, "up": 90.0, "left": 180.0, "down": 270.0}
 """Angles [deg] of the plain directions."""
 
 
+def direction_of(x: float, y: float) -> float:
+    """The direction of a vector [deg], one of the plain ones where it is as good as that; down for
+    none."""
+    text = direction_text(x, y)
+    return WORDS[text] if text in WORDS else math.degrees(math.atan2(y, x)) % 360.0
+
+
 def direction_text(x: float, y: float) -> str:
     """The direction of a vector in words; "down" for none.
 

@@ -25,6 +25,7 @@ from screenapp.model.part import (
     SpinLoad,
     TemperatureLoad,
 )
+from screenapp.model.sized_vectors import given_vector, stored_size
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import remove, with_field
 from screenapp.window.sheet.direction import components, read_direction
@@ -139,12 +140,27 @@ class LoadChange:
         ux, uy = (x / old, y / old) if old > 0.0 else (0.0, -1.0)
         self._put(replace(load, x=size * ux + 0.0, y=size * uy + 0.0))
 
-    def direct(self, text: str) -> None:
-        """Another direction, the same size."""
+    def set_vector(self, x: float, y: float) -> None:
+        """Other components."""
         load = self._find()
         assert isinstance(load, Directed)
-        x, y = components(math.hypot(load.x, load.y), read_direction(text))
         self._put(replace(load, x=x, y=y))
+
+    def direct(self, text: str, field: str) -> None:
+        """Another direction, the same size; an expression of the size stays.
+
+        `field` is the load's dotted path in the part file.
+        """
+        load = self._find()
+        assert isinstance(load, Directed)
+        angle, part = read_direction(text), self._document.part
+        size = stored_size(part, field, (load.x, load.y))
+        if size is None:
+            self.set_vector(*components(math.hypot(load.x, load.y), angle))
+            return
+        x, y, texts = given_vector(part, field, size, angle)
+        with self._document.keeping(texts):
+            self.set_vector(x, y)
 
     def remove(self) -> None:
         """Remove it."""

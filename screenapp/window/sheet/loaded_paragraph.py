@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from typing import NamedTuple
 
 from PySide6.QtCore import Qt
@@ -307,14 +306,15 @@ def _load_pieces(
     lead, kind = kinds[type(load)]
     if isinstance(load, PointLoad) and load.along is not None:
         lead = "pulled by "
-    size = math.hypot(load.x, load.y)
     parts = f"x {q.show(load.x, kind)}, y {q.show(load.y, kind)}"
     way = Value(
         "way",
         direction_text(load.x, load.y),
         f"Direction of {name}",
-        change.direct,
+        lambda text: change.direct(text, field),
         hint=f"right, up, left, down, or an angle from +x; now {parts}",
     )
-    amount = q.value("size", size, kind, f"Size of {name}", change.resize, f"Now {parts}")
+    amount = q.size_value(
+        (load.x, load.y), kind, f"Size of {name}", change.resize, change.set_vector, field
+    )
     return (lead, amount, " at " if way.text.endswith("°") else ", ", way)

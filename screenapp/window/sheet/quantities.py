@@ -11,9 +11,11 @@ from screenapp.model.edit_dimensions import formula_at
 from screenapp.model.errors import ScreenappError
 from screenapp.model.kinds import KINDS, KindName
 from screenapp.model.part import DisplayUnits
+from screenapp.model.sized_vectors import given_vector, stored_size
 from screenapp.model.typed_values import Typed, read_typed, shown_formula
 from screenapp.model.units import format_number, format_quantity, parse_quantity
 from screenapp.window.document import Document
+from screenapp.window.sheet.direction import direction_of
 from screenapp.window.sheet.pieces import Value
 
 SIGN = "=\u2009"
@@ -127,6 +129,52 @@ class Quantities:
             lambda text: self._put(text, kind, set_, field),
             hint=hint or self._hint(kind),
             typed=formula or self.typed(value, kind),
+            formula=formula,
+        )
+
+    def size_value(
+        self,
+        at: tuple[float, float],
+        kind: str,
+        name: str,
+        resize: Callable[[float], None],
+        put: Callable[[float, float], None],
+        field: str,
+    ) -> Value:
+        """The size of a vector, which takes an expression and keeps it in both components.
+
+        Args:
+            at: the vector.
+            resize: sets a plain size, the direction stays.
+            put: sets both components.
+            field: dotted path of the record that has `x` and `y`.
+        """
+
+        def commit(text: str) -> None:
+            typed = self.read_expression(text, kind)
+            if typed.formula is None or self.document is None:
+                resize(typed.value)
+                return
+            part = self.document.part
+            x, y, texts = given_vector(part, field, typed.formula, direction_of(*at))
+            with self.document.keeping(texts):
+                put(x, y)
+
+        formula = ""
+        if self.document is not None:
+            part = self.document.part
+            stored = stored_size(part, field, at)
+            if stored is not None:
+                formula = shown_formula(stored, _known(kind), self.units, part.dimensions)
+        size = math.hypot(*at)
+        parts = f"x {self.show(at[0], kind)}, y {self.show(at[1], kind)}"
+        return Value(
+            "size",
+            (SIGN if formula else "") + self.show(size, kind),
+            name,
+            commit,
+            hint=f"Now {parts}",
+            typed=formula or self.typed(size, kind),
             formula=formula,
         )
 
