@@ -15,7 +15,7 @@ import numpy as np
 from screenapp.mechanics.boundary_chains import boundary_chains
 from screenapp.mechanics.corner_exponent import SLIDING
 from screenapp.mechanics.elastic_supports import beds, spring_tractions
-from screenapp.mechanics.shear_ends import GROWTH, NEARLY
+from screenapp.mechanics.shear_ends import NEARLY, edge_growth
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.singular_spots import face_at, junctions
 from screenapp.model.combinations import loadings
@@ -59,12 +59,20 @@ def with_bed_ends(
             not s.case and math.dist(s.at, at) < 1e-6 * shape.size for s in spots
         ):
             continue
+        growth = edge_growth(part, shape, after)
         for k, case in enumerate(loadings(part)):
             into = shear[k, last[before], 2] if before in last else 0.0
             out = shear[k, first[after], 0] if after in first else 0.0
             jump = abs(into - out) if straight else 2.0 * abs(into + out)
             found.append(
-                _spot(shape, at, (before, after), tuple(mine), case.id, GROWTH * float(jump))
+                _spot(
+                    shape,
+                    at,
+                    (before, after),
+                    tuple(mine),
+                    case.id,
+                    growth * float(jump),
+                )
             )
     return (*spots, *found)
 

@@ -30,20 +30,27 @@ NEGLIGIBLE = 1e-6  # share of the largest traction of a case
 
 
 def known_corners(
-    chains: BoundaryChains, traction: Floats, held: Bools, disturbed: Bools
+    chains: BoundaryChains,
+    traction: Floats,
+    held: Bools,
+    disturbed: Bools,
+    isotropic: Bools | bool = True,
 ) -> tuple[Floats, Bools]:
     """Stress along both sides at the corner at every side's end, where the tractions fix it.
 
     Constant tractions on a wedge of angle ω give φ = r² (A cos 2θ + B sin 2θ + C θ + D), with
     σθ = 2 φ/r² and τ = -(φ/r²)' given on both faces and σr = φ''/r² + 2 φ/r² along them (Timoshenko
     & Goodier, Theory of Elasticity, from memory).  Where the tractions contradict each other (a
-    shear on one side only) C is not zero and the two sides differ, each with its own limit.
+    shear on one side only) C is not zero and the two sides differ, each with its own limit; that
+    holds for isotropic material alone.  Where they agree the stress is the same all over the wedge,
+    whatever it is made of.
 
     Args:
         traction: (n_cases, n_sides, 3, 2) [MPa].
         held: (n_sides, 2).
         disturbed: corners with a point load or a support of their own, by the side that ends
             there, (n_sides,).
+        isotropic: whether the material at each side is, (n_sides,) or one for all.
 
     Returns:
         Stress along the side that ends there and along the one that begins [MPa],
@@ -71,7 +78,7 @@ def known_corners(
         c, s = np.cos(2.0 * theta), np.sin(2.0 * theta)
         factors = 2.0 * np.stack([-c, -s, theta, np.ones_like(theta)], axis=-1)
         along[:, some, 1 - k] = (amplitudes[..., 0] * factors).sum(axis=-1)
-    return along, known
+    return along, known & (isotropic | ~split_corners(chains, traction, known))
 
 
 def split_corners(chains: BoundaryChains, traction: Floats, known: Bools) -> Bools:

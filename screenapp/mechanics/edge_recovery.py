@@ -3,7 +3,8 @@
 Where the peaks are, on the boundary, three things are known better than any stress of an element:
 the traction (it is given), and the stretching of the edge at the two Gauss points of each side,
 where the derivative of a quadratic along its length is one order more accurate (Barlow 1976).  The
-stress along the edge follows by Hooke's law: σt = E εt + ν σn in plane stress.  Between the
+stress along the edge follows by Hooke's law, σt = E εt + ν σn in isotropic plane stress, and with
+the shear's share where an orthotropic sheet meets the edge askew to its axes.  Between the
 samples a polynomial is fitted over neighbouring sides, as far as the boundary and the traction
 are smooth.
 """
@@ -59,14 +60,15 @@ def recover_edge_stress(
         hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
     """
     joined = joined_sides(chains, traction, held)
-    mirrored = mirrored_ends(chains, traction, held)
+    mirrored = mirrored_ends(chains, traction, held) & ~_askew(chains, hooke)[:, None]
     normal, shear = edge_tractions(chains, traction, held, inside)
-    corner, known = known_corners(chains, traction, held, disturbed)
+    corner, known = known_corners(chains, traction, held, disturbed, isotropic(hooke))
+    yielding = edge_compliance(chains, hooke)
     before = chains.preceding
     stretch = np.stack(
         [
-            edge_stretch(corner[:, before, 1], normal[:, :, 0], hooke),
-            edge_stretch(corner[:, :, 0], normal[:, :, 2], hooke),
+            edge_stretch(corner[:, before, 1], normal[:, :, 0], shear[:, :, 0], yielding[:, 0]),
+            edge_stretch(corner[:, :, 0], normal[:, :, 2], shear[:, :, 2], yielding[:, 2]),
         ],
         axis=2,
     )
@@ -76,7 +78,7 @@ def recover_edge_stress(
     ends = fit_at_ends(mesh, chains, joined, mirrored, samples)
     ends = np.where(np.stack([known[before], known], axis=1), stretch, ends)
     strain = np.stack([ends[:, :, 0], fit_at_middles(mesh, samples, ends), ends[:, :, 1]], axis=2)
-    side = edge_stress(strain, normal, shear, chains, hooke)
+    side = edge_stress(strain, normal, shear, chains, yielding)
     # the support's side takes over what the side that it mirrors knows better
     at_start, at_end = np.flatnonzero(mirrored[:, 0]), np.flatnonzero(mirrored[:, 1])
     side[:, chains.preceding[at_start], 2] = side[:, at_start, 0]
@@ -84,10 +86,50 @@ def recover_edge_stress(
     return side
 
 
-def edge_stretch(along: Floats, normal: Floats, hooke: Floats) -> Floats:
-    """εt from the stresses along and across an edge, (n_cases, n_sides) each [MPa]."""
-    d11, d12 = hooke[..., 0, 0], hooke[..., 0, 1]  # isotropic: the same along any direction
-    return np.asarray((d11 * along - d12 * normal) / (d11**2 - d12**2))
+def isotropic(hooke: Floats) -> Bools:
+    """Whether a matrix is the same along any direction, for each of (..., 3, 3)."""
+    d = hooke
+    scale = 1e-9 * d[..., 0, 0]
+    even = np.abs(d[..., 0, 0] - d[..., 1, 1]) <= scale
+    plain = np.abs(0.5 * (d[..., 0, 0] - d[..., 0, 1]) - d[..., 2, 2]) <= scale
+    return np.asarray(even & plain & (np.abs(d[..., :2, 2]) <= scale[..., None]).all(axis=-1))
+
+
+def edge_compliance(chains: BoundaryChains, hooke: Floats) -> Floats:
+    """What σt, σn and τ of an edge give to its own stretching εt [1/MPa].
+
+    Args:
+        hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
+
+    Returns:
+        (n_sides, 3 places, 3).
+    """
+    yielding = np.linalg.inv(np.broadcast_to(hooke, (len(chains.tangents), 3, 3)))
+    tx, ty = chains.tangents[..., 0], chains.tangents[..., 1]
+    nx, ny = chains.normals[..., 0], chains.normals[..., 1]
+    stretch = np.stack([tx * tx, ty * ty, tx * ty], axis=-1)  # εt of εx, εy, γxy
+    by = np.stack(
+        [
+            stretch,
+            np.stack([nx * nx, ny * ny, nx * ny], axis=-1),
+            np.stack([2.0 * tx * nx, 2.0 * ty * ny, tx * ny + ty * nx], axis=-1),
+        ],
+        axis=-1,
+    )  # σx, σy, τxy of σt, σn, τ
+    return np.asarray(((stretch @ yielding)[..., None, :] @ by)[..., 0, :])
+
+
+def _askew(chains: BoundaryChains, hooke: Floats) -> Bools:
+    """Sides that an orthotropic sheet meets askew to its axes, where nothing goes on as in a
+    mirror, (n_sides,)."""
+    yielding = edge_compliance(chains, hooke)
+    return np.asarray((np.abs(yielding[..., 2]) > 1e-9 * yielding[..., 0]).any(axis=1))
+
+
+def edge_stretch(along: Floats, normal: Floats, shear: Floats, yielding: Floats) -> Floats:
+    """εt from σt, σn and τ of an edge, (n_cases, n_sides) each [MPa]; `yielding` (n_sides, 3) is
+    that of `edge_compliance` there."""
+    return np.asarray(yielding[:, 0] * along + yielding[:, 1] * normal + yielding[:, 2] * shear)
 
 
 def joined_sides(chains: BoundaryChains, traction: Floats, held: Bools) -> Bools:
@@ -115,7 +157,7 @@ def edge_strains(mesh: Mesh, solution: Solution) -> Floats:
     stretch = (moved * along).sum(axis=-1) / (along**2).sum(axis=-1)
     if solution.free_strains is not None:
         at = _sample_shapes(linear) @ mesh.nodes[mesh.side_nodes]
-        stretch -= side_free_strains(mesh, solution.free_strains, at)
+        stretch -= side_free_strains(mesh, solution.free_strains, at, along)
     return np.asarray(stretch)
 
 
@@ -136,7 +178,7 @@ def _sample_shapes(linear: bool) -> Floats:
 
 
 def edge_stress(
-    strain: Floats, normal: Floats, shear: Floats, chains: BoundaryChains, hooke: Floats
+    strain: Floats, normal: Floats, shear: Floats, chains: BoundaryChains, yielding: Floats
 ) -> Floats:
     """Stresses σx, σy, τxy from the stretching and the traction of the boundary.
 
@@ -144,17 +186,12 @@ def edge_stress(
         strain: εt along the edge, (n_cases, n_sides, 3).
         normal: σn across it, the same shape [MPa].
         shear: τ between the outward normal and the forward tangent, the same shape [MPa].
-        hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
+        yielding: by `edge_compliance`, (n_sides, 3, 3).
 
     Returns:
         (n_cases, n_sides, 3, 3) [MPa].
     """
-    d11, d12 = (
-        hooke[..., 0, 0, None],
-        hooke[..., 0, 1, None],
-    )  # isotropic: the same along any direction
-    across = (normal - d12 * strain) / d11
-    along = d11 * strain + d12 * across
+    along = (strain - yielding[..., 1] * normal - yielding[..., 2] * shear) / yielding[..., 0]
     t, n = chains.tangents, chains.normals
     xx = along * t[..., 0] ** 2 + normal * n[..., 0] ** 2 + 2.0 * shear * t[..., 0] * n[..., 0]
     yy = along * t[..., 1] ** 2 + normal * n[..., 1] ** 2 + 2.0 * shear * t[..., 1] * n[..., 1]

@@ -5,7 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.mechanics.elasticity import constitutive_matrix, zone_material
+from screenapp.mechanics.elasticity import axis_of, constitutive_matrix, zone_material
 from screenapp.model.mesh import Mesh
 from screenapp.model.part import Part
 
@@ -26,7 +26,9 @@ def element_hooke(part: Part, mesh: Mesh) -> Floats:
         SolvingError: the wall or a zone has no usable material.
     """
     state = part.wall.state
-    every = np.array([constitutive_matrix(zone_material(part, z), state) for z in _zones(part)])
+    every = np.array(
+        [constitutive_matrix(zone_material(part, z), state, axis_of(part, z)) for z in _zones(part)]
+    )
     if (every == every[0]).all():
         return np.asarray(every[0])
     return np.asarray(every[mesh.element_zones + 1])

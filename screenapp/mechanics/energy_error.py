@@ -6,6 +6,8 @@ the difference between the recovered field and the element's own.
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -96,16 +98,17 @@ def pointwise_jump(
     own: Floats,
     nodal: Floats,
     side: Floats,
-    poisson: Floats | float = 0.0,
+    size: Callable[[Floats], Floats] = von_mises,
     split: Ints | None = None,
 ) -> Floats:
-    """Largest gap at each node between the recovered von Mises stress and the elements' own.
+    """Largest gap at each node between the recovered stress and the elements' own, by a measure.
 
     Args:
         own: each element's stress carried to its nine nodes, (n_cases, n_elements, 9, 3) [MPa].
         nodal: recovered stresses, (n_cases, n_fields, 3) [MPa].
         side: recovered edge stresses, (n_cases, n_sides, 3, 3) [MPa].
-        poisson: ν in plane strain, else 0: one for all or one for each element, (n_elements, 1).
+        size: the measure of such stresses (n_cases, n_elements, 9, 3), von Mises in plane stress
+            if not said.
         split: nodes of split corners (`corner_stress.split_corners`), where the elements' own
             stress is wrong in every mesh: those at such a corner do not count, and the corner takes
             the largest gap of their other corners.
@@ -113,8 +116,8 @@ def pointwise_jump(
     Returns:
         (n_cases, n_fields) [MPa], in the numbers of `Mesh.field_quads`.
     """
-    recovered = von_mises(element_nodal(mesh, nodal, side), poisson)
-    gap = np.abs(von_mises(own, poisson) - recovered)
+    recovered = size(element_nodal(mesh, nodal, side))
+    gap = np.abs(size(own) - recovered)
     jump = np.zeros((len(nodal), len(mesh.field_nodes)))
     at_split = np.isin(mesh.quads[:, :4], [] if split is None else split)
     blind = at_split.any(axis=1)

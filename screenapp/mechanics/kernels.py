@@ -63,7 +63,7 @@ def element_matrices(
     """Stiffness of elements with nodes at `coordinates` (n, 9 or fewer, 2) [mm].
 
     `thickness` (n,) [mm] is each element's own; `elastic` [MPa], (3, 3) or one for each element
-    (n, 3, 3), must be isotropic (no coupling of stretch and shear).
+    (n, 3, 3), is symmetric.
 
     Raises:
         SolvingError: an element is folded (its Jacobian is not positive at a Gauss point).
@@ -140,6 +140,12 @@ def _stiffness(scaled: Floats, elastic: Floats) -> Floats:
     full[:, :m, :m] = stretch_x * xx + shear * yy
     full[:, m:, m:] = stretch_y * yy + shear * xx
     cross = poisson * xy + shear * xy.transpose(0, 2, 1)
+    skew_x, skew_y = elastic[..., 0, 2, None, None], elastic[..., 1, 2, None, None]
+    if skew_x.any() or skew_y.any():  # an orthotropic sheet that is pulled askew to its axes
+        both = xy + xy.transpose(0, 2, 1)
+        full[:, :m, :m] += skew_x * both
+        full[:, m:, m:] += skew_y * both
+        cross += skew_x * xx + skew_y * yy
     full[:, :m, m:] = cross
     full[:, m:, :m] = cross.transpose(0, 2, 1)
     return full

@@ -20,7 +20,7 @@ from screenapp.mechanics.corner_stress import (
     pressure_jumps,
     split_corners,
 )
-from screenapp.mechanics.edge_recovery import edge_strains, recover_edge_stress
+from screenapp.mechanics.edge_recovery import edge_strains, isotropic, recover_edge_stress
 from screenapp.mechanics.elastic_supports import spring_tractions
 from screenapp.mechanics.element_walls import element_hooke, element_thickness, hooke_of
 from screenapp.mechanics.energy_error import energy_error
@@ -83,7 +83,8 @@ def split_corner_nodes(part: Part, shape: Shape, mesh: Mesh, solution: Solution)
     traction = known_tractions(part, shape, mesh, solution)
     held = constraints.held_sides(part, shape, mesh)
     chains = boundary_chains(shape, mesh)
-    _, known = known_corners(chains, traction, held, disturbed_corners(part, mesh))
+    even = isotropic(hooke_of(element_hooke(part, mesh), mesh.sides[:, 0]))
+    _, known = known_corners(chains, traction, held, disturbed_corners(part, mesh), even)
     split = split_corners(chains, traction, known) | pressure_jumps(chains, traction, held)
     return np.asarray(mesh.side_nodes[split, 2])
 

@@ -15,7 +15,9 @@ from collections.abc import Callable, Sequence
 import numpy as np
 from numpy.typing import NDArray
 
+from screenapp.mechanics.characteristic_roots import tangential_growth
 from screenapp.mechanics.corner_exponent import SLIDING, Face
+from screenapp.mechanics.elasticity import axis_of, constitutive_matrix
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under, runs_backward
@@ -62,8 +64,21 @@ def shear_ends(
                 continue
             if jump > _NEGLIGIBLE * most:
                 loads = tuple(dict.fromkeys((*by[before], *by[after])))
-                spots.append(_spot(shape, case, before, after, loads, GROWTH * jump, meets))
+                growth = edge_growth(part, shape, after) * jump
+                spots.append(_spot(shape, case, before, after, loads, growth, meets))
     return spots
+
+
+def edge_growth(part: Part, shape: Shape, piece: int) -> float:
+    """Growth of the stress along a piece of the boundary at its start over ln(1/r), for a jump of 1
+    in the shear; against a sliding support askew to an orthotropic sheet's axes, a guess."""
+    zone = shape.zone_behind(piece)
+    material = part.material_of(zone)
+    if material is None or not material.orthotropic:
+        return GROWTH
+    x, y = shape.curves[piece].curve.tangent(0.0)
+    hooke = constitutive_matrix(material, part.wall.state, axis_of(part, zone))
+    return GROWTH * tangential_growth(hooke, math.degrees(math.atan2(float(y), float(x))))
 
 
 def _shears(

@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable
+from dataclasses import replace
 from typing import Literal
 
 import numpy as np
@@ -16,7 +17,7 @@ from numpy.typing import NDArray
 
 from screenapp.mechanics.corner_exponent import SLIDING, Face, growth_rate
 from screenapp.mechanics.shear_ends import shear_ends
-from screenapp.mechanics.singular_spot import SingularSpot
+from screenapp.mechanics.singular_spot import POINT_RATE, SingularSpot
 from screenapp.mechanics.zone_spots import fans, zone_spots
 from screenapp.model.combinations import loadings
 from screenapp.model.curves import Curve
@@ -46,6 +47,9 @@ __all__ = ["SingularSpot", "face_at", "faces", "junctions", "singular_spots"]
 _LEAST_RATE = 0.02
 """Growth slower than this cannot be told from none in seven passes and is not counted."""
 
+_ANY_RATIO = (0.0, 0.25, 0.49)
+"""Poisson's ratios that stand for all."""
+
 _SMOOTH = 1e-6  # the boundary is smooth where it turns by less [rad]
 _SAME_DIRECTION = 1e-6  # sine of the angle between directions that count as one
 
@@ -70,8 +74,19 @@ def singular_spots(part: Part, shape: Shape) -> tuple[SingularSpot, ...]:
             for s in spots
         )
 
+    if part.uses_orthotropic():
+        spots = [_unstated(spot) for spot in spots]
     slow = shear_ends(part, shape, junctions(shape), face_at(part, shape))
     return (*spots, *(spot for spot in slow if not known(spot)))
+
+
+def _unstated(spot: SingularSpot) -> SingularSpot:
+    """The spot with a word on its exponent, which is not that of an isotropic wedge."""
+    if spot.rate >= POINT_RATE:
+        return spot
+    return replace(
+        spot, why=f"{spot.why} (how fast it grows is not worked out for an orthotropic sheet)"
+    )
 
 
 def faces(part: Part, shape: Shape) -> list[Held]:
@@ -132,8 +147,6 @@ def _against(held: Held, along: NDArray[np.float64]) -> Face:
 
 
 def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
-    material = part.material
-    poisson = material.poissons_ratio if material else 0.3
     kinds = faces(part, shape)
     named = {point: corner for corner, point in shape.sharp_corners}
     spots: list[SingularSpot] = []
@@ -146,7 +159,7 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
             _against(kinds[j], after.curve.tangent(0.0)),
             _against(kinds[i], -before.curve.tangent(1.0)),
         )
-        rate = growth_rate(angle, sides, poisson, part.wall.state)
+        rate = _rate(part, angle, sides)
         if rate < _LEAST_RATE:
             continue
         x, y = after.curve.start
@@ -154,6 +167,19 @@ def _junctions(part: Part, shape: Shape) -> list[SingularSpot]:
         ids = tuple(dict.fromkeys(k for k in (corner, before.feature, after.feature) if k))
         spots.append(_junction_spot(part, ids, corner, (x, y), angle, rate, kinds[i], kinds[j]))
     return spots
+
+
+def _rate(part: Part, angle: float, sides: tuple[Face, Face]) -> float:
+    """Growth rate at a corner; of an orthotropic sheet only a sign that the stress grows.
+
+    There the exponent depends on how the axes lie in the corner.  Free corners that re-enter grow
+    in any sheet; of held ones the largest rate that any isotropic sheet has there warns.
+    """
+    material = part.material
+    poisson = material.poissons_ratio if material else 0.3
+    if part.uses_orthotropic():
+        return max(growth_rate(angle, sides, nu, part.wall.state) for nu in _ANY_RATIO)
+    return growth_rate(angle, sides, poisson, part.wall.state)
 
 
 def junctions(shape: Shape) -> list[tuple[int, int, float]]:

@@ -14,10 +14,13 @@ from screenapp.mechanics.corner_exponent import Face
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.mechanics.wedge_exponent import Wedge, fan_growth_rate
 from screenapp.model.features import loops_of
-from screenapp.model.part import Part, Point
+from screenapp.model.part import Material, Part, Point
 from screenapp.model.shape import Shape
 
 Floats = NDArray[np.float64]
+
+UNKNOWN_RATE = 0.03
+"""Growth rate that stands for one which is not known, where an orthotropic sheet meets another."""
 
 SMOOTH = 1e-6
 """A line that turns by less than this [rad] does not turn."""
@@ -114,7 +117,7 @@ def zone_spots(
             if material is None:
                 break
             t = part.wall_of(sector.zone).thickness
-            wedges.append(Wedge(sector.angle, material.youngs_modulus, material.poissons_ratio, t))
+            wedges.append(_wedge(material, sector.angle, t))
         ends: tuple[Face, Face] | None = None
         if not fan.closed:
             first, last = fan.sectors[0].first, fan.sectors[-1].last
@@ -123,6 +126,8 @@ def zone_spots(
                 face(last, -shape.curves[last].curve.tangent(1.0)),
             )
         rate = fan_growth_rate(wedges, ends)
+        if _turns_axes(part, fan):
+            rate = max(rate, UNKNOWN_RATE)
         if rate < least:
             continue
         corner = next(
@@ -130,6 +135,28 @@ def zone_spots(
         )
         spots.append(_spot(part, shape, fan, rate, corner))
     return spots
+
+
+def _wedge(material: Material, angle: float, thickness: float) -> Wedge:
+    """A wedge of isotropic material; for an orthotropic one, one of its mean stiffness, which tells
+    whether the stress grows there rather than how fast."""
+    modulus, poisson = material.youngs_modulus, material.poissons_ratio
+    if material.youngs_modulus_2 is not None:
+        mean = math.sqrt(modulus * material.youngs_modulus_2)
+        modulus, poisson = mean, min(poisson * mean / modulus, 0.49)
+    return Wedge(angle, modulus, poisson, thickness)
+
+
+def _turns_axes(part: Part, fan: Fan) -> bool:
+    """Whether the elasticity changes there in other ways than by its mean."""
+    zones = {sector.zone for sector in fan.sectors}
+    materials = {zone: part.material_of(zone) for zone in zones}
+    kinds = {
+        (m.name, (part.wall_of(zone).axis or 0.0) % 180.0 if m.orthotropic else 0.0)
+        for zone, m in materials.items()
+        if m is not None
+    }
+    return len(kinds) > 1 and any(m is not None and m.orthotropic for m in materials.values())
 
 
 def _spot(part: Part, shape: Shape, fan: Fan, rate: float, corner: str) -> SingularSpot:

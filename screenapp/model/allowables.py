@@ -2,12 +2,20 @@
 
 from __future__ import annotations
 
+from screenapp.model.material_axes import RULES
+from screenapp.model.material_records import AXIS_STRENGTHS
 from screenapp.model.part import Material, Part, StressLimit
 
 
 def allowable(limit: StressLimit, material: Material) -> float | None:
     """The stress [MPa] that the limit allows; None if the material does not have it."""
-    base = getattr(material, limit.against)
+    if limit.measure in RULES and material.orthotropic:
+        known = all(getattr(material, name) is not None for name in AXIS_STRENGTHS)
+        base = material.tension_1 if known else None  # the rule counts all five by this one
+    elif material.orthotropic:
+        base = None
+    else:
+        base = getattr(material, limit.against)
     return None if base is None else float(base) / limit.factor
 
 

@@ -87,13 +87,17 @@ def temperature_faults(part: Part, case: Case, shape: Shape | None) -> Iterator[
         material = part.material_of(zone)
         if not acting or material is None:
             continue
-        if material.expansion is None and material.name not in said:
+        lacking = "expansion" if material.expansion is None else ""
+        if material.orthotropic and not lacking and material.expansion_2 is None:
+            lacking = "expansion_2"
+        if lacking and material.name not in said:
             said.add(material.name)
             yield Fault(
-                f"“{material.name}” has no coefficient of expansion, so case “{case.name}” cannot "
+                f"“{material.name}” has no coefficient of expansion"
+                f"{' along 2' if lacking == 'expansion_2' else ''}, so case “{case.name}” cannot "
                 "be worked out",
                 "give its expansion, or choose another material",
-                f"materials.{material.name}.expansion",
+                f"materials.{material.name}.{lacking}",
                 ids,
             )
         coldest, hottest = _range(part, acting, zone, shape)

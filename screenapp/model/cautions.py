@@ -9,12 +9,12 @@ import numpy as np
 
 from screenapp.model.crossings import piece_name
 from screenapp.model.curve_table import CurveTable
-from screenapp.model.edge_parts import point_of
+from screenapp.model.edge_parts import pieces_under, point_of
 from screenapp.model.errors import Fault
 from screenapp.model.extents import FARTHEST
 from screenapp.model.features import place_name
 from screenapp.model.ligaments import Ligament, ligaments
-from screenapp.model.part import DisplacementLimit, Material, Part, PointLoad
+from screenapp.model.part import DisplacementLimit, Material, Part, PointLoad, SymmetrySupport
 from screenapp.model.shape import Shape
 
 RE_ENTERS = 185.0
@@ -46,6 +46,7 @@ def cautions_of(part: Part, shape: Shape, table: CurveTable) -> list[Fault]:
         *_ligament_cautions(part, shape, table),
         *_piece_cautions(shape, table),
         *_wall_cautions(part, shape),
+        *_orthotropic_cautions(part, shape),
         *_point_cautions(part, shape),
         *_limit_cautions(part),
         *_place_cautions(part, shape, table),
@@ -198,6 +199,41 @@ def _wall_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
             f"materials.{material.name}.proof_stress",
             blocks=False,
         )
+
+
+def _orthotropic_cautions(part: Part, shape: Shape) -> Iterator[Fault]:
+    """What is not seen of a layered sheet, and lines of symmetry that are none."""
+    used: dict[str, Material] = {}
+    for zone in range(-1, len(part.zones)):
+        material = part.material_of(zone)
+        if material is not None and material.orthotropic:
+            used[material.name] = material
+    for name in used:
+        yield Fault(
+            f"“{name}” counts as one even sheet: what its layers carry, and whether they come "
+            "apart at edges and holes, is not seen",
+            "judge holes and cut edges by tests, or by the maker's own rules",
+            "wall.material",
+            blocks=False,
+        )
+    for support in part.supports:
+        if not isinstance(support, SymmetrySupport):
+            continue
+        for i in pieces_under(part, shape, support):
+            zone = shape.zone_behind(i)
+            material, along = part.material_of(zone), shape.curves[i].curve.tangent(0.5)
+            heading = math.degrees(math.atan2(float(along[1]), float(along[0])))
+            askew = math.sin(2.0 * math.radians(heading - (part.wall_of(zone).axis or 0.0)))
+            if material is not None and material.orthotropic and abs(askew) > 1e-6:
+                yield Fault(
+                    f"{place_name(part, support.on)} is a line of symmetry, but “{material.name}” "
+                    "meets it askew to its axes: the other half is taken to have them mirrored",
+                    "draw the whole part, or turn the 1-axis along the line or across it",
+                    f"supports.{support.id}",
+                    (support.id,),
+                    blocks=False,
+                )
+                break
 
 
 def _range_words(m: Material) -> str:

@@ -37,8 +37,10 @@ def set_zone(
     material: str | None = None,
     name: str | None = None,
     sides: ZoneSides | Literal[""] | None = None,
+    axis: float | None = None,
 ) -> Part:
-    """Give a zone a thickness [mm], a material, a name or sides; None leaves each as it is.
+    """Give a zone a thickness [mm], a material, a name, sides or the direction of its material's
+    1-axis [deg]; None leaves each as it is.
 
     A material of "" stands for the wall's; sides of "" say nothing.
     """
@@ -49,6 +51,7 @@ def set_zone(
         record.material if material is None else (material or None),
         record.name if name is None else name.strip(),
         record.sides if sides is None else (sides or None),
+        record.axis if axis is None else float(axis),
     )
     return settle(part, _with_zone(part, changed), zone_value_faults)
 

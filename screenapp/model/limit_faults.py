@@ -12,7 +12,9 @@ from screenapp.model.fatigue_faults import fatigue_limit_faults, fatigue_materia
 from screenapp.model.features import find
 from screenapp.model.joint_rules import joint_rules
 from screenapp.model.local_strain import TYPICAL, hardening_curve
-from screenapp.model.material_faults import positive
+from screenapp.model.material_axes import RULES
+from screenapp.model.material_faults import AXIS_WORDS, positive
+from screenapp.model.material_records import AXIS_STRENGTHS
 from screenapp.model.part import (
     CircleHole,
     DisplacementLimit,
@@ -145,9 +147,21 @@ def limit_material_faults(part: Part) -> Iterator[Fault]:
     """Limits that need a stress which the material of the wall or of a zone has not."""
     used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
     materials = {m.name: m for m in used if m is not None}
+    orthotropic = any(m.orthotropic for m in materials.values())
     for limit in part.limits:
+        if isinstance(limit, StressLimit) and limit.measure in RULES and not orthotropic:
+            yield Fault(
+                f"limit {limit.id} counts strengths in a material's axes, but nothing here is "
+                "orthotropic",
+                "choose another stress for it, or an orthotropic material",
+                f"limits.{limit.id}.measure",
+                (limit.id,),
+            )
         field = FIELDS.get(type(limit), "")
         for material in materials.values():
+            if material.orthotropic:
+                yield from _orthotropic_faults(limit, material)
+                continue
             for stress in _asked(limit):
                 if getattr(material, stress, 0.0) is not None:
                     continue
@@ -170,6 +184,48 @@ def limit_material_faults(part: Part) -> Iterator[Fault]:
                 )
             if isinstance(limit, JointLimit):
                 yield from _foreign_material(limit, material)
+
+
+NOT_FOR_ORTHOTROPIC = {
+    FatigueLimit: "the fatigue rules here are",
+    StrainLimit: "Neuber's rule here is",
+    JointLimit: "the rules for joints here are",
+}
+"""Limits whose rules are those of isotropic metals, with what the sentence begins with."""
+
+
+def _orthotropic_faults(limit: Limit, material: Material) -> Iterator[Fault]:
+    """What a limit cannot say of an orthotropic sheet, or asks of it in vain."""
+    about = (limit.id,)
+    words = NOT_FOR_ORTHOTROPIC.get(type(limit))
+    if words is not None:
+        yield Fault(
+            f"limit {limit.id} cannot judge the orthotropic “{material.name}”: {words} for "
+            "isotropic material",
+            "remove it, and judge this by the sheet's own handbook",
+            f"limits.{limit.id}",
+            about,
+        )
+    if not isinstance(limit, StressLimit):
+        return
+    if limit.measure not in RULES:
+        yield Fault(
+            f"limit {limit.id} is on one stress for all directions, which says nothing of the "
+            f"strength of the orthotropic “{material.name}”",
+            "choose Tsai–Hill (tsai_hill) or the largest stress in its axes (largest_stress)",
+            f"limits.{limit.id}.measure",
+            about,
+        )
+        return
+    missing = [AXIS_WORDS[name] for name in AXIS_STRENGTHS if getattr(material, name) is None]
+    if missing:
+        yield Fault(
+            f"limit {limit.id} asks for strengths in its axes, and “{material.name}” lacks "
+            f"{' and '.join(missing)}",
+            "give the material all five strengths, as positive numbers",
+            f"limits.{limit.id}.measure",
+            about,
+        )
 
 
 def _asked(limit: Limit) -> tuple[str, ...]:

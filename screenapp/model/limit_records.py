@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from typing import Literal
 
 Point = tuple[float, float]
-StressMeasure = Literal["von_mises", "tresca", "sigma_1"]
+StressMeasure = Literal["von_mises", "tresca", "sigma_1", "tsai_hill", "largest_stress"]
 MeanStress = Literal["goodman", "smith_watson_topper"]
 NotchRule = Literal["none", "peterson", "neuber"]
 
@@ -19,7 +19,9 @@ class StressLimit:
     """Everywhere: `measure` times `factor` stays under the material's `against` stress.
 
     `measure` "von_mises" or "tresca" (both with the principal stress across the wall) is for what
-    yields, "sigma_1", the largest tension, for what is brittle.
+    yields, "sigma_1", the largest tension, for what is brittle.  "tsai_hill" and "largest_stress"
+    are for orthotropic sheets, whose strengths in their own axes they count; `against` then stands
+    for isotropic zones beside them alone (see `material_axes`).
 
     `at_rising` says what counts where the stress has no finite value: nothing (the verdict stays
     undecided) or the structural stress, drawn on from 0.4 and 1.0 wall thicknesses.

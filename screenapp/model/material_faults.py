@@ -6,7 +6,19 @@ import math
 from collections.abc import Iterator
 
 from screenapp.model.errors import Fault
+from screenapp.model.material_records import ORTHOTROPIC_ONLY
 from screenapp.model.part import Material, Part
+
+AXIS_WORDS = {
+    "shear_modulus": "the shear modulus G12",
+    "expansion_2": "an expansion along 2",
+    "tension_1": "a tensile strength along 1",
+    "compression_1": "a compressive strength along 1",
+    "tension_2": "a tensile strength along 2",
+    "compression_2": "a compressive strength along 2",
+    "shear_strength": "a shear strength",
+}
+"""The figures that only an orthotropic sheet has, in words."""
 
 
 def positive(value: float) -> bool:
@@ -26,6 +38,7 @@ def material_faults(part: Part) -> Iterator[Fault]:
             )
         seen.add(m.name)
         yield from _properties(m)
+    yield from axis_faults(part)
 
 
 def _properties(m: Material) -> Iterator[Fault]:
@@ -37,6 +50,13 @@ def _properties(m: Material) -> Iterator[Fault]:
         ("strength", "the strength", "MPa"),
         ("fatigue_coefficient", "the fatigue coefficient", "MPa"),
         ("hardening_coefficient", "the hardening coefficient", "MPa"),
+        ("youngs_modulus_2", "the modulus E2", "MPa"),
+        ("shear_modulus", "the shear modulus G12", "MPa"),
+        ("tension_1", "the tensile strength along 1", "MPa"),
+        ("compression_1", "the compressive strength along 1", "MPa"),
+        ("tension_2", "the tensile strength along 2", "MPa"),
+        ("compression_2", "the compressive strength along 2", "MPa"),
+        ("shear_strength", "the shear strength", "MPa"),
     ):
         value = getattr(m, name)
         if value is not None and not (positive(value) and 1e-9 < value < 1e12):
@@ -46,7 +66,7 @@ def _properties(m: Material) -> Iterator[Fault]:
                 f"give a sensible number of {unit} above zero{optional}",
                 f"{where}.{name}",
             )
-    if not -1.0 < m.poissons_ratio < 0.5:
+    if not m.orthotropic and not -1.0 < m.poissons_ratio < 0.5:
         yield Fault(
             f"Poisson's ratio of “{m.name}” is {m.poissons_ratio:g}",
             "give a ratio above -1 and below 0.5",
@@ -58,8 +78,67 @@ def _properties(m: Material) -> Iterator[Fault]:
             "give a coefficient in 1/K, or leave it out",
             f"{where}.expansion",
         )
+    yield from _axes(m, where)
     yield from _exponents(m, where)
     yield from _reach(m, where)
+
+
+def _axes(m: Material, where: str) -> Iterator[Fault]:
+    """The constants of an orthotropic sheet: those of a solid, whose strain energy is positive."""
+    if not m.orthotropic:
+        for name in ORTHOTROPIC_ONLY:
+            if getattr(m, name) is not None:
+                yield Fault(
+                    f"“{m.name}” has {AXIS_WORDS[name]}, but no second Young's modulus",
+                    f"give E2 to make it orthotropic, or leave out {AXIS_WORDS[name]}",
+                    f"{where}.{name}",
+                )
+                return
+        return
+    if m.shear_modulus is None:
+        yield Fault(
+            f"the orthotropic “{m.name}” has no shear modulus",
+            "give G12, which does not follow from the other constants",
+            f"{where}.shear_modulus",
+        )
+    e1, e2, nu = m.youngs_modulus, m.youngs_modulus_2 or 0.0, m.poissons_ratio
+    if not math.isfinite(nu) or (e1 > 0.0 and e2 > 0.0 and nu * nu >= e1 / e2):
+        most = math.sqrt(e1 / e2) if e1 > 0.0 and e2 > 0.0 else math.nan
+        yield Fault(
+            f"ν12 of “{m.name}” is {nu:g}, which with E1 {e1:g} and E2 {e2:g} MPa no solid has",
+            f"give ν12 between -{most:.3g} and {most:.3g} (ν12² below E1/E2); ν21 = ν12 E2/E1 is "
+            "the other one",
+            f"{where}.poissons_ratio",
+        )
+    if m.expansion_2 is not None and not math.isfinite(m.expansion_2):
+        yield Fault(
+            f"the expansion of “{m.name}” along 2 is not a finite number",
+            "give a coefficient in 1/K, or leave it out",
+            f"{where}.expansion_2",
+        )
+
+
+def axis_faults(part: Part) -> Iterator[Fault]:
+    """Orthotropic sheets in a state or at an angle that they cannot be worked out in."""
+    for zone in range(-1, len(part.zones)):
+        material, wall = part.material_of(zone), part.wall_of(zone)
+        name = part.zones[zone].id if zone >= 0 else ""
+        where, about = (f"zones.{name}", (name,)) if name else ("wall", ())
+        if wall.axis is not None and not math.isfinite(wall.axis):
+            yield Fault(
+                f"the direction of the 1-axis is {wall.axis:g}",
+                "give it in degrees from +x",
+                f"{where}.axis",
+                about,
+            )
+        if material is not None and material.orthotropic and wall.state == "plane strain":
+            yield Fault(
+                f"“{material.name}” is orthotropic, and plane strain would need its constants "
+                "across the wall, which it has not",
+                "choose plane stress, or an isotropic material",
+                "wall.state",
+                about,
+            )
 
 
 def _exponents(m: Material, where: str) -> Iterator[Fault]:

@@ -212,6 +212,7 @@ class Zone:
         thickness: [mm], None for the wall's.
         material: name of its material, None for the wall's.
         name: what the user calls it, may be empty.
+        axis: direction of the 1-axis of an orthotropic material [deg] from +x, None for the wall's.
         sides: whether what its thickness adds or takes away is on both sides of the wall alike or
             on one only; None where it is not said.
     """
@@ -221,6 +222,7 @@ class Zone:
     material: str | None = None
     name: str = ""
     sides: ZoneSides | None = None
+    axis: float | None = None
 
     @property
     def id(self) -> str:
@@ -230,11 +232,15 @@ class Zone:
 
 @dataclass(frozen=True)
 class Wall:
-    """The wall: `thickness` [mm], the name of its material, and what holds across it."""
+    """The wall: `thickness` [mm], the name of its material, and what holds across it.
+
+    `axis` is the direction [deg] of the 1-axis of an orthotropic material from +x; None is 0.
+    """
 
     thickness: float
     material: str
     state: WallState = "plane stress"
+    axis: float | None = None
 
 
 # --- cases ---------------------------------------------------------------------------------
@@ -367,7 +373,13 @@ class Part:
             self.wall.thickness if own.thickness is None else own.thickness,
             self.wall.material if own.material is None else own.material,
             self.wall.state,
+            self.wall.axis if own.axis is None else own.axis,
         )
+
+    def uses_orthotropic(self) -> bool:
+        """Whether the wall or a zone is of an orthotropic material."""
+        used = (self.material_of(zone) for zone in range(-1, len(self.zones)))
+        return any(m is not None and m.orthotropic for m in used)
 
     def material_of(self, zone: int) -> Material | None:
         """The material of a zone (-1: of the wall itself), None if the part does not carry it."""

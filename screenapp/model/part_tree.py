@@ -222,6 +222,7 @@ def _zone_tree(zone: Zone) -> Tree:
         "material": zone.material,
         "name": zone.name or None,
         "sides": zone.sides,
+        "axis": zone.axis,
     }
 
 
@@ -288,13 +289,14 @@ def _hole(tree: Tree) -> Any:
 
 
 def _zone(tree: Tree) -> Zone:
-    thickness = tree.get("thickness")
+    thickness, axis = tree.get("thickness"), tree.get("axis")
     return Zone(
         _hole(tree),
         None if thickness is None else float(thickness),
         tree.get("material"),
         tree.get("name", ""),
         tree.get("sides"),
+        None if axis is None else float(axis),
     )
 
 

@@ -80,9 +80,9 @@ class Solution:
             (n_cases, n_elements, 4), only for "quad4-incompatible"; else None.
         support_forces: what the supports give at each node, (n_cases, n_nodes, 2) [N]; None where
             it was not kept.
-        free_strains: strain that the temperature would give each element if it were free, the same
-            along x and y: a + b x + c y with (a, b, c) in (n_cases, n_elements, 3); None where no
-            case changes the temperature.
+        free_strains: strain that the temperature would give each element if it were free,
+            a + b x + c y, (n_cases, n_elements, 3, 3): a, b, c along axis 2 and εx, εy, γxy along
+            axis 3; None where no case changes the temperature.
     """
 
     element: ElementName

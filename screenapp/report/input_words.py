@@ -14,6 +14,7 @@ from screenapp.model.part import (
     Edge,
     Hole,
     Loop,
+    Material,
     Part,
     Point,
     SlotHole,
@@ -22,6 +23,29 @@ from screenapp.model.pattern import GridPattern, Pattern, RowPattern
 from screenapp.model.units import format_quantity
 
 Row = tuple[str, ...]
+
+
+def material_words(material: Material, axis: float | None, units: DisplayUnits) -> str:
+    """The figures of a material; of an orthotropic sheet with the direction of its 1-axis [deg]."""
+
+    def stress(value: float | None) -> str:
+        return format_quantity(value, "stress", units) if value else "not given"
+
+    source = f"(source: {material.source or 'not given'})"
+    if not material.orthotropic:
+        return (
+            f"E {stress(material.youngs_modulus)}, ν {material.poissons_ratio:g}, "
+            f"{material.density:g} kg/m³, proof stress {stress(material.proof_stress)}, "
+            f"strength {stress(material.strength)} {source}"
+        )
+    return (
+        f"orthotropic, its 1-axis at {axis or 0.0:g}° from x: E1 {stress(material.youngs_modulus)}"
+        f", E2 {stress(material.youngs_modulus_2)}, ν12 {material.poissons_ratio:g}, "
+        f"G12 {stress(material.shear_modulus)}, {material.density:g} kg/m³; strengths along 1 "
+        f"{stress(material.tension_1)} in tension and {stress(material.compression_1)} in "
+        f"compression, along 2 {stress(material.tension_2)} and {stress(material.compression_2)}, "
+        f"in shear {stress(material.shear_strength)} {source}"
+    )
 
 
 def hole_words(hole: Hole, units: DisplayUnits) -> str:

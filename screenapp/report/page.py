@@ -44,6 +44,7 @@ from screenapp.report.input_words import (
     dimension_rows,
     formula_rows,
     hole_words,
+    material_words,
     ring_rows,
     rings,
 )
@@ -86,6 +87,7 @@ def record_page(
         load_words=load_words,
         support_words=support_words,
         hole_words=hole_words,
+        material_words=material_words,
         rings=rings(part),
         ring_rows=ring_rows,
         dimension_rows=dimension_rows,

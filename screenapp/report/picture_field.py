@@ -10,9 +10,8 @@ from numpy.typing import NDArray
 from screenapp.model.allowables import allowables
 from screenapp.model.estimate_text import estimate_text, unit_of, value_text
 from screenapp.model.findings import CaseFindings, Fields, Findings, LimitFindings
-from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import DisplacementLimit, Part, Point, StressLimit
-from screenapp.model.solution import principal, tresca, von_mises
+from screenapp.model.stress_measures import stress_measure
 from screenapp.report import colours
 from screenapp.report.colours import Scale
 
@@ -22,6 +21,8 @@ _WORDS = {
     "von_mises": "von Mises stress",
     "tresca": "Tresca stress",
     "sigma_1": "Largest principal stress",
+    "tsai_hill": "Tsai–Hill, as tension along 1,",
+    "largest_stress": "Largest stress in the axes, as tension along 1,",
 }
 
 
@@ -76,11 +77,7 @@ def measured(part: Part, fields: Fields, case: int, measure: str) -> Floats:
     """A stress measure [MPa] in the numbers of `Mesh.field_quads`, (n_fields,); tension alone of a
     principal stress."""
     stress = fields.stress.nodal[case]
-    if measure == "von_mises":
-        return von_mises(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
-    if measure == "tresca":
-        return tresca(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
-    return np.maximum(principal(stress)[0], 0.0)
+    return np.maximum(stress_measure(measure, stress, part, fields.mesh.field_zones), 0.0)
 
 
 def _utilisation(

@@ -9,6 +9,7 @@ Where a peak or a reading is not settled, the mesh goes on to be refined by what
 
 from __future__ import annotations
 
+import itertools
 import math
 from collections.abc import Sequence
 from dataclasses import dataclass
@@ -19,11 +20,13 @@ from numpy.typing import NDArray
 from screenapp.mechanics.singular_spot import SingularSpot
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import CaseFindings, Estimate, Reading
+from screenapp.model.material_axes import RULES
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import measure
 from screenapp.screening.structural import reading_places
+from screenapp.screening.tracking import measures
 
 Floats = NDArray[np.float64]
 
@@ -152,13 +155,14 @@ def _point_factor(part: Part, last: Pass) -> Floats:
     mesh = last.fields.mesh
     p = order(last.fields.solution.element)
     factor = np.full(mesh.n_nodes, np.inf)
-    for k in range(len(loadings(part))):
-        value = measure("von_mises", last.fields.stress.nodal[k], part, mesh.field_zones)
-        level = last.level("von_mises", k)
+    rules = [name for name in measures(part) if name in ("von_mises", *RULES)]
+    for k, name in itertools.product(range(len(loadings(part))), rules):
+        value = stress_measure(name, last.fields.stress.nodal[k], part, mesh.field_zones)
+        level = last.level(name, k)
         if level <= 0.0:
             continue
         high = (value > HIGH_SHARE * level) & ~last.round_spots(k)[mesh.field_nodes]
         goal = part.mesh.tolerance * level
-        doubt = np.maximum(last.doubt[k], 1e-3 * goal)
+        doubt = np.maximum(last.doubt_of(name)[k], 1e-3 * goal)
         np.minimum.at(factor, mesh.field_nodes[high], (goal / doubt[high]) ** (1.0 / p))
     return factor

@@ -23,8 +23,9 @@ from screenapp.model.findings import (
 )
 from screenapp.model.part import Cut, Part
 from screenapp.model.shape import Shape
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass, passes_of
-from screenapp.screening.peaks import ON_BOUNDARY, measure, on_boundary
+from screenapp.screening.peaks import ON_BOUNDARY, on_boundary
 from screenapp.screening.trust import Sample, half_band, judge
 
 Floats = NDArray[np.float64]
@@ -100,7 +101,7 @@ def _lines(part: Part, shape: Shape, this: Pass, line: StraightCut) -> list[_Lin
         lengthwise = np.stack(
             [s[:, 0] * d[0] + s[:, 2] * d[1], s[:, 2] * d[0] + s[:, 1] * d[1]], -1
         )
-        size = measure("von_mises", s, part, read.zones[k])
+        size = stress_measure("von_mises", s, part, read.zones[k])
         values = np.stack([across @ n, lengthwise @ d, across @ d, size])
         out.append(
             _Line(values.reshape(4, *grid), read.doubt[k].reshape(grid), read.size.reshape(grid))

@@ -27,7 +27,7 @@ def hand_checks(
     part: Part, shape: Shape, passes: Sequence[Pass], cases: Sequence[CaseFindings]
 ) -> tuple[HandCheck, ...]:
     """Every handbook case that the part has, in every load case that is one of its own."""
-    if part.zones or part.wall.state != "plane stress":
+    if part.zones or part.wall.state != "plane stress" or part.uses_orthotropic():
         return ()
     known = handbook_cases(part, shape)
     return tuple(

@@ -13,6 +13,7 @@ from dataclasses import dataclass, replace
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import CaseFindings, Estimate, LimitFindings, Peak, Verdict
+from screenapp.model.material_axes import RULES
 from screenapp.model.part import (
     DisplacementLimit,
     FatigueLimit,
@@ -39,6 +40,8 @@ MEASURE_WORDS = {
     "von_mises": "von Mises",
     "tresca": "Tresca",
     "sigma_1": "largest principal (brittle)",
+    "tsai_hill": "Tsai–Hill",
+    "largest_stress": "largest stress in the material's axes",
 }
 
 
@@ -53,9 +56,14 @@ def limit_name(limit: Limit) -> str:
     if isinstance(limit, StrainLimit):
         return strain_limit_name(limit)
     what = MEASURE_WORDS[limit.measure]
+    if limit.measure in RULES:
+        return f"{what} under the strengths with {limit.factor:g} in hand{_rising_words(limit)}"
     against = "proof stress" if limit.against == "proof_stress" else "strength"
-    rising = "; structural stress at rising places" if limit.at_rising == "structural" else ""
-    return f"{what} under {against} with {limit.factor:g} in hand{rising}"
+    return f"{what} under {against} with {limit.factor:g} in hand{_rising_words(limit)}"
+
+
+def _rising_words(limit: StressLimit) -> str:
+    return "; structural stress at rising places" if limit.at_rising == "structural" else ""
 
 
 def judge_limits(

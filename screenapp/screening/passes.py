@@ -24,10 +24,11 @@ from screenapp.mechanics.singular_spots import singular_spots
 from screenapp.model.allowables import demands
 from screenapp.model.combinations import loadings
 from screenapp.model.findings import Fields
-from screenapp.model.out_of_plane import out_of_plane_ratio
+from screenapp.model.material_axes import RULES
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape
 from screenapp.model.solution import StressField
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening import peaks
 from screenapp.screening.level import level, round_spots
 from screenapp.screening.peaks import RawPeak
@@ -44,7 +45,7 @@ class PointValues:
     Attributes:
         stress: (n_cases, n_points, 3) [MPa], NaN outside the part.
         displacement: (n_cases, n_points, 2) [mm].
-        doubt: gap between the recovered von Mises stress and the elements' own,
+        doubt: gap between the recovered stress and the elements' own, by von Mises if not said,
             (n_cases, n_points) [MPa].
         size: size of the element there [mm], (n_points,).
         zones: the zone whose stress it is, -1 for the wall itself, (n_cases, n_points).
@@ -55,6 +56,12 @@ class PointValues:
     doubt: Floats
     size: Floats
     zones: Ints
+
+
+def doubted_by(measure: str) -> str:
+    """The measure whose gap is the doubt of another: von Mises but for strengths in the material's
+    axes, which weigh the components quite otherwise."""
+    return measure if measure in RULES else "von_mises"
 
 
 class Pass:
@@ -74,6 +81,7 @@ class Pass:
         self.spots = tuple(singular_spots(part, shape) if spots is None else spots)
         self._cases = [case.id for case in loadings(part)]
         self._near: dict[int, Bools] = {}
+        self._doubts: dict[str, Floats] = {}
         self._peaks: dict[tuple[str, int], list[RawPeak]] = {}
 
     @cached_property
@@ -82,15 +90,29 @@ class Pass:
         f = self.fields
         return PointReader(self.part, self.shape, f.mesh, f.solution, f.stress)
 
-    @cached_property
+    @property
     def doubt(self) -> Floats:
         """Gap between recovered and own von Mises stress, (n_cases, n_fields) as
         `StressField.nodal`."""
+        return self.doubt_of("von_mises")
+
+    def doubt_of(self, measure: str) -> Floats:
+        """The same of a stress measure, by `doubted_by`."""
+        rule = doubted_by(measure)
         f = self.fields
-        own = extrapolated_stress(f.mesh, f.solution, element_hooke(self.part, f.mesh))
-        poisson = out_of_plane_ratio(self.part, f.mesh.element_zones)[:, None]
-        split = split_corner_nodes(self.part, self.shape, f.mesh, f.solution)
-        return pointwise_jump(f.mesh, own, f.stress.nodal, f.stress.side, poisson, split)
+        if rule not in self._doubts:
+            zones = f.mesh.element_zones[:, None]
+            own = extrapolated_stress(f.mesh, f.solution, element_hooke(self.part, f.mesh))
+            split = split_corner_nodes(self.part, self.shape, f.mesh, f.solution)
+            self._doubts[rule] = pointwise_jump(
+                f.mesh,
+                own,
+                f.stress.nodal,
+                f.stress.side,
+                lambda stress: stress_measure(rule, stress, self.part, zones),
+                split,
+            )
+        return self._doubts[rule]
 
     @cached_property
     def sizes(self) -> Floats:
@@ -173,8 +195,8 @@ class Pass:
     ) -> float:
         mesh, weight = self.fields.mesh, np.array(weights)
         behind = mesh.element_zones[mesh.sides[:, 0], None]
-        nodal = peaks.measure(measure, stress.nodal[case], self.part, mesh.field_zones)
-        side = peaks.measure(measure, stress.side[case], self.part, behind)
+        nodal = stress_measure(measure, stress.nodal[case], self.part, mesh.field_zones)
+        side = stress_measure(measure, stress.side[case], self.part, behind)
         values = [nodal * weight[mesh.field_zones + 1], (side * weight[behind + 1]).ravel()]
         where = [near[mesh.field_nodes], near[mesh.side_nodes].ravel()]
         return level(np.concatenate(values), np.concatenate(where))
@@ -183,21 +205,21 @@ class Pass:
         """Largest value of a measure in a case, over nodes and boundary sides [MPa]."""
         f = self.fields
         return max(
-            float(peaks.measure(measure, stress[case], self.part, zones).max(initial=0.0))
+            float(stress_measure(measure, stress[case], self.part, zones).max(initial=0.0))
             for stress, zones in (
                 (f.stress.nodal, f.mesh.field_zones),
                 (f.stress.side, f.mesh.element_zones[f.mesh.sides[:, 0], None]),
             )
         )
 
-    def read(self, points: Floats) -> PointValues:
-        """Everything at `points` (n, 2) [mm]."""
+    def read(self, points: Floats, measure: str = "von_mises") -> PointValues:
+        """Everything at `points` (n, 2) [mm]; the doubt is that of a stress measure."""
         mesh = self.fields.mesh
         stress, displacement, zones = self.reader.read_with_zones(points)
         element, xi = self.reader.locator.locate(points)
         weights = shape_functions.values(4, xi)
         corners = mesh.field_quads[element, :4]
-        doubt = (self.doubt[:, corners] * weights).sum(axis=-1)
+        doubt = (self.doubt_of(measure)[:, corners] * weights).sum(axis=-1)
         return PointValues(stress, displacement, doubt, self.sizes[element], zones)
 
 

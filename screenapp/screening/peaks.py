@@ -17,11 +17,10 @@ from scipy.signal import find_peaks
 from screenapp.model.allowables import demands
 from screenapp.model.curves import Arc
 from screenapp.model.findings import Fields
-from screenapp.model.out_of_plane import out_of_plane_ratio
 from screenapp.model.part import Part, Point
 from screenapp.model.place_words import edge_words, point_words
 from screenapp.model.shape import BoundaryCurve, Shape
-from screenapp.model.solution import principal, tresca, von_mises
+from screenapp.model.stress_measures import stress_measure
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -67,19 +66,6 @@ class RawPeak:
         return self.value * self.demand
 
 
-def measure(name: str, stress: Floats, part: Part, zones: Ints) -> Floats:
-    """A stress measure [MPa] of (..., 3) stresses: "von_mises", "tresca", "sigma_1", or
-    "sigma_2" turned positive for compression.
-
-    `zones` tells the zone of each, -1 for the wall itself; it broadcasts against (...).
-    """
-    if name in ("von_mises", "tresca"):
-        by = von_mises if name == "von_mises" else tresca
-        return by(stress, out_of_plane_ratio(part, zones))
-    first, second, _ = principal(stress)
-    return first if name == "sigma_1" else np.negative(second)
-
-
 def find(
     name: str, part: Part, shape: Shape, fields: Fields, case: int, level: float
 ) -> list[RawPeak]:
@@ -110,7 +96,9 @@ def _on_boundary(
     places = np.concatenate([_SAMPLES, [1.0]])
     zones = mesh.element_zones[mesh.sides[:, 0]]
     demand = np.array(demands(name, part))[zones + 1]
-    values = measure(name, side_stress(stress, places), part, zones[:, None]) * demand[:, None]
+    values = (
+        stress_measure(name, side_stress(stress, places), part, zones[:, None]) * demand[:, None]
+    )
     lengths = np.array([shape.curves[i].curve.length for i in mesh.side_piece])
     lengths = lengths * (mesh.side_t[:, 1] - mesh.side_t[:, 0])
     if float(values.max(initial=0.0)) <= 0.0:
@@ -158,7 +146,7 @@ def _inside(name: str, part: Part, fields: Fields, case: int, level: float) -> l
     """Nodes inside whose value no neighbour exceeds, away from the boundary's elements."""
     mesh, zones, sizes = fields.mesh, fields.mesh.field_zones, fields.mesh.element_sizes
     demand = np.array(demands(name, part))[zones + 1]
-    value = measure(name, fields.stress.nodal[case], part, zones) * demand
+    value = stress_measure(name, fields.stress.nodal[case], part, zones) * demand
     quads, n = mesh.field_quads, len(mesh.field_nodes)
     around = np.full(n, -np.inf)
     np.maximum.at(around, quads, value[quads].max(axis=1, keepdims=True))

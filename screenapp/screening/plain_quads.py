@@ -22,8 +22,8 @@ from screenapp.model.findings import CaseFindings, Fields, Peak, PlainLoss
 from screenapp.model.part import ElementName, Part
 from screenapp.model.progress import SILENT, Progress
 from screenapp.model.shape import Shape
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import measure
 
 PLAIN: ElementName = "quad4"
 GOOD: ElementName = "quad9"
@@ -112,4 +112,4 @@ def _highest(this: Pass, last: Pass, peak: Peak, k: int) -> float:
     if near:
         return max(near)
     read = this.read(at)
-    return float(measure("von_mises", read.stress[k, 0], this.part, read.zones[k, 0]))
+    return float(stress_measure("von_mises", read.stress[k, 0], this.part, read.zones[k, 0]))

@@ -14,11 +14,11 @@ from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings, Rea
 from screenapp.model.part import Part, Probe
 from screenapp.model.shape import Shape
 from screenapp.model.solution import principal
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass, PointValues, passes_of
 from screenapp.screening.peaks import (
     ON_BOUNDARY,
     feature_of,
-    measure,
     on_boundary,
     piece_at,
     place_in_words,
@@ -171,7 +171,7 @@ def _quantities(part: Part, read: PointValues, k: int, i: int) -> dict[str, floa
         *stress,
         first,
         second,
-        measure("von_mises", stress, part, read.zones[k, i]),
+        stress_measure("von_mises", stress, part, read.zones[k, i]),
         *read.displacement[k, i],
     )
     return dict(zip(READING_QUANTITIES, (float(n) for n in numbers), strict=True))

@@ -25,8 +25,8 @@ from screenapp.model.curves import Curve
 from screenapp.model.findings import Estimate
 from screenapp.model.part import Part, Point
 from screenapp.model.shape import Shape
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import measure
 from screenapp.screening.trust import Sample, judge
 
 Floats = NDArray[np.float64]
@@ -49,12 +49,12 @@ def structural_stress(
         samples: list[Sample] = []
         scale = 0.0
         for this in passes:
-            values = this.read(np.array(points))
+            values = this.read(np.array(points), name)
             local = _along_edge(values.stress[k], tangents)
-            drawn = _WEIGHT_NEAR * local[0] - _WEIGHT_FAR * local[1]
+            drawn = _to_axes(_WEIGHT_NEAR * local[0] - _WEIGHT_FAR * local[1], tangents[0])
             doubt = _WEIGHT_NEAR * values.doubt[k, 0] + _WEIGHT_FAR * values.doubt[k, 1]
-            stresses, zones = np.stack([drawn, local[0]]), values.zones[k, :1]
-            value, near = (float(v) for v in measure(name, stresses, part, zones))
+            stresses, zones = np.stack([drawn, values.stress[k, 0]]), values.zones[k, :1]
+            value, near = (float(v) for v in stress_measure(name, stresses, part, zones))
             samples.append(Sample(value, float(values.size[0]), float(doubt)))
             scale = max(abs(value), abs(near))  # of the last pass
         if not math.isfinite(samples[-1].value):
@@ -71,6 +71,11 @@ def _along_edge(stress: Floats, tangents: Floats) -> Floats:
     x, y, xy = stress.T
     along = x * c * c + y * s * s + 2.0 * xy * c * s
     return np.stack([along, x + y - along, (y - x) * c * s + xy * (c * c - s * s)], axis=1)
+
+
+def _to_axes(local: Floats, tangent: Floats) -> Floats:
+    """Stresses (3,) along, across, shear of an edge back to σx, σy, τxy."""
+    return np.asarray(_along_edge(local[None], np.array([[tangent[0], -tangent[1]]]))[0])
 
 
 def reading_places(part: Part, shape: Shape, spot: SingularSpot) -> tuple[Point, ...]:

@@ -13,8 +13,9 @@ from screenapp.model.combinations import loadings
 from screenapp.model.findings import Estimate, Peak
 from screenapp.model.part import Part, Point, StressLimit
 from screenapp.model.shape import Shape
-from screenapp.screening.passes import Pass, PointValues
-from screenapp.screening.peaks import REACH, RawPeak, feature_of, measure, place_in_words
+from screenapp.model.stress_measures import stress_measure
+from screenapp.screening.passes import Pass, PointValues, doubted_by
+from screenapp.screening.peaks import REACH, RawPeak, feature_of, place_in_words
 from screenapp.screening.structural import structural_stress
 from screenapp.screening.trust import Sample, growth, judge
 
@@ -70,7 +71,8 @@ def track(
 
 
 def _followed(part: Part, passes: Sequence[Pass]) -> list[_Followed]:
-    """All peaks of the last pass; every pass is read once, at all their places."""
+    """All peaks of the last pass; every pass is read once, at all their places (once more for each
+    measure that has a doubt of its own)."""
     raws = [
         (name, k, raw)
         for k in range(len(loadings(part)))
@@ -80,8 +82,11 @@ def _followed(part: Part, passes: Sequence[Pass]) -> list[_Followed]:
     if not raws:
         return []
     points = np.array([raw.at for _, _, raw in raws])
-    read = [p.read(points) for p in passes]
-    return [_Followed(name, k, raw, read, row) for row, (name, k, raw) in enumerate(raws)]
+    doubted = {name: doubted_by(name) for name, _, _ in raws}
+    read = {by: [p.read(points, by) for p in passes] for by in set(doubted.values())}
+    return [
+        _Followed(name, k, raw, read[doubted[name]], row) for row, (name, k, raw) in enumerate(raws)
+    ]
 
 
 def _zones_met(part: Part, last: Pass, followed: Sequence[_Followed]) -> Sequence[tuple[int, ...]]:
@@ -183,7 +188,7 @@ def _sample(
     if near:
         best = min(near, key=lambda p: math.dist(p.at, raw.at))
         return Sample(best.value, _finest(best.size, size, spot), doubt)
-    value = measure(name, values.stress[k, row], part, values.zones[k, row])
+    value = stress_measure(name, values.stress[k, row], part, values.zones[k, row])
     return Sample(float(value), size, doubt)
 
 

@@ -10,9 +10,10 @@ from numpy.typing import NDArray
 
 from screenapp.model.allowables import allowables
 from screenapp.model.findings import Fields
-from screenapp.model.out_of_plane import out_of_plane_ratio
+from screenapp.model.material_axes import RULES
 from screenapp.model.part import Part, StressLimit
-from screenapp.model.solution import principal, tresca, von_mises
+from screenapp.model.solution import principal
+from screenapp.model.stress_measures import stress_measure
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
@@ -54,12 +55,10 @@ def stress_of(fields: Fields, case: int, component: str, part: Part) -> Floats:
 def _component(fields: Fields, case: int, component: str, part: Part) -> Floats:
     """One stress component in the numbers of `Mesh.field_quads`, (n_fields,)."""
     stress = fields.stress.nodal[case]
-    if component == "von_mises":
-        return von_mises(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
-    if component == "tresca":
-        return tresca(stress, out_of_plane_ratio(part, fields.mesh.field_zones))
-    if component in ("sigma_1", "sigma_2"):
-        return principal(stress)[0 if component == "sigma_1" else 1]
+    if component == "sigma_2":
+        return principal(stress)[1]
+    if component not in ("sigma_x", "sigma_y", "tau_xy"):
+        return stress_measure(component, stress, part, fields.mesh.field_zones)
     return np.asarray(stress[:, ("sigma_x", "sigma_y", "tau_xy").index(component)])
 
 
@@ -80,8 +79,10 @@ def utilisation_of(fields: Fields, case: int, part: Part) -> Floats | NoField:
     for limit in limits:
         allowed = allowables(limit, part)
         if allowed is None:
-            what = "proof stress" if limit.against == "proof_stress" else "strength"
-            return NoField(f"The material has no {what}: give one under 2 Wall")
+            what = "no proof stress" if limit.against == "proof_stress" else "no strength"
+            if limit.measure in RULES:
+                what = "not all strengths in its axes"
+            return NoField(f"The material has {what}: give it under 2 Wall")
         # compression uses nothing of a limit on the largest principal stress
         measured = np.maximum(_component(fields, case, limit.measure, part), 0.0)
         shares.append(measured / np.array(allowed)[fields.mesh.field_zones + 1])

@@ -24,8 +24,9 @@ from screenapp.model.findings import Estimate, Fields, Findings, Peak, Trust
 from screenapp.model.part import Case, FixedSupport, Part, Point, PointLoad
 from screenapp.model.shape import Shape, shape_of
 from screenapp.model.solution import principal
+from screenapp.model.stress_measures import stress_measure
 from screenapp.screening.passes import Pass
-from screenapp.screening.peaks import measure, on_boundary, piece_at
+from screenapp.screening.peaks import on_boundary, piece_at
 
 FINER = 3.0
 REACH = 2.5
@@ -133,7 +134,7 @@ def _of_peak(
         truth = min(near, key=lambda p: math.dist(p.at, peak.at)).value
     else:
         read = fine.read(at)
-        truth = float(measure(peak.quantity, read.stress[k, 0], part, read.zones[k, 0]))
+        truth = float(stress_measure(peak.quantity, read.stress[k, 0], part, read.zones[k, 0]))
     singular = any(math.dist(p, peak.at) <= size for p in infinite)
     what = f"{part.cases[k].id} {peak.quantity} {peak.place}"
     return _outcome(part, what, "peak", peak.estimate, abs(truth), truth, singular)
@@ -151,7 +152,7 @@ def _of_readings(
         i, k = probes[reading.probe], cases[reading.case]
         kind: Kind = "boundary" if piece_at(shape, reading.at) >= 0 else "interior"
         stress, moved = true.stress[k, i], true.displacement[k, i]
-        von_mises = float(measure("von_mises", stress, part, true.zones[k, i]))
+        von_mises = float(stress_measure("von_mises", stress, part, true.zones[k, i]))
         first, second, _ = principal(stress)
         truths = [*stress, first, second, von_mises, *moved]
         largest = float(np.hypot(*fine.fields.solution.displacements[k].T).max())

@@ -29,7 +29,7 @@ class FieldPass:
     def __init__(self, stress: Callable[[Floats], Floats], size: float) -> None:
         self.stress, self.size = stress, size
 
-    def read(self, points: Floats) -> PointValues:
+    def read(self, points: Floats, measure: str = "von_mises") -> PointValues:
         n = len(points)
         return PointValues(
             self.stress(points)[None],

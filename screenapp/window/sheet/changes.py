@@ -94,10 +94,47 @@ def choose_material(document: Document, material: Material) -> None:
     apply(document, f"material {material.name}", replace(part, materials=materials, wall=wall))
 
 
+SHEET = Material(
+    "",
+    10_000.0,
+    0.1,
+    1000.0,
+    youngs_modulus_2=10_000.0,
+    shear_modulus=4_500.0,
+)
+"""What an orthotropic sheet of one's own begins with: as good as isotropic."""
+
+
+def own_sheet(document: Document) -> None:
+    """An orthotropic sheet of one's own; it begins with the present one's figures if that is one,
+    or with its modulus in both directions."""
+    m = document.part.material
+    if m is not None and m.orthotropic:
+        own_material(document)
+        return
+    base = SHEET
+    if m is not None:
+        base = Material(
+            "",
+            m.youngs_modulus,
+            m.poissons_ratio,
+            m.density,
+            expansion=m.expansion,
+            temperature_max=m.temperature_max,
+            youngs_modulus_2=m.youngs_modulus,
+            shear_modulus=0.5 * m.youngs_modulus / (1.0 + m.poissons_ratio),
+            expansion_2=m.expansion,
+        )
+    _add_own(document, base)
+
+
 def own_material(document: Document) -> None:
     """A material of one's own that begins with the present figures."""
+    _add_own(document, document.part.material or Material("", 210_000.0, 0.3, 7850.0))
+
+
+def _add_own(document: Document, base: Material) -> None:
     part = document.part
-    base = part.material or Material("", 210_000.0, 0.3, 7850.0)
     names = {m.name for m in part.materials}
     name = next(
         n for n in ("Own material", *(f"Own material {i}" for i in range(2, 999))) if n not in names

@@ -24,8 +24,21 @@ from screenapp.window.sheet.rows import RowOf
 from screenapp.window.traced import Traced, figure_of, traced_number
 
 MOST_PEAKS = 8
-QUANTITIES = {"von_mises": "", "tresca": "Tresca at ", "sigma_1": "σ₁ at ", "sigma_2": "σ₂ at "}
-HEADS = {"von_mises": "von Mises", "tresca": "Tresca", "sigma_1": "σ₁"}
+QUANTITIES = {
+    "von_mises": "",
+    "tresca": "Tresca at ",
+    "sigma_1": "σ₁ at ",
+    "sigma_2": "σ₂ at ",
+    "tsai_hill": "Tsai–Hill at ",
+    "largest_stress": "in axes at ",
+}
+HEADS = {
+    "von_mises": "von Mises",
+    "tresca": "Tresca",
+    "sigma_1": "σ₁",
+    "tsai_hill": "Tsai–Hill",
+    "largest_stress": "in axes",
+}
 
 
 class FindingsParagraph(Paragraph):

@@ -21,10 +21,13 @@ from screenapp.window.sheet.changes import with_field
 
 
 def add_stress_limit(document: Document) -> None:
-    """Von Mises stress under the proof stress (or the strength where only that is known)."""
+    """Von Mises stress under the proof stress (or the strength where only that is known); of
+    orthotropic sheets Tsai–Hill."""
     m = document.part.material
     only_strength = m is not None and m.proof_stress is None and m.strength is not None
     limit = StressLimit("", against="strength" if only_strength else "proof_stress")
+    if document.part.uses_orthotropic():
+        limit = StressLimit("", "tsai_hill")
     _add(document, "stress limit", limit)
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from screenapp.model.errors import Fault
+from screenapp.model.material_axes import RULES
 from screenapp.model.part import (
     DisplacementLimit,
     FatigueLimit,
@@ -29,8 +30,16 @@ MEASURES = {
     "von_mises": "von Mises stress",
     "tresca": "Tresca stress",
     "sigma_1": "largest tension",
+    "tsai_hill": "Tsai–Hill stress",
+    "largest_stress": "largest stress in the axes",
 }
-REMARKS = {"von_mises": "what yields", "tresca": "what yields, cautious", "sigma_1": "brittle"}
+REMARKS = {
+    "von_mises": "what yields",
+    "tresca": "what yields, cautious",
+    "sigma_1": "brittle",
+    "tsai_hill": "orthotropic",
+    "largest_stress": "orthotropic, says which way it breaks",
+}
 AGAINST = {"proof_stress": "proof stress", "strength": "tensile strength"}
 AT_RISING = {
     "undecided": "the verdict is undecided",
@@ -157,19 +166,34 @@ class LimitsParagraph(Paragraph):
             change.setter("factor"),
             field=f"limits.{limit.id}.factor",
         )
+        if limit.measure in RULES:
+            beside: tuple[Piece | str, ...] = (", isotropic zones under the ", against, ".")
+            return (
+                *(measure, " times ", factor, " stays under the strengths in the material's axes"),
+                *(beside if _has_isotropic(part) else (".",)),
+                *(" Where it keeps rising, ", self._at_rising(limit, change), "."),
+            )
         allowed: tuple[str, ...] = (".",)
         known = part.material and getattr(part.material, limit.against, None)
         if known and limit.factor > 0.0:
             allowed = (f": at most {q.show(known / limit.factor, 'stress')}.",)
-        rising = Value(
+        return (
+            *(measure, " times ", factor, " stays under the ", against),
+            *allowed,
+            *(" Where it keeps rising, ", self._at_rising(limit, change), "."),
+        )
+
+    def _at_rising(self, limit: StressLimit, change: limit_changes.LimitChange) -> Value:
+        return Value(
             "at_rising",
             AT_RISING.get(limit.at_rising, limit.at_rising),
             "What counts where the stress keeps rising",
             lambda key: change.set("at_rising", key),
             lambda: tuple(Choice(k, t) for k, t in AT_RISING.items()),
         )
-        return (
-            *(measure, " times ", factor, " stays under the ", against),
-            *allowed,
-            *(" Where it keeps rising, ", rising, "."),
-        )
+
+
+def _has_isotropic(part: Part) -> bool:
+    """Whether the wall or a zone is isotropic."""
+    used = (part.material_of(zone) for zone in range(-1, len(part.zones)))
+    return any(m is not None and not m.orthotropic for m in used)

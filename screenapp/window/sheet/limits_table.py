@@ -27,7 +27,13 @@ COLUMNS = (
 )
 
 
-SHORT = {"von_mises": "von Mises", "tresca": "Tresca", "sigma_1": "tension"}
+SHORT = {
+    "von_mises": "von Mises",
+    "tresca": "Tresca",
+    "sigma_1": "tension",
+    "tsai_hill": "Tsai–Hill",
+    "largest_stress": "stress in axes",
+}
 
 
 class LimitsTable(FigureTable):

@@ -11,9 +11,10 @@ from screenapp.window.sheet import changes
 from screenapp.window.sheet.paragraph import Paragraph
 from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
 from screenapp.window.sheet.quantities import Quantities
+from screenapp.window.sheet.sheet_figures import sheet_figures
 from screenapp.window.sheet.zone_rows import zone_rows
 
-OWN = "own"
+OWN, OWN_SHEET = "own", "own sheet"
 STATES = {
     "plane stress": ("plane stress", "Free to contract across: "),
     "plane strain": ("plane strain", "Held from contracting across: "),
@@ -68,7 +69,13 @@ class WallParagraph(Paragraph):
         material = Value(
             "material", part.material.name, "Material", self._choose, choices=self._choices
         )
-        self.wall.set("The wall is ", thickness, " thick, of ", material, ". ", lead, across, ".")
+        turned: tuple[Piece | str, ...] = ()
+        if part.material.orthotropic:
+            turned = (", its 1-axis at ", self._axis(q), " from x")
+        self.wall.set(
+            *("The wall is ", thickness, " thick, of ", material, *turned, ". "),
+            *(lead, across, "."),
+        )
         self.figures.set(*self._figures(part.material, q))
         self.figures.show()
         return ()
@@ -77,8 +84,21 @@ class WallParagraph(Paragraph):
         """That no material is chosen is told once."""
         return fault.field == "wall.material" and not self.document.part.wall.material
 
+    def _axis(self, q: Quantities) -> Value:
+        return q.value(
+            "axis",
+            self.document.part.wall.axis or 0.0,
+            "angle",
+            "Direction of the material's 1-axis",
+            lambda value: changes.set_wall(self.document, "1-axis of the wall", axis=value),
+            "Counter-clockwise from x",
+            field="wall.axis",
+        )
+
     def _figures(self, m: Material, q: Quantities) -> tuple[Piece | str, ...]:
         change = changes.MaterialChange(self.document, m.name)
+        if m.orthotropic:
+            return (*sheet_figures(m, change, q), *self._source(m, change))
         proof = q.optional_value(
             "proof_stress",
             m.proof_stress,
@@ -95,14 +115,6 @@ class WallParagraph(Paragraph):
             change.setter("strength"),
             field=f"materials.{m.name}.strength",
         )
-        source: tuple[Piece | str, ...] = (f" ({m.source})",) if m.source else ()
-        if m.source.startswith("own"):
-            source = (
-                *source,
-                " Called ",
-                Value("name", m.name, "Name of the material", change.rename),
-                ".",
-            )
         return (
             "E ",
             q.value(
@@ -135,11 +147,24 @@ class WallParagraph(Paragraph):
             ", strength ",
             strength,
             ".",
-            *source,
+            *self._source(m, change),
         )
 
+    def _source(self, m: Material, change: changes.MaterialChange) -> tuple[Piece | str, ...]:
+        """Where the figures come from; the name of own ones can be changed."""
+        source: tuple[Piece | str, ...] = (f" ({m.source})",) if m.source else ()
+        if not m.source.startswith("own"):
+            return source
+        name = Value("name", m.name, "Name of the material", change.rename)
+        return (*source, " Called ", name, ".")
+
     def _choices(self) -> tuple[Choice, ...]:
-        return (*self._offered(), Choice("-", ""), Choice(OWN, "Own material…", "give its figures"))
+        return (
+            *self._offered(),
+            Choice("-", ""),
+            Choice(OWN, "Own material…", "give its figures"),
+            Choice(OWN_SHEET, "Own orthotropic sheet…", "figures along two axes"),
+        )
 
     def _offered(self) -> tuple[Choice, ...]:
         part = self.document.part
@@ -158,12 +183,17 @@ class WallParagraph(Paragraph):
 
     def _remark(self, m: Material) -> str:
         q = Quantities.of(self.document)
+        if m.tension_1 is not None and m.tension_2 is not None:
+            return f"{q.bare(m.tension_1, 'stress')} / {q.show(m.tension_2, 'stress')}"
         return "" if m.proof_stress is None else q.show(m.proof_stress, "stress")
 
     def _choose(self, key: str) -> None:
         part = self.document.part
         if key == OWN:
             changes.own_material(self.document)
+            return
+        if key == OWN_SHEET:
+            changes.own_sheet(self.document)
             return
         known = {grade.name: grade.at(part.wall.thickness) for grade in library()}
         own = next((m for m in part.materials if m.name == key), None)

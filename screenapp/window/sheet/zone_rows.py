@@ -64,7 +64,10 @@ def _row(
     return RowOf(
         zone.id,
         (where,),
-        (name, ", ", thickness, " thick", *_sides(document, zone), ", of ", material),
+        (
+            *(name, ", ", thickness, " thick", *_sides(document, zone)),
+            *(", of ", material, *_axis(document, zone, q)),
+        ),
         lambda: changes.remove(document, zone.id),
         f"Remove {where}",
     )
@@ -95,6 +98,27 @@ def _sides(document: Document, zone: Zone) -> tuple[Value | str, ...]:
             ),
         ),
     )
+
+
+def _axis(document: Document, zone: Zone, q: Quantities) -> tuple[Value | str, ...]:
+    """Where the 1-axis of an orthotropic material lies in a zone; nothing of other materials."""
+    part = document.part
+    index = part.zones.index(zone)
+    material = part.material_of(index)
+    if material is None or not material.orthotropic:
+        return ()
+    value = q.value(
+        "axis",
+        part.wall_of(index).axis or 0.0,
+        "angle",
+        f"Direction of the 1-axis in zone {zone.id}",
+        lambda to: document.apply(
+            f"1-axis of zone {zone.id}", edits.set_zone(document.part, zone.id, axis=to)
+        ),
+        "Counter-clockwise from x",
+        field=f"zones.{zone.id}.axis",
+    )
+    return (", its 1-axis at ", value, " from x")
 
 
 def _choose(document: Document, zone: str, key: str) -> None:
