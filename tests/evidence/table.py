@@ -1,9 +1,10 @@
 """Rows of the README's evidence table: each evidence test records what it found.
 
 `record` only notes the row.  When the session ends and the environment variable
-SCREENAPP_WRITE_EVIDENCE is 1, `write` merges the rows of this session into
+SCREENAPP_WRITE_EVIDENCE is `all`, `write` puts the rows of this session into
 `tests/evidence/results.json` (sorted by check, figures rounded, so that the same results give
-the same bytes); `python -m tests.evidence.write_readme_table` puts them into README.md.
+the same bytes), with `some` it merges them into those that are there;
+`python -m tests.evidence.write_readme_table` puts them into README.md.
 """
 
 from __future__ import annotations
@@ -57,10 +58,12 @@ def record(
 
 
 def write(path: Path = RESULTS) -> None:
-    """Merge the noted rows into the file, if the switch is on and there are any."""
-    if os.environ.get(SWITCH) != "1" or not _rows:
+    """Write the noted rows, or merge them into the file, as the switch says."""
+    how = os.environ.get(SWITCH)
+    if how not in ("all", "some") or not _rows:
         return
-    merged = {row.check: row for row in read(path)} | _rows
+    kept = {row.check: row for row in read(path)} if how == "some" else {}
+    merged = kept | _rows
     rows = [asdict(merged[check]) for check in sorted(merged)]
     path.write_text(json.dumps(rows, indent=1, ensure_ascii=False) + "\n", encoding="utf-8")
 

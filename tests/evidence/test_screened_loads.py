@@ -25,6 +25,7 @@ from screenapp.model.part import (
 from tests.evidence.screened import Screened, chain
 from tests.evidence.table import record
 from tests.evidence.test_screened_ring import quarter_ring
+from tests.mechanics.zoned import pad
 
 NU, DENSITY = 0.3, 7850.0
 
@@ -47,6 +48,40 @@ def test_hot_spot_membrane(screened: Screened) -> None:
            found.value, error, "1 %")  # fmt: skip
     assert abs(error) < 1.0  # the plate is finite: (1/10)² of the stress
     assert found.trust == "settled"
+
+
+def test_bimetal_strip(screened: Screened) -> None:
+    """Curvature of two bonded strips of heights a and b that are warmed (Timoshenko 1925, J. Opt.
+    Soc. Am. 11, eq. 4, from memory), read off three places along the bottom edge."""
+    length, low, high, change = 120.0, 1.2, 1.8, 60.0
+    steel = Material("steel", 210_000.0, NU, DENSITY, expansion=12e-6)
+    brass = Material("brass", 105_000.0, 0.34, 8400.0, expansion=19e-6)
+    upper = pad([(-5.0, low), (length + 5.0, low), (length + 5.0, 9.0), (-5.0, 9.0)], None, "brass")
+    at = (30.0, 60.0, 90.0)
+    part = Part(
+        outline=chain([(0.0, 0.0), (length, 0.0), (length, low + high), (0.0, low + high)]),
+        zones=(upper,),
+        wall=Wall(2.0, "steel"),
+        materials=(steel, brass),
+        supports=(
+            RollerSupport("s1", "c1", 0.0),
+            RollerSupport("s2", "c1", 90.0),
+            RollerSupport("s3", "c4", 0.0),
+        ),
+        cases=(Case("k1", "warm", (TemperatureLoad("l1", change),)),),
+        readings=tuple(Probe(f"p{i}", f"at {x:g}", (x, 0.0)) for i, x in enumerate(at, 1)),
+    )
+    case = screened(part)
+    read = [case.reading(f"at {x:g}", "u_y") for x in at]
+    curvature = -(read[0].value - 2.0 * read[1].value + read[2].value) / 30.0**2
+    m, n = low / high, steel.youngs_modulus / brass.youngs_modulus
+    wanted = 6.0 * 7e-6 * change * (1.0 + m) ** 2 / (low + high)
+    wanted /= 3.0 * (1.0 + m) ** 2 + (1.0 + m * n) * (m**2 + 1.0 / (m * n))
+    error = 100.0 * (curvature / wanted - 1.0)
+    record("bimetal strip, evenly warmed, screened: curvature [1/m]",
+           "Timoshenko 1925 (derived)", 1e3 * wanted, 1e3 * curvature, error, "1 %")  # fmt: skip
+    assert abs(error) < 1.0  # slender beams: the ends are 10 heights away
+    assert {number.trust for number in read} == {"settled"}
 
 
 def test_spinning_ring(screened: Screened) -> None:

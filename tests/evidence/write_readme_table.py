@@ -1,7 +1,7 @@
 """Put the evidence table between its markers in README.md.
 
 Run from the repository: `python -m tests.evidence.write_readme_table`, after
-`SCREENAPP_WRITE_EVIDENCE=1 python -m pytest tests/evidence`.
+`SCREENAPP_WRITE_EVIDENCE=all python -m pytest tests/evidence`.
 """
 
 from __future__ import annotations
@@ -31,7 +31,7 @@ def main() -> int:
     """Rewrite README.md; 1 if that cannot be done."""
     rows = read()
     if not rows:
-        print("no results: run the evidence tests with SCREENAPP_WRITE_EVIDENCE=1 first")
+        print("no results: run the evidence tests with SCREENAPP_WRITE_EVIDENCE=all first")
         return 1
     try:
         text = with_table(README.read_text(encoding="utf-8"), markdown(rows))
