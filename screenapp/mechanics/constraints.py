@@ -33,6 +33,7 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.model.shape import Shape
 from screenapp.model.support_records import gives_way
@@ -297,7 +298,7 @@ def _holds_of(support: Support, normals: Floats) -> list[tuple[Floats, float]]:
     if isinstance(support, PrescribedSupport):
         wanted = ((x, support.x), (y, support.y))
         return [(axis, value) for axis, value in wanted if value is not None]
-    if isinstance(support, ElasticSupport) or gives_way(support):
+    if isinstance(support, ElasticSupport | WeldSupport) or gives_way(support):
         return []
     if isinstance(support, PinSupport | SymmetrySupport | BoltSupport):
         return [(normals, 0.0)]

@@ -27,7 +27,7 @@ from screenapp.model.edge_parts import pieces_under
 from screenapp.model.members import bolt_holes
 from screenapp.model.mesh import Mesh
 from screenapp.model.misfits import movements
-from screenapp.model.part import BoltSupport, ElasticSupport, Part
+from screenapp.model.part import BoltSupport, ElasticSupport, Part, WeldSupport
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution
 
@@ -110,6 +110,12 @@ def beds(part: Part, shape: Shape) -> tuple[Bed, ...]:
     for owner, s in enumerate(part.supports):
         if isinstance(s, ElasticSupport):
             found.append(Bed(owner, s.on, pieces_under(part, shape, s), s.normal, s.along))
+        elif isinstance(s, WeldSupport):
+            for piece in pieces_under(part, shape, s):
+                material = part.material_of(shape.zone_behind(piece))
+                if material is not None:
+                    shear = material.youngs_modulus / (2.0 * (1.0 + material.poissons_ratio))
+                    found.append(Bed(owner, s.on, (piece,), material.youngs_modulus, shear))
         elif isinstance(s, BoltSupport) and s.stiffness is not None:
             # a rim that moves by u along x meets ∫ k cos²θ r dθ u = π r k u
             found += [

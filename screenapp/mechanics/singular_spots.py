@@ -35,6 +35,7 @@ from screenapp.model.part import (
     PrescribedSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.model.shape import Shape
 from screenapp.model.support_records import gives_way
@@ -118,7 +119,7 @@ def _held(support: Support) -> Held:
         if support.x is None and support.y is None:
             return "free"
         return 0.0 if support.x is not None else 0.5 * math.pi
-    if isinstance(support, ElasticSupport) or gives_way(support):
+    if isinstance(support, ElasticSupport | WeldSupport) or gives_way(support):
         return "free"  # springs give a finite traction
     if isinstance(support, PinSupport | SymmetrySupport | BoltSupport):
         return "normal"

@@ -13,12 +13,13 @@ from screenapp.model.findings import Estimate
 from screenapp.model.kinds import KINDS, KindName
 from screenapp.model.part import DisplayUnits
 
-EstimateKind = Literal["stress", "displacement", "factor", "force", "moment"]
+EstimateKind = Literal["stress", "displacement", "factor", "force", "moment", "line load"]
 
 _KINDS: dict[EstimateKind, KindName] = {
     "stress": "stress",
     "displacement": "length",
     "factor": "number",
+    "line load": "line_load",
     "force": "force",
     "moment": "moment",
 }
@@ -26,6 +27,7 @@ _NAUGHT: dict[EstimateKind, float] = {
     "stress": 1e-6,
     "displacement": 1e-7,
     "factor": 1e-6,
+    "line load": 1e-9,
     "force": 1e-6,
     "moment": 1e-3,
 }

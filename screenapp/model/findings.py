@@ -81,6 +81,27 @@ class Peak:
 
 
 @dataclass(frozen=True)
+class LineForce:
+    """Where a weld or a bed of springs gives most for each length in a case.
+
+    Attributes:
+        support: its id.
+        largest: size of the force per length [N/mm].
+        at: where that is [mm].
+        normal, along: its share across the boundary (positive pulls on the part) and along it
+            (positive forwards, with the material on the left) on the last pass [N/mm].
+        throat: of the weld [mm]; None for springs.
+    """
+
+    support: str
+    largest: Estimate
+    at: Point
+    normal: float
+    along: float
+    throat: float | None = None
+
+
+@dataclass(frozen=True)
 class CaseFindings:
     """One load case: its peaks, largest first, and its statics.
 
@@ -97,6 +118,7 @@ class CaseFindings:
     reactions: tuple[Reaction, ...]
     balance: Balance
     loads: tuple[LoadResultant, ...] = ()
+    line_forces: tuple[LineForce, ...] = ()
 
 
 @dataclass(frozen=True)

@@ -118,6 +118,9 @@ from screenapp.model.support_records import (
 from screenapp.model.support_records import (
     SymmetrySupport as SymmetrySupport,
 )
+from screenapp.model.support_records import (
+    WeldSupport as WeldSupport,
+)
 
 Point = tuple[float, float]
 

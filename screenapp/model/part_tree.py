@@ -54,6 +54,7 @@ from screenapp.model.part import (
     TemperatureLoad,
     Term,
     Wall,
+    WeldSupport,
     Zone,
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, Pattern, RowPattern
@@ -74,6 +75,7 @@ SUPPORTS: dict[str, type] = {
     "symmetry": SymmetrySupport,
     "elastic": ElasticSupport,
     "bolts": BoltSupport,
+    "weld": WeldSupport,
 }
 LOADS: dict[str, type] = {
     "pressure": PressureLoad,

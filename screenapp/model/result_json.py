@@ -101,6 +101,23 @@ def _case(case: CaseFindings) -> Tree:
             }
             for r in case.loads
         ],
+        **(
+            {
+                "line_forces": [
+                    {
+                        "support": f.support,
+                        **estimate_tree(f.largest),
+                        "at": point_tree(f.at),
+                        "normal": float(f.normal),
+                        "along": float(f.along),
+                        **({} if f.throat is None else {"throat": float(f.throat)}),
+                    }
+                    for f in case.line_forces
+                ]
+            }
+            if case.line_forces
+            else {}
+        ),
         "reactions": [_reaction(r) for r in case.reactions],
         "balance": {
             "force": finite(case.balance.force),

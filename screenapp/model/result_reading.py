@@ -13,6 +13,7 @@ from screenapp.model.findings import (
     Estimate,
     Findings,
     LimitFindings,
+    LineForce,
     MeshFindings,
     PassSummary,
     Peak,
@@ -92,6 +93,17 @@ def _case_of(tree: Tree) -> CaseFindings:
                 None if r["at"] is None else point_of(r["at"]),
             )
             for r in tree.get("loads", ())
+        ),
+        line_forces=tuple(
+            LineForce(
+                f["support"],
+                estimate_of(f),
+                point_of(f["at"]),
+                float(f["normal"]),
+                float(f["along"]),
+                f.get("throat"),
+            )
+            for f in tree.get("line_forces", ())
         ),
     )
 

@@ -26,6 +26,7 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.model.shape import Shape
 
@@ -92,6 +93,8 @@ def held_by(part: Part, support: Support, shape: Shape) -> Held:
         else:
             angle = math.radians(support.angle)
             parts = [(np.tile([math.cos(angle), math.sin(angle)], (n, 1)), 0.0)]
+    elif isinstance(support, WeldSupport):
+        parts = [(x, 0.0), (y, 0.0)]
     elif isinstance(support, PrescribedSupport):
         given = ((x, support.x), (y, support.y))
         parts = [(direction, value) for direction, value in given if value is not None]

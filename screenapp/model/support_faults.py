@@ -24,6 +24,7 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.model.rigid_motions import FreeMotion, free_motions, held_by
 from screenapp.model.shape import Shape
@@ -33,6 +34,9 @@ from screenapp.model.support_records import gives_way, stands_on
 STIFFEST = 1e9
 """No bed of springs may be stiffer [N/mm²], no bolt [N/mm]: thousands of times what a wall of metal
 is."""
+
+THICKEST = 100.0
+"""Throat of a weld that is surely meant otherwise [mm]."""
 
 _WAYS = {"normal": "across", "along": "along"}
 
@@ -150,6 +154,21 @@ def one_support_faults(
             )
     elif isinstance(support, ElasticSupport):
         yield from _elastic_faults(support, name, where, on_corner)
+    elif isinstance(support, WeldSupport):
+        if on_corner:
+            yield Fault(
+                f"{name} is a weld on corner {support.on}, which has no length",
+                "put it on an edge or a hole",
+                f"{where}.on",
+                (*ids, support.on),
+            )
+        if not (math.isfinite(support.throat) and 0.0 < support.throat <= THICKEST):
+            yield Fault(
+                f"the throat of {name} is {support.throat:g} mm",
+                f"give a throat above zero and up to {THICKEST:g} mm",
+                f"{where}.throat",
+                ids,
+            )
     elif isinstance(support, PrescribedSupport):
         given = {k: v for k, v in (("x", support.x), ("y", support.y)) if v is not None}
         if not given:

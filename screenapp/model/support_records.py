@@ -109,6 +109,23 @@ class BoltSupport:
     stiffness: float | None = None
 
 
+@dataclass(frozen=True)
+class WeldSupport:
+    """A fillet weld along an edge or round a hole, with a `throat` [mm] (of both sides together
+    where both are welded).
+
+    It gives way as a strip of the part's own material as wide as it is thick: E across and G along
+    the boundary, N for each mm of its length and mm of movement, whatever its throat.  So the force
+    per length stays finite at its ends.
+    """
+
+    id: str
+    on: str
+    throat: float
+    start: float | None = None
+    end: float | None = None
+
+
 Support = (
     FixedSupport
     | RollerSupport
@@ -117,6 +134,7 @@ Support = (
     | SymmetrySupport
     | ElasticSupport
     | BoltSupport
+    | WeldSupport
 )
 
 
@@ -129,4 +147,4 @@ def gives_way(support: Support) -> bool:
     """Whether it only pushes back against a movement and holds nothing exactly."""
     if isinstance(support, BoltSupport):
         return support.stiffness is not None
-    return isinstance(support, ElasticSupport)
+    return isinstance(support, ElasticSupport | WeldSupport)

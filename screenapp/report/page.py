@@ -17,6 +17,7 @@ from screenapp.model.estimate_text import EstimateKind, estimate_text
 from screenapp.model.findings import CutFindings, Estimate, Findings, Peak
 from screenapp.model.gauge_text import share_text, stiffness_text
 from screenapp.model.history_figure import peak_figure
+from screenapp.model.line_force_text import line_force_text
 from screenapp.model.part import (
     BodyLoad,
     BoltSupport,
@@ -30,6 +31,7 @@ from screenapp.model.part import (
     SpinLoad,
     Support,
     TemperatureLoad,
+    WeldSupport,
 )
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.support_records import stands_on
@@ -86,6 +88,7 @@ def record_page(
         share=share_text,
         load_words=load_words,
         support_words=support_words,
+        line_force_text=lambda force: line_force_text(force, units),
         hole_words=hole_words,
         material_words=material_words,
         rings=rings(part),
@@ -203,6 +206,8 @@ def support_words(support: Support) -> str:
         ways = (("across", support.normal), ("along", support.along))
         given = [f"{v:g} N/mm² {way} it" for way, v in ways if v]
         return f"{on} is held by springs of {' and '.join(given)}"
+    if isinstance(support, WeldSupport):
+        return f"{on} is held by a weld of throat {support.throat:g} mm"
     if isinstance(support, BoltSupport):
         holes = " and ".join(stands_on(support))
         bolts = "rigid bolts"

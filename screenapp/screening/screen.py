@@ -50,6 +50,7 @@ from screenapp.screening.capacity import refuse_beyond_memory
 from screenapp.screening.cuts import cuts
 from screenapp.screening.hand_checks import hand_checks
 from screenapp.screening.limits import judge_limits, overall
+from screenapp.screening.line_forces import line_forces
 from screenapp.screening.passes import Pass
 from screenapp.screening.plain_quads import plain_losses
 from screenapp.screening.probes import readings
@@ -166,6 +167,7 @@ def _done(
     numbers = [n for n in others if np.isfinite(n.high)]  # what could not be read never settles
     numbers += [p.estimate for c in cases for p in c.peaks]
     numbers += [c.displacement_max for c in cases]
+    numbers += [force.largest for c in cases for force in c.line_forces]
     numbers += [p.structural for c in cases for p in c.peaks if p.structural is not None]
     return all(n.trust != "unsettled" for n in numbers) and all(
         r.trust != "unsettled" for r in read
@@ -202,6 +204,7 @@ def _cases(
                 last.solution.reactions[k],
                 last.solution.balance[k],
                 load_resultants(part, shape, case),
+                line_forces(part, shape, passes, k),
             )
         )
     return tuple(found)

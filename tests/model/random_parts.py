@@ -49,6 +49,7 @@ from screenapp.model.part import (
     TemperatureLoad,
     Term,
     Wall,
+    WeldSupport,
 )
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 
@@ -108,6 +109,7 @@ def _supports(i: int) -> st.SearchStrategy[object]:
         st.builds(SymmetrySupport, name, on, maybe, maybe),
         st.builds(ElasticSupport, name, on, numbers, numbers, maybe, maybe),
         st.builds(BoltSupport, name, on, st.sampled_from([(), ("h1",), ("h2.1-3", "gone")]), maybe),
+        st.builds(WeldSupport, name, on, numbers, maybe, maybe),
         st.builds(RollerSupport, name, on, maybe, maybe, maybe),
         st.builds(PrescribedSupport, name, on, maybe, maybe, maybe, maybe),
     )

@@ -43,7 +43,7 @@ def test_it_is_chosen_in_the_sheet_for_a_hole_only(qtbot: QtBot) -> None:
     assert sheet.document.part.supports[0] == RollerSupport("s1", "h1")
     edge = paragraph.list.row("s2").sentence.field("kind").piece
     keys = [c.key for c in edge.choices()]
-    assert keys == ["fixed", "normal", "symmetry", "angle", "springs", "moved"]
+    assert keys == ["fixed", "normal", "symmetry", "angle", "weld", "springs", "moved"]
     pick(paragraph.list.row("s2").sentence.field("kind"), "on a line of symmetry")
     assert sheet.document.part.supports[1] == SymmetrySupport("s2", "e4")
 

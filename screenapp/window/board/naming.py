@@ -32,6 +32,7 @@ from screenapp.model.part import (
     Support,
     SymmetrySupport,
     TemperatureLoad,
+    WeldSupport,
     Zone,
 )
 from screenapp.model.pattern import size_of
@@ -115,6 +116,8 @@ def _held(record: Support, units: DisplayUnits) -> str:
         return "is a line of symmetry"
     if isinstance(record, ElasticSupport):
         return f"is held by springs, {spring_words(record, units)}"
+    if isinstance(record, WeldSupport):
+        return f"is held by a weld of throat {_length(record.throat, units)}"
     if isinstance(record, BoltSupport):
         more = f" with {' and '.join(record.also)}" if record.also else ""
         if record.stiffness is None:

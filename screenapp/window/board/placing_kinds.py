@@ -33,6 +33,7 @@ from screenapp.model.part import (
     Support,
     SymmetrySupport,
     TemperatureLoad,
+    WeldSupport,
 )
 from screenapp.window.board.typed_entry import EntryField
 
@@ -188,6 +189,13 @@ BOLTS = Way(
     (EntryField("stiffness", "each gives way by", "spring_stiffness", (), "rigid"),),
     lambda id_, on, values: BoltSupport(id_, on, (), values.get("stiffness")),
 )
+WELD = Way(
+    "weld",
+    "Weld",
+    "A fillet weld, about as stiff as the wall's own material; the force per length is told.",
+    (EntryField("throat", "throat", "length"),),
+    lambda id_, on, values: WeldSupport(id_, on, values["throat"]) if "throat" in values else None,
+)
 CORNER_ROLLER = Way(
     "roller",
     "Roller",
@@ -328,8 +336,8 @@ def holding_ways(part: Part, on: str) -> tuple[Way, ...]:
     if isinstance(found.record, CircleHole):
         return FIXED, PIN, PUSHING_PIN, BOLTS, SPRINGS, MOVED
     if isinstance(found.record, Edge) and found.record.through is None:
-        return FIXED, ROLLER, SYMMETRY, SPRINGS, MOVED
-    return FIXED, (PIN if found.kind == "hole" else ROLLER), SPRINGS, MOVED
+        return FIXED, ROLLER, SYMMETRY, WELD, SPRINGS, MOVED
+    return FIXED, (PIN if found.kind == "hole" else ROLLER), WELD, SPRINGS, MOVED
 
 
 def bolting_ways(part: Part, holes: Sequence[str]) -> tuple[Way, ...]:
@@ -386,6 +394,8 @@ def read_back(record: Record) -> tuple[str, dict[str, float]]:
         return "pushing", {}
     if isinstance(record, RollerSupport):
         return "roller", {} if record.angle is None else {"angle": record.angle}
+    if isinstance(record, WeldSupport):
+        return "weld", {"throat": record.throat}
     if isinstance(record, BoltSupport):
         return "bolts", {} if record.stiffness is None else {"stiffness": record.stiffness}
     if isinstance(record, ElasticSupport):

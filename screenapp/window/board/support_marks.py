@@ -16,6 +16,7 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.window.board.drawn_part import DrawnPart
 from screenapp.window.board.frame import Floats, Frame
@@ -48,6 +49,8 @@ def support_mark(drawn: DrawnPart, frame: Frame, support: Support) -> Mark:
         _pin(mark, at, radius_px(drawn, frame, support.on))
     elif isinstance(support, ElasticSupport):
         _sprung(mark, drawn, frame, support)
+    elif isinstance(support, WeldSupport):
+        _welded(mark, drawn, frame, support)
     elif isinstance(support, BoltSupport):
         _bolted(mark, at, radius_px(drawn, frame, support.on), support.stiffness is not None)
     elif isinstance(support, RollerSupport):
@@ -162,6 +165,14 @@ def _bolted(mark: Mark, at: Floats, radius: float, soft: bool) -> None:
         mark.line(*_coil(foot, DOWN, side, 14.0))
         foot = foot + 14.0 * DOWN
     _ground(mark, foot, DOWN, side)
+
+
+def _welded(mark: Mark, drawn: DrawnPart, frame: Frame, support: WeldSupport) -> None:
+    """A seam: filled triangles that stand on the boundary, side by side."""
+    line = stations(drawn, frame, support.on, 10.0, span=span_of(support))
+    for p, out, along in zip(line.at, line.out, line.along, strict=True):
+        mark.fills.append(np.array([p - 5.0 * along, p + 5.0 * along, p + 8.0 * out]))
+        mark.line(p - 5.0 * along, p + 8.0 * out, p + 5.0 * along)
 
 
 def _coil(at: Floats, way: Floats, side: Floats, long: float) -> list[Floats]:

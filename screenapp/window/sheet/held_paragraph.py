@@ -17,6 +17,7 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.model.support_records import stands_on
 from screenapp.window.sheet import changes, support_changes
@@ -36,6 +37,7 @@ KINDS = (
     Choice("pushing", "held by a pin that only pushes", "bears on the side that is pressed"),
     Choice("angle", "held along one direction", "slides across it"),
     Choice("bolts", "held by bolts", "the force in each is told"),
+    Choice("weld", "held by a weld", "the force per length is told"),
     Choice("springs", "held by springs", "it gives way in proportion to the force"),
     Choice("moved", "moved by a given amount", "x, y or both"),
 )
@@ -123,6 +125,17 @@ class HeldParagraph(Paragraph):
                 field=f"supports.{support.id}.angle",
             )
             return (kind("angle"), ", at ", angle)
+        if isinstance(support, WeldSupport):
+            throat = q.value(
+                "throat",
+                support.throat,
+                "length",
+                f"Throat of the weld at {where}",
+                change.setter("throat"),
+                "of both sides together where both are welded",
+                f"supports.{support.id}.throat",
+            )
+            return (kind("weld"), ", throat ", throat)
         if isinstance(support, BoltSupport):
             return (kind("bolts"), *bolt_pieces(part, support, change, q))
         if isinstance(support, ElasticSupport):
@@ -180,13 +193,13 @@ def _kinds(part: Part, support: Support) -> tuple[Choice, ...]:
     if isinstance(record, Edge):
         out = {"pin", "pushing", "bolts", *(() if record.through is None else ("symmetry",))}
     elif isinstance(record, CircleHole):
-        out = {"normal", "symmetry"}
+        out = {"normal", "symmetry", "weld"}
     else:
         out = {
             "pin",
             "pushing",
             "symmetry",
             "bolts",
-            *(("springs",) if isinstance(record, Corner) else ()),
+            *(("springs", "weld") if isinstance(record, Corner) else ()),
         }
     return tuple(c for c in KINDS if c.key not in out)

@@ -6,6 +6,7 @@ import math
 
 from screenapp.model.features import find, place_name
 from screenapp.model.findings import CaseFindings
+from screenapp.model.line_force_text import line_force_text
 from screenapp.model.part import Part
 from screenapp.model.solution import Reaction
 from screenapp.window.sheet.direction import direction_text
@@ -36,6 +37,17 @@ def reaction_rows(part: Part, case: CaseFindings, quiet: bool) -> list[RowOf]:
             quiet=quiet,
         )
         rows.append(RowOf(reaction.support, (where,), (words,), also=(on,)))
+        rows += [
+            RowOf(
+                f"{force.support} length",
+                (),
+                (Words(f"it {line_force_text(force, part.display_units)}", quiet=True),),
+                also=(on,),
+                selects=False,
+            )
+            for force in case.line_forces
+            if force.support == reaction.support
+        ]
         rows += _bolt_rows(reaction, nothing, case.name, q)
     return rows
 

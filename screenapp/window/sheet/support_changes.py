@@ -17,9 +17,13 @@ from screenapp.model.part import (
     RollerSupport,
     Support,
     SymmetrySupport,
+    WeldSupport,
 )
 from screenapp.window.document import Document
 from screenapp.window.sheet.changes import with_field
+
+THROAT = 3.0
+"""Throat that a weld begins with [mm]: the least that EN 1993-1-8 allows (4.5.2, from memory)."""
 
 SPRINGS = 100.0
 """Stiffness that a bed of springs begins with [N/mm²], to be typed over."""
@@ -51,6 +55,8 @@ class SupportChange:
             new = RollerSupport(old.id, old.on)
         elif kind == "pushing":
             new = PinSupport(old.id, old.on)
+        elif kind == "weld":
+            new = WeldSupport(old.id, old.on, THROAT)
         elif kind == "bolts":
             new = BoltSupport(old.id, old.on)
         elif kind == "springs":

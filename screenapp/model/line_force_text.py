@@ -1,0 +1,34 @@
+"""The largest force per length of a weld or a bed of springs, in words."""
+
+from __future__ import annotations
+
+from screenapp.model.estimate_text import estimate_text
+from screenapp.model.findings import Estimate, LineForce
+from screenapp.model.part import DisplayUnits
+from screenapp.model.units import format_quantity
+
+
+def line_force_text(force: LineForce, units: DisplayUnits) -> str:
+    """ "at most 120 ± 1 N/mm at (0 mm, 20 mm), 80 N/mm across and 90 N/mm along; ..."
+
+    A weld's throat stress is the resultant over the throat, whatever its direction (EN 1993-1-8,
+    4.5.3.3, simplified method, from memory); what it may be is not judged.
+    """
+    if force.largest.value == 0.0:
+        return "gives nothing along its length"
+    x, y = (format_quantity(v, "length", units) for v in force.at)
+    across, along = (
+        format_quantity(abs(v), "line_load", units) for v in (force.normal, force.along)
+    )
+    way = "pulling across" if force.normal >= 0.0 else "pressing across"
+    text = (
+        f"gives at most {estimate_text(force.largest, 'line load', units)} at ({x}, {y}), "
+        f"{across} {way} and {along} along"
+    )
+    if force.throat is None:
+        return text
+    most, throat = force.largest, force.throat
+    stress = Estimate(most.value / throat, most.low / throat, most.high / throat, most.trust)
+    return f"{text}: {estimate_text(stress, 'stress', units)} in the throat of " + format_quantity(
+        throat, "length", units
+    )
