@@ -62,7 +62,7 @@ def test_hole_off_the_middle(screened: Screened) -> None:
 
 
 def test_curved_bar(screened: Screened) -> None:
-    """Golovin's exact solution of pure bending lies 0.2 to 0.3 % above the theory at ro/ri = 1.5;
+    """Golovin's exact solution of pure bending lies 0.2 % above the theory at ro/ri = 1.5;
     the force, which the theory spreads evenly, adds as much."""
     found = screened(fine(hook(10.0, 15.0, 60.0))).peak("e6").value
     hold(

@@ -14,8 +14,8 @@ from screenapp.model.part import Point
 from screenapp.window.board import sketch
 from screenapp.window.board.frame import Frame
 from screenapp.window.board.quantity import written
-from screenapp.window.board.tools.base import Place, Tool
-from screenapp.window.board.tools.drawing import PLACE_FIELDS, DrawTool
+from screenapp.window.board.tools.base import Place
+from screenapp.window.board.tools.two_places import TwoPlaceTool
 from screenapp.window.board.typed_entry import EntryField
 
 if TYPE_CHECKING:
@@ -27,7 +27,7 @@ SIZE_FIELDS = (
 )
 
 
-class CircleTool(DrawTool):
+class CircleTool(TwoPlaceTool):
     """Stays in hand, for holes seldom come alone."""
 
     name: ClassVar[str] = "Round hole"
@@ -35,30 +35,13 @@ class CircleTool(DrawTool):
     line: ClassVar[str] = "Click the centre, then the rim; or type the diameter."
     icon: ClassVar[str] = "circle"
     group: ClassVar[str] = "holes"
+    hints: ClassVar[tuple[str, str]] = ("Click the centre of the hole.", "Click the rim.")
+    second_fields: ClassVar[tuple[EntryField, ...]] = SIZE_FIELDS
 
     def __init__(self, canvas: Canvas) -> None:
         super().__init__(canvas)
-        self.centre: Point | None = None
         self._given: dict[str, str | None] = {}
         self._exact: float | None = None
-
-    def stop(self, following: Tool | None) -> None:
-        """Drop the centre."""
-        self.centre = None
-        self.typed = {}
-
-    def step_back(self) -> bool:
-        """Drop the centre."""
-        had, self.centre = self.centre is not None, None
-        return had
-
-    def hint(self) -> str:
-        """What the next click does."""
-        return "Click the centre of the hole." if self.centre is None else "Click the rim."
-
-    def entry_fields(self) -> tuple[EntryField, ...]:
-        """A place, then a size."""
-        return PLACE_FIELDS if self.centre is None else SIZE_FIELDS
 
     @property
     def radius(self) -> float | None:
@@ -68,7 +51,7 @@ class CircleTool(DrawTool):
         if "diameter" in self.typed:
             return self.typed["diameter"] / 2.0
         place = self.canvas.place
-        return None if self.centre is None or place is None else math.dist(self.centre, place.at)
+        return None if self.first is None or place is None else math.dist(self.first, place.at)
 
     def entry_accept(self, values: dict[str, float]) -> None:
         """Take the size as it was typed."""
@@ -80,14 +63,14 @@ class CircleTool(DrawTool):
 
     def typed_point(self, cursor: Point | None) -> Point | None:
         """Once the centre is set: a place on the rim."""
-        if self.centre is None:
+        if self.first is None:
             return super().typed_point(cursor)
         radius = self.radius
-        return None if radius is None else (self.centre[0] + radius, self.centre[1])
+        return None if radius is None else (self.first[0] + radius, self.first[1])
 
     def entry_live(self) -> dict[str, float]:
         """Place or sizes."""
-        if self.centre is None:
+        if self.first is None:
             return super().entry_live()
         radius = self.radius
         return {} if radius is None else {"diameter": 2.0 * radius, "radius": radius}
@@ -95,10 +78,10 @@ class CircleTool(DrawTool):
     def accept_point(self, at: Point) -> None:
         """Set the centre, then the size."""
         taken = self.canvas.entry.taken
-        if self.centre is None:
-            self.centre, self._given = at, taken
+        if self.first is None:
+            self.first, self._given = at, taken
             return
-        part, centre = self.canvas.document.part, self.centre
+        part, centre = self.canvas.document.part, self.first
         diameter = self._exact if self._exact is not None else 2.0 * (at[0] - centre[0])
         if diameter > 0.0 and self.ask_ring(circle_loop(centre, diameter), at, self._drawn):
             return
@@ -116,34 +99,28 @@ class CircleTool(DrawTool):
             self._drawn()
 
     def _drawn(self) -> None:
-        self.centre = None
+        self.first = None
 
     def press(self, place: Place) -> None:
         """A second click on the centre itself is no size."""
-        if self.centre is not None and not self.typed and self.radius == 0.0:
+        if self.first is not None and not self.typed and self.radius == 0.0:
             return
         super().press(place)
 
     def enter(self) -> None:
         """Take the size under the cursor."""
         at = self.point()
-        if self.centre is not None and at is not None:
+        if self.first is not None and at is not None:
             self.accept_point(at)
 
-    def paint(self, painter: QPainter, frame: Frame) -> None:
+    def paint_between(self, painter: QPainter, frame: Frame, first: Point, _at: Point) -> None:
         """The circle with its sizes."""
-        radius, at = self.radius, self.point()
-        if self.centre is None:
-            if self.typed and at is not None:
-                sketch.dot(painter, frame, at)
+        radius = self.radius
+        if radius is None:
             return
-        middle = frame.px(self.centre)
-        if radius is not None:
-            painter.setPen(sketch.line_pen())
-            painter.setBrush(Qt.BrushStyle.NoBrush)
-            wide = radius * frame.scale
-            painter.drawEllipse(middle, wide, wide)
-            units = self.canvas.part.display_units
-            text = f"⌀ {written(2.0 * radius, 'length', units)}"
-            sketch.label(painter, text, middle + QPointF(0.0, -wide - 14.0))
-        sketch.dot(painter, frame, self.centre)
+        middle, wide = frame.px(first), radius * frame.scale
+        painter.setPen(sketch.line_pen())
+        painter.setBrush(Qt.BrushStyle.NoBrush)
+        painter.drawEllipse(middle, wide, wide)
+        text = f"⌀ {written(2.0 * radius, 'length', self.canvas.part.display_units)}"
+        sketch.label(painter, text, middle + QPointF(0.0, -wide - 14.0))

@@ -49,12 +49,11 @@ class TwoPlaceTool(DrawTool):
     def paint(self, painter: QPainter, frame: Frame) -> None:
         """What a click would draw; before the first place only a dot at a typed one."""
         at = self.point()
-        if at is None:
-            return
         if self.first is not None:
-            self.paint_between(painter, frame, self.first, at)
+            if at is not None:
+                self.paint_between(painter, frame, self.first, at)
             sketch.dot(painter, frame, self.first)
-        elif self.typed:
+        elif self.typed and at is not None:
             sketch.dot(painter, frame, at)
 
     def paint_between(self, painter: QPainter, frame: Frame, first: Point, at: Point) -> None:
