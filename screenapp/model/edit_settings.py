@@ -30,6 +30,13 @@ def set_notes(part: Part, notes: str) -> Part:
     return replace(part, notes=notes)
 
 
+def set_job_details(part: Part, **texts: str) -> Part:
+    """Say who did and who checked the screening, or what it belongs to, by the fields of
+    `JobDetails`; each text becomes one line."""
+    lines = {field: " ".join(text.split()) for field, text in texts.items()}
+    return replace(part, record=replace(part.record, **lines))
+
+
 def set_units(part: Part, units: DisplayUnits) -> Part:
     """Choose the units that numbers are shown in."""
     return settle(part, replace(part, display_units=units))

@@ -64,6 +64,7 @@ from screenapp.model.edit_rules import EditError, Outcome, new_id, new_ids
 from screenapp.model.edit_settings import (
     add_limit,
     replace_limit,
+    set_job_details,
     set_material,
     set_mesh,
     set_mesh_size,
@@ -142,6 +143,7 @@ __all__ = [
     "ring_meets",
     "set_chamfer",
     "set_edge_arc",
+    "set_job_details",
     "set_material",
     "set_mesh",
     "set_mesh_size",

@@ -371,8 +371,8 @@ class Findings:
 
     Attributes:
         part_sha256: hash of the part file's bytes.
-        key: `part_json.screening_key` of the part: what title, notes, units and readings do not
-            change, so that a new probe does not put the findings out of date.
+        key: `part_json.screening_key` of the part: what title, notes, names, units and readings do
+            not change, so that a new probe does not put the findings out of date.
         verdict: over all limits and cases.
         headline: the verdict in words for the head of the sheet, e.g. "Holds, 1.42 in hand".
         reasons: why, one sentence each; never empty unless the verdict is "holds".

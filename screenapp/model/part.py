@@ -341,11 +341,26 @@ class Formula:
 
 
 @dataclass(frozen=True)
+class JobDetails:
+    """Who did a screening and who checked it, and what it belongs to; each may be empty.
+
+    The program only prints them: they sign nothing and decide nothing.
+    """
+
+    done_by: str = ""
+    checked_by: str = ""
+    job: str = ""
+    drawing: str = ""
+    revision: str = ""
+
+
+@dataclass(frozen=True)
 class Part:
     """Everything a `*.part.json` file holds."""
 
     title: str = "Untitled part"
     notes: str = ""
+    record: JobDetails = JobDetails()
     display_units: DisplayUnits = "mm-N-MPa"
     dimensions: tuple[Dimension, ...] = ()
     formulas: tuple[Formula, ...] = ()

@@ -87,14 +87,15 @@ def part_sha256(part: Part) -> str:
 def screening_key(part: Part) -> str:
     """SHA-256 of everything that findings depend on.
 
-    Title, notes, display units and readings do not count, nor how a number was come by: a formula
-    counts by its value.  A new probe or a renamed part leaves findings current.
+    Title, notes, who did it, display units and readings do not count, nor how a number was come by:
+    a formula counts by its value.  A new probe or a renamed part leaves findings current.
     """
     blank = Part()
     bare = replace(
         part,
         title=blank.title,
         notes=blank.notes,
+        record=blank.record,
         display_units=blank.display_units,
         readings=(),
         cuts=(),

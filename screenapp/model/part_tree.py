@@ -29,6 +29,7 @@ from screenapp.model.part import (
     ForceLoad,
     Formula,
     GravityLoad,
+    JobDetails,
     JointLimit,
     LineLoad,
     Loop,
@@ -125,7 +126,7 @@ def _forms(cls: Any) -> dict[str, str]:
 
 FORMS: dict[type, dict[str, str]] = {
     cls: _forms(cls)
-    for cls in (Corner, Edge, Wall, Material, MeshWishes, Dimension, Term, *KIND_OF)
+    for cls in (Corner, Edge, Wall, Material, MeshWishes, Dimension, Term, JobDetails, *KIND_OF)
     if cls is not LoopHole
 }
 """The form of each field of the plain records: "number", "point", "whole" or "text"."""
@@ -150,6 +151,7 @@ def tree_of_part(part: Part) -> Tree:
         "version": VERSION,
         "title": part.title,
         "notes": part.notes,
+        "record": {key: text for key, text in _tree(part.record).items() if text} or None,
         "display_units": part.display_units,
         "dimensions": [_dimension_tree(d) for d in part.dimensions],
         "shape": {
@@ -238,6 +240,7 @@ def part_of_tree(tree: Tree, formulas: tuple[Formula, ...] = ()) -> Part:
     return Part(
         title=tree.get("title", blank.title),
         notes=tree.get("notes", blank.notes),
+        record=_record(JobDetails, tree.get("record", {})),
         display_units=tree.get("display_units", blank.display_units),
         dimensions=tuple(_record(Dimension, d) for d in tree.get("dimensions", ())),
         formulas=formulas,

@@ -13,6 +13,7 @@ from screenapp.model.part import (
     DisplayUnits,
     Edge,
     Hole,
+    JobDetails,
     Loop,
     Material,
     Part,
@@ -23,6 +24,13 @@ from screenapp.model.pattern import GridPattern, Pattern, RowPattern
 from screenapp.model.units import format_quantity
 
 Row = tuple[str, ...]
+
+
+def job_words(details: JobDetails) -> str:
+    """Job, drawing and revision, as far as they are given: "Job 41, drawing A-7, revision C"."""
+    given = (("job", details.job), ("drawing", details.drawing), ("revision", details.revision))
+    words = ", ".join(f"{name} {text}" for name, text in given if text)
+    return words[:1].upper() + words[1:]
 
 
 def material_words(material: Material, axis: float | None, units: DisplayUnits) -> str:

@@ -19,7 +19,7 @@ import pytest
 
 from screenapp.meshing.service import Mesher
 from screenapp.model.findings import READING_QUANTITIES, Estimate, Findings
-from screenapp.model.part import Case, Part
+from screenapp.model.part import Case, JobDetails, Part
 from screenapp.model.part_json import part_sha256, read_part
 from screenapp.model.schema_check import schema_faults
 from screenapp.model.shape import shape_of
@@ -86,6 +86,7 @@ def hostile(part: Part, findings: Findings) -> tuple[Part, Findings]:
         part,
         title=HOSTILE,
         notes=HOSTILE,
+        record=JobDetails(HOSTILE, HOSTILE, HOSTILE, HOSTILE, HOSTILE),
         materials=(material,),
         wall=dataclasses.replace(part.wall, material=HOSTILE),
         cases=cases,
@@ -163,6 +164,21 @@ def test_the_page_stands_alone(folder: Path, screened: tuple[Part, Findings]) ->
         assert said in words
     for case in findings.cases:
         assert case.name in words
+
+
+def test_names_stand_where_the_page_else_leaves_a_blank(
+    screened: tuple[Part, Findings], folder: Path, tmp_path: Path
+) -> None:
+    blank = (folder / "pump-bracket.html").read_text(encoding="utf-8")
+    assert "screened by, date" in blank
+    assert "checked by, date" in blank
+    part, findings = screened
+    details = JobDetails("R. Okafor", "M. Lind", "41", "A-7", "C")
+    write_record(dataclasses.replace(part, record=details), findings, tmp_path / "named", SOURCE)
+    named = (tmp_path / "named" / "pump-bracket.html").read_text(encoding="utf-8")
+    for said in ("screened by R. Okafor", "checked by M. Lind", "Job 41, drawing A-7, revision C"):
+        assert said in named
+    assert ", date</div>" not in named
 
 
 def test_hostile_texts_stay_texts(screened: tuple[Part, Findings], tmp_path: Path) -> None:

@@ -12,6 +12,7 @@ from pytestqt.qtbot import QtBot
 
 from screenapp.model.errors import Fault
 from screenapp.model.findings import PlainLoss, WallGauge
+from screenapp.model.materials import material_named
 from screenapp.model.part import (
     BearingLoad,
     CircleHole,
@@ -29,6 +30,7 @@ from screenapp.model.part import (
 )
 from screenapp.model.solution import Reaction
 from screenapp.window.document import Document
+from screenapp.window.sheet import changes, limit_changes
 from screenapp.window.sheet.findings_paragraph import FindingsParagraph
 from screenapp.window.sheet.held_paragraph import HeldParagraph
 from screenapp.window.sheet.limits_paragraph import LimitsParagraph
@@ -37,6 +39,7 @@ from screenapp.window.sheet.mesh_paragraph import MeshParagraph
 from screenapp.window.sheet.part_paragraph import PartParagraph
 from screenapp.window.sheet.sheet import Sheet
 from screenapp.window.sheet.verdict_paragraph import ALWAYS, VerdictParagraph
+from screenapp.window.sheet.wall_paragraph import WallParagraph
 from tests.model.plates import loop
 from tests.window.fabricate import plate
 from tests.window.window_kit import made_up, pick, settle, shown_sheet, texts, type_into
@@ -550,3 +553,58 @@ def test_the_head_sets_the_verdict_apart_from_its_mend(qtbot: QtBot) -> None:
     head = sheet.head.verdict
     assert head.headline.text == f"Undecided: {cause}"
     assert head.detail.text == "Give it a radius."
+
+
+# --- who did it -----------------------------------------------------------------------------
+
+
+def test_who_screened_and_checked_it_is_said_in_the_verdict(sheet: Sheet) -> None:
+    verdict = the(sheet, VerdictParagraph)
+    assert isinstance(verdict, VerdictParagraph)
+    said = verdict.details.text
+    assert said.startswith("Screened by nobody yet, checked by nobody yet; job not given")
+    type_into(verdict.details.field("done_by"), "R. Okafor")
+    assert sheet.document.part.record.done_by == "R. Okafor"
+    assert verdict.details.text.startswith("Screened by R. Okafor, checked by nobody yet")
+    sheet.document.undo()
+    assert sheet.document.part.record.done_by == ""
+
+
+# --- orthotropic sheets ---------------------------------------------------------------------
+
+
+def test_an_orthotropic_sheet_has_its_axis_and_its_figures(qtbot: QtBot) -> None:
+    glass = material_named("Glass/epoxy, unidirectional", 3.0)
+    assert glass is not None
+    part = plate()
+    part = replace(
+        part, wall=replace(part.wall, material=glass.name), materials=(glass,), limits=()
+    )
+    sheet = shown_sheet(qtbot, part)
+    wall = the(sheet, WallParagraph)
+    assert isinstance(wall, WallParagraph)
+    assert "its 1-axis at 0° from x" in wall.wall.text
+    type_into(wall.wall.field("axis"), "30")
+    assert sheet.document.part.wall.axis == 30.0
+    assert "G12 3.8 GPa" in wall.figures.text
+    type_into(wall.figures.field("shear_modulus"), "4.2")
+    (changed,) = sheet.document.part.materials
+    assert changed.shear_modulus == pytest.approx(4200.0)
+    assert changed.source.startswith("own")
+    limits = the(sheet, LimitsParagraph)
+    assert isinstance(limits, LimitsParagraph)
+    limit_changes.add_stress_limit(sheet.document)
+    settle()
+    assert sheet.document.part.limits[0].measure == "tsai_hill"  # type: ignore[union-attr]
+    assert "under the strengths in the material's axes." in texts(limits)[0]
+
+
+def test_a_sheet_of_one_s_own_begins_with_the_wall_s_modulus(sheet: Sheet) -> None:
+    (old, *_) = sheet.document.part.materials
+    changes.own_sheet(sheet.document)
+    own = sheet.document.part.material
+    assert own is not None
+    assert own.orthotropic
+    assert own.youngs_modulus_2 == old.youngs_modulus
+    assert own.shear_modulus == pytest.approx(old.youngs_modulus / 2.0 / (1.0 + old.poissons_ratio))
+    assert own.proof_stress is None

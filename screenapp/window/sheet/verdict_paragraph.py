@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+from screenapp.model.edit_settings import set_job_details
 from screenapp.model.errors import causes_of
 from screenapp.model.findings import Findings, LimitFindings
+from screenapp.window.document import Document
 from screenapp.window.sheet.field import capital
 from screenapp.window.sheet.limits_table import LimitsTable
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import Piece, Words
+from screenapp.window.sheet.pieces import Piece, Value, Words
 from screenapp.window.sheet.reasons import head_says
 from screenapp.window.sheet.rows import RowOf
 
@@ -27,12 +29,15 @@ class VerdictParagraph(Paragraph):
         self.body.addWidget(self.table)
         self.reasons = self.rows(0)
         self.cautions = self.rows(0)
+        self.details = self.sentence()
+        self.column.addWidget(self.details)
         self.always = self.sentence()
         self.column.addWidget(self.always)  # after all else
         self.always.set(ALWAYS)
 
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the verdicts."""
+        self.details.set(*_details(self.document))
         findings = self.document.findings
         self.table.show_limits(findings.limits if findings else ())
         texts = _reasons(findings) if findings else []
@@ -61,6 +66,34 @@ class VerdictParagraph(Paragraph):
     def outdated(self) -> bool:
         """The verdict belongs to an older part."""
         return self.document.findings is not None and not self.document.current
+
+
+NOBODY, NOTHING = "nobody yet", "not given"
+
+
+def _details(document: Document) -> tuple[Piece | str, ...]:
+    """Who did it, who checked it, and what it belongs to: printed in the record."""
+
+    def text(field: str, name: str, none: str) -> Value:
+        given = getattr(document.part.record, field)
+        return Value(
+            field,
+            given or none,
+            name,
+            lambda typed: document.apply(
+                name.lower(), set_job_details(document.part, **{field: typed})
+            ),
+            hint="Printed in the record; leave it empty for none",
+            typed=given,
+        )
+
+    return (
+        *("Screened by ", text("done_by", "Who screened it", NOBODY)),
+        *(", checked by ", text("checked_by", "Who checked it", NOBODY)),
+        *("; job ", text("job", "Number of the job", NOTHING)),
+        *(", drawing ", text("drawing", "Number of the drawing", NOTHING)),
+        *(", revision ", text("revision", "Revision of the drawing", NOTHING), "."),
+    )
 
 
 def _reasons(findings: Findings) -> list[str]:
