@@ -13,6 +13,7 @@ from screenapp.model.findings import Findings
 from screenapp.model.part import Part
 from screenapp.model.shape import Shape
 from screenapp.model.support_records import stands_on
+from screenapp.report.dimension_paper import Label, Paper, width_of
 
 WIDTH = 720.0
 MARGIN = 48.0
@@ -47,28 +48,47 @@ def part_svg(part: Part, shape: Shape, findings: Findings) -> str:
     paper = _Paper(shape)
     body = [_mesh_path(findings, paper), *zone_paths(shape, paper), boundary_path(shape, paper)]
     body += _names(part, shape, paper)
+    names: dict[tuple[int, int], list[str]] = {}
     number = 0
     for case in findings.cases:
         for peak in case.peaks:
             number += 1
             x, y = paper.at(*peak.at)
             kind = "open" if peak.estimate.trust != "settled" else "firm"
-            body.append(
-                f'<circle class="peak {kind}" cx="{x:.1f}" cy="{y:.1f}" r="4"/>'
-                f'<text class="number" x="{x + 7:.1f}" y="{y - 6:.1f}">{number}</text>'
-            )
+            body.append(f'<circle class="peak {kind}" cx="{x:.1f}" cy="{y:.1f}" r="4"/>')
+            names.setdefault((round(x), round(y)), []).append(str(number))
     for probe in part.readings:
         x, y = paper.at(*probe.at)
-        body.append(
-            f'<path class="probe" d="M{x - 5:.1f} {y:.1f}h10M{x:.1f} {y - 5:.1f}v10"/>'
-            f'<text class="number" x="{x + 7:.1f}" y="{y + 13:.1f}">{escape(probe.name)}</text>'
-        )
+        body.append(f'<path class="probe" d="M{x - 5:.1f} {y:.1f}h10M{x:.1f} {y - 5:.1f}v10"/>')
+        names.setdefault((round(x), round(y)), []).append(probe.name)
+    body += _beside(names, paper)
     return (
         f'<svg xmlns="http://www.w3.org/2000/svg" role="img" aria-label="The part with its mesh" '
         f'viewBox="0 0 {paper.width:.0f} {paper.height:.0f}" width="{paper.width:.0f}">'
         + "".join(body)
         + "</svg>"
     )
+
+
+def _beside(names: dict[tuple[int, int], list[str]], paper: _Paper) -> list[str]:
+    """Numbers and names beside their places; those of one place in one text, none on another."""
+    room = Paper(paper.width, paper.height)
+    room.taken += [(x - 5.0, y - 5.0, x + 5.0, y + 5.0) for x, y in names]
+    out: list[str] = []
+    for (x, y), several in names.items():
+        text = ", ".join(several)
+        half = width_of(text) / 2.0
+        places = [
+            (x + way * (half + 8.0 + reach), y + up * (8.0 + reach))
+            for reach in (0.0, 8.0, 18.0, 30.0)
+            for way, up in ((1, -1), (-1, -1), (1, 1), (-1, 1), (1, 0), (-1, 0))
+        ]
+        labels = [Label(text, place) for place in places]
+        label = next((one for one in labels if not room.overlaps(one)), labels[0])
+        room.taken.append(label.box)
+        at = f'x="{label.middle[0]:.1f}" y="{label.middle[1] + 4.0:.1f}"'
+        out.append(f'<text class="number" {at} text-anchor="middle">{escape(text)}</text>')
+    return out
 
 
 def boundary_path(shape: Shape, paper: Scaled) -> str:

@@ -15,6 +15,7 @@ from screenapp.model.part_json import read_part
 from screenapp.model.pattern import BoltCircle, GridPattern, RowPattern
 from screenapp.model.regions import shape_with_zones
 from screenapp.report.dimensioned import TALL, WIDE, dimensioned_svg
+from screenapp.report.drawing import _beside, _Paper
 from tests.model.plates import plate
 
 SAMPLES = sorted((Path(__file__).parents[2] / "samples").glob("*.part.json"))
@@ -135,3 +136,18 @@ def test_a_part_of_one_arc_and_no_hole_is_drawn() -> None:
     )
     written = texts(drawn(replace(plate(), outline=half, holes=())))
     assert {"40", "20", "R20"} <= set(written)
+
+
+def test_numbers_at_peaks_do_not_lie_on_one_another() -> None:
+    """Six places within a few pixels, two of them with several numbers."""
+    paper = _Paper(shape_with_zones(plate()))
+    names = {(100 + 6 * k, 100 + 3 * (k % 2)): ["1", "12"][: 1 + k % 2] for k in range(6)}
+    written = [ElementTree.fromstring(text) for text in _beside(names, paper)]
+    assert len(written) == 6
+    boxes = []
+    for text in written:
+        half = 3.3 * len(text.text or "")
+        x, y = float(text.attrib["x"]), float(text.attrib["y"])
+        boxes.append((x - half, y - 9.0, x + half, y))
+    for k, (x0, y0, x1, y1) in enumerate(boxes):
+        assert not any(x0 < c and a < x1 and y0 < d and b < y1 for a, b, c, d in boxes[k + 1 :])
