@@ -160,7 +160,8 @@ def test_the_page_stands_alone(folder: Path, screened: tuple[Part, Findings]) ->
     assert "url(" not in text
     assert "@import" not in text
     words = " ".join(page.text)
-    for said in (part.title, findings.headline, *findings.reasons, "licensed engineer"):
+    reasons = [f"{reason[:1].upper()}{reason[1:]}" for reason in findings.reasons]
+    for said in (part.title, findings.headline, *reasons, "licensed engineer"):
         assert said in words
     for case in findings.cases:
         assert case.name in words
