@@ -19,9 +19,12 @@ from screenapp.model.edit_rules import (
     new_ids,
     settle,
 )
+from screenapp.model.errors import InvalidPartError
 from screenapp.model.loop_curves import edge_curves
+from screenapp.model.mirrored_records import Images, with_images
 from screenapp.model.part import CircleHole, Corner, Edge, Hole, Loop, LoopHole, Part, Point
 from screenapp.model.pattern import BoltCircle, GridPattern, Pattern, RowPattern
+from screenapp.model.shape import shape_of
 
 
 @dataclass(frozen=True)
@@ -39,6 +42,12 @@ class MirrorLine:
         return must_be_point(
             (self.by[0] + along * c - x, self.by[1] + along * s - y), "the mirror image"
         )
+
+    def vector(self, x: float, y: float) -> Point:
+        """The mirror image of a vector."""
+        c, s = self._direction
+        along = 2.0 * (x * c + y * s)
+        return along * c - x + 0.0, along * s - y + 0.0
 
     def turned(self, angle: float) -> float:
         """The mirror image of a direction [deg]."""
@@ -127,7 +136,8 @@ def mirror_half(part: Part, edge: str) -> Outcome:
     """Make a whole part of a half: outline, holes and zones are mirrored about a straight edge.
 
     The edge itself goes, with what stands on it.  Where an edge meets the line squarely it runs on
-    as one edge with its own id.  Supports and loads are not copied.
+    as one edge with its own id.  Supports and loads are mirrored (`mirrored_records`); weight, spin
+    and a change of temperature act on the whole as they are.
 
     Raises:
         EditError: the edge is not of the outline, or an arc.
@@ -136,25 +146,45 @@ def mirror_half(part: Part, edge: str) -> Outcome:
     if found.group != "outline.edges":
         raise EditError(f"edge {edge} is not of the outline", "choose an edge of the outline")
     line = mirror_line_of(part, edge)
-    after = replace(part, outline=_whole_outline(part, edge, line))
+    images = Images()
+    after = replace(part, outline=_whole_outline(part, edge, line, images))
     for hole in part.holes:
         copy = with_fresh_ids(after, mirrored_hole(hole, line))
         after = replace(after, holes=(*after.holes, copy))
+        images.of.update(_paired(hole, copy))
     for zone in part.zones:
         form = with_fresh_ids(after, mirrored_hole(zone.form, line))
         copy_of = replace(zone, form=replace(form, id=new_id(after, "z")))
         after = replace(after, zones=(*after.zones, copy_of))
+        images.zones[zone.id] = copy_of.id
     assert part.outline is not None
     assert after.outline is not None
     bare = drop_from_places(after, _ids(part.outline) - _ids(after.outline))
-    return Outcome(settle(part, bare.part), bare.lost)
+    try:
+        shape = shape_of(bare.part)
+    except InvalidPartError:  # its lengths are not known: supports and loads stay on their half
+        return Outcome(settle(part, bare.part), bare.lost)
+    upright = line.angle / 90.0 == round(line.angle / 90.0)
+    whole, lost = with_images(bare.part, shape, images, line.vector, line.turned, upright)
+    return Outcome(settle(part, whole), bare.lost + lost)
+
+
+def _paired(hole: Hole, copy: Hole) -> dict[str, str]:
+    """The ids of a hole, its corners and edges, and those of its copy."""
+    found = {hole.id: copy.id}
+    if isinstance(hole, LoopHole) and isinstance(copy, LoopHole):
+        one, other = hole.loop, copy.loop
+        found.update({a.id: b.id for a, b in zip(one.corners, other.corners, strict=True)})
+        found.update({a.id: b.id for a, b in zip(one.edges, other.edges, strict=True)})
+    return found
 
 
 def _ids(loop: Loop) -> set[str]:
     return {c.id for c in loop.corners} | {e.id for e in loop.edges}
 
 
-def _whole_outline(part: Part, edge: str, line: MirrorLine) -> Loop:
+def _whole_outline(part: Part, edge: str, line: MirrorLine, images: Images) -> Loop:
+    """The outline of the whole; which of its places mirror which goes into `images`."""
     assert part.outline is not None
     loop = part.outline
     n = len(loop.corners)
@@ -170,6 +200,16 @@ def _whole_outline(part: Part, edge: str, line: MirrorLine) -> Loop:
     whole = Loop((*corners, *reversed(others)), (*edges, *reversed(back)))
     for corner in (corners[0], corners[-1]):
         whole = _run_on(whole, corner)
+    here = _ids(whole)
+    images.of.update({c.id: o.id for c, o in zip(corners[1:-1], others, strict=True)})
+    images.of.update({c.id: c.id for c in (corners[0], corners[-1]) if c.id in here})
+    for number, (own, twin) in enumerate(zip(edges, back, strict=True)):
+        if twin.id in here:
+            images.of[own.id] = twin.id
+            images.turned.add(own.id)
+        else:
+            images.of[own.id] = own.id
+            images.joined[own.id] = number == 0
     return whole
 
 
