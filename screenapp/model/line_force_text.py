@@ -9,7 +9,7 @@ from screenapp.model.units import format_quantity
 
 
 def line_force_text(force: LineForce, units: DisplayUnits) -> str:
-    """ "at most 120 ± 1 N/mm at (0 mm, 20 mm), 80 N/mm across and 90 N/mm along; ..."
+    """What it gives at most, where, across and along, and a weld's stress in the throat.
 
     A weld's throat stress is the resultant over the throat, whatever its direction (EN 1993-1-8,
     4.5.3.3, simplified method, from memory); what it may be is not judged.
@@ -21,14 +21,11 @@ def line_force_text(force: LineForce, units: DisplayUnits) -> str:
         format_quantity(abs(v), "line_load", units) for v in (force.normal, force.along)
     )
     way = "pulling across" if force.normal >= 0.0 else "pressing across"
-    text = (
-        f"gives at most {estimate_text(force.largest, 'line load', units)} at ({x}, {y}), "
-        f"{across} {way} and {along} along"
-    )
+    largest = estimate_text(force.largest, "line load", units)
+    text = f"gives most at ({x}, {y}): {largest} ({across} {way}, {along} along)"
     if force.throat is None:
         return text
     most, throat = force.largest, force.throat
     stress = Estimate(most.value / throat, most.low / throat, most.high / throat, most.trust)
-    return f"{text}: {estimate_text(stress, 'stress', units)} in the throat of " + format_quantity(
-        throat, "length", units
-    )
+    in_it = estimate_text(stress, "stress", units)
+    return f"{text}, {in_it} in the throat of {format_quantity(throat, 'length', units)}"
