@@ -177,7 +177,7 @@ def _rebuilt(part: Part, sources: list[_Source], outer: Ring, inner: list[Ring])
             continue
         owners = [o for s in ring.sides if (o := _source_of(s, sources).hole)]
         id_ = max(owners, key=owners.count) if owners else ""
-        if id_ and kept.get(id_) is None:
+        if id_ in kept and kept[id_] is None:  # members of a pattern bear no id that can be kept
             kept[id_] = LoopHole(id_, builder.loop(ring))
         else:
             fresh.append(ring)
