@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from PySide6.QtCore import QPoint, QPointF, Qt
@@ -15,6 +16,7 @@ from screenapp.model.part import (
     Part,
     Support,
 )
+from screenapp.model.sized_vectors import given_vector
 from screenapp.window.board.placing_kinds import (
     Record,
     Way,
@@ -29,6 +31,18 @@ from screenapp.window.board.popover import Popover
 
 if TYPE_CHECKING:
     from screenapp.window.board.canvas import Canvas
+
+
+DOWNWARDS = -90.0
+"""The direction of a vector whose angle was not typed [deg]."""
+
+FIELDS = {"shear": "per_length"}
+"""Values of the popover that the part file names otherwise."""
+
+
+def _records(part: Part) -> tuple[Record, ...]:
+    """Every support and load."""
+    return (*part.supports, *(load for case in part.cases for load in case.loads))
 
 
 class Placing:
@@ -116,8 +130,10 @@ class Placing:
         except EditError as fault:
             self.popover.complain(f"{fault.cause}: {fault.mend}.")
             return False
+        texts = self._texts(part, record)
         self._close()
-        self._canvas.document.apply(name, part)
+        with self._canvas.document.keeping(texts):
+            self._canvas.document.apply(name, part)
         return True
 
     def drop(self) -> None:
@@ -144,7 +160,35 @@ class Placing:
     def _record(self) -> Record | None:
         way = self.popover.way
         made = None if way is None else way.make(self._id, self._on, self.popover.values)
+        size = self.popover.formulas.get("size")
+        if size is not None and made is not None:
+            angle = self.popover.values.get("angle", DOWNWARDS)
+            x, y, _ = given_vector(self._canvas.document.part, "", size, angle)
+            made = replace(made, x=x, y=y)  # type: ignore[arg-type]
         return made if made is None or self._now is None else with_rest(made, self._now)
+
+    def _texts(self, part: Part, record: Record) -> dict[str, str | None]:
+        """The expressions that were typed, by the fields that they give in the part made."""
+        formulas = self.popover.formulas
+        if not formulas:
+            return {}
+        cases = {load.id: load for case in part.cases for load in case.loads}
+        made = part.supports if isinstance(record, Support) else tuple(cases.values())
+        before = {r.id for r in _records(self._canvas.document.part)}
+        id_ = self._id or next((r.id for r in made if r.id not in before), "")
+        found = find(part, id_)
+        if found is None:
+            return {}
+        texts: dict[str, str | None] = {}
+        for name, text in formulas.items():
+            if name == "size":
+                angle = self.popover.values.get("angle", DOWNWARDS)
+                texts.update(given_vector(part, found.field, text, angle)[2])
+                continue
+            key = FIELDS.get(name, name)
+            if hasattr(found.record, key):
+                texts[f"{found.field}.{key}"] = text
+        return texts
 
     def _made(self, record: Record) -> Part:
         document = self._canvas.document

@@ -47,6 +47,7 @@ class Popover(QFrame):
         self.setFont(theme.font())
         self.way: Way | None = None
         self.values: dict[str, float] = {}
+        self.formulas: dict[str, str] = {}
         self._ways: tuple[Way, ...] = ()
         self._units: DisplayUnits = "mm-N-MPa"
         self._dimensions: tuple[Dimension, ...] = ()
@@ -159,6 +160,8 @@ class Popover(QFrame):
         old = self.way.fields if self.way is not None and not first else ()
         if way.fields and way.fields == old:
             values = had
+        else:
+            self.formulas = {}
         self.way, self._bad = way, {}
         self.values = {k: v for k, v in values.items() if k in names}
         if self._group is not None:
@@ -195,14 +198,18 @@ class Popover(QFrame):
         text = edit.text().strip()
         self._bad.pop(name, None)
         self.values.pop(name, None)
+        self.formulas.pop(name, None)
         if text:
             try:
                 typed = parse(text, field.kind, self._units, self._dimensions)
                 self.values[name] = typed.value
+                if typed.formula is not None:
+                    self.formulas[name] = typed.formula
             except ScreenappError as fault:
                 self._bad[name] = f"{fault.cause}: {fault.mend}."
             for other in field.excludes:
                 self.values.pop(other, None)
+                self.formulas.pop(other, None)
                 self._bad.pop(other, None)
                 self._edits[other].clear()
         for key, one in self._edits.items():
