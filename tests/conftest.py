@@ -17,9 +17,10 @@ KEPT = pytest.StashKey[list[QWidget]]()
 
 @pytest.fixture(autouse=True, scope="session")
 def own_cache(tmp_path_factory: pytest.TempPathFactory) -> Iterator[None]:
-    """Keep findings in a folder of this test run."""
+    """Keep findings, and materials of one's own, in folders of this test run."""
     with pytest.MonkeyPatch.context() as patch:
         patch.setenv("SCREENAPP_CACHE", str(tmp_path_factory.mktemp("cache")))
+        patch.setenv("SCREENAPP_CONFIG", str(tmp_path_factory.mktemp("config")))
         yield
 
 

@@ -16,10 +16,12 @@ from screenapp.model.errors import PartFileError
 from screenapp.model.json_reader import JsonObject, read_json
 from screenapp.model.part import Material
 from screenapp.model.part_tree import FORMAT as PART_FORMAT
-from screenapp.model.part_tree import VERSION, material_of_tree
+from screenapp.model.part_tree import VERSION as PART_VERSION
+from screenapp.model.part_tree import material_of_tree
 from screenapp.model.schema_check import schema_faults
 
 FORMAT = "screenapp materials"
+VERSION = 2
 
 
 @dataclass(frozen=True)
@@ -63,6 +65,12 @@ def read_materials(path: Path) -> tuple[Grade, ...]:
         raise PartFileError(
             f"{path.name} is not a file of materials", f'its "format" must be "{FORMAT}"'
         )
+    version = tree.get("version", VERSION)
+    if type(version) is not int or not 1 <= version <= VERSION:
+        raise PartFileError(
+            f"{path.name} is of version {version}, this program reads up to {VERSION}",
+            "use a newer screenapp; the file is left as it is",
+        )
     entries = tree.get("materials")
     if not isinstance(entries, list) or not all(isinstance(e, dict) for e in entries):
         raise PartFileError(f"{path.name} has no list of materials", 'give "materials": [...]')
@@ -72,7 +80,7 @@ def read_materials(path: Path) -> tuple[Grade, ...]:
         JsonObject(
             {
                 "format": PART_FORMAT,
-                "version": VERSION,
+                "version": PART_VERSION,
                 "materials": [JsonObject(m) for ranges in spread for m in ranges],
             }
         ),

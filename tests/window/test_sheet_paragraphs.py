@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import replace
+from pathlib import Path
 
 import pytest
 from PySide6.QtCore import QPoint, Qt
@@ -13,6 +14,7 @@ from pytestqt.qtbot import QtBot
 from screenapp.model.errors import Fault
 from screenapp.model.findings import PlainLoss, WallGauge
 from screenapp.model.materials import material_named
+from screenapp.model.own_materials import own_materials
 from screenapp.model.part import (
     BearingLoad,
     CircleHole,
@@ -608,3 +610,43 @@ def test_a_sheet_of_one_s_own_begins_with_the_wall_s_modulus(sheet: Sheet) -> No
     assert own.youngs_modulus_2 == old.youngs_modulus
     assert own.shear_modulus == pytest.approx(old.youngs_modulus / 2.0 / (1.0 + old.poissons_ratio))
     assert own.proof_stress is None
+
+
+def test_a_material_of_one_s_own_is_kept_chosen_and_removed(
+    qtbot: QtBot, sheet: Sheet, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.setenv("SCREENAPP_CONFIG", str(tmp_path))
+    changes.own_material(sheet.document)
+    settle()
+    wall = the(sheet, WallParagraph)
+    assert isinstance(wall, WallParagraph)
+    QTest.mouseClick(wall.figures.field("keep"), Qt.MouseButton.LeftButton)
+    settle()
+    kept = own_materials().named("Own material")
+    assert kept == sheet.document.part.material
+    assert "Kept in my materials" in wall.figures.text
+    other = shown_sheet(qtbot, plate())
+    there = the(other, WallParagraph)
+    assert isinstance(there, WallParagraph)
+    pick(there.wall.field("material"), "Own material")
+    assert other.document.part.material == kept
+    QTest.mouseClick(there.figures.field("forget"), Qt.MouseButton.LeftButton)
+    settle()
+    assert own_materials().materials == ()
+    assert other.document.part.material == kept, "the part has its own copy"
+
+
+def test_a_broken_file_of_own_materials_is_told_and_harms_nothing(
+    qtbot: QtBot, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    monkeypatch.setenv("SCREENAPP_CONFIG", str(tmp_path))
+    (tmp_path / "materials.json").write_text("{", encoding="utf-8")
+    sheet = shown_sheet(qtbot, plate())
+    wall = the(sheet, WallParagraph)
+    assert isinstance(wall, WallParagraph)
+    assert "My materials cannot be read" in wall.mine.text
+    assert not wall.mine.isHidden()
+    assert wall.mark.state == "set"
+    (tmp_path / "materials.json").unlink()
+    wall.refresh()
+    assert wall.mine.isHidden()

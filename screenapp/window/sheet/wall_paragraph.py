@@ -4,15 +4,17 @@ from __future__ import annotations
 
 from typing import get_args
 
-from screenapp.model.errors import Fault
+from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.materials import library
+from screenapp.model.own_materials import keep_material, own_materials, remove_material
 from screenapp.model.part import Material, MaterialFamily
 from screenapp.window.sheet import changes
+from screenapp.window.sheet.field import capital
 from screenapp.window.sheet.paragraph import Paragraph
-from screenapp.window.sheet.pieces import Choice, Link, Piece, Value
+from screenapp.window.sheet.pieces import Choice, Link, Piece, Value, Words
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.sheet_figures import sheet_figures
-from screenapp.window.sheet.zone_rows import zone_rows
+from screenapp.window.sheet.zone_rows import MINE, zone_rows
 
 OWN, OWN_SHEET = "own", "own sheet"
 STATES = {
@@ -32,10 +34,14 @@ class WallParagraph(Paragraph):
         """One sentence for the wall, one for the material's figures."""
         self.wall = self.sentence()
         self.figures = self.sentence()
+        self.mine = self.sentence()
         self.zones = self.rows(64)
 
     def fill(self) -> tuple[Piece | str, ...]:
         """Show the wall."""
+        problem = own_materials().problem
+        self.mine.set(Words(f"My materials cannot be read. {capital(problem)}.", colour="doubt"))
+        self.mine.setVisible(bool(problem))
         part = self.document.part
         q = Quantities.of(self.document)
         self.zones.set(zone_rows(self.document, q, self._offered))
@@ -156,7 +162,31 @@ class WallParagraph(Paragraph):
         if not m.source.startswith("own"):
             return source
         name = Value("name", m.name, "Name of the material", change.rename)
-        return (*source, " Called ", name, ".")
+        if own_materials().named(m.name) == m:
+            kept: tuple[Piece | str, ...] = (
+                *(" Kept in my materials: ", Link("forget", "remove it there", self._forget), "."),
+            )
+        else:
+            kept = (
+                " ",
+                Link(
+                    "keep",
+                    "keep in my materials",
+                    self._keep,
+                    "Other parts may then be made of it; this one has its own copy",
+                ),
+            )
+        return (*source, " Called ", name, ".", *kept)
+
+    def _keep(self, _key: str) -> None:
+        material = self.document.part.material
+        if material is not None:
+            keep_material(material)
+            self.refresh()
+
+    def _forget(self, _key: str) -> None:
+        remove_material(self.document.part.wall.material)
+        self.refresh()
 
     def _choices(self) -> tuple[Choice, ...]:
         return (
@@ -172,6 +202,11 @@ class WallParagraph(Paragraph):
         lines = [Choice(m.name, m.name, self._remark(m)) for m in part.materials]
         if lines:
             lines.insert(0, Choice("-", "In this part"))
+        mine = [m for m in own_materials().materials if m not in part.materials]
+        if mine:
+            lines.append(Choice("-", "My materials"))
+            lines += [Choice(MINE + m.name, m.name, self._remark(m)) for m in mine]
+        if lines:
             lines.append(Choice("-", "Library"))
         offered = [grade.at(part.wall.thickness) for grade in library()]
         for family in get_args(MaterialFamily):
@@ -194,6 +229,12 @@ class WallParagraph(Paragraph):
             return
         if key == OWN_SHEET:
             changes.own_sheet(self.document)
+            return
+        if key.startswith(MINE):
+            kept = own_materials().named(key.removeprefix(MINE))
+            if kept is None:
+                raise ScreenappError("that material is no longer kept", "choose another one")
+            changes.choose_material(self.document, kept)
             return
         known = {grade.name: grade.at(part.wall.thickness) for grade in library()}
         own = next((m for m in part.materials if m.name == key), None)

@@ -7,13 +7,18 @@ from dataclasses import replace
 from typing import Literal, cast
 
 from screenapp.model import edits
+from screenapp.model.errors import ScreenappError
 from screenapp.model.materials import library
+from screenapp.model.own_materials import own_materials
 from screenapp.model.part import Part, Zone
 from screenapp.window.document import Document
 from screenapp.window.sheet import changes
 from screenapp.window.sheet.pieces import Choice, Value
 from screenapp.window.sheet.quantities import Quantities
 from screenapp.window.sheet.rows import RowOf
+
+MINE = "mine:"
+"""Begins the key of a material that the user keeps."""
 
 SAME = "the wall's material"
 UNNAMED = "no name"
@@ -124,6 +129,16 @@ def _axis(document: Document, zone: Zone, q: Quantities) -> tuple[Value | str, .
 def _choose(document: Document, zone: str, key: str) -> None:
     """Make a zone of a material of the part or of the library; "" is the wall's."""
     part = document.part
+    if key.startswith(MINE):
+        key = key.removeprefix(MINE)
+        kept = own_materials().named(key)
+        if kept is None:
+            raise ScreenappError("that material is no longer kept", "choose another one")
+        if any(m.name == key for m in part.materials):
+            raise ScreenappError(
+                f"the part has another material called “{key}”", "rename one of them"
+            )
+        part = replace(part, materials=(*part.materials, kept))
     changed = edits.set_zone(with_material(part, key, _thickness(part, zone)), zone, material=key)
     document.apply(f"material of zone {zone}", changed)
 
