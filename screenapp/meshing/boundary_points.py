@@ -160,6 +160,7 @@ def _equal_shares(t: Floats, running: Floats) -> Floats:
     """Parameters that cut a piece into an even number of sides of equal integral of ds / h."""
     count = 2 * max(1, round(0.5 * running[-1] + 0.1))
     inner = np.interp(np.arange(1, count) / count * running[-1], running, t)
+    inner = np.round(inner, 10)  # what lies behind is the rounding of this machine
     return np.concatenate([[0.0], inner, [1.0]])
 
 

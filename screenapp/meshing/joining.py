@@ -92,6 +92,7 @@ def join_pairs(points: Floats, triangles: Ints, angles: Floats, least: float) ->
         axis=1,
     )
     quality = _quad_quality(points, quads, angles, _boundary_pairs(triangles, neighbours))
+    quality = np.round(quality, 9)  # rounding must not choose among equals
     order = np.argsort(-quality, kind="stable")
     order = order[quality[order] >= least]
     free = np.ones(len(triangles), dtype=bool)

@@ -35,6 +35,9 @@ POLL = 0.02
 START_LIMIT = 60.0
 """Seconds within which a started worker must be ready."""
 
+ONE_THREAD = {"OMP_NUM_THREADS": "1", "OPENBLAS_NUM_THREADS": "1", "MKL_NUM_THREADS": "1"}
+"""The worker adds up on one thread, so that a mesh does not hang on how many there are."""
+
 BOOT = (
     "import json, sys; sys.path[:] = json.loads(sys.argv[1]); "
     "from screenapp.meshing.worker import serve; serve()"
@@ -154,6 +157,7 @@ class _Worker:
                 stdin=subprocess.PIPE,
                 stdout=subprocess.PIPE,
                 stderr=self._printed,
+                env={**os.environ, **ONE_THREAD},
                 creationflags=getattr(subprocess, "CREATE_NO_WINDOW", 0),
             )
         except OSError as error:

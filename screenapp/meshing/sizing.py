@@ -32,6 +32,12 @@ ARC_ANGLE = math.radians(22.5)
 COARSEST_ANGLE = math.radians(45.0)
 """Turn of an arc over one element that no later mesh may exceed."""
 
+FIGURES = 6
+"""Figures of a size that count."""
+
+GRID = 1e-9
+"""Share of the part's size to which the places of sizes are rounded."""
+
 INSIDE, ALONG = 0.92, 0.65
 """Elements per unit of the integral of 1/h² over the part, and of 1/h along its boundary."""
 
@@ -102,6 +108,13 @@ def estimate_elements(shape: Shape, sizes: SizeField) -> int:
     return math.ceil(INSIDE * total + ALONG * along)
 
 
+def without_noise(sizes: Floats) -> Floats:
+    """Sizes to six figures: their last digits come from the rounding of the solution, which differs
+    from machine to machine, and a mesher makes another mesh of the smallest difference."""
+    scale = 10.0 ** (np.floor(np.log10(sizes)) - FIGURES + 1)
+    return np.asarray(np.round(sizes / scale) * scale)
+
+
 def piece_limit(curve: Curve, angle: float) -> float:
     """Largest side [mm] on a piece of the boundary: half its length, or `angle` [rad] of turn."""
     limit = 0.5 * curve.length
@@ -146,7 +159,10 @@ def _on_corners_and_centres(mesh: Mesh, sizes: Floats) -> SizeField:
     fans = [quads[:, [8, k, (k + 1) % 4]] for k in range(4)]
     triangles = np.concatenate(fans)
     used, compact = np.unique(triangles, return_inverse=True)
-    return SizeField(mesh.nodes[used], compact.reshape(triangles.shape), sizes[used])
+    low = mesh.nodes.min(axis=0)
+    cell = GRID * float(np.ptp(mesh.nodes, axis=0).max())
+    places = low + np.round((mesh.nodes[used] - low) / cell) * cell
+    return SizeField(places, compact.reshape(triangles.shape), without_noise(sizes[used]))
 
 
 def _bit_centres(n: int) -> Floats:

@@ -31,6 +31,9 @@ from screenapp.screening.tracking import measures
 Floats = NDArray[np.float64]
 
 HIGH_SHARE = 0.6
+NEAR = 2.0001
+"""Nodes within so many elements belong to a place; a little more than two, so that rounding does
+not choose among those that lie two sides away."""
 FACTOR_LEAST, FACTOR_MOST = 0.25, 1.5
 _SPOT_SHRINK = 0.4
 """Elements at a singular place shrink by this on each pass, to see whether the stress rises."""
@@ -113,7 +116,7 @@ def wanted_sizes(
     p = order(last.fields.solution.element)
     for target in watched:
         far = np.hypot(*(mesh.nodes - target.at).T)
-        near = far < 2.0 * size[int(np.argmin(far))]
+        near = far < NEAR * size[_first_least(far)]
         shrink = 1.0
         if target.excess > 1.0:
             shrink = min(0.7, max(FACTOR_LEAST, target.excess ** (-1.0 / p)))
@@ -122,10 +125,10 @@ def wanted_sizes(
         if spot.creep > 0.0:
             continue  # its growth is known, and too slow to be seen
         far = np.hypot(*(mesh.nodes - spot.at).T)
-        here = int(np.argmin(far))
+        here = _first_least(far)
         floor = first * _SPOT_LEAST
         # the energy criterion alone would refine towards a singular place without end
-        near = far < 2.0 * size[here]
+        near = far < NEAR * size[here]
         wanted[near] = np.maximum(wanted[near], floor)
         wanted[here] = max(_SPOT_SHRINK * size[here], floor)
     return np.asarray(wanted)
@@ -138,6 +141,12 @@ def energy_goal(tolerance: float) -> float:
     displacement by its square, a stress inside by about itself, a recovered one by less).
     """
     return 0.25 * float(np.sqrt(tolerance))
+
+
+def _first_least(far: Floats) -> int:
+    """The first of the nodes that are nearest but for rounding."""
+    least = float(far.min())
+    return int(np.flatnonzero(far <= least + 1e-9 * float(far.max()))[0])
 
 
 def _energy_factor(part: Part, last: Pass) -> Floats:

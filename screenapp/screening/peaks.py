@@ -34,6 +34,9 @@ REACH = 2.5
 """A peak belongs to a singular place, or is one of an earlier pass, if it lies within this many of
 its elements."""
 
+SAME = 1e-9
+"""Share of the level of a case by which values may differ and yet be equal."""
+
 _SAMPLES = np.array([0.0, 0.25, 0.5, 0.75])
 """Where each side is sampled; the next side brings the end."""
 
@@ -75,7 +78,8 @@ def find(
     """
     found = _on_boundary(name, part, shape, fields, case, level)
     found += _inside(name, part, fields, case, level)
-    found.sort(key=lambda peak: -peak.counted)
+    unit = max(SAME * level, 1e-300)
+    found.sort(key=lambda peak: -round(peak.counted / unit))
     least = LEAST_SHARE * level
     return [peak for peak in found if peak.counted >= least and peak.value > 0.0]
 
@@ -133,6 +137,9 @@ def _cyclic_peaks(line: Floats, level: float) -> list[int]:
     n = len(line)
     if n == 0:
         return []
+    if level > 0.0:
+        line = np.round(line / (SAME * level))  # rounding must not choose among equals
+        prominence /= SAME * level
     if float(np.ptp(line)) <= prominence:
         return [int(np.argmax(line))]
     turned = np.roll(line, -int(np.argmin(line)))  # starts and ends at the lowest value
@@ -150,6 +157,7 @@ def _inside(name: str, part: Part, fields: Fields, case: int, level: float) -> l
     quads, n = mesh.field_quads, len(mesh.field_nodes)
     around = np.full(n, -np.inf)
     np.maximum.at(around, quads, value[quads].max(axis=1, keepdims=True))
+    around -= SAME * level
     inner = np.ones(n, dtype=bool)
     inner[quads[mesh.sides[:, 0]]] = False
     inner[mesh.side_fields] = False
