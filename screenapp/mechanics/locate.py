@@ -45,6 +45,8 @@ class PointLocator:
         # a curved side may bulge past its nodes, by a share of the element
         self._low, self._high = low - 0.05 * size[:, None], high + 0.05 * size[:, None]
         self._slack = _curve_slack(mesh) + 1e-9 * float(np.ptp(mesh.nodes, axis=0).max())
+        # to six figures, so that equals are told apart by their number, not by rounding
+        self._size = np.round(np.log(np.maximum(size, 1e-300)), 6)
         self._make_grid()
 
     def locate(self, points: ArrayLike) -> tuple[Ints, Floats]:
@@ -127,8 +129,8 @@ class PointLocator:
             miss[out] = np.hypot(*(back - points[who[out]]).T)
         fits = ~out | (miss <= self._slack[element])
         who, element, clamped, over = who[fits], element[fits], clamped[fits], over[fits]
-        # a point on a common side is in both elements but for rounding: the first of them has it
-        order = np.lexsort((element, np.round(over, 9), who))
+        # a point on a common side is in both elements but for rounding: the smaller one has it
+        order = np.lexsort((element, self._size[element], np.round(over, 9), who))
         who, element, clamped = who[order], element[order], clamped[order]
         best = np.concatenate([[True], who[1:] != who[:-1]]) if len(who) else np.zeros(0, bool)
         found[who[best]], local[who[best]] = element[best], clamped[best]
