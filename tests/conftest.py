@@ -1,5 +1,5 @@
-"""For all tests: no display is needed, the user's own cache is left alone, and no widget dies while
-it is painted.
+"""For all tests: no display is needed, the user's own cache is left alone, random examples are the
+same in every run (new ones with SCREENAPP_STEPS), and no widget dies while it is painted.
 """
 
 from __future__ import annotations
@@ -8,9 +8,13 @@ import os
 from collections.abc import Generator, Iterator
 
 import pytest
+from hypothesis import settings
 from PySide6.QtWidgets import QApplication, QWidget
 
 os.environ.setdefault("QT_QPA_PLATFORM", "offscreen")
+
+settings.register_profile("steady", derandomize="SCREENAPP_STEPS" not in os.environ)
+settings.load_profile("steady")
 
 KEPT = pytest.StashKey[list[QWidget]]()
 

@@ -189,4 +189,4 @@ def test_random_gestures_never_break_a_record(qtbot: QtBot) -> None:
         )
     assert exceptions == []
     assert Drawing.gestures >= STEPS // 2
-    assert Drawing.changes > STEPS // 8
+    assert Drawing.changes > STEPS // 15  # the rest pans, asks, is refused or undone
