@@ -27,6 +27,7 @@ from screenapp.exchange.choosing import Wishes, unit_factor
 from screenapp.exchange.convert import shape_faults
 from screenapp.exchange.drawing import Drawing, DrawingError, Remark
 from screenapp.exchange.reading_apart import read_apart
+from screenapp.model.collecting import look_again, many_records
 from screenapp.model.errors import Fault, ScreenappError
 from screenapp.model.part import DisplayUnits, Part, Point
 from screenapp.model.progress import Progress, Step
@@ -90,7 +91,12 @@ class DrawingPanel(QDialog):
         self._late.setInterval(PATIENCE_MS)
         self._late.timeout.connect(lambda: self._show_busy(True))
         self._begin("Reading the drawing")
-        self.jobs.start(lambda progress: read_apart(path, progress))
+
+        def read(progress: Progress) -> Drawing:
+            with many_records():
+                return read_apart(path, progress)
+
+        self.jobs.start(read)
 
     # --- laying out -----------------------------------------------------------------------------
 
@@ -182,11 +188,12 @@ class DrawingPanel(QDialog):
         self._show_wishes()
 
         def work(progress: Progress) -> Painted:
-            brought = bring_in(drawing, wishes, progress)
-            faults = shape_faults(brought.part) if brought.part is not None else ()
-            chains = tuple(curve for chain in brought.open_chains for curve in chain.curves)
-            lines = straight_pieces(brought.lines)
-            return Painted(brought, lines, straight_pieces(chains), faults)
+            with many_records():
+                brought = bring_in(drawing, wishes, progress)
+                faults = shape_faults(brought.part) if brought.part is not None else ()
+                chains = tuple(curve for chain in brought.open_chains for curve in chain.curves)
+                lines = straight_pieces(brought.lines)
+                return Painted(brought, lines, straight_pieces(chains), faults)
 
         self._begin("Making a part of it")
         self.jobs.start(work)
@@ -321,6 +328,7 @@ class DrawingPanel(QDialog):
             self.jobs.progress.disconnect(self._show_step)
             self.jobs.finished.disconnect(self._finished)
             self.jobs.failed.disconnect(self._failed)
+            look_again()
         super().hideEvent(event)
 
 
