@@ -98,9 +98,16 @@ def meshed(part: Part, size: float | None = None) -> tuple[Shape, Mesh]:
     return shape, make_mesh(shape, initial_sizes(shape, wishes))
 
 
-def solved(part: Part, element: ElementName = "quad9", size: float | None = None) -> Solved:
-    """The part solved with an element."""
+def solved(
+    part: Part,
+    element: ElementName = "quad9",
+    size: float | None = None,
+    mesh: Mesh | None = None,
+) -> Solved:
+    """The part solved with an element, on a given mesh or on one of the mesher's."""
     part = replace(part, mesh=MeshWishes(element))
-    shape, mesh = meshed(part, size)
+    shape = shape_with_zones(part)
+    if mesh is None:
+        shape, mesh = meshed(part, size)
     solution = solve(part, shape, mesh)
     return Solved(part, shape, mesh, solution, recover(part, shape, mesh, solution))
