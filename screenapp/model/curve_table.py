@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, fields
 from functools import cached_property
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 import numpy as np
 import shapely
@@ -25,6 +25,18 @@ Ints = NDArray[np.int64]
 Bools = NDArray[np.bool_]
 
 TWO_PI = 2.0 * np.pi
+
+
+def alike_at_ends(
+    were: tuple[BoundaryCurve, ...], are: tuple[BoundaryCurve, ...]
+) -> tuple[int, int]:
+    """How many curves are the same records at the beginning and, of the rest, at the end."""
+    most = min(len(were), len(are))
+    head = next((i for i, (a, b) in enumerate(zip(were, are, strict=False)) if a is not b), most)
+    rest = most - head
+    pairs = zip(reversed(were), reversed(are), strict=False)
+    tail = next((i for i, (a, b) in enumerate(pairs) if a is not b), rest)
+    return head, min(tail, rest)
 
 
 @dataclass(frozen=True, eq=False)
@@ -68,19 +80,20 @@ class CurveTable:
 
     @classmethod
     def patched(
-        cls, table: CurveTable, were: tuple[BoundaryCurve, ...], are: tuple[BoundaryCurve, ...]
+        cls, table: CurveTable, are: tuple[BoundaryCurve, ...], common: tuple[int, int]
     ) -> CurveTable:
-        """The table of `are`, with the rows of `table` for what is as it was at either end."""
-        most = min(len(were), len(are))
-        head = next((i for i in range(most) if were[i] is not are[i]), most)
-        rest = most - head
-        tail = next((i for i in range(rest) if were[-1 - i] is not are[-1 - i]), rest)
+        """The table of `are`, of which the first and last so many are as in another table."""
+        head, tail = common
         made = cls.of(are[head : len(are) - tail])
-        columns = (getattr(one, f.name) for f in fields(cls) for one in (table, made))
-        pairs = zip(columns, columns, strict=True)
-        return cls(
-            *(np.concatenate([old[:head], new, old[len(were) - tail :]]) for old, new in pairs)
-        )
+        kept = len(table) - tail
+
+        def joined(old: NDArray[Any], new: NDArray[Any]) -> NDArray[Any]:
+            return np.concatenate([old[:head], new, old[kept:]])
+
+        whole = cls(*(joined(getattr(table, f.name), getattr(made, f.name)) for f in fields(cls)))
+        if "boxes" in table.__dict__:
+            whole.__dict__["boxes"] = joined(table.boxes, made.boxes)
+        return whole
 
     def __len__(self) -> int:
         return len(self.arc)

@@ -10,6 +10,7 @@ import math
 import re
 from decimal import ROUND_HALF_EVEN, Context, Decimal
 from fractions import Fraction
+from functools import lru_cache
 
 from screenapp.model.kinds import KINDS, KindName
 from screenapp.model.part import DisplayUnits
@@ -87,6 +88,7 @@ def format_quantity(
     return number + label if label in ("", "°") else f"{number} {label}"
 
 
+@lru_cache(maxsize=4096)
 def format_number(
     value: float, kind: KindName, display_units: DisplayUnits = "mm-N-MPa", digits: int | None = 4
 ) -> str:

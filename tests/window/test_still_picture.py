@@ -15,12 +15,12 @@ from PySide6.QtWidgets import QApplication
 from pytestqt.qtbot import QtBot
 
 from screenapp.model import edits
-from screenapp.model.curve_table import CurveTable
+from screenapp.model.curve_table import CurveTable, alike_at_ends
 from screenapp.model.part import CircleHole, Corner, Edge, Loop, Material, Part, Point, Wall
 from screenapp.model.shape import shape_of
 from screenapp.window.board.drawn_part import drawn_part
 from screenapp.window.board.frame import polygon
-from screenapp.window.board.ring import outline_ring
+from screenapp.window.board.ring import Ring, outline_ring
 from screenapp.window.board.still_picture import changed_box, stretches_in, thinned
 from tests.window.board_kit import Hand
 
@@ -167,12 +167,48 @@ def test_stretches_join_where_the_ring_closes() -> None:
 def test_a_patched_table_is_a_new_one() -> None:
     part = cog()
     before = shape_of(part).curves
+    old = CurveTable.of(before)
+    assert len(old.boxes) == len(before)  # worked out, so that they are patched too
     for moved in ("c0", "c40", "c79"):
         after = shape_of(edits.move_corner(part, moved, (-70.0, 60.0))).curves
         new = CurveTable.of(after)
-        patched = CurveTable.patched(CurveTable.of(before), before, after)
+        patched = CurveTable.patched(old, after, alike_at_ends(before, after))
         for field in fields(CurveTable):
             assert np.array_equal(getattr(patched, field.name), getattr(new, field.name))
+        assert np.array_equal(patched.__dict__["boxes"], new.boxes)
+
+
+@pytest.mark.parametrize("moved", ["c0", "c1", "c40", "c79"])
+def test_a_ring_like_another_is_flattened_as_by_itself(moved: str) -> None:
+    part = cog()
+    before = Ring(shape_of(part).curves)
+    after = shape_of(edits.move_corner(part, moved, (-70.0, 60.0))).curves
+    before.polyline(0.01)
+    like, alone = Ring(after, before), Ring(after)
+    assert np.array_equal(like.flat(0.01).points, alone.flat(0.01).points)
+    assert np.array_equal(like.flat(0.01).starts, alone.flat(0.01).starts)
+    assert np.array_equal(like.polyline(0.5), alone.polyline(0.5))  # which the other has not
+    assert like.box == alone.box
+
+
+@pytest.mark.parametrize("moved", ["c0", "c40", "c78"])
+def test_a_ring_like_another_knows_its_features(moved: str) -> None:
+    part = cog()
+    before = Ring(shape_of(part).curves)
+    after = shape_of(edits.set_round(part, moved, 0.0)).curves
+    assert before.pieces_of(moved)  # asked for, so that the next ring starts from it
+    like = Ring(after, before)
+    assert not like.pieces_of(moved)
+    for feature in {piece.feature for piece in (*before.pieces, *after)}:
+        assert like.pieces_of(feature) == tuple(p for p in after if p.feature == feature)
+
+
+def test_curves_alike_at_both_ends() -> None:
+    one = shape_of(cog()).curves
+    assert alike_at_ends(one, one) == (len(one), 0)
+    assert alike_at_ends(one, one[:5] + one[8:]) == (5, len(one) - 8)
+    assert alike_at_ends(one, ()) == (0, 0)
+    assert alike_at_ends(one[:3], one[-3:]) == (0, 0)
 
 
 def test_only_the_rounds_that_do_not_fit_are_left_off() -> None:

@@ -254,7 +254,10 @@ def _seen(ring: Ring, frame: Frame, tolerance: float) -> RingLine | None:
     points = frame.pxs(ring.polyline(tolerance))
     if not len(points):
         return None
-    (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
+    if box is not None:  # that of thousands of points takes longer
+        (x0, y0), (x1, y1) = np.sort(frame.pxs([(box[0], box[1]), (box[2], box[3])]), axis=0)
+    else:
+        (x0, y0), (x1, y1) = points.min(axis=0), points.max(axis=0)
     return RingLine(points, QRectF(x0, y0, x1 - x0, y1 - y0))
 
 

@@ -4,13 +4,14 @@ from __future__ import annotations
 
 import math
 from collections import deque
-from dataclasses import replace
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
 from functools import cached_property, lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
 
-from screenapp.model.curve_table import CurveTable
+from screenapp.model.curve_table import CurveTable, alike_at_ends
 from screenapp.model.curves import Curve, Segment
 from screenapp.model.errors import InvalidPartError
 from screenapp.model.part import Corner, Edge, Hole, Loop, LoopHole, Part, Point
@@ -19,6 +20,7 @@ from screenapp.window.board.boundary_index import BoundaryIndex
 from screenapp.window.board.identity import kept_by_identity
 
 Floats = NDArray[np.float64]
+Ints = NDArray[np.int64]
 
 _STAND_IN = Loop(
     (Corner("", (0.0, 0.0)), Corner("", (1.0, 0.0)), Corner("", (0.0, 1.0))),
@@ -28,6 +30,15 @@ _STAND_IN = Loop(
 
 FINE = 2e-4
 """Sagitta for asking whether a place is inside, relative to the ring's own size."""
+
+
+@dataclass(frozen=True, eq=False)
+class RingPoints:
+    """A ring flattened: its points (n, 2) [mm] and where each piece begins among them, and the end
+    of the last one, (pieces + 1,)."""
+
+    points: Floats
+    starts: Ints
 
 
 class Ring:
@@ -40,44 +51,64 @@ class Ring:
         """A ring; most pieces of a long one may be those of the ring that it is `like`."""
         self.pieces = pieces
         self._like = like
-        self._lines: dict[float, Floats] = {}
+        self._lines: dict[float, RingPoints] = {}
+        self._common: dict[int, tuple[Ring, tuple[int, int]]] = {}
+
+    def forget_like(self) -> None:
+        """Let the ring go that this one is like; what was worked out stays."""
+        self._like = None
+        self._common.clear()
+
+    def common_with(self, other: Ring) -> tuple[int, int]:
+        """How many pieces are the same as those of another ring, at the beginning and the end."""
+        if id(other) not in self._common:  # kept with its ring, so that the id stays its own
+            self._common[id(other)] = other, alike_at_ends(other.pieces, self.pieces)
+        return self._common[id(other)][1]
 
     @cached_property
     def index(self) -> BoundaryIndex:
         """Finds the nearest piece."""
         return BoundaryIndex.of(self.pieces)
 
-    @cached_property
-    def _features(self) -> frozenset[str]:
-        return frozenset([piece.feature for piece in self.pieces])
-
     def pieces_of(self, feature: str) -> tuple[BoundaryCurve, ...]:
         """The pieces of an edge, fillet, chamfer or rim; none of anything else."""
-        if feature not in self._features:
-            return ()
-        return tuple(piece for piece in self.pieces if piece.feature == feature)
+        return self._by_feature.get(feature, ())
+
+    @cached_property
+    def _by_feature(self) -> dict[str, tuple[BoundaryCurve, ...]]:
+        """The pieces of each feature; in a ring like another only what differs is sought."""
+        like = self._like
+        if like is None or "_by_feature" not in like.__dict__:
+            return _grouped(self.pieces)
+        head, tail = self.common_with(like)
+        gone, come = (ring.pieces[head : len(ring.pieces) - tail] for ring in (like, self))
+        changed = {piece.feature for piece in (*gone, *come)}
+        found = dict(like._by_feature)
+        for feature in changed:
+            found.pop(feature, None)
+        found.update(_grouped([p for p in self.pieces if p.feature in changed]))
+        return found
 
     @cached_property
     def table(self) -> CurveTable:
         """The pieces as arrays."""
-        like, self._like = self._like, None
+        like = self._like
         if like is None:
             return CurveTable.of(self.pieces)
-        return CurveTable.patched(like.table, like.pieces, self.pieces)
+        return CurveTable.patched(like.table, self.pieces, self.common_with(like))
 
-    def _flattened(self, tolerances: Floats) -> Floats:
-        """All pieces as `flatten` gives them, each to its own sagitta [mm]."""
-        if not self.pieces:
-            return np.empty((0, 2))
+    def _flattened(self, tolerance: float, first: int, last: int) -> RingPoints:
+        """The pieces from `first` to before `last` as `flatten` gives them."""
         table = self.table
-        ratio = np.clip(1.0 - tolerances / table.radius, -1.0, 1.0)
+        some = np.arange(first, last)
+        ratio = np.clip(1.0 - tolerance / table.radius[some], -1.0, 1.0)
         step = np.maximum(2.0 * np.arccos(ratio), 1e-4)
-        parts = np.clip(np.ceil(np.abs(table.sweep) / step), 4, 2000)
-        counts = np.where(table.arc, parts, 1.0).astype(int) + 1
+        parts = np.clip(np.ceil(np.abs(table.sweep[some]) / step), 4, 2000)
+        counts = np.where(table.arc[some], parts, 1.0).astype(np.int64) + 1
+        starts = np.concatenate([np.zeros(1, dtype=np.int64), np.cumsum(counts)])
         which = np.repeat(np.arange(len(counts)), counts)
-        first = np.repeat(np.cumsum(counts) - counts, counts)
-        t = (np.arange(len(which)) - first) / (counts[which] - 1)
-        return table.points(which, t)
+        t = (np.arange(len(which)) - starts[which]) / (counts[which] - 1)
+        return RingPoints(table.points(first + which, t), starts)
 
     @cached_property
     def box(self) -> tuple[float, float, float, float] | None:
@@ -91,15 +122,29 @@ class Ring:
         return float(x0), float(y0), float(x1), float(y1)
 
     def polyline(self, tolerance: float) -> Floats:
-        """The ring as points (n, 2) [mm], arcs flattened to a sagitta of `tolerance` [mm].
+        """The ring as points (n, 2) [mm], arcs flattened to a sagitta of `tolerance` [mm]."""
+        return self.flat(tolerance).points
 
-        The polylines last asked for are kept.
+    def flat(self, tolerance: float) -> RingPoints:
+        """The ring flattened to a sagitta [mm]; what was last asked for is kept.
+
+        Of a ring that is like another one only what differs is worked out.
         """
-        if tolerance not in self._lines:
-            if len(self._lines) > 4:
-                self._lines.clear()
-            self._lines[tolerance] = self._flattened(np.full(len(self.pieces), tolerance))
-        return self._lines[tolerance]
+        if tolerance in self._lines:
+            return self._lines[tolerance]
+        if len(self._lines) > 4:
+            self._lines.clear()
+        n, like = len(self.pieces), self._like
+        if not n:
+            made = RingPoints(np.empty((0, 2)), np.zeros(1, dtype=np.int64))
+        elif like is None or tolerance not in like._lines:
+            made = self._flattened(tolerance, 0, n)
+        else:
+            head, tail = self.common_with(like)
+            between = self._flattened(tolerance, head, n - tail)
+            made = _patched(like._lines[tolerance], between, head, tail)
+        self._lines[tolerance] = made
+        return made
 
     def inside(self, at: Point) -> bool:
         """Whether a place lies inside the ring."""
@@ -120,9 +165,28 @@ def outline_ring(outline: Loop) -> Ring:
     like = _latest[-1] if _latest else None
     ring = Ring(pieces, like)
     if like is not None:
-        like._like = None  # no chain of rings
+        like.forget_like()  # no chain of rings
     _latest.append(ring)
     return ring
+
+
+def _grouped(pieces: Sequence[BoundaryCurve]) -> dict[str, tuple[BoundaryCurve, ...]]:
+    """Pieces by the feature they belong to, in their order."""
+    found: dict[str, list[BoundaryCurve]] = {}
+    for piece in pieces:
+        found.setdefault(piece.feature, []).append(piece)
+    return {feature: tuple(mine) for feature, mine in found.items()}
+
+
+def _patched(old: RingPoints, new: RingPoints, head: int, tail: int) -> RingPoints:
+    """The first `head` and last `tail` pieces of an old ring, with a new stretch between them."""
+    kept = len(old.starts) - 1 - tail
+    points = np.concatenate(
+        [old.points[: old.starts[head]], new.points, old.points[old.starts[kept] :]]
+    )
+    begin = old.starts[head] + new.starts
+    end = begin[-1] - old.starts[kept] + old.starts[kept + 1 :]
+    return RingPoints(points, np.concatenate([old.starts[:head], begin, end]))
 
 
 _latest: deque[Ring] = deque(maxlen=1)

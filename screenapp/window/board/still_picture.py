@@ -139,20 +139,15 @@ def changed_box(was: DrawnPart, now: DrawnPart, tolerance: float) -> Box | None:
 
 def _differing(one: Ring, other: Ring, tolerance: float) -> tuple[Floats, Floats]:
     """What of two rings lies between the stretches that they have in common."""
-    a, b = one.polyline(tolerance), other.polyline(tolerance)
-    n = min(len(a), len(b))
-    head = _alike(a[:n], b[:n])
-    tail = min(_alike(a[len(a) - n :][::-1], b[len(b) - n :][::-1]), n - head)
-    if head == len(a) == len(b):
-        return a[:0], b[:0]
-    first = max(head - 1, 0)
-    return a[first : len(a) - tail + 1], b[first : len(b) - tail + 1]
-
-
-def _alike(a: Floats, b: Floats) -> int:
-    """How many points agree from the first on."""
-    unlike = np.flatnonzero((a != b).any(axis=1))
-    return int(unlike[0]) if len(unlike) else len(a)
+    a, b = one.flat(tolerance), other.flat(tolerance)
+    head, tail = other.common_with(one)
+    if head == len(one.pieces) == len(other.pieces):
+        return a.points[:0], b.points[:0]
+    before, after = (
+        flat.points[max(flat.starts[head] - 1, 0) : flat.starts[len(flat.starts) - 1 - tail] + 1]
+        for flat in (a, b)
+    )
+    return before, after
 
 
 def stretches_in(points: Floats, view: QRectF) -> list[QPolygonF]:
