@@ -25,9 +25,7 @@ from screenapp.model.part import (
     Term,
     Wall,
 )
-from screenapp.model.regions import shape_with_zones
-from tests.mechanics.structured import mapped
-from tests.mechanics.zoned import ELEMENTS, disc, meshed, pad, solved, strip
+from tests.mechanics.zoned import ELEMENTS, disc, in_rectangles, meshed, pad, solved, strip
 
 E, NU, ALPHA = 70_000.0, 0.33, 23e-6
 ALLOY = Material("alloy", E, NU, 2700.0, 160.0, 215.0, ALPHA)
@@ -73,18 +71,12 @@ def test_a_bar_held_at_both_ends_is_pressed(element: ElementName, state: str) ->
 @pytest.mark.parametrize("element", ["quad8", "quad9"])
 def test_a_linear_field_bends_a_free_part_without_stress(element: ElementName) -> None:
     """Boley & Weiner: a linear temperature leaves a simply connected free part free of stress;
-    it bends to the curvature α dT/dy, here u_y = -α g x²/2 along the lower edge.
-
-    The eight-node quad has complete quadratics only as a parallelogram (MacNeal & Harder 1992, from
-    memory), so it stands in rectangles; the nine-node quad in whatever the mesher gives.
-    """
+    it bends to the curvature α dT/dy, here u_y = -α g x²/2 along the lower edge."""
     part = heated(TemperatureLoad("l", -30.0, 0.0, 5.0), PINNED)
     supports = (RollerSupport("s1", "c1", 0.0), RollerSupport("s2", "c1", 90.0),
                 RollerSupport("s3", "c4", 0.0))  # fmt: skip
     part = replace(part, supports=supports)
-    mesh = None
-    if element == "quad8":
-        mesh = mapped(lambda xi, eta: (60.0 * xi, 12.0 * eta), 20, 4, shape_with_zones(part))
+    mesh = in_rectangles(part, 60.0, 12.0) if element == "quad8" else None
     found = solved(part, element, mesh=mesh)
     assert np.abs(found.stress.nodal).max() < 1e-6
     assert np.abs(found.stress.side).max() < 1e-6

@@ -27,6 +27,7 @@ from screenapp.model.part import (
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.shape import Shape
 from screenapp.model.solution import Solution, StressField
+from tests.mechanics.structured import mapped
 from tests.model.plates import loop, rectangle
 
 ELEMENTS: tuple[ElementName, ...] = ("quad4", "quad4-incompatible", "quad8", "quad9")
@@ -96,6 +97,12 @@ def meshed(part: Part, size: float | None = None) -> tuple[Shape, Mesh]:
     shape = shape_with_zones(part)
     wishes = replace(part.mesh, size=size)
     return shape, make_mesh(shape, initial_sizes(shape, wishes))
+
+
+def in_rectangles(part: Part, width: float, height: float) -> Mesh:
+    """A strip in equal rectangles, for the eight-node quad: it has complete quadratics only as a
+    parallelogram (MacNeal & Harder 1992, from memory)."""
+    return mapped(lambda xi, eta: (width * xi, height * eta), 20, 4, shape_with_zones(part))
 
 
 def solved(

@@ -46,7 +46,7 @@ class MadeUp:
     def counted_level(self, _name: str, _case: int) -> float:
         return self.level
 
-    def read(self, points: np.ndarray) -> PointValues:
+    def read(self, points: np.ndarray, _measure: str = "von_mises") -> PointValues:
         n = len(points)
         self.reads.append(n)
         stress = np.zeros((2, n, 3))

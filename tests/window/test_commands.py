@@ -62,7 +62,8 @@ def test_typing_finds_and_enter_runs(main: MainWindow) -> None:
     assert not found.isModal()
     assert len(found.shown) == len(main.commands)
     QTest.keyClicks(found.search, "round ho")
-    assert [c.name for c in found.shown] == ["Round hole"]
+    assert found.shown[0].name == "Round hole"  # after it come those whose line says it
+    assert len(found.shown) < 4
     QTest.keyClick(found.search, Qt.Key.Key_Return)
     settle()
     assert main.board.canvas.tool is not None
