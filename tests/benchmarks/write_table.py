@@ -92,7 +92,7 @@ def economy() -> str:
                     cells.append(
                         f"more than {steps[-1].unknowns:,} (> {steps[-1].unknowns / least:.0f}×)"
                         if count is None
-                        else f"{count:,} ({count / least:.0f}×)"
+                        else f"{count:,} ({count / least:.2g}×)"
                     )
                 rows.append((f"{name}, {100 * accuracy:g} % of the peak", *cells))
     return table(("unknowns needed", "adaptive quad9", *(f"even {e}" for e in EVEN)), rows)
