@@ -13,12 +13,10 @@ from screenapp.model.solution import Balance, BoltForce, Reaction
 from screenapp.report.balance_rows import balance_rows
 from screenapp.report.page import support_words
 from screenapp.window.board.symbols import support_marks
-from screenapp.window.document import Document
 from screenapp.window.sheet.held_paragraph import HeldParagraph
 from screenapp.window.sheet.reaction_rows import MOST_BOLTS, reaction_rows
-from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import pick, settle, type_into
+from tests.window.window_kit import pick, settle, shown_sheet, type_into
 
 HOLES = (
     CircleHole("h1", (50.0, 40.0), 12.0),
@@ -29,12 +27,7 @@ HOLES = (
 
 def test_a_group_is_gathered_in_the_sheet(qtbot: QtBot) -> None:
     part = replace(plate(), holes=HOLES, supports=(FixedSupport("s1", "h1"),))
-    sheet = Sheet(Document(part))
-    qtbot.addWidget(sheet)
-    sheet.resize(540, 900)
-    sheet.show()
-    sheet.activateWindow()
-    settle()
+    sheet = shown_sheet(qtbot, part)
     paragraph = next(p for p in sheet.paragraphs if isinstance(p, HeldParagraph))
     row = paragraph.list.row("s1")
     pick(row.sentence.field("kind"), "held by bolts")

@@ -10,23 +10,16 @@ from pytestqt.qtbot import QtBot
 from screenapp.model.part import Case, FixedSupport, MisfitLoad, PrescribedSupport
 from screenapp.report.page import load_words
 from screenapp.window.board.load_marks import load_mark
-from screenapp.window.document import Document
 from screenapp.window.sheet.loaded_paragraph import LoadedParagraph, load_choices
-from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import settle, type_into
+from tests.window.window_kit import settle, shown_sheet, type_into
 
 HELD = (FixedSupport("s1", "e4"), PrescribedSupport("s2", "h1", x=0.0))
 
 
 def test_a_misfit_is_chosen_and_typed_in_the_sheet(qtbot: QtBot) -> None:
-    document = Document(replace(plate(), supports=HELD, cases=(Case("k1", "assembled"),)))
-    sheet = Sheet(document)
-    qtbot.addWidget(sheet)
-    sheet.resize(540, 900)
-    sheet.show()
-    sheet.activateWindow()
-    settle()
+    sheet = shown_sheet(qtbot, replace(plate(), supports=HELD, cases=(Case("k1", "assembled"),)))
+    document = sheet.document
     keys = [c.key for c in load_choices(document)]
     assert "misfit s1" in keys
     assert "misfit s2" in keys

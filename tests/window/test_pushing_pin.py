@@ -16,21 +16,14 @@ from screenapp.model.part import (
 )
 from screenapp.report.page import support_words
 from screenapp.window.board.support_marks import support_mark
-from screenapp.window.document import Document
 from screenapp.window.sheet.held_paragraph import HeldParagraph
-from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import pick, settle
+from tests.window.window_kit import pick, shown_sheet
 
 
 def test_it_is_chosen_in_the_sheet_for_a_hole_only(qtbot: QtBot) -> None:
     supports = (FixedSupport("s1", "h1"), FixedSupport("s2", "e4"))
-    sheet = Sheet(Document(replace(plate(), supports=supports)))
-    qtbot.addWidget(sheet)
-    sheet.resize(540, 900)
-    sheet.show()
-    sheet.activateWindow()
-    settle()
+    sheet = shown_sheet(qtbot, replace(plate(), supports=supports))
     paragraph = next(p for p in sheet.paragraphs if isinstance(p, HeldParagraph))
     row = paragraph.list.row("s1")
     pick(row.sentence.field("kind"), "held by a pin that only pushes")

@@ -10,20 +10,13 @@ from pytestqt.qtbot import QtBot
 from screenapp.model.part import FixedSupport, WeldSupport
 from screenapp.report.page import support_words
 from screenapp.window.board.support_marks import support_mark
-from screenapp.window.document import Document
 from screenapp.window.sheet.held_paragraph import HeldParagraph
-from screenapp.window.sheet.sheet import Sheet
 from tests.window.board_kit import Hand, plate
-from tests.window.window_kit import pick, settle, type_into
+from tests.window.window_kit import pick, shown_sheet, type_into
 
 
 def test_a_weld_is_chosen_and_typed_in_the_sheet(qtbot: QtBot) -> None:
-    sheet = Sheet(Document(replace(plate(), supports=(FixedSupport("s1", "e4", 5.0),))))
-    qtbot.addWidget(sheet)
-    sheet.resize(540, 900)
-    sheet.show()
-    sheet.activateWindow()
-    settle()
+    sheet = shown_sheet(qtbot, replace(plate(), supports=(FixedSupport("s1", "e4", 5.0),)))
     paragraph = next(p for p in sheet.paragraphs if isinstance(p, HeldParagraph))
     row = paragraph.list.row("s1")
     pick(row.sentence.field("kind"), "held by a weld")
