@@ -15,9 +15,11 @@ from screenapp.model.assets import resource
 from screenapp.model.errors import PartFileError
 from screenapp.model.json_reader import JsonObject, read_json
 from screenapp.model.part import Material
-from screenapp.model.part_tree import FORMAT as PART_FORMAT
-from screenapp.model.part_tree import VERSION as PART_VERSION
-from screenapp.model.part_tree import material_of_tree
+from screenapp.model.part_tree import (
+    FORMAT as PART_FORMAT,
+    VERSION as PART_VERSION,
+    material_of_tree,
+)
 from screenapp.model.schema_check import schema_faults
 
 FORMAT = "screenapp materials"

@@ -3,17 +3,8 @@
 Lengths are in mm, forces in N, stresses in MPa, angles in degrees (counter-clockwise from +x),
 densities in kg/m³, accelerations in m/s², temperatures in °C - always, whatever units are shown.
 
-A closed loop is a ring of corners; `edges[i]` runs from `corners[i]` to `corners[i + 1]` (the last
-edge closes the ring)::
-
-        c4 ----e3---- c3
-        |              |
-        e4            e2          edges[i] joins corners[i] and corners[i + 1]
-        |              |
-        c1 ----e1---- c2
-
 Everything that supports, loads, limits and readings point at has an `id` that is unique in the
-part and survives edits.  A fillet is a property (`round`) of a corner.
+part and survives edits.
 
 Every number in these records is a float.  Where the file gives an expression in the named
 dimensions ("width/2 - 5"), the record holds its value and `Part.formulas` keeps the text.
@@ -26,211 +17,61 @@ from typing import Literal
 
 from screenapp.model.limit_records import (
     DisplacementLimit as DisplacementLimit,
-)
-from screenapp.model.limit_records import (
     FatigueLimit as FatigueLimit,
-)
-from screenapp.model.limit_records import (
     JointLimit as JointLimit,
-)
-from screenapp.model.limit_records import (
     Limit as Limit,
-)
-from screenapp.model.limit_records import (
     StrainLimit as StrainLimit,
-)
-from screenapp.model.limit_records import (
     StressLimit as StressLimit,
-)
-from screenapp.model.limit_records import (
     StressMeasure as StressMeasure,
 )
 from screenapp.model.load_records import (
     BearingLoad as BearingLoad,
-)
-from screenapp.model.load_records import (
     BodyLoad as BodyLoad,
-)
-from screenapp.model.load_records import (
     ForceLoad as ForceLoad,
-)
-from screenapp.model.load_records import (
     GravityLoad as GravityLoad,
-)
-from screenapp.model.load_records import (
     LineLoad as LineLoad,
-)
-from screenapp.model.load_records import (
     Load as Load,
-)
-from screenapp.model.load_records import (
     MisfitLoad as MisfitLoad,
-)
-from screenapp.model.load_records import (
     MomentLoad as MomentLoad,
-)
-from screenapp.model.load_records import (
     PlacedLoad as PlacedLoad,
-)
-from screenapp.model.load_records import (
     PointLoad as PointLoad,
-)
-from screenapp.model.load_records import (
     PressureLoad as PressureLoad,
-)
-from screenapp.model.load_records import (
     ShearLoad as ShearLoad,
-)
-from screenapp.model.load_records import (
     SpinLoad as SpinLoad,
-)
-from screenapp.model.load_records import (
     TemperatureLoad as TemperatureLoad,
 )
 from screenapp.model.material_records import (
     Material as Material,
-)
-from screenapp.model.material_records import (
     MaterialFamily as MaterialFamily,
 )
-from screenapp.model.pattern import Pattern
+from screenapp.model.shape_records import (
+    CircleHole as CircleHole,
+    Corner as Corner,
+    Edge as Edge,
+    Hole as Hole,
+    Loop as Loop,
+    LoopHole as LoopHole,
+    Point as Point,
+    SlotHole as SlotHole,
+    Zone as Zone,
+    ZoneSides as ZoneSides,
+)
 from screenapp.model.support_records import (
     BoltSupport as BoltSupport,
-)
-from screenapp.model.support_records import (
     ElasticSupport as ElasticSupport,
-)
-from screenapp.model.support_records import (
     FixedSupport as FixedSupport,
-)
-from screenapp.model.support_records import (
     PinSupport as PinSupport,
-)
-from screenapp.model.support_records import (
     PrescribedSupport as PrescribedSupport,
-)
-from screenapp.model.support_records import (
     RollerSupport as RollerSupport,
-)
-from screenapp.model.support_records import (
     Support as Support,
-)
-from screenapp.model.support_records import (
     SymmetrySupport as SymmetrySupport,
-)
-from screenapp.model.support_records import (
     WeldSupport as WeldSupport,
 )
 
-Point = tuple[float, float]
-
 WallState = Literal["plane stress", "plane strain"]
-ZoneSides = Literal["both", "one"]
 ElementName = Literal["quad4", "quad4-incompatible", "quad8", "quad9"]
 DisplayUnits = Literal["mm-N-MPa", "in-lbf-ksi"]
 Measures = Literal["length", "angle", "number"]
-
-
-@dataclass(frozen=True)
-class Corner:
-    """A corner of a loop at `at` [mm], where its two edges would meet.
-
-    It is sharp, or rounded by a fillet of radius `round` [mm], or cut off by a chamfer that takes
-    `chamfer` [mm] of both edges; not both.
-    """
-
-    id: str
-    at: Point
-    round: float = 0.0
-    chamfer: float = 0.0
-
-    @property
-    def sharp(self) -> bool:
-        """Whether the two edges meet in the corner itself."""
-        return self.round == 0.0 and self.chamfer == 0.0
-
-
-@dataclass(frozen=True)
-class Edge:
-    """An edge of a loop: straight, or the circular arc that passes `through` a point [mm]."""
-
-    id: str
-    through: Point | None = None
-
-
-@dataclass(frozen=True)
-class Loop:
-    """A closed ring; `edges[i]` joins `corners[i]` to `corners[(i + 1) % n]`; n >= 2 (an arc)."""
-
-    corners: tuple[Corner, ...]
-    edges: tuple[Edge, ...]
-
-
-@dataclass(frozen=True)
-class CircleHole:
-    """A round hole: centre [mm] and diameter [mm]; with a pattern, many of them."""
-
-    id: str
-    centre: Point
-    diameter: float
-    pattern: Pattern | None = None
-
-
-@dataclass(frozen=True)
-class SlotHole:
-    """A slot with round ends: overall `length` [mm] >= `width` [mm], axis at `angle` [deg].
-
-    With a pattern, many of them.
-    """
-
-    id: str
-    centre: Point
-    length: float
-    width: float
-    angle: float = 0.0
-    pattern: Pattern | None = None
-
-
-@dataclass(frozen=True)
-class LoopHole:
-    """A hole of any form, bounded by a loop with corners and edges of its own."""
-
-    id: str
-    loop: Loop
-
-
-Hole = CircleHole | SlotHole | LoopHole
-
-
-@dataclass(frozen=True)
-class Zone:
-    """A stretch of the wall with a thickness or material of its own: a pad, a pocket, a rib.
-
-    The screening takes its middle plane to be that of the wall, which is so where the thickness is
-    on both sides.  What of it lies outside the part does not count; where zones overlap, the later
-    one of the list wins.
-
-    Attributes:
-        form: the closed form, as of a hole; it bears the zone's id.
-        thickness: [mm], None for the wall's.
-        material: name of its material, None for the wall's.
-        name: what the user calls it, may be empty.
-        axis: direction of the 1-axis of an orthotropic material [deg] from +x, None for the wall's.
-        sides: whether what its thickness adds or takes away is on both sides of the wall alike or
-            on one only; None where it is not said.
-    """
-
-    form: CircleHole | SlotHole | LoopHole
-    thickness: float | None = None
-    material: str | None = None
-    name: str = ""
-    sides: ZoneSides | None = None
-    axis: float | None = None
-
-    @property
-    def id(self) -> str:
-        """The id, unique in the part."""
-        return self.form.id
 
 
 @dataclass(frozen=True)

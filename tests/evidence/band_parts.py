@@ -10,8 +10,7 @@ from __future__ import annotations
 from dataclasses import replace
 
 import numpy as np
-from shapely import Point as Dot
-from shapely import Polygon
+from shapely import Point as Dot, Polygon
 
 from screenapp.model.part import (
     Case,

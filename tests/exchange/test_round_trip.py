@@ -10,8 +10,7 @@ from pathlib import Path
 import ezdxf
 import numpy as np
 import pytest
-from hypothesis import given, settings
-from hypothesis import strategies as st
+from hypothesis import given, settings, strategies as st
 
 from screenapp.exchange.drawing import DrawingError
 from screenapp.exchange.dxf_writing import write_dxf

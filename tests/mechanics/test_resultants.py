@@ -35,8 +35,7 @@ from screenapp.model.part import (
 from screenapp.model.pattern import RowPattern
 from screenapp.model.regions import shape_with_zones
 from screenapp.model.solution import LoadResultant
-from tests.mechanics.structured import full_ring, ring_sector
-from tests.mechanics.structured import rectangle as meshed_rectangle
+from tests.mechanics.structured import full_ring, rectangle as meshed_rectangle, ring_sector
 from tests.model.plates import STEEL, loop, plate, rectangle
 
 T = 3.0

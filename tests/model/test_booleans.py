@@ -12,8 +12,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 import shapely
-from hypothesis import HealthCheck, assume, given, settings
-from hypothesis import strategies as st
+from hypothesis import HealthCheck, assume, given, settings, strategies as st
 
 from screenapp.model import edits
 from screenapp.model.curves import Arc

@@ -8,8 +8,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 import shapely
-from hypothesis import assume, given, settings
-from hypothesis import strategies as st
+from hypothesis import assume, given, settings, strategies as st
 
 from screenapp.model.crossings import boundary_faults
 from screenapp.model.curve_table import CurveTable

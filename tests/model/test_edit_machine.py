@@ -11,10 +11,14 @@ from collections.abc import Callable
 from dataclasses import replace
 
 import pytest
-from hypothesis import HealthCheck, settings
-from hypothesis import strategies as st
-from hypothesis.stateful import RuleBasedStateMachine, initialize, invariant, rule
-from hypothesis.stateful import run_state_machine_as_test as run
+from hypothesis import HealthCheck, settings, strategies as st
+from hypothesis.stateful import (
+    RuleBasedStateMachine,
+    initialize,
+    invariant,
+    rule,
+    run_state_machine_as_test as run,
+)
 
 from screenapp.model import edits
 from screenapp.model.errors import ScreenappError

@@ -6,8 +6,7 @@ import math
 from dataclasses import replace
 
 import pytest
-from hypothesis import given
-from hypothesis import strategies as st
+from hypothesis import given, strategies as st
 
 from screenapp.model import edits
 from screenapp.model.members import all_holes, members

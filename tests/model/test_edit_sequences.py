@@ -5,8 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 
-from hypothesis import HealthCheck, given, settings
-from hypothesis import strategies as st
+from hypothesis import HealthCheck, given, settings, strategies as st
 
 from screenapp.model import edits
 from screenapp.model.errors import ScreenappError

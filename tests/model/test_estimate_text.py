@@ -6,8 +6,7 @@ import math
 import re
 
 import pytest
-from hypothesis import given
-from hypothesis import strategies as st
+from hypothesis import given, strategies as st
 
 from screenapp.model.estimate_text import estimate_text, significant, unit_of, value_text
 from screenapp.model.findings import Estimate

@@ -5,8 +5,7 @@ from __future__ import annotations
 import json
 from typing import Any
 
-from hypothesis import given
-from hypothesis import strategies as st
+from hypothesis import given, strategies as st
 
 from screenapp.model.json_reader import JsonObject, dotted, line_of, read_json
 from screenapp.model.json_writer import json_text

@@ -5,8 +5,7 @@ from __future__ import annotations
 import math
 from dataclasses import replace
 
-from hypothesis import given, settings
-from hypothesis import strategies as st
+from hypothesis import given, settings, strategies as st
 
 from screenapp.model import edits
 from screenapp.model.errors import InvalidPartError

@@ -3,8 +3,7 @@
 from __future__ import annotations
 
 import pytest
-from hypothesis import example, given
-from hypothesis import strategies as st
+from hypothesis import example, given, strategies as st
 
 from screenapp.model.errors import ScreenappError
 from screenapp.model.kinds import KindName

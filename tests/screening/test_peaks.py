@@ -17,8 +17,7 @@ from screenapp.screening.peaks import RawPeak
 from screenapp.screening.screen import screen
 from tests.mechanics.stress_fields import solution_of
 from tests.mechanics.structured import Structured, full_ring, rectangle
-from tests.model.plates import plate
-from tests.model.plates import rectangle as drawn
+from tests.model.plates import plate, rectangle as drawn
 
 Floats = np.ndarray
 Scalar = Callable[[Floats, Floats], Floats]

@@ -7,8 +7,7 @@ from dataclasses import replace
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
-from hypothesis import strategies as st
+from hypothesis import given, settings, strategies as st
 
 from screenapp.model.curves import Arc, arc_through
 from screenapp.model.part import CircleHole, Corner, Edge, Loop, Part, SlotHole

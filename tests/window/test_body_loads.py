@@ -21,8 +21,7 @@ from screenapp.window.board.frame import Frame
 from screenapp.window.board.load_marks import load_mark
 from screenapp.window.sheet.loaded_paragraph import LoadedParagraph
 from screenapp.window.sheet.sheet import Sheet
-from tests.window.board_kit import Hand
-from tests.window.board_kit import plate as board_plate
+from tests.window.board_kit import Hand, plate as board_plate
 from tests.window.fabricate import plate
 from tests.window.window_kit import pick, shown_sheet, type_into
 

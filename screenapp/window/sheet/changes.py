@@ -9,8 +9,11 @@ from typing import Any, TypeVar
 
 from screenapp.model.curves import arc_through
 from screenapp.model.edit_loops import move_corner, set_chamfer, set_round
-from screenapp.model.edit_patterns import break_pattern as broken_pattern
-from screenapp.model.edit_patterns import change_pattern, set_pattern
+from screenapp.model.edit_patterns import (
+    break_pattern as broken_pattern,
+    change_pattern,
+    set_pattern,
+)
 from screenapp.model.edit_removal import remove as removed
 from screenapp.model.edit_rules import Outcome, settle
 from screenapp.model.errors import ScreenappError
