@@ -447,6 +447,11 @@ def alive(process: int) -> bool:
         return False
 
 
+def _mind_interrupts() -> None:
+    """What a shell starts in the background ignores them, and so does what that starts."""
+    signal.signal(signal.SIGINT, signal.SIG_DFL)
+
+
 @pytest.mark.skipif(not Path("/proc/self/stat").exists(), reason="looks into /proc")
 @pytest.mark.parametrize("sign", [signal.SIGINT, signal.SIGTERM, signal.SIGKILL])
 def test_a_stopped_program_leaves_no_worker_behind(sign: signal.Signals, tmp_path: Path) -> None:
@@ -456,6 +461,7 @@ def test_a_stopped_program_leaves_no_worker_behind(sign: signal.Signals, tmp_pat
         stdout=subprocess.PIPE,
         stderr=subprocess.PIPE,
         cwd=ROOT,
+        preexec_fn=_mind_interrupts,
     )
     assert process.stdout is not None
     assert process.stdout.readline().startswith(b"Lifting lug")  # in the midst of its work
