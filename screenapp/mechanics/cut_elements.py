@@ -19,6 +19,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.mechanics.shape_functions import line_slopes, line_values
 from screenapp.mechanics.straight_cut import StraightCut
 from screenapp.model.mesh import Mesh
 
@@ -118,23 +119,13 @@ def _meets(n: Floats) -> list[float]:
 
 def _at(side: Floats, t: float) -> Floats:
     """The place on a side (3, 2) at a parameter."""
-    return np.asarray(side_values(np.array([t]))[0] @ side)
-
-
-def side_values(t: Floats) -> Floats:
-    """Shape functions of a side's begin, middle and end, (n, 3)."""
-    return np.stack([0.5 * t * (t - 1.0), 1.0 - t * t, 0.5 * t * (t + 1.0)], axis=1)
-
-
-def side_slopes(t: Floats) -> Floats:
-    """Their derivatives by the parameter, (n, 3)."""
-    return np.stack([t - 0.5, -2.0 * t, t + 0.5], axis=1)
+    return np.asarray(line_values(np.array([t]))[0] @ side)
 
 
 def _whole_moments(sides: Floats) -> Floats:
     """Area, ∫s, ∫n, ∫s², ∫sn, ∫n² within closed rings of sides (n, 4, 3, 2), (n, 6)."""
     t, weights = gauss_line(_MOMENT_POINTS)
-    every = _line_integrals(side_values(t) @ sides, side_slopes(t) @ sides, weights)
+    every = _line_integrals(line_values(t) @ sides, line_slopes(t) @ sides, weights)
     return np.asarray(every.sum(axis=1))
 
 
@@ -146,7 +137,7 @@ def _moments_left(ring: Floats) -> Floats:
         for a, b in _left_of(side):
             half = 0.5 * (b - a)
             t = 0.5 * (a + b) + half * points
-            total += _line_integrals(side_values(t) @ side, side_slopes(t) @ side, half * weights)
+            total += _line_integrals(line_values(t) @ side, line_slopes(t) @ side, half * weights)
     return total
 
 

@@ -19,9 +19,9 @@ from numpy.typing import NDArray
 from scipy import sparse
 
 from screenapp.mechanics.element_walls import element_thickness
-from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, outward, side_tangents
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.mechanics.side_functions import carried_sides
 from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import pieces_under
 from screenapp.model.members import bolt_holes
@@ -198,14 +198,7 @@ def bed_forces(
 def _matrix(part: Part, mesh: Mesh, sides: Ints, bed: Bed) -> sparse.csr_array:
     """∫ N_i N_j (kₙ n nᵀ + kₜ t tᵀ) ds over the sides as the part's element interpolates them."""
     s, weights = gauss_line(POINTS)
-    if CARRIED_NODES[part.mesh.element] == 4:
-        nodes = mesh.side_nodes[sides][:, ::2]
-        shapes = np.stack([0.5 * (1.0 - s), 0.5 * (1.0 + s)], axis=1)
-        slopes = np.tile([-0.5, 0.5], (len(s), 1))
-    else:
-        nodes = mesh.side_nodes[sides]
-        shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
-        slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    nodes, shapes, slopes = carried_sides(mesh, part.mesh.element, sides, s)
     run = np.einsum("pi,sid->spd", slopes, mesh.nodes[nodes])
     stretch = np.linalg.norm(run, axis=2)
     t = run / stretch[..., None]

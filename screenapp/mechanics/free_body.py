@@ -12,11 +12,12 @@ import shapely
 from numpy.typing import NDArray
 
 from screenapp.mechanics.body_forces import force_density, has_body_forces
-from screenapp.mechanics.cut_elements import area_points, side_pieces, side_slopes, side_values
+from screenapp.mechanics.cut_elements import area_points, side_pieces
 from screenapp.mechanics.element_walls import element_thickness
 from screenapp.mechanics.equilibrium import resultant
 from screenapp.mechanics.loads import side_thickness, side_tractions
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.mechanics.shape_functions import line_slopes, line_values
 from screenapp.mechanics.straight_cut import StraightCut
 from screenapp.model.combinations import loadings
 from screenapp.model.edge_parts import point_of
@@ -132,7 +133,7 @@ def _side_forces(
     at, force = [np.zeros((0, 2))], [np.zeros((0, 2))]
     for side, a, b in side_pieces(nodes, cut):
         t = 0.5 * (a + b) + 0.5 * (b - a) * points
-        shapes, slopes = side_values(t), side_slopes(t)
+        shapes, slopes = line_values(t), line_slopes(t)
         at.append(shapes @ nodes[side])
         stretch = np.linalg.norm(slopes @ nodes[side], axis=1) * 0.5 * (b - a)
         share = (thickness[side] * stretch * weights)[:, None]

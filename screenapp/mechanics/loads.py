@@ -14,9 +14,9 @@ from numpy.typing import NDArray
 from screenapp.mechanics.body_forces import body_nodal_forces
 from screenapp.mechanics.edge_loads import EdgePlaces, force_per_length
 from screenapp.mechanics.element_walls import element_thickness
-from screenapp.mechanics.kernels import CARRIED_NODES
 from screenapp.mechanics.places import misplaced, side_tangents, sides_of
 from screenapp.mechanics.quadrature import gauss_line
+from screenapp.mechanics.side_functions import carried_sides
 from screenapp.model.edge_parts import point_of
 from screenapp.model.members import spread_loads
 from screenapp.model.mesh import Mesh
@@ -129,16 +129,8 @@ def _parameters(mesh: Mesh, sides: Ints, along: Floats) -> Floats:
 
 def _rule(part: Part, mesh: Mesh, sides: Ints) -> SideRule:
     """Gauss points along sides, as the part's element interpolates them."""
-    element = part.mesh.element
     s, weights = gauss_line(POINTS)
-    if CARRIED_NODES[element] == 4:
-        nodes = mesh.side_nodes[sides][:, ::2]
-        shapes = np.stack([0.5 * (1.0 - s), 0.5 * (1.0 + s)], axis=1)
-        slopes = np.tile([-0.5, 0.5], (len(s), 1))
-    else:
-        nodes = mesh.side_nodes[sides]
-        shapes = np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=1)
-        slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=1)
+    nodes, shapes, slopes = carried_sides(mesh, part.mesh.element, sides, s)
     corners = mesh.nodes[nodes]
     run = np.einsum("pi,sid->spd", slopes, corners)
     stretch = np.linalg.norm(run, axis=2)

@@ -205,8 +205,7 @@ def nearest_parameters(curve: AnyCurve, points: Floats) -> Floats:
 
 def _quadratic(along: Floats) -> Floats:
     """Shape functions of start, middle and end at places 0 to 1, (n, 1, 3)."""
-    s = 2.0 * along - 1.0
-    return np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=-1)[:, None, :]
+    return shape_functions.line_values(2.0 * along - 1.0)[:, None, :]
 
 
 def _nearest_on_side(nodes: Floats, points: Floats, along: Floats) -> tuple[Floats, Floats]:
@@ -215,8 +214,7 @@ def _nearest_on_side(nodes: Floats, points: Floats, along: Floats) -> tuple[Floa
     Two Gauss-Newton steps from the guess `along` bring a point of the side back to 1e-9 of it.
     """
     for _ in range(2):
-        s = 2.0 * along - 1.0
-        slopes = np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=-1)[:, None, :]
+        slopes = shape_functions.line_slopes(2.0 * along - 1.0)[:, None, :]
         step = (slopes @ nodes)[:, 0]
         gap = points - (_quadratic(along) @ nodes)[:, 0]
         along = (along + 0.5 * (gap * step).sum(axis=1) / (step**2).sum(axis=1)).clip(0.0, 1.0)

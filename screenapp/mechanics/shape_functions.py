@@ -69,15 +69,19 @@ def _serendipity(points: Floats) -> tuple[Floats, Floats]:
     )
 
 
-def _lagrange(points: Floats) -> tuple[Floats, Floats]:
-    def line(s: Floats) -> tuple[Floats, Floats]:
-        """Quadratics that are 1 at -1, 0, +1 in turn, and their derivatives."""
-        f = np.stack([0.5 * s * (s - 1), 1 - s * s, 0.5 * s * (s + 1)], axis=-1)
-        d = np.stack([s - 0.5, -2 * s, s + 0.5], axis=-1)
-        return f, d
+def line_values(s: Floats) -> Floats:
+    """Quadratics that are 1 at -1, 0, +1 in turn: of a side's begin, middle and end, (..., 3)."""
+    return np.stack([0.5 * s * (s - 1.0), 1.0 - s * s, 0.5 * s * (s + 1.0)], axis=-1)
 
-    fx, dx = line(points[:, 0])
-    fy, dy = line(points[:, 1])
+
+def line_slopes(s: Floats) -> Floats:
+    """Their derivatives by `s`, (..., 3)."""
+    return np.stack([s - 0.5, -2.0 * s, s + 0.5], axis=-1)
+
+
+def _lagrange(points: Floats) -> tuple[Floats, Floats]:
+    fx, fy = line_values(points[:, 0]), line_values(points[:, 1])
+    dx, dy = line_slopes(points[:, 0]), line_slopes(points[:, 1])
     i = LOCAL_NODES[:, 0].astype(int) + 1
     j = LOCAL_NODES[:, 1].astype(int) + 1
     return fx[:, i] * fy[:, j], np.stack([dx[:, i] * fy[:, j], fx[:, i] * dy[:, j]], axis=-1)
