@@ -60,10 +60,10 @@ def recover_edge_stress(
         hooke: turns εx, εy, γxy into stresses [MPa], (3, 3) or one for each side (n_sides, 3, 3).
     """
     joined = joined_sides(chains, traction, held)
-    mirrored = mirrored_ends(chains, traction, held) & ~_askew(chains, hooke)[:, None]
+    yielding = edge_compliance(chains, hooke)
+    mirrored = mirrored_ends(chains, traction, held) & ~_askew(yielding)[:, None]
     normal, shear = edge_tractions(chains, traction, held, inside)
     corner, known = known_corners(chains, traction, held, disturbed, isotropic(hooke))
-    yielding = edge_compliance(chains, hooke)
     before = chains.preceding
     stretch = np.stack(
         [
@@ -119,10 +119,9 @@ def edge_compliance(chains: BoundaryChains, hooke: Floats) -> Floats:
     return np.asarray(((stretch @ yielding)[..., None, :] @ by)[..., 0, :])
 
 
-def _askew(chains: BoundaryChains, hooke: Floats) -> Bools:
+def _askew(yielding: Floats) -> Bools:
     """Sides that an orthotropic sheet meets askew to its axes, where nothing goes on as in a
-    mirror, (n_sides,)."""
-    yielding = edge_compliance(chains, hooke)
+    mirror, (n_sides,); `yielding` by `edge_compliance`."""
     return np.asarray((np.abs(yielding[..., 2]) > 1e-9 * yielding[..., 0]).any(axis=1))
 
 
